@@ -1,0 +1,270 @@
+"""What a run means for the engineer: facts with their place, time and state. Not sentences: the screen words them.
+
+Every number here is read from the arrays that the pictures draw, so that a finding and its picture cannot differ.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from typing import Literal
+
+import numpy as np
+
+from solver.answer.cautions import Caution, cautions_of
+from solver.answer.result import Array, EventKind, Result
+from solver.model.load import GRAVITY, Drop, Striker
+from solver.model.member import Segment
+from solver.model.project import Case
+from solver.model.section import FilledPipe, Section
+
+State = Literal["within", "near", "over", "no limit"]
+
+#: Share of a limit above which a stress counts as near to it (a choice of this program).
+NEAR = 0.9
+
+
+@dataclass(frozen=True)
+class StressAt:
+    """A stress (Pa, magnitude) at a place (m) and a time (s) in a segment, with the limit of its material (Pa)."""
+
+    value: float
+    position: float
+    time: float
+    segment: str
+    limit: float | None
+
+    @property
+    def share(self) -> float | None:
+        """Stress over limit; `None` where no limit is given."""
+        return None if self.limit is None else self.value / self.limit
+
+    @property
+    def state(self) -> State:
+        if self.share is None:
+            return "no limit"
+        return "over" if self.share > 1 else "near" if self.share > NEAR else "within"
+
+
+@dataclass(frozen=True)
+class StressFinding:
+    """The largest stress of one sign, and where its share of a limit is largest (`None`: no limit anywhere)."""
+
+    sign: Literal["compression", "tension"]
+    peak: StressAt
+    worst: StressAt | None
+
+    @property
+    def state(self) -> State:
+        """Of the whole member: the worst place decides, which need not be the place of the peak."""
+        return self.worst.state if self.worst else "no limit"
+
+    @property
+    def differs(self) -> bool:
+        """The worst place lies in another segment than the peak."""
+        return self.worst is not None and self.worst.segment != self.peak.segment
+
+
+@dataclass(frozen=True)
+class SetFinding:
+    """Permanent movement of the toe per blow (m) and what goes with it (m). `time` (s): the end of the run."""
+
+    value: float
+    toe_largest: float
+    head_rebound: float | None
+    time: float
+    position: float
+
+    @property
+    def blows_per_metre(self) -> float | None:
+        """1/set; `None` where the toe does not stay down."""
+        return 1 / self.value if self.value > 0 else None
+
+
+@dataclass(frozen=True)
+class EnergyFinding:
+    """Largest energy (J) that has passed the first gauge on the member, when (s), and what struck with how much (J).
+
+    `source_energy`: of the ram or striker as it strikes, or the work of the pulse. `drop_energy`: m g h, where the
+    load is given by a drop height.
+    """
+
+    gauge: str
+    position: float
+    value: float
+    time: float
+    source: Literal["ram", "striker", "load"]
+    source_energy: float
+    drop_energy: float | None
+
+    @property
+    def share(self) -> float | None:
+        return self.value / self.source_energy if self.source_energy > 0 else None
+
+
+@dataclass(frozen=True)
+class Happening:
+    """An event worth a note. `again` counts: 0 for the first of its kind at that place, 1 for the second ..."""
+
+    kind: EventKind
+    position: float
+    time: float
+    again: int
+
+
+@dataclass(frozen=True)
+class Quality:
+    """How far the run can be trusted as a computation: mesh, step and the energy that does not close (share)."""
+
+    elements: int
+    steps: int
+    time_step: float
+    courant_worst: float
+    energy_residual: float
+    finished: bool
+    at_rest: bool
+
+
+@dataclass(frozen=True)
+class Findings:
+    """All facts of a run, verdict first."""
+
+    compression: StressFinding
+    tension: StressFinding
+    set: SetFinding | None
+    energy: EnergyFinding | None
+    happenings: tuple[Happening, ...]
+    warnings: tuple[str, ...]
+    cautions: tuple[Caution, ...]
+    quality: Quality
+
+
+def findings_of(result: Result) -> Findings:
+    """The facts of a result, finished or not."""
+    return Findings(
+        compression=_stress(result, "compression"),
+        tension=_stress(result, "tension"),
+        set=_set(result),
+        energy=_energy(result),
+        happenings=_happenings(result),
+        warnings=result.warnings,
+        cautions=cautions_of(result.case),
+        quality=Quality(
+            result.elements,
+            result.steps,
+            result.time_step,
+            result.courant_worst,
+            result.ledger.residual,
+            result.finished,
+            result.at_rest,
+        ),
+    )
+
+
+def segment_of(case: Case, position: Array) -> Array:
+    """Index of the member's segment at each position (m), same shape; a place on a joint counts to the lower one."""
+    ends = np.cumsum([s.length for s in case.member.segments])
+    return np.minimum(np.searchsorted(ends, position, side="right"), len(ends) - 1)
+
+
+def _stress(result: Result, sign: Literal["compression", "tension"]) -> StressFinding:
+    envelope, case = result.envelope, result.case
+    if sign == "compression":
+        values, times = np.maximum(-envelope.lowest_stress, 0.0), envelope.lowest_stress_time
+    else:
+        values, times = np.maximum(envelope.highest_stress, 0.0), envelope.highest_stress_time
+    segments = case.member.segments
+    limits = [case.material(s.material).limits.value(sign) for s in segments]
+    owner = segment_of(case, envelope.position)
+
+    def at(index: int) -> StressAt:
+        number = int(owner[index])
+        return StressAt(
+            float(values[index]),
+            float(envelope.position[index]),
+            float(times[index]),
+            segments[number].name,
+            limits[number],
+        )
+
+    shares = values / np.array([np.inf if v is None else v for v in limits])[owner]
+    limited = any(v is not None for v in limits)
+    return StressFinding(sign, at(int(np.argmax(values))), at(int(np.argmax(shares))) if limited else None)
+
+
+def _set(result: Result) -> SetFinding | None:
+    if result.set is None:
+        return None
+    return SetFinding(
+        result.set,
+        result.max_toe_displacement,
+        result.head_rebound,
+        result.duration,
+        result.case.member.length,
+    )
+
+
+def _energy(result: Result) -> EnergyFinding | None:
+    gauge = next((g for g in result.gauges.values() if g.on == "member"), None)
+    if gauge is None or gauge.time.size == 0:
+        return None
+    passed = gauge.transferred_energy
+    largest = int(np.argmax(passed))
+    load = result.case.load
+    source: Literal["ram", "striker", "load"] = "load"
+    drop_energy = None
+    if isinstance(load, Drop):
+        source = "ram"
+        mass = load.ram_mass or rod_mass(result.case, result.case.ram_segments)
+        if load.drop_height is not None and load.efficiency is not None:
+            drop_energy = mass * GRAVITY * load.drop_height
+            source_energy = drop_energy * load.efficiency
+        else:
+            source_energy = load.energy or mass * (load.impact_velocity or 0.0) ** 2 / 2
+    elif isinstance(load, Striker):
+        source = "striker"
+        source_energy = rod_mass(result.case, load.segments) * load.velocity**2 / 2
+    else:
+        work = result.ledger.parts.get("work_of_load", np.zeros(1))
+        source_energy = float(np.max(work)) if len(work) else 0.0
+    return EnergyFinding(
+        gauge.name,
+        gauge.position,
+        float(passed[largest]),
+        float(gauge.time[largest]),
+        source,
+        source_energy,
+        drop_energy,
+    )
+
+
+def rod_mass(case: Case, segments: tuple[Segment, ...]) -> float:
+    """Mass of a row of segments, kg. Simpson's rule is exact: areas are quadratic along a linear taper."""
+    return sum(
+        weight * segment.length * _mass_per_length(case, segment, section)
+        for segment in segments
+        for section, weight in _simpson(segment)
+    )
+
+
+def _simpson(segment: Segment) -> list[tuple[Section, float]]:
+    """The sections at both ends and half way, with the weights of Simpson's rule."""
+    first, last = segment.section, segment.end_section or segment.section
+    middle = {key: (value + getattr(last, key)) / 2 for key, value in first if isinstance(value, float)}
+    return [(first, 1 / 6), (first.model_copy(update=middle), 4 / 6), (last, 1 / 6)]
+
+
+def _mass_per_length(case: Case, segment: Segment, section: Section) -> float:
+    own: float = case.material(segment.material).density * section.area  # type: ignore[attr-defined]
+    if isinstance(section, FilledPipe):
+        own += case.material(section.fill).density * section.fill_area
+    return own
+
+
+def _happenings(result: Result) -> tuple[Happening, ...]:
+    seen: dict[tuple[str, float], int] = {}
+    found = []
+    for event in result.events:
+        key = (event.kind, event.position)
+        found.append(Happening(event.kind, event.position, event.time, seen.get(key, 0)))
+        seen[key] = seen.get(key, 0) + 1
+    return tuple(found)
