@@ -12,10 +12,9 @@ import numpy as np
 
 from solver.answer.cautions import Caution, cautions_of
 from solver.answer.result import Array, EventKind, Result
+from solver.model.derived import impact_energy, ram_mass, segment_mass
 from solver.model.load import GRAVITY, Drop, Striker
-from solver.model.member import Segment
 from solver.model.project import Case
-from solver.model.section import FilledPipe, Section
 
 State = Literal["within", "near", "over", "no limit"]
 
@@ -209,20 +208,17 @@ def _energy(result: Result) -> EnergyFinding | None:
         return None
     passed = gauge.transferred_energy
     largest = int(np.argmax(passed))
-    load = result.case.load
+    load, materials = result.case.load, result.case.materials
     source: Literal["ram", "striker", "load"] = "load"
     drop_energy = None
     if isinstance(load, Drop):
         source = "ram"
-        mass = load.ram_mass or rod_mass(result.case, result.case.ram_segments)
-        if load.drop_height is not None and load.efficiency is not None:
-            drop_energy = mass * GRAVITY * load.drop_height
-            source_energy = drop_energy * load.efficiency
-        else:
-            source_energy = load.energy or mass * (load.impact_velocity or 0.0) ** 2 / 2
+        source_energy = impact_energy(load, materials)
+        if load.drop_height is not None:
+            drop_energy = ram_mass(load, materials) * GRAVITY * load.drop_height
     elif isinstance(load, Striker):
         source = "striker"
-        source_energy = rod_mass(result.case, load.segments) * load.velocity**2 / 2
+        source_energy = sum(segment_mass(s, materials) for s in load.segments) * load.velocity**2 / 2
     else:
         work = result.ledger.parts.get("work_of_load", np.zeros(1))
         source_energy = float(np.max(work)) if len(work) else 0.0
@@ -235,29 +231,6 @@ def _energy(result: Result) -> EnergyFinding | None:
         source_energy,
         drop_energy,
     )
-
-
-def rod_mass(case: Case, segments: tuple[Segment, ...]) -> float:
-    """Mass of a row of segments, kg. Simpson's rule is exact: areas are quadratic along a linear taper."""
-    return sum(
-        weight * segment.length * _mass_per_length(case, segment, section)
-        for segment in segments
-        for section, weight in _simpson(segment)
-    )
-
-
-def _simpson(segment: Segment) -> list[tuple[Section, float]]:
-    """The sections at both ends and half way, with the weights of Simpson's rule."""
-    first, last = segment.section, segment.end_section or segment.section
-    middle = {key: (value + getattr(last, key)) / 2 for key, value in first if isinstance(value, float)}
-    return [(first, 1 / 6), (first.model_copy(update=middle), 4 / 6), (last, 1 / 6)]
-
-
-def _mass_per_length(case: Case, segment: Segment, section: Section) -> float:
-    own: float = case.material(segment.material).density * section.area  # type: ignore[attr-defined]
-    if isinstance(section, FilledPipe):
-        own += case.material(section.fill).density * section.fill_area
-    return own
 
 
 def _happenings(result: Result) -> tuple[Happening, ...]:
