@@ -1,0 +1,51 @@
+"""What stands on disk: noticing changes by other programs, and writing a file whole or not at all."""
+
+from __future__ import annotations
+
+import os
+import tempfile
+from dataclasses import dataclass
+from pathlib import Path
+
+
+@dataclass(frozen=True)
+class DiskState:
+    """Enough of a file's entry to notice a change: time of the last change in ns and size; both 0 for no file."""
+
+    changed: int = 0
+    size: int = 0
+
+
+def disk_state(path: Path) -> DiskState:
+    """The state of a file now; a file that cannot be reached counts as none."""
+    try:
+        entry = path.stat()
+    except OSError:
+        return DiskState()
+    return DiskState(entry.st_mtime_ns, entry.st_size)
+
+
+def write_whole(path: Path, text: str) -> None:
+    """Write UTF-8 text so that the file is there whole or as it was. Raises `OSError`.
+
+    Needs no Qt: the command line uses it.
+    """
+    handle, name = tempfile.mkstemp(prefix=f".{path.name[:40]}.", suffix=".part", dir=path.parent)
+    try:
+        with open(handle, "w", encoding="utf-8", newline="\n") as stream:
+            stream.write(text)
+            stream.flush()
+            os.fsync(stream.fileno())
+        _usual_permissions(name)
+        os.replace(name, path)
+    except BaseException:
+        Path(name).unlink(missing_ok=True)
+        raise
+
+
+def _usual_permissions(name: str) -> None:
+    """A temporary file is private; what replaces a result must be as readable as any new file."""
+    if os.name == "posix":
+        mask = os.umask(0)
+        os.umask(mask)
+        os.chmod(name, 0o666 & ~mask)

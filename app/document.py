@@ -1,0 +1,299 @@
+"""What is described: one valid project, its undo stack and its file. Every change is an edit of the whole project."""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+from dataclasses import dataclass
+from pathlib import Path
+from time import monotonic
+from typing import Any
+
+from PySide6.QtCore import QIODevice, QObject, QSaveFile, Signal
+from PySide6.QtGui import QUndoCommand, QUndoStack
+
+from app import tree as trees
+from app.disk import DiskState, disk_state
+from solver import Case, Problem, Project, ProjectError, load_project, project_from_tree, project_to_text
+
+#: Edits with the same `merge` key become one step of undo while no longer than this lies between them, s.
+BURST = 2.0
+
+
+class DocumentError(Exception):
+    """A file that cannot be opened or saved; its text is a sentence for the user."""
+
+
+@dataclass(frozen=True)
+class Rejected:
+    """What was entered and not taken. `waiting`: a value that is tried again when something else has changed."""
+
+    given: Any
+    sentence: str
+    waiting: bool = True
+
+
+class Document(QObject):
+    """Holds a valid project at all times; what is not valid stays outside of it, in `rejected`.
+
+    Pointers are JSON pointers; one without "/" in front is relative to the case that is looked at. The last part may
+    be "-" to append to a list.
+    """
+
+    changed = Signal()
+    #: An edit without a field to show its fault at was refused; carries the sentence.
+    refused = Signal(str)
+
+    def __init__(self, project: Project, parent: QObject | None = None) -> None:
+        super().__init__(parent)
+        self.undo_stack = QUndoStack(self)
+        self.undo_stack.setUndoLimit(1000)
+        self.undo_stack.cleanChanged.connect(self.changed)
+        self._project = project
+        self._tree: dict[str, Any] = project.model_dump(mode="json")
+        self._path: Path | None = None
+        self._disk: DiskState | None = None
+        self._case_index = 0
+        self._rejected: dict[str, Rejected] = {}
+
+    @property
+    def project(self) -> Project:
+        return self._project
+
+    @property
+    def case(self) -> Case:
+        """The case that is looked at."""
+        return self._project.cases[self.case_index]
+
+    @property
+    def case_index(self) -> int:
+        return min(self._case_index, len(self._project.cases) - 1)
+
+    @property
+    def path(self) -> Path | None:
+        return self._path
+
+    @property
+    def dirty(self) -> bool:
+        """Whether the project differs from what is on disk."""
+        return not self.undo_stack.isClean()
+
+    @property
+    def rejected(self) -> dict[str, Rejected]:
+        """By full pointer, what was entered and not taken. A copy."""
+        return dict(self._rejected)
+
+    @property
+    def tree(self) -> dict[str, Any]:
+        """The project as plain dicts, lists and numbers. A copy."""
+        return trees.copied(self._tree)
+
+    def choose_case(self, index: int) -> None:
+        """Look at another case. No edit: nothing of the project changes."""
+        if index != self._case_index and 0 <= index < len(self._project.cases):
+            self._case_index = index
+            self.changed.emit()
+
+    def full_pointer(self, pointer: str) -> str:
+        """A pointer into the project, from one that may be relative to the case."""
+        return pointer if pointer.startswith("/") else f"/cases/{self.case_index}/{pointer}"
+
+    def value_at(self, pointer: str) -> Any:
+        """The value in the project at a pointer, `None` where there is none."""
+        return trees.copied(trees.value_at(self._tree, self.full_pointer(pointer)))
+
+    def problem_at(self, pointer: str) -> str | None:
+        """The sentence on what was entered there and not taken."""
+        entry = self._rejected.get(self.full_pointer(pointer))
+        return entry.sentence if entry else None
+
+    def edit(self, label: str, pointer: str, value: Any, merge: str | None = None) -> bool:
+        """Set one value as one step of undo named `label`. False, and an entry in `rejected`, where it is not valid.
+
+        Values that were rejected before are tried again with it: two fields that fit only together can be changed
+        one after the other.
+        """
+        pointer = self.full_pointer(pointer)
+        waiting = {p: r.given for p, r in self._rejected.items() if r.waiting and p != pointer}
+        attempts = [{**waiting, pointer: value}, {pointer: value}] if waiting else [{pointer: value}]
+        sentence = ""
+        for attempt in attempts:
+            try:
+                after = trees.with_values(self._tree, attempt)
+                project = self._validated(after)
+            except LookupError:
+                sentence = "This part is no longer in the project."
+            except ProjectError as error:
+                sentence = _sentence_for(pointer, error.problems)
+            else:
+                self._rejected = {p: r for p, r in self._rejected.items() if p not in attempt}
+                self._push(label, project, merge)
+                return True
+        if pointer.endswith("/-"):
+            self.refused.emit(sentence)  # what was not appended has no field to show it at
+        else:
+            self.reject(pointer, value, sentence, waiting=True)
+        return False
+
+    def edit_tree(
+        self,
+        label: str,
+        change: Callable[[dict[str, Any]], None],
+        merge: str | None = None,
+        pointer: str = "",
+    ) -> bool:
+        """Change a copy of the whole tree as one step. Where that is not valid, the sentence goes to `rejected` at
+        `pointer`, or without one to the signal `refused`."""
+        after = self.tree
+        change(after)
+        where = self.full_pointer(pointer) if pointer else ""
+        try:
+            project = self._validated(after)
+        except ProjectError as error:
+            sentence = _sentence_for(where, error.problems)
+            if where:
+                self.reject(where, trees.value_at(after, where), sentence, waiting=False)
+            else:
+                self.refused.emit(sentence)
+            return False
+        self._rejected = {
+            p: r for p, r in self._rejected.items() if p != where and trees.same_place(self._tree, after, p)
+        }
+        self._push(label, project, merge)
+        return True
+
+    def reject(self, pointer: str, given: Any, sentence: str, waiting: bool = False) -> None:
+        """Note something entered that cannot be taken, such as text that is no number."""
+        pointer = self.full_pointer(pointer)
+        entry = Rejected(given, sentence, waiting)
+        if self._rejected.get(pointer) != entry:
+            self._rejected[pointer] = entry
+            self.changed.emit()
+
+    def forget_rejected(self) -> None:
+        """Drop everything that was entered and not taken; fields show the project's values again."""
+        if self._rejected:
+            self._rejected = {}
+            self.changed.emit()
+
+    def new(self, project: Project, path: Path | None = None, saved: bool = True) -> None:
+        """Begin with a project. `path` is its file, if any; `saved` False where it differs from that file."""
+        self._project, self._tree = project, project.model_dump(mode="json")
+        self._path = path
+        self._disk = disk_state(path) if path else None
+        self._case_index = 0
+        self._rejected = {}
+        blocked = self.blockSignals(True)
+        self.undo_stack.clear()
+        if saved:
+            self.undo_stack.setClean()
+        else:
+            self.undo_stack.resetClean()
+        self.blockSignals(blocked)
+        self.changed.emit()
+
+    def open(self, path: Path | str) -> None:
+        """Read a project file. Raises `DocumentError`; the project at hand then stays."""
+        path = Path(path).absolute()
+        try:
+            project = load_project(path)
+        except ProjectError as error:
+            listed = "\n".join(str(problem) for problem in error.problems[:8])
+            raise DocumentError(f"'{path.name}' cannot be opened.\n{listed}") from None
+        self.new(project, path)
+
+    def save(self) -> None:
+        """Write to the project's own file, whole or not at all. Raises `DocumentError`."""
+        if self._path is None:
+            raise DocumentError("The project has no file yet: save it under a name.")
+        self.save_as(self._path)
+
+    def save_as(self, path: Path | str) -> None:
+        """Write to a file, whole or not at all, and go on with it. Raises `DocumentError`; nothing is lost then."""
+        path = Path(path).absolute()
+        project = self._project
+        if self._path is not None and path.parent != self._path.parent:
+            project = self._validated(
+                trees.with_files_moved(self._tree, self._path.parent, path.parent), path.parent
+            )
+        _write(path, project_to_text(project))
+        self._project, self._tree = project, project.model_dump(mode="json")
+        self._path = path
+        self._disk = disk_state(path)
+        self.undo_stack.setClean()
+        self.changed.emit()
+
+    def changed_on_disk(self) -> bool:
+        """Whether another program has changed or removed the file since it was read or written here."""
+        return self._path is not None and self._disk is not None and disk_state(self._path) != self._disk
+
+    def accept_disk(self) -> None:
+        """Take note of what another program did to the file, and keep the project as it is here."""
+        if self._path is not None:
+            self._disk = disk_state(self._path)
+            self.undo_stack.resetClean()
+            self.changed.emit()
+
+    def _validated(self, tree: dict[str, Any], folder: Path | None = None) -> Project:
+        return project_from_tree(tree, folder or (self._path.parent if self._path else None))
+
+    def _push(self, label: str, project: Project, merge: str | None) -> None:
+        if project == self._project:
+            self.changed.emit()  # a rejected entry may have gone
+        else:
+            self.undo_stack.push(_Edit(self, label, self._project, project, merge))
+
+    def _show(self, project: Project, keep_rejected: bool) -> None:
+        self._project, self._tree = project, project.model_dump(mode="json")
+        if not keep_rejected:
+            self._rejected = {}
+        self.changed.emit()
+
+
+class _Edit(QUndoCommand):
+    """From one project to another. Both are immutable, so holding them is cheap and undo cannot go wrong."""
+
+    def __init__(
+        self, document: Document, label: str, before: Project, after: Project, merge: str | None
+    ) -> None:
+        super().__init__(label)
+        self._document, self._before, self._after, self._merge = document, before, after, merge
+        self._time = monotonic()
+        self._done_once = False
+
+    def id(self) -> int:
+        return -1 if self._merge is None else 1
+
+    def mergeWith(self, other: QUndoCommand) -> bool:
+        if not isinstance(other, _Edit) or other._merge != self._merge or other._time - self._time > BURST:
+            return False
+        self._after, self._time = other._after, other._time
+        self.setText(other.text())
+        if self._after == self._before:
+            self.setObsolete(True)
+        return True
+
+    def redo(self) -> None:
+        self._document._show(self._after, keep_rejected=not self._done_once)
+        self._done_once = True
+
+    def undo(self) -> None:
+        self._document._show(self._before, keep_rejected=False)
+
+
+def _sentence_for(pointer: str, problems: tuple[Problem, ...]) -> str:
+    """What is wrong, as a sentence; the place is named where it is not the place of the edit."""
+    here = [p for p in problems if p.pointer == pointer or pointer.startswith(p.pointer + "/")]
+    problem = (here or list(problems))[0]
+    text = problem.sentence if here or not problem.pointer else f"{problem.pointer}: {problem.sentence}"
+    return text[:1].upper() + text[1:] + ("" if text.endswith((".", "?", ")")) else ".")
+
+
+def _write(path: Path, text: str) -> None:
+    file = QSaveFile(str(path))
+    data = text.encode("utf-8")
+    done = file.open(QIODevice.OpenModeFlag.WriteOnly) and file.write(data) == len(data) and file.commit()
+    if not done:
+        reason = file.errorString().strip().rstrip(".")
+        raise DocumentError(
+            f"'{path.name}' could not be saved in {path.parent}: {reason}. Your work is kept here; save it elsewhere."
+        )

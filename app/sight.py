@@ -1,0 +1,70 @@
+"""What is looked at: the cursor, what is selected, the quantity and strips shown. Never saved in the project."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass, replace
+from typing import Any, Literal
+
+from PySide6.QtCore import QObject, Signal
+
+ShownQuantity = Literal["stress", "force", "velocity", "displacement"]
+#: What the strips under the x-t diagram may show.
+STRIPS = ("force_pair", "velocity", "stress", "displacement", "waves", "energy")
+
+
+@dataclass(frozen=True)
+class _Looked:
+    time: float = 0.0
+    place: float | None = None
+    selection: str = "load"
+    quantity: ShownQuantity = "stress"
+    strips: tuple[str, ...] = ("force_pair", "velocity")
+    time_range: tuple[float, float] | None = None
+    distance_range: tuple[float, float] | None = None
+
+
+class Sight(QObject):
+    """`time` (s) and `place` (m, `None` = nowhere) of the cursor; `selection`, a pointer relative to the case such as
+    "member/segments/1", "gauges/0", "ground", "far_end", "load" or "run"; `quantity` of all pictures; `strips` shown,
+    of `STRIPS`; shared zoom as `time_range` (s) and `distance_range` (m), `None` = all."""
+
+    changed = Signal()
+
+    def __init__(self, parent: QObject | None = None) -> None:
+        super().__init__(parent)
+        self._looked = _Looked()
+
+    def set(self, **what: Any) -> None:
+        """Change several at once; one signal, and only where something differs. An unknown name is a `TypeError`."""
+        looked = replace(self._looked, **what)
+        if looked != self._looked:
+            self._looked = looked
+            self.changed.emit()
+
+    @property
+    def time(self) -> float:
+        return self._looked.time
+
+    @property
+    def place(self) -> float | None:
+        return self._looked.place
+
+    @property
+    def selection(self) -> str:
+        return self._looked.selection
+
+    @property
+    def quantity(self) -> ShownQuantity:
+        return self._looked.quantity
+
+    @property
+    def strips(self) -> tuple[str, ...]:
+        return self._looked.strips
+
+    @property
+    def time_range(self) -> tuple[float, float] | None:
+        return self._looked.time_range
+
+    @property
+    def distance_range(self) -> tuple[float, float] | None:
+        return self._looked.distance_range
