@@ -1,0 +1,74 @@
+"""Starting points, the parts library, and the marks that tell where a value came from."""
+
+from __future__ import annotations
+
+from copy import deepcopy
+
+import pytest
+
+from app import provenance
+from app.bench.parts_library import LIBRARY, parts_of_kind
+from app.starting_points import STARTING_POINTS, driven_pile, new_tree
+from app.tree import value_at, with_values
+from solver import project_from_tree
+
+
+@pytest.mark.parametrize("name", [point.name for point in STARTING_POINTS])
+def test_a_starting_point_is_a_valid_project_whose_marks_point_at_values(name: str) -> None:
+    tree = new_tree(name)
+    project = project_from_tree(tree)
+    assert project.cases[0].gauges
+    assert all(value_at(tree, pointer) is not None for pointer in project.provenance)
+
+
+@pytest.mark.parametrize("part", LIBRARY, ids=lambda part: f"{part.kind} {part.name}")
+def test_every_part_of_the_library_fits_a_project_and_names_its_source(part) -> None:
+    tree = driven_pile()
+    places = {
+        "material": "/materials/0",
+        "cushion": "/cases/0/load/cushion",
+        "ram": "/cases/0/load",
+        "layer": "/cases/0/ground/layers/0",
+        "toe": "/cases/0/ground/toe",
+    }
+    if part.kind == "section":
+        tree = with_values(tree, {"/cases/0/member/segments/0/section": dict(part.values)})
+    else:
+        value_at(tree, places[part.kind]).update(part.values)
+    project_from_tree(tree)
+    assert part.source
+
+
+def test_parts_are_found_by_words_in_any_order() -> None:
+    names = [part.name for part in parts_of_kind("material", "dynamic 60 concrete")]
+    assert names == ["concrete 60 MPa, dynamic modulus"]
+    assert parts_of_kind("ram", "no such thing") == []
+
+
+def test_damping_factors_of_the_library_are_in_seconds_per_metre() -> None:
+    """0.05 s/ft is 0.164 s/m (E. A. L. Smith 1960, from memory); four decimals are kept."""
+    smith = next(p for p in parts_of_kind("layer") if p.source.startswith("E. A. L. Smith"))
+    assert smith.values["damping"] == pytest.approx(0.05 / 0.3048, abs=5e-5)
+
+
+def test_marks_follow_their_layer_and_go_with_it() -> None:
+    tree = driven_pile()
+    before = deepcopy(tree["provenance"])
+    layers = "/cases/0/ground/layers"
+    provenance.rearrange(tree, layers, [1, 0])
+    assert tree["provenance"][f"{layers}/0/quake"] == before[f"{layers}/1/quake"]
+    assert tree["provenance"]["/materials/0/density"] == before["/materials/0/density"]
+    provenance.rearrange(tree, layers, [1])
+    assert tree["provenance"][f"{layers}/0/damping"] == before[f"{layers}/0/damping"]
+    assert f"{layers}/1/damping" not in tree["provenance"]
+
+
+def test_a_mark_is_confirmed_or_forgotten() -> None:
+    tree = driven_pile()
+    provenance.confirm(tree, "/materials/0/density")
+    assert provenance.mark_at(tree, "/materials/0/density")["state"] == "confirmed"
+    provenance.forget(tree, "/cases/0/ground")
+    assert not any(pointer.startswith("/cases/0/ground") for pointer in tree["provenance"])
+    provenance.forget(tree, "/cases/0")
+    provenance.forget(tree, "/materials/0")
+    assert "provenance" not in tree
