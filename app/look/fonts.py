@@ -1,0 +1,33 @@
+"""One type scale, built on the size that the system gives its own text."""
+
+from __future__ import annotations
+
+from typing import Literal
+
+from PySide6.QtGui import QFont, QGuiApplication
+
+Level = Literal["small", "body", "strong", "title", "figure"]
+#: Size as a share of the system's, and weight.
+LEVELS: dict[Level, tuple[float, QFont.Weight]] = {
+    "small": (0.9, QFont.Weight.Normal),
+    "body": (1.0, QFont.Weight.Normal),
+    "strong": (1.0, QFont.Weight.DemiBold),
+    "title": (1.12, QFont.Weight.DemiBold),
+    "figure": (1.45, QFont.Weight.DemiBold),
+}
+
+
+def font(level: Level = "body") -> QFont:
+    """A font of the scale, with figures of equal width so that columns of numbers stand in line."""
+    scale, weight = LEVELS[level]
+    made = QFont(QGuiApplication.font())
+    made.setPointSizeF(base_size() * scale)
+    made.setWeight(weight)
+    made.setFeature(QFont.Tag("tnum"), 1)
+    return made
+
+
+def base_size() -> float:
+    """Point size of body text."""
+    size = QGuiApplication.font().pointSizeF()
+    return size if size > 0 else 9.0

@@ -1,0 +1,115 @@
+"""The stylesheet, built from a palette and the spacing grid.
+
+A widget says what it is by the property `role`, set before it is shown:
+labels "title", "strong", "figure", "soft", "small", "problem"; frames "paper" (a panel), "row"; buttons "chip" (one of
+several that can be switched on), "quiet" (no frame until pointed at), "main" (the one action of a choice), "link".
+"""
+
+from __future__ import annotations
+
+from app.look.fonts import LEVELS
+from app.look.palette import Palette
+from app.look.spacing import FIELD, GAP, RADIUS, SPACE
+
+SHEET = """
+QWidget {{ color: {ink}; }}
+QMainWindow, QDialog, QMessageBox {{ background: {window}; }}
+QToolTip {{ color: {ink}; background: {raised}; border: 1px solid {line}; padding: {gap}px; }}
+QFrame[role="paper"], QWidget[role="paper"] {{ background: {paper}; border-radius: {radius}px; }}
+
+QLabel[role="title"] {{ font-size: {title}pt; font-weight: 600; }}
+QLabel[role="strong"] {{ font-weight: 600; }}
+QLabel[role="figure"] {{ font-size: {figure}pt; font-weight: 600; }}
+QLabel[role="soft"] {{ color: {soft_ink}; }}
+QLabel[role="small"] {{ color: {soft_ink}; font-size: {small}pt; }}
+QLabel[role="problem"] {{ color: {over}; font-size: {small}pt; }}
+
+QLineEdit, QComboBox, QSpinBox, QPlainTextEdit, QTextEdit {{
+    background: {raised}; border: 1px solid {edge}; border-radius: {radius}px;
+    padding: 0 {inner}px; min-height: {field}px;
+    selection-background-color: {accent}; selection-color: {on_accent}; }}
+QPlainTextEdit, QTextEdit {{ padding: {gap}px; }}
+QLineEdit:focus, QComboBox:focus, QSpinBox:focus, QPlainTextEdit:focus, QTextEdit:focus {{
+    border: 2px solid {accent}; padding: 0 {inner_focus}px; min-height: {field_focus}px; }}
+QLineEdit[invalid="true"] {{ border: 2px solid {over}; padding: 0 {inner_focus}px; min-height: {field_focus}px; }}
+QLineEdit:disabled, QComboBox:disabled {{ color: {line}; background: {paper}; }}
+QComboBox::drop-down {{ border: none; width: 20px; }}
+QComboBox::down-arrow {{ image: none; width: 0; height: 0; border-left: 4px solid transparent;
+    border-right: 4px solid transparent; border-top: 5px solid {soft_ink}; margin-right: {gap}px; }}
+QComboBox QAbstractItemView {{ background: {raised}; border: 1px solid {line};
+    selection-background-color: {accent_soft}; selection-color: {ink}; outline: none; }}
+
+QPushButton, QToolButton {{
+    background: {raised}; border: 1px solid {edge}; border-radius: {radius}px;
+    padding: 2px 10px; min-height: {button}px; }}
+QToolButton {{ padding: 2px {inner}px; }}
+QPushButton:hover, QToolButton:hover {{ background: {accent_soft}; border-color: {line}; }}
+QPushButton:pressed, QToolButton:pressed {{ background: {pressed}; }}
+QPushButton:focus, QToolButton:focus {{ border: 2px solid {accent}; padding: 1px 9px; }}
+QToolButton:focus {{ padding: 1px {inner_focus}px; }}
+QPushButton:disabled, QToolButton:disabled {{ color: {line}; background: {paper}; }}
+QPushButton[role="chip"]:checked, QToolButton[role="chip"]:checked {{
+    background: {chosen}; color: {on_chosen}; border-color: {chosen}; }}
+QPushButton[role="main"] {{ background: {accent}; color: {on_accent}; border-color: {accent}; font-weight: 600; }}
+QPushButton[role="main"]:hover {{ background: {chosen}; color: {on_chosen}; }}
+QPushButton[role="quiet"], QToolButton[role="quiet"] {{ background: transparent; border: 1px solid transparent; }}
+QPushButton[role="quiet"]:hover, QToolButton[role="quiet"]:hover {{ background: {pressed}; }}
+QPushButton[role="quiet"]:focus, QToolButton[role="quiet"]:focus {{ border: 2px solid {accent}; }}
+QPushButton[role="link"] {{ background: transparent; border: none; color: {accent}; text-align: left;
+    text-decoration: underline; padding: 2px; }}
+QPushButton[role="link"]:focus {{ border: 2px solid {accent}; padding: 0; }}
+QPushButton::menu-indicator, QToolButton::menu-indicator {{ image: none; width: 0; }}
+
+QCheckBox:focus, QRadioButton:focus {{ outline: 2px solid {accent}; }}
+QMenuBar {{ background: {window}; padding: 0 {gap}px; }}
+QMenuBar::item {{ padding: {gap}px {space}px; border-radius: {radius}px; background: transparent; }}
+QMenuBar::item:selected {{ background: {pressed}; }}
+QMenu {{ background: {raised}; border: 1px solid {line}; padding: {gap}px; }}
+QMenu::item {{ padding: {gap}px 24px {gap}px {wide}px; border-radius: {radius}px; }}
+QMenu::item:selected {{ background: {accent_soft}; color: {ink}; }}
+QMenu::item:disabled {{ color: {line}; }}
+QMenu::separator {{ height: 1px; background: {grid}; margin: {gap}px {space}px; }}
+
+QScrollArea {{ border: none; background: transparent; }}
+QScrollBar:vertical {{ background: transparent; width: 10px; margin: 0; }}
+QScrollBar:horizontal {{ background: transparent; height: 10px; margin: 0; }}
+QScrollBar::handle {{ background: {edge}; border-radius: 3px; min-height: 28px; min-width: 28px; margin: 2px; }}
+QScrollBar::handle:hover {{ background: {line}; }}
+QScrollBar::add-line, QScrollBar::sub-line {{ width: 0; height: 0; }}
+QScrollBar::add-page, QScrollBar::sub-page {{ background: transparent; }}
+QSplitter::handle {{ background: transparent; }}
+QSplitter::handle:hover {{ background: {accent}; }}
+
+QTableView {{ background: {paper}; alternate-background-color: {window}; gridline-color: {grid};
+    border: 1px solid {edge}; selection-background-color: {accent_soft}; selection-color: {ink}; }}
+QTableView:focus {{ border: 2px solid {accent}; }}
+QHeaderView::section {{ background: {window}; color: {soft_ink}; border: none; padding: {gap}px {space}px; }}
+QListView {{ background: {paper}; border: 1px solid {edge}; border-radius: {radius}px; outline: none; }}
+QListView::item {{ padding: {gap}px {space}px; border-radius: {radius}px; color: {ink}; }}
+QListView::item:selected {{ background: {accent_soft}; color: {ink}; }}
+QProgressBar {{ background: {pressed}; border: none; border-radius: 2px; max-height: 4px; min-height: 4px; }}
+QProgressBar::chunk {{ background: {accent}; border-radius: 2px; }}
+QSlider::groove:horizontal {{ background: {pressed}; height: 4px; border-radius: 2px; }}
+QSlider::sub-page:horizontal {{ background: {line}; border-radius: 2px; }}
+QSlider::handle:horizontal {{ background: {chosen}; width: 14px; height: 14px; margin: -5px 0; border-radius: 7px; }}
+QSlider::handle:horizontal:focus {{ background: {accent}; }}
+"""
+
+
+def stylesheet(palette: Palette, base_size: float) -> str:
+    """The stylesheet of the whole program; `base_size` is the point size of body text."""
+    sizes = {level: round(base_size * scale, 1) for level, (scale, _weight) in LEVELS.items()}
+    inner = SPACE - 2
+    return SHEET.format(
+        **{name: value for name, value in vars(palette).items() if isinstance(value, str)},
+        **{name: sizes[name] for name in ("title", "figure", "small")},
+        gap=GAP,
+        space=SPACE,
+        wide=2 * SPACE,
+        radius=RADIUS,
+        inner=inner,
+        inner_focus=inner - 1,
+        field=FIELD - 2,
+        field_focus=FIELD - 4,
+        button=FIELD - 4,
+    )
