@@ -32,7 +32,7 @@ def write_whole(path: Path, text: str) -> None:
     """
     handle, name = tempfile.mkstemp(prefix=f".{path.name[:40]}.", suffix=".part", dir=path.parent)
     try:
-        with open(handle, "w", encoding="utf-8", newline="\n") as stream:
+        with open(handle, "w", encoding="utf-8", errors="backslashreplace", newline="\n") as stream:
             stream.write(text)
             stream.flush()
             os.fsync(stream.fileno())

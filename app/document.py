@@ -290,7 +290,9 @@ def _sentence_for(pointer: str, problems: tuple[Problem, ...]) -> str:
 
 def _write(path: Path, text: str) -> None:
     file = QSaveFile(str(path))
-    data = text.encode("utf-8")
+    data = text.encode(
+        "utf-8", errors="backslashreplace"
+    )  # half of a surrogate pair: the escape that JSON has for it
     done = file.open(QIODevice.OpenModeFlag.WriteOnly) and file.write(data) == len(data) and file.commit()
     if not done:
         reason = file.errorString().strip().rstrip(".")

@@ -191,6 +191,6 @@ def _example(dimension: str) -> str:
 def _registry() -> UnitRegistry[Any]:
     from pint import UnitRegistry  # a third of a second: only where a unit is needed
 
-    registry = UnitRegistry(non_int_type=Decimal)
+    registry: UnitRegistry[Any] = UnitRegistry(non_int_type=Decimal)
     registry.define("kilopound_of_mass = 1000 * pound = kilopound")
     return registry

@@ -1,0 +1,137 @@
+"""The command line: the window, `solve` and `check`. Qt is imported only for the window."""
+
+from __future__ import annotations
+
+import argparse
+import sys
+from collections.abc import Sequence
+from dataclasses import replace
+from math import isfinite
+from pathlib import Path
+
+from app import __version__
+
+SOLVED, FAILED, UNUSABLE, NO_WINDOW = 0, 1, 2, 3
+
+ABOUT = """Stress waves in struck piles, rods and bars.
+
+  python3 -m app                              open the window
+  python3 -m app FILE.strike                  open it on a project
+  python3 -m app solve FILE.strike --out DIR  solve every case and write results; needs no screen
+  python3 -m app check FILE.strike ...        say whether projects are valid
+"""
+
+
+def main(argv: Sequence[str]) -> int:
+    """Run with the arguments after the program's name; returns the exit status.
+
+    0 solved, valid, or the window was closed; 1 a case failed; 2 a file or an argument is not usable; 3 no window can
+    be opened here.
+    """
+    for stream in (sys.stdout, sys.stderr):
+        if hasattr(stream, "reconfigure"):
+            stream.reconfigure(errors="replace")  # a console that lacks a letter must not end in a traceback
+    try:
+        if argv[:1] == ["solve"]:
+            return _solve(_solve_parser().parse_args(argv[1:]))
+        if argv[:1] == ["check"]:
+            return _check(_check_parser().parse_args(argv[1:]))
+        return _window(_window_parser().parse_args(argv))
+    except SystemExit as end:  # argparse has said what is wrong, or has shown its help
+        return end.code if isinstance(end.code, int) else UNUSABLE
+    except KeyboardInterrupt:
+        return _say("Stopped.", FAILED)
+    except BrokenPipeError:  # whoever read the output has gone
+        sys.stderr.close()
+        return FAILED
+
+
+def _window_parser() -> argparse.ArgumentParser:
+    parser = argparse.ArgumentParser(
+        prog="striketrace", description=ABOUT, formatter_class=argparse.RawDescriptionHelpFormatter
+    )
+    parser.add_argument("file", nargs="?", metavar="FILE.strike", help="project to open")
+    parser.add_argument("--version", action="version", version=f"Striketrace {__version__}")
+    return parser
+
+
+def _solve_parser() -> argparse.ArgumentParser:
+    parser = argparse.ArgumentParser(
+        prog="striketrace solve",
+        description="Solve the cases of a project; write gauges.csv, envelope.csv and summary.json, a folder a case.",
+    )
+    parser.add_argument("file", metavar="FILE.strike", type=Path)
+    parser.add_argument("--out", metavar="DIR", type=Path, required=True, help="folder for the results")
+    parser.add_argument("--case", metavar="NAME", help="solve this case only")
+    parser.add_argument("--element-length", metavar="M", type=_length, help="longest element, in metres")
+    parser.add_argument("--quiet", action="store_true", help="say nothing but errors")
+    parser.add_argument(
+        "--compression-positive",
+        action="store_true",
+        help="write compression as positive (tension is otherwise)",
+    )
+    return parser
+
+
+def _check_parser() -> argparse.ArgumentParser:
+    parser = argparse.ArgumentParser(
+        prog="striketrace check", description="Say whether projects are valid, and where they are not."
+    )
+    parser.add_argument("files", nargs="+", metavar="FILE.strike", type=Path)
+    return parser
+
+
+def _length(text: str) -> float:
+    try:
+        value = float(text)
+    except ValueError:
+        value = float("nan")
+    if not (isfinite(value) and value > 0):
+        raise argparse.ArgumentTypeError(f"'{text}' is no length: give metres above 0, such as 0.05")
+    return value
+
+
+def _window(arguments: argparse.Namespace) -> int:
+    try:
+        from app.main_loop import run_window
+    except ImportError as error:
+        from app.qt_needs import explain_qt_failure
+
+        return _say(explain_qt_failure(error), NO_WINDOW)
+    from app.qt_needs import explain_no_display
+
+    reason = explain_no_display()
+    return _say(reason, NO_WINDOW) if reason else run_window(arguments.file)
+
+
+def _check(arguments: argparse.Namespace) -> int:
+    from solver import ProjectError, load_project
+
+    status = SOLVED
+    for path in arguments.files:
+        try:
+            project = load_project(path)
+        except ProjectError as error:
+            status = _say(str(error), UNUSABLE)
+        else:
+            count = len(project.cases)
+            print(f"{path}: valid, {count} case{'s' if count > 1 else ''}")
+    return status
+
+
+def _solve(arguments: argparse.Namespace) -> int:
+    from app.solve_command import Choices, solve_file
+
+    choices = Choices(
+        case=arguments.case,
+        element_length=arguments.element_length,
+        compression_positive=arguments.compression_positive,
+    )
+    if arguments.quiet:
+        choices = replace(choices, tell=None)
+    return solve_file(arguments.file, arguments.out, choices)
+
+
+def _say(sentence: str, status: int) -> int:
+    print(sentence, file=sys.stderr)
+    return status

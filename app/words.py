@@ -1,0 +1,234 @@
+"""Facts as sentences: findings, notes, cautions and states, in the units and the sign of the project. Imports no Qt."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+from dataclasses import dataclass
+
+from app.units import Units, rounded
+from solver.answer.cautions import Caution
+from solver.answer.findings import (
+    EnergyFinding,
+    Findings,
+    Happening,
+    Quality,
+    SetFinding,
+    State,
+    StressAt,
+    StressFinding,
+    segment_of,
+)
+from solver.model.project import Case
+
+#: A state is told by a sign and a word, never by a colour alone.
+SIGNS: dict[State, str] = {"within": "✓", "near": "!", "over": "✕", "no limit": "–"}
+STATES: dict[State, str] = {
+    "within": "within the limit",
+    "near": "near the limit",
+    "over": "over the limit",
+    "no limit": "no limit given",
+}
+
+MODEL_CAUTION = "A model's answer, for a licensed engineer to judge under local codes."
+LIMIT_CAUTION = "Stress limits come from the governing code."
+AXIAL_CAUTION = "Axial average only: bending adds to it."
+LOAD_CAUTION = "Diesel and vibratory hammers are not modelled."
+
+#: Stresses below this share of the larger peak are rounding, and are told as none at all.
+NOTHING = 1e-9
+
+
+@dataclass(frozen=True)
+class Line:
+    """One line of the verdict: a large figure, its name, and details. `time` (s) and `position` (m): where it is."""
+
+    figure: str
+    name: str
+    detail: str
+    state: State | None = None
+    time: float | None = None
+    position: float | None = None
+
+
+@dataclass(frozen=True)
+class Note:
+    """One sentence under the verdict. `time` (s), `position` (m) and `pointer` (in the case) say where it leads."""
+
+    text: str
+    time: float | None = None
+    position: float | None = None
+    pointer: str = ""
+
+
+def verdict(findings: Findings, units: Units) -> tuple[Line, ...]:
+    """The verdict: peaks with their share of the limit, set, energy past the first gauge."""
+    larger = max(findings.compression.peak.value, findings.tension.peak.value)
+    lines = [_stress(findings.compression, units, larger), _stress(findings.tension, units, larger)]
+    if findings.set is not None:
+        lines.append(_set(findings.set, units))
+    if findings.energy is not None:
+        lines.append(_energy(findings.energy, units))
+    return tuple(lines)
+
+
+def notes(findings: Findings, case: Case, units: Units) -> tuple[Note, ...]:
+    """Notes on the run: what happened, the solver's warnings, cautions, and how the run ended."""
+    found = list(_happenings(findings.happenings, case, units))
+    if findings.set is not None and findings.set.head_rebound is not None:
+        found.append(
+            Note(f"The struck end rebounds by {units.show(findings.set.head_rebound, 'small_length')}.")
+        )
+    found += [Note(text) for text in findings.warnings]
+    found += [Note(caution(c, units), pointer=c.pointer) for c in findings.cautions]
+    if not findings.quality.finished:
+        found.insert(0, Note("Stopped before the end: this is what was solved until then."))
+    return tuple(found)
+
+
+def quality(of: Quality, units: Units) -> tuple[str, ...]:
+    """Mesh, step and energy of a run, for those who want to judge it as a computation."""
+    return (
+        f"{of.elements} elements, {of.steps} steps of {units.show(of.time_step, 'time')}.",
+        f"Worst Courant number {of.courant_worst:.4f}.",
+        f"The energy closes to {_share(of.energy_residual)} of its largest.",
+        "The member has come to rest." if of.at_rest else "The member still moves at the end of the run.",
+    )
+
+
+def as_text(findings: Findings, case: Case, units: Units) -> str:
+    """A paragraph fit for a report: verdict, notes and the caution that goes with every result."""
+    lines = [f"{case.name}."]
+    for line in verdict(findings, units):
+        lines.append(
+            f"{line.name[:1].upper()}{line.name[1:]} {line.figure}: {line.detail.replace(chr(10), '; ')}."
+        )
+    lines += [note.text for note in notes(findings, case, units)]
+    lines += [AXIAL_CAUTION, MODEL_CAUTION, LIMIT_CAUTION]
+    return " ".join(lines)
+
+
+def place_and_time(position: float, time: float, units: Units) -> str:
+    """ "at 16.0 m, 4.90 ms"."""
+    return f"at {units.show(position, 'length')}, {units.show(time, 'time')}"
+
+
+def percent(share: float) -> str:
+    """A share for reading: "51 %", "0.40 %"."""
+    return f"{rounded(100 * share, 2 if share < 0.1 else 3 if share >= 1 else 2)} %"
+
+
+def _stress(finding: StressFinding, units: Units, larger: float) -> Line:
+    peak, worst = finding.peak, finding.worst
+    name = f"peak {finding.sign}"
+    if peak.value <= NOTHING * larger:
+        return Line(f"0 {units.unit('stress')}", name, f"no {finding.sign} anywhere")
+    if worst is None:
+        detail = (
+            f"{SIGNS['no limit']} {STATES['no limit']} · {place_and_time(peak.position, peak.time, units)}"
+        )
+    elif finding.differs:
+        detail = (
+            f"{place_and_time(peak.position, peak.time, units)}\n"
+            f"{_state(worst)} in {worst.segment}, {place_and_time(worst.position, worst.time, units)}"
+        )
+    else:
+        detail = f"{_state(worst)} · {place_and_time(peak.position, peak.time, units)}"
+    return Line(units.show(peak.value, "stress"), name, detail, finding.state, peak.time, peak.position)
+
+
+def _state(stress: StressAt) -> str:
+    assert stress.share is not None
+    return f"{SIGNS[stress.state]} {STATES[stress.state]}, {percent(stress.share)}"
+
+
+def _set(finding: SetFinding, units: Units) -> Line:
+    per, name = (0.3048, "foot") if units.system == "us" else (0.25, "0.25 m")
+    moved = f"toe moved {units.show(finding.toe_largest, 'small_length')}"
+    blows = finding.blows_per_metre
+    detail = (
+        f"{rounded(blows * per, 2 if blows * per < 10 else 3)} blows per {name} · {moved}"
+        if blows
+        else (f"the toe does not stay down · {moved}")
+    )
+    figure = units.show(finding.value, "small_length")
+    return Line(figure, "set per blow", detail, None, finding.time, finding.position)
+
+
+SOURCES = {
+    "ram": "the ram's energy at impact",
+    "striker": "the striker's energy",
+    "load": "the work of the load",
+}
+
+
+def _energy(finding: EnergyFinding, units: Units) -> Line:
+    parts = []
+    if finding.share is not None:
+        energy = units.show(finding.source_energy, "energy")
+        parts.append(f"{percent(finding.share)} of {SOURCES[finding.source]}, {energy}")
+    if finding.drop_energy:
+        energy = units.show(finding.drop_energy, "energy")
+        parts.append(f"{percent(finding.value / finding.drop_energy)} of the drop energy, {energy}")
+    figure = units.show(finding.value, "energy")
+    return Line(figure, f"past gauge {finding.gauge}", "\n".join(parts), None, finding.time, finding.position)
+
+
+def _happenings(all_of_them: tuple[Happening, ...], case: Case, units: Units) -> Iterator[Note]:
+    """Each kind at each place once or twice, and how often in all."""
+    times: dict[tuple[str, float], int] = {}
+    for one in all_of_them:
+        times[one.kind, one.position] = times.get((one.kind, one.position), 0) + 1
+    for one in all_of_them:
+        if one.again > 1 or (one.kind == "impact" and one.again == 0):
+            continue
+        count = times[one.kind, one.position]
+        text = _happening(one, case, units)
+        if one.again == (0 if count == 2 else 1) and count > 2:
+            text += f" ({count} times in all)"
+        yield Note(f"{text}.", one.time, one.position)
+
+
+def _happening(one: Happening, case: Case, units: Units) -> str:
+    at, when = units.show(one.position, "length"), units.show(one.time, "time")
+    striking = "Striker" if case.load.kind == "striker" else "Ram"
+    segment = case.member.segments[int(segment_of(case, one.position))].name  # type: ignore[arg-type]
+    again = " again" if one.again else ""
+    return {
+        "impact": f"{striking} strikes{again} at {when}",
+        "separation": f"{striking} leaves{again} at {when}",
+        "first_yield": f"{segment} first yields at {at}, {when}",
+        "crack": f"{segment} cracks at {at}, {when}",
+        "joint_opened": f"The joint at {at} opens{again} at {when}",
+        "joint_closed": f"The joint at {at} closes{again} at {when}",
+        "wall_contact": f"The far end meets the wall{again} at {when}",
+        "toe_lift": f"The toe lifts off the ground{again} at {when}",
+    }[one.kind]
+
+
+def caution(of: Caution, units: Units) -> str:
+    """One caution on the description of a case."""
+    if of.kind == "gauge_near_end":
+        return (
+            f"Gauge {of.name} is nearer than 1.5 diameters ({units.show(of.bound, 'length')}) to the struck end: "
+            "the blow has not spread over the section there."
+        )
+    if of.kind == "short_pulse":
+        return (
+            f"The pulse is {units.show(of.value, 'length')} long, less than ten diameters: too short for rod theory, "
+            "a real rod would spread it."
+        )
+    if of.kind == "static_modulus":
+        return (
+            f"{of.name} carries waves at {units.show(of.value, 'velocity')}, slow for concrete: "
+            "is its modulus the static one? Under a blow the dynamic modulus counts."
+        )
+    shown, bound = units.show(of.value, "smith_damping"), units.show(of.bound, "smith_damping")
+    side = "below" if of.value < of.bound else "above"
+    return (
+        f"The damping factor of {of.name}, {shown}, is {side} the usual {bound}: "
+        "is it in s/m, not in s/ft (1 s/ft = 3.28 s/m)?"
+    )
+
+
+def _share(value: float) -> str:
+    return f"{value:.1e}" if value < 1e-3 else percent(value)
