@@ -1,24 +1,32 @@
 """One-dimensional stress waves in struck members: describe a case, solve it, read the answer. Knows no screen."""
 
+from solver.answer.findings import Findings, findings_of
 from solver.answer.result import Envelope, Event, Fields, GaugeRecord, Ledger, Peak, Result
+from solver.errors import SolveError
 from solver.model.checks import Problem
 from solver.model.file import ProjectError, load_project, parse_project, project_from_tree, project_to_text
 from solver.model.project import Case, Project
+from solver.run import Progress, solve
 
 __all__ = [
     "Case",
     "Envelope",
     "Event",
     "Fields",
+    "Findings",
     "GaugeRecord",
     "Ledger",
     "Peak",
     "Problem",
+    "Progress",
     "Project",
     "ProjectError",
     "Result",
+    "SolveError",
+    "findings_of",
     "load_project",
     "parse_project",
     "project_from_tree",
     "project_to_text",
+    "solve",
 ]

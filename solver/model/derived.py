@@ -148,6 +148,11 @@ def layer_resistances(case: Case) -> tuple[float, ...]:
     return tuple(totals)
 
 
+def resistance_split(total: float, toe_share: float) -> tuple[float, float]:
+    """Shaft and toe resistance, N, from their total and the toe's share of it (0 to 1)."""
+    return total * (1 - toe_share), total * toe_share
+
+
 def _segments_with_start(case: Case) -> Iterator[tuple[float, Segment]]:
     start = 0.0
     for segment in case.member.segments:

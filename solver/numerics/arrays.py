@@ -1,0 +1,107 @@
+"""What the kernels march with: groups of plain arrays, handed in whole and changed in place."""
+
+from typing import NamedTuple
+
+import numpy as np
+from numpy.typing import NDArray
+
+Array = NDArray[np.float64]
+Ints = NDArray[np.int64]
+Singles = NDArray[np.float32]
+
+
+class Rod(NamedTuple):
+    """Links and nodes. `blocks`: law, first link, stop, shape (blocks, 3). `push` = dt/m of each node, with what acts
+    implicitly on it. `special`: nodes with a spring or dashpot to ground, their `spring` (N/m) and `dashpot` (N·s/m).
+    `inertia`: Love's coupling mass per link (kg), empty where there is none; `pivot` and `carry` factorise its matrix."""
+
+    blocks: Ints
+    stiff: Array
+    par: Array
+    state: Array
+    push: Array
+    mass: Array
+    weight: Array
+    special: Ints
+    spring: Array
+    dashpot: Array
+    inertia: Array
+    pivot: Array
+    carry: Array
+    fixed_end: bool
+    driven: Ints
+
+
+class Shaft(NamedTuple):
+    """Shaft arrays: plain laws from node `first` on; power law and radiation on listed nodes."""
+
+    first: int
+    r: Array
+    strength: Array
+    stiff: Array
+    flexible: Array
+    smith: Array
+    viscous: Array
+    power_nodes: Ints
+    power: Array
+    radiation_nodes: Ints
+    radiation: Array
+
+
+class Bounds(NamedTuple):
+    """Toe, joints, wall, train. `joints`: link per joint; `joint_par`: gap, slack; `joint_force`: force of the last step."""
+
+    toe_par: Array
+    toe_state: Array
+    joints: Ints
+    joint_par: Array
+    joint_force: Array
+    wall: Array
+    train_links: Ints
+    train_kinds: Ints
+    train_par: Array
+    train_state: Array
+    train_force: Array
+
+
+class Motion(NamedTuple):
+    """State of all nodes: displacement, velocity of the last half step, of the coming one; force of each link."""
+
+    u: Array
+    v: Array
+    w: Array
+    force: Array
+    rest: Array
+
+
+class Extremes(NamedTuple):
+    """Envelopes, shape (links,) and (nodes,); times as step numbers."""
+
+    low: Array
+    low_step: Array
+    high: Array
+    high_step: Array
+    speed: Array
+    travel: Array
+
+
+class Records(NamedTuple):
+    """What a chunk records. Gauges: two readings each, `node` shape (g, 2), `weights` (g, 2, 6) = share, left, right,
+    mass, constant, share of the left strain. `force` ... (g, steps). Frames: `columns` (links), every `stride` steps."""
+
+    node: Ints
+    weights: Array
+    force: Array
+    velocity: Array
+    displacement: Array
+    acceleration: Array
+    strain: Array
+    columns: Ints
+    frame_force: Singles
+    frame_velocity: Singles
+    frame_displacement: Singles
+    ledger: Array
+    ram: Array
+    events: Ints
+    event_count: Ints
+    flags: Ints

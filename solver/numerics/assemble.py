@@ -1,0 +1,222 @@
+"""From the chain of a case to the arrays that the kernels march with."""
+
+from __future__ import annotations
+
+import numpy as np
+from numpy.typing import NDArray
+
+from solver.model.project import Gauge
+from solver.numerics.arrays import Bounds, Extremes, Motion, Records, Rod
+from solver.numerics.balance import LEDGER
+from solver.numerics.chain import Chain, Stretch
+from solver.numerics.ground import toe_of
+from solver.numerics.links import BRITTLE, ELASTIC, ELASTIC_PLASTIC, LARGE_STRAIN, VISCOELASTIC
+
+Array = NDArray[np.float64]
+LAW_NUMBERS = {
+    "elastic": ELASTIC,
+    "viscoelastic": VISCOELASTIC,
+    "elastic_plastic": ELASTIC_PLASTIC,
+    "brittle_tension": BRITTLE,
+    "large_strain": LARGE_STRAIN,
+}
+
+
+def rod_of(chain: Chain, drag: float = 0.0) -> Rod:
+    """Links, masses and what acts implicitly on nodes. `drag` (1/s): damping in proportion to mass, for settling."""
+    dt, links = chain.dt, len(chain.axial)
+    par, state = np.zeros((3, links)), np.zeros((3, links))
+    for stretch in chain.stretches:
+        _law_parameters(chain, stretch, par)
+    special = np.flatnonzero((chain.damping > 0) | (chain.spring > 0))
+    effective = chain.mass * (1 + drag * dt / 2) + chain.damping * dt / 2 + chain.spring * dt**2 / 4
+    inertia, pivot, carry = _lateral_inertia(chain, effective)
+    weight = chain.mass * chain.gravity
+    return Rod(
+        blocks=_blocks(chain),
+        stiff=chain.axial / chain.length,
+        par=par,
+        state=state,
+        push=dt / effective,
+        mass=chain.mass.copy(),
+        weight=weight,
+        special=special,
+        spring=chain.spring[special],
+        dashpot=chain.damping[special],
+        inertia=inertia,
+        pivot=pivot,
+        carry=carry,
+        fixed_end=chain.fixed_end,
+        driven=np.array([chain.head, 0]),
+    )
+
+
+def _blocks(chain: Chain) -> NDArray[np.int64]:
+    """Runs of links with one law; links without an element are elastic with no stiffness."""
+    laws = np.full(len(chain.axial), ELASTIC)
+    for stretch in chain.stretches:
+        laws[stretch.start : stretch.stop] = LAW_NUMBERS[stretch.material.law.kind]
+    edges = np.concatenate(([0], np.flatnonzero(np.diff(laws)) + 1, [len(laws)]))
+    return np.array([(laws[a], a, b) for a, b in zip(edges[:-1], edges[1:], strict=True)], dtype=np.int64)
+
+
+def _law_parameters(chain: Chain, stretch: Stretch, par: Array) -> None:
+    at = slice(stretch.start, stretch.stop)
+    law, material = stretch.material.law, stretch.material
+    area, length = chain.area[at], chain.length[at]
+    if law.kind == "viscoelastic":
+        par[0, at] = law.viscosity * area / length
+    elif law.kind == "elastic_plastic":
+        slope = law.hardening_modulus
+        plastic = material.young_modulus * slope / (material.young_modulus - slope)
+        par[0, at] = law.yield_stress * area
+        par[1, at] = plastic * area / length
+        par[2, at] = 1.0 if law.hardening == "kinematic" else 0.0
+    elif law.kind == "brittle_tension":
+        par[0, at] = law.tensile_strength * area
+    elif law.kind == "large_strain":
+        par[0, at] = material.young_modulus / 3 * area
+        par[1, at] = length
+
+
+def _lateral_inertia(chain: Chain, effective: Array) -> tuple[Array, Array, Array]:
+    """Love's rod: rho A ((nu r_p)^2 u_xtt)_x adds (nu r_p)^2 rho A/dx between neighbours; factors of M/dt = L D L'.
+
+    A. E. H. Love, *Mathematical Theory of Elasticity* (from memory). Empty where the member has none.
+    """
+    if not chain.case.member.lateral_inertia:
+        return np.zeros(0), np.zeros(0), np.zeros(0)
+    inertia = np.zeros(len(chain.axial))
+    for stretch in chain.stretches:
+        at = slice(stretch.start, stretch.stop)
+        radius_squared = stretch.segment.section.polar_radius_squared
+        poisson = stretch.material.poisson_ratio
+        assert radius_squared is not None
+        assert poisson is not None
+        inertia[at] = poisson**2 * radius_squared * chain.line_mass[at] / chain.length[at]
+    diagonal, beside = effective.copy(), -inertia / chain.dt
+    diagonal[:-1] += inertia
+    diagonal[1:] += inertia
+    diagonal /= chain.dt
+    pivot, carry = diagonal.copy(), np.zeros(len(inertia))
+    for i in range(len(inertia)):
+        carry[i] = beside[i] / pivot[i]
+        pivot[i + 1] = diagonal[i + 1] - carry[i] * beside[i]
+    return inertia, pivot, carry
+
+
+def bounds_of(chain: Chain) -> Bounds:
+    """Toe, joints, wall and train at rest before the blow."""
+    par, state = toe_of(chain)
+    train_par, train_state = np.zeros((2, 3)), np.zeros((2, 4))
+    kinds = np.zeros(len(chain.train), dtype=np.int64)
+    for i, link in enumerate(chain.train):
+        if link.cushion is not None:
+            kinds[i] = 1
+            cushion = link.cushion
+            train_par[i] = cushion.loading_stiffness, cushion.unloading_stiffness, cushion.restitution
+    return Bounds(
+        toe_par=par,
+        toe_state=state,
+        joints=np.array([j.link for j in chain.joints], dtype=np.int64),
+        joint_par=np.array([(j.gap, j.slack) for j in chain.joints], dtype=float).reshape(-1, 2),
+        joint_force=np.zeros(len(chain.joints)),
+        wall=np.array([chain.wall_gap, 0.0]),
+        train_links=np.array([t.link for t in chain.train], dtype=np.int64),
+        train_kinds=kinds,
+        train_par=train_par,
+        train_state=train_state,
+        train_force=np.zeros(2),
+    )
+
+
+def motion_of(chain: Chain) -> Motion:
+    """At rest but for what strikes. A free fall has half a step to go before the first half-step velocity."""
+    n = chain.nodes
+    velocity = chain.velocity.copy()
+    return Motion(np.zeros(n), velocity, velocity.copy(), np.zeros(n - 1), np.zeros(n))
+
+
+def extremes_of(chain: Chain) -> Extremes:
+    """Envelopes before the first step."""
+    links, nodes = chain.nodes - 1, chain.nodes
+    return Extremes(
+        np.full(links, np.inf),
+        np.zeros(links),
+        np.full(links, -np.inf),
+        np.zeros(links),
+        np.full(nodes, -np.inf),
+        np.full(nodes, -np.inf),
+    )
+
+
+def gauge_readings(chain: Chain) -> tuple[NDArray[np.int64], Array]:
+    """Nodes and weights of all gauges, shapes (g, 2) and (g, 2, 7): see `Records`."""
+    gauges = chain.case.gauges
+    nodes, weights = np.zeros((len(gauges), 2), dtype=np.int64), np.zeros((len(gauges), 2, 7))
+    for g, gauge in enumerate(gauges):
+        for r, (node, share) in enumerate(_places(chain, gauge)):
+            nodes[g, r] = node
+            weights[g, r] = share, *_reading(chain, gauge, node)
+    return nodes, weights
+
+
+def _places(chain: Chain, gauge: Gauge) -> list[tuple[int, float]]:
+    """One or two nodes with their shares. At a joint the side is chosen, towards the struck end unless told otherwise."""
+    on_member = gauge.on == "member"
+    low, high = (chain.head, chain.nodes) if on_member else (0, chain.head)
+    # the distance of a gauge on a rod that strikes runs from that rod's own far face
+    x = gauge.position if on_member else chain.position[0] + gauge.position
+    place = chain.position[low:high]
+    tolerance = 1e-6 * float(chain.length[low])
+    near = np.flatnonzero(np.abs(place - x) <= tolerance)
+    if len(near):
+        return [(low + int(near[0] if gauge.side == "near" else near[-1]), 1.0)]
+    right = int(np.searchsorted(place, x))
+    share = (x - place[right - 1]) / (place[right] - place[right - 1])
+    return [(low + right - 1, float(1 - share)), (low + right, float(share))]
+
+
+def _reading(chain: Chain, gauge: Gauge, node: int) -> tuple[float, ...]:
+    """Weights of the left and right link's force, of the acceleration and a constant; 1/length of both links.
+
+    Within a uniform stretch the mean of both neighbours (exact for waves at Courant number 1); on an end, joint or step the
+    force on the side asked for, from the momentum of that half element.
+    """
+    half = chain.half_mass
+    left = node > 0 and chain.axial[node - 1] > 0
+    right = node < chain.nodes - 1 and chain.axial[node] > 0
+    lengths = (
+        1 / chain.length[node - 1] if left else 0.0,
+        1 / chain.length[node] if right else 0.0,
+    )
+    lumped = node in chain.extra_masses or chain.damping[node] > 0 or chain.spring[node] > 0
+    smooth = left and right and not lumped and abs(half[node] / half[node - 1] - 1) < 1e-9
+    if smooth:
+        return 0.5, 0.5, 0.0, 0.0, *lengths
+    take_left = left if gauge.side == "near" or not right else False
+    if take_left:
+        return 1.0, 0.0, half[node - 1], -half[node - 1] * chain.gravity, *lengths
+    return 0.0, 1.0, -half[node], half[node] * chain.gravity, *lengths
+
+
+def records_of(
+    chain: Chain, steps: int, stride: int, columns: NDArray[np.int64], flags: NDArray[np.int64]
+) -> Records:
+    """Room for what a chunk of `steps` steps records."""
+    nodes, weights = gauge_readings(chain)
+    g, frames = len(nodes), (steps - 1) // stride + 1
+    room = [np.empty((g, steps)) for _ in range(5)]
+    pictures = [np.empty((frames, len(columns)), dtype=np.float32) for _ in range(3)]
+    return Records(
+        nodes,
+        weights,
+        *room,
+        columns,
+        *pictures,
+        ledger=np.empty((frames, len(LEDGER))),
+        ram=np.empty((3 if chain.train else 0, steps)),
+        events=np.zeros((4096, 3), dtype=np.int64),
+        event_count=np.zeros(1, dtype=np.int64),
+        flags=flags,
+    )

@@ -1,0 +1,111 @@
+"""The energy ledger: one row on a half step, from the states of all laws."""
+
+import numpy as np
+from numpy.typing import NDArray
+
+from solver.numerics import toe
+from solver.numerics.compiled import kernel
+from solver.numerics.links import stored_in_blocks
+
+Array = NDArray[np.float64]
+
+#: Columns of the ledger's rows, and of the running sums of losses.
+LEDGER = (
+    "kinetic",
+    "elastic_member",
+    "plastic",
+    "elastic_ground",
+    "elastic_cushion",
+    "cushion_loss",
+    "elastic_springs",
+    "work_of_gravity",
+    "work_of_load",
+    "absorbed_by_dashpots",
+    "ground_static_loss",
+    "ground_damping_loss",
+    "impact_loss",
+    "viscous",
+)
+WORK, DASHPOTS, SLIP, DAMPING, IMPACT = 0, 1, 2, 3, 4
+
+
+@kernel
+def balance(row, rod, ground, bounds, motion, sums, dt):
+    """One row of the ledger, on the half step ahead of the displacements `motion.u` (columns: `LEDGER`).
+
+    Stored energies and losses come from states. Elastic energy of the half step: that of now plus force x half of the
+    coming elongation, which for a linear link is u(n) K u(n+1) / 2.
+    """
+    u, w, force = motion.u, motion.w, motion.force
+    kinetic, gravity = 0.0, 0.0
+    for i in range(len(u)):
+        kinetic += rod.mass[i] * w[i] * w[i]
+        gravity += rod.weight[i] * (u[i] + 0.5 * dt * w[i] - motion.rest[i])
+    for i in range(len(rod.inertia)):
+        turn = w[i + 1] - w[i]
+        kinetic += rod.inertia[i] * turn * turn
+    stored, lost, viscous = stored_in_blocks(rod, u, w, force, dt)
+    for i in range(len(force)):
+        stored += 0.5 * force[i] * dt * (w[i + 1] - w[i])
+    soil = 0.0
+    for j in range(len(ground.r)):
+        soil += 0.5 * ground.r[j] * ground.r[j] * ground.flexible[j]
+    for j in range(len(ground.power_nodes)):
+        soil += 0.5 * ground.power[0, j] * ground.power[0, j] * ground.power[3, j]
+    for j in range(len(ground.radiation_nodes)):
+        soil += 0.5 * ground.radiation[2, j] * ground.radiation[0, j] * ground.radiation[0, j]
+    if len(bounds.toe_par) and bounds.toe_par[2] > 0.0:
+        if bounds.toe_par[0] == toe.RADIATION:
+            soil += 0.5 * bounds.toe_par[2] * bounds.toe_state[2] * bounds.toe_state[2]
+        else:
+            soil += 0.5 * bounds.toe_state[1] * bounds.toe_state[1] / bounds.toe_par[2]
+    springs = 0.0
+    for s in range(len(rod.special)):
+        i = rod.special[s]
+        middle = u[i] + 0.5 * dt * w[i]
+        springs += 0.5 * rod.spring[s] * middle * middle
+    cushion, taken = 0.0, 0.0
+    for t in range(len(bounds.train_links)):
+        if bounds.train_kinds[t] == 1:
+            k, unloading, largest = bounds.train_par[t, 0], bounds.train_par[t, 1], bounds.train_state[t, 1]
+            cushion += 0.5 * bounds.train_state[t, 2] ** 2 / unloading
+            taken += 0.5 * k * largest * largest * (1.0 - k / unloading)
+    row[0], row[1], row[2], row[3] = 0.5 * kinetic, stored, lost, soil
+    row[4], row[5], row[6], row[7] = cushion, taken, springs, gravity
+    row[8], row[9], row[10], row[11], row[12] = (
+        sums[WORK],
+        sums[DASHPOTS],
+        sums[SLIP],
+        sums[DAMPING],
+        sums[IMPACT],
+    )
+    row[13] = viscous
+
+
+#: Columns that came in, that are stored, and that are lost: together they close.
+CAME_IN = ("work_of_gravity", "work_of_load")
+LOST = (
+    "plastic",
+    "cushion_loss",
+    "absorbed_by_dashpots",
+    "ground_static_loss",
+    "ground_damping_loss",
+    "impact_loss",
+    "viscous",
+)
+
+
+def residual_of(start: Array, rows: Array) -> tuple[float, int]:
+    """Largest share of the energy that does not close, and the row where it stands.
+
+    `start` (columns,) is the ledger before the first step, `rows` (frames, columns) those since. The share is of the
+    largest energy there was: brought in, stored or lost.
+    """
+    coming = [LEDGER.index(name) for name in CAME_IN]
+    staying = [i for i in range(len(LEDGER)) if i not in coming]
+    change = rows - start
+    off = np.abs(change[:, staying].sum(axis=1) - change[:, coming].sum(axis=1))
+    energies = np.abs(np.vstack([start, rows]))
+    scale = float(max(energies[:, staying].sum(axis=1).max(), np.abs(change[:, coming]).max(), 1e-300))
+    row = int(np.argmax(off))
+    return float(off[row]) / scale, row

@@ -1,0 +1,347 @@
+"""A case as plain arrays: the chain of nodes from the rod that strikes down to the far end.
+
+Order of nodes: a rod that strikes (its far face first), or a rigid ram; a drive cap; the member. Between two
+neighbours there is a link: an element of a rod, or nothing (stiffness 0) where a cushion or a joint acts.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass, field
+
+import numpy as np
+from numpy.typing import NDArray
+
+from solver.model.load import GRAVITY, Cushion, Drop, Striker
+from solver.model.material import Material
+from solver.model.member import Segment
+from solver.model.project import Case
+from solver.numerics.mesh import FEWEST, MOST, SegmentSteps, Steps, choose_steps
+from solver.numerics.stability import stiffening_of
+
+Array = NDArray[np.float64]
+
+
+@dataclass(frozen=True)
+class Stretch:
+    """One segment as elements: links `start` to `stop` (exclusive) of the chain."""
+
+    segment: Segment
+    material: Material
+    start: int
+    stop: int
+
+
+@dataclass(frozen=True)
+class JointLink:
+    """A joint between two nodes `link` and `link + 1`. `slack` is infinite where no tension is ever carried."""
+
+    link: int
+    gap: float
+    slack: float
+    position: float
+
+
+@dataclass(frozen=True)
+class TrainLink:
+    """A link of ram, cap and head: through a cushion, or face to face (`None`)."""
+
+    link: int
+    cushion: Cushion | None
+
+
+@dataclass(frozen=True, eq=False)
+class Chain:
+    """The discrete case. Shapes: nodes (n,), links (n - 1,). SI units.
+
+    `mass_left` and `mass_right` are the half masses that elements give to their first and last node; `mass` adds lumped
+    masses. `axial` is EA of each link (0 where no element is), `length` its length, `area` such that stress = force/area.
+    `damping` and `spring` act from a node to fixed ground.
+    """
+
+    case: Case
+    dt: float
+    courant_worst: float
+    position: Array
+    mass: Array
+    damping: Array
+    spring: Array
+    axial: Array
+    length: Array
+    area: Array
+    line_mass: Array
+    stretches: tuple[Stretch, ...]
+    joints: tuple[JointLink, ...]
+    train: tuple[TrainLink, ...]
+    head: int
+    velocity: Array
+    fixed_end: bool
+    wall_gap: float
+    gravity: float
+    extra_masses: dict[int, float] = field(default_factory=dict)
+
+    @property
+    def nodes(self) -> int:
+        return len(self.position)
+
+    @property
+    def half_mass(self) -> Array:
+        """Half of each link's mass, kg."""
+        return self.line_mass * self.length / 2
+
+    @property
+    def impedance(self) -> Array:
+        """Z = sqrt(EA rho A) of each link, N·s/m; 0 where no element is."""
+        return np.sqrt(self.axial * self.line_mass)
+
+    @property
+    def member_stretches(self) -> tuple[Stretch, ...]:
+        """Stretches of the member itself."""
+        return tuple(s for s in self.stretches if s.start >= self.head)
+
+
+def profile_along(
+    segment: Segment, materials: dict[str, Material], fraction: Array
+) -> tuple[Array, Array, Array]:
+    """EA (N), mass per length (kg/m) and stress area (m2) at fractions 0..1 of a segment's length.
+
+    A taper is linear in its dimensions, so areas are quadratic in the fraction: three sections fix them.
+    """
+    first, last = segment.section, segment.end_section or segment.section
+    ends = first.model_dump(), last.model_dump()
+    middle = type(first)(
+        **{k: (v + ends[1][k]) / 2 if isinstance(v, float) else v for k, v in ends[0].items()}
+    )
+    material = materials[segment.material]
+    at = np.array([0.0, 0.5, 1.0])
+    areas = [s.area for s in (first, middle, last)]
+    axial, mass = material.young_modulus * np.array(areas), material.density * np.array(areas)
+    if first.shape == "filled_pipe":
+        fill = materials[first.fill]
+        fills = np.array([s.fill_area for s in (first, middle, last)])  # type: ignore[union-attr]
+        axial, mass = axial + fill.young_modulus * fills, mass + fill.density * fills
+    if segment.end_section is None:
+        ones = np.ones_like(fraction)
+        return axial[0] * ones, mass[0] * ones, axial[0] / material.young_modulus * ones
+    lagrange = [_parabola(at, i, fraction) for i in range(3)]
+    axial_at = sum(a * w for a, w in zip(axial, lagrange, strict=True))
+    mass_at = sum(a * w for a, w in zip(mass, lagrange, strict=True))
+    return axial_at, mass_at, axial_at / material.young_modulus
+
+
+def _parabola(at: Array, i: int, x: Array) -> Array:
+    others = [at[j] for j in range(3) if j != i]
+    return (x - others[0]) * (x - others[1]) / ((at[i] - others[0]) * (at[i] - others[1]))
+
+
+def travel_time(segment: Segment, materials: dict[str, Material]) -> float:
+    """Time of a wave through a segment, integral of dx/c, s."""
+    fraction = (np.arange(64) + 0.5) / 64
+    axial, mass, _ = profile_along(segment, materials, fraction)
+    return float(segment.length * np.mean(np.sqrt(mass / axial)))
+
+
+def segments_of(case: Case) -> tuple[tuple[Segment, ...], slice]:
+    """All segments in the chain, rod that strikes first, and which of them are the member's."""
+    rod = case.ram_segments
+    return rod + case.member.segments, slice(len(rod), None)
+
+
+def steps_of(case: Case, element_length: float | None) -> Steps:
+    """The mesh of a case: chosen by the program, or close to `element_length` (m)."""
+    segments, member = segments_of(case)
+    materials = case.materials
+    times = []
+    for s in segments:
+        law = materials[s.material].law
+        viscous = law.viscosity / materials[s.material].young_modulus if law.kind == "viscoelastic" else 0.0
+        times.append(SegmentSteps(travel_time(s, materials), viscous, stiffening_of(law)))
+    total = sum(t.travel_time for t in times[member])
+    marks = [_time_to(case, times[member], g.position) for g in case.gauges if g.on == "member"]
+    if element_length is not None:
+        speeds = [s.length / t.travel_time for s, t in zip(segments, times, strict=True)][member]
+        wanted = max(2, round(total * max(speeds) / element_length))
+        return choose_steps(times, member, wanted, True, marks)
+    return choose_steps(times, member, _wanted(case, total), False, marks)
+
+
+def _time_to(case: Case, times: list[SegmentSteps], position: float) -> float:
+    passed, elapsed = 0.0, 0.0
+    for segment, t in zip(case.member.segments, times, strict=True):
+        part = min(max((position - passed) / segment.length, 0.0), 1.0)
+        elapsed += part * t.travel_time
+        passed += segment.length
+    return elapsed
+
+
+def _wanted(case: Case, total: float) -> int:
+    """Elements along the member: fine enough for the pulse, and for a mass that strikes without a cushion."""
+    wanted = FEWEST
+    load = case.load
+    if load.kind == "pulse" and load.shape != "decay":
+        wanted = max(wanted, int(np.ceil(40 * total / load.duration)))
+    if isinstance(load, Drop) and load.ram_mass is not None and load.cushion is None:
+        first = case.member.segments[0]
+        axial, mass, _ = profile_along(first, case.materials, np.zeros(1))
+        impedance = float(np.sqrt(axial * mass)[0])
+        # Z dt under 0.1 % of the mass: the front is smeared over the first node
+        wanted = max(wanted, int(np.ceil(1000 * impedance * total / load.ram_mass)))
+    return min(wanted, MOST)
+
+
+class _Builder:
+    """Lays nodes and links one after the other."""
+
+    def __init__(self, case: Case) -> None:
+        self.materials = case.materials
+        self.position: list[Array] = []
+        self.mass: list[Array] = []
+        self.links: list[tuple[Array, Array, Array, Array]] = []
+        self.stretches: list[Stretch] = []
+        self.count = 0
+
+    def lump(self, mass: float, position: float) -> None:
+        self._join()
+        self.position.append(np.array([position]))
+        self.mass.append(np.array([mass]))
+        self.count += 1
+
+    def rod(self, segments: tuple[Segment, ...], counts: tuple[int, ...], start: float) -> list[JointLink]:
+        joints = []
+        at = start
+        for i, (segment, n) in enumerate(zip(segments, counts, strict=True)):
+            joint = segment.joint_above
+            bonded = i > 0 and joint.kind == "bonded"
+            if not bonded:
+                self._join()
+                if i > 0:
+                    gap = joint.gap if joint.kind == "contact" else 0.0
+                    slack = joint.slack if joint.kind == "slack_splice" else np.inf
+                    joints.append(JointLink(self.count - 1, gap, slack, at))
+                self.position.append(np.array([at]))
+                self.mass.append(np.zeros(1))
+                self.count += 1
+            self._elements(segment, n, at)
+            at += segment.length
+        return joints
+
+    def _elements(self, segment: Segment, n: int, at: float) -> None:
+        dx = np.full(n, segment.length / n)
+        axial, line_mass, area = profile_along(segment, self.materials, (np.arange(n) + 0.5) / n)
+        half = line_mass * dx / 2
+        self.mass[-1][-1] += half[0]
+        nodes = half.copy()
+        nodes[:-1] += half[1:]
+        self.position.append(at + segment.length * np.arange(1, n + 1) / n)
+        self.mass.append(nodes)
+        self.links.append((axial, dx, area, line_mass))
+        first = self.count - 1
+        self.stretches.append(Stretch(segment, self.materials[segment.material], first, first + n))
+        self.count += n
+
+    def _join(self) -> None:
+        """A link without an element, before the next node."""
+        if self.count:
+            self.links.append((np.zeros(1), np.ones(1), np.ones(1), np.zeros(1)))
+
+
+def build_chain(case: Case, element_length: float | None = None) -> Chain:
+    """Discretise a case; `element_length` (m) overrides the program's choice."""
+    steps = steps_of(case, element_length or case.run.element_length)
+    load, rod = case.load, case.ram_segments
+    laid = _Builder(case)
+    joints: list[JointLink] = []
+    if rod:
+        joints += laid.rod(rod, steps.counts[: len(rod)], -sum(s.length for s in rod))
+    elif isinstance(load, Drop):
+        assert load.ram_mass is not None
+        laid.lump(load.ram_mass, 0.0)
+    train: list[TrainLink] = []
+    if isinstance(load, Drop):
+        train.append(TrainLink(laid.count - 1, load.cushion))
+        if load.cap_mass > 0:
+            laid.lump(load.cap_mass, 0.0)
+            train.append(TrainLink(laid.count - 1, load.pile_cushion))
+        elif load.pile_cushion is not None:
+            train = [TrainLink(laid.count - 1, _in_series(load.cushion, load.pile_cushion))]
+    if isinstance(load, Striker):
+        joints.append(JointLink(laid.count - 1, 0.0, np.inf, 0.0))
+    head = laid.count
+    joints += laid.rod(case.member.segments, steps.counts[len(rod) :], 0.0)
+    return _finished(case, steps, laid, tuple(joints), tuple(train), head)
+
+
+def _in_series(first: Cushion | None, second: Cushion) -> Cushion:
+    """Two cushions without a cap between them act as one: flexibilities add, and so do the energies lost."""
+    if first is None:
+        return second
+    k1, k2 = first.loading_stiffness, second.loading_stiffness
+    u1, u2 = first.unloading_stiffness, second.unloading_stiffness
+    loading, unloading = k1 * k2 / (k1 + k2), u1 * u2 / (u1 + u2)
+    return Cushion(stiffness=loading, restitution=min(1.0, float(np.sqrt(loading / unloading))))
+
+
+def _finished(
+    case: Case,
+    steps: Steps,
+    laid: _Builder,
+    joints: tuple[JointLink, ...],
+    train: tuple[TrainLink, ...],
+    head: int,
+) -> Chain:
+    position, mass = np.concatenate(laid.position), np.concatenate(laid.mass)
+    axial, length, area, line_mass = (np.concatenate(parts) for parts in zip(*laid.links, strict=True))
+    damping, spring = np.zeros_like(mass), np.zeros_like(mass)
+    extra: dict[int, float] = {}
+    for attachment in case.member.attachments:
+        node = head + int(np.argmin(np.abs(position[head:] - attachment.position)))
+        if attachment.kind == "mass":
+            mass[node] += attachment.value
+            extra[node] = extra.get(node, 0.0) + attachment.value
+        else:
+            (spring if attachment.kind == "spring" else damping)[node] += attachment.value
+    end = case.far_end
+    if end.kind == "spring":
+        spring[-1] += end.stiffness
+    elif end.kind == "dashpot":
+        damping[-1] += end.coefficient
+    elif end.kind == "matched":
+        damping[-1] += np.sqrt(axial[-1] * line_mass[-1])
+    velocity = np.zeros_like(mass)
+    if isinstance(case.load, Drop | Striker):
+        velocity[: head - (1 if len(train) == 2 else 0)] = impact_velocity(case.load, mass, head)
+    velocity[head:] = case.run.initial_velocity or 0.0
+    return Chain(
+        case=case,
+        dt=steps.dt,
+        courant_worst=steps.courant_worst,
+        position=position,
+        mass=mass,
+        damping=damping,
+        spring=spring,
+        axial=axial,
+        length=length,
+        area=area,
+        line_mass=line_mass,
+        stretches=tuple(laid.stretches),
+        joints=joints,
+        train=train,
+        head=head,
+        velocity=velocity,
+        fixed_end=end.kind == "fixed",
+        wall_gap=end.gap if end.kind == "wall" else np.inf,
+        gravity=GRAVITY if case.run.gravity else 0.0,
+        extra_masses=extra,
+    )
+
+
+def impact_velocity(load: Drop | Striker, mass: Array, head: int) -> float:
+    """Velocity of the ram or striker as it strikes, m/s: v = sqrt(2 g h efficiency), or sqrt(2 E/m)."""
+    if isinstance(load, Striker):
+        return load.velocity
+    if load.impact_velocity is not None:
+        return load.impact_velocity
+    if load.drop_height is not None:
+        return float(np.sqrt(2 * GRAVITY * load.drop_height * (load.efficiency or 1.0)))
+    assert load.energy is not None
+    ram = load.ram_mass or float(np.sum(mass[: head - (1 if load.cap_mass > 0 else 0)]))
+    return float(np.sqrt(2 * load.energy / ram))

@@ -1,0 +1,54 @@
+"""Compilation of the kernels: cached on disk under a key made of all their sources.
+
+A cached kernel does not notice that a law in another file has changed, so the folder's name carries a hash of every
+source file in this package. Where the folder cannot be written, kernels are compiled anew in each process, and
+`cache_problem` says so once.
+"""
+
+from __future__ import annotations
+
+import hashlib
+import os
+import tempfile
+from pathlib import Path
+from typing import Any
+
+import numba
+import platformdirs
+from numba import njit
+
+
+def _source_key() -> str:
+    digest = hashlib.sha256(numba.__version__.encode())
+    for path in sorted(Path(__file__).parent.rglob("*.py")):
+        digest.update(path.read_bytes())
+    return digest.hexdigest()[:16]
+
+
+def _cache_folder() -> tuple[Path | None, str | None]:
+    """The folder for compiled kernels, or a sentence that says why there is none."""
+    base = os.environ.get("STRIKETRACE_CACHE") or platformdirs.user_cache_dir("striketrace", False)
+    folder = Path(base) / f"kernels-{_source_key()}"
+    try:
+        folder.mkdir(parents=True, exist_ok=True)
+        with tempfile.TemporaryFile(dir=folder):
+            pass
+    except OSError as error:
+        return None, (
+            f"The folder for compiled kernels ({folder}) cannot be written ({error.strerror or error}): "
+            "they are compiled again at each start, which takes some seconds."
+        )
+    return folder, None
+
+
+_folder, cache_problem = _cache_folder()
+if _folder is not None:
+    numba.config.CACHE_DIR = str(_folder)
+
+#: Reductions may be summed in any order; not-a-number is still seen.
+LOOSE_SUMS = {"reassoc", "contract", "nsz"}
+
+
+def kernel(function: Any) -> Any:
+    """Compile a function: releases the GIL, cached on disk where that is possible."""
+    return njit(nogil=True, cache=_folder is not None, error_model="numpy", fastmath=LOOSE_SUMS)(function)

@@ -1,0 +1,187 @@
+"""Rest before the blow: the member under its own weight, held by its ground; and rest after it."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+import numpy as np
+from numpy.typing import NDArray
+from scipy.linalg import LinAlgError, solveh_banded
+
+from solver.errors import SolveError
+from solver.numerics.arrays import Bounds, Motion, Rod, Shaft
+from solver.numerics.chain import Chain
+from solver.numerics.links import link_forces
+from solver.numerics.toe import RADIATION
+
+Array = NDArray[np.float64]
+
+
+@dataclass
+class State:
+    """All that changes while a case marches."""
+
+    rod: Rod
+    shaft: Shaft
+    bounds: Bounds
+    motion: Motion
+
+
+@dataclass
+class _Soil:
+    """Nodal springs with a strength on either side: shaft of any law, and the toe."""
+
+    stiff: Array
+    low: Array
+    high: Array
+    gap: Array
+
+    def force_and_slope(self, u: Array) -> tuple[Array, Array]:
+        """Static resistance of a first loading from rest, N, and its slope, N/m."""
+        trial = self.stiff * np.where(self.gap > 0, np.maximum(u - self.gap, 0.0), u)
+        inside = (trial > self.low) & (trial < self.high) & ((self.gap == 0) | (u > self.gap))
+        at_rest = (trial == 0) & (self.gap == 0)
+        return np.clip(trial, self.low, self.high), np.where(inside | at_rest, self.stiff, 0.0)
+
+
+def _soil_of(chain: Chain, state: State) -> _Soil:
+    n = chain.nodes
+    stiff, strength, gap = np.zeros(n), np.zeros(n), np.zeros(n)
+    s = state.shaft
+    at = slice(s.first, s.first + len(s.r))
+    stiff[at] += s.stiff
+    strength[at] += s.strength
+    stiff[s.power_nodes] += s.power[2]
+    strength[s.power_nodes] += s.power[1]
+    stiff[s.radiation_nodes] += s.radiation[2]
+    strength[s.radiation_nodes] += s.radiation[1]
+    low = -strength
+    if len(state.bounds.toe_par):
+        stiff[-1] += state.bounds.toe_par[2]
+        strength[-1] += state.bounds.toe_par[1]
+        gap[-1] = state.bounds.toe_state[0]
+    return _Soil(stiff, low, strength, gap)
+
+
+def bring_to_rest(chain: Chain, state: State) -> None:
+    """Put the member into static equilibrium under gravity, with its ram just touching. Changes `state` in place.
+
+    Raises `SolveError` where nothing holds it.
+    """
+    if chain.gravity == 0.0:
+        return
+    cap = sum(link.link + 1 < chain.head for link in chain.train)
+    cap_weight = float(state.rod.weight[chain.head - 1]) if cap else 0.0
+    weight = state.rod.weight.copy()
+    weight[: chain.head] = 0.0
+    weight[chain.head] += cap_weight
+    soil = _soil_of(chain, state)
+    _refuse_unheld(chain, float(weight.sum()), soil)
+    u = _static_displacements(chain, state, weight, soil)
+    _lay_train(chain, state, u, cap_weight)
+    motion = state.motion
+    motion.u[:] = u
+    motion.rest[:] = u
+    # a free fall has half a step to go before its first half-step velocity
+    motion.v[: chain.head][motion.v[: chain.head] != 0] -= chain.gravity * chain.dt / 2
+    s, r = state.shaft, soil.force_and_slope(u)[0]
+    s.r[:] = np.clip(s.stiff * u[s.first : s.first + len(s.r)], -s.strength, s.strength)
+    s.power[0] = np.clip(s.power[2] * u[s.power_nodes], -s.power[1], s.power[1])
+    q = s.radiation
+    q[0] = np.clip(u[s.radiation_nodes], -q[1] / q[2], q[1] / q[2])
+    _lay_toe(state.bounds, float(u[-1]), float(r[-1]))
+
+
+def _refuse_unheld(chain: Chain, weight: float, soil: _Soil) -> None:
+    kind = chain.case.far_end.kind
+    if any(j.gap > 0 for j in chain.joints if j.link >= chain.head):
+        raise SolveError(
+            "With gravity on, a joint with a gap is not at rest before the blow: the part above it would fall through "
+            "the gap. Set the gap to 0, or turn gravity off."
+        )
+    if kind in ("fixed", "spring") or (kind == "wall" and chain.wall_gap == 0) or (chain.spring > 0).any():
+        return
+    holding = float(soil.high.sum())
+    if holding <= weight:
+        what = f"can hold {holding / 1000:.3g} kN" if holding else "is not there"
+        raise SolveError(
+            f"With gravity on, the member (with its cap {weight / 1000:.3g} kN) does not come to rest before the blow: its "
+            f"ground {what}. Give the ground more resistance, hold the far end, or turn gravity off."
+        )
+
+
+def _static_displacements(chain: Chain, state: State, weight: Array, soil: _Soil) -> Array:
+    """Newton's method on the nodes below the struck end; closed joints move as one, a wall at the far end holds."""
+    head, n = chain.head, chain.nodes
+    closed = {j.link for j in chain.joints if j.link >= head}
+    dof = np.zeros(n, dtype=np.int64)
+    for i in range(head + 1, n):
+        dof[i] = dof[i - 1] + (0 if i - 1 in closed else 1)
+    count = int(dof[-1]) + 1
+    held = chain.fixed_end or chain.wall_gap == 0
+    u, force = np.zeros(n), np.zeros(n - 1)
+    note = (np.zeros((1, 3), dtype=np.int64), np.zeros(1, dtype=np.int64))
+    flags = np.zeros(len(state.rod.blocks), dtype=np.int64)
+    for _ in range(200):
+        link_forces(state.rod, u, np.zeros(n), force, chain.dt, flags, note, 0)
+        if note[1][0]:
+            raise SolveError(
+                "The member leaves its elastic range under its own weight: see the material's law."
+            )
+        resist, slope = soil.force_and_slope(u)
+        pull = weight - resist - chain.spring * u
+        pull[:-1] += force
+        pull[1:] -= force
+        band = np.zeros((2, count))
+        np.add.at(band[1], dof[head:], (slope + chain.spring)[head:])
+        links = np.arange(head, n - 1)
+        links = links[dof[links] != dof[links + 1]]
+        k = state.rod.stiff[links]
+        np.add.at(band[1], dof[links], k)
+        np.add.at(band[1], dof[links + 1], k)
+        band[0, dof[links + 1]] -= k
+        if held:
+            band[1, -1] += 1e6 * float(state.rod.stiff.max())
+        # a slope of nearly nothing keeps a wholly slipping trial solvable; the balance itself stays exact
+        band[1] += 1e-12 * float(state.rod.stiff.max())
+        total = np.zeros(count)
+        np.add.at(total, dof[head:], pull[head:])
+        if held:
+            total[-1] = 0.0
+        try:
+            change = solveh_banded(band, total)
+        except LinAlgError:
+            break
+        u[head:] += change[dof[head:]]
+        if np.max(np.abs(change)) <= 1e-15 + 1e-13 * np.max(np.abs(u)):
+            return u
+    raise SolveError(
+        "No rest of the member before the blow was found under gravity: its ground gives way under its weight."
+    )
+
+
+def _lay_train(chain: Chain, state: State, u: Array, cap_weight: float) -> None:
+    """Cap on its cushion, ram just touching: displacements and the cushion's state."""
+    above = u[chain.head]
+    if len(chain.train) == 2:
+        state.bounds.train_force[1] = cap_weight
+        cushion = chain.train[1].cushion
+        if cushion is not None:
+            pressed = cap_weight / cushion.loading_stiffness
+            state.bounds.train_state[1, :3] = pressed, pressed, cap_weight
+            above += pressed
+        u[chain.head - 1] = above
+    u[: chain.head - (len(chain.train) == 2)] = above
+
+
+def _lay_toe(bounds: Bounds, u: float, resistance: float) -> None:
+    if not len(bounds.toe_par):
+        return
+    par, toe = bounds.toe_par, bounds.toe_state
+    spring = resistance / par[2] if par[2] > 0 else 0.0
+    if u > toe[0]:
+        toe[0] = u - spring
+        toe[3] = 1.0
+    if par[0] == RADIATION:
+        toe[2] = spring
+    toe[1] = resistance

@@ -1,0 +1,93 @@
+"""What the run refuses: models that do not go together, and states that are no answer."""
+
+from __future__ import annotations
+
+from typing import TYPE_CHECKING
+
+import numpy as np
+
+from solver.errors import SolveError
+from solver.model.project import Case
+from solver.numerics.balance import residual_of
+from solver.numerics.chain import segments_of
+from solver.numerics.stability import SMALLEST_STRETCH
+
+if TYPE_CHECKING:
+    from solver.run import March
+
+#: Share of the largest energy that may fail to close before a run is refused.
+REFUSED = 0.05
+
+
+def refuse_unsupported(case: Case) -> None:
+    """Raise `SolveError` for combinations that this program does not solve."""
+    if case.member.lateral_inertia:
+        _refuse_with_inertia(case)
+    for segment in segments_of(case)[0]:
+        law = case.material(segment.material).law
+        if (
+            law.kind == "elastic_plastic"
+            and law.hardening_modulus >= case.material(segment.material).young_modulus
+        ):
+            raise SolveError(
+                f"The hardening modulus of '{segment.material}' must be below its Young's modulus: yielding softens."
+            )
+        if segment.section.shape == "filled_pipe" and (
+            law.kind != "elastic" or case.material(segment.section.fill).law.kind != "elastic"
+        ):
+            raise SolveError(
+                f"Segment '{segment.name}' is a filled pipe: both of its materials must be elastic."
+            )
+
+
+def _refuse_with_inertia(case: Case) -> None:
+    lead = "Lateral inertia is solved for a bonded elastic member"
+    if case.ground is not None or case.far_end.kind in ("wall", "ground"):
+        raise SolveError(f"{lead} without ground or wall: switch it off, or choose another far end.")
+    if case.load.kind in ("drop", "striker"):
+        raise SolveError(
+            f"{lead} under a pulse, a history or an initial velocity: switch it off, or replace the {case.load.kind}."
+        )
+    for segment in case.member.segments:
+        material = case.material(segment.material)
+        if segment.joint_above.kind != "bonded":
+            raise SolveError(f"{lead}: the joint above '{segment.name}' is not bonded.")
+        if segment.section.polar_radius_squared is None:
+            raise SolveError(
+                f"{lead} of known shape: '{segment.name}' is a {segment.section.shape.replace('_', ' ')}."
+            )
+        if material.poisson_ratio is None:
+            raise SolveError(f"Lateral inertia needs Poisson's ratio of '{material.name}'.")
+
+
+def refuse_bad_state(march: March) -> None:
+    """Raise `SolveError` where the state is no answer: not finite, turned inside out, or with energy from nothing."""
+    chain, motion = march.chain, march.state.motion
+    seconds = march.steps * chain.dt
+    bad = ~np.isfinite(motion.u) | ~np.isfinite(motion.v)
+    if bad.any():
+        place = chain.position[int(np.argmax(bad))]
+        raise SolveError(
+            f"The solution ran away before {seconds * 1000:.4g} ms (first at {place:.4g} m) and is not shown. "
+            "Shorter elements, or softer springs and cushions, may help."
+        )
+    stretch = 1 + np.diff(motion.u) / chain.length
+    for part in chain.stretches:
+        least = stretch[part.start : part.stop].min()
+        soft = part.material.law.kind == "large_strain"
+        if least <= (SMALLEST_STRETCH if soft else 0.0):
+            link = part.start + int(np.argmin(stretch[part.start : part.stop]))
+            advice = "a thicker or stiffer pad" if soft else "a lower load, or a material law that yields"
+            raise SolveError(
+                f"'{part.segment.name}' is pressed to {max(least, 0):.0%} of its length at {chain.position[link]:.4g} m, "
+                f"{seconds * 1000:.4g} ms, more than its law describes: give {advice}."
+            )
+    rows = np.concatenate([f[3] for f in march.frames])
+    share, frame = residual_of(march.start_row, rows)
+    if share > REFUSED:
+        place = chain.position[int(np.argmax(np.abs(motion.v)))]
+        when = frame * march.stride * chain.dt
+        raise SolveError(
+            f"The energy of this run does not close by {share:.0%} at {when * 1000:.4g} ms (fastest at {place:.4g} m), "
+            "so it is not shown. Shorter elements may help."
+        )
