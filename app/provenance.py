@@ -9,7 +9,7 @@ from __future__ import annotations
 from collections.abc import Sequence
 from typing import Any
 
-from app.tree import parts_of
+from app.tree import parts_of, value_at
 
 Tree = dict[str, Any]
 
@@ -35,6 +35,13 @@ def forget(tree: Tree, pointer: str) -> None:
     if marks:
         kept = {p: mark for p, mark in marks.items() if p != pointer and not p.startswith(pointer + "/")}
         _keep(tree, kept)
+
+
+def forget_missing(tree: Tree) -> None:
+    """Drop the marks of values that are not there any more, after a part has changed its kind."""
+    marks = tree.get("provenance")
+    if marks:
+        _keep(tree, {p: mark for p, mark in marks.items() if value_at(tree, p) is not None})
 
 
 def rearrange(tree: Tree, pointer: str, came_from: Sequence[int | None]) -> None:

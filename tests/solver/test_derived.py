@@ -125,3 +125,7 @@ def test_shaft_resistance_along_a_cone_uses_its_shrinking_perimeter() -> None:
     layer = {"name": "all", "thickness": 10.0, "unit_resistance": 50e3, "quake": 0.0025, "damping": 0.2}
     case = case_of(member=cone(0.4, 0.2, 8.0), ground={"surface": 0.0, "layers": [layer]})
     assert derived.shaft_resistance(case) == pytest.approx(50e3 * pi * 0.3 * 8.0, rel=1e-13)
+
+
+def test_a_total_is_split_by_the_toes_share() -> None:
+    assert derived.resistance_split(2e6, 0.25) == (1.5e6, 0.5e6)

@@ -1,0 +1,1 @@
+"""The Bench: set up a blow and watch it."""

@@ -1,0 +1,283 @@
+"""Rows that show a value in another way than the file holds it: elevations, wave speed, shares, limits, names."""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+
+from pydantic import BaseModel
+
+from app.bench.forms.spec import ChoiceSpec, Context, NumberSpec, Option, PointsSpec, Spec, TextSpec, Tree
+from app.provenance import forget
+from app.tree import value_at
+from solver.model import derived
+from solver.model.load import History, Pulse
+from solver.model.material import Limits, Material, material_from_any_two
+from solver.model.member import Attachment, Member, Segment
+from solver.model.project import Gauge
+from solver.model.quantity import Bounds
+from solver.model.surroundings import Ground, ShaftTotal
+
+Rows = Callable[[Context, str], list[Spec]]
+
+#: Ways to tell a material, by the two of its three figures that are given.
+MATERIAL_WAYS = (
+    Option("modulus_density", "modulus, density"),
+    Option("speed_density", "wave speed, density", "The modulus follows: E = density x speed²."),
+    Option("modulus_speed", "modulus, wave speed", "The density follows: E / speed²."),
+)
+
+
+def _position_rows(field: str) -> Rows:
+    """A distance from the struck end as an elevation too, where the level of the struck end is given."""
+
+    def rows(context: Context, pointer: str) -> list[Spec]:
+        ground = context.case.ground
+        level = ground.level_of_struck_end if ground else None
+        if level is None:
+            return []
+        distance = value_at(context.tree, f"{pointer}/{field}")
+
+        def write(tree: Tree, elevation: float | None) -> None:
+            value_at(tree, pointer)[field] = None if elevation is None else level - elevation
+
+        return [
+            NumberSpec(
+                f"{pointer}/{field}#elevation",
+                "Elevation",
+                "The same place, as a level.",
+                value=level - distance,
+                dimension="length",
+                write=write,
+            )
+        ]
+
+    return rows
+
+
+def _surface_rows(context: Context, pointer: str) -> list[Spec]:
+    length = context.case.member.length
+
+    def write(tree: Tree, penetration: float | None) -> None:
+        value_at(tree, pointer)["surface"] = None if penetration is None else length - penetration
+
+    penetration = NumberSpec(
+        f"{pointer}/surface#penetration",
+        "Penetration",
+        "Length of the member below the ground surface.",
+        value=length - value_at(context.tree, f"{pointer}/surface"),
+        dimension="length",
+        bounds=Bounds(at_least=0.0, at_most=length),
+        write=write,
+    )
+    return [penetration, *_position_rows("surface")(context, pointer)]
+
+
+def _total_rows(context: Context, pointer: str) -> list[Spec]:
+    """Shaft and toe together, and the toe's share of it."""
+    ground = pointer.rsplit("/", 1)[0]
+    shaft, toe = value_at(context.tree, f"{pointer}/resistance"), value_at(context.tree, f"{ground}/toe")
+    if not toe or shaft + toe["resistance"] <= 0:
+        return []
+    total = shaft + toe["resistance"]
+    share = toe["resistance"] / total
+
+    def put(tree: Tree, new_total: float, new_share: float) -> None:
+        values = value_at(tree, ground)
+        values["shaft_total"]["resistance"], values["toe"]["resistance"] = derived.resistance_split(
+            new_total, new_share
+        )
+        forget(tree, f"{ground}/toe/resistance")
+
+    return [
+        NumberSpec(
+            f"{pointer}/resistance#total",
+            "With the toe",
+            "Resistance of shaft and toe together; the toe keeps its share.",
+            value=total,
+            dimension="force",
+            bounds=Bounds(above=0.0),
+            write=lambda tree, value: put(tree, value or 0.0, share),
+        ),
+        NumberSpec(
+            f"{pointer}/resistance#share",
+            "Toe's share",
+            "Share of the toe in the resistance of shaft and toe together, 0 to 1; '30 %' is understood.",
+            value=share,
+            bounds=Bounds(at_least=0.0, at_most=1.0),
+            write=lambda tree, value: put(tree, total, value or 0.0),
+        ),
+    ]
+
+
+def _material_rows(context: Context, pointer: str) -> list[Spec]:
+    given = value_at(context.tree, pointer)
+    speed = Material.model_validate(given).wave_speed
+
+    def put(tree: Tree, **two: float | None) -> None:
+        material = value_at(tree, pointer)
+        material["young_modulus"], material["density"] = material_from_any_two(**two)
+
+    def write_modulus(tree: Tree, value: float | None) -> None:
+        if context.material_way == "modulus_speed":
+            put(tree, young_modulus=value, wave_speed=speed)
+        else:
+            value_at(tree, pointer)["young_modulus"] = value
+
+    def write_density(tree: Tree, value: float | None) -> None:
+        if context.material_way == "speed_density":
+            put(tree, density=value, wave_speed=speed)
+        else:
+            value_at(tree, pointer)["density"] = value
+
+    def write_speed(tree: Tree, value: float | None) -> None:
+        if context.material_way == "modulus_speed":
+            put(tree, young_modulus=value_at(tree, pointer)["young_modulus"], wave_speed=value)
+        else:
+            put(tree, density=value_at(tree, pointer)["density"], wave_speed=value)
+
+    above_zero = Bounds(above=0.0)
+    rows = {
+        "speed": NumberSpec(
+            f"{pointer}/wave_speed",
+            "Wave speed",
+            "Measured speed of a wave in a thin rod, c = √(E / density).",
+            value=speed,
+            dimension="velocity",
+            bounds=above_zero,
+            write=write_speed,
+        ),
+        "modulus": NumberSpec(
+            f"{pointer}/young_modulus",
+            "Young's modulus",
+            "Slope of stress over strain; use the dynamic value for concrete under a blow.",
+            value=given["young_modulus"],
+            dimension="modulus",
+            bounds=above_zero,
+            write=write_modulus,
+        ),
+        "density": NumberSpec(
+            f"{pointer}/density",
+            "Density",
+            "Mass per volume.",
+            value=given["density"],
+            dimension="density",
+            bounds=above_zero,
+            write=write_density,
+        ),
+    }
+    way = ChoiceSpec(
+        f"{pointer}#way",
+        "Given by",
+        "Any two of modulus, density and wave speed; the third follows, E = density x speed².",
+        value=context.material_way,
+        options=MATERIAL_WAYS,
+        pick="material",
+        pick_at=pointer,
+        view="material_way",
+    )
+    first, second = context.material_way.split("_")
+    return [way, rows[first], rows[second]]
+
+
+def _material_name(context: Context, pointer: str) -> list[Spec]:
+    old = value_at(context.tree, f"{pointer}/name")
+
+    def write(tree: Tree, name: str) -> None:
+        value_at(tree, pointer)["name"] = name
+        for case in tree["cases"]:
+            _rename(case, old, name)
+
+    return [TextSpec(f"{pointer}/name", "Name", "", value=old, write=write)]
+
+
+def _rename(node: object, old: str, new: str) -> None:
+    """Every segment and fill that names the material follows its new name."""
+    if isinstance(node, list):
+        for inner in node:
+            _rename(inner, old, new)
+    elif isinstance(node, dict):
+        for key, inner in node.items():
+            if key in ("material", "fill") and inner == old:
+                node[key] = new
+            else:
+                _rename(inner, old, new)
+
+
+def _limit_rows(field: str) -> Rows:
+    """A limit as a number, and what it rests on, whichever of its two forms the file has."""
+
+    def rows(context: Context, pointer: str) -> list[Spec]:
+        limit = (value_at(context.tree, pointer) or {}).get(field)
+        parts = limit if isinstance(limit, dict) else {"value": limit}
+
+        def put(tree: Tree, **changes: object) -> None:
+            now = {k: v for k, v in (parts | changes).items() if v}
+            limits = value_at(tree, pointer)
+            limits[field] = now if len(now) > 1 and "value" in now else now.get("value")
+
+        number = NumberSpec(
+            f"{pointer}/{field}",
+            f"Limit in {field}",
+            f"Largest stress in {field} allowed, as a magnitude. Limits come from the governing code.",
+            value=parts["value"],
+            dimension="stress",
+            bounds=Bounds(above=0.0),
+            empty="no limit given",
+            write=lambda tree, value: put(tree, value=value),
+        )
+        if limit is None:
+            return [number]
+        basis = TextSpec(
+            f"{pointer}/{field}#basis",
+            "rests on",
+            "What the limit rests on, such as a clause of a code.",
+            value=parts.get("basis"),
+            optional=True,
+            write=lambda tree, text: put(tree, basis=text or None),
+        )
+        return [number, basis]
+
+    return rows
+
+
+def _points(context: Context, pointer: str) -> list[Spec]:
+    load = context.case.load
+    assert isinstance(load, History)
+    quantity = "force in N" if load.quantity == "force" else "velocity in m/s"
+    return [
+        PointsSpec(
+            f"{pointer}/times",
+            "Points",
+            f"Time in s and {quantity} in two columns, linear between points and zero outside.",
+            count=len(load.samples.times),
+        )
+    ]
+
+
+def _is_velocity(context: Context, pointer: str) -> bool:
+    return bool(value_at(context.tree, f"{pointer}/quantity") == "velocity")
+
+
+#: Fields that are shown only where they mean something.
+ONLY_IF: dict[tuple[type[BaseModel], str], Callable[[Context, str], bool]] = {
+    (Pulse, "release"): _is_velocity,
+    (History, "release"): _is_velocity,
+    (Segment, "joint_above"): lambda context, pointer: not pointer.endswith("/segments/0"),
+    (Gauge, "on"): lambda context, pointer: bool(context.case.ram_segments),
+}
+#: Rows in place of a field's own.
+INSTEAD: dict[tuple[type[BaseModel], str], Rows] = {
+    (Material, "name"): _material_name,
+    (Material, "young_modulus"): _material_rows,
+    (Limits, "compression"): _limit_rows("compression"),
+    (Limits, "tension"): _limit_rows("tension"),
+    (History, "times"): _points,
+    (Member, "segments"): lambda context, pointer: [],
+}
+#: Rows behind a field's own.
+MORE: dict[tuple[type[BaseModel], str], Rows] = {
+    (Gauge, "position"): _position_rows("position"),
+    (Attachment, "position"): _position_rows("position"),
+    (Ground, "surface"): _surface_rows,
+    (ShaftTotal, "resistance"): _total_rows,
+}

@@ -1,0 +1,78 @@
+"""Copying an entry of the parts library into a project, with the marks that tell where its values came from."""
+
+from __future__ import annotations
+
+from typing import Any
+
+from app.bench.parts_library import Part
+from app.provenance import forget, forget_missing, mark_typical
+from app.tree import value_at
+
+Tree = dict[str, Any]
+#: Keys that say how a value is meant, and are no typical values themselves.
+NOT_MARKED = ("shape", "damping_law", "poisson_ratio")
+#: What stands in the way of a key of a part: the other way of telling the same thing.
+OTHER_WAYS = {
+    "cushion": ("stiffness",),
+    "ram": ("ram",),
+    "layer": ("model", "exponent"),
+    "toe": ("model", "exponent"),
+}
+
+
+def use_part(tree: Tree, part: Part, pointer: str) -> None:
+    """Put a part at its place: the cushion, load, layer, toe, section or material at `pointer`.
+
+    For a material, `pointer` may also be a place that names one: the material then joins the project under its name,
+    or the one that is there under that name with the same figures is taken.
+    """
+    if part.kind == "material" and not isinstance(value_at(tree, pointer), dict):
+        _name_material(tree, part, pointer)
+        return
+    parent, key = pointer.rsplit("/", 1)
+    place = value_at(tree, pointer)
+    if part.kind == "section":
+        forget(tree, pointer)
+        value_at(tree, parent).update({key: dict(part.values), "end_section": None})
+        place = value_at(tree, pointer)
+    elif place is None:
+        value_at(tree, parent)[key] = place = dict(part.values)
+    for other in OTHER_WAYS.get(part.kind, ()):
+        place[other] = None
+    if part.kind == "cushion":
+        place.update({k: v for k, v in SIZE.items() if place.get(k) is None})
+    place.update(part.values)
+    forget_missing(tree)
+    _mark(tree, part, pointer)
+
+
+#: Area and thickness of a cushion that is told by its material, where none are given yet.
+SIZE = {"area": 0.16, "thickness": 0.15}
+
+
+def _name_material(tree: Tree, part: Part, pointer: str) -> None:
+    names = [material["name"] for material in tree["materials"]]
+    name = part.name
+    same = next((m for m in tree["materials"] if m["name"] == name), None)
+    if same is None or any(same[k] != v for k, v in part.values.items()):
+        name = free_name(part.name, names)
+        limits = {"compression": None, "tension": None}
+        material = {"name": name, **part.values, "law": {"kind": "elastic"}, "limits": limits}
+        tree["materials"].append(material)
+        _mark(tree, part, f"/materials/{len(tree['materials']) - 1}")
+    parent, key = pointer.rsplit("/", 1)
+    value_at(tree, parent)[key] = name
+
+
+def _mark(tree: Tree, part: Part, pointer: str) -> None:
+    for key, value in part.values.items():
+        if key not in NOT_MARKED and value is not None:
+            mark_typical(tree, f"{pointer}/{key}", part.source)
+
+
+def free_name(wanted: str, names: list[str]) -> str:
+    """The name itself, or with the first number behind it that is not taken."""
+    name, number = wanted, 2
+    while name in names:
+        name, number = f"{wanted} {number}", number + 1
+    return name
