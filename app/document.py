@@ -51,6 +51,7 @@ class Document(QObject):
         self._project = project
         self._tree: dict[str, Any] = project.model_dump(mode="json")
         self._path: Path | None = None
+        self._folder: Path | None = None
         self._disk: DiskState | None = None
         self._case_index = 0
         self._rejected: dict[str, Rejected] = {}
@@ -71,6 +72,11 @@ class Document(QObject):
     @property
     def path(self) -> Path | None:
         return self._path
+
+    @property
+    def folder(self) -> Path | None:
+        """Where relative history files are looked for."""
+        return self._folder
 
     @property
     def dirty(self) -> bool:
@@ -175,10 +181,14 @@ class Document(QObject):
             self._rejected = {}
             self.changed.emit()
 
-    def new(self, project: Project, path: Path | None = None, saved: bool = True) -> None:
-        """Begin with a project. `path` is its file, if any; `saved` False where it differs from that file."""
+    def new(
+        self, project: Project, path: Path | None = None, saved: bool = True, folder: Path | None = None
+    ) -> None:
+        """Begin with a project. `path` is its file, if any; `saved` False where it differs from that file; `folder`
+        is where its history files lie while it has none of its own."""
         self._project, self._tree = project, project.model_dump(mode="json")
         self._path = path
+        self._folder = path.parent if path else folder
         self._disk = disk_state(path) if path else None
         self._case_index = 0
         self._rejected = {}
@@ -211,13 +221,11 @@ class Document(QObject):
         """Write to a file, whole or not at all, and go on with it. Raises `DocumentError`; nothing is lost then."""
         path = Path(path).absolute()
         project = self._project
-        if self._path is not None and path.parent != self._path.parent:
-            project = self._validated(
-                trees.with_files_moved(self._tree, self._path.parent, path.parent), path.parent
-            )
+        if self._folder is not None and path.parent != self._folder:
+            project = self._moved(path.parent)
         _write(path, project_to_text(project))
         self._project, self._tree = project, project.model_dump(mode="json")
-        self._path = path
+        self._path, self._folder = path, path.parent
         self._disk = disk_state(path)
         self.undo_stack.setClean()
         self.changed.emit()
@@ -233,8 +241,16 @@ class Document(QObject):
             self.undo_stack.resetClean()
             self.changed.emit()
 
-    def _validated(self, tree: dict[str, Any], folder: Path | None = None) -> Project:
-        return project_from_tree(tree, folder or (self._path.parent if self._path else None))
+    def _validated(self, tree: dict[str, Any]) -> Project:
+        return project_from_tree(tree, self._folder)
+
+    def _moved(self, folder: Path) -> Project:
+        """The project as it must be written in another folder, so that its history files are still found."""
+        assert self._folder is not None
+        try:
+            return project_from_tree(trees.with_files_moved(self._tree, self._folder, folder), folder)
+        except ProjectError as error:
+            raise DocumentError(f"The project cannot be saved in {folder}: {error}") from None
 
     def _push(self, label: str, project: Project, merge: str | None) -> None:
         if project == self._project:

@@ -1,0 +1,166 @@
+"""The cases of the project in the top bar: one is looked at; a menu for each renames, copies, moves and removes it."""
+
+from __future__ import annotations
+
+from typing import Any
+
+from PySide6.QtCore import QPoint, Qt
+from PySide6.QtWidgets import (
+    QFrame,
+    QHBoxLayout,
+    QInputDialog,
+    QMenu,
+    QPushButton,
+    QScrollArea,
+    QToolButton,
+    QWidget,
+)
+
+from app.document import Document
+from app.look import icon
+from app.look.spacing import GAP, ROW
+from app.tree import copied
+
+Tree = dict[str, Any]
+
+
+class CaseRow(QScrollArea):
+    """A button for each case, and "+" for a copy of the one looked at."""
+
+    def __init__(self, document: Document, parent: QWidget | None = None) -> None:
+        super().__init__(parent)
+        self._document = document
+        self._names: list[str] = []
+        self._buttons: list[QPushButton] = []
+        self.setFrameShape(QFrame.Shape.NoFrame)
+        self.setWidgetResizable(True)
+        self.setFixedHeight(ROW + 2 * GAP)
+        self.setVerticalScrollBarPolicy(Qt.ScrollBarPolicy.ScrollBarAlwaysOff)
+        self.setHorizontalScrollBarPolicy(Qt.ScrollBarPolicy.ScrollBarAlwaysOff)
+        inside = QWidget(self)
+        inside.setProperty("role", "clear")
+        self._row = QHBoxLayout(inside)
+        self._row.setContentsMargins(GAP, 0, GAP, 0)
+        self._row.setSpacing(GAP)
+        self._add = QToolButton(inside)
+        self._add.setProperty("role", "quiet")
+        self._add.setIcon(icon("add"))
+        self._add.setToolTip("Add a case: a copy of this one")
+        self._add.setAccessibleName("Add a case")
+        self._add.clicked.connect(lambda: add_case(self._document))
+        self._row.addWidget(self._add)
+        self._row.addStretch(1)
+        self.setWidget(inside)
+        document.changed.connect(self._follow)
+        self._follow()
+
+    def _follow(self) -> None:
+        names = [case.name for case in self._document.project.cases]
+        if names != self._names:
+            self._names = names
+            self._rebuild()
+        for index, button in enumerate(self._buttons):
+            button.setChecked(index == self._document.case_index)
+        self.ensureWidgetVisible(self._buttons[self._document.case_index])
+        self._add.setIcon(icon("add"))
+
+    def _rebuild(self) -> None:
+        for button in self._buttons:
+            self._row.removeWidget(button)
+            button.hide()
+            button.deleteLater()
+        self._buttons = []
+        for index, name in enumerate(self._names):
+            button = QPushButton(_short(name), self.widget())
+            button.setProperty("role", "chip")
+            button.setCheckable(True)
+            button.setAccessibleName(f"Case {name}")
+            button.setToolTip(f"{name}\nRight-click to rename, copy, move or remove it")
+            button.clicked.connect(lambda _on=False, i=index: self._choose(i))
+            button.setContextMenuPolicy(Qt.ContextMenuPolicy.CustomContextMenu)
+            button.customContextMenuRequested.connect(lambda at, i=index: self._menu(i, at))
+            self._row.insertWidget(index, button)
+            self._buttons.append(button)
+
+    def _choose(self, index: int) -> None:
+        self._document.choose_case(index)
+        self._buttons[index].setChecked(True)  # a second click must not leave none chosen
+
+    def _menu(self, index: int, at: QPoint) -> None:
+        self._document.choose_case(index)
+        menu = QMenu(self)
+        menu.setAttribute(Qt.WidgetAttribute.WA_DeleteOnClose)
+        fill_case_menu(menu, self._document, self)
+        menu.popup(self._buttons[index].mapToGlobal(at))
+
+
+def fill_case_menu(menu: QMenu, document: Document, parent: QWidget) -> None:
+    """What can be done with the case that is looked at."""
+    count, index = len(document.project.cases), document.case_index
+    menu.addAction("Rename…", lambda: _ask_name(document, parent))
+    menu.addAction(icon("duplicate"), "Add a copy", lambda: add_case(document))
+    menu.addSeparator()
+    menu.addAction("Move to the left", lambda: move_case(document, -1)).setEnabled(index > 0)
+    menu.addAction("Move to the right", lambda: move_case(document, 1)).setEnabled(index < count - 1)
+    menu.addSeparator()
+    menu.addAction("Remove", lambda: remove_case(document)).setEnabled(count > 1)
+
+
+def add_case(document: Document) -> bool:
+    """Add a copy of the case looked at, and look at the copy."""
+    names = [case.name for case in document.project.cases]
+    name, at = _free_name(document.case.name, names), document.case_index + 1
+
+    def change(tree: Tree) -> None:
+        tree["cases"].insert(at, copied(tree["cases"][at - 1]) | {"name": name})
+
+    return _done(document, document.edit_tree(f"Add case {name}", change), at)
+
+
+def remove_case(document: Document) -> bool:
+    """Remove the case looked at, unless it is the only one."""
+    index = document.case_index
+    done = document.edit_tree(f"Remove case {document.case.name}", lambda tree: tree["cases"].pop(index))
+    return _done(document, done, max(0, index - 1))
+
+
+def move_case(document: Document, by: int) -> bool:
+    """Move the case looked at among the others."""
+    index = document.case_index
+
+    def change(tree: Tree) -> None:
+        tree["cases"].insert(index + by, tree["cases"].pop(index))
+
+    return _done(document, document.edit_tree(f"Move case {document.case.name}", change), index + by)
+
+
+def rename_case(document: Document, name: str) -> bool:
+    """Give the case looked at another name."""
+
+    def change(tree: Tree) -> None:
+        tree["cases"][document.case_index]["name"] = name.strip()
+
+    return document.edit_tree(f"Rename case {document.case.name} to {name.strip()}", change)
+
+
+def _done(document: Document, done: bool, index: int) -> bool:
+    if done:
+        document.choose_case(index)
+    return done
+
+
+def _ask_name(document: Document, parent: QWidget) -> None:
+    name, given = QInputDialog.getText(parent, "Rename the case", "Name", text=document.case.name)
+    if given:
+        rename_case(document, name)
+
+
+def _free_name(name: str, names: list[str]) -> str:
+    number = 2
+    while f"{name} ({number})" in names:
+        number += 1
+    return f"{name} ({number})"
+
+
+def _short(name: str) -> str:
+    return (name if len(name) <= 24 else f"{name[:22]}…").replace("&", "&&")
