@@ -52,6 +52,7 @@ _WAYLAND = {
     "libwayland-client.so.0": _Package("libwayland-client0", "libwayland-client"),
     "libwayland-cursor.so.0": _Package("libwayland-cursor0", "libwayland-cursor"),
 }
+_CANNOT_START = "Striketrace cannot start Qt, which draws its window, because"
 _ALL = {**_WIDGETS, **_X11, **_WAYLAND}
 
 
@@ -59,11 +60,14 @@ def explain_qt_failure(error: BaseException) -> str:
     """One sentence on why Qt could not be imported, with the command that brings all system libraries it lacks."""
     named = re.search(r"(lib[\w.+-]+\.so[.\d]*): cannot open shared object file", str(error))
     if named:
-        return _lacking([named.group(1), *_not_loadable(_WIDGETS)])
+        looked_at = dict(_WIDGETS)
+        looked_at |= _X11 if os.environ.get("DISPLAY") else {}
+        looked_at |= _WAYLAND if os.environ.get("WAYLAND_DISPLAY") else {}
+        return _lacking([named.group(1), *_not_loadable(looked_at)])
     if isinstance(error, ModuleNotFoundError):
         mend = "`python -m pip install --force-reinstall PySide6-Essentials` brings it back"
-        return f"Striketrace cannot open its window because the package '{error.name}' is missing: {mend}."
-    return f"Striketrace cannot open its window because Qt does not start: {error}."
+        return f"{_CANNOT_START} the package '{error.name}' is missing: {mend}."
+    return f"{_CANNOT_START} the system's loader says '{error}': reinstall the package PySide6-Essentials."
 
 
 def explain_no_display() -> str:
@@ -74,7 +78,7 @@ def explain_no_display() -> str:
     ways += [_x11_problem] if os.environ.get("DISPLAY") else []
     if not ways:
         return (
-            "Striketrace cannot open its window because this session has no display (neither DISPLAY nor"
+            f"{_CANNOT_START} this session has no display (neither DISPLAY nor"
             " WAYLAND_DISPLAY is set): start it on a desktop, through `ssh -X`, or use"
             " `python3 -m app solve FILE.strike --out DIR`, which needs none."
         )
@@ -110,7 +114,7 @@ def _wayland_problem() -> str:
 
 def _no_answer(variable: str) -> str:
     return (
-        f"Striketrace cannot open its window because no display answers at {variable}={os.environ[variable]}:"
+        f"{_CANNOT_START} no display answers at {variable}={os.environ[variable]}:"
         f" correct it with `export {variable}=...`, or start the program on the desktop itself."
     )
 
@@ -130,15 +134,11 @@ def _lacking(libraries: list[str]) -> str:
     names = list(dict.fromkeys(libraries))
     debian = sorted({_ALL[name].debian for name in names if name in _ALL})
     fedora = sorted({_ALL[name].fedora for name in names if name in _ALL})
-    what = (
-        f"the system library {names[0]} is"
-        if len(names) == 1
-        else f"the system libraries {', '.join(names)} are"
-    )
-    start = f"Striketrace cannot open its window because {what} missing"
+    what = f"the system library {names[0]}"
+    what += f" and {len(names) - 1} more are missing" if len(names) > 1 else " is missing"
     if not debian:
-        return f"{start}: install the package of your system that brings {names[0]}."
+        return f"{_CANNOT_START} {what}: install the package of your system that brings {names[0]}."
     return (
-        f"{start}: run `sudo apt install {' '.join(debian)}` (Debian, Ubuntu)"
+        f"{_CANNOT_START} {what}: run `sudo apt install {' '.join(debian)}` (Debian, Ubuntu)"
         f" or `sudo dnf install {' '.join(fedora)}` (Fedora)."
     )

@@ -21,7 +21,8 @@ _NO_NETWORK = re.compile(
     re.I,
 )
 _NOT_WRITABLE = re.compile(r"Errno 13|Errno 30|Permission denied|Read-only file system|WinError 5\b", re.I)
-_IN_USE = re.compile(r"WinError 32|being used by another process", re.I)
+# Windows refuses to replace a library that a running program has loaded, in either of these words.
+_IN_USE = re.compile(r"WinError 32|being used by another process|WinError 5\b.*\.venv", re.I)
 _NO_PACKAGE = re.compile(r"No matching distribution found for (\S+?)(?:[<>=].*)?$", re.M)
 
 

@@ -31,22 +31,24 @@ class Progress:
         self._on_terminal = sys.stderr is not None and sys.stderr.isatty()
         self._ticking = False
         self._started = time.monotonic()
+        self._all_fetched = False
 
     def line(self, text: str) -> None:
         shown = shown_as(text)
         if shown:
-            self._end_tick()
+            self.end_tick()
             say(shown)
+        self._all_fetched |= _UNPACKING.match(text) is not None
 
     def tick(self) -> None:
         """Called a few times a second while the installer says nothing."""
         if self._on_terminal:
-            seconds = time.monotonic() - self._started
-            text = f"  {_fetched_bytes(self._room) / 1e6:.0f} MB fetched, {seconds:.0f} s"
+            text = "  " if self._all_fetched else f"  {_fetched_bytes(self._room) / 1e6:.0f} MB, "
+            text += f"{time.monotonic() - self._started:.0f} s"
             print(f"\r{text:40}", end="", file=sys.stderr, flush=True)
             self._ticking = True
 
-    def _end_tick(self) -> None:
+    def end_tick(self) -> None:
         if self._ticking:
             print("\r" + " " * 40 + "\r", end="", file=sys.stderr)
             self._ticking = False
@@ -60,7 +62,8 @@ def shown_as(line: str) -> str:
         return f"  fetching {name} {version}{size or ''}"
     unpacking = _UNPACKING.match(line)
     if unpacking:
-        return f"  unpacking {len(unpacking.group(1).split(','))} packages (the longest step)"
+        count = len(unpacking.group(1).split(","))
+        return f"  unpacking {count} package{'s' if count > 1 else ''}"
     return ""
 
 
@@ -83,8 +86,9 @@ def run_shown(
         errors="replace",
         pass_fds=() if os.name == "nt" else (lock.fileno(),),
     )
+    assert child.stdout is not None
     lines: queue.Queue[str | None] = queue.Queue()
-    reader = threading.Thread(target=_read, args=(child, lines), daemon=True)
+    reader = threading.Thread(target=_read, args=(child.stdout, lines), daemon=True)
     reader.start()
     said: list[str] = []
     try:
@@ -93,14 +97,16 @@ def run_shown(
             progress.line(line)
         return child.wait(), "\n".join(said)
     finally:
+        progress.end_tick()
         if child.poll() is None:
             child.terminate()
             child.wait()
+        reader.join(2)
+        child.stdout.close()
 
 
-def _read(child: "subprocess.Popen[str]", lines: "queue.Queue[str | None]") -> None:
-    assert child.stdout is not None
-    for line in child.stdout:
+def _read(stream: IO[str], lines: "queue.Queue[str | None]") -> None:
+    for line in stream:
         lines.put(line.rstrip())
     lines.put(None)
 

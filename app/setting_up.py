@@ -72,11 +72,12 @@ def _make_whole(folder: Path, extra: str, again: str, lock: IO[bytes]) -> None:
     if made_by_hand and not needs.python_fits(folder, version):
         raise CannotSetUp(set_up_failures.foreign_venv(venv, f"Python {version}", again))
 
-    started = time.monotonic()
-    say(f"Setting up Striketrace in {venv}")
     usable = made_by_hand or (stamp is not None and stamp.whole and stamp.python == version)
+    usable = usable and needs.python_fits(folder, version)
     if not usable:
         _refuse_if_hopeless(folder, again)
+    started = time.monotonic()
+    say(f"Setting up Striketrace in {venv}")
     needs.write_stamp(venv, needs.Stamp(False, "", ""))
     if not usable:
         _make_anew(folder, again, lock)
