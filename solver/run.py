@@ -32,6 +32,10 @@ Array = NDArray[np.float64]
 CHUNK = 8_000_000
 #: Most element-steps of a run; more would take hours and is refused with a word.
 MOST_WORK = 2e12
+#: Share of the largest velocity below which the member counts as nearly at rest, and for how many chunks of such runs
+#: it must be: what little still moves is settled statically.
+STILL = 0.03
+STILL_CHUNKS = 8
 #: Frames kept for the pictures; above twice as many every second one is dropped.
 FRAMES = 1024
 #: Columns of the pictures along the member.
@@ -134,6 +138,7 @@ class March:
         self.events: list[Array] = []
         self.start_row = self._start_row()
         self.planned = self._planned_steps()
+        self.still = 0
 
     def _planned_steps(self) -> int:
         """Steps of the run; where it ends by itself, the most that it may take."""
@@ -162,6 +167,9 @@ class March:
     def run(self, progress: Callable[[Progress], None] | None, cancel: Callable[[], bool] | None) -> bool:
         """March to the end; returns whether it was stopped before."""
         per_chunk = max(64, CHUNK // self.chain.nodes)
+        if self.chain.case.run.duration is None:
+            # looked at several times while a wave passes once, so that a moment of stillness is not taken for rest
+            per_chunk = min(per_chunk, max(64, self.chain.nodes // 2))
         while self.steps < self.planned:
             count = self._aligned(min(per_chunk, self.planned - self.steps, self._until_release()))
             self._chunk(count)
@@ -232,9 +240,10 @@ class March:
         if self.chain.case.run.duration is not None:
             return False
         head = self.chain.head
-        fastest = float(np.max(np.abs(self.extremes.speed[head:])))
+        fastest = float(np.max(self.extremes.speed[head:]))
         moving = float(np.max(np.abs(self.state.motion.v[head:])))
-        return moving < 0.002 * fastest
+        self.still = self.still + 1 if moving < STILL * fastest else 0
+        return self.still >= STILL_CHUNKS
 
     def _progress(self) -> Progress:
         done = self.base + self.share * self.steps / self.planned

@@ -7,8 +7,9 @@ from __future__ import annotations
 
 from collections.abc import Iterator, Mapping
 from math import sqrt
+from typing import Literal
 
-from solver.model.load import GRAVITY, Drop
+from solver.model.load import GRAVITY, Cushion, Drop
 from solver.model.material import Material
 from solver.model.member import Segment
 from solver.model.project import Case
@@ -62,12 +63,20 @@ def wave_speed(segment: Segment, materials: Materials, share: float = 0.0) -> fl
 
 def travel_time(segment: Segment, materials: Materials) -> float:
     """Time that a wave needs through the segment, s: L/c, or the integral of dx/c where c varies (tapered fill)."""
+    return _stretch(segment, 0.0, 1.0, materials)
+
+
+def _stretch(segment: Segment, first: float, last: float, materials: Materials) -> float:
+    """Time through a part of a segment, s, given by shares of its length."""
+    length = segment.length * (last - first)
     if segment.end_section is None or segment.section.shape != "filled_pipe":
-        return segment.length / wave_speed(segment, materials)
+        return length / wave_speed(segment, materials)
     points = 32  # Simpson's rule; c varies smoothly and little along a taper, so that 32 panels give 1e-9
     weights = [1 if i in (0, points) else 4 if i % 2 else 2 for i in range(points + 1)]
-    slowness = sum(w / wave_speed(segment, materials, i / points) for i, w in enumerate(weights))
-    return segment.length * slowness / (3 * points)
+    slowness = sum(
+        w / wave_speed(segment, materials, first + (last - first) * i / points) for i, w in enumerate(weights)
+    )
+    return length * slowness / (3 * points)
 
 
 def segment_mass(segment: Segment, materials: Materials) -> float:
@@ -146,6 +155,34 @@ def layer_resistances(case: Case) -> tuple[float, ...]:
         totals.append(total)
         top += layer.thickness
     return tuple(totals)
+
+
+def energy_returned(cushion: Cushion) -> float:
+    """Share of the energy put into a cushion that it gives back, e^2 (E. A. L. Smith 1960, from memory)."""
+    return cushion.restitution**2
+
+
+def segment_at(case: Case, position: float, side: Literal["near", "far"] = "near") -> tuple[Segment, float]:
+    """The member's segment at a distance from the struck end, m, and the share of its length there.
+
+    At the joint of two segments `side` decides, as for a gauge: the one nearer to the struck end, or the other.
+    """
+    for start, segment in _segments_with_start(case):
+        end = start + segment.length
+        if position < end or (position == end and side == "near"):
+            return segment, max(0.0, position - start) / segment.length
+    return case.member.segments[-1], 1.0
+
+
+def time_between(case: Case, first: float, last: float) -> float:
+    """Time that a wave needs along the member from one distance to another (m, `first` the smaller), s."""
+    total = 0.0
+    for start, segment in _segments_with_start(case):
+        a, b = max(first, start), min(last, start + segment.length)
+        if b > a:
+            shares = (a - start) / segment.length, (b - start) / segment.length
+            total += _stretch(segment, *shares, case.materials)
+    return total
 
 
 def resistance_split(total: float, toe_share: float) -> tuple[float, float]:

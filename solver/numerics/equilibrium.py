@@ -69,6 +69,7 @@ def bring_to_rest(chain: Chain, state: State) -> None:
     Raises `SolveError` where nothing holds it.
     """
     if chain.gravity == 0.0:
+        _step_back_half(chain, state)
         return
     cap = sum(link.link + 1 < chain.head for link in chain.train)
     cap_weight = float(state.rod.weight[chain.head - 1]) if cap else 0.0
@@ -90,6 +91,19 @@ def bring_to_rest(chain: Chain, state: State) -> None:
     q = s.radiation
     q[0] = np.clip(u[s.radiation_nodes], -q[1] / q[2], q[1] / q[2])
     _lay_toe(state.bounds, float(u[-1]), float(r[-1]))
+    _step_back_half(chain, state)
+
+
+def _step_back_half(chain: Chain, state: State) -> None:
+    """Cushion and shaft live on half steps: half a step before the blow, what moves was not yet where it is at time 0."""
+    back = state.motion.v * chain.dt / 2
+    if len(state.bounds.train_links):
+        a = int(state.bounds.train_links[0])
+        state.bounds.train_state[0, 0] -= back[a] - back[a + 1]
+    s = state.shaft
+    s.r[:] = np.clip(s.r - s.stiff * back[s.first : s.first + len(s.r)], -s.strength, s.strength)
+    s.power[0] = np.clip(s.power[0] - s.power[2] * back[s.power_nodes], -s.power[1], s.power[1])
+    s.radiation[0] -= back[s.radiation_nodes]
 
 
 def _refuse_unheld(chain: Chain, weight: float, soil: _Soil) -> None:
