@@ -129,3 +129,35 @@ def test_shaft_resistance_along_a_cone_uses_its_shrinking_perimeter() -> None:
 
 def test_a_total_is_split_by_the_toes_share() -> None:
     assert derived.resistance_split(2e6, 0.25) == (1.5e6, 0.5e6)
+
+
+def two_segments() -> Case:
+    segment = {"length": 4.0, "section": PIPE}
+    segments = [segment | {"name": "A", "material": "steel"}, segment | {"name": "B", "material": "grout"}]
+    return case_of(member={"segments": segments})
+
+
+def test_times_along_the_member_add_up() -> None:
+    """From the middle of A to the middle of B: 2 m at each wave speed sqrt(E/rho)."""
+    case = two_segments()
+    expected = 2 * sqrt(7850 / 210e9) + 2 * sqrt(2400 / 30e9)
+    assert derived.time_between(case, 2.0, 6.0) == pytest.approx(expected, rel=1e-14)
+    whole = sum(derived.travel_time(s, case.materials) for s in case.member.segments)
+    assert derived.time_between(case, 0.0, 8.0) == pytest.approx(whole, rel=1e-14)
+
+
+def test_the_segment_at_a_joint_is_on_the_side_asked_for() -> None:
+    case = two_segments()
+    assert derived.segment_at(case, 4.0, "near")[0].name == "A"
+    assert derived.segment_at(case, 4.0, "far")[0].name == "B"
+    assert derived.segment_at(case, 5.0) == (case.member.segments[1], 0.25)
+    assert derived.segment_at(case, 8.0, "far") == (case.member.segments[1], 1.0)
+
+
+def test_a_cushion_gives_back_the_square_of_its_restitution() -> None:
+    """Loads along k, unloads along k/e^2: the areas stand as 1 to e^2."""
+    case = case_of(load={"kind": "drop", "ram_mass": 1e3, "impact_velocity": 3.0, "cushion": CUSHION})
+    assert derived.energy_returned(case.load.cushion) == pytest.approx(0.64, rel=1e-14)
+
+
+CUSHION = {"stiffness": 1e9, "restitution": 0.8}
