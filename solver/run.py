@@ -16,7 +16,7 @@ from solver.model.load import History, Pulse
 from solver.model.project import Case, RepeatedBlows
 from solver.numerics.arrays import Extremes
 from solver.numerics.assemble import bounds_of, extremes_of, motion_of, records_of, rod_of
-from solver.numerics.balance import LEDGER, balance
+from solver.numerics.balance import LEDGER, SLIP, balance
 from solver.numerics.chain import Chain, build_chain
 from solver.numerics.equilibrium import State, bring_to_rest
 from solver.numerics.ground import shaft_of
@@ -32,9 +32,10 @@ Array = NDArray[np.float64]
 CHUNK = 8_000_000
 #: Most element-steps of a run; more would take hours and is refused with a word.
 MOST_WORK = 2e12
-#: Share of the largest velocity below which the member counts as nearly at rest, and for how many chunks of such runs
-#: it must be: what little still moves is settled statically.
+#: Share of the largest velocity below which the member counts as nearly at rest (and below which it may ring on in ground
+#: that no longer slips), and for how many chunks of such runs it must: what little still moves is settled statically.
 STILL = 0.03
+RINGING = 0.2
 STILL_CHUNKS = 8
 #: Frames kept for the pictures; above twice as many every second one is dropped.
 FRAMES = 1024
@@ -139,6 +140,7 @@ class March:
         self.start_row = self._start_row()
         self.planned = self._planned_steps()
         self.still = 0
+        self.slipped = 0.0
 
     def _planned_steps(self) -> int:
         """Steps of the run; where it ends by itself, the most that it may take."""
@@ -242,7 +244,11 @@ class March:
         head = self.chain.head
         fastest = float(np.max(self.extremes.speed[head:]))
         moving = float(np.max(np.abs(self.state.motion.v[head:])))
-        self.still = self.still + 1 if moving < STILL * fastest else 0
+        slipped, self.slipped = self.sums[SLIP] - self.slipped, float(self.sums[SLIP])
+        # a member that rings in ground which slips no more adds nothing to its set: the rest of it is statics
+        ringing = self.chain.case.ground is not None and slipped <= 1e-9 * self.sums[SLIP]
+        quiet = moving < STILL * fastest or (ringing and moving < RINGING * fastest)
+        self.still = self.still + 1 if quiet else 0
         return self.still >= STILL_CHUNKS
 
     def _progress(self) -> Progress:

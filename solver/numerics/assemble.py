@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from itertools import pairwise
+
 import numpy as np
 from numpy.typing import NDArray
 
@@ -57,7 +59,7 @@ def _blocks(chain: Chain) -> NDArray[np.int64]:
     for stretch in chain.stretches:
         laws[stretch.start : stretch.stop] = LAW_NUMBERS[stretch.material.law.kind]
     edges = np.concatenate(([0], np.flatnonzero(np.diff(laws)) + 1, [len(laws)]))
-    return np.array([(laws[a], a, b) for a, b in zip(edges[:-1], edges[1:], strict=True)], dtype=np.int64)
+    return np.array([(laws[a], a, b) for a, b in pairwise(edges)], dtype=np.int64)
 
 
 def _law_parameters(chain: Chain, stretch: Stretch, par: Array) -> None:

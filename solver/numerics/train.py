@@ -96,14 +96,14 @@ def solve_two(rel1, rel2, p0, p1, p2, kinds, pars, states, gaps, dt):
 def advance(links, kinds, pars, states, forces, u, v, w, push, dt):
     """One step of the train: corrects the new velocities `w` in place and returns the energy lost in impacts, J.
 
-    `links[l]` is the node above link l, the node below is the next one. `forces` gets the force of each link, N.
+    `links[t]` is the node above link t, the node below is the next one. `forces` gets the force of each link, N.
     """
     count = len(links)
     gaps = np.zeros(2)
-    for l in range(count):
-        a = links[l]
-        gaps[l] = u[a + 1] - u[a]
-        states[l, 3] = v[a] - v[a + 1]
+    for t in range(count):
+        a = links[t]
+        gaps[t] = u[a + 1] - u[a]
+        states[t, 3] = v[a] - v[a + 1]
     a = links[0]
     rel1 = w[a] - w[a + 1]
     if count == 1:
@@ -114,17 +114,17 @@ def advance(links, kinds, pars, states, forces, u, v, w, push, dt):
             rel1, rel2, push[a], push[a + 1], push[a + 2], kinds, pars, states, gaps, dt
         )
     lost = 0.0
-    for l in range(count):
-        a = links[l]
-        w[a] -= push[a] * forces[l]
-        w[a + 1] += push[a + 1] * forces[l]
-    for l in range(count):
-        a = links[l]
+    for t in range(count):
+        a = links[t]
+        w[a] -= push[a] * forces[t]
+        w[a + 1] += push[a + 1] * forces[t]
+    for t in range(count):
+        a = links[t]
         rel = w[a] - w[a + 1]
-        if kinds[l] == 0:
-            lost += 0.5 * dt * forces[l] * (states[l, 3] + rel)
+        if kinds[t] == 0:
+            lost += 0.5 * dt * forces[t] * (states[t, 3] + rel)
         else:
-            states[l, 0] += 0.5 * dt * (states[l, 3] + rel)
-            states[l, 2] = cushion_force(states[l, 0], pars[l, 0], pars[l, 1], states[l, 1], pars[l, 2])
-            states[l, 1] = max(states[l, 1], states[l, 0])
+            states[t, 0] += 0.5 * dt * (states[t, 3] + rel)
+            states[t, 2] = cushion_force(states[t, 0], pars[t, 0], pars[t, 1], states[t, 1], pars[t, 2])
+            states[t, 1] = max(states[t, 1], states[t, 0])
     return lost
