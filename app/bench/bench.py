@@ -1,0 +1,83 @@
+"""The pictures of the Bench, laid out so that distance and time are shared to the pixel.
+
+member drawing | x-t diagram | profile        one distance axis, downwards
+at the cursor  | strips      | findings       one time axis, to the right, with the x-t diagram
+"""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+
+from PySide6.QtCore import QSize
+from PySide6.QtGui import QColor, QKeySequence, QPainter, QPaintEvent, QShortcut
+from PySide6.QtWidgets import QAbstractButton, QApplication, QComboBox, QVBoxLayout, QWidget
+
+from app.bench.at_cursor import AtCursor
+from app.bench.cross_grid import CrossGrid
+from app.bench.findings_panel import FindingsPanel
+from app.bench.member_drawing import MemberDrawing
+from app.bench.profile import Profile
+from app.bench.strips import Strips
+from app.bench.time_bar import TimeBar
+from app.bench.xt_diagram import XtDiagram
+from app.document import Document
+from app.look.palette import palette
+from app.sight import Sight
+from app.solving import Solution
+
+COLUMNS, ROWS = (0.18, 0.59, 0.23), (0.56, 0.44)
+
+
+class Bench(QWidget):
+    """All pictures and the time bar. `shares` and `set_shares` let the window remember how they are divided."""
+
+    def __init__(
+        self, document: Document, sight: Sight, solution: Solution, parent: QWidget | None = None
+    ) -> None:
+        super().__init__(parent)
+        self.member = MemberDrawing(document, sight, solution)
+        self.xt = XtDiagram(document, sight, solution)
+        self.profile = Profile(document, sight, solution)
+        self.at_cursor = AtCursor(document, sight, solution)
+        self.strips = Strips(document, sight, solution)
+        self.findings = FindingsPanel(document, sight, solution)
+        self.time_bar = TimeBar(document, sight, solution)
+        self._sight = sight
+        for picture, size in ((self.member, 130), (self.xt, 280), (self.profile, 150)):
+            picture.setMinimumSize(QSize(size, 160))
+        self.grid = CrossGrid(
+            [[self.member, self.xt, self.profile], [self.at_cursor, self.strips, self.findings]],
+            COLUMNS,
+            ROWS,
+        )
+        whole = QVBoxLayout(self)
+        whole.setContentsMargins(0, 0, 0, 0)
+        whole.setSpacing(0)
+        whole.addWidget(self.grid, 1)
+        whole.addWidget(self.time_bar)
+        self._shortcuts()
+
+    def shares(self) -> tuple[tuple[float, ...], tuple[float, ...]]:
+        return self.grid.shares()
+
+    def set_shares(self, columns: Sequence[float], rows: Sequence[float]) -> None:
+        self.grid.set_shares(columns, rows)
+
+    def paintEvent(self, event: QPaintEvent) -> None:
+        QPainter(self).fillRect(event.rect(), QColor(palette().paper))
+
+    def _shortcuts(self) -> None:
+        space = QShortcut(QKeySequence("Space"), self)
+        space.activated.connect(self._space)
+        home = QShortcut(QKeySequence("Ctrl+0"), self)
+        home.activated.connect(lambda: self._sight.set(time_range=None, distance_range=None))
+
+    def _space(self) -> None:
+        """Play or pause; a button or a list that has the focus is worked by the space bar as everywhere."""
+        focus = QApplication.focusWidget()
+        if isinstance(focus, QAbstractButton) and focus.isEnabled():
+            focus.click()
+        elif isinstance(focus, QComboBox):
+            focus.showPopup()
+        else:
+            self.time_bar.toggle()

@@ -1,0 +1,93 @@
+"""Where names stand on their curves: near their own, off the others, off each other."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from dataclasses import dataclass
+
+import numpy as np
+from numpy.lib.stride_tricks import sliding_window_view
+from numpy.typing import NDArray
+from PySide6.QtCore import QRectF
+
+Array = NDArray[np.float64]
+
+#: Pixels between the places that are tried.
+STEP = 4.0
+
+
+@dataclass(frozen=True, eq=False)
+class Drawn:
+    """A curve on the screen: pixels, both of shape (n,), x rising."""
+
+    x: Array
+    y: Array
+
+
+@dataclass(frozen=True)
+class Wanted:
+    """A name of so many pixels that belongs to the curve at an index."""
+
+    curve: int
+    width: float
+
+
+def place_labels(
+    curves: Sequence[Drawn], wanted: Sequence[Wanted], plot: QRectF, height: float
+) -> list[QRectF | None]:
+    """A box for each name; `None` where none is free. In turn each takes the cheapest place left: off all curves,
+    where its own lies away from the others."""
+    grid = np.arange(plot.left() + 4, plot.right() - 4, STEP)
+    rows = [_row(c, grid) for c in curves]
+    taken: list[QRectF] = []
+    placed: list[QRectF | None] = []
+    for name in wanted:
+        box = _cheapest(rows, name, grid, plot, height, taken)
+        placed.append(box)
+        if box is not None:
+            taken.append(box)
+    return placed
+
+
+def _row(curve: Drawn, grid: Array) -> Array:
+    """Pixel heights on the grid; not a number where the curve does not reach."""
+    if not len(curve.x):
+        return np.full(len(grid), np.nan)
+    return np.interp(grid, curve.x, curve.y, left=np.nan, right=np.nan)
+
+
+def _cheapest(
+    rows: Sequence[Array], name: Wanted, grid: Array, plot: QRectF, height: float, taken: Sequence[QRectF]
+) -> QRectF | None:
+    span = int(np.ceil(name.width / STEP)) + 1
+    if len(grid) < span:
+        return None
+    tops = [np.nan_to_num(sliding_window_view(r, span).min(axis=1), nan=1e9) for r in rows]
+    bottoms = [np.nan_to_num(sliding_window_view(r, span).max(axis=1), nan=-1e9) for r in rows]
+    own = rows[name.curve][span // 2 : span // 2 + len(tops[0])]
+    apart = np.full(len(own), 60.0)
+    for index, row in enumerate(rows):
+        if index != name.curve:
+            gap = np.abs(row[span // 2 : span // 2 + len(own)] - own)
+            apart = np.minimum(apart, np.nan_to_num(gap, nan=60.0))
+    best: tuple[float, QRectF] | None = None
+    lefts = grid[: len(own)]
+    for above in (True, False):
+        edge = tops[name.curve] - height - 1 if above else bottoms[name.curve] + 1
+        cost = -1.0 * apart + 0.01 * (lefts - plot.left())
+        # how far the words stand from the middle of what they name
+        cost += 0.5 * np.abs(edge + height / 2 - own)
+        for index, (top, bottom) in enumerate(zip(tops, bottoms, strict=True)):
+            if index != name.curve:
+                cost += np.where((bottom > edge - 1) & (top < edge + height + 1), 400.0, 0.0)
+        for box in taken:
+            meets = (lefts < box.right() + 6) & (lefts + name.width > box.left() - 6)
+            meets &= (edge < box.bottom() + 1) & (edge + height > box.top() - 1)
+            cost += np.where(meets, 2000.0, 0.0)
+        outside = (edge < plot.top()) | (edge + height > plot.bottom()) | ~np.isfinite(own)
+        cost += np.where(outside, 1e6, 0.0)
+        cost = np.nan_to_num(cost, nan=1e6)
+        pick = int(np.argmin(cost))
+        if cost[pick] < 1500 and (best is None or cost[pick] < best[0]):
+            best = float(cost[pick]), QRectF(float(lefts[pick]), float(edge[pick]), name.width, height)
+    return best[1] if best else None

@@ -1,0 +1,129 @@
+"""Findings: the verdict in large figures, then notes. Each leads to its place and time when it is clicked.
+
+The facts are the solver's (`findings_of`), the sentences those of `app.words`; nothing is worked out here.
+"""
+
+from __future__ import annotations
+
+from functools import lru_cache
+
+from PySide6.QtCore import Qt
+from PySide6.QtGui import QContextMenuEvent, QGuiApplication
+from PySide6.QtWidgets import QFrame, QLabel, QMenu, QScrollArea, QVBoxLayout, QWidget
+
+from app import words
+from app.bench.finding_row import FindingRow
+from app.document import Document
+from app.look.spacing import GAP, SPACE
+from app.sight import Sight
+from app.solving import Solution
+from app.units import units_of
+from solver import Findings, Result, findings_of
+
+
+class FindingsPanel(QFrame):
+    def __init__(
+        self, document: Document, sight: Sight, solution: Solution, parent: QWidget | None = None
+    ) -> None:
+        super().__init__(parent)
+        self._document, self._sight, self._solution = document, sight, solution
+        self._shown: object = None
+        self.setMinimumWidth(150)
+        self.setAccessibleName("Findings")
+        outer = QVBoxLayout(self)
+        outer.setContentsMargins(0, GAP, 0, GAP)
+        outer.setSpacing(0)
+        heading = QLabel("Findings")
+        heading.setProperty("role", "strong")
+        heading.setContentsMargins(SPACE, 0, SPACE, GAP)
+        outer.addWidget(heading)
+        scroll = QScrollArea()
+        scroll.setWidgetResizable(True)
+        scroll.setHorizontalScrollBarPolicy(Qt.ScrollBarPolicy.ScrollBarAlwaysOff)
+        self._inside = QWidget()
+        self._rows = QVBoxLayout(self._inside)
+        self._rows.setContentsMargins(0, 0, 0, 0)
+        self._rows.setSpacing(2)
+        scroll.setWidget(self._inside)
+        self._inside.setAutoFillBackground(False)
+        scroll.viewport().setAutoFillBackground(False)
+        outer.addWidget(scroll, 1)
+        caution = QLabel(words.MODEL_CAUTION)
+        caution.setProperty("role", "small")
+        caution.setWordWrap(True)
+        caution.setToolTip(f"{words.AXIAL_CAUTION} {words.LIMIT_CAUTION}")
+        caution.setContentsMargins(SPACE, GAP, SPACE, 0)
+        outer.addWidget(caution)
+        for source in (document, solution):
+            source.changed.connect(self._look_again)
+        self._look_again()
+
+    def rows(self) -> list[FindingRow]:
+        """The findings as they stand, from top to bottom."""
+        return self._inside.findChildren(FindingRow, options=Qt.FindChildOption.FindDirectChildrenOnly)
+
+    def contextMenuEvent(self, event: QContextMenuEvent) -> None:
+        menu = QMenu(self)
+        copy = menu.addAction("Copy as text", self._copy)
+        copy.setEnabled(self._solution.result is not None)
+        menu.exec(event.globalPos())
+
+    def _copy(self) -> None:
+        result = self._solution.result
+        if result is not None:
+            units = units_of(self._document.project)
+            text = words.as_text(facts_of(result), result.case, units)
+            QGuiApplication.clipboard().setText(text)
+
+    def _look_again(self) -> None:
+        result, units = self._solution.result, units_of(self._document.project)
+        stands = not self._document.rejected and self._solution.state not in ("stale", "refused")
+        shown = (result, units, stands, self._solution.message)
+        if shown == self._shown:
+            return
+        self._shown = shown
+        self._clear()
+        if self._solution.state == "refused" and self._solution.message:
+            self._rows.addWidget(FindingRow("", "", f"✕ {self._solution.message}"))
+        if result is not None:
+            facts = facts_of(result)
+            for line in words.verdict(facts, units):
+                row = FindingRow(line.figure, line.name, line.detail, line.state)
+                self._connect(row, line.time, line.position)
+                self._rows.addWidget(row)
+            for note in words.notes(facts, result.case, units):
+                row = FindingRow("", "", note.text)
+                self._connect(row, note.time, note.position, note.pointer)
+                self._rows.addWidget(row)
+        for row in self.rows():
+            row.setEnabled(stands or row.text().startswith("✕"))
+        self._rows.addStretch(1)
+
+    def _connect(
+        self, row: FindingRow, time: float | None, position: float | None, pointer: str = ""
+    ) -> None:
+        """Clicking leads the cursor, or the selection, to where the finding is."""
+        what: dict[str, object] = {}
+        if time is not None:
+            what["time"] = time
+        if position is not None:
+            what["place"] = position
+        if pointer:
+            what["selection"] = pointer
+        if what:
+            row.leads_somewhere()
+            row.clicked.connect(lambda: self._sight.set(**what))
+
+    def _clear(self) -> None:
+        while item := self._rows.takeAt(0):
+            widget = item.widget()
+            if widget is not None:
+                widget.hide()
+                widget.setParent(None)
+                widget.deleteLater()
+
+
+@lru_cache(maxsize=2)
+def facts_of(result: Result) -> Findings:
+    """Findings of a result, worked out once."""
+    return findings_of(result)

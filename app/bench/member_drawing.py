@@ -1,0 +1,226 @@
+"""The member as it stands: what strikes it, its segments coloured with the quantity at the cursor's time, its gauges,
+the ground. Distances are those of the x-t diagram and of the profile, to the pixel. A click selects a part."""
+
+from __future__ import annotations
+
+from dataclasses import replace
+from typing import Any
+
+import numpy as np
+from PySide6.QtCore import QLineF, QPointF, QRectF, Qt
+from PySide6.QtGui import QColor, QFontMetricsF, QMouseEvent, QPainter, QRegion
+
+from app.bench.axes import Axis, Margins, margins_of
+from app.bench.axis_drawing import crisp, distance_ticks, in_units
+from app.bench.colouring import columns_under, entries_of, image_of, scale_top, table_of
+from app.bench.field_values import along_member
+from app.bench.glyphs import pen, pointer_right
+from app.bench.lettering import RIGHT, fitted, put, put_on, spread
+from app.bench.load_train import blocks_of, draw_drop, draw_pulse
+from app.bench.member_shapes import Piece, Pieces, pieces_of
+from app.bench.picture import Picture
+from app.bench.surroundings_drawing import draw_attachments, draw_far_end, draw_ground, ground_bands
+from app.look.fonts import font
+from app.look.palette import palette
+from solver.model.load import Drop, History, Pulse
+
+#: Where the member's middle stands, as a share of the plot's width: gauges' names left of it, layers' names right.
+CENTRE_SHARE = 0.54
+
+
+class MemberDrawing(Picture):
+    has_distance = True
+
+    def __init__(self, *args: Any, **named: Any) -> None:
+        super().__init__(*args, **named)
+        self.setAccessibleName("Member")
+        self.setMouseTracking(True)
+
+    def margins(self) -> Margins:
+        """Left only what the numbers of the distance need; above and below as all pictures in the row."""
+        shared = margins_of(self.font())
+        metrics = QFontMetricsF(self.font())
+        return replace(shared, gutter=float(round(metrics.horizontalAdvance("−000") + 8)), right=4.0)
+
+    def moving_key(self) -> tuple[Any, ...]:
+        return (self.sight.time, self.sight.place, self.sight.selection, self.sight.quantity)
+
+    def centre(self) -> float:
+        plot = self.plot()
+        return crisp(plot.left() + CENTRE_SHARE * plot.width()) - 0.5
+
+    def pieces(self) -> Pieces:
+        return pieces_of(self.case, self.plot().width(), QFontMetricsF(self.font()).height() / 16)
+
+    # Resting layer ----------------------------------------------------------------------------------------------
+
+    def draw_resting(self, painter: QPainter) -> None:
+        plot, axis, case = self.plot(), self.distance_axis(), self.case
+        unit = self.units.unit("length")
+        self._heading(painter, unit)
+        painter.save()
+        painter.setClipRect(plot.adjusted(-1, 0, 4, 1))
+        pieces, centre = self.pieces(), self.centre()
+        words_left = centre + pieces.widest / 2 + 7
+        draw_ground(painter, ground_bands(case, axis.high), axis, plot, words_left)
+        self._draw_load(painter, plot, axis, pieces)
+        foot = axis.at(case.member.length)
+        draw_far_end(painter, case, centre, pieces.member[-1].half_bottom, foot, plot.bottom() - foot)
+        halves = [pieces.half_width_at(a.position) for a in case.member.attachments]
+        draw_attachments(painter, case, axis, centre, halves)
+        painter.restore()
+        least = -sum(s.length for s in case.ram_segments)
+        factor = float(self.units.number(1.0, "length"))
+        distance_ticks(painter, in_units(axis, factor), plot.left(), True, least * factor)
+
+    def _heading(self, painter: QPainter, unit: str) -> None:
+        y = 0.5 * self.margins().header
+        painter.setFont(font("strong"))
+        box = put(painter, 8, y, "Member", palette().ink)
+        painter.setFont(self.font())
+        put(painter, box.right() + 6, y, unit, palette().soft_ink)
+
+    def _draw_load(self, painter: QPainter, plot: QRectF, axis: Axis, pieces: Pieces) -> None:
+        case, struck = self.case, axis.at(0.0)
+        if isinstance(case.load, Drop):
+            draw_drop(painter, case, self.units, self._blocks(pieces), self.width(), struck)
+        elif isinstance(case.load, Pulse | History):
+            draw_pulse(painter, case, self.units, self.centre(), struck, plot.top(), plot.right())
+
+    def _blocks(self, pieces: Pieces) -> list[Any]:
+        axis, load = self.distance_axis(), self.case.load
+        if not isinstance(load, Drop):
+            return []
+        top, struck = axis.at(-0.2 * self.case.member.length) + 2, axis.at(0.0)
+        return blocks_of(load, self.centre(), struck, top, pieces.widest / 2, bool(pieces.striking))
+
+    # Moving layer -----------------------------------------------------------------------------------------------
+
+    def moving_region(self) -> QRegion:
+        return QRegion(self.plot().toAlignedRect().adjusted(-2, -2, 5, 2))
+
+    def draw_moving(self, painter: QPainter) -> None:
+        plot, axis = self.plot(), self.distance_axis()
+        painter.save()
+        painter.setClipRect(plot.adjusted(0, 0, 4, 1))
+        pieces = self.pieces()
+        self._draw_body(painter, plot, axis, pieces)
+        self._draw_joints(painter, axis, pieces)
+        self._draw_gauges(painter, plot, axis, pieces)
+        self._draw_selected(painter, axis, pieces)
+        if self.sight.place is not None:
+            y = crisp(axis.at(self.sight.place))
+            painter.setPen(pen(palette().ink, 1.0, Qt.PenStyle.DotLine))
+            painter.drawLine(QLineF(plot.left(), y, plot.right() + 4, y))
+        painter.restore()
+
+    def _draw_body(self, painter: QPainter, plot: QRectF, axis: Axis, pieces: Pieces) -> None:
+        """Each piece filled with a strip of colours one pixel wide, stretched over it and cut to its outline."""
+        colours, centre, result = palette(), self.centre(), self.result
+        ratio = self.devicePixelRatioF()
+        count = max(round(plot.height() * ratio), 1)
+        strip = None
+        if result is not None and len(result.fields.edges) > 1:
+            quantity = self.sight.quantity
+            places = axis.low + (np.arange(count) + 0.5) / count * (axis.high - axis.low)
+            columns = columns_under(result.fields.edges, places)
+            values = along_member(result, quantity, self.sight.time)
+            entries = entries_of(values, scale_top(result, quantity, self.units))[columns]
+            entries[columns < 0] = 255
+            strip = image_of(table_of(quantity, colours)[entries][:, None])
+        wide = QRectF(centre - pieces.widest, plot.top(), 2 * pieces.widest, plot.height())
+        for piece in (*pieces.striking, *pieces.member):
+            path = piece.path(centre, axis)
+            painter.save()
+            painter.setClipPath(path, Qt.ClipOperation.IntersectClip)
+            if strip is None:
+                painter.fillRect(wide, QColor(colours.paper))
+            else:
+                painter.drawImage(wide, strip)
+            painter.restore()
+            painter.setPen(pen(colours.bars[2], 1.2))
+            painter.setBrush(Qt.BrushStyle.NoBrush)
+            painter.drawPath(path)
+
+    def _draw_joints(self, painter: QPainter, axis: Axis, pieces: Pieces) -> None:
+        """A joint that can open is a slot between the faces; a splice with slack has its sleeve beside the slot."""
+        colours, centre = palette(), self.centre()
+        for piece in (*pieces.striking, *pieces.member):
+            kind = piece.segment.joint_above.kind
+            if kind == "bonded":
+                continue
+            y, half = axis.at(piece.start), piece.half_top + 2
+            painter.fillRect(QRectF(centre - half, y - 1.5, 2 * half, 3), QColor(colours.paper))
+            painter.setPen(pen(colours.bars[2], 1.2))
+            painter.drawLines([QLineF(centre - half, y + d, centre + half, y + d) for d in (-1.5, 1.5)])
+            if kind == "slack_splice":
+                painter.drawLines(
+                    [QLineF(centre + s * half, y - 6, centre + s * half, y + 6) for s in (-1, 1)]
+                )
+
+    def _draw_gauges(self, painter: QPainter, plot: QRectF, axis: Axis, pieces: Pieces) -> None:
+        colours, centre = palette(), self.centre()
+        painter.setFont(self.font())
+        for index, (place, y) in enumerate(self._gauge_labels(plot, axis)):
+            hue, at = colours.gauge(index), axis.at(place)
+            edge = centre - pieces.half_width_at(place) - 1
+            pointer_right(painter, edge, at, 6, hue)
+            right = centre - pieces.widest / 2 - 14
+            name = fitted(self.case.gauges[index].name, painter.font(), right - plot.left() - 4)
+            put_on(painter, right, y, name, hue, colours.paper, RIGHT)
+            painter.setPen(pen(hue))
+            painter.drawLine(QLineF(right + 2, y, edge - 6, at))
+
+    def _gauge_labels(self, plot: QRectF, axis: Axis) -> list[tuple[float, float]]:
+        """Distance (m) of each gauge and the pixel at which its name stands."""
+        places = [g.position if g.on == "member" else -g.position for g in self.case.gauges]
+        height = QFontMetricsF(self.font()).height()
+        rows = spread([axis.at(p) for p in places], height, plot.top(), plot.bottom())
+        return list(zip(places, rows, strict=True))
+
+    def _draw_selected(self, painter: QPainter, axis: Axis, pieces: Pieces) -> None:
+        colours, chosen = palette(), self.sight.selection
+        painter.setPen(pen(colours.accent, 2.0))
+        painter.setBrush(Qt.BrushStyle.NoBrush)
+        for piece in (*pieces.striking, *pieces.member):
+            if piece.pointer == chosen:
+                painter.drawPath(piece.path(self.centre(), axis))
+        for block in self._blocks(pieces):
+            if block.pointer == chosen:
+                painter.drawRect(block.box.adjusted(-1, -1, 1, 1))
+
+    # Selecting --------------------------------------------------------------------------------------------------
+
+    def part_at(self, position: QPointF) -> str | None:
+        """Pointer of the part that lies there, relative to the case."""
+        axis, plot, pieces = self.distance_axis(), self.plot(), self.pieces()
+        place = axis.value(position.y())
+        for index, (where, row) in enumerate(self._gauge_labels(plot, axis)):
+            reach = QFontMetricsF(self.font()).height() / 2
+            near_name = position.x() < self.centre() - pieces.widest / 2 and abs(position.y() - row) < reach
+            near_mark = (
+                abs(position.x() - self.centre()) < pieces.widest and abs(position.y() - axis.at(where)) < 4
+            )
+            if near_name or near_mark:
+                return f"gauges/{index}"
+        for block in self._blocks(pieces):
+            if block.box.adjusted(-3, -1, 3, 1).contains(position):
+                return block.pointer
+        across = abs(position.x() - self.centre())
+        found: Piece | None = next(
+            (p for p in (*pieces.striking, *pieces.member) if p.start <= place <= p.end), None
+        )
+        if found and across <= pieces.half_width_at(place) + 4:
+            return found.pointer
+        if place > self.case.member.length and across < 2 * pieces.widest:
+            return "far_end"
+        if place < 0:
+            return "load"
+        bands = ground_bands(self.case, axis.high)
+        return next((b.pointer for b in bands if b.top <= place <= b.bottom), None)
+
+    def mousePressEvent(self, event: QMouseEvent) -> None:
+        part = self.part_at(event.position()) if event.button() == Qt.MouseButton.LeftButton else None
+        if part is not None:
+            self.sight.set(selection=part)
+        super().mousePressEvent(event)

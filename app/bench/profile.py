@@ -1,0 +1,289 @@
+"""The quantity along the member: at the cursor's time, over the extremes of the whole run, with the limits of each
+segment's material. The limits and the peaks are those of the findings."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+from dataclasses import replace
+from itertools import pairwise
+from typing import Any
+
+import numpy as np
+from PySide6.QtCore import QLineF, QPointF, QRectF, Qt
+from PySide6.QtGui import QColor, QFontMetricsF, QPainter, QPainterPath, QRegion
+
+from app.bench.axes import Axis, Margins, margins_of
+from app.bench.axis_drawing import distance_ticks, horizontal_ticks, in_units
+from app.bench.cursor import draw_place
+from app.bench.curves import polygon
+from app.bench.field_values import (
+    DIMENSIONS,
+    Extremes,
+    along_member,
+    area_at,
+    extremes_of,
+    limit_lines,
+    screen_sign,
+)
+from app.bench.glyphs import pen
+from app.bench.lettering import CENTRE, put, put_on
+from app.bench.picture import Picture, Table
+from app.look.fonts import font
+from app.look.palette import palette
+from app.units import rounded
+
+#: A limit this many times larger than all stresses is told in words at the edge, so that it does not flatten them.
+FAR_LIMIT = 2.5
+TITLE = "Along the member"
+
+
+class Profile(Picture):
+    has_distance = True
+
+    def __init__(self, *args: Any, **named: Any) -> None:
+        super().__init__(*args, **named)
+        self.setAccessibleName("Along the member")
+
+    def margins(self) -> Margins:
+        shared = margins_of(self.font())
+        return replace(shared, gutter=14.0, right=14.0)
+
+    def resting_key(self) -> tuple[Any, ...]:
+        return (self.sight.quantity,)
+
+    # Values in the units and sign of the screen -----------------------------------------------------------------
+
+    @property
+    def dimension(self) -> str:
+        return DIMENSIONS[self.sight.quantity]
+
+    def _largest(self) -> float:
+        """Largest magnitude of the whole run in SI, by which the unit is chosen."""
+        if self.result is None:
+            return 0.0
+        found = extremes_of(self.result, self.sight.quantity)
+        return float(max(np.max(-found.lowest, initial=0), np.max(found.highest, initial=0)))
+
+    def factor(self) -> float:
+        """From SI with tension positive to what is shown."""
+        one = float(self.units.number(1.0, self.dimension, self._largest()))
+        return one * screen_sign(self.sight.quantity, self.units)
+
+    def limits(self) -> list[tuple[str, float, float, float]]:
+        """Limits as (sign, from (m), to (m), value in SI with tension positive), of stress, or of force at its area."""
+        quantity = self.sight.quantity
+        if quantity not in ("stress", "force") or self.result is None:
+            return []
+        lines = limit_lines(self.case)
+        if quantity == "stress":
+            return [(line.sign, line.start, line.end, line.stress) for line in lines]
+        edges = self.result.fields.edges
+        pairs: list[tuple[str, float, float, float]] = []
+        for line in lines:
+            for top, bottom in pairwise(edges):
+                start, end = max(top, line.start), min(bottom, line.end)
+                if end > start:
+                    area = float(area_at(self.result, np.array([(start + end) / 2]))[0])
+                    pairs.append((line.sign, float(start), float(end), line.stress * area))
+        return pairs
+
+    def value_axis(self) -> Axis:
+        """Values to the right, in the unit shown; room for the whole run and for limits that are not far off."""
+        plot, factor = self.plot(), self.factor()
+        reach = self._largest() * abs(factor)
+        near = [abs(v * factor) for _, _, _, v in self.limits() if abs(v * factor) <= FAR_LIMIT * reach]
+        values = [v * factor for _, _, _, v in self.limits() if abs(v * factor) in near]
+        if self.result is not None:
+            found = extremes_of(self.result, self.sight.quantity)
+            for ends in (found.lowest, found.highest):
+                if len(ends):
+                    values += [float(np.min(ends)) * factor, float(np.max(ends)) * factor]
+        low, high = min([*values, 0.0]), max([*values, 0.0])
+        span = (high - low) or 1.0
+        return Axis(low - 0.08 * span, high + 0.08 * span, plot.left(), plot.width())
+
+    # Drawing ----------------------------------------------------------------------------------------------------
+
+    def draw_resting(self, painter: QPainter) -> None:
+        plot, distance, values = self.plot(), self.distance_axis(), self.value_axis()
+        self._draw_heading(painter, plot)
+        painter.save()
+        painter.setClipRect(plot)
+        if values.low < 0 < values.high:
+            painter.setPen(pen(palette().grid))
+            painter.drawLine(QLineF(values.at(0), plot.top(), values.at(0), plot.bottom()))
+        if self.result is not None:
+            self._draw_extremes(painter, plot, distance, values)
+            self._draw_limits(painter, plot, distance, values)
+        painter.restore()
+        least = -sum(s.length for s in self.case.ram_segments)
+        metres = float(self.units.number(1.0, "length"))
+        distance_ticks(painter, in_units(distance, metres), plot.left(), False, least * metres)
+        horizontal_ticks(painter, values, plot.bottom(), True)
+
+    def moving_region(self) -> QRegion:
+        return QRegion(0, 0, self.width(), int(self.plot().bottom() + 2))
+
+    def draw_moving(self, painter: QPainter) -> None:
+        plot, distance = self.plot(), self.distance_axis()
+        self._draw_moment(painter)
+        painter.save()
+        painter.setClipRect(plot)
+        draw_place(painter, plot, distance, self.sight.place)
+        if self.result is not None and len(self.result.fields.position):
+            self._draw_now(painter, distance)
+        painter.restore()
+
+    def _draw_heading(self, painter: QPainter, plot: QRectF) -> None:
+        y = 0.5 * self.margins().header
+        painter.setFont(font("strong"))
+        put(painter, 8, y, TITLE, palette().ink)
+        painter.setFont(self.font())
+
+    def _draw_moment(self, painter: QPainter) -> None:
+        """The unit and the moment behind the heading, as much of it as there is room for."""
+        x = 14 + QFontMetricsF(font("strong")).horizontalAdvance(TITLE)
+        unit = self.units.unit(self.dimension, self._largest())
+        words = f"{unit} at {self.units.show(self.sight.time, 'time')}"
+        painter.setFont(self.font())
+        if QFontMetricsF(self.font()).horizontalAdvance(words) > self.width() - x:
+            words = unit
+        put(painter, x, 0.5 * self.margins().header, words, palette().soft_ink)
+
+    def _draw_now(self, painter: QPainter, distance: Axis) -> None:
+        assert self.result is not None
+        values, factor = self.value_axis(), self.factor()
+        now = along_member(self.result, self.sight.quantity, self.sight.time) * factor
+        painter.setPen(pen(palette().ink, 1.8))
+        painter.setBrush(Qt.BrushStyle.NoBrush)
+        path = QPainterPath()
+        for start, end in self._runs():
+            x, y = self._row(now[start:end], start, end, values, distance)
+            path.addPolygon(polygon(x, y))
+        painter.drawPath(path)
+
+    def _row(
+        self, shown: np.ndarray, start: int, end: int, values: Axis, distance: Axis
+    ) -> tuple[np.ndarray, np.ndarray]:
+        """Pixels of one run of columns without a joint in it, carried on level to both of its faces."""
+        assert self.result is not None
+        fields = self.result.fields
+        places = np.concatenate(([fields.edges[start]], fields.position[start:end], [fields.edges[end]]))
+        ends = np.concatenate(([shown[0]], shown, [shown[-1]]))
+        return np.asarray(values.pixel(ends)), np.asarray(distance.pixel(places))
+
+    def _runs(self) -> Iterator[tuple[int, int]]:
+        """Ranges of columns that belong to one segment: stress jumps from one to the next."""
+        assert self.result is not None
+        case, fields = self.result.case, self.result.fields
+        joints = np.cumsum([0.0] + [s.length for s in case.member.segments])
+        above = -np.cumsum([0.0] + [s.length for s in reversed(case.ram_segments)])[::-1]
+        bounds = np.unique(np.concatenate((above, joints)))
+        cuts = np.searchsorted(fields.position, bounds)
+        for start, end in pairwise(cuts):
+            if end > start:
+                yield int(start), int(end)
+
+    def _draw_extremes(self, painter: QPainter, plot: QRectF, distance: Axis, values: Axis) -> None:
+        colours, factor, result = palette(), self.factor(), self.result
+        assert result is not None
+        found = extremes_of(result, self.sight.quantity)
+        if not len(found.position):
+            return
+        stressed = self.sight.quantity in ("stress", "force")
+        low_hue = colours.compression if stressed else colours.backward
+        high_hue = colours.tension if stressed else colours.forward
+        for ends, hue, pick in ((found.lowest, low_hue, np.argmin), (found.highest, high_hue, np.argmax)):
+            x, y = np.asarray(values.pixel(ends * factor)), np.asarray(distance.pixel(found.position))
+            painter.setPen(pen(hue, 1.2))
+            painter.setBrush(Qt.BrushStyle.NoBrush)
+            painter.drawPolyline(polygon(x, y))
+            peak = int(pick(ends))
+            painter.setPen(Qt.PenStyle.NoPen)
+            painter.setBrush(QColor(hue))
+            if abs(ends[peak]) > 0:
+                painter.drawEllipse(QPointF(x[peak], y[peak]), 3.2, 3.2)
+        self._name_extremes(painter, plot, distance, values, found)
+
+    def _name_extremes(
+        self, painter: QPainter, plot: QRectF, distance: Axis, values: Axis, found: Extremes
+    ) -> None:
+        """ "whole run" at the foot of the larger of the two curves."""
+        factor = self.factor()
+        compressive = -np.min(found.lowest) >= np.max(found.highest)
+        ends = found.lowest if compressive else found.highest
+        stressed = self.sight.quantity in ("stress", "force")
+        colours = palette()
+        hues = (colours.compression, colours.tension) if stressed else (colours.backward, colours.forward)
+        half = QFontMetricsF(painter.font()).horizontalAdvance("whole run") / 2 + 2
+        x = min(max(values.at(float(ends[-1]) * factor), plot.left() + half), plot.right() - half)
+        line = QFontMetricsF(painter.font()).height()
+        y = min(float(distance.at(float(found.position[-1]))) + 0.7 * line, plot.bottom() - 0.6 * line)
+        put_on(painter, x, y, "whole run", hues[0 if compressive else 1], colours.paper, CENTRE)
+
+    def _draw_limits(self, painter: QPainter, plot: QRectF, distance: Axis, values: Axis) -> None:
+        """Stepped lines where the limits lie inside the picture; an arrow and the number where they lie beyond it."""
+        factor = self.factor()
+        before: dict[str, float] = {}
+        named: dict[tuple[str, float], tuple[float, str, float, bool]] = {}
+        for sign, start, end, value in self.limits():
+            x, top, bottom = values.at(value * factor), distance.at(start), distance.at(end)
+            inside = values.low <= value * factor <= values.high
+            painter.setPen(pen(palette().ink, 1.0, Qt.PenStyle.DashLine))
+            if inside:
+                painter.drawLine(QLineF(x, top, x, bottom))
+                if sign in before:
+                    painter.drawLine(QLineF(before[sign], top, x, top))
+                before[sign] = x
+            # along a taper the limit of a force changes at every column: its first value is named
+            key = (sign, 0.0 if self.sight.quantity == "force" else value)
+            text = f"limit {rounded(abs(value * factor))}"
+            named.setdefault(key, (x if inside else np.nan, text, top, value * factor > 0))
+        self._name_limits(painter, plot, list(named.values()))
+
+    def _name_limits(
+        self, painter: QPainter, plot: QRectF, labels: list[tuple[float, str, float, bool]]
+    ) -> None:
+        """Beside its line, inwards first, in the first row where it covers no other."""
+        metrics = QFontMetricsF(painter.font())
+        taken: list[QRectF] = []
+        for x, text, top, rightwards in labels:
+            if np.isnan(x):
+                text = f"{text} →" if rightwards else f"← {text}"
+                sides = [(plot.right() - 2, True)] if rightwards else [(plot.left() + 8, False)]
+            else:
+                sides = [(x - 4, True), (x + 4, False)] if rightwards else [(x + 4, False), (x - 4, True)]
+            width, line = metrics.horizontalAdvance(text), metrics.height()
+            for row, (at, leftwards) in ((r, s) for r in range(6) for s in sides):
+                y = max(top, plot.top()) + (0.75 + row) * line
+                box = QRectF(at - width if leftwards else at, y - line / 2, width, line)
+                if plot.contains(box) and not any(box.intersects(other) for other in taken):
+                    taken.append(box)
+                    put_on(painter, box.left(), y, text, palette().ink, palette().paper)
+                    break
+
+    def table(self) -> Table | None:
+        """Distance, the extremes of the whole run, and the quantity now, in the units and sign of the screen."""
+        if self.result is None:
+            return None
+        units, factor, quantity = self.units, self.factor(), self.sight.quantity
+        found = extremes_of(self.result, quantity)
+        fields = self.result.fields
+        now = along_member(self.result, quantity, self.sight.time) * factor
+        unit, metres = units.unit(self.dimension, self._largest()), units.unit("length")
+        return Table(
+            [
+                f"distance {metres}",
+                f"lowest {quantity} {unit} (towards compression, or the struck end)",
+                f"highest {quantity} {unit} (towards tension, or the far end)",
+                f"distance of the values now {metres}",
+                f"{quantity} {unit} at {units.show(self.sight.time, 'time')}",
+            ],
+            [
+                np.asarray(units.number(found.position, "length")),
+                found.lowest * factor,
+                found.highest * factor,
+                np.asarray(units.number(fields.position, "length")),
+                now,
+            ],
+        )
