@@ -162,8 +162,8 @@ class March:
         force = np.zeros_like(motion.force)
         note = (np.zeros((1, 3), dtype=np.int64), np.zeros(1, dtype=np.int64))
         link_forces(self.state.rod, motion.u, motion.v, force, self.chain.dt, self.flags.copy() + 1, note, 0)
-        before = motion._replace(w=-motion.v, force=force)
-        balance(row, self.state.rod, self.state.shaft, self.state.bounds, before, self.sums, self.chain.dt)
+        s, dt = self.state, self.chain.dt
+        balance(row, s.rod, s.shaft, s.bounds, motion.rest, motion.u, -motion.v, force, self.sums, dt)
         return row
 
     def run(self, progress: Callable[[Progress], None] | None, cancel: Callable[[], bool] | None) -> bool:

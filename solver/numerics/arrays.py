@@ -37,11 +37,7 @@ class Shaft(NamedTuple):
 
     first: int
     r: Array
-    strength: Array
-    stiff: Array
-    flexible: Array
-    smith: Array
-    viscous: Array
+    par: Array
     power_nodes: Ints
     power: Array
     radiation_nodes: Ints

@@ -143,9 +143,9 @@ def extremes_of(chain: Chain) -> Extremes:
     """Envelopes before the first step."""
     links, nodes = chain.nodes - 1, chain.nodes
     return Extremes(
-        np.full(links, np.inf),
+        np.full(links, 1e300),
         np.zeros(links),
-        np.full(links, -np.inf),
+        np.full(links, -1e300),
         np.zeros(links),
         np.full(nodes, -np.inf),
         np.full(nodes, -np.inf),

@@ -30,17 +30,16 @@ WORK, DASHPOTS, SLIP, DAMPING, IMPACT = 0, 1, 2, 3, 4
 
 
 @kernel
-def balance(row, rod, ground, bounds, motion, sums, dt):
-    """One row of the ledger, on the half step ahead of the displacements `motion.u` (columns: `LEDGER`).
+def balance(row, rod, ground, bounds, rest, u, w, force, sums, dt):
+    """One row of the ledger, on the half step ahead of the displacements `u` (columns: `LEDGER`).
 
     Stored energies and losses come from states. Elastic energy of the half step: that of now plus force x half of the
     coming elongation, which for a linear link is u(n) K u(n+1) / 2.
     """
-    u, w, force = motion.u, motion.w, motion.force
     kinetic, gravity = 0.0, 0.0
     for i in range(len(u)):
         kinetic += rod.mass[i] * w[i] * w[i]
-        gravity += rod.weight[i] * (u[i] + 0.5 * dt * w[i] - motion.rest[i])
+        gravity += rod.weight[i] * (u[i] + 0.5 * dt * w[i] - rest[i])
     for i in range(len(rod.inertia)):
         turn = w[i + 1] - w[i]
         kinetic += rod.inertia[i] * turn * turn
@@ -49,7 +48,7 @@ def balance(row, rod, ground, bounds, motion, sums, dt):
         stored += 0.5 * force[i] * dt * (w[i + 1] - w[i])
     soil = 0.0
     for j in range(len(ground.r)):
-        soil += 0.5 * ground.r[j] * ground.r[j] * ground.flexible[j]
+        soil += 0.5 * ground.r[j] * ground.r[j] * ground.par[2, j]
     for j in range(len(ground.power_nodes)):
         soil += 0.5 * ground.power[0, j] * ground.power[0, j] * ground.power[3, j]
     for j in range(len(ground.radiation_nodes)):

@@ -49,8 +49,8 @@ def _soil_of(chain: Chain, state: State) -> _Soil:
     stiff, strength, gap = np.zeros(n), np.zeros(n), np.zeros(n)
     s = state.shaft
     at = slice(s.first, s.first + len(s.r))
-    stiff[at] += s.stiff
-    strength[at] += s.strength
+    stiff[at] += s.par[1]
+    strength[at] += s.par[0]
     stiff[s.power_nodes] += s.power[2]
     strength[s.power_nodes] += s.power[1]
     stiff[s.radiation_nodes] += s.radiation[2]
@@ -86,7 +86,7 @@ def bring_to_rest(chain: Chain, state: State) -> None:
     # a free fall has half a step to go before its first half-step velocity
     motion.v[: chain.head][motion.v[: chain.head] != 0] -= chain.gravity * chain.dt / 2
     s, r = state.shaft, soil.force_and_slope(u)[0]
-    s.r[:] = np.clip(s.stiff * u[s.first : s.first + len(s.r)], -s.strength, s.strength)
+    s.r[:] = np.clip(s.par[1] * u[s.first : s.first + len(s.r)], -s.par[0], s.par[0])
     s.power[0] = np.clip(s.power[2] * u[s.power_nodes], -s.power[1], s.power[1])
     q = s.radiation
     q[0] = np.clip(u[s.radiation_nodes], -q[1] / q[2], q[1] / q[2])
@@ -101,7 +101,7 @@ def _step_back_half(chain: Chain, state: State) -> None:
         a = int(state.bounds.train_links[0])
         state.bounds.train_state[0, 0] -= back[a] - back[a + 1]
     s = state.shaft
-    s.r[:] = np.clip(s.r - s.stiff * back[s.first : s.first + len(s.r)], -s.strength, s.strength)
+    s.r[:] = np.clip(s.r - s.par[1] * back[s.first : s.first + len(s.r)], -s.par[0], s.par[0])
     s.power[0] = np.clip(s.power[0] - s.power[2] * back[s.power_nodes], -s.power[1], s.power[1])
     s.radiation[0] -= back[s.radiation_nodes]
 

@@ -75,11 +75,15 @@ def shaft_of(chain: Chain) -> Shaft:
     return Shaft(
         first=first,
         r=np.zeros(stop - first),
-        strength=rows[0].copy(),
-        stiff=rows[1].copy(),
-        flexible=_inverse(rows[1]),
-        smith=np.divide(smith[2], smith[0], out=np.zeros_like(smith[0]), where=smith[0] > 0),
-        viscous=tables["viscous"][2, first:stop].copy(),
+        par=np.array(
+            [
+                rows[0],
+                rows[1],
+                _inverse(rows[1]),
+                np.divide(smith[2], smith[0], out=np.zeros_like(smith[0]), where=smith[0] > 0),
+                tables["viscous"][2, first:stop],
+            ]
+        ),
         power_nodes=np.flatnonzero(tables["power"][0]),
         power=_power_rows(tables["power"]),
         radiation_nodes=np.flatnonzero(tables["radiation"][0]),

@@ -26,13 +26,15 @@ from solver.numerics.records import (
 
 
 @kernel
-def new_velocities(rod, gain, v, w, force):
+def new_velocities(push, weight, gain, v, w, force):
     """w = gain v + (dt/m)(forces): all nodes at once."""
     last = len(v) - 1
-    push, weight = rod.push, rod.weight
     w[0] = gain * v[0] + push[0] * (force[0] + weight[0])
-    for i in range(1, last):
-        w[i] = gain * v[i] + push[i] * (force[i] - force[i - 1] + weight[i])
+    # slices, as in the laws: no index can wrap around
+    out, old, p, g = w[1:last], v[1:last], push[1:last], weight[1:last]
+    above, below = force[: last - 1], force[1:last]
+    for i in range(len(out)):
+        out[i] = gain * old[i] + p[i] * (below[i] - above[i] + g[i])
     w[last] = gain * v[last] + push[last] * (weight[last] - force[last - 1])
 
 
@@ -112,19 +114,7 @@ def wall(bounds, push, u, v, w, sums, dt, note, step):
 def shaft_nodes(ground, push, v, w, sums, dt):
     """Resistance along the shaft, by each law present."""
     if len(ground.r):
-        slip, damped = shaft.plain(
-            ground.first,
-            v,
-            w,
-            push,
-            ground.r,
-            ground.strength,
-            ground.stiff,
-            ground.flexible,
-            ground.smith,
-            ground.viscous,
-            dt,
-        )
+        slip, damped = shaft.plain(ground.first, v, w, push, ground.r, ground.par, dt)
         sums[SLIP] += slip
         sums[DAMPING] += damped
     if len(ground.power_nodes):
@@ -189,41 +179,51 @@ def march(rod, ground, bounds, motion, ext, rec, sums, load, first, count, strid
     u, v, w, force, rest = motion.u, motion.v, motion.w, motion.force, motion.rest
     note = (rec.events, rec.event_count)
     gain = (1.0 - 0.5 * drag * dt) / (1.0 + 0.5 * drag * dt)
+    push, weight, driven = rod.push, rod.weight, rod.driven[1] != 0
     head, last = rod.driven[0], len(u) - 1
+    # what a case does not have must cost nothing at every step
+    inert, special, gauges = len(rod.inertia) > 0, len(rod.special) > 0, len(rec.node) > 0
+    shafts = len(ground.r) + len(ground.power_nodes) + len(ground.radiation_nodes) > 0
+    toes, jointed, walled = len(bounds.toe_par) > 0, len(bounds.joints) > 0, bounds.wall[0] < np.inf
+    rams, train_heard = len(bounds.train_links) > 0, len(rec.ram) > 0
     for n in range(count):
         step = first + n
         link_forces(rod, u, v, force, dt, rec.flags, note, step)
-        if len(rod.inertia):
-            inertia_velocities(rod, v, w, force, 0.0 if rod.driven[1] else load[n], u)
+        if inert:
+            inertia_velocities(rod, v, w, force, 0.0 if driven else load[n], u)
         else:
-            new_velocities(rod, gain, v, w, force)
-            if not rod.driven[1]:
-                w[head] += rod.push[head] * load[n]
-        special_nodes(rod, u, v, w, drag, gain, sums, dt)
-        shaft_nodes(ground, rod.push, v, w, sums, dt)
-        if len(bounds.toe_par):
-            toe_node(bounds, rod.push, u, v, w, sums, dt, note, step)
-        if rod.driven[1]:
+            new_velocities(push, weight, gain, v, w, force)
+            if not driven:
+                w[head] += push[head] * load[n]
+        if special:
+            special_nodes(rod, u, v, w, drag, gain, sums, dt)
+        if shafts:
+            shaft_nodes(ground, push, v, w, sums, dt)
+        if toes:
+            toe_node(bounds, push, u, v, w, sums, dt, note, step)
+        if driven:
             w[head] = load[n]
         if rod.fixed_end:
             w[last] = 0.0
-        if len(bounds.joints):
-            joints(bounds, rod.push, u, v, w, sums, dt, note, step)
-        if bounds.wall[0] < np.inf:
-            wall(bounds, rod.push, u, v, w, sums, dt, note, step)
-        if len(bounds.train_links):
-            train_step(bounds, rod.push, u, v, w, sums, dt, note, step)
-        if rod.driven[1]:
-            reaction = rod.mass[head] * (w[head] - v[head]) / dt - force[head] - rod.weight[head]
-            sums[WORK] += reaction * 0.5 * (v[head] + w[head]) * dt
-        else:
-            sums[WORK] += load[n] * 0.5 * (v[head] + w[head]) * dt
-        read_gauges(rec, rod, u, v, w, force, rest, dt, n)
-        if len(rec.ram):
+        if jointed:
+            joints(bounds, push, u, v, w, sums, dt, note, step)
+        if walled:
+            wall(bounds, push, u, v, w, sums, dt, note, step)
+        if rams:
+            train_step(bounds, push, u, v, w, sums, dt, note, step)
+        pull = load[n]
+        if driven:
+            pull = rod.mass[head] * (w[head] - v[head]) / dt - force[head] - weight[head]
+        sums[WORK] += pull * 0.5 * (v[head] + w[head]) * dt
+        if gauges:
+            read_gauges(rec, u, v, w, force, rest, dt, n)
+        if train_heard:
             rec.ram[0, n] = bounds.train_force[0]
             rec.ram[1, n] = 0.5 * (v[bounds.train_links[0]] + w[bounds.train_links[0]])
             rec.ram[2, n] = 0.5 * (v[head] + w[head])
         if step % stride == 0:
             take_frame(rec, u, v, w, force, rest, n // stride)
-            balance(rec.ledger[n // stride], rod, ground, bounds, motion, sums, dt)
+            balance(rec.ledger[n // stride], rod, ground, bounds, motion.rest, u, w, force, sums, dt)
         envelopes(ext, force, v, w, u, dt, step)
+        v, w = w, v
+    motion.v[:] = v

@@ -27,26 +27,34 @@ def remember(note, kind, place, step):
 
 @kernel
 def envelopes(ext, force, v, w, u, dt, step):
-    """Extremes of force per link; of velocity and displacement per node, both then move on to the next step."""
+    """Extremes of force per link; of velocity and displacement per node, the displacements then move on to the next step.
+
+    One short loop per extreme: each touches few enough arrays for vector instructions. Later rounding does not count as a
+    new extreme, so that the first of equal peaks is the one that is told.
+    """
     at = float(step)
+    low, low_step = ext.low, ext.low_step
     for i in range(len(force)):
-        f = force[i]
-        # later rounding does not count as a new extreme: the first of equal peaks is the one that is told
-        if f < ext.low[i] - 1e-10 * abs(f):
-            ext.low[i] = f
-            ext.low_step[i] = at
-        if f > ext.high[i] + 1e-10 * abs(f):
-            ext.high[i] = f
-            ext.high_step[i] = at
+        lower = force[i] < low[i] - 1e-10 * abs(low[i])
+        low_step[i] = at if lower else low_step[i]
+        low[i] = force[i] if lower else low[i]
+    high, high_step = ext.high, ext.high_step
+    for i in range(len(force)):
+        higher = force[i] > high[i] + 1e-10 * abs(high[i])
+        high_step[i] = at if higher else high_step[i]
+        high[i] = force[i] if higher else high[i]
+    speed = ext.speed
     for i in range(len(u)):
-        ext.speed[i] = max(ext.speed[i], 0.5 * (v[i] + w[i]))
-        ext.travel[i] = max(ext.travel[i], u[i])
+        mean = 0.5 * (v[i] + w[i])
+        speed[i] = mean if mean > speed[i] else speed[i]
+    travel = ext.travel
+    for i in range(len(u)):
+        travel[i] = u[i] if u[i] > travel[i] else travel[i]
         u[i] += dt * w[i]
-        v[i] = w[i]
 
 
 @kernel
-def read_gauges(rec, rod, u, v, w, force, rest, dt, column):
+def read_gauges(rec, u, v, w, force, rest, dt, column):
     """Each gauge: two readings blended by their share."""
     for g in range(len(rec.node)):
         f, speed, moved, acc, strain = 0.0, 0.0, 0.0, 0.0, 0.0

@@ -56,7 +56,7 @@ def settle(chain: Chain, state: State) -> bool:
 def _slowest(chain: Chain, state: State) -> float:
     """Lowest angular frequency (1/s): of the member on its ground as a rigid body, or of its own stretching."""
     s = state.shaft
-    stiff = s.stiff.sum() + s.power[2].sum() + s.radiation[2].sum() + chain.spring.sum()
+    stiff = s.par[1].sum() + s.power[2].sum() + s.radiation[2].sum() + chain.spring.sum()
     if len(state.bounds.toe_par):
         stiff += state.bounds.toe_par[2]
     member = chain.axial[chain.head :] > 0
@@ -73,9 +73,9 @@ def _static_ground(state: State, chain: Chain):
     power, radiation = s.power.copy(), s.radiation.copy()
     power[4] = 0.0
     radiation[3] = 0.0
-    shaft = s._replace(
-        smith=np.zeros_like(s.smith), viscous=np.zeros_like(s.viscous), power=power, radiation=radiation
-    )
+    plain = s.par.copy()
+    plain[3:] = 0.0
+    shaft = s._replace(par=plain, power=power, radiation=radiation)
     b = state.bounds
     toe = b.toe_par.copy()
     if len(toe):

@@ -9,28 +9,33 @@ from solver.numerics.compiled import kernel
 
 
 @kernel
-def plain(first, v, w, push, r, strength, stiff, flexible, smith, viscous, dt):
-    """Smith's and the linear viscous law. All shaft arrays have shape (nodes of the shaft,), from node `first` on.
+def plain(first, v, w, push, r, par, dt):
+    """Smith's and the linear viscous law on the nodes from `first` on.
 
-    `r` static resistance at the last half step (N, changed in place), `smith` = J, `viscous` = J Ru (N·s/m).
+    `r` is the static resistance at the last half step (N, shape (n,), changed in place); rows of `par`, shape (5, n):
+    strength (N), stiffness (N/m), its inverse (0 where there is none), J of Smith's law (s/m), J Ru of the viscous (N·s/m).
     Static: E. A. L. Smith 1960; damping J |R| v, so that it takes energy both ways (sources from memory).
     Returns the energies lost by slip and by damping in this step, J.
     """
+    n = len(r)
+    # slices and one table of parameters: few enough arrays, and no index can wrap, so the loop runs in vector instructions
+    old_v, new_v, p = v[first : first + n], w[first : first + n], push[first : first + n]
+    strength, stiff, flexible, smith, viscous = par[0], par[1], par[2], par[3], par[4]
     slip_loss = 0.0
     damping_loss = 0.0
-    for j in range(len(r)):
-        i = first + j
-        half = 0.5 * push[i]
+    for j in range(n):
+        half = 0.5 * p[j]
         old = r[j]
         top = strength[j]
         k = stiff[j] * dt
-        free = 0.5 * (v[i] + w[i])
-        now = min(max(old + 0.5 * k * v[i], -top), top)
+        free = 0.5 * (old_v[j] + new_v[j])
+        now = old + 0.5 * k * old_v[j]
+        now = top if now > top else (-top if now < -top else now)
         c = smith[j] * abs(now) + viscous[j]
-        trial = old + k * (free - half * old) / (1.0 + half * (0.5 * k + c))
-        new = min(max(trial, -top), top)
+        new = old + k * (free - half * old) / (1.0 + half * (0.5 * k + c))
+        new = top if new > top else (-top if new < -top else new)
         mean = (free - half * 0.5 * (old + new)) / (1.0 + half * c)
-        w[i] = 2.0 * mean - v[i]
+        new_v[j] = 2.0 * mean - old_v[j]
         r[j] = new
         slip_loss += top * abs(dt * mean - (new - old) * flexible[j])
         damping_loss += c * mean * mean
