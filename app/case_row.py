@@ -19,6 +19,7 @@ from PySide6.QtWidgets import (
 from app.document import Document
 from app.look import icon
 from app.look.spacing import GAP, ROW
+from app.provenance import rearrange
 from app.tree import copied
 
 Tree = dict[str, Any]
@@ -113,25 +114,30 @@ def add_case(document: Document) -> bool:
 
     def change(tree: Tree) -> None:
         tree["cases"].insert(at, copied(tree["cases"][at - 1]) | {"name": name})
+        rearrange(tree, "/cases", [*range(at), at - 1, *range(at, len(names))])
 
     return _done(document, document.edit_tree(f"Add case {name}", change), at)
 
 
 def remove_case(document: Document) -> bool:
     """Remove the case looked at, unless it is the only one."""
-    index = document.case_index
-    done = document.edit_tree(f"Remove case {document.case.name}", lambda tree: tree["cases"].pop(index))
+    index, order = document.case_index, list(range(len(document.project.cases)))
+    order.pop(index)
+    done = document.edit_tree(f"Remove case {document.case.name}", lambda tree: _arrange(tree, order))
     return _done(document, done, max(0, index - 1))
 
 
 def move_case(document: Document, by: int) -> bool:
     """Move the case looked at among the others."""
-    index = document.case_index
+    index, order = document.case_index, list(range(len(document.project.cases)))
+    order.insert(index + by, order.pop(index))
+    done = document.edit_tree(f"Move case {document.case.name}", lambda tree: _arrange(tree, order))
+    return _done(document, done, index + by)
 
-    def change(tree: Tree) -> None:
-        tree["cases"].insert(index + by, tree["cases"].pop(index))
 
-    return _done(document, document.edit_tree(f"Move case {document.case.name}", change), index + by)
+def _arrange(tree: Tree, order: list[int]) -> None:
+    tree["cases"] = [tree["cases"][i] for i in order]
+    rearrange(tree, "/cases", order)
 
 
 def rename_case(document: Document, name: str) -> bool:

@@ -10,6 +10,7 @@ from math import isfinite
 from pathlib import Path
 
 from app import __version__
+from app.closing_signals import ClosingSignals
 
 SOLVED, FAILED, UNUSABLE, NO_WINDOW = 0, 1, 2, 3
 
@@ -92,8 +93,11 @@ def _length(text: str) -> float:
 
 
 def _window(arguments: argparse.Namespace) -> int:
+    signals = (
+        ClosingSignals()
+    )  # before Qt, whose import takes longer than a person may take to change her mind
     try:
-        from app.main_loop import run_window
+        from PySide6 import QtGui, QtSvg, QtWidgets  # noqa: F401  (a system library that is missing shows here)
     except ImportError as error:
         from app.qt_needs import explain_qt_failure
 
@@ -101,7 +105,11 @@ def _window(arguments: argparse.Namespace) -> int:
     from app.qt_needs import explain_no_display
 
     reason = explain_no_display()
-    return _say(reason, NO_WINDOW) if reason else run_window(arguments.file)
+    if reason:
+        return _say(reason, NO_WINDOW)
+    from app.main_loop import run_window
+
+    return run_window(arguments.file, signals)
 
 
 def _check(arguments: argparse.Namespace) -> int:

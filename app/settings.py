@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import json
 import os
 from collections.abc import Sequence
 from pathlib import Path
@@ -68,6 +69,17 @@ class Settings:
 
     def set_layout(self, name: str, state: QByteArray) -> None:
         self._stored.setValue(f"layout/{name}", state)
+
+    def shares(self, name: str) -> list[list[float]] | None:
+        """How a grid was divided, `None` where nothing (or nonsense) is remembered."""
+        try:
+            stored = json.loads(str(self._stored.value(f"layout/{name}", "null")))
+            return [[float(share) for share in row] for row in stored]
+        except (ValueError, TypeError):
+            return None
+
+    def set_shares(self, name: str, shares: Sequence[Sequence[float]]) -> None:
+        self._stored.setValue(f"layout/{name}", json.dumps([list(row) for row in shares]))
 
     def save(self) -> None:
         """Write to disk now. A folder that cannot be written costs the settings, nothing else."""

@@ -9,7 +9,7 @@ from pathlib import Path
 from typing import Any
 
 from app.export import folder_names, write_case
-from app.units import Units
+from app.units import NO_BREAK, Units
 from app.words import verdict
 from solver import Case, Project, ProjectError, Result, load_project
 from solver.answer.findings import findings_of
@@ -103,7 +103,7 @@ def _told(result: Result, folder: Path) -> str:
     ]
     for line in verdict(findings_of(result), Units()):
         lines.append(f"  {line.name} {line.figure}: {line.detail.replace(chr(10), '; ')}")
-    return "\n".join(lines)
+    return "\n".join(lines).replace(NO_BREAK, " ")
 
 
 def _older(folder: Path) -> str:

@@ -66,7 +66,7 @@ SYSTEMS = {"metric": METRIC, "us": US}
 USUAL_RANGE = (0.1, 1e5)
 #: Below this share of the usual unit a computed number is noise, and `show` says 0.
 NOISE = 1e-9
-MINUS, NARROW_SPACE = "\u2212", "\u202f"
+MINUS, NARROW_SPACE, NO_BREAK = "\u2212", "\u202f", "\u00a0"
 
 
 @dataclass(frozen=True)
@@ -123,7 +123,10 @@ class Units:
         return written
 
     def show(self, value_si: float, dimension: str, digits: int = 3) -> str:
-        """Number and unit for reading: "16.0 m", "1755 kN", "50 kg"; digits and unit follow the size."""
+        """Number and unit for reading: "16.0 m", "1755 kN", "50 kg"; digits and unit follow the size.
+
+        The space between them is one that no line breaks at (U+00A0).
+        """
         if value_si is None or not isfinite(value_si):
             return "–"
         unit = self.unit(dimension, value_si)
@@ -133,7 +136,7 @@ class Units:
         written = rounded(number, digits)
         if dimension == "none" and "." in written and "e" not in written:
             written = written.rstrip("0").rstrip(".")
-        return f"{written} {unit}" if unit else written
+        return f"{written}{NO_BREAK}{unit}" if unit else written
 
     def parse(self, text: str, dimension: str) -> float:
         """SI value of typed text, in the shown unit where it names none. Raises `UnitError` with a sentence."""

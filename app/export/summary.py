@@ -7,7 +7,7 @@ from math import isfinite
 from typing import Any
 
 from app import __version__
-from app.units import Units
+from app.units import NO_BREAK, Units
 from app.words import AXIAL_CAUTION, LIMIT_CAUTION, MODEL_CAUTION, caution
 from solver.answer.cautions import cautions_of
 from solver.answer.result import Result
@@ -64,7 +64,7 @@ def summary_json(result: Result, title: str) -> str:
 
 
 def _cautions(result: Result) -> list[str]:
-    found = [caution(one, Units()) for one in cautions_of(result.case)]
+    found = [caution(one, Units()).replace(NO_BREAK, " ") for one in cautions_of(result.case)]
     return [*found, MODEL_CAUTION, LIMIT_CAUTION, AXIAL_CAUTION]
 
 

@@ -2,7 +2,8 @@
 
 A widget says what it is by the property `role`, set before it is shown:
 labels "title", "strong", "figure", "soft", "small", "problem"; frames "paper" (a panel), "row"; buttons "chip" (one of
-several that can be switched on), "quiet" (no frame until pointed at), "main" (the one action of a choice), "link".
+several that can be switched on), "quiet" (no frame until pointed at), "main" (the one action of a choice), "link",
+"choice" (a name and a sentence); line edits "title"; frames "notice" and "popup"; widgets "clear".
 """
 
 from __future__ import annotations
@@ -16,6 +17,9 @@ QWidget {{ color: {ink}; }}
 QMainWindow, QDialog, QMessageBox {{ background: {window}; }}
 QToolTip {{ color: {ink}; background: {raised}; border: 1px solid {line}; padding: {gap}px; }}
 QFrame[role="paper"], QWidget[role="paper"] {{ background: {paper}; border-radius: {radius}px; }}
+QFrame[role="notice"] {{ background: {raised}; border: 1px solid {edge}; border-radius: {radius}px; }}
+QFrame[role="popup"] {{ background: {raised}; border: 1px solid {line}; border-radius: {radius}px; }}
+QWidget[role="clear"] {{ background: transparent; }}
 
 QLabel[role="title"] {{ font-size: {title}pt; font-weight: 600; }}
 QLabel[role="strong"] {{ font-weight: 600; }}
@@ -32,6 +36,11 @@ QPlainTextEdit, QTextEdit {{ padding: {gap}px; }}
 QLineEdit:focus, QComboBox:focus, QSpinBox:focus, QPlainTextEdit:focus, QTextEdit:focus {{
     border: 2px solid {accent}; padding: 0 {inner_focus}px; min-height: {field_focus}px; }}
 QLineEdit[invalid="true"] {{ border: 2px solid {over}; padding: 0 {inner_focus}px; min-height: {field_focus}px; }}
+QLineEdit[role="title"] {{ background: transparent; border: 1px solid transparent; font-weight: 600; }}
+QLineEdit[role="title"]:hover {{ background: {raised}; border: 1px solid {edge}; }}
+QLineEdit[role="title"]:focus {{ background: {raised}; border: 2px solid {accent}; }}
+QPlainTextEdit[role="notes"] {{ background: transparent; border: 1px solid transparent; padding: 0; }}
+QPlainTextEdit[role="notes"]:focus {{ background: {raised}; border: 2px solid {accent}; padding: 0; }}
 QLineEdit:disabled, QComboBox:disabled {{ color: {line}; background: {paper}; }}
 QComboBox::drop-down {{ border: none; width: 20px; }}
 QComboBox::down-arrow {{ image: none; width: 0; height: 0; border-left: 4px solid transparent;
@@ -58,6 +67,7 @@ QPushButton[role="quiet"]:focus, QToolButton[role="quiet"]:focus {{ border: 2px 
 QPushButton[role="link"] {{ background: transparent; border: none; color: {accent}; text-align: left;
     text-decoration: underline; padding: 2px; }}
 QPushButton[role="link"]:focus {{ border: 2px solid {accent}; padding: 0; }}
+QPushButton[role="choice"] {{ text-align: left; padding: {space}px {wide}px; min-height: 40px; }}
 QPushButton::menu-indicator, QToolButton::menu-indicator {{ image: none; width: 0; }}
 
 QCheckBox:focus, QRadioButton:focus {{ outline: 2px solid {accent}; }}

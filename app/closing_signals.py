@@ -1,0 +1,49 @@
+"""SIGINT and SIGTERM close the window like its close button. Imports no Qt until it must."""
+
+from __future__ import annotations
+
+import signal
+from collections.abc import Callable
+from types import FrameType
+from typing import Any
+
+#: Qt's loop runs no Python by itself: a timer lets Python look for signals so often, ms.
+LOOK = 200
+
+
+class ClosingSignals:
+    """Takes the two signals over from the start of the program on; before there is a window, they are remembered."""
+
+    def __init__(self) -> None:
+        self.came = False
+        self._close: Callable[[], Any] | None = None
+        self._before: dict[int, Any] = {}
+        for number in (signal.SIGINT, signal.SIGTERM):
+            self._before[number] = signal.signal(number, self._take)
+
+    def _take(self, _number: int, _frame: FrameType | None) -> None:
+        self.came = True
+        if self._close is not None:
+            self._close()
+
+    def close_with(self, close: Callable[[], Any]) -> None:
+        """Call this when a signal comes, and now if one has come already."""
+        from PySide6.QtCore import QCoreApplication, QTimer
+
+        self._close = close
+        timer = QTimer(QCoreApplication.instance())
+        timer.setInterval(LOOK)
+        timer.timeout.connect(_nothing)
+        timer.start()
+        if self.came:
+            QTimer.singleShot(0, close)
+
+    def restore(self) -> None:
+        """Give the signals back to whoever had them."""
+        self._close = None
+        for number, handler in self._before.items():
+            signal.signal(number, handler)
+
+
+def _nothing() -> None:
+    """Runs between two steps of Qt's loop, which is when Python calls its signal handlers."""

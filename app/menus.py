@@ -1,0 +1,136 @@
+"""The menus and their keys. Every action of the window is here, so that it can be reached without a mouse."""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+from typing import TYPE_CHECKING, Any
+
+from PySide6.QtGui import QAction, QActionGroup, QKeySequence
+from PySide6.QtWidgets import QMenu, QMenuBar
+
+from app.case_row import fill_case_menu
+from app.demo_files import demo_paths
+from app.top_bar import turn_sign
+
+if TYPE_CHECKING:
+    from app.window import Window
+
+Key = QKeySequence.StandardKey
+LOOKS = {"system": "As the system", "light": "Light", "dark": "Dark"}
+
+
+class Menus:
+    """Holds the actions that change with the document; `bar` is the bar with all menus."""
+
+    def __init__(self, window: Window) -> None:
+        self._window = window
+        self.bar = QMenuBar(window)
+        self.save = self._action("Save", window.save, Key.Save)
+        self.undo = window.document.undo_stack.createUndoAction(window, "Undo")
+        self.undo.setShortcut(Key.Undo)
+        self.redo = window.document.undo_stack.createRedoAction(window, "Redo")
+        self.redo.setShortcuts([QKeySequence(Key.Redo), QKeySequence("Ctrl+Y")])
+        self.records = self._action("Save gauge records…", window.ask_records, QKeySequence("Ctrl+E"))
+        self.notes = self._action("Notes", window.show_notes, QKeySequence("Ctrl+Shift+N"), checkable=True)
+        self.outline = self._action("Outline", window.show_outline, QKeySequence("F9"), checkable=True)
+        self.looks = QActionGroup(window)
+        self._file()
+        self._edit()
+        self._case()
+        self._view()
+        self._help()
+
+    @property
+    def icons(self) -> dict[str, QAction]:
+        """Actions that are shown as icons in the top bar."""
+        return {"save": self.save, "undo": self.undo, "redo": self.redo}
+
+    def _action(
+        self,
+        text: str,
+        do: Callable[..., Any],
+        key: QKeySequence | QKeySequence.StandardKey | None = None,
+        checkable: bool = False,
+    ) -> QAction:
+        action = QAction(text, self._window, checkable=checkable)
+        if key is not None:
+            action.setShortcut(key)
+        if checkable:
+            action.triggered.connect(do)
+        else:
+            action.triggered.connect(lambda _checked=False: do())
+        self._window.addAction(action)
+        return action
+
+    def _file(self) -> None:
+        window, menu = self._window, self.bar.addMenu("&File")
+        menu.addAction(self._action("New…", window.ask_new, Key.New))
+        menu.addAction(self._action("Open…", window.ask_open, Key.Open))
+        self.recent = menu.addMenu("Open recent")
+        self.recent.aboutToShow.connect(self._fill_recent)
+        demos = menu.addMenu("Open a demo")
+        for path in demo_paths():
+            demos.addAction(path.stem.replace("_", " ").capitalize(), lambda p=path: window.open_demo(p))
+        demos.setEnabled(bool(demos.actions()))
+        menu.addSeparator()
+        menu.addAction(self.save)
+        menu.addAction(self._action("Save as…", window.ask_save_as, QKeySequence("Ctrl+Shift+S")))
+        menu.addSeparator()
+        menu.addAction(self.records)
+        menu.addSeparator()
+        menu.addAction(self._action("Close", window.close, QKeySequence("Ctrl+Q")))
+
+    def _fill_recent(self) -> None:
+        self.recent.clear()
+        for path in self._window.settings.recent:
+            text = f"{path.name}  –  {path.parent}".replace("&", "&&")
+            self.recent.addAction(text, lambda p=path: self._window.open_path(p))
+        if not self.recent.actions():
+            self.recent.addAction("None yet").setEnabled(False)
+
+    def _edit(self) -> None:
+        document, menu = self._window.document, self.bar.addMenu("&Edit")
+        menu.addAction(self.undo)
+        menu.addAction(self.redo)
+        menu.addSeparator()
+        menu.addAction(self._action("Drop entries that are not valid", document.forget_rejected))
+        menu.addAction(
+            self._action("Turn the sign", lambda: turn_sign(document), QKeySequence("Ctrl+Shift+T"))
+        )
+
+    def _case(self) -> None:
+        window, document = self._window, self._window.document
+        menu = self.bar.addMenu("&Case")
+
+        def fill() -> None:
+            menu.clear()
+            fill_case_menu(menu, document, window)
+            menu.addSeparator()
+            menu.addAction(following)
+            menu.addAction(previous)
+
+        following = self._action("Next case", lambda: self._step_case(1), QKeySequence("Ctrl+PgDown"))
+        previous = self._action("Previous case", lambda: self._step_case(-1), QKeySequence("Ctrl+PgUp"))
+        menu.aboutToShow.connect(fill)
+        fill()
+
+    def _step_case(self, by: int) -> None:
+        document = self._window.document
+        document.choose_case((document.case_index + by) % len(document.project.cases))
+
+    def _view(self) -> None:
+        window, menu = self._window, self.bar.addMenu("&View")
+        menu.addAction(self.outline)
+        menu.addAction(self.notes)
+        menu.addAction(self._action("Full screen", window.turn_full_screen, QKeySequence("F11")))
+        menu.addSeparator()
+        for choice, words in LOOKS.items():
+            action = self._action(words, lambda on, c=choice: on and window.choose_look(c), checkable=True)
+            action.setData(choice)
+            self.looks.addAction(action)
+            menu.addAction(action)
+
+    def _help(self) -> None:
+        menu: QMenu = self.bar.addMenu("&Help")
+        menu.addAction(self._action("What this program computes, and what not", self._window.show_limits))
+        menu.addAction(self._action("About Striketrace", self._window.show_about))

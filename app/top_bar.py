@@ -1,0 +1,139 @@
+"""The top bar: menus, title, undo and redo, cases, state, sign, units."""
+
+from __future__ import annotations
+
+from PySide6.QtCore import Qt
+from PySide6.QtGui import QAction, QKeyEvent
+from PySide6.QtWidgets import QHBoxLayout, QLineEdit, QMenu, QPushButton, QSizePolicy, QToolButton, QWidget
+
+from app.case_row import CaseRow
+from app.document import Document
+from app.look import icon
+from app.look.spacing import GAP, ROW, SPACE
+from app.solving import Solution
+from app.state_view import StateView
+from app.units import SYSTEMS, units_of
+
+SYSTEM_WORDS = {"metric": "Metric", "us": "US"}
+
+
+class TitleField(QLineEdit):
+    """The project's title, typed in place."""
+
+    def __init__(self, document: Document, parent: QWidget | None = None) -> None:
+        super().__init__(parent)
+        self._document = document
+        self.setProperty("role", "title")
+        self.setPlaceholderText("Untitled project")
+        self.setAccessibleName("Title of the project")
+        self.setToolTip("Title of the project; click to change it")
+        self.editingFinished.connect(self._commit)
+        self.textChanged.connect(self._fit)
+        document.changed.connect(self._follow)
+        self._follow()
+        self._fit()
+
+    def keyPressEvent(self, event: QKeyEvent) -> None:
+        if event.key() == Qt.Key.Key_Escape:
+            self.setText(self._document.project.title)
+            self.clearFocus()
+        else:
+            super().keyPressEvent(event)
+
+    def _commit(self) -> None:
+        text = self.text().strip()
+        if text != self._document.project.title:
+            self._document.edit("Change the title", "/title", text)
+
+    def _follow(self) -> None:
+        if not self.isModified() or not self.hasFocus():
+            shown = " ".join(self._document.project.title.split())
+            if self.text() != shown:
+                self.setText(shown)
+                self.setCursorPosition(0)
+
+    def _fit(self) -> None:
+        text = self.text() or self.placeholderText()
+        self.setFixedWidth(min(max(self.fontMetrics().horizontalAdvance(text) + 34, 120), 320))
+
+
+class TopBar(QWidget):
+    """One row; `menus` is a widget with the menus, shown first, where the system has no bar of its own for them."""
+
+    def __init__(
+        self,
+        document: Document,
+        solution: Solution,
+        actions: list[QAction],
+        menus: QWidget | None = None,
+        parent: QWidget | None = None,
+    ) -> None:
+        super().__init__(parent)
+        self._document = document
+        self.setFixedHeight(ROW + 2 * SPACE)
+        row = QHBoxLayout(self)
+        row.setContentsMargins(SPACE, GAP, SPACE, GAP)
+        row.setSpacing(GAP)
+        if menus is not None:
+            menus.setFixedHeight(ROW)
+            menus.setSizePolicy(QSizePolicy.Policy.Maximum, QSizePolicy.Policy.Fixed)
+            row.addWidget(menus, 0, Qt.AlignmentFlag.AlignVCenter)
+        self.title = TitleField(document, self)
+        row.addWidget(self.title)
+        for action in actions:
+            button = QToolButton(self)
+            button.setProperty("role", "quiet")
+            button.setDefaultAction(action)
+            row.addWidget(button)
+        self.cases = CaseRow(document, self)
+        row.addWidget(self.cases, 1)
+        self.state = StateView(document, solution, self)
+        row.addWidget(self.state)
+        row.addSpacing(SPACE)
+        self.sign = QPushButton(self)
+        self.sign.setToolTip("What is positive in every picture, finding and report. Click to change it.")
+        self.sign.clicked.connect(self._turn_sign)
+        row.addWidget(self.sign)
+        self.units = QPushButton(self)
+        self.units.setToolTip(
+            "Units of every picture, field and report. Fields take any unit that is typed with them."
+        )
+        menu = QMenu(self.units)
+        for system in SYSTEMS:
+            menu.addAction(SYSTEM_WORDS[system], lambda s=system: choose_units(self._document, s))
+        self.units.setMenu(menu)
+        row.addWidget(self.units)
+        document.changed.connect(self._follow)
+        self._follow()
+
+    def _follow(self) -> None:
+        units = units_of(self._document.project)
+        words = SYSTEM_WORDS[units.system] + (", own choice" if units.own else "")
+        if self.sign.text() != units.sign_word:
+            self.sign.setText(units.sign_word)
+            self.sign.setAccessibleName(f"Sign: {units.sign_word.removesuffix(' +')} positive")
+        if self.units.text() != words:
+            self.units.setText(words)
+            self.units.setAccessibleName(f"Units: {words}")
+
+    def _turn_sign(self) -> None:
+        turn_sign(self._document)
+
+
+def turn_sign(document: Document) -> None:
+    """Show the other of compression and tension as positive."""
+    other = "compression" if document.project.display_sign == "tension" else "tension"
+    document.edit(f"Show {other} as positive", "/display_sign", other)
+
+
+def choose_units(document: Document, system: str) -> None:
+    """Show metric or US units; units chosen for single quantities stay."""
+    shown = document.project.display_units
+    value = system if isinstance(shown, str) else {**shown, "system": system}
+    document.edit(f"Show {SYSTEM_WORDS[system]} units", "/display_units", value)
+
+
+def refresh_icons(actions: dict[str, QAction]) -> None:
+    """Draw the icons anew, in the colour of text in the palette in force."""
+    for name, action in actions.items():
+        action.setIcon(icon(name))
