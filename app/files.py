@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Callable
 from datetime import datetime
+from functools import partial
 from pathlib import Path
 from typing import TYPE_CHECKING
 
@@ -78,8 +79,8 @@ class Files:
             saved = f" (the file was saved {_when(kept.saved)})" if kept.saved else ""
             text = f"Unsaved work on {name} from {_when(kept.kept)}{saved}. {_against_file(kept)}"
             choices: list[tuple[str, Callable[[], object]]] = [
-                ("Go on with it", lambda k=kept: self.recover(k)),
-                ("Discard it", lambda k=kept: discard(k)),
+                ("Go on with it", partial(self.recover, kept)),
+                ("Discard it", partial(discard, kept)),
             ]
             self._window.notices.show_notice(f"recovery{number}", text, "near", choices)
 

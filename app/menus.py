@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Callable
+from functools import partial
 from typing import TYPE_CHECKING, Any
 
 from PySide6.QtGui import QAction, QActionGroup, QKeySequence
@@ -10,13 +11,14 @@ from PySide6.QtWidgets import QMenu, QMenuBar
 
 from app.case_row import fill_case_menu
 from app.demo_files import demo_paths
+from app.look.theme import Choice
 from app.top_bar import turn_sign
 
 if TYPE_CHECKING:
     from app.window import Window
 
 Key = QKeySequence.StandardKey
-LOOKS = {"system": "As the system", "light": "Light", "dark": "Dark"}
+LOOKS: dict[Choice, str] = {"system": "As the system", "light": "Light", "dark": "Dark"}
 
 
 class Menus:
@@ -70,7 +72,7 @@ class Menus:
         self.recent.aboutToShow.connect(self._fill_recent)
         demos = menu.addMenu("Open a demo")
         for path in demo_paths():
-            demos.addAction(path.stem.replace("_", " ").capitalize(), lambda p=path: window.open_demo(p))
+            demos.addAction(path.stem.replace("_", " ").capitalize(), partial(window.open_demo, path))
         demos.setEnabled(bool(demos.actions()))
         menu.addSeparator()
         menu.addAction(self.save)
@@ -84,7 +86,7 @@ class Menus:
         self.recent.clear()
         for path in self._window.settings.recent:
             text = f"{path.name}  –  {path.parent}".replace("&", "&&")
-            self.recent.addAction(text, lambda p=path: self._window.open_path(p))
+            self.recent.addAction(text, partial(self._window.open_path, path))
         if not self.recent.actions():
             self.recent.addAction("None yet").setEnabled(False)
 
@@ -125,10 +127,14 @@ class Menus:
         menu.addAction(self._action("Full screen", window.turn_full_screen, QKeySequence("F11")))
         menu.addSeparator()
         for choice, words in LOOKS.items():
-            action = self._action(words, lambda on, c=choice: on and window.choose_look(c), checkable=True)
+            action = self._action(words, partial(self._choose_look, choice), checkable=True)
             action.setData(choice)
             self.looks.addAction(action)
             menu.addAction(action)
+
+    def _choose_look(self, choice: Choice, on: bool) -> None:
+        if on:
+            self._window.choose_look(choice)
 
     def _help(self) -> None:
         menu: QMenu = self.bar.addMenu("&Help")

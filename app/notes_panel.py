@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from PySide6.QtCore import QEvent, QTimer, Signal
-from PySide6.QtGui import QFocusEvent
+from PySide6.QtGui import QFocusEvent, QResizeEvent
 from PySide6.QtWidgets import QFrame, QHBoxLayout, QPlainTextEdit, QToolButton, QWidget
 
 from app.document import Document
@@ -43,8 +43,8 @@ class NotesField(QPlainTextEdit):
         self.commit()
         super().focusOutEvent(event)
 
-    def resizeEvent(self, event: QEvent) -> None:  # type: ignore[override]
-        super().resizeEvent(event)  # type: ignore[arg-type]
+    def resizeEvent(self, event: QResizeEvent) -> None:
+        super().resizeEvent(event)
         self._fit()
 
     def _typed(self) -> None:

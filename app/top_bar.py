@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from functools import partial
+
 from PySide6.QtCore import Qt
 from PySide6.QtGui import QAction, QKeyEvent
 from PySide6.QtWidgets import QHBoxLayout, QLineEdit, QMenu, QPushButton, QSizePolicy, QToolButton, QWidget
@@ -100,7 +102,7 @@ class TopBar(QWidget):
         )
         menu = QMenu(self.units)
         for system in SYSTEMS:
-            menu.addAction(SYSTEM_WORDS[system], lambda s=system: choose_units(self._document, s))
+            menu.addAction(SYSTEM_WORDS[system], partial(choose_units, document, system))
         self.units.setMenu(menu)
         row.addWidget(self.units)
         document.changed.connect(self._follow)

@@ -127,8 +127,9 @@ class Window(QMainWindow):
         self.setWindowModified(document.dirty)
         standing = standing_of(document, self.solution)
         if standing.kind in ("refused", "stopped"):
-            kind = "over" if standing.kind == "refused" else "near"
-            self.notices.show_notice("solution", standing.tells, kind)
+            self.notices.show_notice(
+                "solution", standing.tells, "over" if standing.kind == "refused" else "near"
+            )
         else:
             self.notices.drop("solution")
         result = self.solution.result
