@@ -45,10 +45,8 @@ def prepare(extra: str = "") -> None:
 
 def explain_python(major: int, minor: int, module: str) -> str:
     """One sentence on a Python that is too old or too new, with the command to use instead."""
-    from shutil import which
-
     names = [f"python3.{one}" for one in range(NEWEST[1], OLDEST[1] - 1, -1)]
-    found = [name for name in names if which(name)]
+    found = [name for name in names if runs(name)]
     best = found[0] if found else names[0]
     if found:
         mend = f"start it with `{best} -m {module}`"
@@ -59,3 +57,13 @@ def explain_python(major: int, minor: int, module: str) -> str:
     else:
         mend = f"install one, for example with `sudo apt install {best}-venv`, then run `{best} -m {module}`"
     return f"Striketrace runs on Python 3.{OLDEST[1]} to 3.{NEWEST[1]}, and this is Python {major}.{minor}: {mend}."
+
+
+def runs(name: str) -> bool:
+    """Whether a Python of this name can be started: some systems have a stand-in of the name that only refuses."""
+    import subprocess
+
+    try:
+        return subprocess.call([name, "-c", ""], stdout=subprocess.DEVNULL, stderr=subprocess.DEVNULL) == 0
+    except OSError:
+        return False

@@ -87,12 +87,15 @@ def test_another_python_is_refused_before_anything_else(
 
 def test_the_python_to_use_instead_is_the_newest_that_is_here(monkeypatch: pytest.MonkeyPatch) -> None:
     here = {"python3.11", "python3.12"}
-    monkeypatch.setattr("shutil.which", lambda name: name if name in here else None)
+    monkeypatch.setattr(first_use, "runs", lambda name: name in here)
     assert first_use.explain_python(3, 9, "app").endswith("start it with `python3.12 -m app`.")
     here.clear()
-    assert "python3.13 -m tests`" in first_use.explain_python(
-        3, 9, "tests"
-    ) or "py -3.13" in first_use.explain_python(3, 9, "tests")
+    assert "3.13 -m tests`" in first_use.explain_python(3, 9, "tests")
+
+
+def test_a_python_that_only_refuses_does_not_count_as_here(tmp_path: Path) -> None:
+    assert first_use.runs(sys.executable)
+    assert not first_use.runs(str(tmp_path / "python3.13"))
 
 
 @pytest.mark.parametrize(
