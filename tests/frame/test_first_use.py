@@ -76,6 +76,7 @@ def test_another_python_is_refused_before_anything_else(
     version: tuple[int, int],
 ) -> None:
     monkeypatch.setattr(sys, "version_info", (*version, 0, "final", 0))
+    monkeypatch.setattr(first_use, "runs", lambda name: False)
     with pytest.raises(SystemExit) as ended:
         first_use.prepare()
     assert ended.value.code == 3
