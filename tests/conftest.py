@@ -1,9 +1,15 @@
-"""What all tests share: how hard hypothesis searches. Imports no Qt, so that the solver's tests run without it.
+"""What all tests share. Imports no Qt, so that the solver's tests run where it is not installed.
 
-`python3 -m tests` uses the profile `ci`: the same examples at every run, few enough for the suite to stay quick.
+`python3 -m tests` uses the profile `ci` of hypothesis: the same examples at every run, few enough to stay quick.
 `python3 -m tests --hypothesis-profile nightly` searches anew each time, and much further.
 """
 
+import os
+import tempfile
+from collections.abc import Iterator
+from pathlib import Path
+
+import pytest
 from hypothesis import HealthCheck, settings
 
 # No deadline: the first example of a test may compile kernels, and two cores are shared by whatever else runs.
@@ -12,3 +18,16 @@ settings.register_profile(
 )
 settings.register_profile("nightly", max_examples=1000, deadline=None, print_blob=True)
 settings.load_profile("ci")
+
+# Compiled kernels stay in the checkout and are there at the next run. Set before `solver` is first imported.
+os.environ.setdefault(
+    "STRIKETRACE_CACHE", str(Path(__file__).resolve().parent.parent / ".pytest_cache" / "kernels")
+)
+
+
+@pytest.fixture(scope="session", autouse=True)
+def _settings_of_nobody() -> Iterator[None]:
+    """No test reads or writes the settings of the person who runs it."""
+    with tempfile.TemporaryDirectory() as folder, pytest.MonkeyPatch.context() as patch:
+        patch.setenv("STRIKETRACE_SETTINGS", folder)
+        yield
