@@ -44,6 +44,13 @@ def forget_missing(tree: Tree) -> None:
         _keep(tree, {p: mark for p, mark in marks.items() if value_at(tree, p) is not None})
 
 
+def forget_changed(before: Tree, after: Tree) -> None:
+    """Drop the marks of values that an edit by hand has changed; both trees have their parts at the same places."""
+    marks = after.get("provenance")
+    if marks:
+        _keep(after, {p: mark for p, mark in marks.items() if value_at(before, p) == value_at(after, p)})
+
+
 def rearrange(tree: Tree, pointer: str, came_from: Sequence[int | None]) -> None:
     """Let the marks follow a list whose entry `i` now is what was `came_from[i]` (`None` = new)."""
     marks = tree.get("provenance")

@@ -78,7 +78,7 @@ def _cushion(cushion: Cushion | None, units: Units) -> Lines:
         return []
     loading = units.show(cushion.loading_stiffness, "stiffness")
     unloading = units.show(cushion.unloading_stiffness, "stiffness")
-    back = f"{derived.energy_returned(cushion):.0%}"
+    back = f"{100 * derived.energy_returned(cushion):.0f} %"
     return [f"Stiffness {loading}, {unloading} on unloading", f"Gives back {back} of the energy put into it"]
 
 

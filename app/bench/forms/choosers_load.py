@@ -103,7 +103,9 @@ def _change_blows(run: Tree, key: str, context: Context) -> None:
     run["blows"] = {"one": 1, "number": 5, "repeat": {"most": 20, "tolerance": 1e-4}}[key]
 
 
-CUSHION_WAYS = options(("none", "no cushion"), ("stiffness", "stiffness"), ("size", "modulus and size"))
+CUSHION_WAYS = options(
+    ("none", "no cushion"), ("stiffness", "stiffness"), ("size", "dimensions", "Area, thickness and modulus.")
+)
 FORCE_OR_VELOCITY = options(("force", "force"), ("velocity", "velocity"))
 
 OF_LOAD: Choosers = {

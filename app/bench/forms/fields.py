@@ -129,7 +129,7 @@ def _chooser(model: type[BaseModel], name: str) -> Chooser | None:
 def _choice_spec(context: Context, chooser: Chooser, pointer: str, name: str) -> ChoiceSpec:
     parent = value_at(context.tree, pointer)
     return ChoiceSpec(
-        f"{pointer}/{name}",
+        f"{pointer}/{name}#kind",
         chooser.label,
         chooser.tells,
         value=chooser.key_of(parent),

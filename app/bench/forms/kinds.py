@@ -201,7 +201,7 @@ CHOICE_WORDS: dict[tuple[type[BaseModel], str], dict[str, str]] = {
         "trapezoid": "trapezoid",
         "decay": "sudden, then decays",
     },
-    (Gauge, "side"): {"near": "towards the struck end", "far": "towards the far end"},
+    (Gauge, "side"): {"near": "of the struck end", "far": "of the far end"},
 }
 
 

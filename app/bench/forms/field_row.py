@@ -1,0 +1,118 @@
+"""One row of a form: label, editor, unit, and under them what is wrong or where the value came from."""
+
+from __future__ import annotations
+
+import re
+from typing import Any
+
+from PySide6.QtCore import Qt
+from PySide6.QtWidgets import QGridLayout, QLabel, QSizePolicy, QWidget
+
+from app.bench.forms.commit import confirm_mark
+from app.bench.forms.spec import Spec
+from app.document import Document
+from app.look.spacing import FIELD, GAP
+from app.units import Units
+
+#: Texts that the columns of labels and of units have room for; longer labels wrap.
+LABEL_ROOM, UNIT_ROOM = "Outer diameter", "kN·s/m"
+
+
+class FieldRow(QWidget):
+    """Holds the label and the notes; subclasses put their editor in and say what it shows.
+
+    `show_spec` is called after each change of the project: a row keeps no value of its own, it compares what it
+    shows with what it is given.
+    """
+
+    def __init__(self, document: Document, spec: Spec, parent: QWidget | None = None) -> None:
+        super().__init__(parent)
+        self.document = document
+        self.spec = spec
+        self._grid = QGridLayout(self)
+        self._grid.setContentsMargins(0, 0, 0, 0)
+        self._grid.setHorizontalSpacing(GAP + 2)
+        self._grid.setVerticalSpacing(1)
+        metrics = self.fontMetrics()
+        self.label = QLabel(spec.label, self)
+        self.label.setWordWrap(True)
+        self.label.setFixedWidth(metrics.horizontalAdvance(LABEL_ROOM))
+        self.label.setMinimumHeight(FIELD)
+        self._grid.addWidget(self.label, 0, 0)
+        self._grid.setColumnMinimumWidth(2, metrics.horizontalAdvance(UNIT_ROOM))
+        self._grid.setColumnStretch(1, 1)
+        self._problem = _note_label(self, "problem")
+        self._grid.addWidget(self._problem, 1, 0, 1, 3)
+        self._mark = _note_label(self, "small")
+        self._mark.setTextFormat(Qt.TextFormat.RichText)
+        self._mark.setWordWrap(False)
+        self._mark.setTextInteractionFlags(
+            Qt.TextInteractionFlag.LinksAccessibleByKeyboard | Qt.TextInteractionFlag.LinksAccessibleByMouse
+        )
+        self._mark.linkActivated.connect(lambda _link: confirm_mark(self.document, self.spec))
+        self._grid.addWidget(self._mark, 2, 1, 1, 2)
+
+    def put_editor(self, editor: QWidget) -> None:
+        """Place the editor, name it for those who hear the screen, and lead the label to it."""
+        editor.setAccessibleName(self.spec.label)
+        editor.setToolTip(tooltip_of(self.spec))
+        self.label.setToolTip(tooltip_of(self.spec))
+        self.label.setBuddy(editor)
+        editor.setSizePolicy(QSizePolicy.Policy.Expanding, QSizePolicy.Policy.Fixed)
+        editor.setMinimumWidth(24)
+        self._grid.addWidget(editor, 0, 1, Qt.AlignmentFlag.AlignVCenter)
+        self.setFocusProxy(editor)
+
+    @property
+    def stops(self) -> list[QWidget]:
+        """What the Tab key stops at, in order: the editor, what is beside it, the mark."""
+        inside = [
+            w for w in self.findChildren(QWidget) if w is not self._mark and w.window() is self.window()
+        ]
+        return [w for w in (*inside, self._mark) if w.focusPolicy() & Qt.FocusPolicy.TabFocus]
+
+    def put_beside(self, widget: QWidget) -> None:
+        """Place what stands behind the editor: a unit, a button."""
+        self._grid.addWidget(widget, 0, 2, Qt.AlignmentFlag.AlignVCenter | Qt.AlignmentFlag.AlignLeft)
+
+    def show_spec(self, spec: Any, units: Units, mark: dict[str, str] | None) -> None:
+        """Show the project's value, what is wrong with what was entered, and the mark of a typical value."""
+        self.spec = spec
+        problem = self.document.problem_at(spec.pointer)
+        self.show_problem(problem)
+        self._show_mark(mark)
+        self.show_value(units, problem is not None)
+
+    def show_problem(self, sentence: str | None) -> None:
+        """Say under the field what is wrong, or nothing. The place in the file is no word for the screen."""
+        text = re.sub(r"^(/\S+): ", "", sentence) if sentence else ""
+        text = f"✕ {text[:1].upper()}{text[1:]}" if text else ""
+        self._problem.setText(text)
+        self._problem.setVisible(bool(text))
+
+    def show_value(self, units: Units, refused: bool) -> None:
+        """Show the value in the editor. `refused`: what was entered last was not taken."""
+        raise NotImplementedError
+
+    def _show_mark(self, mark: dict[str, str] | None) -> None:
+        typical = mark is not None and mark["state"] == "typical"
+        self._mark.setVisible(typical)
+        if typical and mark is not None:
+            self._mark.setText('typical value · <a href="confirm">Confirm</a>')
+            self._mark.setToolTip(f"A typical value, from {mark['source']}. Confirm it once you stand by it.")
+            self._mark.setAccessibleName(f"{self.spec.label}: typical value, from {mark['source']}")
+
+
+def _note_label(parent: QWidget, role: str) -> QLabel:
+    label = QLabel(parent)
+    label.setProperty("role", role)
+    label.setWordWrap(True)
+    label.setTextFormat(Qt.TextFormat.PlainText)
+    label.hide()
+    return label
+
+
+def tooltip_of(spec: Spec) -> str:
+    """Definition and source of a field."""
+    lines = [line for line in (spec.tells, f"Source: {spec.source}." if spec.source else "") if line]
+    return "\n".join(lines) or spec.label

@@ -1,0 +1,98 @@
+"""The picker of the parts library: a list with a search line, beside the field that it serves. Nothing modal."""
+
+from __future__ import annotations
+
+from PySide6.QtCore import QEvent, QModelIndex, QObject, QPoint, Qt
+from PySide6.QtGui import QKeyEvent
+from PySide6.QtWidgets import QFrame, QLabel, QLineEdit, QListWidget, QListWidgetItem, QVBoxLayout, QWidget
+
+from app.bench.forms.use_part import use_part
+from app.bench.parts_library import Part, PartKind, parts_of_kind
+from app.document import Document
+from app.look.spacing import GAP, SPACE
+
+TITLES: dict[PartKind, str] = {
+    "material": "Materials",
+    "cushion": "Cushion materials",
+    "ram": "Rams",
+    "section": "Sections",
+    "layer": "Ground along the shaft",
+    "toe": "Ground under the toe",
+}
+#: Size of the picker in characters and rows.
+WIDE, ROWS = 44, 9
+
+
+class PartPicker(QFrame):
+    """Search by any words; Enter or a click takes the part into the project, marked as typical with its source."""
+
+    def __init__(self, document: Document, kind: PartKind, pointer: str, parent: QWidget) -> None:
+        super().__init__(parent, Qt.WindowType.Popup)
+        self.setAttribute(Qt.WidgetAttribute.WA_DeleteOnClose)
+        self.setProperty("role", "paper")
+        self.setFrameShape(QFrame.Shape.StyledPanel)
+        self._document, self._kind, self._pointer = document, kind, pointer
+        column = QVBoxLayout(self)
+        column.setContentsMargins(SPACE, SPACE, SPACE, SPACE)
+        column.setSpacing(GAP)
+        title = QLabel(TITLES[kind], self)
+        title.setProperty("role", "strong")
+        self.search = QLineEdit(self)
+        self.search.setPlaceholderText("Search name, figure or source")
+        self.search.setAccessibleName(f"Search {TITLES[kind].lower()}")
+        self.list = QListWidget(self)
+        self.list.setAccessibleName(TITLES[kind])
+        self.list.setWordWrap(True)
+        self.list.setHorizontalScrollBarPolicy(Qt.ScrollBarPolicy.ScrollBarAlwaysOff)
+        note = QLabel("Typical values: they stay marked in the project until you confirm them.", self)
+        note.setProperty("role", "small")
+        note.setWordWrap(True)
+        for widget in (title, self.search, self.list, note):
+            column.addWidget(widget)
+        self.search.textChanged.connect(self._fill)
+        self.search.installEventFilter(self)
+        self.list.itemClicked.connect(self._take)
+        self.list.itemActivated.connect(self._take)
+        self._fill("")
+
+    def open_at(self, field: QWidget) -> None:
+        """Show below a field, within the screen."""
+        metrics = self.fontMetrics()
+        width, height = metrics.averageCharWidth() * WIDE, metrics.lineSpacing() * (3 * ROWS)
+        self.resize(width, height)
+        place = field.mapToGlobal(QPoint(0, field.height() + GAP))
+        room = field.screen().availableGeometry()
+        place.setX(max(room.left(), min(place.x(), room.right() - width)))
+        place.setY(max(room.top(), min(place.y(), room.bottom() - height)))
+        self.move(place)
+        self.show()
+        self.search.setFocus()
+
+    def eventFilter(self, watched: QObject, event: QEvent) -> bool:
+        """Up, down and Enter in the search line act on the list."""
+        if isinstance(event, QKeyEvent) and event.type() == QEvent.Type.KeyPress:
+            step = {Qt.Key.Key_Down: 1, Qt.Key.Key_Up: -1}.get(Qt.Key(event.key()))
+            if step is not None:
+                self.list.setCurrentRow(max(0, min(self.list.currentRow() + step, self.list.count() - 1)))
+                return True
+            if event.key() in (Qt.Key.Key_Return, Qt.Key.Key_Enter):
+                if self.list.currentItem() is not None:
+                    self._take(self.list.currentItem())
+                return True
+        return super().eventFilter(watched, event)
+
+    def _fill(self, text: str) -> None:
+        self.list.clear()
+        for part in parts_of_kind(self._kind, text):
+            lines = [part.name, *([part.tells] if part.tells else []), part.source]
+            item = QListWidgetItem("\n".join(lines), self.list)
+            item.setData(Qt.ItemDataRole.UserRole, part)
+        self.list.setCurrentRow(0)
+
+    def _take(self, item: QListWidgetItem | QModelIndex) -> None:
+        part: Part = item.data(Qt.ItemDataRole.UserRole)
+        self.close()
+        self._document.edit_tree(
+            f"Take {part.name} from the parts library",
+            lambda tree: use_part(tree, part, self._pointer),
+        )
