@@ -70,7 +70,7 @@ ALIASES = {
 }
 MASSES = ("mass", "density")
 POWERS = {"²": "**2", "³": "**3", "⁴": "**4"}
-NUMBER = re.compile(r"[-+−]?(?:\d[\d\s',. \u202f\u2009]*|[.,]\d+)(?:[eE][-+]?\d+)?")
+NUMBER = re.compile(r"[-+−]?(?:\d[\d\s',. \u202f\u2009]*|[.,]\d+)(?:[eE][-+−]?\d+)?")
 PLAIN_UNIT = re.compile(r"[A-Za-zµμε°%‰'\"′″_0-9/*·⋅^().\s²³⁴-]*")
 
 
