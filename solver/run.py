@@ -32,8 +32,8 @@ Array = NDArray[np.float64]
 CHUNK = 8_000_000
 #: Most element-steps of a run; more would take hours and is refused with a word.
 MOST_WORK = 2e12
-#: Share of the largest velocity below which the member counts as nearly at rest (and below which it may ring on in ground
-#: that no longer slips), and for how many chunks of such runs it must: what little still moves is settled statically.
+#: Share of the largest velocity below which the member counts as nearly at rest (and below which it may ring on in
+#: ground that slips no more), and for how many chunks of such runs it must: what still moves is settled statically.
 STILL = 0.03
 RINGING = 0.2
 STILL_CHUNKS = 8
@@ -61,8 +61,9 @@ def solve(
 ) -> Result:
     """Solve one case of a project.
 
-    `element_length` (m) overrides that of the case. `progress` is called between chunks; when `cancel` answers True, what is
-    solved so far is returned with `finished` False. Raises `SolveError` with a sentence where the case cannot be solved.
+    `element_length` (m) overrides that of the case. `progress` is called between chunks; when `cancel` answers True,
+    what is solved so far is returned with `finished` False. Raises `SolveError` with a sentence where the case cannot
+    be solved.
     """
     refuse_unsupported(case)
     return solve_chain(build_chain(case, element_length), progress, cancel)
@@ -173,7 +174,7 @@ class March:
             # looked at several times while a wave passes once, so that a moment of stillness is not taken for rest
             per_chunk = min(per_chunk, max(64, self.chain.nodes // 2))
         while self.steps < self.planned:
-            count = self._aligned(min(per_chunk, self.planned - self.steps, self._until_release()))
+            count = self._aligned(min(per_chunk, self.planned - self.steps))
             self._chunk(count)
             refuse_bad_state(self)
             if self.steps >= self.planned or self._came_to_rest():
@@ -196,26 +197,13 @@ class March:
             self.frames = [tuple(joined)]
             self.stride *= 2
 
-    def _until_release(self) -> int:
-        load = self.chain.case.load
-        if isinstance(load, Pulse | History) and load.release:
-            left = int(np.ceil(end_time(load) / self.chain.dt - 1e-9)) - self.steps
-            if left > 0:
-                # frames of one chunk start on its first step, so a release falls on a whole number of frames
-                return left
-        return self.planned
-
     def _load(self, count: int) -> Array:
         load, dt = self.chain.case.load, self.chain.dt
-        driven = self.state.rod.driven
-        driven[1] = 0
         if not isinstance(load, Pulse | History):
             return np.zeros(count)
         if load.quantity == "force":
             return step_forces(load, self.steps, count, dt)
-        released = load.release and self.steps * dt >= end_time(load) - dt / 2
-        driven[1] = 0 if released else 1
-        return np.zeros(count) if released else step_velocities(load, self.steps, count, dt)
+        return step_velocities(load, self.steps, count, dt)
 
     def _chunk(self, count: int) -> None:
         s = self.state

@@ -41,6 +41,10 @@ def refuse_unsupported(case: Case) -> None:
 
 
 def _refuse_with_inertia(case: Case) -> None:
+    if getattr(case.load, "release", False):
+        raise SolveError(
+            "Lateral inertia is not solved with a velocity load that lets go: leave 'release' off."
+        )
     lead = "Lateral inertia is solved for a bonded elastic member"
     if case.ground is not None or case.far_end.kind in ("wall", "ground"):
         raise SolveError(f"{lead} without ground or wall: switch it off, or choose another far end.")
@@ -74,13 +78,16 @@ def refuse_bad_state(march: March) -> None:
     stretch = 1 + np.diff(motion.u) / chain.length
     for part in chain.stretches:
         least = stretch[part.start : part.stop].min()
+        if part.material.law.kind == "elastic_plastic":
+            # a law of small strains: its shortening is told with a warning, its geometry is not updated
+            continue
         soft = part.material.law.kind == "large_strain"
         if least <= (SMALLEST_STRETCH if soft else 0.0):
             link = part.start + int(np.argmin(stretch[part.start : part.stop]))
             advice = "a thicker or stiffer pad" if soft else "a lower load, or a material law that yields"
             raise SolveError(
-                f"'{part.segment.name}' is pressed to {max(least, 0):.0%} of its length at {chain.position[link]:.4g} m, "
-                f"{seconds * 1000:.4g} ms, more than its law describes: give {advice}."
+                f"'{part.segment.name}' is pressed to {max(least, 0):.0%} of its length "
+                f"at {chain.position[link]:.4g} m, {seconds * 1000:.4g} ms, more than its law describes: give {advice}."
             )
     rows = np.concatenate([f[3] for f in march.frames])
     share, frame = residual_of(march.start_row, rows)

@@ -20,7 +20,7 @@ from solver.answer.result import (
     Result,
 )
 from solver.numerics.arrays import Extremes
-from solver.numerics.assemble import gauge_readings
+from solver.numerics.assemble import gauge_link
 from solver.numerics.balance import LEDGER, residual_of
 from solver.numerics.chain import Chain
 from solver.numerics.compiled import cache_problem
@@ -50,6 +50,8 @@ EVENT_NAMES: dict[int, EventKind] = {
 }
 #: What ends and begins again within so many steps is one contact, not two.
 FLICKER = 3
+#: Plastic strain above which a law of small strains is said to be left.
+SMALL_STRAIN = 0.1
 #: Share of the energy that may fail to close before it is told.
 TOLD = 0.01
 
@@ -127,15 +129,9 @@ def _times(blow: Blow) -> Array:
 
 def _gauges(blow: Blow) -> dict[str, GaugeRecord]:
     chain, time = blow.chain, _read_only(_times(blow))
-    nodes, weights = gauge_readings(chain)
     found = {}
     for g, gauge in enumerate(chain.case.gauges):
-        links = [
-            int(n) - 1 if w[1] != 0 else int(n)
-            for n, w in zip(nodes[g], weights[g], strict=True)
-            if w[0] != 0
-        ]
-        link = links[0]
+        link = gauge_link(chain, gauge)
         force, velocity, displacement, acceleration, strain = (_read_only(part[g]) for part in blow.gauges)
         elastic = next(s for s in chain.stretches if s.start <= link < s.stop).material.law.kind == "elastic"
         found[gauge.name] = GaugeRecord(
@@ -303,19 +299,39 @@ def _crack_openings(blow: Blow) -> dict[str, float]:
     return openings
 
 
+def _largest_plastic_strain(blow: Blow) -> tuple[float, float]:
+    """Largest plastic strain along the chain and its place (m)."""
+    largest, place = 0.0, 0.0
+    for stretch in blow.chain.stretches:
+        if stretch.material.law.kind == "elastic_plastic":
+            at = slice(stretch.start, stretch.stop)
+            strain = np.abs(blow.state.rod.state[0, at]) / blow.chain.length[at]
+            if strain.max() > largest:
+                largest, place = float(strain.max()), float(blow.chain.position[at][np.argmax(strain)])
+    return largest, place
+
+
 def _warnings(blow: Blow, residual: float, at_rest: bool, finished: bool) -> tuple[str, ...]:
     chain, case, told = blow.chain, blow.chain.case, []
     if residual > TOLD:
         told.append(f"The energy of this run does not close by {residual:.1%}: judge it with care.")
     if 1 - chain.courant_worst > MISMATCH:
         told.append(
-            f"The travel times of the segments fit no common step: the worst Courant number is {chain.courant_worst:.3f}."
+            "The travel times of the segments fit no common step: "
+            f"the worst Courant number is {chain.courant_worst:.3f}."
+        )
+    strain, place = _largest_plastic_strain(blow)
+    if strain > SMALL_STRAIN:
+        told.append(
+            f"The plastic strain reaches {strain:.0%} at {place:.4g} m, beyond a law of small strains: "
+            "read the shortening of the whole, not the strain there."
         )
     if not finished:
         told.append("This run was stopped early: it tells what happened so far.")
     elif case.run.duration is None and not at_rest:
         told.append(
-            f"The member does not come to rest by itself; the run was ended after {(blow.steps - 1) * chain.dt * 1000:.4g} ms."
+            "The member does not come to rest by itself; "
+            f"the run was ended after {(blow.steps - 1) * chain.dt * 1000:.4g} ms."
         )
     if case.ground is not None:
         bands = list(bands_of(case.ground, case.member.length))

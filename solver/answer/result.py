@@ -148,8 +148,8 @@ class Ledger:
 
 @dataclass(frozen=True, eq=False)
 class HeadTrain:
-    """Ram and cap over time, shape (n,): cushion force on the ram (N, compression positive here, as a cushion knows no
-    tension), velocity of the ram (m/s) and of the struck end (m/s)."""
+    """Ram and cap over time, shape (n,): cushion force on the ram (N, compression positive here, as a cushion
+    knows no tension), velocity of the ram (m/s) and of the struck end (m/s)."""
 
     time: Array
     cushion_force: Array
@@ -170,7 +170,8 @@ class Residual:
 
 @dataclass(frozen=True, eq=False)
 class Result:
-    """All that a run tells. `finished` is False where it was stopped early; `at_rest` where it came to rest by itself."""
+    """All that a run tells. `finished` is False where it was stopped early; `at_rest` where it came to rest by
+    itself."""
 
     case: Case
     elements: int

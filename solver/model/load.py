@@ -168,7 +168,8 @@ class Drop(Described):
             raise ValueError("'drop_height' needs 'efficiency' (above 0, up to 1) beside it")
         if self.drop_height is None and self.efficiency is not None:
             raise ValueError(
-                "'efficiency' belongs to 'drop_height' only: an energy or velocity at impact has the losses in it already"
+                "'efficiency' belongs to 'drop_height' only: "
+                "an energy or velocity at impact has the losses in it already"
             )
         if self.cushion is None and self.cap_mass > 0 and self.ram is None:
             raise ValueError(

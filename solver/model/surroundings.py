@@ -84,7 +84,8 @@ FarEnd = Annotated[
 
 
 class Radiation(Described):
-    """Soil as an elastic half-space: toe by Lysmer and Richart 1966, shaft by Randolph and Simons 1986 (from memory)."""
+    """Soil as an elastic half-space: toe by Lysmer and Richart 1966, shaft by Randolph and Simons 1986 (from
+    memory)."""
 
     kind: Literal["radiation"]
     shear_modulus: Annotated[Positive, Quantity("modulus", "Shear modulus", "Of the soil, at small strain.")]

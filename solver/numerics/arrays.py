@@ -13,7 +13,8 @@ Singles = NDArray[np.float32]
 class Rod(NamedTuple):
     """Links and nodes. `blocks`: law, first link, stop, shape (blocks, 3). `push` = dt/m of each node, with what acts
     implicitly on it. `special`: nodes with a spring or dashpot to ground, their `spring` (N/m) and `dashpot` (N·s/m).
-    `inertia`: Love's coupling mass per link (kg), empty where there is none; `pivot` and `carry` factorise its matrix."""
+    `inertia`: Love's coupling mass per link (kg), empty where there is none; `pivot` and `carry` factorise its
+    matrix."""
 
     blocks: Ints
     stiff: Array
@@ -45,7 +46,8 @@ class Shaft(NamedTuple):
 
 
 class Bounds(NamedTuple):
-    """Toe, joints, wall, train. `joints`: link per joint; `joint_par`: gap, slack; `joint_force`: force of the last step."""
+    """Toe, joints, wall, train. `joints`: link per joint; `joint_par`: gap, slack; `joint_force`: force of the
+    last step."""
 
     toe_par: Array
     toe_state: Array
@@ -83,7 +85,8 @@ class Extremes(NamedTuple):
 
 class Records(NamedTuple):
     """What a chunk records. Gauges: two readings each, `node` shape (g, 2), `weights` (g, 2, 6) = share, left, right,
-    mass, constant, share of the left strain. `force` ... (g, steps). Frames: `columns` (links), every `stride` steps."""
+    mass, constant, share of the left strain. `force` ... (g, steps). Frames: `columns` (links), every `stride`
+    steps."""
 
     node: Ints
     weights: Array

@@ -7,14 +7,18 @@ from itertools import pairwise
 import numpy as np
 from numpy.typing import NDArray
 
+from solver.model.load import History, Pulse
 from solver.model.project import Gauge
 from solver.numerics.arrays import Bounds, Extremes, Motion, Records, Rod
 from solver.numerics.balance import LEDGER
 from solver.numerics.chain import Chain, Stretch
 from solver.numerics.ground import toe_of
 from solver.numerics.links import BRITTLE, ELASTIC, ELASTIC_PLASTIC, LARGE_STRAIN, VISCOELASTIC
+from solver.numerics.pulses import end_time
 
 Array = NDArray[np.float64]
+#: A step number that no run reaches.
+NEVER = 2**62
 LAW_NUMBERS = {
     "elastic": ELASTIC,
     "viscoelastic": VISCOELASTIC,
@@ -49,8 +53,18 @@ def rod_of(chain: Chain, drag: float = 0.0) -> Rod:
         pivot=pivot,
         carry=carry,
         fixed_end=chain.fixed_end,
-        driven=np.array([chain.head, 0]),
+        driven=np.array([chain.head, _driven_until(chain)]),
     )
+
+
+def _driven_until(chain: Chain) -> int:
+    """Number of the first step on which the struck end is not driven: 0 without a velocity load."""
+    load = chain.case.load
+    if not isinstance(load, Pulse | History) or load.quantity == "force":
+        return 0
+    if not load.release:
+        return NEVER
+    return int(np.ceil(end_time(load) / chain.dt - 1e-9)) if np.isfinite(end_time(load)) else NEVER
 
 
 def _blocks(chain: Chain) -> NDArray[np.int64]:
@@ -100,6 +114,10 @@ def _lateral_inertia(chain: Chain, effective: Array) -> tuple[Array, Array, Arra
     diagonal[:-1] += inertia
     diagonal[1:] += inertia
     diagonal /= chain.dt
+    if chain.fixed_end:
+        beside[-1] = 0.0
+    if getattr(chain.case.load, "quantity", "") == "velocity":
+        beside[0] = 0.0
     pivot, carry = diagonal.copy(), np.zeros(len(inertia))
     for i in range(len(inertia)):
         carry[i] = beside[i] / pivot[i]
@@ -157,33 +175,46 @@ def gauge_readings(chain: Chain) -> tuple[NDArray[np.int64], Array]:
     gauges = chain.case.gauges
     nodes, weights = np.zeros((len(gauges), 2), dtype=np.int64), np.zeros((len(gauges), 2, 7))
     for g, gauge in enumerate(gauges):
-        for r, (node, share) in enumerate(_places(chain, gauge)):
+        for r, (node, share, side) in enumerate(_places(chain, gauge)):
             nodes[g, r] = node
-            weights[g, r] = share, *_reading(chain, gauge, node)
+            weights[g, r] = share, *_reading(chain, side, node)
     return nodes, weights
 
 
-def _places(chain: Chain, gauge: Gauge) -> list[tuple[int, float]]:
-    """One or two nodes with their shares. At a joint the side is chosen, towards the struck end unless told otherwise."""
+def _places(chain: Chain, gauge: Gauge) -> list[tuple[int, float, str]]:
+    """One or two nodes, each with its share and the side that is read there.
+
+    At a joint or step the side is the gauge's own, towards the struck end unless told otherwise; a gauge between two
+    nodes reads the element that it sits on.
+    """
     on_member = gauge.on == "member"
-    low, high = (chain.head, chain.nodes) if on_member else (0, chain.head)
+    rods = [s.stop for s in chain.stretches if s.start < chain.head]
+    low, high = (chain.head, chain.nodes) if on_member else (0, max(rods) + 1)
     # the distance of a gauge on a rod that strikes runs from that rod's own far face
     x = gauge.position if on_member else chain.position[0] + gauge.position
     place = chain.position[low:high]
     tolerance = 1e-6 * float(chain.length[low])
     near = np.flatnonzero(np.abs(place - x) <= tolerance)
     if len(near):
-        return [(low + int(near[0] if gauge.side == "near" else near[-1]), 1.0)]
+        return [(low + int(near[0] if gauge.side == "near" else near[-1]), 1.0, gauge.side)]
     right = int(np.searchsorted(place, x))
     share = (x - place[right - 1]) / (place[right] - place[right - 1])
-    return [(low + right - 1, float(1 - share)), (low + right, float(share))]
+    return [(low + right - 1, float(1 - share), "far"), (low + right, float(share), "near")]
 
 
-def _reading(chain: Chain, gauge: Gauge, node: int) -> tuple[float, ...]:
+def gauge_link(chain: Chain, gauge: Gauge) -> int:
+    """The link whose section and material a gauge reads."""
+    node, _, side = _places(chain, gauge)[0]
+    left = node > 0 and chain.axial[node - 1] > 0
+    right = node < chain.nodes - 1 and chain.axial[node] > 0
+    return node - 1 if left and (side == "near" or not right) else node
+
+
+def _reading(chain: Chain, side: str, node: int) -> tuple[float, ...]:
     """Weights of the left and right link's force, of the acceleration and a constant; 1/length of both links.
 
-    Within a uniform stretch the mean of both neighbours (exact for waves at Courant number 1); on an end, joint or step the
-    force on the side asked for, from the momentum of that half element.
+    Within a uniform stretch the mean of both neighbours (exact for waves at Courant number 1); on an end, joint or
+    step the force on the side asked for, from the momentum of that half element.
     """
     half = chain.half_mass
     left = node > 0 and chain.axial[node - 1] > 0
@@ -196,8 +227,7 @@ def _reading(chain: Chain, gauge: Gauge, node: int) -> tuple[float, ...]:
     smooth = left and right and not lumped and abs(half[node] / half[node - 1] - 1) < 1e-9
     if smooth:
         return 0.5, 0.5, 0.0, 0.0, *lengths
-    take_left = left if gauge.side == "near" or not right else False
-    if take_left:
+    if left and (side == "near" or not right):
         return 1.0, 0.0, half[node - 1], -half[node - 1] * chain.gravity, *lengths
     return 0.0, 1.0, -half[node], half[node] * chain.gravity, *lengths
 

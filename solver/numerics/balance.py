@@ -26,7 +26,7 @@ LEDGER = (
     "impact_loss",
     "viscous",
 )
-WORK, DASHPOTS, SLIP, DAMPING, IMPACT = 0, 1, 2, 3, 4
+WORK, DASHPOTS, SLIP, DAMPING, IMPACT, PULL, PULL_BEFORE = range(7)
 
 
 @kernel

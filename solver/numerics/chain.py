@@ -53,8 +53,9 @@ class TrainLink:
 class Chain:
     """The discrete case. Shapes: nodes (n,), links (n - 1,). SI units.
 
-    `mass_left` and `mass_right` are the half masses that elements give to their first and last node; `mass` adds lumped
-    masses. `axial` is EA of each link (0 where no element is), `length` its length, `area` such that stress = force/area.
+    `mass_left` and `mass_right` are the half masses that elements give to their first and last node; `mass` adds
+    lumped masses. `axial` is EA of each link (0 where no element is), `length` its length, `area` such that stress
+    = force/area.
     `damping` and `spring` act from a node to fixed ground.
     """
 
@@ -138,6 +139,22 @@ def travel_time(segment: Segment, materials: dict[str, Material]) -> float:
     fraction = (np.arange(64) + 0.5) / 64
     axial, mass, _ = profile_along(segment, materials, fraction)
     return float(segment.length * np.mean(np.sqrt(mass / axial)))
+
+
+def equal_transit(segment: Segment, materials: dict[str, Material], n: int) -> Array:
+    """Edges of `n` elements as fractions of a segment's length, so that a wave takes equally long through each.
+
+    They are equally long but in a tapered filled pipe, whose wave speed changes along it.
+    """
+    even = np.arange(n + 1) / n
+    if segment.end_section is None or segment.section.shape != "filled_pipe":
+        return even
+    fine = np.linspace(0, 1, 16 * n + 1)
+    axial, mass, _ = profile_along(segment, materials, (fine[1:] + fine[:-1]) / 2)
+    passed = np.concatenate(([0.0], np.cumsum(np.sqrt(mass / axial))))
+    edges = np.interp(even * passed[-1], passed, fine)
+    edges[-1] = 1.0
+    return edges
 
 
 def segments_of(case: Case) -> tuple[tuple[Segment, ...], slice]:
@@ -225,13 +242,14 @@ class _Builder:
         return joints
 
     def _elements(self, segment: Segment, n: int, at: float) -> None:
-        dx = np.full(n, segment.length / n)
-        axial, line_mass, area = profile_along(segment, self.materials, (np.arange(n) + 0.5) / n)
+        edges = equal_transit(segment, self.materials, n)
+        dx = segment.length * np.diff(edges) if segment.end_section else np.full(n, segment.length / n)
+        axial, line_mass, area = profile_along(segment, self.materials, (edges[1:] + edges[:-1]) / 2)
         half = line_mass * dx / 2
         self.mass[-1][-1] += half[0]
         nodes = half.copy()
         nodes[:-1] += half[1:]
-        self.position.append(at + segment.length * np.arange(1, n + 1) / n)
+        self.position.append(at + segment.length * edges[1:])
         self.mass.append(nodes)
         self.links.append((axial, dx, area, line_mass))
         first = self.count - 1
@@ -293,12 +311,12 @@ def _finished(
     damping, spring = np.zeros_like(mass), np.zeros_like(mass)
     extra: dict[int, float] = {}
     for attachment in case.member.attachments:
-        node = head + int(np.argmin(np.abs(position[head:] - attachment.position)))
-        if attachment.kind == "mass":
-            mass[node] += attachment.value
-            extra[node] = extra.get(node, 0.0) + attachment.value
-        else:
-            (spring if attachment.kind == "spring" else damping)[node] += attachment.value
+        for node, share in _lever(position, head, attachment.position):
+            if attachment.kind == "mass":
+                mass[node] += share * attachment.value
+                extra[node] = extra.get(node, 0.0) + share * attachment.value
+            else:
+                (spring if attachment.kind == "spring" else damping)[node] += share * attachment.value
     end = case.far_end
     if end.kind == "spring":
         spring[-1] += end.stiffness
@@ -310,9 +328,12 @@ def _finished(
     if isinstance(case.load, Drop | Striker):
         velocity[: head - (1 if len(train) == 2 else 0)] = impact_velocity(case.load, mass, head)
     velocity[head:] = case.run.initial_velocity or 0.0
+    rods = axial > 0
+    # transit times of a taper are those of its middles: hold the step to the quickest element
+    quickest = float(np.min(length[rods] * np.sqrt(line_mass[rods] / axial[rods])))
     return Chain(
         case=case,
-        dt=steps.dt,
+        dt=quickest if quickest < steps.dt * (1 - 1e-9) else steps.dt,
         courant_worst=steps.courant_worst,
         position=position,
         mass=mass,
@@ -332,6 +353,15 @@ def _finished(
         gravity=GRAVITY if case.run.gravity else 0.0,
         extra_masses=extra,
     )
+
+
+def _lever(position: Array, head: int, x: float) -> list[tuple[int, float]]:
+    """The node at `x` (m), or the two beside it with their shares by the lever rule."""
+    right = min(head + int(np.searchsorted(position[head:], x)), len(position) - 1)
+    if right == head or abs(position[right] - x) < 1e-9 * position[-1]:
+        return [(right, 1.0)]
+    share = (x - position[right - 1]) / (position[right] - position[right - 1])
+    return [(right, float(share)), (right - 1, float(1 - share))] if share < 1 - 1e-6 else [(right, 1.0)]
 
 
 def impact_velocity(load: Drop | Striker, mass: Array, head: int) -> float:

@@ -95,7 +95,7 @@ def bring_to_rest(chain: Chain, state: State) -> None:
 
 
 def _step_back_half(chain: Chain, state: State) -> None:
-    """Cushion and shaft live on half steps: half a step before the blow, what moves was not yet where it is at time 0."""
+    """Cushion and shaft live on half steps: before the blow by half a step, what moves was not yet where it is at 0."""
     back = state.motion.v * chain.dt / 2
     if len(state.bounds.train_links):
         a = int(state.bounds.train_links[0])
@@ -119,8 +119,8 @@ def _refuse_unheld(chain: Chain, weight: float, soil: _Soil) -> None:
     if holding <= weight:
         what = f"can hold {holding / 1000:.3g} kN" if holding else "is not there"
         raise SolveError(
-            f"With gravity on, the member (with its cap {weight / 1000:.3g} kN) does not come to rest before the blow: its "
-            f"ground {what}. Give the ground more resistance, hold the far end, or turn gravity off."
+            f"With gravity on, the member (with its cap {weight / 1000:.3g} kN) does not come to rest before the blow: "
+            f"its ground {what}. Give the ground more resistance, hold the far end, or turn gravity off."
         )
 
 

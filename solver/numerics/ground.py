@@ -1,7 +1,7 @@
 """The ground as forces on nodes: every layer's resistance put on the nodes that it touches.
 
-End nodes and the two nodes of a joint carry other laws already, so their halves of the neighbouring elements go to the
-node next to them, half an element away.
+End nodes and the two nodes of a joint carry other laws already, so their halves of the neighbouring elements go to
+the node next to them, half an element away.
 """
 
 from __future__ import annotations

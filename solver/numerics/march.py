@@ -1,14 +1,14 @@
 """The march through time: central differences, velocities on half steps, one loop with no Python inside.
 
-Each step reads like the method: forces of the links from the displacements of now; new velocities of all nodes; then the
-nodes where something else acts (springs and dashpots to ground, shaft, toe, joints, wall, ram) corrected one kind after
-the other; records; displacements of the next step.
+Each step reads like the method: forces of the links from the displacements of now; new velocities of all nodes;
+then the nodes where something else acts (springs and dashpots to ground, shaft, toe, joints, wall, ram) corrected
+one kind after the other; records; displacements of the next step.
 """
 
 import numpy as np
 
 from solver.numerics import shaft, toe, train
-from solver.numerics.balance import DAMPING, DASHPOTS, IMPACT, SLIP, WORK, balance
+from solver.numerics.balance import DAMPING, DASHPOTS, IMPACT, PULL, PULL_BEFORE, SLIP, WORK, balance
 from solver.numerics.compiled import kernel
 from solver.numerics.links import link_forces
 from solver.numerics.records import (
@@ -39,8 +39,11 @@ def new_velocities(push, weight, gain, v, w, force):
 
 
 @kernel
-def inertia_velocities(rod, v, w, force, load, u):
-    """Love's rod: the tridiagonal mass matrix solved by one sweep down and one up."""
+def inertia_velocities(rod, v, w, force, load, driven, u, dt):
+    """Love's rod: the tridiagonal mass matrix solved by one sweep down and one up.
+
+    A node whose velocity is given (struck end driven, far end fixed) is no unknown: the factors leave it out.
+    """
     last = len(v) - 1
     for i in range(last + 1):
         pull = rod.weight[i]
@@ -49,10 +52,15 @@ def inertia_velocities(rod, v, w, force, load, u):
         if i > 0:
             pull -= force[i - 1]
         w[i] = pull
-    w[0] += load
+    w[0] += 0.0 if driven else load
     for s in range(len(rod.special)):
         i = rod.special[s]
         w[i] -= rod.spring[s] * u[i] + rod.dashpot[s] * v[i]
+    if driven:
+        w[0] = (load - v[0]) * rod.pivot[0]
+        w[1] += rod.inertia[0] * (load - v[0]) / dt
+    if rod.fixed_end:
+        w[last] = 0.0
     for i in range(1, last + 1):
         w[i] -= rod.carry[i - 1] * w[i - 1]
     w[last] /= rod.pivot[last]
@@ -63,51 +71,77 @@ def inertia_velocities(rod, v, w, force, load, u):
 
 
 @kernel
-def special_nodes(rod, u, v, w, drag, gain, sums, dt):
+def driving_force(rod, u, v, w, force, dt):
+    """Force on a driven struck end of Love's rod, N: its momentum, that of the coupling, and what else holds it."""
+    change = (w[0] - v[0]) / dt
+    pull = rod.mass[0] * change + rod.inertia[0] * (change - (w[1] - v[1]) / dt) - force[0] - rod.weight[0]
+    for s in range(len(rod.special)):
+        if rod.special[s] == 0:
+            mean = 0.5 * (v[0] + w[0])
+            pull += rod.spring[s] * (u[0] + 0.25 * dt * (w[0] - v[0])) + rod.dashpot[s] * mean
+    return pull
+
+
+@kernel
+def special_nodes(rod, u, v, w, drag, gain):
     """Nodes with a spring or dashpot to fixed ground, both implicit (their `push` knows it)."""
+    if len(rod.inertia):
+        return
     for s in range(len(rod.special)):
         i = rod.special[s]
-        if len(rod.inertia) == 0:
-            pull = rod.spring[s] * u[i] + (rod.dashpot[s] + drag * rod.mass[i]) * v[i]
-            w[i] += (1.0 - gain) * v[i] - rod.push[i] * pull
-        mean = 0.5 * (v[i] + w[i])
-        sums[DASHPOTS] += rod.dashpot[s] * mean * mean * dt
+        pull = rod.spring[s] * u[i] + (rod.dashpot[s] + drag * rod.mass[i]) * v[i]
+        w[i] += (1.0 - gain) * v[i] - rod.push[i] * pull
+
+
+@kernel
+def dashpot_losses(rod, v, w):
+    """Power that the dashpots to fixed ground take, W."""
+    taken = 0.0
+    for s in range(len(rod.special)):
+        mean = 0.5 * (v[rod.special[s]] + w[rod.special[s]])
+        taken += rod.dashpot[s] * mean * mean
+    return taken
 
 
 @kernel
 def joints(bounds, push, u, v, w, sums, dt, note, step):
-    """Joints that touch or pull within this step get the impulse that just closes or stops them."""
+    """Joints that touch or pull within this step get the force that just closes or stops them.
+
+    A force acts half a step on either side of its time. So one that was there a step ago still acts with its half
+    now, even where the faces part: that is its mean over both sides, and leaves waves clean at Courant number 1.
+    """
     for j in range(len(bounds.joints)):
         a = bounds.joints[j]
-        opening = u[a + 1] - u[a] + bounds.joint_par[j, 0] + dt * (w[a + 1] - w[a])
-        slack = bounds.joint_par[j, 1]
-        over = opening if opening < 0.0 else max(opening - slack, 0.0)
-        before = bounds.joint_force[j]
-        force = -over / (dt * (push[a] + push[a + 1]))
-        if over != 0.0:
-            rel = v[a] - v[a + 1]
-            w[a] -= push[a] * force
-            w[a + 1] += push[a + 1] * force
-            sums[IMPACT] += 0.5 * dt * force * (rel + w[a] - w[a + 1])
-        bounds.joint_force[j] = force
-        if force != 0.0 and before == 0.0:
+        held = 0.5 * bounds.joint_force[j]
+        rel = v[a] - v[a + 1]
+        opening = u[a + 1] - u[a] + bounds.joint_par[j, 0]
+        yielding = push[a] + push[a + 1]
+        ahead = opening + dt * (w[a + 1] - w[a] + yielding * held)
+        over = ahead if ahead < 0.0 else max(ahead - bounds.joint_par[j, 1], 0.0)
+        force = held - over / (dt * yielding)
+        w[a] -= push[a] * force
+        w[a + 1] += push[a + 1] * force
+        sums[IMPACT] += 0.5 * dt * force * (rel + w[a] - w[a + 1])
+        before = bounds.joint_force[j] != 0.0
+        bounds.joint_force[j] = force if over != 0.0 else 0.0
+        if over != 0.0 and not before:
             remember(note, EVENT_JOINT_CLOSED, a, step)
-        elif force == 0.0 and before != 0.0:
+        elif over == 0.0 and before:
             remember(note, EVENT_JOINT_OPENED, a, step)
 
 
 @kernel
 def wall(bounds, push, u, v, w, sums, dt, note, step):
-    """A rigid wall beyond a gap: `wall` holds the gap and the force of the last step."""
+    """A rigid wall beyond a gap, met and left as a joint is; `wall` holds the gap and the force of the last step."""
     last = len(u) - 1
-    over = u[last] + dt * w[last] - bounds.wall[0]
-    force = max(over, 0.0) / (dt * push[last])
-    if force > 0.0:
-        w[last] -= push[last] * force
-        sums[IMPACT] += 0.5 * dt * force * (v[last] + w[last])
-        if bounds.wall[1] == 0.0:
-            remember(note, EVENT_WALL, last, step)
-    bounds.wall[1] = force
+    held = 0.5 * bounds.wall[1]
+    over = max(u[last] + dt * (w[last] - push[last] * held) - bounds.wall[0], 0.0)
+    force = held + over / (dt * push[last])
+    w[last] -= push[last] * force
+    sums[IMPACT] += 0.5 * dt * force * (v[last] + w[last])
+    if over > 0.0 and bounds.wall[1] == 0.0:
+        remember(note, EVENT_WALL, last, step)
+    bounds.wall[1] = force if over > 0.0 else 0.0
 
 
 @kernel
@@ -151,7 +185,7 @@ def toe_node(bounds, push, u, v, w, sums, dt, note, step):
 @kernel
 def train_step(bounds, push, u, v, w, sums, dt, note, step):
     """Ram, cap and struck end; notes when the ram leaves and when it strikes (again)."""
-    before = bounds.train_force[0]
+    before = bounds.train_state[0, 2] if bounds.train_kinds[0] == 0 else bounds.train_force[0]
     sums[IMPACT] += train.advance(
         bounds.train_links,
         bounds.train_kinds,
@@ -164,7 +198,7 @@ def train_step(bounds, push, u, v, w, sums, dt, note, step):
         push,
         dt,
     )
-    after = bounds.train_force[0]
+    after = bounds.train_state[0, 2] if bounds.train_kinds[0] == 0 else bounds.train_force[0]
     if after > 0.0 and before <= 0.0:
         remember(note, EVENT_IMPACT, bounds.train_links[0], step)
     elif after <= 0.0 and before > 0.0:
@@ -173,13 +207,14 @@ def train_step(bounds, push, u, v, w, sums, dt, note, step):
 
 @kernel
 def march(rod, ground, bounds, motion, ext, rec, sums, load, first, count, stride, dt, drag):
-    """March `count` steps from step number `first`. `load`: force on the struck end per step (N), or its velocity where it
-    is driven. `drag` (1/s) damps every node in proportion to its mass (0 but for settling). Changes its arrays in place.
+    """March `count` steps from step number `first`. `load`: force on the struck end per step (N), or its velocity
+    where it is driven. `drag` (1/s) damps every node in proportion to its mass (0 but for settling). Changes its
+    arrays in place.
     """
     u, v, w, force, rest = motion.u, motion.v, motion.w, motion.force, motion.rest
     note = (rec.events, rec.event_count)
     gain = (1.0 - 0.5 * drag * dt) / (1.0 + 0.5 * drag * dt)
-    push, weight, driven = rod.push, rod.weight, rod.driven[1] != 0
+    push, weight = rod.push, rod.weight
     head, last = rod.driven[0], len(u) - 1
     # what a case does not have must cost nothing at every step
     inert, special, gauges = len(rod.inertia) > 0, len(rod.special) > 0, len(rec.node) > 0
@@ -188,20 +223,30 @@ def march(rod, ground, bounds, motion, ext, rec, sums, load, first, count, strid
     rams, train_heard = len(bounds.train_links) > 0, len(rec.ram) > 0
     for n in range(count):
         step = first + n
+        driven = step < rod.driven[1]
         link_forces(rod, u, v, force, dt, rec.flags, note, step)
         if inert:
-            inertia_velocities(rod, v, w, force, 0.0 if driven else load[n], u)
+            inertia_velocities(rod, v, w, force, load[n], driven, u, dt)
         else:
             new_velocities(push, weight, gain, v, w, force)
             if not driven:
                 w[head] += push[head] * load[n]
         if special:
-            special_nodes(rod, u, v, w, drag, gain, sums, dt)
+            special_nodes(rod, u, v, w, drag, gain)
         if shafts:
             shaft_nodes(ground, push, v, w, sums, dt)
         if toes:
             toe_node(bounds, push, u, v, w, sums, dt, note, step)
+        pull = load[n]
+        if step == rod.driven[1] and step > 0:
+            # what held the struck end over the last step, carried on from its means two and one steps ago, still acts
+            # with its half in the step in which it lets go
+            let_go = 0.5 * (1.5 * sums[PULL] - 0.5 * sums[PULL_BEFORE])
+            pull += let_go
+            w[head] += push[head] * let_go
         if driven:
+            # the force that makes the struck end follow, whatever else acts on it
+            pull = (load[n] - w[head]) / push[head] if not inert else driving_force(rod, u, v, w, force, dt)
             w[head] = load[n]
         if rod.fixed_end:
             w[last] = 0.0
@@ -211,9 +256,9 @@ def march(rod, ground, bounds, motion, ext, rec, sums, load, first, count, strid
             wall(bounds, push, u, v, w, sums, dt, note, step)
         if rams:
             train_step(bounds, push, u, v, w, sums, dt, note, step)
-        pull = load[n]
-        if driven:
-            pull = rod.mass[head] * (w[head] - v[head]) / dt - force[head] - weight[head]
+        sums[PULL_BEFORE], sums[PULL] = sums[PULL], pull
+        if special:
+            sums[DASHPOTS] += dashpot_losses(rod, v, w) * dt
         sums[WORK] += pull * 0.5 * (v[head] + w[head]) * dt
         if gauges:
             read_gauges(rec, u, v, w, force, rest, dt, n)

@@ -1,8 +1,8 @@
 """The mesh: elements that a wave crosses in one time step each, and the step itself.
 
 On piecewise-uniform linear rods central differences are exact where every element has Courant number 1. So one step
-is chosen and each segment gets the whole number of elements nearest to its travel time in steps; travel times without a
-common divisor leave Courant numbers a little under 1, and the search keeps the worst of them close to 1.
+is chosen and each segment gets the whole number of elements nearest to its travel time in steps; travel times
+without a common divisor leave Courant numbers a little under 1, and the search keeps the worst of them close to 1.
 """
 
 from __future__ import annotations
@@ -68,8 +68,8 @@ def choose_steps(
     """Choose the step for all segments in the chain.
 
     `member` picks the segments of the member itself, along which about `wanted` elements are laid (at least that many
-    where the program chooses; close to it where a person did: `exactly`). `marks` are travel times (s) from the struck
-    end to gauges: where several meshes are equally good, one with nodes at the gauges is taken.
+    where the program chooses; close to it where a person did: `exactly`). `marks` are travel times (s) from the
+    struck end to gauges: where several meshes are equally good, one with nodes at the gauges is taken.
     """
     total = sum(s.travel_time for s in segments[member])
     window = np.arange(wanted, max(int(wanted * (1.05 if exactly else 2)), wanted + 1) + 1)

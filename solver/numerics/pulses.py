@@ -13,7 +13,8 @@ Array = NDArray[np.float64]
 
 
 def integral(load: Pulse | History, time: Array) -> Array:
-    """Integral of the load from 0 to `time` (s, any shape, negative times give 0): N·s for a force, m for a velocity."""
+    """Integral of the load from 0 to `time` (s, any shape, negative times give 0): N·s for a force, m for a
+    velocity."""
     if isinstance(load, History):
         return _history_integral(load, time)
     since = np.clip(time - load.start, 0.0, None)

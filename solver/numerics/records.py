@@ -27,10 +27,11 @@ def remember(note, kind, place, step):
 
 @kernel
 def envelopes(ext, force, v, w, u, dt, step):
-    """Extremes of force per link; of velocity and displacement per node, the displacements then move on to the next step.
+    """Extremes of force per link; of velocity and displacement per node, the displacements then move on to the
+    next step.
 
-    One short loop per extreme: each touches few enough arrays for vector instructions. Later rounding does not count as a
-    new extreme, so that the first of equal peaks is the one that is told.
+    One short loop per extreme: each touches few enough arrays for vector instructions. Later rounding does not
+    count as a new extreme, so that the first of equal peaks is the one that is told.
     """
     at = float(step)
     low, low_step = ext.low, ext.low_step

@@ -1,8 +1,8 @@
 """Resistance along the shaft, node by node, solved together with the node's new velocity.
 
 The static part lives on half steps: R of the middle of one step and of the next, and their mean acts in between. With
-w the mean of the two half-step velocities, `p` = dt/m and R clamped to its strength, each node is one linear equation per
-branch, so that the step is bounded by the rod alone and a linear spring keeps its energy.
+w the mean of the two half-step velocities, `p` = dt/m and R clamped to its strength, each node is one linear
+equation per branch, so that the step is bounded by the rod alone and a linear spring keeps its energy.
 """
 
 from solver.numerics.compiled import kernel
@@ -13,12 +13,13 @@ def plain(first, v, w, push, r, par, dt):
     """Smith's and the linear viscous law on the nodes from `first` on.
 
     `r` is the static resistance at the last half step (N, shape (n,), changed in place); rows of `par`, shape (5, n):
-    strength (N), stiffness (N/m), its inverse (0 where there is none), J of Smith's law (s/m), J Ru of the viscous (N·s/m).
-    Static: E. A. L. Smith 1960; damping J |R| v, so that it takes energy both ways (sources from memory).
+    strength (N), stiffness (N/m), its inverse (0 where there is none), J of Smith's law (s/m), J Ru of the viscous
+    (N·s/m). Static: E. A. L. Smith 1960; damping J |R| v, so that it takes energy both ways (sources from memory).
     Returns the energies lost by slip and by damping in this step, J.
     """
     n = len(r)
-    # slices and one table of parameters: few enough arrays, and no index can wrap, so the loop runs in vector instructions
+    # slices and one table of parameters: few enough arrays, and no index can wrap, so the loop runs in vector
+    # instructions
     old_v, new_v, p = v[first : first + n], w[first : first + n], push[first : first + n]
     strength, stiff, flexible, smith, viscous = par[0], par[1], par[2], par[3], par[4]
     slip_loss = 0.0
@@ -46,7 +47,8 @@ def plain(first, v, w, push, r, par, dt):
 def power_speed(a, b, exponent, rest):
     """Root w of a w + b |w|^N sign(w) = rest, a > 0, b >= 0, 0 < N <= 1.
 
-    With y = |w|^N the left side is a y^(1/N) + b y, convex and rising, so Newton's steps fall onto the root from above.
+    With y = |w|^N the left side is a y^(1/N) + b y, convex and rising, so Newton's steps fall onto the root from
+    above.
     """
     goal = abs(rest)
     if goal == 0.0:
@@ -66,7 +68,8 @@ def power_speed(a, b, exponent, rest):
 
 @kernel
 def power(nodes, v, w, push, r, strength, stiff, flexible, factor, exponent, dt):
-    """Power law Rd = J Ru |v|^N sign(v) (Gibson and Coyle 1968, from memory); `factor` = J Ru, arrays per listed node."""
+    """Power law Rd = J Ru |v|^N sign(v) (Gibson and Coyle 1968, from memory); `factor` = J Ru, arrays per listed
+    node."""
     slip_loss = 0.0
     damping_loss = 0.0
     for j in range(len(nodes)):

@@ -1,9 +1,10 @@
 """Resistance under the toe: compression only; lost and found again where it was left.
 
-`state`: [0] plastic displacement D' at which contact begins (m; the gap to begin with), [1] static resistance at the last
-half step (N), [2] soil displacement of the radiation model at the last half step (m), [3] 1 while in contact.
-`par`: [0] law (0 Smith, 1 viscous, 2 power, 3 radiation), [1] strength Ru (N), [2] stiffness (N/m), [3] damping (J in s/m;
-for radiation the dashpot in N·s/m), [4] exponent. Law numbers are internal; a file knows them by their words.
+`state`: [0] plastic displacement D' at which contact begins (m; the gap to begin with), [1] static resistance at
+the last half step (N), [2] soil displacement of the radiation model at the last half step (m), [3] 1 while in
+contact.
+`par`: [0] law (0 Smith, 1 viscous, 2 power, 3 radiation), [1] strength Ru (N), [2] stiffness (N/m), [3] damping (J
+in s/m; for radiation the dashpot in N·s/m), [4] exponent. Law numbers are internal; a file knows them by their words.
 """
 
 from solver.numerics.compiled import kernel
@@ -14,9 +15,11 @@ SMITH, VISCOUS, POWER, RADIATION = 0, 1, 2, 3
 
 @kernel
 def quasi_static(par, state, free, half, u, v, dt):
-    """Smith's spring and slider (1960, from memory) with a damping law: new mean velocity, energies lost by slip and damping.
+    """Smith's spring and slider (1960, from memory) with a damping law: new mean velocity, energies lost by slip
+    and damping.
 
-    `free`: mean velocity without the toe, `half` = dt/(2 m), `u` and `v`: displacement now, velocity of the last half step.
+    `free`: mean velocity without the toe, `half` = dt/(2 m), `u` and `v`: displacement now, velocity of the last
+    half step.
     """
     top, k, old, plastic = par[1], par[2], state[1], state[0]
     before = u - 0.5 * dt * v
@@ -49,7 +52,8 @@ def _speed(a, b, exponent, rest):
 
 @kernel
 def radiating(par, state, free, half, u, v, dt):
-    """Spring and dashpot of a half-space (Lysmer and Richart 1966, from memory), a slider of strength Ru, no tension."""
+    """Spring and dashpot of a half-space (Lysmer and Richart 1966, from memory), a slider of strength Ru, no
+    tension."""
     top, k, c, s, plastic = par[1], par[2], par[3], state[2], state[0]
     before = u - 0.5 * dt * v
     gap = before - plastic - s

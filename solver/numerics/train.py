@@ -1,7 +1,8 @@
 """Ram, cap and struck end: solved together, one or two forces a step, by trying each branch of their laws.
 
-A cushion acts with the mean of its law at the half steps before and after; faces that touch without a cushion exchange the
-force that closes their gap, never tension. Every branch is linear, so a step is one or two linear equations.
+A cushion acts with the mean of its law at the half steps before and after; faces that touch without a cushion
+exchange the force that closes their gap, never tension. Every branch is linear, so a step is one or two linear
+equations.
 """
 
 import numpy as np
@@ -23,12 +24,13 @@ def cushion_force(d, k, unloading, largest, restitution):
 
 @kernel
 def branch(which, kind, par, state, gap, dt):
-    """Coefficients (alpha, beta, gamma) of alpha F + beta rel = gamma, `rel` the closing velocity of the coming half step.
+    """Coefficients (alpha, beta, gamma) of alpha F + beta rel = gamma, `rel` the closing velocity of the coming
+    half step.
 
     `par`: k, k/e^2, e; `state`: compression at the last half step, largest so far, force then, closing velocity then.
     """
-    if kind == 0:
-        return (0.0, 1.0, gap / dt) if which == CLOSED else (1.0, 0.0, 0.0)
+    if which == CLOSED:
+        return 0.0, 1.0, gap / dt
     if which == OPEN:
         return 1.0, 0.0, 0.5 * state[2]
     k, start = par[0], 0.0
@@ -42,7 +44,9 @@ def branch(which, kind, par, state, gap, dt):
 def misfit(force, rel, kind, par, state, gap, dt):
     """How far a solution of a branch is from the law: 0 where it holds, N."""
     if kind == 0:
-        return max(-force, 0.0) + max(dt * rel - gap, 0.0) * 1e300 * (1.0 if force <= 0.0 else 0.0)
+        held = 0.5 * state[2]
+        overlap = max(dt * rel - gap, 0.0) * (1e300 if force <= held else 0.0)
+        return max(held - force, 0.0) + overlap
     new = cushion_force(state[0] + 0.5 * dt * (state[3] + rel), par[0], par[1], state[1], par[2])
     return abs(force - 0.5 * (state[2] + new))
 
@@ -123,6 +127,8 @@ def advance(links, kinds, pars, states, forces, u, v, w, push, dt):
         rel = w[a] - w[a + 1]
         if kinds[t] == 0:
             lost += 0.5 * dt * forces[t] * (states[t, 3] + rel)
+            # faces that part keep half of their last force for this one step (see the joints)
+            states[t, 2] = forces[t] if forces[t] > 0.5 * states[t, 2] else 0.0
         else:
             states[t, 0] += 0.5 * dt * (states[t, 3] + rel)
             states[t, 2] = cushion_force(states[t, 0], pars[t, 0], pars[t, 1], states[t, 1], pars[t, 2])

@@ -1,7 +1,7 @@
 """Brittle in tension: elastic to the strength, then a crack that carries compression only.
 
-`par[0]` tensile strength as a force (N). `state[0]` 1 once cracked, `state[1]` largest opening (m), `state[2]` the energy
-that the crack set free (J).
+`par[0]` tensile strength as a force (N). `state[0]` 1 once cracked, `state[1]` largest opening (m), `state[2]` the
+energy that the crack set free (J).
 """
 
 from solver.numerics.compiled import kernel

@@ -1,8 +1,8 @@
-"""Bilinear elastic-plastic rod, isotropic or kinematic hardening; return mapping in one dimension (Simo and Hughes 1998,
-*Computational Inelasticity*, ch. 1, from memory).
+"""Bilinear elastic-plastic rod, isotropic or kinematic hardening; return mapping in one dimension (Simo and Hughes
+1998, *Computational Inelasticity*, ch. 1, from memory).
 
-`par[0]` yield force (N), `par[1]` plastic modulus H' = E Et/(E - Et) as a stiffness H'A/L (N/m), `par[2]` 1 for kinematic
-hardening and 0 for isotropic. `state[0]` plastic elongation (m), `state[1]` its accumulated magnitude (m).
+`par[0]` yield force (N), `par[1]` plastic modulus H' = E Et/(E - Et) as a stiffness H'A/L (N/m), `par[2]` 1 for
+kinematic hardening and 0 for isotropic. `state[0]` plastic elongation (m), `state[1]` its accumulated magnitude (m).
 """
 
 from solver.numerics.compiled import kernel
