@@ -8,10 +8,13 @@ several that can be switched on), "quiet" (no frame until pointed at), "main" (t
 
 from __future__ import annotations
 
+from pathlib import Path
+
 from app.look.fonts import LEVELS
 from app.look.palette import Palette
 from app.look.spacing import FIELD, GAP, RADIUS, SPACE
 
+HERE = Path(__file__).resolve().parent
 SHEET = """
 QWidget {{ color: {ink}; }}
 QMainWindow, QDialog, QMessageBox {{ background: {window}; }}
@@ -43,8 +46,7 @@ QPlainTextEdit[role="notes"] {{ background: transparent; border: 1px solid trans
 QPlainTextEdit[role="notes"]:focus {{ background: {raised}; border: 2px solid {accent}; padding: 0; }}
 QLineEdit:disabled, QComboBox:disabled {{ color: {line}; background: {paper}; }}
 QComboBox::drop-down {{ border: none; width: 20px; }}
-QComboBox::down-arrow {{ image: none; width: 0; height: 0; border-left: 4px solid transparent;
-    border-right: 4px solid transparent; border-top: 5px solid {soft_ink}; margin-right: {gap}px; }}
+QComboBox::down-arrow {{ image: url("{arrow}"); width: 10px; height: 10px; }}
 QComboBox QAbstractItemView {{ background: {raised}; border: 1px solid {line};
     selection-background-color: {accent_soft}; selection-color: {ink}; outline: none; }}
 
@@ -113,6 +115,7 @@ def stylesheet(palette: Palette, base_size: float) -> str:
     return SHEET.format(
         **{name: value for name, value in vars(palette).items() if isinstance(value, str)},
         **{name: sizes[name] for name in ("title", "figure", "small")},
+        arrow=(HERE / f"arrow_{'dark' if palette.dark else 'light'}.svg").as_posix(),
         gap=GAP,
         space=SPACE,
         wide=2 * SPACE,
