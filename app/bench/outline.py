@@ -7,7 +7,6 @@ from itertools import pairwise
 from PySide6.QtCore import QPoint, Qt, QTimer, Signal
 from PySide6.QtGui import QKeyEvent
 from PySide6.QtWidgets import (
-    QApplication,
     QFrame,
     QHBoxLayout,
     QPushButton,
@@ -229,7 +228,7 @@ class Outline(QWidget):
 
     def keyPressEvent(self, event: QKeyEvent) -> None:
         """Escape in a form leads back to its row."""
-        focus = QApplication.focusWidget()
+        focus = self.window().focusWidget()
         if event.key() == Qt.Key.Key_Escape and focus is not None and self.folded_out.isAncestorOf(focus):
             self.focus_row()
         else:

@@ -46,7 +46,7 @@ def add(context: Context, list_pointer: str, after: int | None = None) -> Edit:
     index = len(entries) if after is None else after + 1
     entry = _new_entry(context, list_pointer, index)
     word = word_for(list_pointer)
-    label = f"Add {word} {entry['name']}" if "name" in entry else f"Add {word}"
+    label = f"Add {entry['name']}" if "name" in entry else f"Add {word}"
     return _insert(context, list_pointer, index, entry, None, label)
 
 
@@ -129,7 +129,8 @@ def called(context: Context, list_pointer: str, index: int) -> str:
     word = word_for(list_pointer)
     if "name" not in entry:
         return str(entry["kind"])
-    return entry["name"] if word == "segment" else f"{word} {entry['name']}"
+    told_by_name = word == "segment" or entry["name"].casefold().startswith(word)
+    return str(entry["name"]) if told_by_name else f"{word} {entry['name']}"
 
 
 def entries_of(context: Context, list_pointer: str) -> list[Any]:

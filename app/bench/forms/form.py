@@ -84,6 +84,7 @@ class Form(QWidget):
             if self._fields.indexOf(row) != index:
                 self._fields.removeWidget(row)
                 self._fields.insertWidget(index, row)
+                row.show()  # at once, so that the Tab key finds it
         self.rows = made
 
     def _new_row(self, spec: Spec) -> FieldRow:

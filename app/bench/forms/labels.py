@@ -30,7 +30,7 @@ def label_of(tree: dict[str, Any], spec: Spec, shown: str) -> str:
     part = part_called(tree, pointer)
     if pointer.endswith("/name"):
         return f"Rename {part} to {shown}"
-    if pointer.endswith("/position") and "gauge" in part:
+    if pointer.endswith("/position") and "/gauges/" in pointer:
         return f"Move {part} to {shown}"
     what = spec.label if spec.label.startswith(NAMES) else spec.label[:1].lower() + spec.label[1:]
     if not shown:
@@ -47,6 +47,7 @@ def part_called(tree: dict[str, Any], pointer: str) -> str:
         name, kind = value.get("name"), entry.group(2)[:-1]
         if name is None:
             return f"the {value.get('kind', kind)}"
-        return str(name) if kind == "segment" else f"{kind} {name}"
+        told_by_name = kind == "segment" or str(name).casefold().startswith(kind)
+        return str(name) if told_by_name else f"{kind} {name}"
     inside = re.sub(r"^/cases/\d+/", "", pointer)
     return next((name for end, name in PARTS if inside == end or inside.startswith(end + "/")), "the case")
