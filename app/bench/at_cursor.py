@@ -33,7 +33,7 @@ class AtCursor(QScrollArea):
         self.setHorizontalScrollBarPolicy(Qt.ScrollBarPolicy.ScrollBarAlwaysOff)
         self.readings = _Readings(document, sight, solution)
         self.setWidget(self.readings)
-        self.setMinimumWidth(100)
+        self.setMinimumWidth(150)
 
 
 class _Readings(Picture):

@@ -43,7 +43,7 @@ class Bench(QWidget):
         self.findings = FindingsPanel(document, sight, solution)
         self.time_bar = TimeBar(document, sight, solution)
         self._sight = sight
-        for picture, size in ((self.member, 130), (self.xt, 280), (self.profile, 150)):
+        for picture, size in ((self.member, 150), (self.xt, 280), (self.profile, 170)):
             picture.setMinimumSize(QSize(size, 160))
         self.grid = CrossGrid(
             [[self.member, self.xt, self.profile], [self.at_cursor, self.strips, self.findings]],

@@ -8,7 +8,7 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 
-from PySide6.QtCore import QPoint, QRect, QSize, Qt
+from PySide6.QtCore import QEvent, QPoint, QRect, QSize, Qt
 from PySide6.QtGui import QKeyEvent, QMouseEvent, QResizeEvent
 from PySide6.QtWidgets import QFrame, QWidget
 
@@ -63,6 +63,12 @@ class CrossGrid(QWidget):
 
     def resizeEvent(self, event: QResizeEvent) -> None:
         self._lay_out()
+
+    def event(self, event: QEvent) -> bool:
+        """A panel that needs more or less room than before says so by a request for layout."""
+        if event.type() == QEvent.Type.LayoutRequest:
+            self._lay_out()
+        return super().event(event)
 
     def _least(self, upright: bool) -> list[int]:
         def least(panel: QWidget) -> int:

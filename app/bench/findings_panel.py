@@ -28,7 +28,7 @@ class FindingsPanel(QFrame):
         super().__init__(parent)
         self._document, self._sight, self._solution = document, sight, solution
         self._shown: object = None
-        self.setMinimumWidth(150)
+        self.setMinimumWidth(170)
         self.setAccessibleName("Findings")
         outer = QVBoxLayout(self)
         outer.setContentsMargins(0, GAP, 0, GAP)

@@ -42,6 +42,9 @@ class MemberDrawing(Picture):
         metrics = QFontMetricsF(self.font())
         return replace(shared, gutter=float(round(metrics.horizontalAdvance("−000") + 8)), right=4.0)
 
+    def described(self) -> tuple[Any, ...]:
+        return (self.case,)
+
     def moving_key(self) -> tuple[Any, ...]:
         return (self.sight.time, self.sight.place, self.sight.selection, self.sight.quantity)
 

@@ -74,8 +74,14 @@ class Picture(QWidget):
     # What each picture gives ------------------------------------------------------------------------------------
 
     def resting_key(self) -> tuple[Any, ...]:
-        """Everything besides size, colours, case and result that the resting layer depends on."""
+        """Everything besides size, colours, axes and result that the resting layer depends on."""
         return ()
+
+    def described(self) -> tuple[Any, ...]:
+        """What the resting layer takes from the case at hand, and not from the result: no more than it shows, so that
+        an edit is not painted twice, once for the edit and once for its result."""
+        has = (self._whole_time(),) if self.has_time else ()
+        return (*has, whole_distance(self.case), self.case.gauges) if self.has_distance else has
 
     def moving_key(self) -> tuple[Any, ...]:
         """Everything that the moving layer depends on."""
@@ -191,7 +197,7 @@ class Picture(QWidget):
     def _whole_key(self) -> tuple[Any, ...]:
         sight, ratio = self.sight, self.devicePixelRatioF()
         looks = (self.size(), ratio, self.font(), palette(), self.units, self.greyed())
-        shared = (self.case, self.result, sight.time_range, sight.distance_range)
+        shared = (self.result, sight.time_range, sight.distance_range, self.described())
         return (*looks, *shared, *self.resting_key())
 
     def changeEvent(self, event: QEvent) -> None:

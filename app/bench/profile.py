@@ -48,6 +48,9 @@ class Profile(Picture):
         shared = margins_of(self.font())
         return replace(shared, gutter=14.0, right=14.0)
 
+    def described(self) -> tuple[Any, ...]:
+        return (*super().described(), tuple(limit_lines(self.case)))
+
     def resting_key(self) -> tuple[Any, ...]:
         return (self.sight.quantity,)
 

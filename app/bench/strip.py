@@ -49,6 +49,9 @@ class Strip(Picture):
     def kind(self) -> str:
         return self.name.partition(":")[0]
 
+    def described(self) -> tuple[Any, ...]:
+        return (*super().described(), self.case.load.kind)
+
     def margins(self) -> Margins:
         """Left and right as the x-t diagram has them; little above, and below only what the numbers need."""
         shared = margins_of(self.font())
@@ -140,14 +143,18 @@ class Strip(Picture):
         painter.restore()
 
     def _fill_between(self, painter: QPainter, drawn: list[Drawn], hue: str) -> None:
+        """A point a pixel and no smoothing: thousands of points filled smoothly took longer than all the rest."""
         first, second = drawn
-        x = np.concatenate((first.x, second.x[::-1]))
-        y = np.concatenate((first.y, second.y[::-1]))
+        left, right = max(first.x[0], second.x[0]), min(first.x[-1], second.x[-1])
+        x = np.arange(left, right, 1.0)
+        upper, lower = np.interp(x, first.x, first.y), np.interp(x, second.x, second.y)
         colour = QColor(hue)
         colour.setAlphaF(0.16)
+        painter.setRenderHint(QPainter.RenderHint.Antialiasing, False)
         painter.setPen(Qt.PenStyle.NoPen)
         painter.setBrush(colour)
-        painter.drawPolygon(polygon(x, y), Qt.FillRule.WindingFill)
+        shape = polygon(np.concatenate((x, x[::-1])), np.concatenate((upper, lower[::-1])))
+        painter.drawPolygon(shape, Qt.FillRule.WindingFill)
 
     def _draw_ticks(self, painter: QPainter, content: Content, plot: QRectF, time: Axis) -> None:
         """Small ticks from the top, the first two joined and named."""

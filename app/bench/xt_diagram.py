@@ -113,14 +113,15 @@ class XtDiagram(Picture):
         times = time.low + (np.arange(width) + 0.5) / width * (time.high - time.low)
         places = distance.low + (np.arange(height) + 0.5) / height * (distance.high - distance.low)
         top = scale_top(self.result, quantity, self.units)
-        values = np.ascontiguousarray(field_of(self.result, quantity).T)
+        columns = columns_under(fields.edges, places)
+        shown = np.flatnonzero(columns >= 0)
+        values = field_of(self.result, quantity)[:, columns[shown]]
         frames = np.interp(times, fields.time, np.arange(len(fields.time)))
         first = np.minimum(frames.astype(np.int64), len(fields.time) - 2)
-        share = (frames - first).astype(np.float32)
-        blended = values[:, first] * (1 - share) + values[:, first + 1] * share
-        columns = columns_under(fields.edges, places)
-        entries = entries_of(blended, top)[columns]
-        entries[columns < 0] = 255
+        share = (frames - first).astype(np.float32)[:, None]
+        before, after = values[first], values[first + 1]
+        entries = np.full((height, width), 255, dtype=np.uint16)
+        entries[shown] = entries_of(before + (after - before) * share, top).T
         return image_of(table_of(quantity, palette())[entries])
 
     def _draw_gauge_lines(self, painter: QPainter, plot: QRectF, distance: Axis) -> None:
