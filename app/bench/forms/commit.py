@@ -57,9 +57,14 @@ def _fault_of(document: Document, change: Callable[[Tree], None]) -> str | None:
     try:
         project_from_tree(tree, document.path.parent if document.path else None)
     except ProjectError as error:
-        text = error.problems[0].sentence
-        return text[:1].upper() + text[1:] + ("" if text.endswith(".") else ".")
+        return sentence_of(error)
     return None
+
+
+def sentence_of(error: ProjectError) -> str:
+    """The first fault of a project that is not valid, as a sentence."""
+    text = error.problems[0].sentence
+    return text[:1].upper() + text[1:] + ("" if text.endswith(".") else ".")
 
 
 def put_check(document: Document, spec: CheckSpec, on: bool) -> bool:

@@ -8,6 +8,7 @@ from PySide6.QtCore import Qt, QTimer
 from PySide6.QtGui import QKeyEvent
 from PySide6.QtWidgets import QLabel, QLineEdit, QWidget
 
+from app.bench.forms.bounds import breach_of
 from app.bench.forms.commit import put_number
 from app.bench.forms.field_row import FieldRow
 from app.bench.forms.spec import NumberSpec
@@ -15,7 +16,6 @@ from app.document import Document
 from app.look import font
 from app.unit_text import UnitError, value_of
 from app.units import Units
-from solver.model.quantity import Bounds
 
 #: Pause in typing after which a number is tried, ms.
 PAUSE = 250
@@ -90,7 +90,7 @@ class NumberRow(FieldRow):
             value = self._read()
         except UnitError:
             return
-        if not _out_of(self.spec.bounds, value):
+        if not breach_of(self.spec, value, self._units):
             self._put(value, live=True)
 
     def _enter(self) -> None:
@@ -105,9 +105,9 @@ class NumberRow(FieldRow):
         except UnitError as error:
             self.document.reject(self.spec.pointer, text, str(error))
             return
-        fault = _out_of(self.spec.bounds, value)
-        if fault:
-            self.document.reject(self.spec.pointer, text, self._sentence(fault))
+        breach = breach_of(self.spec, value, self._units)
+        if breach:
+            self.document.reject(self.spec.pointer, text, breach)
         elif self._put(value, live=False):
             self.edit.setModified(False)
             self._unit = "" if self.spec.whole else self._units.unit(self.spec.dimension, self.spec.value)
@@ -161,28 +161,8 @@ class NumberRow(FieldRow):
             self.edit.style().unpolish(self.edit)
             self.edit.style().polish(self.edit)
 
-    def _sentence(self, fault: tuple[str, float]) -> str:
-        word, bound = fault
-        shown = f"{bound:g}" if self.spec.whole else self._units.show(bound, self.spec.dimension)
-        return f"Must be {word} {shown}."
-
 
 def _same(one: float | None, other: float | None) -> bool:
     if one is None or other is None:
         return one is other
     return isclose(one, other, rel_tol=1e-12)
-
-
-def _out_of(bounds: Bounds, value: float | None) -> tuple[str, float] | None:
-    """The bound that a value breaks, in words."""
-    if value is None:
-        return None
-    if bounds.above is not None and value <= bounds.above:
-        return "more than", bounds.above
-    if bounds.at_least is not None and value < bounds.at_least:
-        return "at least", bounds.at_least
-    if bounds.below is not None and value >= bounds.below:
-        return "less than", bounds.below
-    if bounds.at_most is not None and value > bounds.at_most:
-        return "at most", bounds.at_most
-    return None
