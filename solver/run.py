@@ -227,7 +227,7 @@ class March:
 
     def _came_to_rest(self) -> bool:
         """Whether a run without a set duration may end: the member moves no more, and no ram is about to fall on it."""
-        if self.chain.case.run.duration is not None:
+        if self.chain.case.run.duration is not None or self.steps * self.chain.dt < _load_end(self.chain):
             return False
         head = self.chain.head
         fastest = float(np.max(self.extremes.speed[head:]))
@@ -272,6 +272,14 @@ def _longest(chain: Chain) -> float:
     member = chain.axial[chain.head :] > 0
     c = np.sqrt(chain.axial[chain.head :][member] / chain.line_mass[chain.head :][member])
     passage = float(np.sum(chain.length[chain.head :][member] / c))
+    return max(40 * passage, 20 * passage + _load_end(chain))
+
+
+def _load_end(chain: Chain) -> float:
+    """Time at which the load is over (of a decay: down to 0.1 % of its peak), s."""
     load = chain.case.load
-    pulse_end = end_time(load) if isinstance(load, Pulse | History) else 0.0
-    return max(40 * passage, 20 * passage + (pulse_end if np.isfinite(pulse_end) else 5 * load.duration))
+    if not isinstance(load, Pulse | History):
+        return 0.0
+    if isinstance(load, Pulse) and load.shape == "decay":
+        return load.start + 7 * load.duration
+    return end_time(load)

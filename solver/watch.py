@@ -8,7 +8,7 @@ import numpy as np
 
 from solver.errors import SolveError
 from solver.model.project import Case
-from solver.numerics.balance import residual_of
+from solver.numerics.balance import residual_of, unreal_share
 from solver.numerics.chain import segments_of
 from solver.numerics.stability import SMALLEST_STRETCH
 
@@ -91,6 +91,9 @@ def refuse_bad_state(march: March) -> None:
             )
     rows = np.concatenate([f[3] for f in march.frames])
     share, frame = residual_of(march.start_row, rows)
+    sharp, sharp_frame = unreal_share(march.start_row, rows)
+    if sharp > share:
+        share, frame = sharp, sharp_frame
     if share > REFUSED:
         place = chain.position[int(np.argmax(np.abs(motion.v)))]
         when = frame * march.stride * chain.dt

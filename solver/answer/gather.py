@@ -163,23 +163,39 @@ def _member_links(chain: Chain) -> NDArray[np.int64]:
 def _envelope(blow: Blow) -> Envelope:
     chain, ext = blow.chain, blow.extremes
     links = _member_links(chain)
-    area = chain.area[links]
+    area, reach = chain.area[links], _yield_reach(blow)[links]
     moved = ext.travel - blow.rest
     return Envelope(
         position=_read_only((chain.position[links] + chain.position[links + 1]) / 2),
-        lowest_stress=_read_only(ext.low[links] / area),
+        lowest_stress=_read_only(np.maximum(ext.low[links], -reach) / area),
         lowest_stress_time=_read_only(ext.low_step[links] * chain.dt),
-        highest_stress=_read_only(ext.high[links] / area),
+        highest_stress=_read_only(np.minimum(ext.high[links], reach) / area),
         highest_stress_time=_read_only(ext.high_step[links] * chain.dt),
         max_velocity=_read_only(np.maximum(ext.speed[links], ext.speed[links + 1])),
         max_displacement=_read_only(np.maximum(moved[links], moved[links + 1])),
     )
 
 
+def _yield_reach(blow: Blow) -> Array:
+    """Largest force that the law of each link can show, N: infinite but for elastic-plastic links.
+
+    The force that marches is a mean over a step, and where slip sets in at once it lies outside the yield limit once.
+    """
+    chain, rod = blow.chain, blow.state.rod
+    reach = np.full(len(chain.axial), np.inf)
+    for stretch in chain.stretches:
+        if stretch.material.law.kind == "elastic_plastic":
+            at = slice(stretch.start, stretch.stop)
+            reach[at] = rod.par[0, at] + rod.par[1, at] * rod.state[1, at]
+    return reach
+
+
 def _fields(blow: Blow) -> Fields:
     chain, links = blow.chain, blow.columns
     force, velocity, displacement, _ = blow.frames
     frames = len(force)
+    reach = _yield_reach(blow)[links].astype(np.float32)
+    force = np.clip(force, -reach, reach)
     edges = np.append(chain.position[links], chain.position[links[-1] + 1])
     return Fields(
         time=_read_only(np.arange(frames) * blow.stride * chain.dt),
@@ -299,6 +315,20 @@ def _crack_openings(blow: Blow) -> dict[str, float]:
     return openings
 
 
+def _ram_returns(blow: Blow) -> float | None:
+    """Time at which a rigid ram that gravity brings back will strike again, s; `None` where none is in the air."""
+    chain, motion = blow.chain, blow.state.motion
+    if not chain.train or chain.gravity == 0.0 or blow.state.bounds.train_state[0, 2] > 0.0:
+        return None
+    a = chain.train[0].link
+    gap = float(blow.at_end[a + 1] - blow.at_end[a])
+    rising = float(motion.v[a + 1] - motion.v[a]) if not blow.settled else -float(motion.v[a])
+    if gap <= 0.0:
+        return None
+    flight = (rising + np.sqrt(max(rising**2 + 2 * chain.gravity * gap, 0.0))) / chain.gravity
+    return float((blow.steps - 1) * chain.dt + flight)
+
+
 def _largest_plastic_strain(blow: Blow) -> tuple[float, float]:
     """Largest plastic strain along the chain and its place (m)."""
     largest, place = 0.0, 0.0
@@ -332,6 +362,12 @@ def _warnings(blow: Blow, residual: float, at_rest: bool, finished: bool) -> tup
         told.append(
             "The member does not come to rest by itself; "
             f"the run was ended after {(blow.steps - 1) * chain.dt * 1000:.4g} ms."
+        )
+    returns = _ram_returns(blow)
+    if finished and returns is not None:
+        told.append(
+            f"The ram is in the air at the end and falls again at about {returns:.3g} s: "
+            "give a longer duration to see that blow too."
         )
     if case.ground is not None:
         bands = list(bands_of(case.ground, case.member.length))

@@ -3,31 +3,33 @@
 from __future__ import annotations
 
 from collections.abc import Iterator, Sequence
-from dataclasses import dataclass
+from difflib import get_close_matches
 
 from solver.model.member import Segment
+from solver.model.problem import Problem, step
 from solver.model.project import Case, Project
-
-
-@dataclass(frozen=True)
-class Problem:
-    """One thing wrong: `pointer` is a JSON pointer into the project, `sentence` says what and what would be right."""
-
-    pointer: str
-    sentence: str
-
-    def __str__(self) -> str:
-        return f"{self.pointer or '/'}: {self.sentence}"
+from solver.model.quantity import SI_UNITS
 
 
 def problems_of(project: Project) -> list[Problem]:
     """All breaches between parts, in the order of the file."""
-    found = list(_repeated("/materials", "materials", [m.name for m in project.materials]))
+    found = list(_display_units(project))
+    found += _repeated("/materials", "materials", [m.name for m in project.materials])
     found += _repeated("/cases", "cases", [c.name for c in project.cases])
     known = {m.name for m in project.materials}
     for index, case in enumerate(project.cases):
         found += _case(f"/cases/{index}", case, known)
     return found
+
+
+def _display_units(project: Project) -> Iterator[Problem]:
+    """Which quantities have a unit of their own; what a unit's name means is the screen's to know."""
+    chosen = project.display_units
+    known = ["system", *SI_UNITS]
+    for key in () if isinstance(chosen, str) else chosen:
+        if key not in known:
+            close = get_close_matches(key, known, n=1) or [", ".join(known)]
+            yield Problem(f"/display_units{step(key)}", f"is no quantity that has a unit (known: {close[0]})")
 
 
 def _case(at: str, case: Case, known: set[str]) -> Iterator[Problem]:

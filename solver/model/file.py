@@ -11,7 +11,9 @@ from typing import Any
 from pydantic import ValidationError
 from pydantic_core import ErrorDetails
 
-from solver.model.checks import Problem, problems_of
+from solver.model.checks import problems_of
+from solver.model.json_text import tree_of_text
+from solver.model.problem import Problem, shown, step
 from solver.model.project import FORMAT, VERSION, Project
 from solver.model.quantity import Described
 
@@ -40,7 +42,8 @@ def load_project(path: str | Path) -> Project:
     except OSError as error:
         raise ProjectError([Problem("", f"cannot be read: {error.strerror or error}")], str(path)) from None
     except UnicodeDecodeError as error:
-        raise ProjectError([Problem("", f"is not UTF-8 text (byte {error.start})")], str(path)) from None
+        sentence = f"is not UTF-8 text (byte {error.start} fits no letter): save it in UTF-8"
+        raise ProjectError([Problem("", sentence)], str(path)) from None
     try:
         return parse_project(text, path.parent)
     except ProjectError as error:
@@ -52,13 +55,9 @@ def parse_project(text: str, folder: Path | None = None) -> Project:
 
     Raises `ProjectError`.
     """
-    try:
-        tree = json.loads(text, object_pairs_hook=_unique_keys, parse_constant=_no_constant)
-    except json.JSONDecodeError as error:
-        place = f"is not valid JSON at line {error.lineno}, column {error.colno}: {error.msg}"
-        raise ProjectError([Problem("", place)]) from None
-    except RecursionError:
-        raise ProjectError([Problem("", "is nested too deeply to be a project")]) from None
+    tree, problems = tree_of_text(text)
+    if problems:
+        raise ProjectError(problems)
     return project_from_tree(tree, folder)
 
 
@@ -81,29 +80,23 @@ def project_to_text(project: Project) -> str:
     return json.dumps(project.model_dump(mode="json"), indent=2, ensure_ascii=False) + "\n"
 
 
-def _unique_keys(pairs: list[tuple[str, Any]]) -> dict[str, Any]:
-    tree: dict[str, Any] = {}
-    for key, value in pairs:
-        if key in tree:
-            raise ProjectError([Problem("", f"the key '{key}' stands twice in one object")])
-        tree[key] = value
-    return tree
-
-
-def _no_constant(name: str) -> float:
-    raise ProjectError([Problem("", f"'{name}' is no number that a project may hold")])
-
-
 def _current_version(tree: Any) -> dict[str, Any]:
     if not isinstance(tree, dict):
         raise ProjectError(
             [Problem("", "a project is a JSON object, with 'format', 'version', 'title' and 'cases'")]
         )
-    if tree.get("format") != FORMAT:
-        raise ProjectError([Problem("/format", f"must be '{FORMAT}': this is no Striketrace project")])
-    version = tree.get("version")
+    for key, tells in (("format", f"'{FORMAT}'"), ("version", f"a number up to {VERSION}")):
+        if key not in tree:
+            raise ProjectError([Problem(f"/{key}", f"the key is missing: it must be {tells}")])
+    if tree["format"] != FORMAT:
+        sentence = f"must be '{FORMAT}', not {shown(tree['format'])}: this is no Striketrace project"
+        raise ProjectError([Problem("/format", sentence)])
+    version = tree["version"]
     if not isinstance(version, int) or isinstance(version, bool) or version < 1:
-        raise ProjectError([Problem("/version", f"must be a whole number from 1 to {VERSION}")])
+        sentence = (
+            f"must be a whole number from 1 on (this program knows up to {VERSION}), not {shown(version)}"
+        )
+        raise ProjectError([Problem("/version", sentence)])
     if version > VERSION:
         sentence = (
             f"version {version} was made by a newer version of Striketrace; this one reads up to {VERSION}"
@@ -157,8 +150,8 @@ def _pointer(loc: tuple[int | str, ...], tree: Any) -> tuple[str, Any]:
             parent, node = node, None
         else:
             continue
-        parts.append(str(item).replace("~", "~0").replace("/", "~1"))
-    return "".join(f"/{part}" for part in parts), parent
+        parts.append(step(item))
+    return "".join(parts), parent
 
 
 def _is_type_name(item: int | str) -> bool:
@@ -191,13 +184,13 @@ def _sentence(detail: ErrorDetails, parent: Any) -> str:
     if kind == "extra_forbidden":
         return "is not a key that is known here" + _near(str(detail["loc"][-1]), parent)
     if kind == "greater_than":
-        return f"must be more than {context['gt']:g}, not {given!r}"
+        return f"must be more than {context['gt']:g}, not {shown(given)}"
     if kind == "greater_than_equal":
-        return f"must be at least {context['ge']:g}, not {given!r}"
+        return f"must be at least {context['ge']:g}, not {shown(given)}"
     if kind == "less_than_equal":
-        return f"must be at most {context['le']:g}, not {given!r}"
+        return f"must be at most {context['le']:g}, not {shown(given)}"
     if kind in ("literal_error", "enum"):
-        return f"must be {context['expected']}, not {given!r}"
+        return f"must be {context['expected']}, not {shown(given)}"
     if kind == "union_tag_invalid":
         return f"'{context['tag']}' is not known here; possible are {context['expected_tags']}"
     if kind == "union_tag_not_found":
@@ -211,16 +204,20 @@ def _sentence(detail: ErrorDetails, parent: Any) -> str:
     if kind == "value_error":
         return str(context["error"])
     if kind in SENTENCES:
-        shown = "" if kind == "missing" or isinstance(given, dict | list) else f", not {given!r}"
-        return SENTENCES[kind] + shown
+        without = kind == "missing" or isinstance(given, dict | list)
+        return SENTENCES[kind] + ("" if without else f", not {shown(given)}")
     return detail["msg"]
 
 
 def _near(key: str, parent: Any) -> str:
-    """A word on the key that was probably meant."""
-    names = {name for model in _models() for name in model.model_fields}
-    close = difflib.get_close_matches(key, sorted(names - set(parent or ())), n=1, cutoff=0.75)
-    return f" (did you mean '{close[0]}'?)" if close else ""
+    """A word on the key that was probably meant: one of the description that the keys beside it belong to."""
+    given = set(parent or ())
+    others = (set(model.model_fields) for model in _models() if key not in model.model_fields)
+    fields = max(others, key=lambda names: len(names & given))
+    close = difflib.get_close_matches(key, sorted(fields), n=1, cutoff=0.75)
+    if not close:
+        return ""
+    return f" ('{close[0]}' stands beside it)" if close[0] in given else f" (did you mean '{close[0]}'?)"
 
 
 def _models() -> list[Any]:

@@ -68,16 +68,20 @@ def read_history(name: str, folder: Path | None) -> Samples:
     try:
         with path.open(newline="", encoding="utf-8-sig") as stream:
             for number, row in enumerate(csv.reader(stream), start=1):
+                if number == 1 and _numbers(row):
+                    raise ValueError(
+                        f"line 1 of the history file '{name}' is taken for the header, but holds numbers: "
+                        "put a header row above them"
+                    )
                 if number == 1 or not any(cell.strip() for cell in row):
                     continue
-                try:
-                    time, value = (float(cell) for cell in row[:2])
-                except ValueError:
+                point = _numbers(row)
+                if len(point) != 2:
                     raise ValueError(
                         f"line {number} of the history file '{name}' needs two numbers, time in s and value"
-                    ) from None
-                times.append(time)
-                values.append(value)
+                    )
+                times.append(point[0])
+                values.append(point[1])
     except (OSError, UnicodeDecodeError, csv.Error) as error:
         reason = getattr(error, "strerror", None) or str(error)
         raise ValueError(f"the history file '{name}' cannot be read: {reason}") from None
@@ -85,3 +89,14 @@ def read_history(name: str, folder: Path | None) -> Samples:
         return Samples.checked(times, values)
     except ValueError as error:
         raise ValueError(f"in the history file '{name}': {error}") from None
+
+
+def _numbers(row: Sequence[str]) -> list[float]:
+    """The numbers of a row, empty cells at its end left out; none where one of the cells is no number."""
+    cells = [cell.strip() for cell in row]
+    while cells and not cells[-1]:
+        cells.pop()
+    try:
+        return [float(cell) for cell in cells]
+    except ValueError:
+        return []

@@ -31,7 +31,7 @@ LAW_NUMBERS = {
 def rod_of(chain: Chain, drag: float = 0.0) -> Rod:
     """Links, masses and what acts implicitly on nodes. `drag` (1/s): damping in proportion to mass, for settling."""
     dt, links = chain.dt, len(chain.axial)
-    par, state = np.zeros((3, links)), np.zeros((3, links))
+    par, state = np.zeros((3, links)), np.zeros((4, links))
     for stretch in chain.stretches:
         _law_parameters(chain, stretch, par)
     special = np.flatnonzero((chain.damping > 0) | (chain.spring > 0))

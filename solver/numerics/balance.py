@@ -108,3 +108,19 @@ def residual_of(start: Array, rows: Array) -> tuple[float, int]:
     scale = float(max(energies[:, staying].sum(axis=1).max(), np.abs(change[:, coming]).max(), 1e-300))
     row = int(np.argmax(off))
     return float(off[row]) / scale, row
+
+
+def unreal_share(start: Array, rows: Array) -> tuple[float, int]:
+    """How far the kinetic energy exceeds all that came in, or the elastic energy falls below nothing, and the row.
+
+    A wave of two steps' length, which no mesh carries, has no part in the balance of half steps; here it shows.
+    """
+    kinetic, elastic = LEDGER.index("kinetic"), LEDGER.index("elastic_member")
+    coming = [LEDGER.index(name) for name in CAME_IN]
+    staying = [i for i in range(len(LEDGER)) if i not in coming]
+    there = float(np.abs(start[staying]).sum()) + np.maximum.accumulate(
+        np.maximum(rows[:, coming] - start[coming], 0.0).sum(axis=1)
+    )
+    off = np.maximum(rows[:, kinetic] - there, -rows[:, elastic])
+    row = int(np.argmax(off))
+    return float(max(off[row], 0.0)) / max(float(there.max()), 1e-300), row

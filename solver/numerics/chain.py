@@ -192,8 +192,10 @@ def _time_to(case: Case, times: list[SegmentSteps], position: float) -> float:
 
 def _wanted(case: Case, total: float) -> int:
     """Elements along the member: fine enough for the pulse, and for a mass that strikes without a cushion."""
-    wanted = FEWEST
     load = case.load
+    yields = any(case.material(s.material).law.kind == "elastic_plastic" for s in segments_of(case)[0])
+    # the energy of a yield that sets in at once closes in proportion to the step
+    wanted = 1000 if yields else FEWEST
     if load.kind == "pulse" and load.shape != "decay":
         wanted = max(wanted, int(np.ceil(40 * total / load.duration)))
     if isinstance(load, Drop) and load.ram_mass is not None and load.cushion is None:
@@ -328,6 +330,10 @@ def _finished(
     if isinstance(case.load, Drop | Striker):
         velocity[: head - (1 if len(train) == 2 else 0)] = impact_velocity(case.load, mass, head)
     velocity[head:] = case.run.initial_velocity or 0.0
+    if end.kind == "fixed":
+        velocity[-1] = 0.0
+    if getattr(case.load, "quantity", "") == "velocity":
+        velocity[head] = 0.0
     rods = axial > 0
     # transit times of a taper are those of its middles: hold the step to the quickest element
     quickest = float(np.min(length[rods] * np.sqrt(line_mass[rods] / axial[rods])))

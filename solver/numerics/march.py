@@ -83,23 +83,27 @@ def driving_force(rod, u, v, w, force, dt):
 
 
 @kernel
-def special_nodes(rod, u, v, w, drag, gain):
-    """Nodes with a spring or dashpot to fixed ground, both implicit (their `push` knows it)."""
+def special_nodes(rod, u, v, w, drag, gain, step):
+    """Nodes with a spring or dashpot to fixed ground, both implicit (their `push` knows it).
+
+    The first step is half a step long for what moves already at time 0, and so is the dashpot's part in it.
+    """
+    share = 0.5 if step == 0 else 1.0
     if len(rod.inertia):
         return
     for s in range(len(rod.special)):
         i = rod.special[s]
-        pull = rod.spring[s] * u[i] + (rod.dashpot[s] + drag * rod.mass[i]) * v[i]
+        pull = rod.spring[s] * u[i] + (share * rod.dashpot[s] + drag * rod.mass[i]) * v[i]
         w[i] += (1.0 - gain) * v[i] - rod.push[i] * pull
 
 
 @kernel
-def dashpot_losses(rod, v, w):
-    """Power that the dashpots to fixed ground take, W."""
+def dashpot_losses(rod, v, w, step):
+    """Power that the dashpots to fixed ground take, W; in the first step see `special_nodes`."""
     taken = 0.0
     for s in range(len(rod.special)):
         mean = 0.5 * (v[rod.special[s]] + w[rod.special[s]])
-        taken += rod.dashpot[s] * mean * mean
+        taken += rod.dashpot[s] * mean * (mean if step > 0 else 0.5 * w[rod.special[s]])
     return taken
 
 
@@ -107,8 +111,9 @@ def dashpot_losses(rod, v, w):
 def joints(bounds, push, u, v, w, sums, dt, note, step):
     """Joints that touch or pull within this step get the force that just closes or stops them.
 
-    A force acts half a step on either side of its time. So one that was there a step ago still acts with its half
-    now, even where the faces part: that is its mean over both sides, and leaves waves clean at Courant number 1.
+    The force of a contact lives on half steps, like every local law: the mean of its values before and after acts now.
+    So faces that part still feel half of what held them, and no wave of two steps' length is left behind.
+    `joint_force` holds the value of the last half step; the new one is never a pull (nor, at a slack's end, a push).
     """
     for j in range(len(bounds.joints)):
         a = bounds.joints[j]
@@ -123,7 +128,7 @@ def joints(bounds, push, u, v, w, sums, dt, note, step):
         w[a + 1] += push[a + 1] * force
         sums[IMPACT] += 0.5 * dt * force * (rel + w[a] - w[a + 1])
         before = bounds.joint_force[j] != 0.0
-        bounds.joint_force[j] = force if over != 0.0 else 0.0
+        bounds.joint_force[j] = 2.0 * (force - held)
         if over != 0.0 and not before:
             remember(note, EVENT_JOINT_CLOSED, a, step)
         elif over == 0.0 and before:
@@ -132,7 +137,8 @@ def joints(bounds, push, u, v, w, sums, dt, note, step):
 
 @kernel
 def wall(bounds, push, u, v, w, sums, dt, note, step):
-    """A rigid wall beyond a gap, met and left as a joint is; `wall` holds the gap and the force of the last step."""
+    """A rigid wall beyond a gap, met and left as a joint is; `wall` holds the gap and the force of the last half
+    step."""
     last = len(u) - 1
     held = 0.5 * bounds.wall[1]
     over = max(u[last] + dt * (w[last] - push[last] * held) - bounds.wall[0], 0.0)
@@ -141,7 +147,7 @@ def wall(bounds, push, u, v, w, sums, dt, note, step):
     sums[IMPACT] += 0.5 * dt * force * (v[last] + w[last])
     if over > 0.0 and bounds.wall[1] == 0.0:
         remember(note, EVENT_WALL, last, step)
-    bounds.wall[1] = force if over > 0.0 else 0.0
+    bounds.wall[1] = 2.0 * (force - held)
 
 
 @kernel
@@ -232,7 +238,7 @@ def march(rod, ground, bounds, motion, ext, rec, sums, load, first, count, strid
             if not driven:
                 w[head] += push[head] * load[n]
         if special:
-            special_nodes(rod, u, v, w, drag, gain)
+            special_nodes(rod, u, v, w, drag, gain, step)
         if shafts:
             shaft_nodes(ground, push, v, w, sums, dt)
         if toes:
@@ -258,7 +264,7 @@ def march(rod, ground, bounds, motion, ext, rec, sums, load, first, count, strid
             train_step(bounds, push, u, v, w, sums, dt, note, step)
         sums[PULL_BEFORE], sums[PULL] = sums[PULL], pull
         if special:
-            sums[DASHPOTS] += dashpot_losses(rod, v, w) * dt
+            sums[DASHPOTS] += dashpot_losses(rod, v, w, step) * dt
         sums[WORK] += pull * 0.5 * (v[head] + w[head]) * dt
         if gauges:
             read_gauges(rec, u, v, w, force, rest, dt, n)

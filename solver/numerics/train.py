@@ -127,8 +127,8 @@ def advance(links, kinds, pars, states, forces, u, v, w, push, dt):
         rel = w[a] - w[a + 1]
         if kinds[t] == 0:
             lost += 0.5 * dt * forces[t] * (states[t, 3] + rel)
-            # faces that part keep half of their last force for this one step (see the joints)
-            states[t, 2] = forces[t] if forces[t] > 0.5 * states[t, 2] else 0.0
+            # the force of the coming half step, as in the joints
+            states[t, 2] = max(2.0 * forces[t] - states[t, 2], 0.0)
         else:
             states[t, 0] += 0.5 * dt * (states[t, 3] + rel)
             states[t, 2] = cushion_force(states[t, 0], pars[t, 0], pars[t, 1], states[t, 1], pars[t, 2])

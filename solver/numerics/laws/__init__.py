@@ -6,5 +6,5 @@ elastic range, or -1;
 `stored_and_lost(u, v, stiff, par, state, force, start, stop, dt)` returns the energy stored and the energy
 dissipated in the block (J), from the states alone.
 
-`stiff` is EA/L of each link; `par` and `state` have shape (3, links); their rows mean what the law says.
+`stiff` is EA/L of each link; `par` has shape (3, links), `state` (4, links); their rows mean what the law says.
 """

@@ -1,7 +1,7 @@
 """Brittle in tension: elastic to the strength, then a crack that carries compression only.
 
 `par[0]` tensile strength as a force (N). `state[0]` 1 once cracked, `state[1]` largest opening (m), `state[2]` the
-energy that the crack set free (J).
+energy that the crack set free (J), `state[3]` what its closing and opening within a step owe to the balance (J).
 """
 
 from solver.numerics.compiled import kernel
@@ -14,6 +14,10 @@ def force(u, v, stiff, par, state, force, start, stop, dt):
         d = u[i + 1] - u[i]
         n = stiff[i] * d
         if state[0, i] > 0.0:
+            before = d - dt * (v[i + 1] - v[i])
+            if before * d < 0.0:
+                # met or parted within the step, where the force acts as if it were linear over it
+                state[3, i] += 0.5 * stiff[i] * before * d * (1.0 if d > 0.0 else -1.0)
             if d > 0.0:
                 state[1, i] = max(state[1, i], d)
                 n = 0.0
@@ -34,6 +38,6 @@ def stored_and_lost(u, v, stiff, par, state, force, start, stop, dt):
     stored = 0.0
     lost = 0.0
     for i in range(start, stop):
-        stored += 0.5 * force[i] * force[i] / stiff[i]
+        stored += 0.5 * force[i] * force[i] / stiff[i] + state[3, i]
         lost += state[2, i]
     return stored, lost
