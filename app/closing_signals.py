@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import os
 import signal
 from collections.abc import Callable
 from types import FrameType
@@ -12,22 +13,23 @@ LOOK = 200
 
 
 class ClosingSignals:
-    """Takes the two signals over from the start of the program on; before there is a window, they are remembered."""
+    """Takes the two signals over from the start of the program on; before there is a window, they end it at once."""
 
     def __init__(self) -> None:
-        self.came = False
         self._close: Callable[[], Any] | None = None
         self._before: dict[int, Any] = {}
         for number in (signal.SIGINT, signal.SIGTERM):
             self._before[number] = signal.signal(number, self._take)
 
     def _take(self, _number: int, _frame: FrameType | None) -> None:
-        self.came = True
-        if self._close is not None:
-            self._close()
+        if self._close is None:
+            os._exit(
+                0
+            )  # nothing is open yet, and whoever starts a program by mistake does not want to wait for it
+        self._close()
 
     def close_with(self, close: Callable[[], Any]) -> None:
-        """Call this when a signal comes, and now if one has come already."""
+        """Call this when a signal comes."""
         from PySide6.QtCore import QCoreApplication, QTimer
 
         self._close = close
@@ -35,8 +37,6 @@ class ClosingSignals:
         timer.setInterval(LOOK)
         timer.timeout.connect(_nothing)
         timer.start()
-        if self.came:
-            QTimer.singleShot(0, close)
 
     def restore(self) -> None:
         """Give the signals back to whoever had them."""
