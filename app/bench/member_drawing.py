@@ -7,16 +7,18 @@ from dataclasses import replace
 from typing import Any
 
 import numpy as np
-from PySide6.QtCore import QLineF, QPointF, QRectF, Qt
-from PySide6.QtGui import QColor, QFontMetricsF, QMouseEvent, QPainter, QRegion
+from PySide6.QtCore import QEvent, QLineF, QPointF, QRectF, Qt
+from PySide6.QtGui import QColor, QFontMetricsF, QKeyEvent, QMouseEvent, QPainter, QRegion
 
 from app.bench.axes import Axis, Margins, margins_of
 from app.bench.axis_drawing import crisp, distance_ticks, in_units
 from app.bench.colouring import columns_under, entries_of, image_of, scale_top, table_of
 from app.bench.field_values import along_member
 from app.bench.glyphs import pen, pointer_right
-from app.bench.lettering import RIGHT, fitted, put, put_on, spread
+from app.bench.lettering import RIGHT, fitted, in_lines, put, put_on, spread
 from app.bench.load_train import blocks_of, draw_drop, draw_pulse
+from app.bench.member_drag import MemberDrag
+from app.bench.member_handles import Handle, handles_of
 from app.bench.member_shapes import Piece, Pieces, pieces_of
 from app.bench.picture import Picture
 from app.bench.surroundings_drawing import draw_attachments, draw_far_end, draw_ground, ground_bands
@@ -26,6 +28,9 @@ from solver.model.load import Drop, History, Pulse
 
 #: Where the member's middle stands, as a share of the plot's width: gauges' names left of it, layers' names right.
 CENTRE_SHARE = 0.54
+#: Pixels from a boundary within which it can be taken hold of.
+REACH = 5.0
+DRAG_TIP = "Drag it, in tidy steps or with Control freely. Esc takes it back."
 
 
 class MemberDrawing(Picture):
@@ -35,6 +40,8 @@ class MemberDrawing(Picture):
         super().__init__(*args, **named)
         self.setAccessibleName("Member")
         self.setMouseTracking(True)
+        self._drag: MemberDrag | None = None
+        self._pointed_at: Handle | None = None
 
     def margins(self) -> Margins:
         """Left only what the numbers of the distance need; above and below as all pictures in the row."""
@@ -46,7 +53,15 @@ class MemberDrawing(Picture):
         return (self.case,)
 
     def moving_key(self) -> tuple[Any, ...]:
-        return (self.sight.time, self.sight.place, self.sight.selection, self.sight.quantity)
+        told = self._drag.told if self._drag else ""
+        return (
+            self.sight.time,
+            self.sight.place,
+            self.sight.selection,
+            self.sight.quantity,
+            told,
+            self._pointed_at,
+        )
 
     def centre(self) -> float:
         plot = self.plot()
@@ -115,6 +130,7 @@ class MemberDrawing(Picture):
             y = crisp(axis.at(self.sight.place))
             painter.setPen(pen(palette().ink, 1.0, Qt.PenStyle.DotLine))
             painter.drawLine(QLineF(plot.left(), y, plot.right() + 4, y))
+        self._draw_handle(painter, plot, axis)
         painter.restore()
 
     def _draw_body(self, painter: QPainter, plot: QRectF, axis: Axis, pieces: Pieces) -> None:
@@ -192,6 +208,40 @@ class MemberDrawing(Picture):
             if block.pointer == chosen:
                 painter.drawRect(block.box.adjusted(-1, -1, 1, 1))
 
+    def _draw_handle(self, painter: QPainter, plot: QRectF, axis: Axis) -> None:
+        """The line that is pointed at or dragged, and what the drag does."""
+        handle = self._drag.handle if self._drag and self._drag.told else self._pointed_at
+        if handle is None:
+            return
+        current = next(
+            (h for h in handles_of(self.case) if (h.kind, h.index) == (handle.kind, handle.index)), handle
+        )
+        accent = QColor(palette().accent)
+        y = axis.at(current.place) if current.kind != "drop" else plot.top() + 2
+        if current.kind != "drop":
+            painter.setPen(pen(palette().accent, 2.0))
+            painter.drawLine(QLineF(plot.left() + 2, y, plot.right(), y))
+            painter.setBrush(accent)
+            painter.drawRoundedRect(QRectF(plot.right() - 18, y - 3, 14, 6), 3, 3)
+        if self._drag and self._drag.told:
+            line = QFontMetricsF(painter.font()).height()
+            words = self._drag.told
+            lines = in_lines(words, painter.font(), plot.width() - 8, 3)
+            top = (
+                y - (len(lines) + 0.4) * line
+                if y - (len(lines) + 0.4) * line > plot.top()
+                else y + 0.4 * line
+            )
+            for row, text in enumerate(lines):
+                put_on(
+                    painter,
+                    plot.left() + 4,
+                    top + (row + 0.5) * line,
+                    text,
+                    palette().accent,
+                    palette().paper,
+                )
+
     # Selecting --------------------------------------------------------------------------------------------------
 
     def part_at(self, position: QPointF) -> str | None:
@@ -223,7 +273,64 @@ class MemberDrawing(Picture):
         return next((b.pointer for b in bands if b.top <= place <= b.bottom), None)
 
     def mousePressEvent(self, event: QMouseEvent) -> None:
-        part = self.part_at(event.position()) if event.button() == Qt.MouseButton.LeftButton else None
+        left = event.button() == Qt.MouseButton.LeftButton
+        handle = self.handle_at(event.position()) if left else None
+        part = handle.pointer if handle else self.part_at(event.position()) if left else None
         if part is not None:
             self.sight.set(selection=part)
-        super().mousePressEvent(event)
+        if handle is not None:
+            self._drag = MemberDrag(self.document, handle, self.distance_axis(), event.position())
+            self.setFocus()
+        else:
+            super().mousePressEvent(event)
+
+    # Dragging ---------------------------------------------------------------------------------------------------
+
+    def handle_at(self, position: QPointF) -> Handle | None:
+        """What can be dragged from there."""
+        axis, part = self.distance_axis(), self.part_at(position)
+        beside = abs(position.x() - self.centre()) > self.pieces().widest
+        for handle in handles_of(self.case):
+            if handle.kind in ("gauge", "drop"):
+                hit = part == handle.pointer and (handle.kind == "gauge" or position.y() < axis.at(0.0))
+            else:
+                near = abs(position.y() - axis.at(handle.place)) <= REACH
+                hit = near and beside == (handle.kind in ("surface", "layer"))
+            if hit:
+                return handle
+        return None
+
+    def mouseMoveEvent(self, event: QMouseEvent) -> None:
+        if self._drag is not None:
+            free = bool(
+                event.modifiers() & (Qt.KeyboardModifier.AltModifier | Qt.KeyboardModifier.ControlModifier)
+            )
+            self._drag.move(event.position(), free)
+        elif event.buttons():
+            super().mouseMoveEvent(event)
+        else:
+            self._pointed_at = self.handle_at(event.position())
+            shape = Qt.CursorShape.SizeVerCursor if self._pointed_at else Qt.CursorShape.ArrowCursor
+            if self.cursor().shape() != shape:
+                self.setCursor(shape)
+                self.setToolTip(DRAG_TIP if self._pointed_at else "")
+        self.look_again()
+
+    def mouseReleaseEvent(self, event: QMouseEvent) -> None:
+        if self._drag is not None:
+            self._drag.end()
+            self._drag = None
+            self.look_again()
+        super().mouseReleaseEvent(event)
+
+    def leaveEvent(self, event: QEvent) -> None:
+        self._pointed_at = None
+        self.look_again()
+
+    def keyPressEvent(self, event: QKeyEvent) -> None:
+        if event.key() == Qt.Key.Key_Escape and self._drag is not None:
+            self._drag.take_back()
+            self._drag = None
+            self.look_again()
+        else:
+            super().keyPressEvent(event)

@@ -132,7 +132,7 @@ class Strip(Picture):
         draw_cursor(painter, self.plot(), self.time_axis(), self.sight.time)
 
     def _drawn(self, curve: Curve, time: Axis, values: Axis, factor: float) -> Drawn:
-        x, y = thinned(curve.time, curve.values, time)
+        x, y = thinned(curve.time, curve.values, time, self.devicePixelRatioF())
         return Drawn(x, np.asarray(values.pixel(y * factor)))
 
     def _draw_unit(self, painter: QPainter, plot: QRectF, unit: str) -> None:

@@ -109,7 +109,7 @@ def _force_pair(result: Result, gauge: GaugeRecord, units: Units) -> Content:
     ticks: tuple[float, ...] = ()
     if gauge.on == "member" and len(gauge.time):
         there_and_back = 2 * time_to_far_end(result.case, gauge.position)
-        first = float(gauge.time[int(np.argmax(np.abs(gauge.down_wave)))])
+        first = _first_arrival(gauge, there_and_back)
         if there_and_back > 0:
             count = int((gauge.time[-1] - first) / there_and_back) + 1
             ticks = tuple(first + n * there_and_back for n in range(min(count, 50)))
@@ -117,6 +117,15 @@ def _force_pair(result: Result, gauge: GaugeRecord, units: Units) -> Content:
     if len(ticks) > 1:
         named = f"2L/c = {units.show(ticks[1] - ticks[0], 'time')}, gauge to far end and back"
     return Content("force", curves, "gap = 2 × up-going wave", ticks, named)
+
+
+def _first_arrival(gauge: GaugeRecord, there_and_back: float) -> float:
+    """When the blow itself is largest at a gauge, s: the top of the down-going wave in the time that its beginning
+    takes to the far end."""
+    down = np.abs(gauge.down_wave)
+    begun = float(gauge.time[int(np.argmax(down >= 0.3 * down.max()))])
+    within = gauge.time <= begun + there_and_back / 2
+    return float(gauge.time[int(np.argmax(np.where(within, down, 0.0)))])
 
 
 def _waves(result: Result, gauge: GaugeRecord, units: Units) -> Content:
