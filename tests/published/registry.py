@@ -41,7 +41,10 @@ TOPICS: dict[str, str] = {
 
 @dataclass(frozen=True)
 class Compared:
-    """One published value and the solver's. `scale`: what their difference is a share of, in the same unit."""
+    """One published value and the solver's. `scale`: what their difference is a share of, in the same unit.
+
+    `tolerance` is its own where it differs from that of its check, for a reason that the check gives.
+    """
 
     what: str
     expected: float
@@ -49,6 +52,7 @@ class Compared:
     unit: str
     scale: float
     points: int = 1
+    tolerance: float | None = None
 
     @property
     def difference(self) -> float:
@@ -77,10 +81,18 @@ class Picture:
     curves: tuple[Curve, ...]
 
 
-def value(what: str, expected: float, found: float, unit: str = "", scale: float | None = None) -> Compared:
+def value(
+    what: str,
+    expected: float,
+    found: float,
+    unit: str = "",
+    scale: float | None = None,
+    tolerance: float | None = None,
+) -> Compared:
     """Compare one number, by default as a share of the expected one."""
     expected, found = float(expected), float(found)
-    return Compared(what, expected, found, unit, float(scale if scale is not None else abs(expected)))
+    share_of = float(scale if scale is not None else abs(expected))
+    return Compared(what, expected, found, unit, share_of, tolerance=tolerance)
 
 
 def history(what: str, expected: Array, found: Array, unit: str = "", scale: float | None = None) -> Compared:
@@ -116,15 +128,19 @@ class Outcome:
     pictures: tuple[Picture, ...]
     tolerance: float
 
+    def allowed(self, one: Compared) -> float:
+        """Largest difference at which `one` passes."""
+        return self.tolerance if one.tolerance is None else one.tolerance
+
     @property
     def worst(self) -> Compared:
-        """The comparison that is farthest off."""
-        return max(self.compared, key=lambda c: c.difference)
+        """The comparison that is nearest to its tolerance, or farthest beyond it."""
+        return max(self.compared, key=lambda c: c.difference / self.allowed(c))
 
     @property
     def holds(self) -> bool:
         """Whether every difference is within the tolerance. Nothing compared is nothing shown."""
-        return bool(self.compared) and self.worst.difference <= self.tolerance
+        return bool(self.compared) and all(c.difference <= self.allowed(c) for c in self.compared)
 
 
 @dataclass(frozen=True)
