@@ -3,10 +3,11 @@
 from solver.answer.findings import Findings, findings_of
 from solver.answer.result import Envelope, Event, Fields, GaugeRecord, Ledger, Peak, Result
 from solver.errors import SolveError
+from solver.marching import Progress
 from solver.model.file import ProjectError, load_project, parse_project, project_from_tree, project_to_text
 from solver.model.problem import Problem
 from solver.model.project import Case, Project
-from solver.run import Progress, solve
+from solver.run import solve
 
 __all__ = [
     "Case",

@@ -13,7 +13,7 @@ from solver.numerics.chain import segments_of
 from solver.numerics.stability import SMALLEST_STRETCH
 
 if TYPE_CHECKING:
-    from solver.run import March
+    from solver.marching import March
 
 #: Share of the largest energy that may fail to close before a run is refused.
 REFUSED = 0.05
@@ -89,7 +89,7 @@ def refuse_bad_state(march: March) -> None:
                 f"'{part.segment.name}' is pressed to {max(least, 0):.0%} of its length "
                 f"at {chain.position[link]:.4g} m, {seconds * 1000:.4g} ms, more than its law describes: give {advice}."
             )
-    rows = np.concatenate([f[3] for f in march.frames])
+    rows = march.ledger_rows()
     share, frame = residual_of(march.start_row, rows)
     sharp, sharp_frame = unreal_share(march.start_row, rows)
     if sharp > share:

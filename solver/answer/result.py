@@ -7,7 +7,8 @@ negative positions: its struck face is at 0 and it reaches to minus its length.
 from __future__ import annotations
 
 from dataclasses import dataclass, field
-from typing import Literal
+from functools import cached_property
+from typing import Any, Literal
 
 import numpy as np
 from numpy.typing import NDArray
@@ -16,6 +17,14 @@ from solver.model.project import Case
 
 Array = NDArray[np.float64]
 Single = NDArray[np.float32]
+
+
+def read_only(array: NDArray[Any]) -> Array:
+    """The same numbers, in a row and safe from changes."""
+    array = np.ascontiguousarray(array, dtype=np.float64)
+    array.flags.writeable = False
+    return array
+
 
 EventKind = Literal[
     "impact",
@@ -54,7 +63,8 @@ class GaugeRecord:
     `force` (N), `stress` (Pa), `strain`: tension positive, with the static part at rest before the blow where
     gravity acts. `velocity` (m/s), `displacement` (m, from the position of rest before the blow) and
     `acceleration` (m/s2): positive towards the far end. `impedance` is Z = A sqrt(E rho) at the gauge, N·s/m;
-    `rest_force` is the static force before the blow, N.
+    `rest_force` is the static force before the blow, N; `axial_stiffness` EA (N), `None` where it is not constant.
+    Long records lie in a temporary file and are read where they are looked at.
     """
 
     name: str
@@ -63,13 +73,32 @@ class GaugeRecord:
     impedance: float
     area: float
     rest_force: float
-    time: Array
+    time_step: float
+    axial_stiffness: float | None
     force: Array
-    stress: Array
-    strain: Array
     velocity: Array
     displacement: Array
     acceleration: Array
+    element_strain: Array
+
+    @cached_property
+    def time(self) -> Array:
+        """Time of each record from the blow on, s."""
+        return read_only(np.arange(len(self.force)) * self.time_step)
+
+    @cached_property
+    def stress(self) -> Array:
+        """Force over area, Pa."""
+        return read_only(self.force / self.area)
+
+    @cached_property
+    def strain(self) -> Array:
+        """Force over EA where the material is linear elastic, else the mean strain of the elements at the gauge."""
+        return (
+            self.element_strain
+            if self.axial_stiffness is None
+            else read_only(self.force / self.axial_stiffness)
+        )
 
     @property
     def down_wave(self) -> Array:

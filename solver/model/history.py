@@ -30,7 +30,7 @@ class Samples:
             raise ValueError("a history needs at least two points")
         t, v = np.array(times, dtype=float), np.array(values, dtype=float)
         if not (np.isfinite(t).all() and np.isfinite(v).all()):
-            raise ValueError("every time and value must be a finite number")
+            raise ValueError("every time and value must be finite")
         if t[0] < 0:
             raise ValueError("a history must not begin before time 0")
         steps = np.diff(t)

@@ -83,6 +83,15 @@ class Extremes(NamedTuple):
     travel: Array
 
 
+class Frames(NamedTuple):
+    """Lines of the pictures, shape (frames, columns), and of the ledger, shape (frames, parts)."""
+
+    force: Singles
+    velocity: Singles
+    displacement: Singles
+    ledger: Array
+
+
 class Records(NamedTuple):
     """What a chunk records. Gauges: two readings each, `node` shape (g, 2), `weights` (g, 2, 6) = share, left, right,
     mass, constant, share of the left strain. `force` ... (g, steps). Frames: `columns` (links), every `stride`

@@ -238,14 +238,19 @@ def records_of(
     """Room for what a chunk of `steps` steps records."""
     nodes, weights = gauge_readings(chain)
     g, frames = len(nodes), (steps - 1) // stride + 1
-    room = [np.empty((g, steps)) for _ in range(5)]
-    pictures = [np.empty((frames, len(columns)), dtype=np.float32) for _ in range(3)]
+    pictures = (frames, len(columns))
     return Records(
-        nodes,
-        weights,
-        *room,
-        columns,
-        *pictures,
+        node=nodes,
+        weights=weights,
+        force=np.empty((g, steps)),
+        velocity=np.empty((g, steps)),
+        displacement=np.empty((g, steps)),
+        acceleration=np.empty((g, steps)),
+        strain=np.empty((g, steps)),
+        columns=columns,
+        frame_force=np.empty(pictures, dtype=np.float32),
+        frame_velocity=np.empty(pictures, dtype=np.float32),
+        frame_displacement=np.empty(pictures, dtype=np.float32),
         ledger=np.empty((frames, len(LEDGER))),
         ram=np.empty((3 if chain.train else 0, steps)),
         events=np.zeros((4096, 3), dtype=np.int64),

@@ -43,7 +43,7 @@ def _cache_folder() -> tuple[Path | None, str | None]:
 
 _folder, cache_problem = _cache_folder()
 if _folder is not None:
-    numba.config.CACHE_DIR = str(_folder)
+    numba.config.CACHE_DIR = str(_folder)  # type: ignore[attr-defined]
 
 #: Reductions may be summed in any order; not-a-number is still seen.
 LOOSE_SUMS = {"reassoc", "contract", "nsz"}

@@ -12,6 +12,7 @@ from dataclasses import dataclass
 import numpy as np
 from numpy.typing import NDArray
 
+from solver.model.member import Segment
 from solver.model.surroundings import Ground, Resistance, Toe
 from solver.numerics.arrays import Shaft
 from solver.numerics.chain import Chain
@@ -138,7 +139,9 @@ def _receivers(chain: Chain, start: int, stop: int, node: NDArray[np.int64]) -> 
     return np.clip(node, low, high) if low <= high else node
 
 
-def _rubbing(chain: Chain, ground: Ground, segment, points: Array, top: float, bottom: float) -> Array:
+def _rubbing(
+    chain: Chain, ground: Ground, segment: Segment, points: Array, top: float, bottom: float
+) -> Array:
     """Perimeter on which the ground acts, linear along a taper, with its share of the inside of open pipes, m."""
     first, last = segment.section, segment.end_section or segment.section
     share = (points - top) / (bottom - top)

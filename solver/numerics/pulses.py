@@ -74,11 +74,11 @@ def end_time(load: Pulse | History) -> float:
 
 def step_forces(load: Pulse | History, first: int, count: int, dt: float) -> Array:
     """Mean force over [t - dt, t + dt] for steps `first` ... `first + count - 1`, N, shape (count,)."""
-    edges = integral(load, (np.arange(first - 1, first + count + 1)) * dt)
+    edges = integral(load, (np.arange(first - 1, first + count + 1, dtype=np.float64)) * dt)
     return (edges[2:] - edges[:-2]) / (2 * dt)
 
 
 def step_velocities(load: Pulse | History, first: int, count: int, dt: float) -> Array:
     """Mean velocity over [t, t + dt] for steps `first` ... `first + count - 1`, m/s, shape (count,)."""
-    edges = integral(load, (np.arange(first, first + count + 1)) * dt)
+    edges = integral(load, (np.arange(first, first + count + 1, dtype=np.float64)) * dt)
     return np.diff(edges) / dt

@@ -6,7 +6,7 @@ from dataclasses import replace
 
 import numpy as np
 
-from solver.numerics.arrays import Motion
+from solver.numerics.arrays import Bounds, Motion, Shaft
 from solver.numerics.assemble import extremes_of, records_of, rod_of
 from solver.numerics.chain import Chain
 from solver.numerics.equilibrium import State
@@ -67,7 +67,7 @@ def _slowest(chain: Chain, state: State) -> float:
     return float(min(np.sqrt(stiff / chain.mass[chain.head - 1 if chain.train else 0 :].sum()), stretching))
 
 
-def _static_ground(state: State, chain: Chain):
+def _static_ground(state: State, chain: Chain) -> tuple[Shaft, Bounds]:
     """The same ground and bounds without damping, joints to the ram and the ram itself; states are shared."""
     s = state.shaft
     power, radiation = s.power.copy(), s.radiation.copy()

@@ -1,0 +1,72 @@
+"""What happened during a blow, each with its place and time."""
+
+from __future__ import annotations
+
+import numpy as np
+from numpy.typing import NDArray
+
+from solver.answer.blow import Blow
+from solver.answer.result import Event, EventKind
+from solver.numerics.chain import Chain
+from solver.numerics.records import (
+    EVENT_IMPACT,
+    EVENT_JOINT_CLOSED,
+    EVENT_JOINT_OPENED,
+    EVENT_LEFT_ELASTIC,
+    EVENT_SEPARATION,
+    EVENT_TOE_LIFT,
+    EVENT_WALL,
+)
+
+EVENT_NAMES: dict[int, EventKind] = {
+    EVENT_IMPACT: "impact",
+    EVENT_SEPARATION: "separation",
+    EVENT_LEFT_ELASTIC: "first_yield",
+    EVENT_JOINT_OPENED: "joint_opened",
+    EVENT_JOINT_CLOSED: "joint_closed",
+    EVENT_WALL: "wall_contact",
+    EVENT_TOE_LIFT: "toe_lift",
+}
+#: What ends and begins again within so many steps is one contact, not two.
+FLICKER = 3
+
+
+def events_of(blow: Blow) -> tuple[Event, ...]:
+    """All events in order of time."""
+    chain = blow.chain
+    kept = _without_flicker(blow.events)
+    found = []
+    for kind, place, step in kept:
+        name = EVENT_NAMES[kind]
+        striker = chain.case.load.kind == "striker" and place == chain.head - 1
+        if striker and name in ("joint_closed", "joint_opened"):
+            name = "impact" if name == "joint_closed" else "separation"
+        if name == "first_yield" and blow.law_at(place) == "brittle_tension":
+            name = "crack"
+        found.append(Event(name, _event_position(chain, kind, place), step * chain.dt))
+    return tuple(sorted(found, key=lambda e: e.time))
+
+
+def _event_position(chain: Chain, kind: int, place: int) -> float:
+    if kind == EVENT_LEFT_ELASTIC:
+        return float((chain.position[place] + chain.position[place + 1]) / 2)
+    return float(chain.position[place])
+
+
+def _without_flicker(events: NDArray[np.int64]) -> list[tuple[int, int, int]]:
+    """Leave out a parting and meeting of the same place that lie a few steps apart."""
+    pairs = {
+        EVENT_IMPACT: EVENT_SEPARATION,
+        EVENT_SEPARATION: EVENT_IMPACT,
+        EVENT_JOINT_CLOSED: EVENT_JOINT_OPENED,
+        EVENT_JOINT_OPENED: EVENT_JOINT_CLOSED,
+    }
+    kept: list[tuple[int, int, int]] = []
+    for kind, place, step in events.tolist():
+        opposite = pairs.get(kind)
+        previous = next((i for i in range(len(kept) - 1, -1, -1) if kept[i][1] == place), None)
+        if previous is not None and kept[previous][0] == opposite and step - kept[previous][2] <= FLICKER:
+            del kept[previous]
+        else:
+            kept.append((kind, place, step))
+    return kept

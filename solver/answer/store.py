@@ -1,0 +1,55 @@
+"""Room for records of every step: in memory, or in a temporary file where they would crowd it."""
+
+from __future__ import annotations
+
+import tempfile
+from typing import IO
+
+import numpy as np
+from numpy.typing import NDArray
+
+Array = NDArray[np.float64]
+
+#: Values (of 8 bytes) above which records go to a file: 160 MB.
+MOST_IN_MEMORY = 20_000_000
+
+
+class Store:
+    """Rows of values that grow step by step up to `columns`; shape (rows, columns).
+
+    In a file, blocks are written and mapped back only where somebody looks, so that memory does not grow with the run.
+    The file has no name of its own and is gone with the last reader.
+    """
+
+    def __init__(self, rows: int, columns: int, most_in_memory: int = MOST_IN_MEMORY) -> None:
+        self.rows, self.columns, self.filled = rows, columns, 0
+        self._file: IO[bytes] | None = None
+        self._array: Array | None = None
+        if rows * columns > most_in_memory:
+            self._file = tempfile.TemporaryFile(prefix="striketrace-")  # noqa: SIM115 - lives as long as its readers
+            self._file.truncate(rows * columns * 8)
+        else:
+            self._array = np.empty((rows, columns))
+
+    def append(self, block: Array) -> None:
+        """Add columns, shape (rows, n)."""
+        n = block.shape[1]
+        if self._array is not None:
+            self._array[:, self.filled : self.filled + n] = block
+        else:
+            assert self._file is not None
+            for row, values in enumerate(block):
+                self._file.seek((row * self.columns + self.filled) * 8)
+                self._file.write(np.ascontiguousarray(values).data)
+            self._file.flush()
+        self.filled += n
+
+    def read(self) -> Array:
+        """What is filled so far, shape (rows, filled), read-only; later additions do not change it."""
+        if self._array is None:
+            assert self._file is not None
+            shape = (self.rows, self.columns)
+            return np.memmap(self._file, dtype=np.float64, mode="r", shape=shape)[:, : self.filled]
+        view = self._array[:, : self.filled]
+        view.flags.writeable = False
+        return view

@@ -1,0 +1,82 @@
+"""What the user must be told about a run, in sentences."""
+
+from __future__ import annotations
+
+import numpy as np
+
+from solver.answer.blow import Blow
+from solver.numerics.compiled import cache_problem
+from solver.numerics.ground import bands_of
+from solver.numerics.mesh import MISMATCH
+
+#: Plastic strain above which a law of small strains is said to be left.
+SMALL_STRAIN = 0.1
+#: Share of the energy that may fail to close before it is told.
+TOLD = 0.01
+
+
+def warnings_of(blow: Blow, residual: float, at_rest: bool, finished: bool) -> tuple[str, ...]:
+    """Sentences, the gravest first."""
+    chain, case, told = blow.chain, blow.chain.case, []
+    if residual > TOLD:
+        told.append(f"The energy of this run does not close by {residual:.1%}: judge it with care.")
+    if 1 - chain.courant_worst > MISMATCH:
+        told.append(
+            "The travel times of the segments fit no common step: "
+            f"the worst Courant number is {chain.courant_worst:.3f}."
+        )
+    strain, place = _largest_plastic_strain(blow)
+    if strain > SMALL_STRAIN:
+        told.append(
+            f"The plastic strain reaches {strain:.0%} at {place:.4g} m, beyond a law of small strains: "
+            "read the shortening of the whole, not the strain there."
+        )
+    if not finished:
+        told.append("This run was stopped early: it tells what happened so far.")
+    elif case.run.duration is None and not at_rest:
+        told.append(
+            "The member does not come to rest by itself; "
+            f"the run was ended after {(blow.steps - 1) * chain.dt * 1000:.4g} ms."
+        )
+    returns = _ram_returns(blow)
+    if finished and returns is not None:
+        told.append(
+            f"The ram is in the air at the end and falls again at about {returns:.3g} s: "
+            "give a longer duration to see that blow too."
+        )
+    if case.ground is not None:
+        bands = list(bands_of(case.ground, case.member.length))
+        reach = max((b.bottom for b in bands), default=case.ground.surface)
+        if bands and reach < case.member.length * (1 - 1e-9):
+            told.append(f"The layers end at {reach:.4g} m: below it no shaft resistance acts.")
+        if finished and not blow.settled:
+            told.append("No rest after the blow was found: the set is the plastic movement of the toe.")
+    if cache_problem:
+        told.append(cache_problem)
+    return tuple(told)
+
+
+def _largest_plastic_strain(blow: Blow) -> tuple[float, float]:
+    """Largest plastic strain along the chain and its place (m)."""
+    largest, place = 0.0, 0.0
+    for stretch in blow.chain.stretches:
+        if stretch.material.law.kind == "elastic_plastic":
+            at = slice(stretch.start, stretch.stop)
+            strain = np.abs(blow.state.rod.state[0, at]) / blow.chain.length[at]
+            if strain.max() > largest:
+                largest, place = float(strain.max()), float(blow.chain.position[at][np.argmax(strain)])
+    return largest, place
+
+
+def _ram_returns(blow: Blow) -> float | None:
+    """Time at which a rigid ram that gravity brings back will strike again, s; `None` where none is in the air."""
+    chain, motion = blow.chain, blow.state.motion
+    if not chain.train or chain.gravity == 0.0 or blow.state.bounds.train_state[0, 2] > 0.0:
+        return None
+    a = chain.train[0].link
+    gap = float(blow.at_end[a + 1] - blow.at_end[a])
+    rising = float(motion.v[a + 1] - motion.v[a]) if not blow.settled else -float(motion.v[a])
+    if gap <= 0.0:
+        return None
+    flight = (rising + np.sqrt(max(rising**2 + 2 * chain.gravity * gap, 0.0))) / chain.gravity
+    return float((blow.steps - 1) * chain.dt + flight)
