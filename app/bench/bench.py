@@ -25,7 +25,7 @@ from app.look.palette import palette
 from app.sight import Sight
 from app.solving import Solution
 
-COLUMNS, ROWS = (0.18, 0.59, 0.23), (0.56, 0.44)
+COLUMNS, ROWS = (0.18, 0.59, 0.23), (0.53, 0.47)
 
 
 class Bench(QWidget):

@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from dataclasses import dataclass
+
 from PySide6.QtCore import QEvent, QRectF, QSize, Qt
 from PySide6.QtGui import QColor, QFontMetricsF, QPainter, QPaintEvent, QResizeEvent
 from PySide6.QtWidgets import QAbstractButton, QSizePolicy, QWidget
@@ -11,26 +13,41 @@ from app.look.palette import palette
 from app.look.spacing import RADIUS, SPACE
 
 
+@dataclass(frozen=True)
+class Told:
+    """What a row says. `leads`: what a click changes in the sight; `stands`: it holds whatever is entered now."""
+
+    figure: str = ""
+    name: str = ""
+    detail: str = ""
+    state: str | None = None
+    leads: tuple[tuple[str, object], ...] = ()
+    stands: bool = False
+
+
 class FindingRow(QAbstractButton):
     """A button, so that it is reached and pressed by keyboard and read aloud; it looks like text."""
 
-    def __init__(
-        self, figure: str, name: str, detail: str, state: str | None = None, parent: QWidget | None = None
-    ) -> None:
+    def __init__(self, parent: QWidget | None = None) -> None:
         super().__init__(parent)
-        self._figure, self._name, self._detail, self._state = figure, name, detail, state
-        self.setText(" ".join(part for part in (figure, name, detail.replace("\n", "; ")) if part))
-        self.setAccessibleName(self.text())
-        self.setFocusPolicy(Qt.FocusPolicy.NoFocus)
+        self.told = Told()
         policy = QSizePolicy(QSizePolicy.Policy.Ignored, QSizePolicy.Policy.Fixed)
         policy.setHeightForWidth(True)
         self.setSizePolicy(policy)
 
-    def leads_somewhere(self) -> None:
-        """It can be clicked: shown by the pointer, and reached with Tab."""
-        self.setCursor(Qt.CursorShape.PointingHandCursor)
-        self.setFocusPolicy(Qt.FocusPolicy.StrongFocus)
-        self.setToolTip("Show where and when")
+    def tell(self, told: Told) -> None:
+        """Show a finding. One that leads somewhere has the pointing hand, and is reached with Tab."""
+        if told == self.told:
+            return
+        self.told = told
+        parts = (told.figure, told.name, told.detail.replace("\n", "; "))
+        self.setText(" ".join(part for part in parts if part))
+        self.setAccessibleName(self.text())
+        leads = bool(told.leads)
+        self.setCursor(Qt.CursorShape.PointingHandCursor if leads else Qt.CursorShape.ArrowCursor)
+        self.setFocusPolicy(Qt.FocusPolicy.StrongFocus if leads else Qt.FocusPolicy.NoFocus)
+        self.setToolTip("Show where and when" if leads else "")
+        self.updateGeometry()
 
     def sizeHint(self) -> QSize:
         width = self.width() if self.width() > 40 else 220
@@ -68,12 +85,12 @@ class FindingRow(QAbstractButton):
         if not self.isEnabled():
             painter.setOpacity(0.35)
         head = self._head_height(self.width())
-        if self._figure:
+        if self.told.figure:
             self._paint_head(painter, head)
         painter.setFont(font("body"))
-        urgent = self._state in ("near", "over") or self._detail.startswith("✕")
+        urgent = self.told.state in ("near", "over") or self.told.detail.startswith("✕")
         painter.setPen(QColor(colours.ink if urgent else colours.soft_ink))
-        painter.drawText(self._detail_box(self.width(), head), _WRAPPED, self._detail)
+        painter.drawText(self._detail_box(self.width(), head), _WRAPPED, self.told.detail)
 
     def _paint_head(self, painter: QPainter, head: float) -> None:
         """The figure, and its name beside it or, where that is too narrow, under it."""
@@ -81,25 +98,27 @@ class FindingRow(QAbstractButton):
         baseline = 2 + large.ascent()
         painter.setFont(font("figure"))
         painter.setPen(QColor(colours.ink))
-        painter.drawText(SPACE, round(baseline), self._figure)
+        painter.drawText(SPACE, round(baseline), self.told.figure)
         painter.setFont(font("body"))
         if head > large.height() + 3:
-            painter.drawText(SPACE, round(head - QFontMetricsF(painter.font()).descent()), self._name)
+            painter.drawText(SPACE, round(head - QFontMetricsF(painter.font()).descent()), self.told.name)
         else:
-            x = SPACE + large.horizontalAdvance(self._figure) + 6
-            painter.drawText(round(x), round(baseline), self._name)
+            x = SPACE + large.horizontalAdvance(self.told.figure) + 6
+            painter.drawText(round(x), round(baseline), self.told.name)
 
     def _head_height(self, width: int) -> float:
-        if not self._figure:
+        if not self.told.figure:
             return 2.0
         large, body = QFontMetricsF(font("figure")), QFontMetricsF(font("body"))
-        needed = large.horizontalAdvance(self._figure) + 6 + body.horizontalAdvance(self._name) + 2 * SPACE
+        needed = (
+            large.horizontalAdvance(self.told.figure) + 6 + body.horizontalAdvance(self.told.name) + 2 * SPACE
+        )
         return 2 + large.height() + (body.height() if needed > width else 0)
 
     def _detail_box(self, width: int, top: float) -> QRectF:
         metrics = QFontMetricsF(font("body"))
         room = QRectF(SPACE, top, max(width - 2 * SPACE, 20), 10_000)
-        return metrics.boundingRect(room, _WRAPPED, self._detail)
+        return metrics.boundingRect(room, _WRAPPED, self.told.detail)
 
 
 _WRAPPED = int(Qt.TextFlag.TextWordWrap | Qt.AlignmentFlag.AlignLeft | Qt.AlignmentFlag.AlignTop)

@@ -5,6 +5,7 @@ The facts are the solver's (`findings_of`), the sentences those of `app.words`; 
 
 from __future__ import annotations
 
+from collections.abc import Iterator
 from functools import lru_cache
 
 from PySide6.QtCore import Qt
@@ -12,12 +13,12 @@ from PySide6.QtGui import QContextMenuEvent, QGuiApplication
 from PySide6.QtWidgets import QFrame, QLabel, QMenu, QScrollArea, QVBoxLayout, QWidget
 
 from app import words
-from app.bench.finding_row import FindingRow
+from app.bench.finding_row import FindingRow, Told
 from app.document import Document
 from app.look.spacing import GAP, SPACE
 from app.sight import Sight
 from app.solving import Solution
-from app.units import units_of
+from app.units import Units, units_of
 from solver import Findings, Result, findings_of
 
 
@@ -28,6 +29,7 @@ class FindingsPanel(QFrame):
         super().__init__(parent)
         self._document, self._sight, self._solution = document, sight, solution
         self._shown: object = None
+        self._list: list[FindingRow] = []
         self.setMinimumWidth(170)
         self.setAccessibleName("Findings")
         outer = QVBoxLayout(self)
@@ -44,6 +46,7 @@ class FindingsPanel(QFrame):
         self._rows = QVBoxLayout(self._inside)
         self._rows.setContentsMargins(0, 0, 0, 0)
         self._rows.setSpacing(2)
+        self._rows.addStretch(1)
         scroll.setWidget(self._inside)
         self._inside.setAutoFillBackground(False)
         scroll.viewport().setAutoFillBackground(False)
@@ -60,7 +63,7 @@ class FindingsPanel(QFrame):
 
     def rows(self) -> list[FindingRow]:
         """The findings as they stand, from top to bottom."""
-        return self._inside.findChildren(FindingRow, options=Qt.FindChildOption.FindDirectChildrenOnly)
+        return [row for row in self._list if not row.isHidden()]
 
     def contextMenuEvent(self, event: QContextMenuEvent) -> None:
         menu = QMenu(self)
@@ -82,45 +85,36 @@ class FindingsPanel(QFrame):
         if shown == self._shown:
             return
         self._shown = shown
-        self._clear()
+        told = list(self._told(result, units)) if result is not None else []
         if self._solution.state == "refused" and self._solution.message:
-            self._rows.addWidget(FindingRow("", "", f"✕ {self._solution.message}"))
-        if result is not None:
-            facts = facts_of(result)
-            for line in words.verdict(facts, units):
-                row = FindingRow(line.figure, line.name, line.detail, line.state)
-                self._connect(row, line.time, line.position)
-                self._rows.addWidget(row)
-            for note in words.notes(facts, result.case, units):
-                row = FindingRow("", "", note.text)
-                self._connect(row, note.time, note.position, note.pointer)
-                self._rows.addWidget(row)
-        for row in self.rows():
-            row.setEnabled(stands or row.text().startswith("✕"))
-        self._rows.addStretch(1)
+            told.insert(0, Told(detail=f"✕ {self._solution.message}", stands=True))
+        while len(self._list) < len(told):
+            self._list.append(self._new_row())
+        for row, content in zip(self._list, told, strict=False):
+            row.tell(content)
+            row.setEnabled(stands or content.stands)
+        for number, row in enumerate(self._list):
+            row.setVisible(number < len(told))
 
-    def _connect(
-        self, row: FindingRow, time: float | None, position: float | None, pointer: str = ""
-    ) -> None:
-        """Clicking leads the cursor, or the selection, to where the finding is."""
-        what: dict[str, object] = {}
-        if time is not None:
-            what["time"] = time
-        if position is not None:
-            what["place"] = position
-        if pointer:
-            what["selection"] = pointer
-        if what:
-            row.leads_somewhere()
-            row.clicked.connect(lambda: self._sight.set(**what))
+    def _told(self, result: Result, units: Units) -> Iterator[Told]:
+        facts = facts_of(result)
+        for line in words.verdict(facts, units):
+            leads = _leads(line.time, line.position)
+            yield Told(line.figure, line.name, line.detail, line.state, leads)
+        for note in words.notes(facts, result.case, units):
+            yield Told(detail=note.text, leads=_leads(note.time, note.position, note.pointer))
 
-    def _clear(self) -> None:
-        while item := self._rows.takeAt(0):
-            widget = item.widget()
-            if widget is not None:
-                widget.hide()
-                widget.setParent(None)
-                widget.deleteLater()
+    def _new_row(self) -> FindingRow:
+        row = FindingRow()
+        row.clicked.connect(lambda: self._sight.set(**dict(row.told.leads)))
+        self._rows.insertWidget(len(self._list), row)
+        return row
+
+
+def _leads(time: float | None, position: float | None, pointer: str = "") -> tuple[tuple[str, object], ...]:
+    """What a click changes in the sight: cursor and selection go to where the finding is."""
+    found = (("time", time), ("place", position), ("selection", pointer or None))
+    return tuple((name, value) for name, value in found if value is not None)
 
 
 @lru_cache(maxsize=2)

@@ -122,7 +122,7 @@ class Profile(Picture):
         least = -sum(s.length for s in self.case.ram_segments)
         metres = float(self.units.number(1.0, "length"))
         distance_ticks(painter, in_units(distance, metres), plot.left(), False, least * metres)
-        horizontal_ticks(painter, values, plot.bottom(), True)
+        horizontal_ticks(painter, values, plot.bottom(), self.result is not None)
 
     def moving_region(self) -> QRegion:
         return QRegion(0, 0, self.width(), int(self.plot().bottom() + 2))

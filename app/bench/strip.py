@@ -92,8 +92,9 @@ class Strip(Picture):
         plot, time, content = self.plot(), self.time_axis(), self.content()
         near = self._near(content)
         values, factor = self.value_axis(content), self._factor(content, near)
-        value_ticks(painter, values, plot)
-        self._draw_unit(painter, plot, self.units.unit(content.dimension, near))
+        if content.curves:
+            value_ticks(painter, values, plot)
+            self._draw_unit(painter, plot, self.units.unit(content.dimension, near))
         span = time.high - time.low
         shown_time = in_units(time, float(self.units.number(1.0, "time", span)))
         horizontal_ticks(painter, shown_time, plot.bottom(), self.last)

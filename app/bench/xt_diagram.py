@@ -2,11 +2,13 @@
 
 from __future__ import annotations
 
+from functools import partial
 from typing import Any
 
 import numpy as np
 from PySide6.QtCore import QLineF, QRectF, Qt
-from PySide6.QtGui import QFontMetricsF, QImage, QPainter, QRegion
+from PySide6.QtGui import QFontMetricsF, QImage, QPainter, QRegion, QResizeEvent
+from PySide6.QtWidgets import QMenu, QToolButton
 
 from app.bench.axes import Axis
 from app.bench.axis_drawing import crisp, distance_ticks, horizontal_ticks, in_units
@@ -43,6 +45,39 @@ class XtDiagram(Picture):
         super().__init__(*args, **named)
         self.setAccessibleName("Through time and along the member")
         self.setCursor(Qt.CursorShape.CrossCursor)
+        self._choice = QToolButton(self)
+        self._choice.setText("▾")
+        self._choice.setProperty("role", "quiet")
+        self._choice.setStyleSheet("QToolButton { padding: 0px; min-height: 0px; }")
+        self._choice.setCursor(Qt.CursorShape.ArrowCursor)
+        self._choice.setAccessibleName("Quantity shown")
+        self._choice.setToolTip("What the x-t diagram, the member and the profile show.")
+        self._choice.setPopupMode(QToolButton.ToolButtonPopupMode.InstantPopup)
+        menu = QMenu(self._choice)
+        self.fill_menu(menu)
+        self._choice.setMenu(menu)
+
+    def fill_menu(self, menu: QMenu) -> None:
+        for quantity, heading in HEADINGS.items():
+            menu.addAction(heading, partial(self.sight.set, quantity=quantity))
+        menu.addSeparator()
+
+    def look_again(self) -> None:
+        self._place_choice()
+        super().look_again()
+
+    def resizeEvent(self, event: QResizeEvent) -> None:
+        self._place_choice()
+
+    def _heading_end(self) -> float:
+        """Where the heading ends, in pixels."""
+        width = QFontMetricsF(font("strong")).horizontalAdvance(HEADINGS[self.sight.quantity])
+        return self.plot().left() + width
+
+    def _place_choice(self) -> None:
+        line = QFontMetricsF(self.font()).height()
+        left, top = round(self._heading_end()) + 3, round(0.5 * self.margins().header - 0.6 * line)
+        self._choice.setGeometry(left, top, round(1.2 * line), round(1.2 * line))
 
     def resting_key(self) -> tuple[Any, ...]:
         return (self.sight.quantity,)
@@ -135,14 +170,15 @@ class XtDiagram(Picture):
         colours, quantity, units = palette(), self.sight.quantity, self.units
         y = 0.5 * self.margins().header
         painter.setFont(font("strong"))
-        title = put(painter, plot.left(), y, HEADINGS[quantity], colours.ink)
+        put(painter, plot.left(), y, HEADINGS[quantity], colours.ink)
+        end = self._heading_end() + 6 + 1.2 * y
         painter.setFont(self.font())
         metrics = QFontMetricsF(painter.font())
         word = self.greyed() or {"solving": "", "stopped": "stopped early"}.get(self.solution.state, "")
         if word:
             painter.save()
             painter.setOpacity(1.0)
-            title = put(painter, title.right() + 10, y, word, colours.ink)
+            end = put(painter, end + 6, y, word, colours.ink).right()
             painter.restore()
         if self.result is None:
             return
@@ -154,7 +190,7 @@ class XtDiagram(Picture):
         number = rounded(float(units.number(top, dimension, top)))
         right_text = f"{number} {units.unit(dimension, top)} {names[1]}"
         x = plot.right()
-        room = x - title.right() - 16
+        room = x - end - 16
         bar = min(max(room * 0.22, 40.0), 8 * metrics.height())
         wanted = metrics.horizontalAdvance(right_text + names[0] + number) + bar + 24
         if wanted > room:  # a narrow picture keeps the numbers and lets the words go

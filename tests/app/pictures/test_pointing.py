@@ -250,3 +250,37 @@ def test_the_slider_drags_time_and_play_ends_at_the_end(open_bench, pile, qtbot)
     bar.toggle()  # from the end it begins anew
     assert the.sight.time < 0.03
     bar.pause()
+
+
+def test_the_quantity_is_chosen_once_for_all_pictures(open_bench, pile):
+    the = open_bench(pile)
+    choice = next(a for a in the.bench.xt._choice.menu().actions() if a.text() == "Velocity through time")
+    choice.trigger()
+    assert the.sight.quantity == "velocity"
+    assert the.bench.profile.dimension == "velocity"
+    assert the.bench.profile.factor() > 0  # motion is positive towards the far end, whatever stresses are
+
+
+def test_times_have_the_unit_of_the_run(open_bench, pile):
+    """A run of 30 ms is told in milliseconds, on the clock as on the axis of the strips."""
+    the = open_bench(pile)
+    the.sight.set(time=0.00725)
+    assert the.bench.time_bar._clock.text() == "7.25 ms"
+
+
+def test_refused_says_why_above_the_greyed_findings(open_bench, pile, qtbot, monkeypatch):
+    from solver import SolveError
+
+    the = open_bench(pile)
+
+    def refuse(_case, **_how):
+        raise SolveError("This case cannot be solved, for the sake of this test.")
+
+    monkeypatch.setattr(the.solution._worker, "_solve", refuse)
+    the.document.edit("Length", "member/segments/0/length", 15.0)
+    qtbot.waitUntil(lambda: the.solution.state == "refused")
+    first, second, *_ = the.bench.findings.rows()
+    assert first.text() == "✕ This case cannot be solved, for the sake of this test."
+    assert first.isEnabled()
+    assert not second.isEnabled()
+    assert the.bench.profile.greyed() == "cannot be solved"
