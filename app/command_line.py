@@ -113,12 +113,13 @@ def _window(arguments: argparse.Namespace) -> int:
 
 
 def _check(arguments: argparse.Namespace) -> int:
-    from solver import ProjectError, load_project
+    from app.usable_project import load_usable
+    from solver import ProjectError
 
     status = SOLVED
     for path in arguments.files:
         try:
-            project = load_project(path)
+            project = load_usable(path)
         except ProjectError as error:
             status = _say(str(error), UNUSABLE)
         else:

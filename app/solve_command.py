@@ -10,8 +10,9 @@ from typing import Any
 
 from app.export import folder_names, write_case
 from app.units import NO_BREAK, Units
+from app.usable_project import load_usable
 from app.words import verdict
-from solver import Case, Project, ProjectError, Result, load_project
+from solver import Case, Project, ProjectError, Result
 from solver.answer.findings import findings_of
 
 SOLVED, FAILED, UNUSABLE = 0, 1, 2
@@ -35,7 +36,7 @@ def solve_file(path: Path, out: Path, choices: Choices) -> int:
     """Solve and write; returns the exit status. A file that is not usable, or a folder that cannot be made, leaves
     nothing written (2); a case that fails leaves the others written (1)."""
     try:
-        project = load_project(path)
+        project = load_usable(path)
     except ProjectError as error:
         return _complain(str(error), UNUSABLE)
     names = [case.name for case in project.cases]

@@ -76,8 +76,12 @@ def project_from_tree(tree: Any, folder: Path | None = None) -> Project:
 
 
 def project_to_text(project: Project) -> str:
-    """The file's text: the same project always gives the same text, and reading it gives the same project."""
-    return json.dumps(project.model_dump(mode="json"), indent=2, ensure_ascii=False) + "\n"
+    """The file's text: the same project always gives the same text, and reading it gives the same project.
+
+    Half a character (a lone surrogate) stays what it is in JSON, an escape, as no file could hold it otherwise.
+    """
+    text = json.dumps(project.model_dump(mode="json"), indent=2, ensure_ascii=False) + "\n"
+    return text.encode("utf-8", "backslashreplace").decode("utf-8")
 
 
 def _current_version(tree: Any) -> dict[str, Any]:
@@ -85,12 +89,13 @@ def _current_version(tree: Any) -> dict[str, Any]:
         raise ProjectError(
             [Problem("", "a project is a JSON object, with 'format', 'version', 'title' and 'cases'")]
         )
-    for key, tells in (("format", f"'{FORMAT}'"), ("version", f"a number up to {VERSION}")):
-        if key not in tree:
-            raise ProjectError([Problem(f"/{key}", f"the key is missing: it must be {tells}")])
+    if "format" not in tree:
+        raise ProjectError([Problem("/format", f"the key is missing: it must be '{FORMAT}'")])
     if tree["format"] != FORMAT:
         sentence = f"must be '{FORMAT}', not {shown(tree['format'])}: this is no Striketrace project"
         raise ProjectError([Problem("/format", sentence)])
+    if "version" not in tree:
+        raise ProjectError([Problem("/version", f"the key is missing: it must be a number up to {VERSION}")])
     version = tree["version"]
     if not isinstance(version, int) or isinstance(version, bool) or version < 1:
         sentence = (

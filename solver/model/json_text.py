@@ -48,7 +48,7 @@ def _whole(digits: str) -> float:
 
 
 def _faults(tree: Any) -> Iterator[Problem]:
-    """Keys given twice, numbers that are none, text that cannot be written; no recursion, for the deepest of trees."""
+    """Keys given twice and numbers that are none; no recursion, for the deepest of trees."""
     pending = [("", tree, 0)]
     while pending:
         at, node, depth = pending.pop()
@@ -60,18 +60,7 @@ def _faults(tree: Any) -> Iterator[Problem]:
                 yield Problem(at + step(key), "the key is given twice: keep one of them")
         if isinstance(node, float) and not isfinite(node):
             yield Problem(at, f"must be a finite number, not {shown(node)}")
-        elif isinstance(node, str) and _has_half_a_character(node):
-            yield Problem(at, "holds half a character (a lone surrogate), which no file can hold")
         elif isinstance(node, dict):
-            if any(_has_half_a_character(key) for key in node):
-                yield Problem(
-                    at, "has a key with half a character (a lone surrogate), which no file can hold"
-                )
-                return
             pending += [(at + step(key), value, depth + 1) for key, value in reversed(node.items())]
         elif isinstance(node, list):
             pending += [(at + step(i), value, depth + 1) for i, value in reversed(list(enumerate(node)))]
-
-
-def _has_half_a_character(text: str) -> bool:
-    return any("\ud800" <= c <= "\udfff" for c in text)
