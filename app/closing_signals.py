@@ -26,7 +26,9 @@ class ClosingSignals:
             os._exit(
                 0
             )  # nothing is open yet, and whoever starts a program by mistake does not want to wait for it
-        self._close()
+        from PySide6.QtCore import QTimer
+
+        QTimer.singleShot(0, self._close)  # from Qt's loop, not from wherever Python happens to be
 
     def close_with(self, close: Callable[[], Any]) -> None:
         """Call this when a signal comes."""

@@ -20,7 +20,7 @@ from app.recovery import kept_work
 from app.settings import Settings, user_settings
 from app.starting_points import STARTING_POINTS
 from app.window import Window
-from solver import project_from_tree
+from solver import ProjectError, load_project, project_from_tree
 
 
 def run_window(file: str | None = None, signals: ClosingSignals | None = None) -> int:
@@ -32,39 +32,57 @@ def run_window(file: str | None = None, signals: ClosingSignals | None = None) -
     settings = user_settings()
     apply_look(app, settings.look)
     follow_system(app)
-    found = kept_work(settings.recovery_folder)
-    window = Window(settings, project_from_tree(STARTING_POINTS[0].make()))
+    window = _first_window(settings, file)
     before, sys.excepthook = sys.excepthook, partial(_tell_fault, window)
-    _open_first(window, settings, file)
-    window.files.offer_recovery(found)
     window.show()
-    signals.close_with(window.close)
+    signals.close_with(partial(_close, app, window))
     app.exec()
     sys.excepthook = before
-    ended = window.ended_in_time
-    window.deleteLater()
-    app.sendPostedEvents(None, QEvent.Type.DeferredDelete)
-    if (
-        not ended
-    ):  # the solving thread sits in the compiler: waiting for it would take longer than a person waits
+    if not window.ended_in_time:
+        # The solving thread sits in the compiler. It cannot be told to stop, waiting for it would take longer than a
+        # person waits, and destroying it while it runs would abort the process. All is saved: leave it behind.
         sys.stdout.flush()
         sys.stderr.flush()
         os._exit(0)
+    window.deleteLater()
+    app.sendPostedEvents(None, QEvent.Type.DeferredDelete)
     signals.restore()
     return 0
 
 
-def _open_first(window: Window, settings: Settings, file: str | None) -> None:
-    """The file asked for; else the one worked on last; else a demo."""
-    if file is not None:
-        window.open_path(Path(file))
-        return
-    last = settings.recent[:1]
-    if last and last[0].is_file() and window.open_path(last[0]):
-        return
-    for demo in demo_paths():
-        if window.open_demo(demo):
-            return
+def _first_window(settings: Settings, file: str | None) -> Window:
+    """On the file asked for; else on the one worked on last; else on a demo; else on a starting point."""
+    found = kept_work(settings.recovery_folder)
+    last = [path for path in settings.recent[:1] if path.is_file()]
+    sentence = ""
+    window: Window | None = None
+    for path in [Path(file)] if file is not None else [*last, *demo_paths()]:
+        path = path.absolute()
+        own = file is not None or path in last
+        try:
+            project = load_project(path)
+        except ProjectError as error:
+            sentence = sentence or f"'{path.name}' cannot be opened.\n{error}"
+            continue
+        window = Window(settings, project)
+        window.document.new(project, path if own else None, folder=path.parent)
+        window.begin_looking()
+        if own:
+            settings.add_recent(path)
+        break
+    if window is None:
+        window = Window(settings, project_from_tree(STARTING_POINTS[0].make()))
+    if sentence:
+        window.notices.show_notice("file", sentence, "over")
+    window.files.offer_recovery(found)
+    return window
+
+
+def _close(app: QApplication, window: Window) -> None:
+    """Close like the close button does, also where a dialog asks something and has a loop of its own."""
+    window.close()
+    app.closeAllWindows()
+    app.exit(0)
 
 
 def _tell_fault(

@@ -178,11 +178,11 @@ class Solution(QObject):
         self._follow()
 
     def close(self) -> bool:
-        """End the thread, within a second. False where it would not end in time."""
+        """End the thread, within 0.7 s. False where it would not end in time."""
         self._order.stop()
         self._order.next()
         self._thread.quit()
-        return self._thread.wait(1000)
+        return self._thread.wait(700)
 
     def _follow(self) -> None:
         case = self._document.case
