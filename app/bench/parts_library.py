@@ -39,6 +39,7 @@ class Part:
     tells: str
     source: str
     values: Mapping[str, Any]
+    own: bool = False
 
     def matches(self, text: str) -> bool:
         """Whether every word of the text stands somewhere in the entry."""

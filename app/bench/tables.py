@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from PySide6.QtCore import QEvent, QModelIndex, Qt
+from PySide6.QtCore import QEvent, QModelIndex, QSize, Qt
 from PySide6.QtGui import QGuiApplication, QKeyEvent, QKeySequence
 from PySide6.QtWidgets import (
     QAbstractItemDelegate,
@@ -10,6 +10,7 @@ from PySide6.QtWidgets import (
     QHBoxLayout,
     QLabel,
     QPushButton,
+    QSizePolicy,
     QTableView,
     QToolButton,
     QVBoxLayout,
@@ -37,6 +38,8 @@ LISTS = (
     ("member/attachments", "Attachments"),
     ("/materials", "Materials"),
 )
+#: Rows that the drawer has room for, without scrolling.
+LEAST_ROWS, MOST_ROWS = 3, 7
 
 
 class Tables(QWidget):
@@ -50,6 +53,7 @@ class Tables(QWidget):
         self.setProperty("role", "paper")
         self.setAttribute(Qt.WidgetAttribute.WA_StyledBackground)
         self.setAccessibleName("Tables")
+        self.setSizePolicy(QSizePolicy.Policy.Preferred, QSizePolicy.Policy.Maximum)
         self.model = TableModel(document)
         self.view = TableView(self)
         self.note = QLabel(self)
@@ -132,6 +136,7 @@ class Tables(QWidget):
             tab.setChecked(pointer == self.model.content.list_pointer)
         if current.isValid() and not self.view.currentIndex().isValid():
             self._go_to(current.row(), current.column())
+        self.view.updateGeometry()
         self._tell()
 
     def _follow_sight(self) -> None:
@@ -278,6 +283,12 @@ class TableView(QTableView):
             self._drawer.hide()
         else:
             super().keyPressEvent(event)
+
+    def sizeHint(self) -> QSize:
+        """As many rows as there are, within bounds: the pictures above keep their room."""
+        shown = max(LEAST_ROWS, min(self.model().rowCount() + 1, MOST_ROWS)) if self.model() else LEAST_ROWS
+        row = self.verticalHeader().defaultSectionSize()
+        return QSize(400, self.horizontalHeader().sizeHint().height() + shown * row + 2 * self.frameWidth())
 
     def closeEditor(self, editor: QWidget, hint: QAbstractItemDelegate.EndEditHint) -> None:
         """After Enter in a cell, on to the one below."""

@@ -7,7 +7,9 @@ from copy import deepcopy
 import pytest
 
 from app import provenance
+from app.bench.forms.use_part import use_part
 from app.bench.parts_library import LIBRARY, parts_of_kind
+from app.own_parts import FILE, forget_part, keep_part, own_parts, part_from
 from app.starting_points import STARTING_POINTS, driven_pile, new_tree
 from app.tree import value_at, with_values
 from solver import project_from_tree
@@ -72,3 +74,34 @@ def test_a_mark_is_confirmed_or_forgotten() -> None:
     provenance.forget(tree, "/cases/0")
     provenance.forget(tree, "/materials/0")
     assert "provenance" not in tree
+
+
+def test_own_parts_are_kept_used_as_confirmed_and_dropped(tmp_path) -> None:
+    tree = driven_pile()
+    tree["materials"][0]["young_modulus"] = 207e9
+    kept = part_from(tree, "material", "/cases/0/member/segments/0/material", "our steel")
+    keep_part(tmp_path, kept)
+    keep_part(tmp_path, part_from(tree, "cushion", "/cases/0/load/cushion", "worn oak"))
+    keep_part(tmp_path, kept)
+    assert [part.name for part in own_parts(tmp_path)] == ["worn oak", "our steel"]
+    use_part(tree, own_parts(tmp_path)[1], "/cases/0/member/segments/0/material")
+    project = project_from_tree(tree)
+    assert project.cases[0].material("our steel").young_modulus == 207e9
+    assert project.provenance["/materials/1/density"].state == "confirmed"
+    forget_part(tmp_path, kept)
+    assert [part.name for part in own_parts(tmp_path)] == ["worn oak"]
+
+
+@pytest.mark.parametrize(
+    "text", ["", "nonsense", "{}", '[1, {"kind": "material"}, {"kind": "x", "name": "y"}]']
+)
+def test_a_damaged_file_of_own_parts_is_no_hindrance(tmp_path, text: str) -> None:
+    (tmp_path / FILE).write_text(text, encoding="utf-8")
+    assert own_parts(tmp_path) == []
+
+
+def test_a_part_that_is_not_whole_cannot_be_kept() -> None:
+    tree = driven_pile()
+    assert part_from(tree, "cushion", "/cases/0/load/pile_cushion", "none") is None
+    tree["cases"][0]["load"]["cushion"] = {"stiffness": 1e9, "restitution": 0.5}
+    assert part_from(tree, "cushion", "/cases/0/load/cushion", "stiff") is None

@@ -63,10 +63,10 @@ def _change_shaft(ground: Tree, key: str, context: Context) -> None:
 
 DYNAMIC = "How the ground resists: with quake and damping, or as an elastic half-space."
 LAWS = options(
-    ("smith", "Smith damping", "Dynamic part J |Rs| v: with the static resistance of the moment."),
-    ("viscous", "viscous damping", "Dynamic part J Ru v: with the full resistance."),
+    ("smith", "Smith", "Dynamic part J |Rs| v: with the static resistance of the moment."),
+    ("viscous", "viscous", "Dynamic part J Ru v: with the full resistance."),
     ("power", "power of velocity", "Dynamic part J Ru |v|^N (Gibson and Coyle 1968, from memory)."),
-    ("radiation", "elastic half-space", "Radiation of waves into the ground, with slip."),
+    ("radiation", "half-space", "Elastic half-space: waves radiate into the ground, with slip."),
 )
 OF_GROUND: Choosers = {
     (Case, "far_end"): Chooser(

@@ -36,7 +36,7 @@ class FieldRow(QWidget):
         metrics = self.fontMetrics()
         self.label = QLabel(spec.label, self)
         self.label.setWordWrap(True)
-        self.label.setFixedWidth(metrics.horizontalAdvance(LABEL_ROOM))
+        self.label.setFixedWidth(metrics.horizontalAdvance(LABEL_ROOM) + GAP)
         self.label.setMinimumHeight(FIELD)
         self._grid.addWidget(self.label, 0, 0)
         self._grid.setColumnMinimumWidth(2, metrics.horizontalAdvance(UNIT_ROOM))

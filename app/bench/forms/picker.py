@@ -2,14 +2,27 @@
 
 from __future__ import annotations
 
+from collections.abc import Callable
+
 from PySide6.QtCore import QEvent, QModelIndex, QObject, QPoint, Qt
 from PySide6.QtGui import QKeyEvent
-from PySide6.QtWidgets import QFrame, QLabel, QLineEdit, QListWidget, QListWidgetItem, QVBoxLayout, QWidget
+from PySide6.QtWidgets import (
+    QFrame,
+    QLabel,
+    QLineEdit,
+    QListWidget,
+    QListWidgetItem,
+    QPushButton,
+    QVBoxLayout,
+    QWidget,
+)
 
 from app.bench.forms.use_part import use_part
 from app.bench.parts_library import Part, PartKind, parts_of_kind
 from app.document import Document
 from app.look.spacing import GAP, SPACE
+from app.own_parts import forget_part, keep_part, own_parts, part_from
+from app.settings import user_settings
 
 TITLES: dict[PartKind, str] = {
     "material": "Materials",
@@ -32,6 +45,7 @@ class PartPicker(QFrame):
         self.setProperty("role", "paper")
         self.setFrameShape(QFrame.Shape.StyledPanel)
         self._document, self._kind, self._pointer = document, kind, pointer
+        self._folder = user_settings().folder
         column = QVBoxLayout(self)
         column.setContentsMargins(SPACE, SPACE, SPACE, SPACE)
         column.setSpacing(GAP)
@@ -47,10 +61,14 @@ class PartPicker(QFrame):
         note = QLabel("Typical values: they stay marked in the project until you confirm them.", self)
         note.setProperty("role", "small")
         note.setWordWrap(True)
-        for widget in (title, self.search, self.list, note):
+        self.keep = QPushButton(self)
+        self.keep.setProperty("role", "link")
+        self.keep.clicked.connect(self._keep)
+        for widget in (title, self.search, self.list, self.keep, note):
             column.addWidget(widget)
         self.search.textChanged.connect(self._fill)
         self.search.installEventFilter(self)
+        self.list.installEventFilter(self)
         self.list.itemClicked.connect(self._take)
         self.list.itemActivated.connect(self._take)
         self._fill("")
@@ -69,8 +87,13 @@ class PartPicker(QFrame):
         self.search.setFocus()
 
     def eventFilter(self, watched: QObject, event: QEvent) -> bool:
-        """Up, down and Enter in the search line act on the list."""
-        if isinstance(event, QKeyEvent) and event.type() == QEvent.Type.KeyPress:
+        """Up, down and Enter in the search line act on the list; Delete in the list drops an own part."""
+        pressed = isinstance(event, QKeyEvent) and event.type() == QEvent.Type.KeyPress
+        if isinstance(event, QKeyEvent) and pressed and watched is self.list:
+            if event.key() in (Qt.Key.Key_Delete, Qt.Key.Key_Backspace):
+                self._forget()
+                return True
+        elif isinstance(event, QKeyEvent) and pressed:
             step = {Qt.Key.Key_Down: 1, Qt.Key.Key_Up: -1}.get(Qt.Key(event.key()))
             if step is not None:
                 self.list.setCurrentRow(max(0, min(self.list.currentRow() + step, self.list.count() - 1)))
@@ -83,11 +106,40 @@ class PartPicker(QFrame):
 
     def _fill(self, text: str) -> None:
         self.list.clear()
-        for part in parts_of_kind(self._kind, text):
+        own = [part for part in own_parts(self._folder) if part.kind == self._kind and part.matches(text)]
+        for part in (*own, *parts_of_kind(self._kind, text)):
             lines = [part.name, *([part.tells] if part.tells else []), part.source]
             item = QListWidgetItem("\n".join(lines), self.list)
             item.setData(Qt.ItemDataRole.UserRole, part)
+            if part.own:
+                item.setToolTip("Kept by you for all projects. Delete drops it; projects keep their copy.")
         self.list.setCurrentRow(0)
+        name = " ".join(text.split())
+        here = part_from(self._document.tree, self._kind, self._pointer, name)
+        self.keep.setEnabled(bool(name) and here is not None)
+        self.keep.setText(
+            f"Keep what is here as '{name}'" if name else "To keep what is here, type a name above"
+        )
+
+    def _keep(self) -> None:
+        """Keep the part that the project has at this place, for all projects of this user."""
+        part = part_from(self._document.tree, self._kind, self._pointer, " ".join(self.search.text().split()))
+        if part is not None:
+            self._change(lambda: keep_part(self._folder, part))
+
+    def _forget(self) -> None:
+        item = self.list.currentItem()
+        part: Part | None = item.data(Qt.ItemDataRole.UserRole) if item else None
+        if part is not None and part.own:
+            self._change(lambda: forget_part(self._folder, part))
+
+    def _change(self, write: Callable[[], None]) -> None:
+        try:
+            write()
+        except OSError as error:
+            self.keep.setText(f"Own parts cannot be kept in {self._folder}: {error.strerror or error}.")
+        else:
+            self._fill(self.search.text())
 
     def _take(self, item: QListWidgetItem | QModelIndex) -> None:
         part: Part = item.data(Qt.ItemDataRole.UserRole)

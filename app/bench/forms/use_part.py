@@ -5,12 +5,12 @@ from __future__ import annotations
 from typing import Any
 
 from app.bench.parts_library import Part
-from app.provenance import forget, forget_missing, mark_typical
-from app.tree import value_at
+from app.provenance import confirm, forget, forget_missing, mark_typical
+from app.tree import copied, value_at
 
 Tree = dict[str, Any]
-#: Keys that say how a value is meant, and are no typical values themselves.
-NOT_MARKED = ("shape", "damping_law", "poisson_ratio")
+#: Numbers that matter too little to ask about.
+NOT_MARKED = ("poisson_ratio",)
 #: What stands in the way of a key of a part: the other way of telling the same thing.
 OTHER_WAYS = {
     "cushion": ("stiffness",),
@@ -41,7 +41,7 @@ def use_part(tree: Tree, part: Part, pointer: str) -> None:
         place[other] = None
     if part.kind == "cushion":
         place.update({k: v for k, v in SIZE.items() if place.get(k) is None})
-    place.update(part.values)
+    place.update(copied(dict(part.values)))
     forget_missing(tree)
     _mark(tree, part, pointer)
 
@@ -57,7 +57,7 @@ def _name_material(tree: Tree, part: Part, pointer: str) -> None:
     if same is None or any(same[k] != v for k, v in part.values.items()):
         name = free_name(part.name, names)
         limits = {"compression": None, "tension": None}
-        material = {"name": name, **part.values, "law": {"kind": "elastic"}, "limits": limits}
+        material = {"name": name, "law": {"kind": "elastic"}, "limits": limits, **copied(dict(part.values))}
         tree["materials"].append(material)
         _mark(tree, part, f"/materials/{len(tree['materials']) - 1}")
     parent, key = pointer.rsplit("/", 1)
@@ -66,8 +66,10 @@ def _name_material(tree: Tree, part: Part, pointer: str) -> None:
 
 def _mark(tree: Tree, part: Part, pointer: str) -> None:
     for key, value in part.values.items():
-        if key not in NOT_MARKED and value is not None:
+        if isinstance(value, int | float) and key not in NOT_MARKED:
             mark_typical(tree, f"{pointer}/{key}", part.source)
+            if part.own:
+                confirm(tree, f"{pointer}/{key}")
 
 
 def free_name(wanted: str, names: list[str]) -> str:
