@@ -46,6 +46,8 @@ def horizontal_ticks(
     if most is None:
         most = max(int(axis.length / (metrics.horizontalAdvance("−000") + 0.9 * metrics.height())), 2)
     values = ticks(min(axis.low, axis.high), max(axis.low, axis.high), most)
+    if len(values) < 3:  # a narrow plot whose tidy step is too large by chance
+        values = ticks(min(axis.low, axis.high), max(axis.low, axis.high), most + 2)
     up = -1 if inwards else 1
     painter.setPen(pen(palette().line))
     painter.drawLine(QLineF(axis.start, y, axis.start + axis.length, y))

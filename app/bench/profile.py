@@ -147,10 +147,11 @@ class Profile(Picture):
         """The unit and the moment behind the heading, as much of it as there is room for."""
         x = 14 + QFontMetricsF(font("strong")).horizontalAdvance(TITLE)
         unit = self.units.unit(self.dimension, self._largest())
-        words = f"{unit} at {self.units.show(self.sight.time, 'time')}"
+        moment = self.units.show(self.sight.time, "time")
         painter.setFont(self.font())
-        if QFontMetricsF(self.font()).horizontalAdvance(words) > self.width() - x:
-            words = unit
+        metrics, room = QFontMetricsF(self.font()), self.width() - x - 6
+        choices = (f"{unit} at {moment}", f"{unit}, {moment}", unit)
+        words = next((w for w in choices if metrics.horizontalAdvance(w) <= room), unit)
         put(painter, x, 0.5 * self.margins().header, words, palette().soft_ink)
 
     def _draw_now(self, painter: QPainter, distance: Axis) -> None:

@@ -277,7 +277,7 @@ def test_refused_says_why_above_the_greyed_findings(open_bench, pile, qtbot, mon
         raise SolveError("This case cannot be solved, for the sake of this test.")
 
     monkeypatch.setattr(the.solution._worker, "_solve", refuse)
-    the.document.edit("Length", "member/segments/0/length", 15.0)
+    assert the.document.edit("Length", "member/segments/0/length", 15.5)
     qtbot.waitUntil(lambda: the.solution.state == "refused")
     first, second, *_ = the.bench.findings.rows()
     assert first.text() == "✕ This case cannot be solved, for the sake of this test."
