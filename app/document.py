@@ -13,7 +13,9 @@ from PySide6.QtGui import QUndoCommand, QUndoStack
 
 from app import tree as trees
 from app.disk import DiskState, disk_state
-from solver import Case, Problem, Project, ProjectError, load_project, project_from_tree, project_to_text
+from app.faults import sentence_for
+from app.units import units_of
+from solver import Case, Project, ProjectError, load_project, project_from_tree, project_to_text
 
 #: Edits with the same `merge` key become one step of undo while no longer than this lies between them, s.
 BURST = 2.0
@@ -129,7 +131,7 @@ class Document(QObject):
             except LookupError:
                 sentence = "This part is no longer in the project."
             except ProjectError as error:
-                sentence = _sentence_for(pointer, error.problems)
+                sentence = sentence_for(pointer, error.problems, after, units_of(self._project))
             else:
                 self._rejected = {p: r for p, r in self._rejected.items() if p not in attempt}
                 self._push(label, project, merge)
@@ -155,7 +157,7 @@ class Document(QObject):
         try:
             project = self._validated(after)
         except ProjectError as error:
-            sentence = _sentence_for(where, error.problems)
+            sentence = sentence_for(where, error.problems, after, units_of(self._project))
             if where:
                 self.reject(where, trees.value_at(after, where), sentence, waiting=False)
             else:
@@ -294,14 +296,6 @@ class _Edit(QUndoCommand):
 
     def undo(self) -> None:
         self._document._show(self._before, keep_rejected=False)
-
-
-def _sentence_for(pointer: str, problems: tuple[Problem, ...]) -> str:
-    """What is wrong, as a sentence; the place is named where it is not the place of the edit."""
-    here = [p for p in problems if p.pointer == pointer or pointer.startswith(p.pointer + "/")]
-    problem = (here or list(problems))[0]
-    text = problem.sentence if here or not problem.pointer else f"{problem.pointer}: {problem.sentence}"
-    return text[:1].upper() + text[1:] + ("" if text.endswith((".", "?", ")")) else ".")
 
 
 def _write(path: Path, text: str) -> None:

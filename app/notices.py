@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Callable, Sequence
 from typing import Literal
 
-from PySide6.QtCore import Qt
+from PySide6.QtCore import QEvent, Qt
 from PySide6.QtWidgets import (
     QFrame,
     QHBoxLayout,
@@ -31,6 +31,7 @@ class Notices(QWidget):
     def __init__(self, parent: QWidget | None = None) -> None:
         super().__init__(parent)
         self._strips: dict[str, QFrame] = {}
+        self._shown: dict[str, tuple[str, Kind, Sequence[Choice]]] = {}
         self._rows = QVBoxLayout(self)
         self._rows.setContentsMargins(0, 0, 0, 0)
         self._rows.setSpacing(GAP)
@@ -43,6 +44,7 @@ class Notices(QWidget):
             if old.property("text") == text:
                 return
             self.drop(key)
+        self._shown[key] = text, kind, choices
         strip = self._strip(key, text, kind, choices)
         strip.setProperty("text", text)
         self._strips[key] = strip
@@ -52,11 +54,20 @@ class Notices(QWidget):
     def drop(self, key: str) -> None:
         """Take a strip away, if it is there."""
         strip = self._strips.pop(key, None)
+        self._shown.pop(key, None)
         if strip is not None:
             self._rows.removeWidget(strip)
             strip.hide()
             strip.deleteLater()
         self.setVisible(bool(self._strips))
+
+    def changeEvent(self, event: QEvent) -> None:
+        """Draw signs and icons anew in another palette."""
+        if event.type() == QEvent.Type.PaletteChange:
+            for key, shown in list(self._shown.items()):
+                self.drop(key)
+                self.show_notice(key, *shown)
+        super().changeEvent(event)
 
     def text_of(self, key: str) -> str | None:
         """What the strip with this key says."""

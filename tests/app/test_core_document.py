@@ -47,7 +47,7 @@ def test_what_is_not_valid_stays_outside_with_a_sentence(document):
     assert not document.edit("Length", "member/segments/0/length", -1.0)
     assert document.project is before
     assert document.undo_stack.count() == 0
-    assert document.problem_at("member/segments/0/length") == "Must be more than 0, not -1.0."
+    assert document.problem_at("member/segments/0/length") == "Must be more than 0."
     assert document.rejected["/cases/0/member/segments/0/length"].given == -1.0
     assert document.edit("Name", "member/segments/0/name", "Mast")  # others are not blocked
     assert document.problem_at("member/segments/0/length")
@@ -78,7 +78,7 @@ def test_rejected_entries_go_when_their_list_changes(document):
 def test_a_change_without_a_field_is_refused_by_a_sentence(document, qtbot):
     with qtbot.waitSignal(document.refused) as caught:
         assert not document.edit_tree("Remove", lambda tree: tree["cases"][0]["member"]["segments"].clear())
-    assert caught.args == ["/cases/0/member/segments: needs at least one entry."]
+    assert caught.args == ["Member, segments: needs at least one entry."]
 
 
 def test_typing_bursts_are_one_step(document, monkeypatch):
@@ -194,6 +194,19 @@ def test_cases_are_copied_moved_renamed_and_removed(document):
     assert remove_case(document)
     assert [c.name for c in document.project.cases] == [name]
     assert not remove_case(document)
+
+
+def test_faults_are_told_in_the_units_shown_and_with_their_place_in_words(document):
+    document.edit("Units", "/display_units", "us")
+    document.edit("Move", "gauges/0/position", 30.48)
+    assert document.problem_at("gauges/0/position") == (
+        "Gauge 'Head' at 100\u00a0ft lies beyond the member's end at 65.6\u00a0ft."
+    )
+    document.forget_rejected()
+    document.edit("Shorten", "member/segments/0/length", 5.0)
+    assert document.problem_at("member/segments/0/length").startswith(
+        "Gauges, Middle, position: gauge 'Middle'"
+    )
 
 
 def test_differences_are_told_in_words(document):

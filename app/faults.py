@@ -1,0 +1,43 @@
+"""What is wrong with an entry, as a person reads it: in the units shown, and with the place in words."""
+
+from __future__ import annotations
+
+import re
+from collections.abc import Sequence
+from typing import Any
+
+from app.tree import parts_of
+from app.units import Units
+from solver import Problem
+
+#: Lengths in the sentences of the model are in metres.
+METRES = re.compile(r"(?<![\w.])(-?\d+(?:\.\d+)?(?:e[-+]?\d+)?) m(?![\w/])")
+#: What was given, as the model read it, in SI: the person sees what she typed beside the sentence.
+GIVEN = re.compile(r", not -?[\d.]+(?:e[-+]?\d+)?$")
+
+
+def sentence_for(pointer: str, problems: Sequence[Problem], tree: Any, units: Units) -> str:
+    """One sentence on the fault at the place of an edit, or on the first elsewhere, with its place in words."""
+    here = [p for p in problems if p.pointer == pointer or pointer.startswith(p.pointer + "/")]
+    problem = (here or list(problems))[0]
+    text = METRES.sub(lambda m: units.show(float(m.group(1)), "length"), GIVEN.sub("", problem.sentence))
+    if not here and problem.pointer:
+        text = f"{place_in_words(problem.pointer, tree)}: {text}"
+    return text[:1].upper() + text[1:] + ("" if text.endswith((".", "?", ")")) else ".")
+
+
+def place_in_words(pointer: str, tree: Any) -> str:
+    """ "/cases/0/gauges/1/position" as "gauges, Middle, position"; the case only where there are several."""
+    words, node = [], tree
+    for part in parts_of(pointer):
+        if isinstance(node, list):
+            node = node[int(part)] if part.isdecimal() and int(part) < len(node) else None
+            words.append(
+                str(node["name"]) if isinstance(node, dict) and node.get("name") else f"number {part}"
+            )
+        else:
+            node = node.get(part) if isinstance(node, dict) else None
+            words.append(part.replace("_", " "))
+    if words[:1] == ["cases"]:
+        words = words[1:] if len(tree["cases"]) > 1 else words[2:]
+    return ", ".join(words) or "the project"
