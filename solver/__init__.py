@@ -2,7 +2,9 @@
 
 from solver.answer.findings import Findings, findings_of
 from solver.answer.result import Envelope, Event, Fields, GaugeRecord, Ledger, Peak, Result
+from solver.convergence import Change, MeshCheck, check_mesh
 from solver.errors import SolveError
+from solver.many import Outcome, solve_many
 from solver.marching import Progress
 from solver.model.file import ProjectError, load_project, parse_project, project_from_tree, project_to_text
 from solver.model.problem import Problem
@@ -11,12 +13,15 @@ from solver.run import solve
 
 __all__ = [
     "Case",
+    "Change",
     "Envelope",
     "Event",
     "Fields",
     "Findings",
     "GaugeRecord",
     "Ledger",
+    "MeshCheck",
+    "Outcome",
     "Peak",
     "Problem",
     "Progress",
@@ -24,10 +29,12 @@ __all__ = [
     "ProjectError",
     "Result",
     "SolveError",
+    "check_mesh",
     "findings_of",
     "load_project",
     "parse_project",
     "project_from_tree",
     "project_to_text",
     "solve",
+    "solve_many",
 ]

@@ -13,7 +13,7 @@ from solver.numerics.equilibrium import State
 from solver.numerics.march import march
 
 #: Movement (m) still to come at which the member counts as at rest.
-STILL = 1e-9
+STILL = 1e-8
 
 
 def settle(chain: Chain, state: State) -> bool:
