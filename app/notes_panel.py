@@ -13,6 +13,8 @@ from app.look.spacing import GAP, SPACE
 #: Typed text becomes an edit after a pause of this length, ms.
 PAUSE = 600
 FEWEST, MOST = 2, 4
+#: Margins and frame of the field above and below its text, px.
+FRAME = 10
 
 
 class NotesField(QPlainTextEdit):
@@ -59,7 +61,7 @@ class NotesField(QPlainTextEdit):
 
     def _fit(self) -> None:
         lines = min(max(round(self.document().size().height()), FEWEST), MOST)
-        self.setFixedHeight(lines * self.fontMetrics().lineSpacing() + 2 * SPACE)
+        self.setFixedHeight(lines * self.fontMetrics().lineSpacing() + FRAME)
 
 
 class NotesPanel(QFrame):

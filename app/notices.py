@@ -88,7 +88,7 @@ class Notices(QWidget):
             sign = QLabel(strip)
             colour = palette().over if kind == "over" else palette().ink
             sign.setPixmap(pixmap(kind, ICON, colour, self.devicePixelRatioF()))
-            row.addWidget(sign, 0, Qt.AlignmentFlag.AlignTop)
+            row.addWidget(sign, 0, Qt.AlignmentFlag.AlignVCenter)
         words = QLabel(text, strip)
         words.setWordWrap(True)
         words.setTextInteractionFlags(Qt.TextInteractionFlag.TextSelectableByMouse)

@@ -178,11 +178,16 @@ class Solution(QObject):
         self._follow()
 
     def close(self) -> bool:
-        """End the thread, within 0.7 s. False where it would not end in time."""
+        """End the thread, within 0.7 s. False where it would not end in time: it then ends by itself some time later."""
         self._order.stop()
         self._order.next()
         self._thread.quit()
-        return self._thread.wait(700)
+        if self._thread.wait(700):
+            return True
+        thread = self._thread
+        thread.setParent(None)  # destroying a thread that runs aborts the process
+        thread.finished.connect(lambda: thread.deleteLater())  # and this holds it until it has ended
+        return False
 
     def _follow(self) -> None:
         case = self._document.case

@@ -19,6 +19,12 @@ from app.window import Window
 from solver import SolveError, load_project, project_from_tree, solve
 
 
+@pytest.fixture(scope="module", autouse=True)
+def _compiled():
+    """Compiling the kernels cannot be broken off, and takes longer than closing may: it is done before."""
+    solve(project_from_tree(rod_or_bar()).cases[0])
+
+
 @pytest.fixture
 def windows(qtbot, tmp_path, qapp):
     """Makes windows with settings of their own, and closes them at the end."""
