@@ -178,7 +178,7 @@ class Solution(QObject):
         self._follow()
 
     def close(self) -> bool:
-        """End the thread, within 0.7 s. False where it would not end in time: it then ends by itself some time later."""
+        """End the thread, within 0.7 s. False where it would not end in time: it then ends by itself later."""
         self._order.stop()
         self._order.next()
         self._thread.quit()
