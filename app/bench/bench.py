@@ -8,8 +8,8 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 
-from PySide6.QtCore import QSize
-from PySide6.QtGui import QColor, QKeySequence, QPainter, QPaintEvent, QShortcut
+from PySide6.QtCore import QSize, Qt
+from PySide6.QtGui import QColor, QKeyEvent, QKeySequence, QPainter, QPaintEvent, QShortcut
 from PySide6.QtWidgets import QAbstractButton, QApplication, QComboBox, QVBoxLayout, QWidget
 
 from app.bench.at_cursor import AtCursor
@@ -66,11 +66,24 @@ class Bench(QWidget):
     def paintEvent(self, event: QPaintEvent) -> None:
         QPainter(self).fillRect(event.rect(), QColor(palette().paper))
 
+    def keyPressEvent(self, event: QKeyEvent) -> None:
+        """Keys that no picture has taken: the arrows step through time, with Shift ten steps at once."""
+        way = {Qt.Key.Key_Left: -1, Qt.Key.Key_Right: 1}.get(Qt.Key(event.key()), 0)
+        if way:
+            self.time_bar.step(way * (10 if event.modifiers() & Qt.KeyboardModifier.ShiftModifier else 1))
+        elif event.key() == Qt.Key.Key_Home:
+            self._show_all()
+        else:
+            super().keyPressEvent(event)
+
+    def _show_all(self) -> None:
+        self._sight.set(time_range=None, distance_range=None)
+
     def _shortcuts(self) -> None:
         space = QShortcut(QKeySequence("Space"), self)
         space.activated.connect(self._space)
         home = QShortcut(QKeySequence("Ctrl+0"), self)
-        home.activated.connect(lambda: self._sight.set(time_range=None, distance_range=None))
+        home.activated.connect(self._show_all)
 
     def _space(self) -> None:
         """Play or pause; a button or a list that has the focus is worked by the space bar as everywhere."""

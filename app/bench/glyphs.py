@@ -8,8 +8,12 @@ from PySide6.QtCore import QLineF, QPointF, QRectF, Qt
 from PySide6.QtGui import QColor, QPainter, QPainterPath, QPen, QPolygonF
 
 
-def pen(colour: str, width: float = 1.0, style: Qt.PenStyle = Qt.PenStyle.SolidLine) -> QPen:
-    made = QPen(QColor(colour), width, style)
+def pen(
+    colour: str, width: float = 1.0, style: Qt.PenStyle = Qt.PenStyle.SolidLine, opacity: float = 1.0
+) -> QPen:
+    shade = QColor(colour)
+    shade.setAlphaF(opacity)
+    made = QPen(shade, width, style)
     made.setCapStyle(Qt.PenCapStyle.FlatCap)
     return made
 

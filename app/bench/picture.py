@@ -223,10 +223,14 @@ class Picture(QWidget):
         self._dragged_from = None
 
     def mouseDoubleClickEvent(self, event: QMouseEvent) -> None:
-        self.show_all()
+        if self.has_time or self.has_distance:
+            self.show_all()
 
     def wheelEvent(self, event: QWheelEvent) -> None:
         """Zoom about the pointer: both axes, with Control time only, with Shift distance only."""
+        if not (self.has_time or self.has_distance):
+            event.ignore()  # what lies around it may scroll
+            return
         delta = event.angleDelta()
         notches = (delta.y() or delta.x()) / 120
         factor = ZOOM_PER_NOTCH**notches
@@ -252,8 +256,9 @@ class Picture(QWidget):
     def contextMenuEvent(self, event: QContextMenuEvent) -> None:
         menu = QMenu(self)
         self.fill_menu(menu)
-        menu.addAction("Show all of both axes", self.show_all)
-        menu.addSeparator()
+        if self.has_time or self.has_distance:
+            menu.addAction("Show all of both axes", self.show_all)
+            menu.addSeparator()
         add_export_actions(menu, self)
         menu.exec(event.globalPos())
 

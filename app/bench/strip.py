@@ -24,6 +24,9 @@ from app.look.palette import palette
 from app.sight import Sight
 from app.solving import Solution
 
+#: Opacity of the second curve of a pair.
+FAINT = 0.6
+
 
 class Strip(Picture):
     """`name` as in `Sight.strips`, with ":Gauge" behind it where it is about one gauge; the last strip carries the
@@ -115,7 +118,7 @@ class Strip(Picture):
         painter.setRenderHint(QPainter.RenderHint.Antialiasing)
         painter.setBrush(Qt.BrushStyle.NoBrush)
         for curve, shape in zip(content.curves, drawn, strict=True):
-            painter.setPen(pen(curve.hue, 1.0, curve.style))
+            painter.setPen(pen(curve.hue, 1.0, curve.style, FAINT if curve.faint else 1.0))
             painter.drawPolyline(polygon(shape.x, shape.y))
         self._draw_ticks(painter, content, plot, time)
         self._draw_names(painter, content, drawn, plot)

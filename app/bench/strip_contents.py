@@ -44,13 +44,15 @@ SMALL_SHARE = 0.01
 
 @dataclass(frozen=True, eq=False)
 class Curve:
-    """One curve: its name as it stands on it, its colour, times (s) and values (SI), both of shape (n,)."""
+    """One curve: its name as it stands on it, its colour, times (s) and values (SI), both of shape (n,). `faint`: the
+    second of a pair, drawn lighter than the first."""
 
     name: str
     hue: str
     time: Array
     values: Array
     style: Qt.PenStyle = SOLID
+    faint: bool = False
 
 
 @dataclass(frozen=True, eq=False)
@@ -104,7 +106,7 @@ def _force_pair(result: Result, gauge: GaugeRecord, units: Units) -> Content:
     product = "impedance × velocity" if sign < 0 else "− impedance × velocity"
     curves = (
         Curve("force", hue, gauge.time, sign * gauge.force),
-        Curve(product, hue, gauge.time, moved, DASHED),
+        Curve(product, hue, gauge.time, moved, faint=True),
     )
     ticks: tuple[float, ...] = ()
     if gauge.on == "member" and len(gauge.time):
@@ -134,7 +136,7 @@ def _waves(result: Result, gauge: GaugeRecord, units: Units) -> Content:
         "force",
         (
             Curve("↓ down-going wave", hue, gauge.time, sign * gauge.down_wave),
-            Curve("↑ up-going wave", hue, gauge.time, sign * gauge.up_wave, DASHED),
+            Curve("↑ up-going wave", hue, gauge.time, sign * gauge.up_wave, faint=True),
         ),
     )
 

@@ -284,3 +284,19 @@ def test_refused_says_why_above_the_greyed_findings(open_bench, pile, qtbot, mon
     assert first.isEnabled()
     assert not second.isEnabled()
     assert the.bench.profile.greyed() == "cannot be solved"
+
+
+def test_arrow_keys_step_through_time_and_space_plays(open_bench, pile, qtbot):
+    the = open_bench(pile)
+    the.window.activateWindow()
+    the.bench.profile.setFocus()
+    qtbot.keyClick(the.bench.profile, Qt.Key.Key_Right)
+    assert the.sight.time == pytest.approx(0.03 / 400)
+    qtbot.keyClick(the.bench.profile, Qt.Key.Key_Right, Qt.KeyboardModifier.ShiftModifier)
+    assert the.sight.time == pytest.approx(11 * 0.03 / 400)
+    qtbot.keyClick(the.bench.profile, Qt.Key.Key_Left)
+    assert the.sight.time == pytest.approx(10 * 0.03 / 400)
+    qtbot.keyClick(the.bench.profile, Qt.Key.Key_Space)
+    assert the.bench.time_bar.playing
+    qtbot.keyClick(the.bench.profile, Qt.Key.Key_Space)
+    assert not the.bench.time_bar.playing
