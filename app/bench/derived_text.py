@@ -172,10 +172,10 @@ def _run(seen: Seen) -> Lines:
 def _material(seen: Seen, index: int) -> Lines:
     material, units = seen.project.materials[index], seen.units
     used = [
-        s.name
-        for c in seen.project.cases
-        for s in (*c.member.segments, *c.ram_segments)
-        if s.material == material.name
+        segment.name
+        for case in seen.project.cases
+        for segment in (*case.member.segments, *case.ram_segments)
+        if material.name in (segment.material, getattr(segment.section, "fill", None))
     ]
     names = ", ".join(dict.fromkeys(used)) or "nothing"
     return [

@@ -70,7 +70,7 @@ def fill_cells(
     try:
         wide = _content(tree, context, content, units, document) if more > 0 else content
     except ProjectError as error:
-        return sentence_of(error)
+        return sentence_of(error, tree, document)
     faults: list[Fault] = []
     for cell in sorted(cells, key=lambda c: not isinstance(_column_spec(content, c), ChoiceSpec)):
         fault = _put(tree, context, wide, cell, units)
@@ -79,9 +79,9 @@ def fill_cells(
     forget_changed(before, tree)
     tree.setdefault("provenance", None)  # so that it goes where the last mark has gone
     try:
-        project_from_tree(tree, document.path.parent if document.path else None)
+        project_from_tree(tree, document.folder)
     except ProjectError as error:
-        return sentence_of(error)
+        return sentence_of(error, tree, document)
     title = label or _label(context, content, cells)
     document.edit_tree(title, lambda now: now.update(tree))
     for pointer in {_pointer(context, wide, cell) for cell in cells} & document.rejected.keys():
@@ -108,7 +108,7 @@ def _extend(tree: Tree, context: Context, list_pointer: str, count: int) -> None
 
 def _content(tree: Tree, context: Context, content: Content, units: Units, document: Document) -> Content:
     """The table of the extended list, with the columns in the order that the user saw."""
-    project = project_from_tree(tree, document.path.parent if document.path else None)
+    project = project_from_tree(tree, document.folder)
     index = int(context.at.rsplit("/", 1)[1])
     wide = content_of(Context(tree, project.cases[index], context.at), content.list_pointer, units)
     return Content(content.list_pointer, content.columns, wide.rows)

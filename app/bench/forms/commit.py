@@ -8,9 +8,10 @@ from typing import Any
 from app.bench.forms.labels import label_of
 from app.bench.forms.spec import CheckSpec, ChoiceSpec, NumberSpec, Spec, TextSpec, Tree
 from app.document import Document
+from app.faults import sentence_for
 from app.provenance import confirm, forget_changed, mark_at
 from app.tree import value_at
-from app.units import Units
+from app.units import Units, units_of
 from solver import ProjectError, project_from_tree
 
 
@@ -55,16 +56,15 @@ def _fault_of(document: Document, change: Callable[[Tree], None]) -> str | None:
     tree = document.tree
     change(tree)
     try:
-        project_from_tree(tree, document.path.parent if document.path else None)
+        project_from_tree(tree, document.folder)
     except ProjectError as error:
-        return sentence_of(error)
+        return sentence_of(error, tree, document)
     return None
 
 
-def sentence_of(error: ProjectError) -> str:
-    """The first fault of a project that is not valid, as a sentence."""
-    text = error.problems[0].sentence
-    return text[:1].upper() + text[1:] + ("" if text.endswith(".") else ".")
+def sentence_of(error: ProjectError, tree: Tree, document: Document) -> str:
+    """The first fault of a tree that is not valid, as a sentence with its place."""
+    return sentence_for("", error.problems, tree, units_of(document.project))
 
 
 def put_check(document: Document, spec: CheckSpec, on: bool) -> bool:

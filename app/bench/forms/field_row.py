@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-import re
 from typing import Any
 
 from PySide6.QtCore import Qt
@@ -84,11 +83,9 @@ class FieldRow(QWidget):
         self.show_value(units, problem is not None)
 
     def show_problem(self, sentence: str | None) -> None:
-        """Say under the field what is wrong, or nothing. The place in the file is no word for the screen."""
-        text = re.sub(r"^(/\S+): ", "", sentence) if sentence else ""
-        text = f"✕ {text[:1].upper()}{text[1:]}" if text else ""
-        self._problem.setText(text)
-        self._problem.setVisible(bool(text))
+        """Say under the field what is wrong, or nothing."""
+        self._problem.setText(f"✕ {sentence}" if sentence else "")
+        self._problem.setVisible(bool(sentence))
 
     def show_value(self, units: Units, refused: bool) -> None:
         """Show the value in the editor. `refused`: what was entered last was not taken."""

@@ -15,6 +15,7 @@ from app.bench.forms.choosers_member import OF_MEMBER
 from app.bench.forms.kinds import words_of
 from app.bench.forms.more_fields import INSTEAD, MORE, ONLY_IF
 from app.bench.forms.spec import CheckSpec, ChoiceSpec, Context, NumberSpec, Option, Spec, TextSpec, Tree
+from app.bench.forms.use_part import name_material
 from app.provenance import forget_missing
 from app.tree import value_at
 from solver.model.member import Segment
@@ -73,7 +74,16 @@ def _own_spec(
     label, tells = declared.WORDS.get((model, name), (name.replace("_", " ").capitalize(), ""))
     if (model, name) in NAMES_A_MATERIAL:
         options = tuple(Option(material, material) for material in context.material_names)
-        return ChoiceSpec(at, label, tells, value=value, options=options, pick="material", pick_at=at)
+        return ChoiceSpec(
+            at,
+            label,
+            tells,
+            value=value,
+            options=options,
+            change=lambda tree, key: name_material(tree, at, key),
+            pick="material",
+            pick_at=at,
+        )
     if declared.is_type(model, name, bool):
         return CheckSpec(at, label, tells, value=bool(value))
     if declared.is_type(model, name, int):

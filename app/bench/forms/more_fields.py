@@ -15,6 +15,7 @@ from solver.model.material import Limits, Material, material_from_any_two
 from solver.model.member import Attachment, Member, Segment
 from solver.model.project import Gauge
 from solver.model.quantity import Bounds
+from solver.model.section import FilledPipe
 from solver.model.surroundings import Ground, ShaftTotal
 
 Rows = Callable[[Context, str], list[Spec]]
@@ -33,7 +34,8 @@ def _position_rows(field: str) -> Rows:
     def rows(context: Context, pointer: str) -> list[Spec]:
         ground = context.case.ground
         level = ground.level_of_struck_end if ground else None
-        if level is None:
+        on = value_at(context.tree, f"{pointer}/on")
+        if level is None or on not in (None, "member"):
             return []
         distance = value_at(context.tree, f"{pointer}/{field}")
 
@@ -254,6 +256,10 @@ def _points(context: Context, pointer: str) -> list[Spec]:
     ]
 
 
+def _is_upper_end(context: Context, pointer: str) -> bool:
+    return not pointer.endswith("/end_section")
+
+
 def _is_velocity(context: Context, pointer: str) -> bool:
     return bool(value_at(context.tree, f"{pointer}/quantity") == "velocity")
 
@@ -262,6 +268,7 @@ def _is_velocity(context: Context, pointer: str) -> bool:
 ONLY_IF: dict[tuple[type[BaseModel], str], Callable[[Context, str], bool]] = {
     (Pulse, "release"): _is_velocity,
     (History, "release"): _is_velocity,
+    (FilledPipe, "fill"): _is_upper_end,
     (Segment, "joint_above"): lambda context, pointer: not pointer.endswith("/segments/0"),
     (Gauge, "on"): lambda context, pointer: bool(context.case.ram_segments),
 }

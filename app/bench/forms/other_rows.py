@@ -2,8 +2,8 @@
 
 from __future__ import annotations
 
-from PySide6.QtCore import Qt, Signal
-from PySide6.QtGui import QKeyEvent, QPaintEvent, QWheelEvent
+from PySide6.QtCore import QPoint, QPointF, QRectF, Qt, Signal
+from PySide6.QtGui import QColor, QKeyEvent, QPainter, QPaintEvent, QPen, QWheelEvent
 from PySide6.QtWidgets import (
     QCheckBox,
     QComboBox,
@@ -23,8 +23,8 @@ from app.bench.forms.picker import PartPicker
 from app.bench.forms.points import ask_for_points, link_points, paste_points
 from app.bench.forms.spec import CheckSpec, ChoiceSpec, PointsSpec, TextSpec
 from app.document import Document
-from app.look import icon
-from app.look.spacing import FIELD, GAP, SPACE
+from app.look import icon, palette, pixmap
+from app.look.spacing import FIELD, GAP, ICON, SPACE
 from app.units import Units
 
 
@@ -162,13 +162,35 @@ class ChoiceRow(FieldRow):
         PartPicker(self.document, self.spec.pick, self.spec.pick_at, self).open_at(self.box)
 
 
+class SwitchBox(QCheckBox):
+    """A box whose frame can be seen on light and on dark paper."""
+
+    def paintEvent(self, event: QPaintEvent) -> None:
+        colours = palette()
+        painter = QPainter(self)
+        painter.setRenderHint(QPainter.RenderHint.Antialiasing)
+        box = QRectF(1, (self.height() - ICON) / 2, ICON, ICON)
+        painter.setPen(
+            QPen(QColor(colours.accent if self.hasFocus() else colours.line), 2 if self.hasFocus() else 1)
+        )
+        painter.setBrush(QColor(colours.raised))
+        painter.drawRoundedRect(box, 3, 3)
+        if self.isChecked():
+            tick = pixmap("within", ICON - 4, colours.ink, self.devicePixelRatioF())
+            painter.drawPixmap(QPointF(box.x() + 2, box.y() + 2), tick)
+
+    def hitButton(self, pos: QPoint) -> bool:
+        """Anywhere in the field, as there is no word beside the box."""
+        return self.rect().contains(pos)
+
+
 class CheckRow(FieldRow):
     """Yes or no."""
 
     def __init__(self, document: Document, spec: CheckSpec, parent: QWidget | None = None) -> None:
         super().__init__(document, spec, parent)
         self.spec: CheckSpec = spec
-        self.box = QCheckBox(self)
+        self.box = SwitchBox(self)
         self.put_editor(self.box)
         self.box.clicked.connect(lambda on: put_check(document, self.spec, on))
 

@@ -27,7 +27,7 @@ def use_part(tree: Tree, part: Part, pointer: str) -> None:
     or the one that is there under that name with the same figures is taken.
     """
     if part.kind == "material" and not isinstance(value_at(tree, pointer), dict):
-        _name_material(tree, part, pointer)
+        _take_material(tree, part, pointer)
         return
     parent, key = pointer.rsplit("/", 1)
     place = value_at(tree, pointer)
@@ -50,7 +50,7 @@ def use_part(tree: Tree, part: Part, pointer: str) -> None:
 SIZE = {"area": 0.16, "thickness": 0.15}
 
 
-def _name_material(tree: Tree, part: Part, pointer: str) -> None:
+def _take_material(tree: Tree, part: Part, pointer: str) -> None:
     names = [material["name"] for material in tree["materials"]]
     name = part.name
     same = next((m for m in tree["materials"] if m["name"] == name), None)
@@ -60,8 +60,17 @@ def _name_material(tree: Tree, part: Part, pointer: str) -> None:
         material = {"name": name, "law": {"kind": "elastic"}, "limits": limits, **copied(dict(part.values))}
         tree["materials"].append(material)
         _mark(tree, part, f"/materials/{len(tree['materials']) - 1}")
+    name_material(tree, pointer, name)
+
+
+def name_material(tree: Tree, pointer: str, name: str) -> None:
+    """Let a segment or a fill be of another material; both ends of a taper have the same fill."""
     parent, key = pointer.rsplit("/", 1)
     value_at(tree, parent)[key] = name
+    if key == "fill":
+        end = value_at(tree, f"{parent.removesuffix('/section')}/end_section")
+        if end:
+            end["fill"] = name
 
 
 def _mark(tree: Tree, part: Part, pointer: str) -> None:
