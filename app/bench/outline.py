@@ -131,6 +131,8 @@ class Outline(QWidget):
             )
             self.doing.show_for(selected)
             self._order_tabs(self.buttons[self._rows.index(selected)])
+        if self.window().focusWidget() in self.buttons:
+            self.focus_row()  # the keys stay with the selection, wherever it was made
         self.table_link.setText(f"All {self._table()[2]} as a table")
         if selected is not None and selected.pointer != self._shown:
             self._shown = selected.pointer

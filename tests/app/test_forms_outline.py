@@ -190,6 +190,13 @@ def test_keys_walk_the_rows_and_enter_the_form(desk, qtbot) -> None:
     assert at.outline.focusWidget() is at.row("Length", NumberRow).edit
 
 
+def test_the_keys_stay_with_the_selection_when_it_is_made_elsewhere(desk) -> None:
+    at = desk(driven_pile())
+    at.button("Ram").setFocus()
+    at.select("gauges/1")
+    assert at.outline.focusWidget() is at.button("Middle")
+
+
 def test_a_gauge_is_added_moved_and_removed(desk, qtbot) -> None:
     at = desk(driven_pile())
     at.select("gauges")

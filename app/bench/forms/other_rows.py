@@ -191,6 +191,7 @@ class CheckRow(FieldRow):
         super().__init__(document, spec, parent)
         self.spec: CheckSpec = spec
         self.box = SwitchBox(self)
+        self.box.setMinimumHeight(FIELD)
         self.put_editor(self.box)
         self.box.clicked.connect(lambda on: put_check(document, self.spec, on))
 

@@ -33,7 +33,7 @@ TITLES: dict[PartKind, str] = {
     "toe": "Ground under the toe",
 }
 #: Size of the picker in characters and rows.
-WIDE, ROWS = 44, 9
+WIDE, ROWS = 58, 9
 
 
 class PartPicker(QFrame):
