@@ -17,7 +17,8 @@ from PySide6.QtWidgets import (
     QWidget,
 )
 
-from app.look import icon, palette, pixmap
+from app.look import icon, pixmap
+from app.look.palette import palette
 from app.look.spacing import GAP, ICON, SPACE
 
 Kind = Literal["tell", "near", "over"]

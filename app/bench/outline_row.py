@@ -7,7 +7,8 @@ from PySide6.QtGui import QColor, QFontMetrics, QKeyEvent, QPainter, QPaintEvent
 from PySide6.QtWidgets import QAbstractButton, QSizePolicy, QWidget
 
 from app.bench.outline_rows import Row
-from app.look import font, palette, pixmap
+from app.look import font, pixmap
+from app.look.palette import palette
 from app.look.spacing import GAP, ICON, RADIUS, ROW, SPACE
 
 #: Width of the bar beside the selected row, and how far an entry of a group stands in.

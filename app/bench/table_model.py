@@ -13,7 +13,8 @@ from app.bench.forms.spec import ChoiceSpec, Context, NumberSpec, Spec
 from app.bench.table_content import Content, content_of, text_of
 from app.bench.table_edits import Cell, fill_cells
 from app.document import Document, Rejected
-from app.look import font, palette
+from app.look import font
+from app.look.palette import palette
 from app.units import Units, units_of
 
 Index = QModelIndex | QPersistentModelIndex

@@ -8,7 +8,7 @@ from typing import Literal
 import numpy as np
 from numpy.typing import NDArray
 
-from app.look.palette import Palette
+from app.look.colours import Palette
 
 SIZE = 511  # odd, so that one entry is exactly zero
 

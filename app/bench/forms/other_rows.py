@@ -23,7 +23,8 @@ from app.bench.forms.picker import PartPicker
 from app.bench.forms.points import ask_for_points, link_points, paste_points
 from app.bench.forms.spec import CheckSpec, ChoiceSpec, PointsSpec, TextSpec
 from app.document import Document
-from app.look import icon, palette, pixmap
+from app.look import icon, pixmap
+from app.look.palette import palette
 from app.look.spacing import FIELD, GAP, ICON, SPACE
 from app.units import Units
 

@@ -1,0 +1,1 @@
+"""What leaves the program to be read: the report."""
