@@ -8,13 +8,16 @@ import numpy as np
 
 from solver.errors import SolveError
 from solver.model.project import Case
+from solver.model.surroundings import Resistance
 from solver.numerics.balance import residual_of, unreal_share
-from solver.numerics.chain import segments_of
+from solver.numerics.chain import Stretch, segments_of
 from solver.numerics.stability import SMALLEST_STRETCH
 
 if TYPE_CHECKING:
     from solver.marching import March
 
+#: Least exponent N of the power law: below it |v|^N is a jump that no step resolves.
+LEAST_EXPONENT = 0.05
 #: Share of the largest energy that may fail to close before a run is refused.
 REFUSED = 0.05
 
@@ -23,6 +26,15 @@ def refuse_unsupported(case: Case) -> None:
     """Raise `SolveError` for combinations that this program does not solve."""
     if case.member.lateral_inertia:
         _refuse_with_inertia(case)
+    if case.run.blows != 1 and case.ground is None:
+        raise SolveError(
+            "Repeated blows need ground, which holds the member at rest between them: set 'blows' to 1."
+        )
+    for part in _resistances(case):
+        if part.exponent is not None and part.exponent < LEAST_EXPONENT:
+            raise SolveError(
+                f"An exponent of damping below {LEAST_EXPONENT} is not solved: give at least that."
+            )
     for segment in segments_of(case)[0]:
         law = case.material(segment.material).law
         if (
@@ -38,6 +50,13 @@ def refuse_unsupported(case: Case) -> None:
             raise SolveError(
                 f"Segment '{segment.name}' is a filled pipe: both of its materials must be elastic."
             )
+
+
+def _resistances(case: Case) -> list[Resistance]:
+    ground = case.ground
+    if ground is None:
+        return []
+    return [r for r in (*ground.layers, ground.shaft_total, ground.toe) if r is not None]
 
 
 def _refuse_with_inertia(case: Case) -> None:
@@ -75,20 +94,8 @@ def refuse_bad_state(march: March) -> None:
             f"The solution ran away before {seconds * 1000:.4g} ms (first at {place:.4g} m) and is not shown. "
             "Shorter elements, or softer springs and cushions, may help."
         )
-    stretch = 1 + np.diff(motion.u) / chain.length
     for part in chain.stretches:
-        least = stretch[part.start : part.stop].min()
-        if part.material.law.kind == "elastic_plastic":
-            # a law of small strains: its shortening is told with a warning, its geometry is not updated
-            continue
-        soft = part.material.law.kind == "large_strain"
-        if least <= (SMALLEST_STRETCH if soft else 0.0):
-            link = part.start + int(np.argmin(stretch[part.start : part.stop]))
-            advice = "a thicker or stiffer pad" if soft else "a lower load, or a material law that yields"
-            raise SolveError(
-                f"'{part.segment.name}' is pressed to {max(least, 0):.0%} of its length "
-                f"at {chain.position[link]:.4g} m, {seconds * 1000:.4g} ms, more than its law describes: give {advice}."
-            )
+        _refuse_inside_out(march, part)
     rows = march.ledger_rows()
     share, frame = residual_of(march.start_row, rows)
     sharp, sharp_frame = unreal_share(march.start_row, rows)
@@ -100,4 +107,26 @@ def refuse_bad_state(march: March) -> None:
         raise SolveError(
             f"The energy of this run does not close by {share:.0%} at {when * 1000:.4g} ms (fastest at {place:.4g} m), "
             "so it is not shown. Shorter elements may help."
+        )
+
+
+def _refuse_inside_out(march: March, part: Stretch) -> None:
+    """An element pressed to nothing, judged by its least force so far (a large-strain pad: by its stretch of now)."""
+    chain, law = march.chain, part.material.law.kind
+    at = slice(part.start, part.stop)
+    if law == "elastic_plastic":
+        # a law of small strains: its shortening is told with a warning, its geometry is not updated
+        return
+    if law == "large_strain":
+        stretch = 1 + np.diff(march.state.motion.u)[at] / chain.length[at]
+        bad, step, advice = stretch < SMALLEST_STRETCH, march.steps, "a thicker or stiffer pad"
+    else:
+        bad = march.extremes.low[at] <= -chain.axial[at]
+        step = march.extremes.low_step[at][int(np.argmax(bad))]
+        advice = "a lower load, or a material law that yields"
+    if bad.any():
+        place = chain.position[part.start + int(np.argmax(bad))]
+        raise SolveError(
+            f"'{part.segment.name}' is pressed together at {place:.4g} m, {step * chain.dt * 1000:.4g} ms, "
+            f"further than its law describes: give {advice}."
         )

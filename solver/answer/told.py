@@ -9,6 +9,8 @@ from solver.numerics.compiled import cache_problem
 from solver.numerics.ground import bands_of
 from solver.numerics.mesh import MISMATCH
 
+#: Elements of a viscous segment below which their number is told.
+FEW = 100
 #: Plastic strain above which a law of small strains is said to be left.
 SMALL_STRAIN = 0.1
 #: Share of the energy that may fail to close before it is told.
@@ -24,6 +26,13 @@ def warnings_of(blow: Blow, residual: float, at_rest: bool, finished: bool) -> t
         told.append(
             "The travel times of the segments fit no common step: "
             f"the worst Courant number is {chain.courant_worst:.3f}."
+        )
+    few = [s for s in chain.stretches if s.material.law.kind == "viscoelastic" and s.stop - s.start < FEW]
+    if few:
+        part = few[0]
+        told.append(
+            f"The viscosity of '{part.segment.name}' allows it only {part.stop - part.start} elements: "
+            "compare with a finer mesh."
         )
     strain, place = _largest_plastic_strain(blow)
     if strain > SMALL_STRAIN:

@@ -72,8 +72,12 @@ def _blocks(chain: Chain) -> NDArray[np.int64]:
     laws = np.full(len(chain.axial), ELASTIC)
     for stretch in chain.stretches:
         laws[stretch.start : stretch.stop] = LAW_NUMBERS[stretch.material.law.kind]
-    edges = np.concatenate(([0], np.flatnonzero(np.diff(laws)) + 1, [len(laws)]))
-    return np.array([(laws[a], a, b) for a, b in pairwise(edges)], dtype=np.int64)
+    edges = {0, len(laws), *(np.flatnonzero(np.diff(laws)) + 1).tolist()}
+    # the first yield or crack of each segment is told, so such segments are blocks of their own
+    for stretch in chain.stretches:
+        if stretch.material.law.kind in ("elastic_plastic", "brittle_tension"):
+            edges |= {stretch.start, stretch.stop}
+    return np.array([(laws[a], a, b) for a, b in pairwise(sorted(edges))], dtype=np.int64)
 
 
 def _law_parameters(chain: Chain, stretch: Stretch, par: Array) -> None:

@@ -11,6 +11,7 @@ from dataclasses import dataclass, field
 import numpy as np
 from numpy.typing import NDArray
 
+from solver.errors import SolveError
 from solver.model.load import GRAVITY, Cushion, Drop, Striker
 from solver.model.material import Material
 from solver.model.member import Segment
@@ -19,6 +20,9 @@ from solver.numerics.mesh import FEWEST, MOST, SegmentSteps, Steps, choose_steps
 from solver.numerics.stability import stiffening_of
 
 Array = NDArray[np.float64]
+
+#: Courant number below which a segment is too short for the mesh of the others.
+WORST_COURANT = 0.2
 
 
 @dataclass(frozen=True)
@@ -198,12 +202,16 @@ def _wanted(case: Case, total: float) -> int:
     wanted = 1000 if yields else FEWEST
     if load.kind == "pulse" and load.shape != "decay":
         wanted = max(wanted, int(np.ceil(40 * total / load.duration)))
-    if isinstance(load, Drop) and load.ram_mass is not None and load.cushion is None:
-        first = case.member.segments[0]
-        axial, mass, _ = profile_along(first, case.materials, np.zeros(1))
+    if isinstance(load, Drop) and load.ram_mass is not None:
+        axial, mass, _ = profile_along(case.member.segments[0], case.materials, np.zeros(1))
         impedance = float(np.sqrt(axial * mass)[0])
-        # Z dt under 0.1 % of the mass: the front is smeared over the first node
-        wanted = max(wanted, int(np.ceil(1000 * impedance * total / load.ram_mass)))
+        # Z dt under 0.1 % of the mass: the front is smeared over the first node; a cushion spreads it over more nodes
+        # where it is no stiffer than they are, k dt <= Z
+        finest = 1000 * impedance * total / load.ram_mass
+        stiff = [c.loading_stiffness for c in (load.cushion, load.pile_cushion) if c is not None]
+        if stiff:
+            finest = min(finest, min(stiff) * total / impedance)
+        wanted = max(wanted, int(np.ceil(finest)))
     return min(wanted, MOST)
 
 
@@ -267,6 +275,7 @@ class _Builder:
 def build_chain(case: Case, element_length: float | None = None) -> Chain:
     """Discretise a case; `element_length` (m) overrides the program's choice."""
     steps = steps_of(case, element_length or case.run.element_length)
+    _refuse_tiny(case, steps)
     load, rod = case.load, case.ram_segments
     laid = _Builder(case)
     joints: list[JointLink] = []
@@ -278,7 +287,7 @@ def build_chain(case: Case, element_length: float | None = None) -> Chain:
     train: list[TrainLink] = []
     if isinstance(load, Drop):
         train.append(TrainLink(laid.count - 1, load.cushion))
-        if load.cap_mass > 0:
+        if load.cap_mass > _negligible(case, steps.counts[len(rod)]):
             laid.lump(load.cap_mass, 0.0)
             train.append(TrainLink(laid.count - 1, load.pile_cushion))
         elif load.pile_cushion is not None:
@@ -288,6 +297,28 @@ def build_chain(case: Case, element_length: float | None = None) -> Chain:
     head = laid.count
     joints += laid.rod(case.member.segments, steps.counts[len(rod) :], 0.0)
     return _finished(case, steps, laid, tuple(joints), tuple(train), head)
+
+
+def _refuse_tiny(case: Case, steps: Steps) -> None:
+    """Raise `SolveError` where one segment is so short that it would make all others slow and blurred."""
+    if steps.courant_worst >= WORST_COURANT:
+        return
+    shortest = min(segments_of(case)[0], key=lambda s: s.length / _speed(case, s))
+    raise SolveError(
+        f"Segment '{shortest.name}' ({shortest.length:.3g} m) is too short beside the others to be solved with them: "
+        "join it to its neighbour, give it as an attached mass, or give an element length."
+    )
+
+
+def _speed(case: Case, segment: Segment) -> float:
+    return segment.length / travel_time(segment, case.materials)
+
+
+def _negligible(case: Case, count: int) -> float:
+    """A cap lighter than a thousandth of the first element is taken as none, kg."""
+    first = case.member.segments[0]
+    line_mass = profile_along(first, case.materials, np.zeros(1))[1]
+    return float(line_mass[0]) * first.length / count / 1000
 
 
 def _in_series(first: Cushion | None, second: Cushion) -> Cushion:

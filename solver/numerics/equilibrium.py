@@ -86,6 +86,7 @@ def bring_to_rest(chain: Chain, state: State) -> None:
     # a free fall has half a step to go before its first half-step velocity
     motion.v[: chain.head][motion.v[: chain.head] != 0] -= chain.gravity * chain.dt / 2
     s, r = state.shaft, soil.force_and_slope(u)[0]
+    _press_joints(chain, state, weight - r - chain.spring * u)
     s.r[:] = np.clip(s.par[1] * u[s.first : s.first + len(s.r)], -s.par[0], s.par[0])
     s.power[0] = np.clip(s.power[2] * u[s.power_nodes], -s.power[1], s.power[1])
     q = s.radiation
@@ -180,12 +181,38 @@ def _lay_train(chain: Chain, state: State, u: Array, cap_weight: float) -> None:
     if len(chain.train) == 2:
         state.bounds.train_force[1] = cap_weight
         cushion = chain.train[1].cushion
-        if cushion is not None:
+        if cushion is None:
+            state.bounds.train_state[1, 2] = cap_weight
+        else:
             pressed = cap_weight / cushion.loading_stiffness
             state.bounds.train_state[1, :3] = pressed, pressed, cap_weight
             above += pressed
         u[chain.head - 1] = above
     u[: chain.head - (len(chain.train) == 2)] = above
+
+
+def _press_joints(chain: Chain, state: State, pull: Array) -> None:
+    """Forces in joints and on a wall at rest. `pull`: all forces on the nodes but those of the links, N.
+
+    Raises `SolveError` where a joint would have to hold what hangs on it.
+    """
+    bounds, force = state.bounds, state.motion.force
+    note = (np.zeros((1, 3), dtype=np.int64), np.zeros(1, dtype=np.int64))
+    flags = np.ones(len(state.rod.blocks), dtype=np.int64)
+    link_forces(state.rod, state.motion.u, np.zeros_like(state.motion.u), force, chain.dt, flags, note, 0)
+    for j, joint in enumerate(chain.joints):
+        if joint.link < chain.head:
+            continue
+        above = force[joint.link - 1] if joint.link > chain.head else 0.0
+        pressed = float(pull[joint.link] - above)
+        if pressed < -1e-9 * max(1.0, float(np.abs(pull).sum())):
+            raise SolveError(
+                f"With gravity on, the joint at {joint.position:.4g} m would hang in tension before the blow, which it "
+                "does not carry. Give the ground below it more resistance, bond the joint, or turn gravity off."
+            )
+        bounds.joint_force[j] = max(pressed, 0.0)
+    if chain.wall_gap == 0:
+        bounds.wall[1] = max(float(pull[-1] - force[-1]), 0.0)
 
 
 def _lay_toe(bounds: Bounds, u: float, resistance: float) -> None:
@@ -198,4 +225,4 @@ def _lay_toe(bounds: Bounds, u: float, resistance: float) -> None:
         toe[3] = 1.0
     if par[0] == RADIATION:
         toe[2] = spring
-    toe[1] = resistance
+    toe[1] = toe[4] = resistance

@@ -159,7 +159,10 @@ def shaft_nodes(ground, push, v, w, sums, dt):
         sums[DAMPING] += damped
     if len(ground.power_nodes):
         p = ground.power
-        slip, damped = shaft.power(ground.power_nodes, v, w, push, p[0], p[1], p[2], p[3], p[4], p[5], dt)
+        slip, damped, turned = shaft.power(
+            ground.power_nodes, v, w, push, p[0], p[1], p[2], p[3], p[4], p[5], dt
+        )
+        sums[IMPACT] += turned
         sums[SLIP] += slip
         sums[DAMPING] += damped
     if len(ground.radiation_nodes):
@@ -177,11 +180,12 @@ def toe_node(bounds, push, u, v, w, sums, dt, note, step):
     before = bounds.toe_state[3]
     if bounds.toe_par[0] == toe.RADIATION:
         mean, slip, damped = toe.radiating(bounds.toe_par, bounds.toe_state, free, half, u[last], v[last], dt)
+        w[last] = 2.0 * mean - v[last]
     else:
-        mean, slip, damped = toe.quasi_static(
-            bounds.toe_par, bounds.toe_state, free, half, u[last], v[last], dt
+        w[last], slip, damped, exchanged = toe.quasi_static(
+            bounds.toe_par, bounds.toe_state, w[last], push[last], u[last], v[last], dt
         )
-    w[last] = 2.0 * mean - v[last]
+        sums[IMPACT] += exchanged
     sums[SLIP] += slip
     sums[DAMPING] += damped
     if before > 0.0 and bounds.toe_state[3] == 0.0:

@@ -74,8 +74,8 @@ def choose_steps(
     total = sum(s.travel_time for s in segments[member])
     window = np.arange(wanted, max(int(wanted * (1.05 if exactly else 2)), wanted + 1) + 1)
     best = _best(segments, total, window, marks)
-    while not exactly and 1 - best.courant_worst > MISMATCH and window[-1] < 8 * wanted:
-        window = np.arange(window[-1], window[-1] * 2)
+    while not exactly and 1 - best.courant_worst > MISMATCH and window[-1] < MOST:
+        window = np.arange(window[-1], min(window[-1] * 2, MOST + 1) + 1)
         finer = _best(segments, total, window, marks)
         if finer.courant_worst > best.courant_worst:
             best = finer

@@ -22,6 +22,11 @@ def settle(chain: Chain, state: State) -> bool:
     Dynamic relaxation with the damping critical for the slowest motion, so that the ground is not loaded anew by an
     overshoot. Returns whether rest was found.
     """
+    s = state.shaft
+    held = s.par[0].sum() + s.power[1].sum() + s.radiation[1].sum() + chain.spring.sum() > 0
+    if chain.gravity == 0.0 and not held and not chain.fixed_end:
+        # a toe alone pushes the member off and leaves it anywhere
+        return False
     pace = _slowest(chain, state)
     if pace == 0.0:
         return False

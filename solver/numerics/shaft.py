@@ -68,27 +68,35 @@ def power_speed(a, b, exponent, rest):
 
 @kernel
 def power(nodes, v, w, push, r, strength, stiff, flexible, factor, exponent, dt):
-    """Power law Rd = J Ru |v|^N sign(v) (Gibson and Coyle 1968, from memory); `factor` = J Ru, arrays per listed
-    node."""
+    """Power law Rd = J Ru |v|^N sign(v) (Gibson and Coyle 1968, from memory); `factor` = J Ru, arrays per listed node.
+
+    The damping too acts with the mean of its values at both half steps. Returns the energies lost by slip and damping,
+    and what the damping exchanges where the motion turns within a step, J.
+    """
     slip_loss = 0.0
     damping_loss = 0.0
+    exchanged = 0.0
     for j in range(len(nodes)):
         i = nodes[j]
         half = 0.5 * push[i]
-        old = r[j]
-        top = strength[j]
+        old, top, b, n = r[j], strength[j], factor[j], exponent[j]
         k = stiff[j] * dt
-        free = 0.5 * (v[i] + w[i])
-        mean = power_speed(1.0 + half * 0.5 * k, half * factor[j], exponent[j], free - half * old)
-        new = old + k * mean
+        before = b * abs(v[i]) ** n * (1.0 if v[i] > 0.0 else -1.0) if v[i] != 0.0 else 0.0
+        goal = w[i] - half * (old + before)
+        new_w = power_speed(1.0 + 0.5 * half * k, half * b, n, goal - half * (old + 0.5 * k * v[i]))
+        new = old + 0.5 * k * (v[i] + new_w)
         if abs(new) > top:
             new = top if new > 0.0 else -top
-            mean = power_speed(1.0, half * factor[j], exponent[j], free - half * 0.5 * (old + new))
-        w[i] = 2.0 * mean - v[i]
+            new_w = power_speed(1.0, half * b, n, goal - half * new)
+        after = b * abs(new_w) ** n * (1.0 if new_w > 0.0 else -1.0) if new_w != 0.0 else 0.0
+        moved = 0.5 * dt * (v[i] + new_w)
+        damped = 0.5 * (before + after) * moved
+        damping_loss += max(damped, 0.0)
+        exchanged += min(damped, 0.0)
+        slip_loss += top * abs(moved - (new - old) * flexible[j])
+        w[i] = new_w
         r[j] = new
-        slip_loss += top * abs(dt * mean - (new - old) * flexible[j])
-        damping_loss += factor[j] * abs(mean) ** (exponent[j] + 1.0)
-    return slip_loss, damping_loss * dt
+    return slip_loss, damping_loss, exchanged
 
 
 @kernel

@@ -7,6 +7,8 @@ contact.
 in s/m; for radiation the dashpot in N·s/m), [4] exponent. Law numbers are internal; a file knows them by their words.
 """
 
+import numpy as np
+
 from solver.numerics.compiled import kernel
 from solver.numerics.shaft import power_speed
 
@@ -14,35 +16,55 @@ SMITH, VISCOUS, POWER, RADIATION = 0, 1, 2, 3
 
 
 @kernel
-def quasi_static(par, state, free, half, u, v, dt):
-    """Smith's spring and slider (1960, from memory) with a damping law: new mean velocity, energies lost by slip
-    and damping.
+def quasi_static(par, state, free, push, u, v, dt):
+    """Smith's spring and slider (1960, from memory) with a damping law, as one law of the half step, never a pull.
 
-    `free`: mean velocity without the toe, `half` = dt/(2 m), `u` and `v`: displacement now, velocity of the last
-    half step.
+    `free`: velocity of the coming half step without the toe, `push` = dt/m, `u` and `v`: displacement now and velocity
+    of the last half step. The mean of the law at both half steps acts; `state[4]` keeps its last value. Returns the new
+    velocity, the energies lost by slip and by damping, and what a change of contact within the step exchanges, J.
     """
-    top, k, old, plastic = par[1], par[2], state[1], state[0]
-    before = u - 0.5 * dt * v
-    now = min(max(k * (u - plastic), 0.0), top)
-    touching = u >= plastic
-    law = par[0]
-    factor = par[3] * top if touching else 0.0
-    c = par[3] * now if law == SMITH else (factor if law == VISCOUS else 0.0)
-    b = half * factor if law == POWER else 0.0
-    # branches of the static law at the coming half step: elastic, yielding, lifted
-    base = 0.5 * (old + k * (before - plastic))
-    mean = _speed(1.0 + half * (0.5 * k * dt + c), b, par[4], free - half * base)
-    new = k * (before + dt * mean - plastic)
-    if new > top or new < 0.0:
-        new = top if new > top else 0.0
-        mean = _speed(1.0 + half * c, b, par[4], free - half * 0.5 * (old + new))
-    damped = c * mean * mean + (factor * abs(mean) ** (par[4] + 1.0) if law == POWER else 0.0)
-    slipped = before + dt * mean - new / k - plastic if k > 0.0 and new >= top else 0.0
+    top, k, plastic, old, before = par[1], par[2], state[0], state[1], state[4]
+    half = 0.5 * push
+    goal = free - half * before
+    start, slope = k * (u - plastic), 0.5 * k * dt
+    w, new, acts = goal, start + slope * goal, 0.0
+    if new > 0.0:
+        w, new, acts = _in_contact(par, goal, half, start, slope)
+    slipped = u + 0.5 * dt * w - new / k - plastic if k > 0.0 and new >= top else 0.0
     if slipped > 0.0:
         state[0] = plastic + slipped
-    state[1] = new
-    state[3] = 1.0 if new > 0.0 or touching else 0.0
-    return mean, top * max(slipped, 0.0), damped * dt
+    state[1], state[4] = new, acts
+    state[3] = 1.0 if acts > 0.0 else 0.0
+    damped = 0.25 * dt * ((before - old) + (acts - new)) * (v + w)
+    return w, top * max(slipped, 0.0), max(damped, 0.0), min(damped, 0.0)
+
+
+@kernel
+def _in_contact(par, goal, half, start, slope):
+    """Velocity, static and whole resistance of a half step on which the toe touches: elastic branch, else yielding."""
+    law, top = par[0], par[1]
+    j = par[3] if law == SMITH else 0.0
+    c = par[3] * top if law == VISCOUS else 0.0
+    b = par[3] * top if law == POWER else 0.0
+    # w + half (start + slope w)(1 + j w) + half (c w + b |w|^N) = goal
+    linear = 1.0 + half * (slope + j * start + c)
+    if j > 0.0 and slope > 0.0:
+        square = half * j * slope
+        rest = goal - half * start
+        w = 2.0 * rest / (linear + np.sqrt(max(linear * linear + 4.0 * square * rest, 0.0)))
+    else:
+        w = _speed(linear, half * b, par[4], goal - half * start)
+    new = start + slope * w
+    if new > top:
+        new = top
+        w = _speed(1.0 + half * (j * top + c), half * b, par[4], goal - half * top)
+    acts = new * (1.0 + j * w) + c * w
+    if b > 0.0:
+        acts += b * abs(w) ** par[4] * (1.0 if w > 0.0 else -1.0)
+    if new <= 0.0 or acts <= 0.0:
+        # it parts on this half step: nothing pulls it back
+        return goal, max(min(start + slope * goal, top), 0.0), 0.0
+    return w, new, acts
 
 
 @kernel

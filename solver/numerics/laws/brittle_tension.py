@@ -25,7 +25,9 @@ def force(u, v, stiff, par, state, force, start, stop, dt):
             state[0, i] = 1.0
             state[1, i] = d
             # work up to the step before, plus the half step on which the force still acted
-            state[2, i] = 0.5 * stiff[i] * (d - dt * (v[i + 1] - v[i])) * d
+            released = 0.5 * stiff[i] * (d - dt * (v[i + 1] - v[i])) * d
+            state[2, i] = max(released, 0.0)
+            state[3, i] = min(released, 0.0)
             n = 0.0
             if first < 0:
                 first = i

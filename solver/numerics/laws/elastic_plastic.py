@@ -23,13 +23,13 @@ def force(u, v, stiff, par, state, force, start, stop, dt):
         back = par[2, i] * hard * plastic
         reach = par[0, i] + (1.0 - par[2, i]) * hard * reached
         now = u[i + 1] - u[i]
-        trial = stiff[i] * (now + 0.5 * dt * (v[i + 1] - v[i]) - plastic)
-        over = abs(trial - back) - reach
+        trial = stiff[i] * (now - plastic)
         slip = 0.0
         sign = 1.0
-        if over > 0.0:
-            slip = over / (stiff[i] + hard)
+        if abs(trial - back) > reach:
             sign = 1.0 if trial > back else -1.0
+            ahead = trial + 0.5 * stiff[i] * dt * (v[i + 1] - v[i])
+            slip = max(sign * (ahead - back) - reach, 0.0) / (stiff[i] + hard)
             if first < 0:
                 first = i
         state[0, i] = plastic + sign * slip

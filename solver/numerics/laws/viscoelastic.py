@@ -1,6 +1,7 @@
 """Kelvin-Voigt: N = (EA/L) d + (eta A/L) d', with d' of the last half step. `par[0]` is eta A/L in N·s/m.
 
 `state[0]` sums the energy that the dashpot has taken, per link (J); it has no other state to be read from.
+`state[1]` is its force of the step before (N).
 """
 
 from solver.numerics.compiled import kernel
@@ -11,7 +12,9 @@ def force(u, v, stiff, par, state, force, start, stop, dt):
     for i in range(start, stop):
         rate = v[i + 1] - v[i]
         viscous = par[0, i] * rate
-        state[0, i] += viscous * rate * dt
+        # the mean of both forces acts over the half step between them
+        state[0, i] += 0.5 * (state[1, i] + viscous) * rate * dt
+        state[1, i] = viscous
         force[i] = stiff[i] * (u[i + 1] - u[i]) + viscous
     return -1
 
@@ -23,6 +26,5 @@ def stored_and_lost(u, v, stiff, par, state, force, start, stop, dt):
     for i in range(start, stop):
         d = u[i + 1] - u[i]
         stored += 0.5 * stiff[i] * d * d
-        # the step ahead of this half-step balance has seen half of the viscous work of the force of now
         lost += state[0, i]
     return stored, lost
