@@ -15,7 +15,6 @@ from PySide6.QtWidgets import QApplication
 from app.closing_signals import ClosingSignals
 from app.demo_files import demo_paths
 from app.look import apply_look, follow_system
-from app.qt_references import keep_singletons
 from app.recovery import kept_work
 from app.settings import Settings, user_settings
 from app.starting_points import STARTING_POINTS
@@ -26,7 +25,6 @@ from solver import ProjectError, load_project, project_from_tree
 def run_window(file: str | None = None, signals: ClosingSignals | None = None) -> int:
     """Open the window and stay until it is closed. Returns the exit status, 0."""
     signals = signals or ClosingSignals()
-    keep_singletons()
     app = QApplication(sys.argv[:1])
     app.setApplicationName("Striketrace")
     settings = user_settings()
