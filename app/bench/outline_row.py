@@ -85,7 +85,10 @@ class RowButton(QAbstractButton):
         super().changeEvent(event)
 
     def paintEvent(self, event: QPaintEvent) -> None:
-        painter = QPainter(self)
+        with QPainter(self) as painter:  # ended also where something raises: Qt crashes otherwise
+            self._paint(painter)
+
+    def _paint(self, painter: QPainter) -> None:
         painter.setRenderHint(QPainter.RenderHint.Antialiasing)
         colours = palette()
         whole = self.rect()

@@ -120,6 +120,32 @@ def test_a_length_is_taken_in_the_shown_unit_or_its_own(desk, typed: str, metres
     assert at.document.undo_stack.undoText().startswith("Set length of Pile to ")
 
 
+@pytest.mark.parametrize(("typed", "kilograms"), [("5", 5e3), ("4800 kg", 4800.0), ("10 kip", 4535.9237)])
+def test_a_ram_is_told_in_tonnes_kilograms_or_kips(desk, typed: str, kilograms: float) -> None:
+    """1 kip of weight is 1000 lb of mass, 453.59237 kg (exact)."""
+    at = desk(driven_pile())
+    at.type_into("Ram mass", typed)
+    assert at.case.load.ram_mass == pytest.approx(kilograms, rel=1e-12)
+
+
+def test_the_menu_of_a_row_offers_what_can_be_done(desk) -> None:
+    at = desk(driven_pile())
+    at.select("ground/layers/0")
+    menu = at.outline.doing.menu(at.outline.selected, at.outline)
+    words = {action.text().split("\t")[0]: action.isEnabled() for action in menu.actions()}
+    assert words == {
+        "Add another": True,
+        "Duplicate": True,
+        "Split in two": True,
+        "Move up": False,
+        "Move down": True,
+        "Remove": True,
+    }
+    next(a for a in menu.actions() if a.text().startswith("Move down")).trigger()
+    assert [layer.name for layer in at.case.ground.layers] == ["Dense sand", "Soft clay"]
+    assert at.sight.selection == "ground/layers/1"
+
+
 def test_typing_is_followed_live_and_is_one_step_of_undo(desk, qtbot) -> None:
     at = desk(driven_pile())
     row = at.type_into("Drop height", "1", enter=False)

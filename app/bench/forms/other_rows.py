@@ -94,17 +94,19 @@ class ChoiceBox(QComboBox):
 
     def paintEvent(self, event: QPaintEvent) -> None:
         """As drawn by the style, with a word that is too long elided instead of cut."""
-        painter = QStylePainter(self)
         option = QStyleOptionComboBox()
         self.initStyleOption(option)
-        painter.drawComplexControl(QStyle.ComplexControl.CC_ComboBox, option)
         room = self.style().subControlRect(
             QStyle.ComplexControl.CC_ComboBox, option, QStyle.SubControl.SC_ComboBoxEditField, self
         )
-        option.currentText = self.fontMetrics().elidedText(
+        word = self.fontMetrics().elidedText(
             option.currentText, Qt.TextElideMode.ElideRight, room.width() - GAP
         )
-        painter.drawControl(QStyle.ControlElement.CE_ComboBoxLabel, option)
+        painter = QStylePainter(self)
+        with painter:  # ended also where something raises: Qt crashes otherwise
+            painter.drawComplexControl(QStyle.ComplexControl.CC_ComboBox, option)
+            option.currentText = word
+            painter.drawControl(QStyle.ControlElement.CE_ComboBoxLabel, option)
 
 
 class ChoiceRow(FieldRow):
@@ -168,17 +170,16 @@ class SwitchBox(QCheckBox):
 
     def paintEvent(self, event: QPaintEvent) -> None:
         colours = palette()
-        painter = QPainter(self)
-        painter.setRenderHint(QPainter.RenderHint.Antialiasing)
         box = QRectF(1, (self.height() - ICON) / 2, ICON, ICON)
-        painter.setPen(
-            QPen(QColor(colours.accent if self.hasFocus() else colours.line), 2 if self.hasFocus() else 1)
-        )
-        painter.setBrush(QColor(colours.raised))
-        painter.drawRoundedRect(box, 3, 3)
-        if self.isChecked():
-            tick = pixmap("within", ICON - 4, colours.ink, self.devicePixelRatioF())
-            painter.drawPixmap(QPointF(box.x() + 2, box.y() + 2), tick)
+        frame = QPen(QColor(colours.accent if self.hasFocus() else colours.line), 2 if self.hasFocus() else 1)
+        tick = pixmap("within", ICON - 4, colours.ink, self.devicePixelRatioF())
+        with QPainter(self) as painter:
+            painter.setRenderHint(QPainter.RenderHint.Antialiasing)
+            painter.setPen(frame)
+            painter.setBrush(QColor(colours.raised))
+            painter.drawRoundedRect(box, 3, 3)
+            if self.isChecked():
+                painter.drawPixmap(QPointF(box.x() + 2, box.y() + 2), tick)
 
     def hitButton(self, pos: QPoint) -> bool:
         """Anywhere in the field, as there is no word beside the box."""

@@ -31,7 +31,9 @@ def form_of(context: Context, pointer: str) -> list[Spec]:
                 return []
             return model_specs(context, model, context.full(pointer))
     if pointer == "load":
-        return field_specs(context, Case, context.at, "load")
+        found = field_specs(context, Case, context.at, "load")
+        moves = context.case.load.kind == "none"
+        return found + (field_specs(context, Run, f"{context.at}/run", "initial_velocity") if moves else [])
     if pointer in ("load/cushion", "load/pile_cushion", "load/cap_mass"):
         if context.case.load.kind != "drop":
             return []
