@@ -12,10 +12,12 @@ import numpy as np
 from numpy.typing import NDArray
 
 from solver.errors import SolveError
+from solver.model.derived import travel_time
 from solver.model.load import GRAVITY, Cushion, Drop, Striker
 from solver.model.material import Material
 from solver.model.member import Segment
 from solver.model.project import Case
+from solver.numerics.along import equal_transit, profile_along
 from solver.numerics.mesh import FEWEST, MOST, SegmentSteps, Steps, choose_steps
 from solver.numerics.stability import stiffening_of
 
@@ -102,63 +104,6 @@ class Chain:
     def member_stretches(self) -> tuple[Stretch, ...]:
         """Stretches of the member itself."""
         return tuple(s for s in self.stretches if s.start >= self.head)
-
-
-def profile_along(
-    segment: Segment, materials: dict[str, Material], fraction: Array
-) -> tuple[Array, Array, Array]:
-    """EA (N), mass per length (kg/m) and stress area (m2) at fractions 0..1 of a segment's length.
-
-    A taper is linear in its dimensions, so areas are quadratic in the fraction: three sections fix them.
-    """
-    first, last = segment.section, segment.end_section or segment.section
-    ends = first.model_dump(), last.model_dump()
-    middle = type(first)(
-        **{k: (v + ends[1][k]) / 2 if isinstance(v, float) else v for k, v in ends[0].items()}
-    )
-    material = materials[segment.material]
-    at = np.array([0.0, 0.5, 1.0])
-    areas = [s.area for s in (first, middle, last)]
-    axial, mass = material.young_modulus * np.array(areas), material.density * np.array(areas)
-    if first.shape == "filled_pipe":
-        fill = materials[first.fill]
-        fills = np.array([s.fill_area for s in (first, middle, last)])  # type: ignore[union-attr]
-        axial, mass = axial + fill.young_modulus * fills, mass + fill.density * fills
-    if segment.end_section is None:
-        ones = np.ones_like(fraction)
-        return axial[0] * ones, mass[0] * ones, axial[0] / material.young_modulus * ones
-    lagrange = [_parabola(at, i, fraction) for i in range(3)]
-    axial_at = sum(a * w for a, w in zip(axial, lagrange, strict=True))
-    mass_at = sum(a * w for a, w in zip(mass, lagrange, strict=True))
-    return axial_at, mass_at, axial_at / material.young_modulus
-
-
-def _parabola(at: Array, i: int, x: Array) -> Array:
-    others = [at[j] for j in range(3) if j != i]
-    return (x - others[0]) * (x - others[1]) / ((at[i] - others[0]) * (at[i] - others[1]))
-
-
-def travel_time(segment: Segment, materials: dict[str, Material]) -> float:
-    """Time of a wave through a segment, integral of dx/c, s."""
-    fraction = (np.arange(64) + 0.5) / 64
-    axial, mass, _ = profile_along(segment, materials, fraction)
-    return float(segment.length * np.mean(np.sqrt(mass / axial)))
-
-
-def equal_transit(segment: Segment, materials: dict[str, Material], n: int) -> Array:
-    """Edges of `n` elements as fractions of a segment's length, so that a wave takes equally long through each.
-
-    They are equally long but in a tapered filled pipe, whose wave speed changes along it.
-    """
-    even = np.arange(n + 1) / n
-    if segment.end_section is None or segment.section.shape != "filled_pipe":
-        return even
-    fine = np.linspace(0, 1, 16 * n + 1)
-    axial, mass, _ = profile_along(segment, materials, (fine[1:] + fine[:-1]) / 2)
-    passed = np.concatenate(([0.0], np.cumsum(np.sqrt(mass / axial))))
-    edges = np.interp(even * passed[-1], passed, fine)
-    edges[-1] = 1.0
-    return edges
 
 
 def segments_of(case: Case) -> tuple[tuple[Segment, ...], slice]:
@@ -303,15 +248,11 @@ def _refuse_tiny(case: Case, steps: Steps) -> None:
     """Raise `SolveError` where one segment is so short that it would make all others slow and blurred."""
     if steps.courant_worst >= WORST_COURANT:
         return
-    shortest = min(segments_of(case)[0], key=lambda s: s.length / _speed(case, s))
+    shortest = min(segments_of(case)[0], key=lambda s: travel_time(s, case.materials))
     raise SolveError(
         f"Segment '{shortest.name}' ({shortest.length:.3g} m) is too short beside the others to be solved with them: "
         "join it to its neighbour, give it as an attached mass, or give an element length."
     )
-
-
-def _speed(case: Case, segment: Segment) -> float:
-    return segment.length / travel_time(segment, case.materials)
 
 
 def _negligible(case: Case, count: int) -> float:
