@@ -16,7 +16,7 @@ from app.words import AXIAL_CAUTION, LIMIT_CAUTION, LOAD_CAUTION, MODEL_CAUTION
 ABOUT = f"""Striketrace {__version__}
 
 One-dimensional stress waves in long slender members that are struck: driven piles, drill strings, instrumented bars.
-MIT licence. Made with Qt, pyqtgraph, numpy, scipy, numba, pydantic and Pint."""
+MIT licence. Made with Qt, numpy, scipy, numba, pydantic and Pint."""
 
 LIMITS = f"""It computes plane waves of axial stress in rods, with what strikes them and what holds them.
 

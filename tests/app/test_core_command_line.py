@@ -287,7 +287,7 @@ def test_solve_and_check_need_no_qt(file, tmp_path):
     """In a process of its own, in which importing Qt is an error."""
     code = (
         "import sys\n"
-        "for name in ('PySide6', 'shiboken6', 'pyqtgraph'): sys.modules[name] = None\n"
+        "for name in ('PySide6', 'shiboken6'): sys.modules[name] = None\n"
         "from app.command_line import main\n"
         "assert main(['check', sys.argv[1]]) == 0\n"
         "assert main(['solve', sys.argv[1], '--out', sys.argv[2], '--quiet']) == 0\n"
