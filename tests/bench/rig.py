@@ -1,0 +1,71 @@
+"""The march of one case taken out of the program: the kernel alone, started again and again from the same state."""
+
+from __future__ import annotations
+
+import copy
+import time
+from collections.abc import Callable
+
+import numpy as np
+
+from solver import Case
+from solver.marching import COLUMNS, FRAMES
+from solver.model.load import Pulse
+from solver.numerics.assemble import bounds_of, extremes_of, motion_of, records_of, rod_of
+from solver.numerics.chain import build_chain
+from solver.numerics.equilibrium import State, bring_to_rest
+from solver.numerics.ground import shaft_of
+from solver.numerics.march import march
+from solver.numerics.pulses import step_forces, step_velocities
+
+
+class Rig:
+    """A case ready to march `steps` steps. `run` measures the kernel and nothing else."""
+
+    def __init__(self, case: Case, steps: int) -> None:
+        self.chain, self.steps = build_chain(case), steps
+        self.fresh = State(
+            rod_of(self.chain), shaft_of(self.chain), bounds_of(self.chain), motion_of(self.chain)
+        )
+        bring_to_rest(self.chain, self.fresh)
+        self.stride = 2 ** max(0, int(np.floor(np.log2(max(1, steps / FRAMES)))))
+        links = np.flatnonzero(self.chain.axial > 0)
+        shown = np.unique(np.linspace(0, len(links) - 1, min(COLUMNS, len(links))).round().astype(int))
+        self.flags = np.zeros(len(self.fresh.rod.blocks), dtype=np.int64)
+        self.records = records_of(self.chain, steps, self.stride, links[shown], self.flags)
+        self.load = self._load()
+        self.reset()
+
+    @property
+    def elements(self) -> int:
+        return self.chain.nodes - 1
+
+    @property
+    def work(self) -> float:
+        """Elements times steps."""
+        return float(self.elements) * self.steps
+
+    def reset(self) -> None:
+        """Back to rest before the blow."""
+        self.state = copy.deepcopy(self.fresh)
+        self.extremes, self.sums = extremes_of(self.chain), np.zeros(8)
+        self.flags[:] = 0
+        self.records.event_count[0] = 0
+
+    def run(self, clock: Callable[[], float] = time.thread_time) -> float:
+        """Seconds of one march from rest."""
+        self.reset()
+        s = self.state
+        began = clock()
+        march(
+            s.rod, s.shaft, s.bounds, s.motion, self.extremes, self.records, self.sums, self.load,
+            0, self.steps, self.stride, self.chain.dt, 0.0,
+        )  # fmt: skip
+        return clock() - began
+
+    def _load(self) -> np.ndarray:
+        load = self.chain.case.load
+        if not isinstance(load, Pulse):
+            return np.zeros(self.steps)
+        found = step_forces if load.quantity == "force" else step_velocities
+        return found(load, 0, self.steps, self.chain.dt)
