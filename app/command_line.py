@@ -1,4 +1,4 @@
-"""The command line: the window, `solve` and `check`. Qt is imported only for the window."""
+"""The command line: the window, `solve`, `records` and `check`. Qt is imported only for the window."""
 
 from __future__ import annotations
 
@@ -19,6 +19,8 @@ ABOUT = """Stress waves in struck piles, rods and bars.
   python3 -m app                              open the window
   python3 -m app FILE.strike                  open it on a project
   python3 -m app solve FILE.strike --out DIR  solve every case and write results; needs no screen
+  python3 -m app records FILE.strike --out DIR
+                                              gauge records as CSV, XLSX or HDF5, in units and sign as chosen
   python3 -m app check FILE.strike ...        say whether projects are valid
 """
 
@@ -35,6 +37,8 @@ def main(argv: Sequence[str]) -> int:
     try:
         if argv[:1] == ["solve"]:
             return _solve(_solve_parser().parse_args(argv[1:]))
+        if argv[:1] == ["records"]:
+            return _records(argv[1:])
         if argv[:1] == ["check"]:
             return _check(_check_parser().parse_args(argv[1:]))
         return _window(_window_parser().parse_args(argv))
@@ -139,6 +143,12 @@ def _solve(arguments: argparse.Namespace) -> int:
     if arguments.quiet:
         choices = replace(choices, tell=None)
     return solve_file(arguments.file, arguments.out, choices)
+
+
+def _records(argv: Sequence[str]) -> int:
+    from app.export.records_options import records_parser, run_records
+
+    return run_records(records_parser().parse_args(argv))
 
 
 def _say(sentence: str, status: int) -> int:

@@ -25,15 +25,17 @@ def disk_state(path: Path) -> DiskState:
     return DiskState(entry.st_mtime_ns, entry.st_size)
 
 
-def write_whole(path: Path, text: str) -> None:
-    """Write UTF-8 text so that the file is there whole or as it was. Raises `OSError`.
+def write_whole(path: Path, content: str | bytes) -> None:
+    """Write bytes, or text as UTF-8, so that the file is there whole or as it was. Raises `OSError`.
 
     Needs no Qt: the command line uses it.
     """
+    if isinstance(content, str):
+        content = content.encode("utf-8", errors="backslashreplace")
     handle, name = tempfile.mkstemp(prefix=f".{path.name[:40]}.", suffix=".part", dir=path.parent)
     try:
-        with open(handle, "w", encoding="utf-8", errors="backslashreplace", newline="\n") as stream:
-            stream.write(text)
+        with open(handle, "wb") as stream:
+            stream.write(content)
             stream.flush()
             os.fsync(stream.fileno())
         _usual_permissions(name)
