@@ -2,9 +2,11 @@
 
 from __future__ import annotations
 
+from functools import partial
 from typing import Any
 
-from PySide6.QtCore import QPoint, Qt
+from PySide6.QtCore import QEvent, QPoint, Qt
+from PySide6.QtGui import QResizeEvent
 from PySide6.QtWidgets import (
     QFrame,
     QHBoxLayout,
@@ -25,35 +27,62 @@ from app.tree import copied
 Tree = dict[str, Any]
 
 
-class CaseRow(QScrollArea):
-    """A button for each case, and "+" for a copy of the one looked at."""
+class CaseRow(QWidget):
+    """A button for each case, a list of all where they do not fit, and "+" for a copy of the one looked at."""
 
     def __init__(self, document: Document, parent: QWidget | None = None) -> None:
         super().__init__(parent)
         self._document = document
         self._names: list[str] = []
         self._buttons: list[QPushButton] = []
-        self.setFrameShape(QFrame.Shape.NoFrame)
-        self.setWidgetResizable(True)
-        self.setFixedHeight(ROW + 2 * GAP)
-        self.setVerticalScrollBarPolicy(Qt.ScrollBarPolicy.ScrollBarAlwaysOff)
-        self.setHorizontalScrollBarPolicy(Qt.ScrollBarPolicy.ScrollBarAlwaysOff)
-        inside = QWidget(self)
+        self._scroll = QScrollArea(self)
+        self._scroll.setFrameShape(QFrame.Shape.NoFrame)
+        self._scroll.setWidgetResizable(True)
+        self._scroll.setFixedHeight(ROW + 2 * GAP)
+        self._scroll.setVerticalScrollBarPolicy(Qt.ScrollBarPolicy.ScrollBarAlwaysOff)
+        self._scroll.setHorizontalScrollBarPolicy(Qt.ScrollBarPolicy.ScrollBarAlwaysOff)
+        self._scroll.setFocusPolicy(Qt.FocusPolicy.NoFocus)
+        inside = QWidget(self._scroll)
         inside.setProperty("role", "clear")
         self._row = QHBoxLayout(inside)
-        self._row.setContentsMargins(GAP, 0, GAP, 0)
+        self._row.setContentsMargins(GAP, 0, 0, 0)
         self._row.setSpacing(GAP)
-        self._add = QToolButton(inside)
-        self._add.setProperty("role", "quiet")
-        self._add.setIcon(icon("add"))
-        self._add.setToolTip("Add a case: a copy of this one")
-        self._add.setAccessibleName("Add a case")
-        self._add.clicked.connect(lambda: add_case(self._document))
-        self._row.addWidget(self._add)
         self._row.addStretch(1)
-        self.setWidget(inside)
+        self._scroll.setWidget(inside)
+        self._all = self._quiet_button("All cases", "fold")
+        self._all.setPopupMode(QToolButton.ToolButtonPopupMode.InstantPopup)
+        menu = QMenu(self._all)
+        menu.aboutToShow.connect(lambda: self._fill_all(menu))
+        self._all.setMenu(menu)
+        self._add = self._quiet_button("Add a case: a copy of this one", "add")
+        self._add.clicked.connect(lambda: add_case(self._document))
+        whole = QHBoxLayout(self)
+        whole.setContentsMargins(0, 0, 0, 0)
+        whole.setSpacing(0)
+        whole.addWidget(self._scroll, 100)
+        whole.addWidget(self._all)
+        whole.addWidget(self._add)
+        whole.addStretch(1)
         document.changed.connect(self._follow)
         self._follow()
+
+    def resizeEvent(self, event: QResizeEvent) -> None:
+        super().resizeEvent(event)
+        self._fit()
+
+    def changeEvent(self, event: QEvent) -> None:
+        if event.type() == QEvent.Type.PaletteChange:
+            self._all.setIcon(icon("fold"))
+            self._add.setIcon(icon("add"))
+        super().changeEvent(event)
+
+    def _quiet_button(self, words: str, drawn: str) -> QToolButton:
+        button = QToolButton(self)
+        button.setProperty("role", "quiet")
+        button.setIcon(icon(drawn))
+        button.setToolTip(words)
+        button.setAccessibleName(words)
+        return button
 
     def _follow(self) -> None:
         names = [case.name for case in self._document.project.cases]
@@ -62,8 +91,16 @@ class CaseRow(QScrollArea):
             self._rebuild()
         for index, button in enumerate(self._buttons):
             button.setChecked(index == self._document.case_index)
-        self.ensureWidgetVisible(self._buttons[self._document.case_index])
-        self._add.setIcon(icon("add"))
+        self._fit()
+
+    def _fit(self) -> None:
+        """As wide as the cases, up to the room there is; the one looked at is always in sight."""
+        wanted = sum(button.sizeHint().width() + GAP for button in self._buttons) + GAP
+        room = self.width() - self._add.sizeHint().width()
+        self._all.setVisible(wanted > room)
+        self._scroll.setMaximumWidth(wanted)
+        if self._buttons:
+            self._scroll.ensureWidgetVisible(self._buttons[self._document.case_index])
 
     def _rebuild(self) -> None:
         for button in self._buttons:
@@ -72,7 +109,7 @@ class CaseRow(QScrollArea):
             button.deleteLater()
         self._buttons = []
         for index, name in enumerate(self._names):
-            button = QPushButton(_short(name), self.widget())
+            button = QPushButton(_short(name), self._scroll.widget())
             button.setProperty("role", "chip")
             button.setCheckable(True)
             button.setAccessibleName(f"Case {name}")
@@ -86,6 +123,11 @@ class CaseRow(QScrollArea):
     def _choose(self, index: int) -> None:
         self._document.choose_case(index)
         self._buttons[index].setChecked(True)  # a second click must not leave none chosen
+
+    def _fill_all(self, menu: QMenu) -> None:
+        menu.clear()
+        for index, name in enumerate(self._names):
+            menu.addAction(name.replace("&", "&&"), partial(self._choose, index))
 
     def _menu(self, index: int, at: QPoint) -> None:
         self._document.choose_case(index)
@@ -169,4 +211,4 @@ def _free_name(name: str, names: list[str]) -> str:
 
 
 def _short(name: str) -> str:
-    return (name if len(name) <= 24 else f"{name[:22]}…").replace("&", "&&")
+    return (name if len(name) <= 22 else f"{name[:20]}…").replace("&", "&&")

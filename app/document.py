@@ -125,6 +125,7 @@ class Document(QObject):
         attempts = [{**waiting, pointer: value}, {pointer: value}] if waiting else [{pointer: value}]
         sentence = ""
         for attempt in attempts:
+            after = self._tree
             try:
                 after = trees.with_values(self._tree, attempt)
                 project = self._validated(after)

@@ -72,7 +72,8 @@ class Menus:
         self.recent.aboutToShow.connect(self._fill_recent)
         demos = menu.addMenu("Open a demo")
         for path in demo_paths():
-            demos.addAction(path.stem.replace("_", " ").capitalize(), partial(window.open_demo, path))
+            name = path.stem.lstrip("0123456789-_").replace("-", " ").replace("_", " ")
+            demos.addAction(name.capitalize(), partial(window.open_demo, path))
         demos.setEnabled(bool(demos.actions()))
         menu.addSeparator()
         menu.addAction(self.save)

@@ -14,7 +14,7 @@ from app.look.spacing import GAP, SPACE
 PAUSE = 600
 FEWEST, MOST = 2, 4
 #: Margins and frame of the field above and below its text, px.
-FRAME = 10
+FRAME = 14
 
 
 class NotesField(QPlainTextEdit):

@@ -345,6 +345,21 @@ def test_the_layout_is_remembered(window, windows):
         assert mine == pytest.approx(its, abs=0.02)  # whole pixels
 
 
+def test_cases_are_chosen_by_a_click_and_listed_where_they_do_not_fit(window, qtbot):
+    row = window.top_bar.cases
+    assert not row._all.isVisible()
+    for _ in range(12):
+        qtbot.mouseClick(row._add, Qt.MouseButton.LeftButton)
+    assert len(window.document.project.cases) == 13
+    assert window.document.case_index == 12  # the copy is looked at
+    assert row._all.isVisible()
+    row._all.menu().aboutToShow.emit()
+    row._all.menu().actions()[3].trigger()
+    assert window.document.case_index == 3
+    assert row._buttons[3].isChecked()
+    assert sum(button.isChecked() for button in row._buttons) == 1
+
+
 def test_every_button_can_be_reached_by_name_and_no_key_is_taken_twice(window):
     for button in window.findChildren(QAbstractButton):
         if button.isVisible():
