@@ -6,12 +6,15 @@ from collections.abc import Callable
 from typing import Any
 
 from PySide6.QtCore import Qt
-from PySide6.QtWidgets import QDialog, QLabel, QPushButton, QVBoxLayout, QWidget
+from PySide6.QtWidgets import QDialog, QLabel, QPushButton, QScrollArea, QVBoxLayout, QWidget
 
 from app import __version__
 from app.look.spacing import SPACE
 from app.starting_points import STARTING_POINTS
 from app.words import AXIAL_CAUTION, LIMIT_CAUTION, LOAD_CAUTION, MODEL_CAUTION
+
+#: Size of a text in its window, in device-independent pixels.
+WIDTH, HIGHEST = 480, 520
 
 ABOUT = f"""Striketrace {__version__}
 
@@ -32,13 +35,17 @@ Concrete under a blow is stiffer than in a slow test: give its dynamic modulus.
 
 
 def tell(parent: QWidget, title: str, text: str) -> QDialog:
-    """A small window with a text."""
+    """A small window with a text, which can be scrolled where it is long."""
     dialog, column = _dialog(parent, title)
     label = QLabel(text, dialog)
     label.setWordWrap(True)
-    label.setMinimumWidth(440)
+    label.setFixedWidth(WIDTH)
     label.setTextInteractionFlags(Qt.TextInteractionFlag.TextSelectableByMouse)
-    column.addWidget(label)
+    area = QScrollArea(dialog)
+    area.setWidget(label)
+    label.adjustSize()
+    area.setMinimumSize(WIDTH + 16, min(label.height() + 4, HIGHEST))
+    column.addWidget(area)
     close = QPushButton("Close", dialog)
     close.clicked.connect(dialog.close)
     column.addWidget(close, 0, Qt.AlignmentFlag.AlignRight)

@@ -9,6 +9,7 @@ from PySide6.QtCore import QEvent, Qt
 from PySide6.QtGui import QCloseEvent, QDragEnterEvent, QDropEvent, QIcon
 from PySide6.QtWidgets import QApplication, QLineEdit, QMainWindow, QSplitter, QVBoxLayout, QWidget
 
+from app import terms
 from app.bench.bench import Bench
 from app.bench.outline import Outline
 from app.document import Document
@@ -202,6 +203,9 @@ class Window(QMainWindow):
 
     def show_limits(self) -> None:
         tell(self, "What this program computes, and what not", LIMITS)
+
+    def show_terms(self) -> None:
+        tell(self, "Terms", terms.as_text())
 
     def show_about(self) -> None:
         tell(self, "About Striketrace", ABOUT)

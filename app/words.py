@@ -113,8 +113,9 @@ def place_and_time(position: float, time: float, units: Units) -> str:
 
 
 def percent(share: float) -> str:
-    """A share for reading: "51 %", "0.40 %"."""
-    return f"{rounded(100 * share, 2 if share < 0.1 else 3 if share >= 1 else 2)} %"
+    """A share for reading: "51 %", "0.40 %", "109 %"; next to a limit so finely that it tells on which side."""
+    digits = 4 if 0.995 < share < 1.005 and share != 1 else 3 if share >= 1 else 2
+    return f"{rounded(100 * share, digits)} %"
 
 
 def _stress(finding: StressFinding, units: Units, larger: float) -> Line:

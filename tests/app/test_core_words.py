@@ -1,0 +1,166 @@
+"""Facts in words: the verdict first, each number with its unit, each state by a sign and a word."""
+
+from __future__ import annotations
+
+from typing import get_args
+
+import pytest
+
+from app.standing import time_left
+from app.starting_points import driven_pile, rod_or_bar
+from app.terms import TERMS
+from app.units import Units
+from app.words import LIMIT_CAUTION, MODEL_CAUTION, as_text, caution, notes, percent, quality, verdict
+from solver import project_from_tree
+from solver.answer.cautions import Caution, CautionKind
+from solver.answer.findings import (
+    EnergyFinding,
+    Findings,
+    Happening,
+    Quality,
+    SetFinding,
+    StressAt,
+    StressFinding,
+)
+from solver.answer.result import EventKind
+
+METRIC, US = Units(), Units("us")
+CASE = project_from_tree(driven_pile()).cases[0]
+
+
+def stress(sign="compression", value=163e6, limit=None, worst=None):
+    peak = StressAt(value, 16.0, 4.9e-3, "Upper", limit)
+    return StressFinding(sign, peak, worst or (peak if limit else None))
+
+
+def findings(**changes):
+    usual = {
+        "compression": stress(limit=319e6),
+        "tension": stress("tension", 27e6),
+        "set": SetFinding(6.5e-3, 9.1e-3, 3.2e-3, 0.04, 24.0),
+        "energy": EnergyFinding("Head", 1.2, 41.4e3, 0.012, "ram", 44e3, 47.1e3),
+        "happenings": (),
+        "warnings": (),
+        "cautions": (),
+        "quality": Quality(400, 3600, 1.1e-5, 1.0, 2e-13, True, True),
+    }
+    return Findings(**(usual | changes))
+
+
+def told(found, units=METRIC):
+    return [(line.figure, line.name, line.detail.replace("\u00a0", " ")) for line in verdict(found, units)]
+
+
+def plain(line):
+    return line.replace("\u00a0", " ")
+
+
+def test_the_verdict_in_metric_units():
+    compression, tension, set_line, energy = verdict(findings(), METRIC)
+    assert plain(compression.figure) == "163 MPa"
+    assert plain(compression.detail) == "✓ within the limit, 51 % · at 16.0 m, 4.90 ms"
+    assert (compression.time, compression.position) == (4.9e-3, 16.0)
+    assert plain(tension.detail) == "– no limit given · at 16.0 m, 4.90 ms"
+    assert plain(set_line.figure) == "6.50 mm"
+    # 0.25 m / 6.5 mm = 38.46 blows
+    assert plain(set_line.detail) == "38.5 blows per 0.25 m · toe moved 9.10 mm"
+    assert (
+        plain(energy.detail)
+        == "94 % of the ram's energy at impact, 44.0 kJ\n88 % of the drop energy, 47.1 kJ"
+    )
+
+
+def test_blows_per_foot_in_us_units():
+    # 0.3048 m / 6.5 mm = 46.89 blows
+    assert plain(verdict(findings(), US)[2].detail).startswith("46.9 blows per foot")
+
+
+@pytest.mark.parametrize(
+    ("value", "says"),
+    [
+        (150e6, "✓ within the limit, 75 %"),
+        (190e6, "! near the limit, 95 %"),
+        (200e6, "! near the limit, 100 %"),
+        (200.4e6, "✕ over the limit, 100.2 %"),
+        (240e6, "✕ over the limit, 120 %"),
+    ],
+)
+def test_a_state_is_a_sign_and_a_word(value, says):
+    assert verdict(findings(compression=stress(value=value, limit=200e6)), METRIC)[0].detail.startswith(says)
+
+
+def test_the_worst_place_is_told_where_it_is_not_the_place_of_the_peak():
+    worst = StressAt(90e6, 20.0, 6e-3, "Lower", 80e6)
+    line = verdict(findings(compression=stress(limit=319e6, worst=worst)), METRIC)[0]
+    assert plain(line.detail) == "at 16.0 m, 4.90 ms\n✕ over the limit, 112 % in Lower, at 20.0 m, 6.00 ms"
+    assert line.state == "over"
+
+
+def test_no_tension_and_no_set_are_told_as_such():
+    lines = told(findings(tension=stress("tension", 1e-9), set=SetFinding(0.0, 9e-3, None, 0.04, 24.0)))
+    assert lines[1] == ("0 MPa", "peak tension", "no tension anywhere")
+    assert lines[2][2] == "the toe does not stay down · toe moved 9.00 mm"
+
+
+@pytest.mark.parametrize("kind", get_args(EventKind))
+@pytest.mark.parametrize("make", [driven_pile, rod_or_bar])
+def test_every_event_has_its_sentence(kind, make):
+    case = project_from_tree(make()).cases[0]
+    found = findings(set=None, happenings=(Happening(kind, 1.0, 0.02, 1),))
+    (note,) = notes(found, case, METRIC)
+    assert note.text.endswith(".")
+    assert note.time == 0.02
+
+
+def test_events_that_come_again_and_again_are_counted():
+    many = tuple(Happening("toe_lift", 24.0, 0.01 * (i + 1), i) for i in range(5))
+    first, second = notes(findings(set=None, happenings=many), CASE, METRIC)
+    assert plain(first.text) == "The toe lifts off the ground at 10.0 ms."
+    assert plain(second.text) == "The toe lifts off the ground again at 20.0 ms (5 times in all)."
+
+
+@pytest.mark.parametrize("kind", get_args(CautionKind))
+@pytest.mark.parametrize("units", [METRIC, US])
+def test_every_caution_has_its_sentence(kind, units):
+    text = caution(Caution(kind, "gauges/0", "Head", 0.4, 0.9), units)
+    assert text.endswith((".", "?", ")"))
+    assert "Head" in text or kind == "short_pulse"
+
+
+def test_the_paragraph_for_a_report_carries_every_line_and_the_cautions():
+    found = findings(warnings=("The ram is still in the air.",))
+    text = as_text(found, CASE, METRIC)
+    for line in verdict(found, METRIC):
+        assert line.figure in text
+    for sentence in ("The ram is still in the air.", MODEL_CAUTION, LIMIT_CAUTION):
+        assert sentence in text
+    assert "\n" not in text
+
+
+def test_a_run_that_was_stopped_says_so_first():
+    found = findings(quality=Quality(400, 100, 1.1e-5, 1.0, 2e-13, False, False))
+    assert notes(found, CASE, METRIC)[0].text.startswith("Stopped before the end")
+    assert "still moves" in quality(found.quality, METRIC)[-1]
+
+
+def test_shares_and_times_left():
+    assert [percent(s) for s in (0.51, 0.004, 1.12, 1.0, 0.999)] == [
+        "51 %",
+        "0.40 %",
+        "112 %",
+        "100 %",
+        "99.90 %",
+    ]
+    assert [time_left(s) for s in (3.2, 89, 600, 9000)] == [
+        "3 s left",
+        "89 s left",
+        "10 min left",
+        "2.5 h left",
+    ]
+
+
+def test_every_term_is_one_or_two_plain_sentences():
+    assert len({term.word for term in TERMS}) == len(TERMS)
+    for term in TERMS:
+        assert term.means.endswith("."), term.word
+        assert len(term.means) < 240, term.word
