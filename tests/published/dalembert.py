@@ -244,3 +244,30 @@ def long_run() -> Iterator[Compared]:
         displacement(LENGTH, t[last] + k * dt, lambda s: 1e6 / Z * form(s), LENGTH, C, 1, 1) for k in (-1, 1)
     ]
     yield history("velocity of the toe, last passages", (both[1] - both[0]) / (2 * dt), gauge.velocity[last], "m/s")
+@check(
+    model="uniform elastic rod, rectangular pulse on a velocity load with release",
+    title="A struck end that is let go after the pulse",
+    source="d'Alembert's solution (textbook); what comes back meets a free end once the load is released",
+    formula="v at the struck end = 2 x the up-wave after release, as at a free end",
+    tolerance=1e-10,
+    share_of="the velocity of the pulse",
+    why=MEANS,
+)
+def released() -> Iterator[Compared]:
+    run = solved(
+        pulse("rectangle", 0.001, 1.0, "velocity", release=True),
+        gauges={"head": 0.0, "middle": 5.0},
+        duration=0.0102,
+        dx=0.1,
+    )
+    # the end is free again before the first echo arrives at 4 ms, so both ends send back +1
+    form = impulse("rectangle", 0.001)
+    for name, x in (("head", 0.0), ("middle", 5.0)):
+        gauge = run.gauges[name]
+        _, velocity, moved = at_gauge(
+            form, x, gauge.time, run.time_step, stiffness=E * AREA, length=LENGTH, c=C, near=1, far=1
+        )
+        yield history(f"velocity at the {name}", velocity, gauge.velocity, "m/s", 1.0)
+        yield history(f"displacement at the {name}", moved, gauge.displacement, "m", 0.001)
+
+

@@ -84,9 +84,9 @@ def _pushed(speed: float, dx: float = 0.0025) -> Result:
     tolerance=3e-3,
     why=(
         "Plateau stress 0.3 %; the strain 3 %, as the overshoot behind an undamped step is locked in as plastic strain and "
-        "goes slowly with the mesh; precursor 0.01 %."
+        "goes slowly with the mesh; precursor 0.01 %, elastic states 1e-9."
     ),
-    over={f"{v:g} m/s": v for v in (5.0, 8.875, 10.0, 15.0, 20.0, 30.0)},
+    over={f"{v:g} m/s": v for v in (5.0, 10.0, 15.0, 20.0, 30.0)},
 )
 def plateau(speed: float) -> Iterator[Compared]:
     run = _pushed(speed)
@@ -95,9 +95,10 @@ def plateau(speed: float) -> Iterator[Compared]:
     far = [g for g in run.gauges.values() if g.position > 0.2]
     found = -np.mean([g.stress[-1] for g in near])
     stretch = -np.mean([g.strain[-1] for g in near])
-    yield value("plateau stress, mean to 45 mm", stress, found, "Pa")
-    yield value("plateau strain, mean to 45 mm", strain, stretch, "", tolerance=0.03)
-    if speed > SPEED_AT_YIELD:
+    yields = speed > SPEED_AT_YIELD
+    yield value("plateau stress, mean to 45 mm", stress, found, "Pa", tolerance=None if yields else 1e-9)
+    yield value("plateau strain, mean to 45 mm", strain, stretch, "", tolerance=0.03 if yields else 1e-9)
+    if yields:
         ahead = -np.mean([g.stress[-1] for g in far])
         yield value("precursor stress", YIELD, ahead, "Pa", tolerance=1e-4)
         moving = np.mean([g.velocity[-1] for g in far])
