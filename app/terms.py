@@ -6,6 +6,7 @@ A source marked "from memory" was not looked up when it was written down.
 from __future__ import annotations
 
 from dataclasses import dataclass
+from html import escape
 
 
 @dataclass(frozen=True)
@@ -83,6 +84,10 @@ TERMS = (
 )
 
 
-def as_text() -> str:
-    """All terms, one paragraph each."""
-    return "\n\n".join(f"{t.word}. {t.means}" + (f" ({t.source})" if t.source else "") for t in TERMS)
+def as_rich_text() -> str:
+    """All terms, one paragraph each, for a label."""
+    return "".join(
+        f"<p><b>{escape(t.word)}</b><br>{escape(t.means)}"
+        + (f"<br><i>{escape(t.source)}</i></p>" if t.source else "</p>")
+        for t in TERMS
+    )

@@ -205,7 +205,7 @@ class Window(QMainWindow):
         tell(self, "What this program computes, and what not", LIMITS)
 
     def show_terms(self) -> None:
-        tell(self, "Terms", terms.as_text())
+        tell(self, "Terms", terms.as_rich_text())
 
     def show_about(self) -> None:
         tell(self, "About Striketrace", ABOUT)
