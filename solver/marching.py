@@ -14,6 +14,7 @@ from solver.answer.gather import gather
 from solver.answer.result import Result
 from solver.answer.store import Store
 from solver.errors import SolveError
+from solver.model.derived import shaft_resistance
 from solver.model.load import History, Pulse
 from solver.numerics.arrays import Frames
 from solver.numerics.assemble import extremes_of, records_of
@@ -135,12 +136,14 @@ class March:
 
     def _start_row(self) -> Array:
         """The ledger just before the first step: the same balance, on the half step before it."""
-        row, s, dt = np.zeros(len(LEDGER)), self.state, self.chain.dt
+        row, s, dt = np.zeros(len(LEDGER) + 1), self.state, self.chain.dt
         motion, force = s.motion, np.zeros_like(s.motion.force)
         note = (np.zeros((1, 3), dtype=np.int64), np.zeros(1, dtype=np.int64))
         rod = s.rod._replace(state=s.rod.state.copy())
         link_forces(rod, motion.u, motion.v, force, dt, self.flags + 1, note, 0)
-        balance(row, rod, s.shaft, s.bounds, motion.rest, motion.u, -motion.v, force, self.sums, dt)
+        balance(
+            row, rod, s.shaft, s.bounds, motion.rest, motion.u, -motion.v, -motion.v, force, self.sums, dt
+        )
         return row
 
     def _aligned(self, count: int) -> int:
@@ -213,7 +216,17 @@ def _longest(chain: Chain) -> float:
     member = chain.axial[chain.head :] > 0
     c = np.sqrt(chain.axial[chain.head :][member] / chain.line_mass[chain.head :][member])
     passage = float(np.sum(chain.length[chain.head :][member] / c))
-    return max(40 * passage, 20 * passage + _load_end(chain))
+    return max(40 * passage, 20 * passage + _load_end(chain), 3 * _braking(chain))
+
+
+def _braking(chain: Chain) -> float:
+    """Time in which the ground's static resistance takes the momentum of what strikes, s."""
+    ground = chain.case.ground
+    if ground is None:
+        return 0.0
+    resistance = shaft_resistance(chain.case) + (ground.toe.resistance if ground.toe else 0.0)
+    momentum = float(np.sum(chain.mass * np.abs(chain.velocity)))
+    return min(momentum / resistance, 1.0) if resistance > 0 else 0.0
 
 
 def _load_end(chain: Chain) -> float:

@@ -9,13 +9,15 @@ import numpy as np
 from solver.errors import SolveError
 from solver.model.project import Case
 from solver.model.surroundings import Resistance
-from solver.numerics.balance import residual_of, unreal_share
+from solver.numerics.balance import growing_share, residual_of
 from solver.numerics.chain import Stretch, segments_of
 from solver.numerics.stability import SMALLEST_STRETCH
 
 if TYPE_CHECKING:
     from solver.marching import March
 
+#: Share of the energy that a wave of two elements' length may grow to; short pulses alone stay below it.
+GROWN = 0.2
 #: Least exponent N of the power law: below it |v|^N is a jump that no step resolves.
 LEAST_EXPONENT = 0.05
 #: Share of the largest energy that may fail to close before a run is refused.
@@ -98,15 +100,18 @@ def refuse_bad_state(march: March) -> None:
         _refuse_inside_out(march, part)
     rows = march.ledger_rows()
     share, frame = residual_of(march.start_row, rows)
-    sharp, sharp_frame = unreal_share(march.start_row, rows)
-    if sharp > share:
-        share, frame = sharp, sharp_frame
     if share > REFUSED:
         place = chain.position[int(np.argmax(np.abs(motion.v)))]
         when = frame * march.stride * chain.dt
         raise SolveError(
             f"The energy of this run does not close by {share:.0%} at {when * 1000:.4g} ms (fastest at {place:.4g} m), "
             "so it is not shown. Shorter elements may help."
+        )
+    grown, frame = growing_share(march.start_row, rows)
+    if grown > GROWN:
+        raise SolveError(
+            f"A wave of two elements' length grows in this run (by {frame * march.stride * chain.dt * 1000:.4g} ms to "
+            f"{grown:.0%} of the energy), which no mesh can carry, so it is not shown. Another element length may help."
         )
 
 

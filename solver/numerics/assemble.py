@@ -255,7 +255,7 @@ def records_of(
         frame_force=np.empty(pictures, dtype=np.float32),
         frame_velocity=np.empty(pictures, dtype=np.float32),
         frame_displacement=np.empty(pictures, dtype=np.float32),
-        ledger=np.empty((frames, len(LEDGER))),
+        ledger=np.empty((frames, len(LEDGER) + 1)),
         ram=np.empty((3 if chain.train else 0, steps)),
         events=np.zeros((4096, 3), dtype=np.int64),
         event_count=np.zeros(1, dtype=np.int64),

@@ -7,17 +7,14 @@ one kind after the other; records; displacements of the next step.
 
 import numpy as np
 
-from solver.numerics import shaft, toe, train
+from solver.numerics import contact, shaft, toe, train
 from solver.numerics.balance import DAMPING, DASHPOTS, IMPACT, PULL, PULL_BEFORE, SLIP, WORK, balance
 from solver.numerics.compiled import kernel
 from solver.numerics.links import link_forces
 from solver.numerics.records import (
     EVENT_IMPACT,
-    EVENT_JOINT_CLOSED,
-    EVENT_JOINT_OPENED,
     EVENT_SEPARATION,
     EVENT_TOE_LIFT,
-    EVENT_WALL,
     envelopes,
     read_gauges,
     remember,
@@ -105,49 +102,6 @@ def dashpot_losses(rod, v, w, step):
         mean = 0.5 * (v[rod.special[s]] + w[rod.special[s]])
         taken += rod.dashpot[s] * mean * (mean if step > 0 else 0.5 * w[rod.special[s]])
     return taken
-
-
-@kernel
-def joints(bounds, push, u, v, w, sums, dt, note, step):
-    """Joints that touch or pull within this step get the force that just closes or stops them.
-
-    The force of a contact lives on half steps, like every local law: the mean of its values before and after acts now.
-    So faces that part still feel half of what held them, and no wave of two steps' length is left behind.
-    `joint_force` holds the value of the last half step; the new one is never a pull (nor, at a slack's end, a push).
-    """
-    for j in range(len(bounds.joints)):
-        a = bounds.joints[j]
-        held = 0.5 * bounds.joint_force[j]
-        rel = v[a] - v[a + 1]
-        opening = u[a + 1] - u[a] + bounds.joint_par[j, 0]
-        yielding = push[a] + push[a + 1]
-        ahead = opening + dt * (w[a + 1] - w[a] + yielding * held)
-        over = ahead if ahead < 0.0 else max(ahead - bounds.joint_par[j, 1], 0.0)
-        force = held - over / (dt * yielding)
-        w[a] -= push[a] * force
-        w[a + 1] += push[a + 1] * force
-        sums[IMPACT] += 0.5 * dt * force * (rel + w[a] - w[a + 1])
-        before = bounds.joint_force[j] != 0.0
-        bounds.joint_force[j] = 2.0 * (force - held)
-        if over != 0.0 and not before:
-            remember(note, EVENT_JOINT_CLOSED, a, step)
-        elif over == 0.0 and before:
-            remember(note, EVENT_JOINT_OPENED, a, step)
-
-
-@kernel
-def wall(bounds, push, u, v, w, sums, dt, note, step):
-    """A rigid wall beyond a gap, met and left as a joint is; `wall` holds the gap and the force of the last half
-    step."""
-    last = len(u) - 1
-    held = 0.5 * bounds.wall[1]
-    over = max(u[last] + dt * (w[last] - push[last] * held) - bounds.wall[0], 0.0)
-    force = held + over / (dt * push[last])
-    w[last] -= push[last] * force
-    sums[IMPACT] += 0.5 * dt * force * (v[last] + w[last])
-    if over > 0.0 and bounds.wall[1] == 0.0:
-        remember(note, EVENT_WALL, last, step)
-    bounds.wall[1] = 2.0 * (force - held)
 
 
 @kernel
@@ -261,9 +215,9 @@ def march(rod, ground, bounds, motion, ext, rec, sums, load, first, count, strid
         if rod.fixed_end:
             w[last] = 0.0
         if jointed:
-            joints(bounds, push, u, v, w, sums, dt, note, step)
+            sums[IMPACT] += contact.joints(bounds, push, u, v, w, dt, note, step)
         if walled:
-            wall(bounds, push, u, v, w, sums, dt, note, step)
+            sums[IMPACT] += contact.wall(bounds, push, u, v, w, dt, note, step)
         if rams:
             train_step(bounds, push, u, v, w, sums, dt, note, step)
         sums[PULL_BEFORE], sums[PULL] = sums[PULL], pull
@@ -278,7 +232,7 @@ def march(rod, ground, bounds, motion, ext, rec, sums, load, first, count, strid
             rec.ram[2, n] = 0.5 * (v[head] + w[head])
         if step % stride == 0:
             take_frame(rec, u, v, w, force, rest, n // stride)
-            balance(rec.ledger[n // stride], rod, ground, bounds, motion.rest, u, w, force, sums, dt)
+            balance(rec.ledger[n // stride], rod, ground, bounds, motion.rest, u, v, w, force, sums, dt)
         envelopes(ext, force, v, w, u, dt, step)
         v, w = w, v
     motion.v[:] = v

@@ -41,12 +41,12 @@ def branch(which, kind, par, state, gap, dt):
 
 
 @kernel
-def misfit(force, rel, kind, par, state, gap, dt):
-    """How far a solution of a branch is from the law: 0 where it holds, N."""
+def misfit(which, force, rel, kind, par, state, gap, dt):
+    """How far a solution of a branch is from the law, N: 0 where it holds, endlessly far where faces overlap."""
     if kind == 0:
-        held = 0.5 * state[2]
-        overlap = max(dt * rel - gap, 0.0) * (1e300 if force <= held else 0.0)
-        return max(held - force, 0.0) + overlap
+        if which == CLOSED:
+            return max(0.5 * state[2] - force, 0.0)
+        return 1e300 if dt * rel > gap else 0.0
     new = cushion_force(state[0] + 0.5 * dt * (state[3] + rel), par[0], par[1], state[1], par[2])
     return abs(force - 0.5 * (state[2] + new))
 
@@ -63,7 +63,7 @@ def solve_one(rel, yielding, kind, par, state, gap, dt):
     for which in choices(kind):
         a, b, c = branch(which, kind, par, state, gap, dt)
         force = (c - b * rel) / (a - b * yielding)
-        wrong = misfit(force, rel - yielding * force, kind, par, state, gap, dt)
+        wrong = misfit(which, force, rel - yielding * force, kind, par, state, gap, dt)
         if wrong < least:
             best, least = force, wrong
     return best
@@ -87,8 +87,8 @@ def solve_two(rel1, rel2, p0, p1, p2, kinds, pars, states, gaps, dt):
             f2 = (m11 * r2 - r1 * m21) / det
             new1 = rel1 - (p0 + p1) * f1 + p1 * f2
             new2 = rel2 + p1 * f1 - (p1 + p2) * f2
-            wrong = misfit(f1, new1, kinds[0], pars[0], states[0], gaps[0], dt)
-            wrong += misfit(f2, new2, kinds[1], pars[1], states[1], gaps[1], dt)
+            wrong = misfit(first, f1, new1, kinds[0], pars[0], states[0], gaps[0], dt)
+            wrong += misfit(second, f2, new2, kinds[1], pars[1], states[1], gaps[1], dt)
             if wrong < least:
                 best1, best2, least = f1, f2, wrong
             if least < 1e-9 * (abs(f1) + abs(f2)):

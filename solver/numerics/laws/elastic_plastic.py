@@ -26,7 +26,7 @@ def force(u, v, stiff, par, state, force, start, stop, dt):
         trial = stiff[i] * (now - plastic)
         slip = 0.0
         sign = 1.0
-        if abs(trial - back) > reach:
+        if abs(trial - back) > reach * (1.0 + 1e-9):
             sign = 1.0 if trial > back else -1.0
             ahead = trial + 0.5 * stiff[i] * dt * (v[i + 1] - v[i])
             slip = max(sign * (ahead - back) - reach, 0.0) / (stiff[i] + hard)
