@@ -9,6 +9,8 @@ from solver.numerics.compiled import cache_problem
 from solver.numerics.ground import bands_of
 from solver.numerics.mesh import MISMATCH
 
+#: Energy of a ram that falls again, as a share of its first blow's, above which that is told.
+SECOND_BLOW = 0.1
 #: Elements of a viscous segment below which their number is told.
 FEW = 100
 #: Plastic strain above which a law of small strains is said to be left.
@@ -85,7 +87,8 @@ def _ram_returns(blow: Blow) -> float | None:
     a = chain.train[0].link
     gap = float(blow.at_end[a + 1] - blow.at_end[a])
     rising = float(motion.v[a + 1] - motion.v[a]) if not blow.settled else -float(motion.v[a])
-    if gap <= 0.0:
+    falls = rising**2 / 2 + chain.gravity * gap
+    if gap <= 0.0 or falls < SECOND_BLOW * float(chain.velocity[a]) ** 2 / 2:
         return None
     flight = (rising + np.sqrt(max(rising**2 + 2 * chain.gravity * gap, 0.0))) / chain.gravity
     return float((blow.steps - 1) * chain.dt + flight)
