@@ -50,5 +50,23 @@ LOOSE_SUMS = {"reassoc", "contract", "nsz"}
 
 
 def kernel(function: Any) -> Any:
-    """Compile a function: releases the GIL, cached on disk where that is possible."""
-    return njit(nogil=True, cache=_folder is not None, error_model="numpy", fastmath=LOOSE_SUMS)(function)
+    """Compile a function: releases the GIL, cached on disk where that is possible.
+
+    Kernels allocate nothing and keep nothing, so they do without counting references, which at every slice and every
+    field of a group of arrays would cost more than the arithmetic.
+    """
+    return njit(nogil=True, cache=_folder is not None, error_model="numpy", fastmath=LOOSE_SUMS, _nrt=False)(
+        function
+    )
+
+
+def part_of_step(function: Any) -> Any:
+    """Compile a function into whatever calls it: handing over groups of arrays at every step would cost too much."""
+    return njit(
+        nogil=True,
+        cache=_folder is not None,
+        error_model="numpy",
+        fastmath=LOOSE_SUMS,
+        _nrt=False,
+        forceinline=True,
+    )(function)

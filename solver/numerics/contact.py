@@ -5,11 +5,11 @@ faces that part still feel half of what held them, and no wave of two steps' len
 stiffness and no smaller step.
 """
 
-from solver.numerics.compiled import kernel
+from solver.numerics.compiled import part_of_step
 from solver.numerics.records import EVENT_JOINT_CLOSED, EVENT_JOINT_OPENED, EVENT_WALL, remember
 
 
-@kernel
+@part_of_step
 def joints(bounds, push, u, v, w, dt, note, step):
     """Correct the new velocities of joints that touch or pull within this step; returns the energy exchanged, J."""
     exchanged = 0.0
@@ -33,7 +33,7 @@ def joints(bounds, push, u, v, w, dt, note, step):
     return exchanged
 
 
-@kernel
+@part_of_step
 def wall(bounds, push, u, v, w, dt, note, step):
     """The same at a rigid wall; `wall` holds its gap and the force of the last half step."""
     last = len(u) - 1

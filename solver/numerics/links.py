@@ -1,6 +1,6 @@
 """Forces and energies of all links, block by block, each by its law."""
 
-from solver.numerics.compiled import kernel
+from solver.numerics.compiled import kernel, part_of_step
 from solver.numerics.laws import brittle_tension, elastic, elastic_plastic, large_strain, viscoelastic
 from solver.numerics.records import EVENT_LEFT_ELASTIC, remember
 
@@ -8,7 +8,7 @@ from solver.numerics.records import EVENT_LEFT_ELASTIC, remember
 ELASTIC, VISCOELASTIC, ELASTIC_PLASTIC, BRITTLE, LARGE_STRAIN = range(5)
 
 
-@kernel
+@part_of_step
 def link_forces(rod, u, v, force, dt, flags, note, step):
     """Force of every link by its block's law; the first link of a block that leaves the elastic range is noted."""
     for b in range(len(rod.blocks)):

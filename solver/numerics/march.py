@@ -9,7 +9,7 @@ import numpy as np
 
 from solver.numerics import contact, shaft, toe, train
 from solver.numerics.balance import DAMPING, DASHPOTS, IMPACT, PULL, PULL_BEFORE, SLIP, WORK, balance
-from solver.numerics.compiled import kernel
+from solver.numerics.compiled import kernel, part_of_step
 from solver.numerics.links import link_forces
 from solver.numerics.records import (
     EVENT_IMPACT,
@@ -22,7 +22,7 @@ from solver.numerics.records import (
 )
 
 
-@kernel
+@part_of_step
 def new_velocities(push, weight, gain, v, w, force):
     """w = gain v + (dt/m)(forces): all nodes at once."""
     last = len(v) - 1
@@ -104,7 +104,7 @@ def dashpot_losses(rod, v, w, step):
     return taken
 
 
-@kernel
+@part_of_step
 def shaft_nodes(ground, push, v, w, sums, dt):
     """Resistance along the shaft, by each law present."""
     if len(ground.r):
@@ -126,7 +126,7 @@ def shaft_nodes(ground, push, v, w, sums, dt):
         sums[DAMPING] += damped
 
 
-@kernel
+@part_of_step
 def toe_node(bounds, push, u, v, w, sums, dt, note, step):
     """Resistance under the toe."""
     last = len(u) - 1
@@ -146,7 +146,7 @@ def toe_node(bounds, push, u, v, w, sums, dt, note, step):
         remember(note, EVENT_TOE_LIFT, last, step)
 
 
-@kernel
+@part_of_step
 def train_step(bounds, push, u, v, w, sums, dt, note, step):
     """Ram, cap and struck end; notes when the ram leaves and when it strikes (again)."""
     before = bounds.train_state[0, 2] if bounds.train_kinds[0] == 0 else bounds.train_force[0]
@@ -235,4 +235,5 @@ def march(rod, ground, bounds, motion, ext, rec, sums, load, first, count, strid
             balance(rec.ledger[n // stride], rod, ground, bounds, motion.rest, u, v, w, force, sums, dt)
         envelopes(ext, force, v, w, u, dt, step)
         v, w = w, v
-    motion.v[:] = v
+    for i in range(len(v)):
+        motion.v[i] = v[i]

@@ -1,6 +1,6 @@
 """What a march writes down: events, envelopes, gauges and frames."""
 
-from solver.numerics.compiled import kernel
+from solver.numerics.compiled import kernel, part_of_step
 
 #: Kinds of event in `Records.events`, rows of kind, place (link or node), step.
 (
@@ -25,36 +25,66 @@ def remember(note, kind, place, step):
         count[0] += 1
 
 
-@kernel
+#: Links or nodes that are gone through at once: what one short loop has read, the next finds in the nearest cache.
+BLOCK = 512
+
+
+@part_of_step
 def envelopes(ext, force, v, w, u, dt, step):
     """Extremes of force per link; of velocity and displacement per node, the displacements then move on to the
     next step.
 
-    One short loop per extreme: each touches few enough arrays for vector instructions. Later rounding does not
-    count as a new extreme, so that the first of equal peaks is the one that is told.
+    One short loop per extreme, values read before any is written: so the loops run in vector instructions.
     """
     at = float(step)
-    low, low_step = ext.low, ext.low_step
-    for i in range(len(force)):
-        lower = force[i] < low[i] - 1e-10 * abs(low[i])
-        low_step[i] = at if lower else low_step[i]
-        low[i] = force[i] if lower else low[i]
-    high, high_step = ext.high, ext.high_step
-    for i in range(len(force)):
-        higher = force[i] > high[i] + 1e-10 * abs(high[i])
-        high_step[i] = at if higher else high_step[i]
-        high[i] = force[i] if higher else high[i]
-    speed = ext.speed
-    for i in range(len(u)):
-        mean = 0.5 * (v[i] + w[i])
-        speed[i] = mean if mean > speed[i] else speed[i]
-    travel = ext.travel
-    for i in range(len(u)):
-        travel[i] = u[i] if u[i] > travel[i] else travel[i]
-        u[i] += dt * w[i]
+    for start in range(0, len(force), BLOCK):
+        here = slice(start, start + BLOCK)
+        lowest(force[here], ext.low[here], ext.low_step[here], at)
+        highest(force[here], ext.high[here], ext.high_step[here], at)
+    for start in range(0, len(u), BLOCK):
+        here = slice(start, start + BLOCK)
+        fastest(v[here], w[here], ext.speed[here])
+        farthest(u[here], w[here], ext.travel[here], dt)
 
 
-@kernel
+@part_of_step
+def lowest(force, low, low_step, at):
+    """Later rounding does not count as a new extreme, so that the first of equal peaks is the one that is told."""
+    for i in range(len(force)):
+        f, least, when = force[i], low[i], low_step[i]
+        lower = f < least - 1e-10 * abs(least)
+        low_step[i] = at if lower else when
+        low[i] = f if lower else least
+
+
+@part_of_step
+def highest(force, high, high_step, at):
+    """As `lowest`."""
+    for i in range(len(force)):
+        f, most, when = force[i], high[i], high_step[i]
+        higher = f > most + 1e-10 * abs(most)
+        high_step[i] = at if higher else when
+        high[i] = f if higher else most
+
+
+@part_of_step
+def fastest(v, w, speed):
+    """Largest velocity so far."""
+    for i in range(len(speed)):
+        mean, most = 0.5 * (v[i] + w[i]), speed[i]
+        speed[i] = mean if mean > most else most
+
+
+@part_of_step
+def farthest(u, w, travel, dt):
+    """Largest displacement so far; then those of the next step."""
+    for i in range(len(travel)):
+        now, most = u[i], travel[i]
+        travel[i] = now if now > most else most
+        u[i] = now + dt * w[i]
+
+
+@part_of_step
 def read_gauges(rec, u, v, w, force, rest, dt, column):
     """Each gauge: two readings blended by their share."""
     for g in range(len(rec.node)):

@@ -103,13 +103,11 @@ def advance(links, kinds, pars, states, forces, u, v, w, push, dt):
     `links[t]` is the node above link t, the node below is the next one. `forces` gets the force of each link, N.
     """
     count = len(links)
-    gaps = np.zeros(2)
-    for t in range(count):
-        a = links[t]
-        gaps[t] = u[a + 1] - u[a]
-        states[t, 3] = v[a] - v[a + 1]
     a = links[0]
     rel1 = w[a] - w[a + 1]
+    for t in range(count):
+        states[t, 3] = v[a + t] - v[a + t + 1]
+    gaps = (u[a + 1] - u[a], u[a + 2] - u[a + 1] if count == 2 else 0.0)
     if count == 1:
         forces[0] = solve_one(rel1, push[a] + push[a + 1], kinds[0], pars[0], states[0], gaps[0], dt)
     else:
