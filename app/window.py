@@ -12,6 +12,7 @@ from PySide6.QtWidgets import QApplication, QLineEdit, QMainWindow, QSplitter, Q
 from app import terms
 from app.bench.bench import Bench
 from app.bench.outline import Outline
+from app.bench.tables import Tables
 from app.document import Document
 from app.file_watch import FileWatch
 from app.files import Files
@@ -69,6 +70,8 @@ class Window(QMainWindow):
         self.notes = NotesPanel(self.document, self)
         self.outline = Outline(self.document, self.sight, self.solution, self)
         self.bench = Bench(self.document, self.sight, self.solution, self)
+        self.tables = Tables(self.document, self.sight, self.solution, self)
+        self.outline.table_wanted.connect(self.tables.open_table)
         self.split = QSplitter(Qt.Orientation.Horizontal, self)
         self.split.setHandleWidth(SPACE)
         self.split.addWidget(self.outline)
@@ -83,6 +86,7 @@ class Window(QMainWindow):
         for widget in (self.top_bar, self.notices, self.notes):
             column.addWidget(widget)
         column.addWidget(self.split, 1)
+        column.addWidget(self.tables)
         self.setCentralWidget(middle)
         self.setMinimumSize(*SMALLEST)
         self._draw_icons()
