@@ -1,4 +1,4 @@
-"""The command line: the window, `solve`, `records` and `check`. Qt is imported only for the window."""
+"""The command line: the window, `solve`, `records`, `report` and `check`. Qt is imported only for the window."""
 
 from __future__ import annotations
 
@@ -21,6 +21,9 @@ ABOUT = """Stress waves in struck piles, rods and bars.
   python3 -m app solve FILE.strike --out DIR  solve every case and write results; needs no screen
   python3 -m app records FILE.strike --out DIR
                                               gauge records as CSV, XLSX or HDF5, in units and sign as chosen
+  python3 -m app sheet FILE.strike --out DIR  what set to stop at, with what drop: table and page; needs no screen
+  python3 -m app report FILE.strike --out FILE.pdf
+                                              the report as PDF, or as HTML where the name ends in .html
   python3 -m app check FILE.strike ...        say whether projects are valid
 """
 
@@ -39,6 +42,10 @@ def main(argv: Sequence[str]) -> int:
             return _solve(_solve_parser().parse_args(argv[1:]))
         if argv[:1] == ["records"]:
             return _records(argv[1:])
+        if argv[:1] == ["sheet"]:
+            return _sheet(_sheet_parser().parse_args(argv[1:]))
+        if argv[:1] == ["report"]:
+            return _report(argv[1:])
         if argv[:1] == ["check"]:
             return _check(_check_parser().parse_args(argv[1:]))
         return _window(_window_parser().parse_args(argv))
@@ -75,6 +82,18 @@ def _solve_parser() -> argparse.ArgumentParser:
         action="store_true",
         help="write compression as positive (tension is otherwise)",
     )
+    return parser
+
+
+def _sheet_parser() -> argparse.ArgumentParser:
+    parser = argparse.ArgumentParser(
+        prog="striketrace sheet",
+        description="Vary resistance and drop of one case; write sheet.csv, sheet.json and the page sheet.pdf.",
+    )
+    parser.add_argument("file", metavar="FILE.strike", type=Path)
+    parser.add_argument("--out", metavar="DIR", type=Path, required=True, help="folder for the sheet")
+    parser.add_argument("--case", metavar="NAME", help="of this case (the first one otherwise)")
+    parser.add_argument("--quiet", action="store_true", help="say nothing but errors")
     return parser
 
 
@@ -149,6 +168,18 @@ def _records(argv: Sequence[str]) -> int:
     from app.export.records_options import records_parser, run_records
 
     return run_records(records_parser().parse_args(argv))
+
+
+def _sheet(arguments: argparse.Namespace) -> int:
+    from app.set_sheet.command import write_sheet
+
+    return write_sheet(arguments.file, arguments.case, arguments.out, arguments.quiet)
+
+
+def _report(argv: Sequence[str]) -> int:
+    from app.report.command import report_parser, run_report
+
+    return run_report(report_parser().parse_args(argv))
 
 
 def _say(sentence: str, status: int) -> int:

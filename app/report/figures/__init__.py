@@ -1,0 +1,1 @@
+"""Figures of the report, as marks on a sheet."""

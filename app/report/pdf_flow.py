@@ -1,0 +1,138 @@
+"""Blocks of a report as what the PDF library lays out, with the room that each needs before a page may break."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator, Sequence
+from xml.sax.saxutils import escape
+
+from reportlab.lib.styles import ParagraphStyle
+from reportlab.platypus import CondPageBreak, Flowable, KeepTogether, LongTable, TableStyle
+from reportlab.platypus import Paragraph as Words
+
+from app.report.blocks import Block, Bullets, Heading, Listing, Paragraph, Picture, Section, Table
+from app.report.figures.pdf import FigureFlowable
+from app.report.lettering import printable
+from app.report.pdf_styles import GRID, HEAD, INK, SOFT, styles
+
+#: A cell with more letters is cut: a row must fit on a page.
+LONGEST_CELL = 1500
+#: Letters in a line of a listing, and lines of it that are printed.
+LISTING_WIDTH, LISTING_LINES = 128, 6000
+#: Bookmarks with more letters than this are cut.
+LONGEST_ENTRY = 90
+
+
+def markup(text: str, bold: bool = False) -> str:
+    """Plain text as the library's markup: nothing in it is taken for a tag."""
+    return escape(printable(text, bold)).replace("\n", "<br/>")
+
+
+def paragraph(text: str, style: ParagraphStyle, bold: bool = False) -> Words:
+    """A paragraph of plain text."""
+    return Words(markup(text, bold), style)
+
+
+def heading(text: str, level: int, key: str | None) -> Words:
+    """A heading; with a key it stands in the contents (levels 1 and 2)."""
+    made = paragraph(text, styles()[f"heading{level}"], bold=True)
+    if key is not None and level < 3:
+        short = text if len(text) <= LONGEST_ENTRY else text[: LONGEST_ENTRY - 1] + "…"
+        made.contents_level, made.contents_key = level - 1, key
+        made.contents_text, made.contents_markup = printable(short), markup(short, level == 1)
+    return made
+
+
+def flow_of(section: Section, number: int, width: float) -> Iterator[Flowable]:
+    """A section with its heading. Headings wait until what follows them is known to fit below."""
+    waiting: list[Flowable] = [heading(f"{number}. {section.title}", 1, section.key)]
+    for index, block in enumerate(section.blocks):
+        if isinstance(block, Heading):
+            waiting.append(heading(block.text, block.level, f"{section.key}-{index}"))
+            continue
+        made = list(_made(block, width))
+        need = sum(_height(f, width) for f in (*waiting, *made[:-1])) + _least(made[-1], width)
+        yield CondPageBreak(need)
+        yield from (*waiting, *made)
+        waiting = []
+    yield from waiting
+
+
+def _height(flowable: Flowable, width: float) -> float:
+    if isinstance(flowable, KeepTogether):
+        return sum(_height(part, width) for part in flowable._content)
+    return float(flowable.wrap(width, 1e6)[1] + flowable.getSpaceBefore() + flowable.getSpaceAfter())
+
+
+def _least(flowable: Flowable, width: float) -> float:
+    """How much of it must stand below a heading: two rows after the head of a table, a few lines of text."""
+    height = _height(flowable, width)
+    if isinstance(flowable, LongTable):
+        return min(height, float(sum(flowable._rowHeights[:3])) + 4)
+    return height if isinstance(flowable, KeepTogether) else min(height, 40.0)
+
+
+def _made(block: Block, width: float) -> Iterator[Flowable]:
+    look = styles()
+    match block:
+        case Paragraph():
+            yield paragraph(block.text, look[block.style], bold=block.style == "caution")
+        case Bullets():
+            yield from (Words(markup(item), look["bullet"], bulletText="•") for item in block.items)
+        case Table():
+            if block.caption:
+                yield paragraph(block.caption, look["caption"], bold=True)
+            yield _table(block, width)
+        case Picture():
+            yield KeepTogether([FigureFlowable(block.figure), paragraph(block.caption, look["below"])])
+        case Listing():
+            yield _listing(block.text)
+
+
+def _table(table: Table, width: float) -> LongTable:
+    look = styles()
+    cells = [[paragraph(text, look["head"], bold=True) for text in table.head]]
+    for row in table.rows:
+        cells.append([paragraph(_short(text), look["cell"]) for text in row])
+    if not table.rows:
+        cells.append([paragraph("none", look["cell"]), *([""] * (len(table.head) - 1))])
+    made = LongTable(cells, [share * width for share in table.shares], repeatRows=1, splitByRow=1)
+    made.setStyle(TableStyle([*_PLAIN, ("BACKGROUND", (0, 0), (-1, 0), HEAD)]))
+    made.spaceAfter = 8
+    return made
+
+
+_PLAIN = [
+    ("VALIGN", (0, 0), (-1, -1), "TOP"),
+    ("LINEBELOW", (0, 0), (-1, -1), 0.4, GRID),
+    ("LEFTPADDING", (0, 0), (-1, -1), 3),
+    ("RIGHTPADDING", (0, 0), (-1, -1), 5),
+    ("TOPPADDING", (0, 0), (-1, -1), 2.2),
+    ("BOTTOMPADDING", (0, 0), (-1, -1), 2.8),
+]
+
+
+def key_value_table(pairs: Sequence[tuple[str, str]], width: float) -> LongTable:
+    """Pairs of word and text without a head."""
+    look = styles()
+    pale = ParagraphStyle("pale", parent=look["cell"], textColor=SOFT)
+    dark = ParagraphStyle("dark", parent=look["cell"], textColor=INK)
+    cells = [[paragraph(word, pale), paragraph(_short(text), dark)] for word, text in pairs]
+    made = LongTable(cells, [0.22 * width, 0.78 * width])
+    made.setStyle(TableStyle(_PLAIN))
+    return made
+
+
+def _short(text: str) -> str:
+    return text if len(text) <= LONGEST_CELL else text[:LONGEST_CELL] + "…"
+
+
+def _listing(text: str) -> Words:
+    """Lines as they are, long ones broken, blanks at their beginning kept."""
+    lines: list[str] = []
+    for whole in text.rstrip("\n").split("\n"):
+        lines += [whole[i : i + LISTING_WIDTH] for i in range(0, max(len(whole), 1), LISTING_WIDTH)]
+    left_out = len(lines) - LISTING_LINES
+    if left_out > 0:
+        lines = [*lines[:LISTING_LINES], f"… {left_out} more lines stand in the project's file alone."]
+    kept = [escape(printable(line)).replace("  ", "\u00a0 ") for line in lines]
+    return Words("<br/>".join(kept), styles()["listing"])

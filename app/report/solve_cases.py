@@ -1,0 +1,42 @@
+"""All cases of a project solved for a report, and checked on a finer mesh."""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+
+from app.report.outcome import Solved, solved
+from solver import Project
+
+Tell = Callable[[str], None]
+
+
+def solve_cases(
+    project: Project,
+    mesh_check: bool,
+    tell: Tell | None = None,
+    cancel: Callable[[], bool] | None = None,
+) -> tuple[Solved, ...]:
+    """Every case in order; one that cannot be solved is kept with the sentence why. `tell` hears what is being done."""
+    from solver import SolveError, check_mesh, solve
+
+    found = []
+    for case in project.cases:
+        if cancel is not None and cancel():
+            break
+        if tell:
+            tell(f"Solving {case.name}")
+        try:
+            result = solve(case, cancel=cancel)
+        except SolveError as error:
+            found.append(Solved(case, None, str(error)))
+            continue
+        mesh = None
+        if mesh_check and result.finished:
+            if tell:
+                tell(f"Checking {case.name} on a finer mesh")
+            try:
+                mesh = check_mesh(result, cancel)
+            except SolveError:
+                mesh = None
+        found.append(solved(case, result, mesh))
+    return tuple(found)
