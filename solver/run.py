@@ -6,11 +6,12 @@ import time
 from collections.abc import Callable
 
 from solver.answer.result import Result
+from solver.errors import SolveError
 from solver.marching import March, Progress
 from solver.model.project import Case, RepeatedBlows
 from solver.numerics.assemble import bounds_of, motion_of, rod_of
 from solver.numerics.chain import Chain, build_chain
-from solver.numerics.equilibrium import State, bring_to_rest
+from solver.numerics.equilibrium import State, bring_to_rest, step_ground_back
 from solver.numerics.ground import shaft_of
 from solver.numerics.settle import settle
 from solver.watch import refuse_unsupported
@@ -50,6 +51,11 @@ def solve_chain(
         stopped = march.run(progress, cancel)
         at_end = state.motion.u.copy()
         settled = chain.case.ground is not None and not stopped and settle(chain, state)
+        if most > 1 and not stopped and not settled:
+            raise SolveError(
+                "The member finds no rest between its blows: nothing holds it, or its ground gives way. "
+                "Give it shaft resistance or turn gravity on, or set 'blows' to 1."
+            )
         if chain.case.ground is not None:
             sets.append(float(state.motion.u[-1] - march.rest[-1]))
         repeats = len(sets) > 1 and abs(sets[-1] - sets[-2]) <= tolerance
@@ -75,4 +81,5 @@ def _next_blow(chain: Chain, old: State) -> State:
     state.bounds.toe_state[:] = old.bounds.toe_state
     state.motion.u[:] = u
     state.motion.rest[:] = u
+    step_ground_back(chain, state)
     return state

@@ -101,6 +101,18 @@ def _step_back_half(chain: Chain, state: State) -> None:
     if len(state.bounds.train_links):
         a = int(state.bounds.train_links[0])
         state.bounds.train_state[0, 0] -= back[a] - back[a + 1]
+    step_ground_back(chain, state)
+
+
+def step_ground_back(chain: Chain, state: State) -> None:
+    """The ground's part of it: shaft and toe half a step before a member that moves already at time 0."""
+    back = state.motion.v * chain.dt / 2
+    par, toe = state.bounds.toe_par, state.bounds.toe_state
+    if len(par) and toe[3] > 0:
+        toe[1] = min(max(toe[1] - par[2] * float(back[-1]), 0.0), par[1])
+        toe[4] = toe[1]
+        if par[0] == RADIATION:
+            toe[2] -= float(back[-1])
     s = state.shaft
     s.r[:] = np.clip(s.r - s.par[1] * back[s.first : s.first + len(s.r)], -s.par[0], s.par[0])
     s.power[0] = np.clip(s.power[0] - s.power[2] * back[s.power_nodes], -s.power[1], s.power[1])

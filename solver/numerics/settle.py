@@ -1,97 +1,187 @@
-"""Rest after the blow: the member alone, damped until nothing moves, its ground without its dynamic part."""
+"""Rest after the blow: the member alone in static balance with its ground as the blow left it, its ram gone.
+
+Elastic springs with sliders, links and closed joints all resist the more the more they are moved, so the balance is the
+only one; Newton's method finds it, halving a step that would lead away.
+"""
 
 from __future__ import annotations
 
-from dataclasses import replace
+from dataclasses import dataclass
 
 import numpy as np
+from numpy.typing import NDArray
+from scipy.linalg import LinAlgError, solveh_banded
 
-from solver.numerics.arrays import Bounds, Motion, Shaft
-from solver.numerics.assemble import extremes_of, records_of, rod_of
 from solver.numerics.chain import Chain
 from solver.numerics.equilibrium import State
-from solver.numerics.march import march
+from solver.numerics.links import link_forces
+from solver.numerics.toe import RADIATION
 
-#: Movement (m) still to come at which the member counts as at rest.
-STILL = 1e-8
+Array = NDArray[np.float64]
+
+#: Movement (m) of a last step at which the balance counts as found.
+STILL = 1e-11
+#: Stiffness of closed faces, of the stiffest link: they overlap by a thousandth of its elongation.
+FACES = 1e3
 
 
 def settle(chain: Chain, state: State) -> bool:
-    """Let the member come to rest in place, its ram gone and its cap still on it; the rest is written into `state`.
-
-    Dynamic relaxation with the damping critical for the slowest motion, so that the ground is not loaded anew by an
-    overshoot. Returns whether rest was found.
-    """
-    s = state.shaft
-    held = s.par[0].sum() + s.power[1].sum() + s.radiation[1].sum() + chain.spring.sum() > 0
-    if chain.gravity == 0.0 and not held and not chain.fixed_end:
-        # a toe alone pushes the member off and leaves it anywhere
+    """Move the member to its rest and bring ground, joints and materials up to date. Returns whether there is one."""
+    if not _held(chain, state):
         return False
-    pace = _slowest(chain, state)
-    if pace == 0.0:
-        return False
-    drag = 2 * pace
-    # at Courant number 1 the sharpest mode of the mesh would swing for ever, whatever the damping
-    chain = replace(chain, dt=0.9 * chain.dt)
-    rod = rod_of(chain, drag)
-    rod.state[:] = state.rod.state
-    # viscous stresses have no part in a state of rest
-    rod.par[:] = state.rod.par
-    cap = chain.head - 1 if len(chain.train) == 2 else None
-    weight = rod.weight
-    if cap is not None:
-        weight[chain.head] += weight[cap]
-    weight[: chain.head] = 0.0
-    shaft, bounds = _static_ground(state, chain)
-    u = state.motion.u
-    motion = Motion(u, np.zeros_like(u), np.zeros_like(u), state.motion.force, state.motion.rest)
-    still = replace(chain, case=chain.case.model_copy(update={"gauges": ()}), train=())
-    steps = max(64, int(np.ceil(4 / (drag * chain.dt))))
-    flags = np.ones(len(rod.blocks), dtype=np.int64)
-    records = records_of(still, steps, steps, np.zeros(0, dtype=np.int64), flags)
-    extremes, sums, load = extremes_of(chain), np.zeros(8), np.zeros(steps)
-    for _ in range(60):
-        march(rod, shaft, bounds, motion, extremes, records, sums, load, 0, steps, steps, chain.dt, drag)
-        if np.max(np.abs(motion.v[chain.head :])) < STILL * pace:
-            state.rod.state[:] = rod.state
+    rest = _Rest(chain, state)
+    u = state.motion.u.copy()
+    for _ in range(200):
+        out, slopes = rest.unbalanced(u)
+        try:
+            change = solveh_banded(rest.band(slopes), out[chain.head :])
+        except LinAlgError:
+            return False
+        if not np.isfinite(change).all() or np.max(np.abs(change)) > float(chain.position[-1]):
+            return False
+        if np.max(np.abs(change)) < STILL:
+            rest.take(u)
             return True
+        u = rest.nearer(u, change, float(np.linalg.norm(out)))
     return False
 
 
-def _slowest(chain: Chain, state: State) -> float:
-    """Lowest angular frequency (1/s): of the member on its ground as a rigid body, or of its own stretching."""
+def _held(chain: Chain, state: State) -> bool:
+    """Whether anything holds the member: a toe alone, without gravity, pushes it off and leaves it anywhere."""
     s = state.shaft
-    stiff = s.par[1].sum() + s.power[2].sum() + s.radiation[2].sum() + chain.spring.sum()
-    if len(state.bounds.toe_par):
-        stiff += state.bounds.toe_par[2]
-    member = chain.axial[chain.head :] > 0
-    c = np.sqrt(chain.axial[chain.head :][member] / chain.line_mass[chain.head :][member])
-    stretching = np.pi / (2 * np.sum(chain.length[chain.head :][member] / c))
-    if chain.fixed_end or chain.wall_gap < np.inf:
-        return float(stretching)
-    return float(min(np.sqrt(stiff / chain.mass[chain.head - 1 if chain.train else 0 :].sum()), stretching))
+    sides = s.par[0].sum() + s.power[1].sum() + s.radiation[1].sum() + chain.spring.sum()
+    return bool(sides > 0 or chain.gravity > 0 or chain.fixed_end)
 
 
-def _static_ground(state: State, chain: Chain) -> tuple[Shaft, Bounds]:
-    """The same ground and bounds without damping, joints to the ram and the ram itself; states are shared."""
-    s = state.shaft
-    power, radiation = s.power.copy(), s.radiation.copy()
-    power[4] = 0.0
-    radiation[3] = 0.0
-    plain = s.par.copy()
-    plain[3:] = 0.0
-    shaft = s._replace(par=plain, power=power, radiation=radiation)
-    b = state.bounds
-    toe = b.toe_par.copy()
-    if len(toe):
-        toe[3] = 0.0
-    kept = b.joints >= chain.head
-    bounds = b._replace(
-        toe_par=toe,
-        joints=b.joints[kept],
-        joint_par=b.joint_par[kept],
-        joint_force=b.joint_force[kept].copy(),
-        train_links=np.zeros(0, dtype=np.int64),
-        train_kinds=np.zeros(0, dtype=np.int64),
-    )
-    return shaft, bounds
+@dataclass
+class _Springs:
+    """Springs with sliders on nodes: resistance `at` displacements `origin` (N), stiffness, and bounds either side."""
+
+    node: NDArray[np.int64]
+    origin: Array
+    at: Array
+    stiff: Array
+    low: Array
+    high: Array
+
+    def resist(self, u: Array) -> tuple[Array, Array]:
+        """Resistance (N) and slope (N/m) at displacements of all nodes."""
+        trial = self.at + self.stiff * (u[self.node] - self.origin)
+        inside = (trial >= self.low) & (trial <= self.high)
+        return np.clip(trial, self.low, self.high), np.where(inside, self.stiff, 0.0)
+
+
+class _Rest:
+    """The balance of one state: forces on nodes at given displacements."""
+
+    def __init__(self, chain: Chain, state: State) -> None:
+        self.chain, self.state = chain, state
+        self.weight = state.rod.weight.copy()
+        if len(chain.train) == 2:
+            self.weight[chain.head] += self.weight[chain.head - 1]
+        self.weight[: chain.head] = 0.0
+        self.springs = _springs_of(chain, state)
+        self.faces = FACES * float(state.rod.stiff.max())
+        self.joints = [(j, link) for j, link in enumerate(chain.joints) if link.link >= chain.head]
+
+    def unbalanced(self, u: Array) -> tuple[Array, tuple[Array, Array]]:
+        """Force left over on every node (N), and slopes (N/m) of nodes to ground and of links."""
+        chain, rod = self.chain, self.state.rod._replace(state=self.state.rod.state.copy())
+        force = np.zeros_like(self.state.motion.force)
+        note = (np.zeros((1, 3), dtype=np.int64), np.zeros(1, dtype=np.int64))
+        flags = np.ones(len(rod.blocks), dtype=np.int64)
+        link_forces(rod, u, np.zeros_like(u), force, chain.dt, flags, note, 0)
+        grounded, links = chain.spring.copy(), rod.stiff.copy()
+        for _, joint in self.joints:
+            gap = u[joint.link + 1] - u[joint.link] + joint.gap
+            over = min(gap, 0.0) + max(gap - joint.slack, 0.0)
+            force[joint.link] = self.faces * over
+            links[joint.link] = self.faces if over != 0.0 else 0.0
+        out = self.weight - chain.spring * u
+        out[:-1] += force
+        out[1:] -= force
+        for spring in self.springs:
+            resist, slope = spring.resist(u)
+            np.subtract.at(out, spring.node, resist)
+            np.add.at(grounded, spring.node, slope)
+        if chain.wall_gap < np.inf:
+            over = max(u[-1] - chain.wall_gap, 0.0)
+            out[-1] -= self.faces * over
+            grounded[-1] += self.faces if over > 0 else 0.0
+        if chain.fixed_end:
+            out[-1] = 0.0
+            grounded[-1] += self.faces
+        return out, (grounded, links)
+
+    def band(self, slopes: tuple[Array, Array]) -> Array:
+        """The tangent as a symmetric band, with next to nothing added so that a wholly slipping trial can be solved."""
+        head = self.chain.head
+        grounded, links = slopes[0][head:], slopes[1][head:]
+        band = np.zeros((2, len(grounded)))
+        band[1] = grounded + 1e-9 * float(self.state.rod.stiff.max()) / len(grounded)
+        band[1, :-1] += links
+        band[1, 1:] += links
+        band[0, 1:] = -links
+        return band
+
+    def nearer(self, u: Array, change: Array, before: float) -> Array:
+        """The whole step, or a part of it that leaves less out of balance."""
+        trial = u
+        for share in (1.0, 0.5, 0.25, 0.125):
+            trial = u.copy()
+            trial[self.chain.head :] += share * change
+            if float(np.linalg.norm(self.unbalanced(trial)[0])) < before:
+                return trial
+        return trial
+
+    def take(self, u: Array) -> None:
+        """Write the rest into the state: displacements, materials, ground, joints."""
+        chain, state = self.chain, self.state
+        note = (np.zeros((1, 3), dtype=np.int64), np.zeros(1, dtype=np.int64))
+        flags = np.ones(len(state.rod.blocks), dtype=np.int64)
+        still = np.zeros_like(u)
+        link_forces(state.rod, u, still, state.motion.force, chain.dt, flags, note, 0)
+        state.motion.u[:] = u
+        s, bounds = state.shaft, state.bounds
+        plain, power, radiation = (spring.resist(u)[0] for spring in self.springs[:3])
+        s.r[:] = plain
+        s.power[0] = power
+        s.radiation[0] = np.divide(
+            radiation, s.radiation[2], out=np.zeros_like(radiation), where=s.radiation[2] > 0
+        )
+        if len(bounds.toe_par):
+            _take_toe(bounds.toe_par, bounds.toe_state, float(u[-1]), float(self.springs[3].resist(u)[0][0]))
+        for j, joint in self.joints:
+            gap = u[joint.link + 1] - u[joint.link] + joint.gap
+            over = min(gap, 0.0) + max(gap - joint.slack, 0.0)
+            bounds.joint_force[j] = -self.faces * over
+
+
+def _springs_of(chain: Chain, state: State) -> list[_Springs]:
+    """Shaft by its three kinds of law, then the toe; resistance lives half a step back, so it is carried on."""
+    s, u, ahead = state.shaft, state.motion.u, state.motion.v * chain.dt / 2
+    plain = np.arange(s.first, s.first + len(s.r))
+    found = []
+    for node, r, stiff, strength in (
+        (plain, s.r, s.par[1], s.par[0]),
+        (s.power_nodes, s.power[0], s.power[2], s.power[1]),
+        (s.radiation_nodes, s.radiation[0] * s.radiation[2], s.radiation[2], s.radiation[1]),
+    ):
+        now = np.clip(r + stiff * ahead[node], -strength, strength)
+        found.append(_Springs(node, u[node], now, stiff, -strength, strength))
+    par, toe = state.bounds.toe_par, state.bounds.toe_state
+    if len(par):
+        last = np.array([chain.nodes - 1])
+        found.append(_Springs(last, np.array([toe[0]]), np.zeros(1), par[2:3], np.zeros(1), par[1:2]))
+    return found
+
+
+def _take_toe(par: Array, toe: Array, u: float, resistance: float) -> None:
+    """The toe at rest: what it slipped, and what presses it."""
+    spring = resistance / par[2] if par[2] > 0 else 0.0
+    if resistance >= par[1] > 0:
+        toe[0] = u - spring
+    toe[1] = toe[4] = resistance
+    toe[3] = 1.0 if resistance > 0 else 0.0
+    if par[0] == RADIATION:
+        toe[2] = spring

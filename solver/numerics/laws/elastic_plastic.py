@@ -45,7 +45,8 @@ def stored_and_lost(u, v, stiff, par, state, force, start, stop, dt):
     stored = 0.0
     lost = 0.0
     for i in range(start, stop):
-        stored += 0.5 * force[i] * force[i] / stiff[i]
-        path = par[2, i] * state[2, i] ** 2 + (1.0 - par[2, i]) * state[3, i] ** 2
-        lost += par[0, i] * state[3, i] + 0.5 * par[1, i] * path
+        # what kinematic hardening holds comes back on the way back, what isotropic hardening took does not
+        held = 0.5 * par[1, i] * par[2, i] * state[2, i] ** 2
+        stored += 0.5 * force[i] * force[i] / stiff[i] + held
+        lost += par[0, i] * state[3, i] + 0.5 * par[1, i] * (1.0 - par[2, i]) * state[3, i] ** 2
     return stored, lost
