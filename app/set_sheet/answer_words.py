@@ -1,0 +1,72 @@
+"""Answers to the questions of a set sheet, as sentences."""
+
+from __future__ import annotations
+
+from app.set_sheet.words import criterion, force_text, level_text, varied_text
+from app.units import Units, rounded
+from app.words import percent
+from solver.studies import Cell
+from solver.studies.questions import SafeBlow, ShownResistance
+from solver.studies.uncertainty import Bands
+
+
+def safe_words(answer: SafeBlow, cell: Cell, units: Units) -> str:
+    """Which blow keeps every stress inside its limit?"""
+    what, at = varied_text(cell.level), force_text(answer.resistance, units)
+    if answer.why == "no limit":
+        return "No material of the member has a limit: give one to be told the largest blow."
+    low, high = (
+        level_text(type(cell.level)(cell.level.pointer, value, cell.level.label, cell.level.dimension), units)
+        for value in (answer.low, answer.high)
+    )
+    if answer.why == "none within":
+        return f"None in the range: even a {what} of {low} passes a limit at {at}."
+    if answer.why == "all within":
+        return f"Every {what} up to {high} keeps all stresses within their limits at {at}."
+    assert answer.level is not None
+    return (
+        f"Up to a {what} of {level_text(answer.level, units)} every stress stays within its limit at {at} "
+        f"(to {percent(answer.tolerance)})."
+    )
+
+
+def shown_words(answer: ShownResistance, units: Units) -> str:
+    """What does a measured set show? A band, and what lies outside of the range."""
+    measured = f"{units.show(answer.measured, 'small_length')} ± {units.show(answer.error, 'small_length')}"
+    lead = f"A mean set of {measured} shows"
+    low, high = answer.at_least, answer.at_most
+    if low is None and high is None:
+        return (
+            f"{lead} no resistance in the range from {force_text(answer.lowest, units)} "
+            f"to {force_text(answer.highest, units)}."
+        )
+    below = force_text(low, units) if low is not None else f"less than {force_text(answer.lowest, units)}"
+    above = force_text(high, units) if high is not None else f"more than {force_text(answer.highest, units)}"
+    middle = f", {force_text(answer.middle, units)} in the middle" if answer.middle is not None else ""
+    return f"{lead} {below} to {above}{middle} (each to {percent(answer.tolerance)})."
+
+
+def stop_words(cell: Cell, units: Units) -> str:
+    return criterion(cell, units)
+
+
+def bands_words(bands: Bands, resistance: float, units: Units) -> str:
+    """What the samples say at the resistance nearest to the one asked for, and what matters most."""
+    row = int(abs(bands.resistances - resistance).argmin())
+    low, middle, high = (units.show(max(float(v), 0.0), "small_length") for v in bands.set[row])
+    parts = [
+        f"At {force_text(float(bands.resistances[row]), units)} the set lies between {low} and {high} "
+        f"in eight of ten samples, {middle} in the middle ({bands.samples} samples)."
+    ]
+    if bands.over is None:
+        parts.append("No limit is given, so no probability can be told.")
+    else:
+        parts.append(f"A limit is passed in {percent(float(bands.over[row]))} of the samples.")
+    ranked = [f"{one.label} ({rounded(one.on_set, 2)})" for one in bands.influences[:3]]
+    parts.append(f"What matters most for the set (rank correlation): {', '.join(ranked)}.")
+    if bands.influences:
+        most = max(bands.influences, key=lambda one: abs(one.on_stress))
+        parts.append(f"For the stresses: {most.label} ({rounded(most.on_stress, 2)}).")
+    if bands.failed:
+        parts.append(f"{bands.failed} samples could not be solved.")
+    return " ".join(parts)

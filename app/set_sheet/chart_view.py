@@ -1,0 +1,146 @@
+"""The chart on the screen: paints the scene, and reads out the point nearest to the pointer."""
+
+from __future__ import annotations
+
+from PySide6.QtCore import QPointF, QRectF, QSize, Qt, Signal
+from PySide6.QtGui import QColor, QFontMetricsF, QMouseEvent, QPainter, QPaintEvent, QPen, QPolygonF
+from PySide6.QtWidgets import QSizePolicy, QWidget
+
+from app.look.fonts import font
+from app.look.palette import Palette, palette
+from app.set_sheet.chart import chart, frame_of
+from app.set_sheet.scene import Area, Level, Line, Mark, Scene, Words, outline_of
+from app.units import Units
+from solver.studies import Cell, Sheet
+from solver.studies.uncertainty import Bands
+
+
+class ChartView(QWidget):
+    """Shows a sheet; `pointed` tells the cell that is pointed at, or `None`."""
+
+    pointed = Signal(object)
+
+    def __init__(self, parent: QWidget | None = None) -> None:
+        super().__init__(parent)
+        self.setMouseTracking(True)
+        self.setMinimumSize(QSize(560, 320))
+        self.setSizePolicy(QSizePolicy.Policy.Expanding, QSizePolicy.Policy.Expanding)
+        self.setAccessibleName("Set, stresses and energy over the total resistance")
+        self._shown: tuple[Sheet, Units, str, Bands | None] | None = None
+        self._pale = False
+        self._cell: Cell | None = None
+
+    def show_sheet(
+        self, sheet: Sheet | None, units: Units, per: str, bands: Bands | None, pale: bool
+    ) -> None:
+        """What to show; `pale` while it belongs to an older input."""
+        shown = None if sheet is None else (sheet, units, per, bands)
+        if shown != self._shown or pale != self._pale:
+            self._shown, self._pale = shown, pale
+            self.update()
+
+    def scene(self) -> Scene:
+        """What is painted at the present size."""
+        if self._shown is None:
+            return []
+        sheet, units, per, bands = self._shown
+        return chart(sheet, units, per, float(self.width()), float(self.height()), measure, bands)
+
+    def paintEvent(self, event: QPaintEvent) -> None:
+        colours = palette()
+        painter = QPainter(self)
+        painter.fillRect(event.rect(), QColor(colours.paper))
+        painter.setRenderHint(QPainter.RenderHint.Antialiasing)
+        if self._pale:
+            painter.setOpacity(0.35)
+        paint(painter, self.scene(), colours)
+        self._paint_pointed(painter, colours)
+
+    def _paint_pointed(self, painter: QPainter, colours: Palette) -> None:
+        if self._cell is None or self._shown is None:
+            return
+        sheet, units, _per, bands = self._shown
+        frame = frame_of(sheet, units, float(self.width()), float(self.height()), bands)
+        y = frame.resistance.at(self._cell.resistance)
+        painter.setPen(QPen(QColor(colours.accent), 1.0))
+        painter.drawLine(QPointF(frame.set.start, y), QPointF(frame.energy.stop, y))
+        x = frame.set.at(max(self._cell.set or 0.0, 0.0) if self._cell.moves else 0.0)
+        painter.setPen(QPen(QColor(colours.accent), 2.0))
+        painter.drawEllipse(QPointF(x, y), 7, 7)
+
+    def mouseMoveEvent(self, event: QMouseEvent) -> None:
+        self._point(self._nearest(event.position()))
+
+    def leaveEvent(self, event: object) -> None:
+        self._point(None)
+
+    def _nearest(self, at: QPointF) -> Cell | None:
+        if self._shown is None:
+            return None
+        sheet, units, _per, bands = self._shown
+        frame = frame_of(sheet, units, float(self.width()), float(self.height()), bands)
+        cells = [c for c in sheet.cells if c.set is not None]
+        if not cells:
+            return None
+        row = min({c.resistance for c in cells}, key=lambda r: abs(frame.resistance.at(r) - at.y()))
+        same = [c for c in cells if c.resistance == row]
+        return min(same, key=lambda c: abs(frame.set.at(max(c.set or 0.0, 0.0)) - at.x()))
+
+    def _point(self, cell: Cell | None) -> None:
+        if cell != self._cell:
+            self._cell = cell
+            self.pointed.emit(cell)
+            self.update()
+
+
+def measure(text: str, level: Level) -> float:
+    """Width of a text, in pixels."""
+    return QFontMetricsF(font(level)).horizontalAdvance(text)
+
+
+def paint(painter: QPainter, scene: Scene, colours: Palette) -> None:
+    """Paint a scene in the colours of a palette."""
+    for item in scene:
+        colour = QColor(getattr(colours, item.ink))
+        if isinstance(item, Area):
+            colour.setAlphaF(item.strength)
+            painter.setPen(Qt.PenStyle.NoPen)
+            painter.setBrush(colour)
+            painter.drawPolygon(QPolygonF([QPointF(x, y) for x, y in item.points]))
+        elif isinstance(item, Line):
+            pen = QPen(colour, item.width)
+            if item.dash:
+                pen.setDashPattern([d / item.width for d in item.dash])
+                pen.setCapStyle(Qt.PenCapStyle.FlatCap)
+            painter.setPen(pen)
+            painter.drawPolyline(QPolygonF([QPointF(x, y) for x, y in item.points]))
+        elif isinstance(item, Mark):
+            _mark(painter, item, colour, QColor(colours.paper))
+        else:
+            _words(painter, item, colour)
+
+
+def _mark(painter: QPainter, mark: Mark, colour: QColor, paper: QColor) -> None:
+    painter.setPen(QPen(colour, 1.4))
+    painter.setBrush(colour if mark.filled else paper)
+    corners = outline_of(mark)
+    if corners is None:
+        painter.drawEllipse(QPointF(*mark.at), mark.size, mark.size)
+    else:
+        painter.drawPolygon(QPolygonF([QPointF(x, y) for x, y in corners]))
+
+
+def _words(painter: QPainter, words: Words, colour: QColor) -> None:
+    painter.setFont(font(words.level))
+    painter.setPen(colour)
+    width = painter.fontMetrics().horizontalAdvance(words.text)
+    shift = {"left": 0.0, "middle": -width / 2, "right": -float(width)}[words.anchor]
+    x, y = words.at
+    if words.turned:
+        painter.save()
+        painter.translate(x, y)
+        painter.rotate(-90)
+        painter.drawText(QRectF(shift, -12, width + 2, 18), Qt.AlignmentFlag.AlignVCenter, words.text)
+        painter.restore()
+    else:
+        painter.drawText(QPointF(x + shift, y), words.text)

@@ -1,0 +1,75 @@
+"""Asks where to save the page and the table, and says where they are."""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+from pathlib import Path
+
+from PySide6.QtCore import QObject, Signal
+from PySide6.QtWidgets import QFileDialog, QWidget
+
+from app.document import Document
+from app.export import folder_names
+from app.set_sheet.answer_words import safe_words
+from app.set_sheet.files import sheet_csv
+from app.set_sheet.sheet_solution import SheetSolution
+from app.set_sheet.words import criterion
+from app.units import units_of
+
+
+class Saving(QObject):
+    """`told` carries a sentence and its state, "over" where something failed."""
+
+    told = Signal(str, str)
+
+    def __init__(self, document: Document, solution: SheetSolution, parent: QWidget) -> None:
+        super().__init__(parent)
+        self._document, self._solution, self._window = document, solution, parent
+
+    def ask_page(self) -> bool:
+        return self._ask("Save the page for the rig", "sheet.pdf", "PDF (*.pdf)", self.page)
+
+    def ask_table(self) -> bool:
+        return self._ask("Save the table", "sheet.csv", "CSV (*.csv)", self.table)
+
+    def page(self) -> bytes:
+        """The page of what is on the screen."""
+        from app.set_sheet.printed import Page, page_pdf
+
+        sheet, units = self._solution.sheet, units_of(self._document.project)
+        assert sheet is not None
+        stop_at, safe = self._solution.answers.stop_at, self._solution.answers.safe
+        words = criterion(stop_at, units) if stop_at else ""
+        answer = safe_words(safe, stop_at, units) if safe and stop_at else ""
+        return page_pdf(
+            Page(
+                sheet,
+                self._document.project.title,
+                units,
+                words,
+                answer,
+                self._solution.settings.per,
+                self._solution.bands,
+            )
+        )
+
+    def table(self) -> bytes:
+        """The table of what is on the screen, in SI units."""
+        sheet = self._solution.sheet
+        assert sheet is not None
+        return sheet_csv(sheet, self._document.project.title).encode("utf-8")
+
+    def _ask(self, title: str, name: str, kinds: str, made: Callable[[], bytes]) -> bool:
+        folder = self._document.folder or Path.home()
+        proposed = folder / f"{folder_names([self._document.case.name])[0]}-{name}"
+        asked, _ = QFileDialog.getSaveFileName(self._window, title, str(proposed), kinds)
+        return bool(asked) and self.save(Path(asked), made())
+
+    def save(self, path: Path, content: bytes) -> bool:
+        try:
+            path.write_bytes(content)
+        except OSError as error:
+            self.told.emit(f"{path} cannot be written: {error.strerror or error}.", "over")
+            return False
+        self.told.emit(f"Saved in {path}.", "within")
+        return True

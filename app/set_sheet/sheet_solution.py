@@ -1,0 +1,225 @@
+"""The sheet that belongs to the case and the choices at hand: solved again at every change, while it is looked at."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+from dataclasses import dataclass
+from typing import Any, Literal
+
+from PySide6.QtCore import QObject, QTimer, Signal
+
+from app.document import Document
+from app.set_sheet.stream import Cancel, Stream
+from solver import Case
+from solver.studies import Cell, Plan, Sheet, StudyError, cells_of
+from solver.studies.questions import Cancelled, SafeBlow, ShownResistance, point, safe_blow, shown_by
+from solver.studies.settings import SheetSettings, settings_of
+from solver.studies.uncertainty import Bands, sampled
+from solver.studies.unknowns import usual_unknowns
+
+State = Literal["waiting", "solving", "answering", "fresh", "stopped", "refused"]
+#: Changes that follow each other faster than this are solved once, ms.
+SETTLE = 120
+
+
+@dataclass(frozen=True)
+class Answers:
+    """To the questions of the settings: the safe blow, the point that shows the resistance, what a set shows."""
+
+    safe: SafeBlow | None = None
+    stop_at: Cell | None = None
+    shown: ShownResistance | None = None
+
+
+class SheetSolution(QObject):
+    """`sheet` (partial while it fills), `answers` and `bands` belong to `plan`; `state` and `message` say how they
+    stand to the document. Works only between `look(True)` and `look(False)`."""
+
+    changed = Signal()
+
+    def __init__(self, document: Document, parent: QObject | None = None) -> None:
+        super().__init__(parent)
+        self._document = document
+        self._looked = False
+        self._key: tuple[Case, SheetSettings] | None = None
+        self.plan: Plan | None = None
+        self.cells: dict[tuple[int, int], Cell] = {}
+        self.answers = Answers()
+        self.bands: Bands | None = None
+        self.samples_done: int | None = None
+        self.state: State = "waiting"
+        self.message = ""
+        self._stream = Stream(self)
+        self._stream.arrived.connect(self._take)
+        self._stream.ended.connect(self._end)
+        self._samples = Stream(self)
+        self._samples.arrived.connect(self._take_samples)
+        self._samples.ended.connect(self._end_samples)
+        self._timer = QTimer(self)
+        self._timer.setSingleShot(True)
+        self._timer.setInterval(SETTLE)
+        self._timer.timeout.connect(self._begin)
+        document.changed.connect(self._follow)
+
+    @property
+    def sheet(self) -> Sheet | None:
+        if self.plan is None:
+            return None
+        ordered = sorted(self.cells.items(), key=lambda item: item[0])
+        return Sheet(self.plan, tuple(cell for _place, cell in ordered))
+
+    @property
+    def fraction(self) -> float:
+        if self.plan is None:
+            return 0.0
+        return len(self.cells) / (len(self.plan.resistances) * len(self.plan.levels))
+
+    @property
+    def settings(self) -> SheetSettings:
+        """The choices in the project; those of the program where they are not valid."""
+        try:
+            return settings_of(self._document.project)
+        except StudyError:
+            return SheetSettings()
+
+    def look(self, on: bool) -> None:
+        """Whether the sheet is on the screen; it is solved only then."""
+        self._looked = on
+        if on:
+            self._follow()
+
+    def stop(self) -> None:
+        """Break off; what is solved stays."""
+        if self.state in ("solving", "answering"):
+            self._stream.stop()
+            self.state, self.message = "stopped", "Stopped: the picture shows what was solved until then."
+        self.stop_samples()
+        self.changed.emit()
+
+    def solve_again(self) -> None:
+        self._key = None
+        self._follow()
+
+    def close(self) -> bool:
+        """End all work within a second."""
+        self._timer.stop()
+        first, second = self._stream.close(0.5), self._samples.close(0.3)
+        return first and second
+
+    def sample(self, samples: int, seed: int = 1) -> None:
+        """Work out the bands for what is not known, beside the sheet."""
+        plan = self.plan
+        if plan is None:
+            return
+        self.samples_done = 0
+
+        def work(cancel: Cancel) -> Iterator[Any]:
+            told = 0
+
+            def progress(done: int) -> None:
+                nonlocal told
+                if done - told >= samples // 50 and not cancel():
+                    told = done
+                    self._samples.tell(done)
+
+            bands = sampled(
+                plan, usual_unknowns(plan.case), samples=samples, seed=seed, progress=progress, cancel=cancel
+            )
+            if bands is not None:
+                yield bands
+
+        self._samples.start(work)
+        self.changed.emit()
+
+    def stop_samples(self) -> None:
+        """Break off the samples under way."""
+        if self.samples_done is not None:
+            self._samples.stop()
+            self.samples_done = None
+
+    def _follow(self) -> None:
+        if self._looked:
+            try:
+                key = (self._document.case, settings_of(self._document.project))
+            except StudyError as error:
+                self._refuse(str(error))
+                return
+            if self._key is None or key != self._key:
+                self._key = key
+                self._timer.start()
+        self.changed.emit()
+
+    def _refuse(self, sentence: str) -> None:
+        self._stream.stop()
+        self._key = None
+        self.state, self.message = "refused", sentence
+        self.changed.emit()
+
+    def _begin(self) -> None:
+        if self._key is None:
+            return
+        case, settings = self._key
+        self.stop_samples()
+        self.state, self.message = "solving", ""
+
+        def work(cancel: Cancel) -> Iterator[Any]:
+            plan = settings.plan(case)
+            yield plan
+            yield from cells_of(plan, cancel=cancel)
+            if not cancel():
+                yield "cells"
+                yield from _answers(plan, settings, cancel)
+
+        self._stream.start(work)
+        self.changed.emit()
+
+    def _take(self, found: object) -> None:
+        if isinstance(found, Plan):
+            same = self.plan is not None and self.plan.case == found.case
+            self.plan, self.cells = found, {}
+            self.answers = Answers()
+            if not same or (self.bands is not None and self.bands.level != found.levels[0]):
+                self.bands = None
+        elif isinstance(found, Cell):
+            self.cells[found.line, found.row] = found
+        elif isinstance(found, Answers):
+            self.answers = found
+        elif found == "cells":
+            self.state = "answering"
+        self.changed.emit()
+
+    def _end(self, sentence: str) -> None:
+        self.state, self.message = ("refused", sentence) if sentence else ("fresh", "")
+        if sentence and self.cells:
+            self.plan, self.cells = None, {}
+        self.changed.emit()
+
+    def _take_samples(self, found: object) -> None:
+        if isinstance(found, Bands):
+            self.bands = found
+        elif isinstance(found, int):
+            self.samples_done = found
+        self.changed.emit()
+
+    def _end_samples(self, sentence: str) -> None:
+        self.samples_done = None
+        self.message = sentence
+        self.changed.emit()
+
+
+def _answers(plan: Plan, settings: SheetSettings, cancel: Cancel) -> Iterator[Answers]:
+    """The questions one after the other, each answer as soon as it is found."""
+    level = plan.levels[0]
+    if settings.asked_value is not None:
+        level = type(level)(level.pointer, settings.asked_value, level.label, level.dimension)
+    resistance = settings.asked_resistance or plan.own_total
+    try:
+        stop_at = point(plan, resistance, level, cancel)
+        yield Answers(None, stop_at)
+        safe = safe_blow(plan, resistance, cancel=cancel)
+        yield Answers(safe, stop_at)
+        if settings.measured_set is not None:
+            shown = shown_by(plan, level, settings.measured_set, settings.reading_error, cancel=cancel)
+            yield Answers(safe, stop_at, shown)
+    except Cancelled:
+        return

@@ -1,0 +1,103 @@
+"""What a set sheet says, in sentences and units of the reader. No Qt."""
+
+from __future__ import annotations
+
+from app.units import NO_BREAK, Units, rounded
+from app.words import percent
+from solver.studies import Cell, Level, Sheet
+
+#: What blows are counted for, m.
+PER = {"0.25 m": 0.25, "m": 1.0, "ft": 0.3048}
+
+
+def per_of(units: Units, chosen: str | None) -> str:
+    """For how much penetration blows are counted: as chosen, or as is usual in the units of the screen."""
+    return chosen or ("ft" if units.system == "us" else "0.25 m")
+
+
+def level_text(level: Level, units: Units) -> str:
+    """The value that a line stands for, with four digits at most: "1.25 m"."""
+    number = float(units.number(level.value, level.dimension, level.value))
+    unit = units.unit(level.dimension, level.value)
+    return f"{number:.4g}{NO_BREAK}{unit}".strip()
+
+
+def force_text(value: float, units: Units) -> str:
+    """A resistance with three digits that count: more would claim what no study knows."""
+    return units.show(float(f"{value:.3g}"), "force")
+
+
+def varied_text(level: Level) -> str:
+    """What the lines differ in, in small letters: "drop height"."""
+    return level.label[:1].lower() + level.label[1:]
+
+
+def set_text(cell: Cell, units: Units) -> str:
+    if cell.set is None:
+        return "not solved"
+    return units.show(cell.set, "small_length") if cell.moves else "practically no set"
+
+
+def blows_text(cell: Cell, per: str) -> str:
+    blows = cell.blows_per_metre
+    return "–" if blows is None else rounded(blows * PER[per], 2 if blows * PER[per] < 10 else 3)
+
+
+def over_text(cell: Cell, units: Units) -> str:
+    """Which limit is passed where: "tension limit passed in Lower at 12.3 m"."""
+    assert cell.worst is not None
+    sign, stress = cell.worst
+    return (
+        f"{sign} limit passed in {stress.segment} at {units.show(stress.position, 'length')}, "
+        f"from {units.show(cell.resistance, 'force')}"
+    )
+
+
+def reading(cell: Cell, per: str, units: Units) -> str:
+    """One point of the sheet in one line."""
+    lead = f"{level_text(cell.level, units)}, {units.show(cell.resistance, 'force')}"
+    if cell.set is None:
+        return f"{lead}: {cell.problem}"
+    parts = [f"{lead}: {'set ' if cell.moves else ''}{set_text(cell, units)}"]
+    if cell.blows_per_metre is not None:
+        parts.append(f"{blows_text(cell, per)} blows per {per}")
+    for finding in (cell.compression, cell.tension):
+        if finding is None:
+            continue
+        share = (
+            f" ({percent(finding.worst.share)} of the limit)" if finding.worst and finding.worst.share else ""
+        )
+        place = units.show(finding.peak.position, "length")
+        parts.append(f"{finding.sign} {units.show(finding.peak.value, 'stress')} at {place}{share}")
+    if cell.energy is not None:
+        parts.append(f"energy {units.show(cell.energy.value, 'energy')}")
+    if not cell.at_rest:
+        parts.append("not at rest by itself: the set was settled statically")
+    return " · ".join(parts)
+
+
+def criterion(cell: Cell, units: Units) -> str:
+    """When to stop, for the person at the rig."""
+    blow = f"{varied_text(cell.level)} of {level_text(cell.level, units)}"
+    resistance = force_text(cell.resistance, units)
+    if not cell.moves:
+        return f"With a {blow} the member practically does not move at {resistance}: no set shows it."
+    mean = f"the mean set of the last 10 blows is {units.show(cell.set or 0.0, 'small_length', 2)} or less"
+    over = " A limit is passed at this blow: do not drive so." if cell.over else ""
+    return f"Stop when {mean} with a {blow}: that shows {resistance}.{over}"
+
+
+def summary(sheet: Sheet, units: Units) -> str:
+    """One line on the lines of the sheet: which keep within the limits."""
+    parts = []
+    for index, level in enumerate(sheet.plan.levels):
+        cells = sheet.line(index)
+        over = next((c for c in cells if c.over), None)
+        known = any(c.share is not None for c in cells)
+        state = (
+            "no limit given"
+            if not known
+            else ("✓ within limits" if over is None else f"✕ {over_text(over, units)}")
+        )
+        parts.append(f"{level_text(level, units)}: {state}")
+    return " · ".join(parts)

@@ -1,0 +1,132 @@
+"""The workspace: choices and answers on the left, the picture, and what is read at the pointer."""
+
+from __future__ import annotations
+
+from PySide6.QtCore import Qt
+from PySide6.QtGui import QHideEvent, QShowEvent
+from PySide6.QtWidgets import QFrame, QHBoxLayout, QLabel, QProgressBar, QPushButton, QVBoxLayout, QWidget
+
+from app.document import Document
+from app.look.spacing import GAP, SPACE
+from app.set_sheet.chart_view import ChartView
+from app.set_sheet.choices import Choices
+from app.set_sheet.saving import Saving
+from app.set_sheet.sheet_solution import SheetSolution
+from app.set_sheet.words import per_of, reading, summary
+from app.units import units_of
+from solver.studies import Cell
+
+NAME = "Set sheet"
+
+
+class SetSheet(QWidget):
+    """Solves only while it is shown; `close_down` ends its threads."""
+
+    def __init__(self, document: Document, parent: QWidget | None = None) -> None:
+        super().__init__(parent)
+        self._document = document
+        self.solution = SheetSolution(document, self)
+        self._cell: Cell | None = None
+        self.choices = Choices(document, self.solution, self)
+        self.chart = ChartView(self)
+        self.told = QLabel()
+        self.told.setProperty("role", "soft")
+        self.told.setWordWrap(True)
+        self.told.setAlignment(Qt.AlignmentFlag.AlignTop)
+        self.told.setMinimumHeight(2 * self.told.fontMetrics().lineSpacing() + GAP)
+        self.state = QLabel()
+        self.progress = QProgressBar()
+        self.progress.setTextVisible(False)
+        self.progress.setRange(0, 1000)
+        self.progress.setFixedWidth(160)
+        self.stop = QPushButton("Stop")
+        self.print_page = QPushButton("Page for the rig …")
+        self.export = QPushButton("Table as CSV …")
+        self.saving = Saving(document, self.solution, self)
+        self._compose()
+        self.chart.pointed.connect(self._point)
+        self.stop.clicked.connect(self._stop_or_go_on)
+        self.print_page.clicked.connect(self.saving.ask_page)
+        self.export.clicked.connect(self.saving.ask_table)
+        document.changed.connect(self.follow)
+        self.solution.changed.connect(self.follow)
+        self.follow()
+
+    def _compose(self) -> None:
+        top = QHBoxLayout()
+        top.setSpacing(SPACE)
+        top.addWidget(self.state, 1)
+        for widget in (self.progress, self.stop, self.export, self.print_page):
+            top.addWidget(widget)
+        paper = QFrame()
+        paper.setProperty("role", "paper")
+        column = QVBoxLayout(paper)
+        column.setContentsMargins(SPACE, SPACE, SPACE, SPACE)
+        column.setSpacing(GAP)
+        column.addLayout(top)
+        column.addWidget(self.chart, 1)
+        column.addWidget(self.told)
+        row = QHBoxLayout(self)
+        row.setContentsMargins(0, 0, 0, 0)
+        row.setSpacing(SPACE)
+        row.addWidget(self.choices)
+        row.addWidget(paper, 1)
+
+    def close_down(self) -> bool:
+        """End the threads; False where one did not end in time."""
+        return self.solution.close()
+
+    def showEvent(self, event: QShowEvent) -> None:
+        self.solution.look(True)
+        super().showEvent(event)
+
+    def hideEvent(self, event: QHideEvent) -> None:
+        self.solution.look(False)
+        super().hideEvent(event)
+
+    def follow(self) -> None:
+        """Show what the solution says."""
+        solution = self.solution
+        units = units_of(self._document.project)
+        per = per_of(units, solution.settings.per)
+        sheet = solution.sheet
+        refused = solution.state == "refused"
+        self.chart.show_sheet(sheet, units, per, solution.bands, refused)
+        solving = solution.state == "solving"
+        words = {
+            "waiting": "",
+            "solving": "Solving …",
+            "answering": "✓ up to date, answering the questions …",
+            "fresh": "✓ up to date",
+            "stopped": f"! {solution.message}",
+            "refused": f"✕ {solution.message}",
+        }[solution.state]
+        if solution.state == "fresh" and solution.message:
+            words = f"! {solution.message}"
+        _say(self.state, words)
+        self.progress.setVisible(solving)
+        self.progress.setValue(round(1000 * solution.fraction))
+        self.stop.setVisible(solving or solution.state in ("answering", "stopped"))
+        _say(self.stop, "Solve" if solution.state == "stopped" else "Stop")
+        ready = sheet is not None and sheet.complete and not refused
+        self.print_page.setEnabled(ready)
+        self.export.setEnabled(ready)
+        if self._cell is not None:
+            _say(self.told, reading(self._cell, per, units))
+        else:
+            _say(self.told, summary(sheet, units) if sheet is not None and sheet.cells else "")
+
+    def _point(self, cell: Cell | None) -> None:
+        self._cell = cell
+        self.follow()
+
+    def _stop_or_go_on(self) -> None:
+        if self.solution.state == "stopped":
+            self.solution.solve_again()
+        else:
+            self.solution.stop()
+
+
+def _say(widget: QLabel | QPushButton, text: str) -> None:
+    if widget.text() != text:
+        widget.setText(text)
