@@ -27,8 +27,8 @@ def quasi_static(par, state, free, push, u, v, dt):
     half = 0.5 * push
     goal = free - half * before
     start, slope = k * (u - plastic), 0.5 * k * dt
-    w, new, acts = goal, start + slope * goal, 0.0
-    if new > 0.0:
+    w, new, acts = goal, 0.0, 0.0
+    if start + slope * goal > 0.0:
         w, new, acts = _in_contact(par, goal, half, start, slope)
     slipped = u + 0.5 * dt * w - new / k - plastic if k > 0.0 and new >= top else 0.0
     if slipped > 0.0:
