@@ -1,4 +1,4 @@
-"""Rods that crack in tension: the first opening under a pulse that comes back from a free end, and the pieces that fly off."""
+"""Rods that crack in tension: the first opening under a pulse sent back by a free end, and the pieces that fly off."""
 
 from __future__ import annotations
 
@@ -12,10 +12,14 @@ from tests.published.rods import AREA, DENSITY, LENGTH, C, material, part, pulse
 
 SPALL = "Kolsky 1963, Stress Waves in Solids, ch. VIII, spalling under a triangular pulse (from memory); recomputed"
 SPAN = 0.0004
-ONE_ELEMENT = "the crack is an element: its middle is up to one element of 10 mm from the place, its time one step"
+ONE_ELEMENT = (
+    "the crack is an element: its middle is up to one element of 10 mm from the place, its time one step"
+)
 
 
-def _struck(strength: float, shape: dict, peak: float = 100e6, end: float = 0.0032, dx: float = 0.01) -> Result:
+def _struck(
+    strength: float, shape: dict, peak: float = 100e6, end: float = 0.0032, dx: float = 0.01
+) -> Result:
     law = {"kind": "brittle_tension", "tensile_strength": strength}
     return solved(
         pulse(**shape, peak=peak * AREA),
@@ -67,14 +71,22 @@ def piece() -> Iterator[Compared]:
         first = round(((LENGTH + x) / C + 0.0001) / run.time_step)
         moved = gauge.displacement[first + turn] - gauge.displacement[first]
         speed = (2 - share) * 100e6 / (DENSITY * C)
-        yield value(f"mean velocity of the free end, st/s0 = {share}", speed, moved / (turn * run.time_step), "m/s")
+        yield value(
+            f"mean velocity of the free end, st/s0 = {share}", speed, moved / (turn * run.time_step), "m/s"
+        )
 
 
 @check(
-    model="brittle rod, sudden rise and linear decay, 3.2 times the strength; segments cut so that each holds one opening",
+    model=(
+        "brittle rod, sudden rise and linear decay, 3.2 times the strength; segments cut so that each "
+        "holds one opening"
+    ),
     title="Several pieces, one after the other",
     source=SPALL,
-    formula="what is left of the pulse behind a piece acts anew: openings at x_i = i (st/s0) c T/2, t_i = (L + x_i)/c, i = 1, 2, 3",
+    formula=(
+        "what is left of the pulse behind a piece acts anew: openings at x_i = i (st/s0) c T/2, t_i = (L "
+        "+ x_i)/c, i = 1, 2, 3"
+    ),
     tolerance=2.01,
     share_of="one element, or one step",
     why="each opening begins from the face of the last one, which is up to one element away from its place",

@@ -1,4 +1,4 @@
-"""Closed forms that several checks share, written here anew: pulses, d'Alembert by images, the lattice of a layered rod.
+"""Closed forms that several checks share, written anew: pulses, d'Alembert by images, the lattice of a layered rod.
 
 Compression is positive here, as in the literature on impact; the solver takes tension positive.
 """
@@ -51,10 +51,12 @@ def polygon(times: Sequence[float], values: Sequence[float]) -> Impulse:
     return integral
 
 
-def displacement(x: float, t: Array, entering: Impulse, length: float, c: float, near: int, far: int) -> Array:
-    """Displacement of a uniform rod by images (d'Alembert): `entering` is that of the struck end while nothing has come back.
+def displacement(
+    x: float, t: Array, entering: Impulse, length: float, c: float, near: int, far: int
+) -> Array:
+    """Displacement of a uniform rod by images (d'Alembert); `entering`: that of the struck end before any echo.
 
-    `near`, `far`: what an end sends back of a displacement wave: +1 free (or held by a force), -1 held still, 0 nothing.
+    `near`, `far`: what an end sends back of a displacement wave: +1 free (or under a force), -1 held, 0 nothing.
     """
     total, travel, m = np.zeros_like(t, dtype=float), 2 * length / c, 0
     while m == 0 or (m * travel <= t[-1] + travel and near * far):
@@ -66,7 +68,16 @@ def displacement(x: float, t: Array, entering: Impulse, length: float, c: float,
 
 
 def at_gauge(
-    shape: Impulse, x: float, t: Array, dt: float, *, stiffness: float, length: float, c: float, near: int, far: int
+    shape: Impulse,
+    x: float,
+    t: Array,
+    dt: float,
+    *,
+    stiffness: float,
+    length: float,
+    c: float,
+    near: int,
+    far: int,
 ) -> tuple[Array, Array, Array]:
     """Force (compression positive), velocity and displacement as a mesh of Courant number 1 can know them.
 
@@ -82,7 +93,7 @@ def at_gauge(
 def lattice(
     impedances: Sequence[float], cells: Sequence[int], steps: int, *, held: bool, far: int
 ) -> list[Array]:
-    """Velocity at the struck end, at every interface and at the far end, per unit impulse in one step (Goupillaud 1961).
+    """Velocity at the struck end, every interface and the far end, per unit impulse in one step (Goupillaud 1961).
 
     Layer i has impedance `impedances[i]` and takes `cells[i]` steps to cross. `held`: the impulse is one of velocity on
     a held end; otherwise of force on a free one. `far`: velocity sent back by the far end, +1 free, -1 fixed, 0 none.

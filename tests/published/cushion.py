@@ -15,7 +15,8 @@ from tests.published.rods import GRAVITY, Z, material, part, solved
 MODEL = "lumped ram, cushion without damping, member = dashpot"
 DEEKS = "Deeks & Randolph 1993, Int. J. Numer. Anal. Meth. Geomech. 17 (model; from its summary); numbers recomputed"
 SECOND_ORDER = (
-    "Required are 0.2 %. The cushion acts with the mean of two half steps, so that errors are of second order: about 1e-5."
+    "Required are 0.2 %. The cushion acts with the mean of two half steps, so that errors are of "
+    "second order: about 1e-5."
 )
 STIFF = 1e8
 """Stiffness of the ram cushion, N/m: with Z = 400 000 N s/m the unit of time Z/k is 4 ms."""
@@ -58,7 +59,10 @@ def _no_cap(ram: float) -> tuple[float, float]:
     model=MODEL + ", no cap",
     title="Peak force and its time at fourteen ratios k m/Z^2",
     source=DEEKS,
-    formula="m* < 4: F/(Z V) = sqrt(m*) exp(-atan(q)/q), t* = 2 atan(q)/q, q = sqrt(4/m* - 1); m* = 4: 2/e at 2; else with artanh",
+    formula=(
+        "m* < 4: F/(Z V) = sqrt(m*) exp(-atan(q)/q), t* = 2 atan(q)/q, q = sqrt(4/m* - 1); m* = 4: 2/e "
+        "at 2; else with artanh"
+    ),
     tolerance=1e-4,
     why=SECOND_ORDER,
 )
@@ -190,7 +194,12 @@ def si_case() -> Iterator[Compared | Picture]:
     }
     steel = material("it", 1e6 * 5000 / 0.025, 8000)
     run = solved(
-        load, part(20.0, 0.025, "it"), materials=[steel], far_end="matched", gauges={"head": 0.0}, duration=0.0085
+        load,
+        part(20.0, 0.025, "it"),
+        materials=[steel],
+        far_end="matched",
+        gauges={"head": 0.0},
+        duration=0.0085,
     )
     speed = np.sqrt(2 * GRAVITY)
     table = {0.5: (1724.5338, 4.3113346), 1: (2686.1366, 4.0292049), 2: (3258.4484, 3.2584484)}
@@ -236,7 +245,12 @@ def restitution() -> Iterator[Compared]:
         }
         contact = np.pi / 2 * np.sqrt(mass / k) * (1 + e)
         run = solved(
-            load, part(0.25, 0.01, "stiff"), materials=[stiff], far_end="fixed", duration=1.1 * contact, dx=0.05
+            load,
+            part(0.25, 0.01, "stiff"),
+            materials=[stiff],
+            far_end="fixed",
+            duration=1.1 * contact,
+            dx=0.05,
         )
         left = next(ev.time for ev in run.events if ev.kind == "separation")
         yield value(f"rebound velocity, e = {e}", -e * speed, run.head_train.ram_velocity[-1], "m/s")
@@ -255,7 +269,11 @@ def restitution() -> Iterator[Compared]:
 )
 def cushion_stiffness() -> Iterator[Compared]:
     psi = 6894.757293
-    table = {"laminated phenolic": (450000, 3309.48), "oak": (45000, 330.948), "fir plywood": (35000, 257.404)}
+    table = {
+        "laminated phenolic": (450000, 3309.48),
+        "oak": (45000, 330.948),
+        "fir plywood": (35000, 257.404),
+    }
     table |= {"pine plywood": (25000, 183.86), "gum": (30000, 220.632)}
     for name, (modulus, wanted) in table.items():
         block = Cushion(young_modulus=modulus * psi, area=0.16, thickness=0.15, restitution=0.5)

@@ -10,11 +10,14 @@ from tests.published.closed_forms import at_gauge, displacement, impulse, polygo
 from tests.published.registry import Compared, Picture, check, history, picture, value
 from tests.published.rods import AREA, DENSITY, LENGTH, C, E, Z, material, part, pulse, solved
 
-TEXTBOOK = "Kolsky 1963, Stress Waves in Solids, ch. III; Graff 1975, Wave Motion in Elastic Solids, ch. 2 (from memory)"
+TEXTBOOK = (
+    "Kolsky 1963, Stress Waves in Solids, ch. III; Graff 1975, Wave Motion in Elastic Solids, ch. 2 "
+    "(from memory)"
+)
 MEANS = (
-    "At Courant number 1 the scheme solves the wave equation exactly: displacements of nodes are those of points, forces "
-    "are means over the two elements beside a gauge, velocities means over the two steps around a time, and the closed "
-    "form is averaged alike. What is left is round-off."
+    "At Courant number 1 the scheme solves the wave equation exactly: displacements of nodes are "
+    "those of points, forces are means over the two elements beside a gauge, velocities means over "
+    "the two steps around a time, and the closed form is averaged alike. What is left is round-off."
 )
 FORMULA = "u = f(x - ct) + g(x + ct) by images of the struck end and the far end; F = Z v in a wave that runs one way"
 SHAPES = {
@@ -27,7 +30,9 @@ SHAPES = {
 }
 
 
-def _compare(load: dict, entering, near: int, far: int, far_end: str, end: float = 0.0102) -> Iterator[Compared]:
+def _compare(
+    load: dict, entering, near: int, far: int, far_end: str, end: float = 0.0102
+) -> Iterator[Compared]:
     """Run the round-number rod with gauges at its ends and inside, and compare all three records of each."""
     places = {"struck end": 0.0, "2.5 m": 2.5, "7 m": 7.0, "far end": LENGTH}
     run = solved(load, far_end=far_end, gauges=places, duration=end, dx=0.1)
@@ -65,7 +70,8 @@ def every_shape(more: dict) -> Iterator[Compared]:
     model="uniform elastic rod, far ends fixed and matched, force and velocity loads",
     title="Ends that send back +1, -1 and nothing",
     source=TEXTBOOK,
-    formula=FORMULA + "; a matched end sends nothing back; an end whose motion is prescribed reflects like a fixed one",
+    formula=FORMULA
+    + "; a matched end sends nothing back; an end whose motion is prescribed reflects like a fixed one",
     tolerance=1e-10,
     share_of="the peak of the incident wave",
     why=MEANS,
@@ -83,9 +89,7 @@ def every_end(which: tuple[str, int, str]) -> Iterator[Compared]:
     peak = 1e6 if quantity == "force" else 1.0
     near = 1 if quantity == "force" else -1
     share = peak / Z if quantity == "force" else peak
-    yield from _compare(
-        pulse("half_sine", 0.001, peak, quantity), lambda t: share * form(t), near, far, end
-    )
+    yield from _compare(pulse("half_sine", 0.001, peak, quantity), lambda t: share * form(t), near, far, end)
 
 
 @check(
@@ -110,7 +114,10 @@ def long_history() -> Iterator[Compared]:
     model="uniform elastic rod, 400 elements",
     title="Half-sine of 1 MN and 1 ms: the table of times",
     source="recomputed from d'Alembert's solution; values at points, not means",
-    formula="F(5 m) = F0 sin(pi (t - 1 ms)/T), reflected with -1; v(toe) = 2 x incident; F(toe) = 2 x incident if fixed",
+    formula=(
+        "F(5 m) = F0 sin(pi (t - 1 ms)/T), reflected with -1; v(toe) = 2 x incident; F(toe) = 2 x "
+        "incident if fixed"
+    ),
     tolerance=1e-4,
     share_of="the peak",
     why="the mean over two steps of a half-sine of 200 steps differs from its value by (pi/200)^2/6 = 4e-5",
@@ -167,7 +174,9 @@ def pulse_totals() -> Iterator[Compared]:
         yield value(f"displacement of the toe, {shape}", 2 * total / Z, moved, "m")
         then = round(0.0015 / run.time_step)
         speeds = [run.gauges[name].velocity[then] for name in places if name != "toe"]
-        yield value(f"momentum of the wave on its way, {shape}", total, sum(speeds) * DENSITY * AREA * 0.2, "N s")
+        yield value(
+            f"momentum of the wave on its way, {shape}", total, sum(speeds) * DENSITY * AREA * 0.2, "N s"
+        )
 
 
 @check(
@@ -190,11 +199,17 @@ def rod_on_wall() -> Iterator[Compared]:
     t, dt = run.gauges["3 m"].time, run.time_step
     # the wall is met from the first step on, the last one that presses is that at 2L/c
     inside = (t > 1.5 * dt) & (t < 0.004 - 1.5 * dt)
-    yield history("force on the wall", np.full(inside.sum(), Z * 2.0), -run.gauges["far end"].force[inside], "N")
+    yield history(
+        "force on the wall", np.full(inside.sum(), Z * 2.0), -run.gauges["far end"].force[inside], "N"
+    )
     after = t > 0.0055
-    yield history("velocity after the rebound", np.full(after.sum(), -2.0), run.gauges["3 m"].velocity[after], "m/s")
+    yield history(
+        "velocity after the rebound", np.full(after.sum(), -2.0), run.gauges["3 m"].velocity[after], "m/s"
+    )
     still = (t > 0.0014 + 2 * dt) & (t < 0.0026 - 2 * dt)
-    yield history("velocity while pressed", np.zeros(still.sum()), run.gauges["3 m"].velocity[still], "m/s", 2.0)
+    yield history(
+        "velocity while pressed", np.zeros(still.sum()), run.gauges["3 m"].velocity[still], "m/s", 2.0
+    )
 
 
 @check(
@@ -243,7 +258,11 @@ def long_run() -> Iterator[Compared]:
     both = [
         displacement(LENGTH, t[last] + k * dt, lambda s: 1e6 / Z * form(s), LENGTH, C, 1, 1) for k in (-1, 1)
     ]
-    yield history("velocity of the toe, last passages", (both[1] - both[0]) / (2 * dt), gauge.velocity[last], "m/s")
+    yield history(
+        "velocity of the toe, last passages", (both[1] - both[0]) / (2 * dt), gauge.velocity[last], "m/s"
+    )
+
+
 @check(
     model="uniform elastic rod, rectangular pulse on a velocity load with release",
     title="A struck end that is let go after the pulse",
@@ -269,5 +288,3 @@ def released() -> Iterator[Compared]:
         )
         yield history(f"velocity at the {name}", velocity, gauge.velocity, "m/s", 1.0)
         yield history(f"displacement at the {name}", moved, gauge.displacement, "m", 0.001)
-
-

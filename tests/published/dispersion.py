@@ -18,7 +18,9 @@ LENGTHS = (0.01, 0.02, 0.025, 0.05, 0.075, 0.1, 0.15, 0.2, 0.25, 0.3)
 """Radius over wavelength."""
 
 
-def _phase_speed(elements: int, halves: int, share: float, ratio: float = 0.0, poisson: float = 0.29) -> float:
+def _phase_speed(
+    elements: int, halves: int, share: float, ratio: float = 0.0, poisson: float = 0.29
+) -> float:
     """c_p/c0 of a standing wave with `halves` half waves in a free rod of `elements` elements, Courant number `share`.
 
     cos(k x) is a mode of the mesh as well. `ratio` > 0 switches Love's rod on, with the radius ratio x wavelength.
@@ -54,7 +56,13 @@ def _phase_speed(elements: int, halves: int, share: float, ratio: float = 0.0, p
     why="required: 1e-6; a mode of the mesh swings at exactly one frequency, which is read to 1e-9",
 )
 def of_the_mesh() -> Iterator[Compared]:
-    printed = {(6, 0.9): 0.9905068, (6, 0.1): 0.955328, (12, 0.7): 0.9941058, (40, 0.5): 0.9992286, (20, 0.1): 0.9959334}
+    printed = {
+        (6, 0.9): 0.9905068,
+        (6, 0.1): 0.955328,
+        (12, 0.7): 0.9941058,
+        (40, 0.5): 0.9992286,
+        (20, 0.1): 0.9959334,
+    }
     for n in (6, 8, 10, 12, 20, 40):
         for share in (1.0, 0.9, 0.7, 0.5, 0.1):
             # half-waves so that the wavelength is n elements
@@ -125,7 +133,10 @@ def pochhammer(ratio: float, poisson: float) -> float:
 @check(
     model="Love's rod against the exact theory of a round bar, Poisson's ratio 0.20, 0.29 and 0.30",
     title="Love's rod is near the exact bar where 2 pi a/wavelength < 0.6",
-    source="Pochhammer-Chree equation (Kolsky 1963; Graff 1975; Bancroft 1941, Phys. Rev. 59, from memory), solved here",
+    source=(
+        "Pochhammer-Chree equation (Kolsky 1963; Graff 1975; Bancroft 1941, Phys. Rev. 59, from memory), "
+        "solved here"
+    ),
     formula="first root of the frequency equation",
     tolerance=5e-3,
     why="required: 0.5 % of the phase speed where 2 pi a/wavelength is under 0.6; longer bars differ: see the figure",
@@ -135,7 +146,12 @@ def against_exact() -> Iterator[Compared | Picture]:
     for poisson in (0.2, 0.29, 0.3):
         for ratio in (0.025, 0.05, 0.075, 0.095):
             exact = pochhammer(ratio, poisson)
-            yield value(f"nu = {poisson}, a/wavelength = {ratio}", exact, _phase_speed(240, 4, 1.0, ratio, poisson), "c0")
+            yield value(
+                f"nu = {poisson}, a/wavelength = {ratio}",
+                exact,
+                _phase_speed(240, 4, 1.0, ratio, poisson),
+                "c0",
+            )
             if (ratio, poisson) in printed:
                 name = f"nu = {poisson}, a/wavelength = {ratio}: root as printed"
                 yield value(name, printed[ratio, poisson], exact, "c0", tolerance=1e-8)

@@ -8,10 +8,12 @@ import numpy as np
 from scipy.linalg import expm
 
 from tests.published.registry import Array, Compared, Picture, check, history, picture, value
-from tests.published.rods import AREA, LENGTH, C, E, Z, part, pulse, solved
+from tests.published.rods import AREA, LENGTH, E, Z, part, pulse, solved
 
 GRAFF = "F + Z v = 2 F0 at the end (Graff 1975, ch. 2, from memory); recomputed"
-SECOND_ORDER = "the step front is one element wide, the rest is of second order in dt; 240 elements give about 2e-5"
+SECOND_ORDER = (
+    "the step front is one element wide, the rest is of second order in dt; 240 elements give about 2e-5"
+)
 F0 = 1e6
 AFTER = np.array([0.1, 0.25, 0.5, 1.0, 2.0]) * 1e-3
 FROM, LONG = 0.0012, 6.0
@@ -78,7 +80,12 @@ def dashpot() -> Iterator[Compared]:
     for ratio in (0.0, 0.25, 0.5, 1.0, 2.0, 4.0):
         t, force, velocity, _, dt = _step({"kind": "dashpot", "coefficient": ratio * Z})
         inside = t > 1.5 * dt
-        yield history(f"velocity, C/Z = {ratio}", np.full(inside.sum(), 2 / (1 + ratio)), velocity[inside] * Z / F0, "F0/Z")
+        yield history(
+            f"velocity, C/Z = {ratio}",
+            np.full(inside.sum(), 2 / (1 + ratio)),
+            velocity[inside] * Z / F0,
+            "F0/Z",
+        )
         wanted = np.full(inside.sum(), 2 * ratio / (1 + ratio))
         yield history(f"force, C/Z = {ratio}", wanted, force[inside] / F0, "F0", 1.0)
     t, force, velocity, _, dt = _step("matched")
@@ -207,15 +214,26 @@ def dashpot_along() -> Iterator[Compared]:
     for ratio in (0.25, 1.0, 4.0):
         t, echo, passed, dt = _passed({"kind": "dashpot", "value": ratio * Z})
         inside = t > 1.5 * dt
-        yield history(f"up-wave, C/Z = {ratio}", np.full(inside.sum(), ratio / (2 + ratio)), echo[inside] / F0, "F0", 1.0)
-        yield history(f"passed, C/Z = {ratio}", np.full(inside.sum(), 2 / (2 + ratio)), passed[inside] / F0, "F0", 1.0)
+        yield history(
+            f"up-wave, C/Z = {ratio}",
+            np.full(inside.sum(), ratio / (2 + ratio)),
+            echo[inside] / F0,
+            "F0",
+            1.0,
+        )
+        yield history(
+            f"passed, C/Z = {ratio}", np.full(inside.sum(), 2 / (2 + ratio)), passed[inside] / F0, "F0", 1.0
+        )
 
 
 @check(
     model="step wave past a mass of 200 kg or a spring of 8e8 N/m to ground on the way along the rod",
     title="Mass and spring along the member",
     source="continuity (textbook); recomputed",
-    formula="mass: transmitted 1 - exp(-2 Z t/m); spring: transmitted exp(-k t/(2 Z)); echo = transmitted - incident, turned",
+    formula=(
+        "mass: transmitted 1 - exp(-2 Z t/m); spring: transmitted exp(-k t/(2 Z)); echo = transmitted - "
+        "incident, turned"
+    ),
     tolerance=5e-4,
     share_of="the incident force",
     why="second order in dt: the passage is half as long as at an end, so about 6e-5",

@@ -11,7 +11,9 @@ from tests.published.registry import Array, Compared, Picture, check, history, p
 from tests.published.rods import AREA, C, Z, material, part, pulse, solved
 
 CONTINUITY = "continuity of force and velocity at the step (Kolsky 1963; Graff 1975, from memory)"
-LATTICE = "lattice of a layered rod (Goupillaud 1961, Geophysics 26, from memory), written anew for these checks"
+LATTICE = (
+    "lattice of a layered rod (Goupillaud 1961, Geophysics 26, from memory), written anew for these checks"
+)
 EXACT = "travel times are whole numbers of steps, so that the mesh is the lattice itself; what is left is round-off"
 
 
@@ -49,7 +51,10 @@ def one_step() -> Iterator[Compared]:
     model="a layer of another section in a long rod; rectangular force pulse of one step's spacing",
     title="All echoes of a layer at five ratios",
     source=CONTINUITY,
-    formula="echoes r at the top face, then -(1 - r^2) r^(2j-1) every 2d/c; transmitted (1 - r^2) r^(2j); r = (b - 1)/(b + 1)",
+    formula=(
+        "echoes r at the top face, then -(1 - r^2) r^(2j-1) every 2d/c; transmitted (1 - r^2) r^(2j); r "
+        "= (b - 1)/(b + 1)"
+    ),
     tolerance=1e-10,
     share_of="the incident force",
     why=EXACT,
@@ -109,7 +114,11 @@ def defect() -> Iterator[Compared | Picture]:
     firsts = {0.0: 1.0, 0.0016: 2 / 3, 0.0020: -16 / 27, 0.0024: -16 / 243}
     for start, share in firsts.items():
         yield value(
-            f"arrival at {start * 1e3:.1f} ms", share, gauge.velocity[round((start + 0.0001) / dt)] / 2.5, "F0/Z", 1.0
+            f"arrival at {start * 1e3:.1f} ms",
+            share,
+            gauge.velocity[round((start + 0.0001) / dt)] / 2.5,
+            "F0/Z",
+            1.0,
         )
     yield picture(
         "Velocity of the struck end: half of the area lost between 4 and 5 m",
@@ -132,7 +141,13 @@ def defect() -> Iterator[Compared | Picture]:
 )
 def defect_table() -> Iterator[Compared]:
     run = solved(
-        pulse("rectangle", 0.0002), part(4.0), part(1.0, AREA / 2), part(5.0), gauges={"h": 0.0}, duration=0.004, dx=0.1
+        pulse("rectangle", 0.0002),
+        part(4.0),
+        part(1.0, AREA / 2),
+        part(5.0),
+        gauges={"h": 0.0},
+        duration=0.004,
+        dx=0.1,
     )
     table = {0.0: 1.0, 0.0016: 0.66666667, 0.002: -0.59259259, 0.0024: -0.065843621}
     table |= {0.0028: -0.0073159579, 0.0032: 0.22140934, 0.0036: -0.39515205}
@@ -145,8 +160,10 @@ def defect_table() -> Iterator[Compared]:
     model="slender concrete member of 12 m read by its echo, impedance 0.7 between 5 and 6 m, free ends",
     title="A neck seen from the struck end",
     source=CONTINUITY,
-    formula="echoes 2 r and -2 (1 - r^2) r of the first velocity, r = (1 - b)/(1 + b); far end 2 (1 - r^2)^2, and with it what "
-    "the struck end and the neck have sent to and fro (lattice)",
+    formula=(
+        "echoes 2 r and -2 (1 - r^2) r of the first velocity, r = (1 - b)/(1 + b); far end 2 (1 - "
+        "r^2)^2, and with it what the struck end and the neck have sent to and fro (lattice)"
+    ),
     tolerance=1e-8,
     share_of="the first velocity",
     why="the printed echoes have eight digits",
@@ -165,7 +182,9 @@ def neck() -> Iterator[Compared]:
     v, dt = run.gauges["head"].velocity, run.time_step
     first = v[round(0.00015 / dt)]
     for what, start, wanted in (("top", 0.0025, 0.35294118), ("bottom", 0.003, -0.34194993)):
-        yield value(f"{what} of the neck", wanted, v[round((start + 0.00015) / dt)] / first, "of the first", 1.0)
+        yield value(
+            f"{what} of the neck", wanted, v[round((start + 0.00015) / dt)] / first, "of the first", 1.0
+        )
     weights = lattice([1.0, 0.7, 1.0], [50, 10, 60], 241, held=False, far=1)[0]
     yield value("far end", weights[240], v[round(0.00615 / dt)] / first, "of the first", 1.0)
 
@@ -239,4 +258,6 @@ def forty_layers() -> Iterator[Compared]:
     for name, weights in (("struck end", found[0]), ("middle", found[20]), ("far end", found[-1])):
         both = [1e6 * convolved(weights, form, t + k * dt, dt) for k in (-1, 1)]
         exact = (both[1] - both[0]) / (2 * dt)
-        yield history(f"velocity at the {name}", exact, run.gauges[name].velocity, "m/s", 1e6 / (Z * areas[0] / AREA))
+        yield history(
+            f"velocity at the {name}", exact, run.gauges[name].velocity, "m/s", 1e6 / (Z * areas[0] / AREA)
+        )

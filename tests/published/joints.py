@@ -141,11 +141,16 @@ def at_a_step() -> Iterator[Compared]:
     wave = np.sin(w * s) * np.sin(w * dt) / (w * dt) * 1e6
     yield history("transmitted", 4 / 3 * wave, -run.gauges["behind"].down_wave[inside], "N", 1e6)
     yield history("reflected", wave / 3, -run.gauges["before"].up_wave[inside], "N", 1e6)
+
+
 @check(
     model="contact joint without gap near a free end, rectangular pulse of 0.2 ms",
     title="The end piece flies off with the momentum",
     source="momentum trap after B. Hopkinson 1914 (Kolsky 1963, from memory); recomputed",
-    formula="an end piece of half the pulse's length takes all of it: velocity 2 v0 of the piece, the rod is left at rest",
+    formula=(
+        "an end piece of half the pulse's length takes all of it: velocity 2 v0 of the piece, the rod is "
+        "left at rest"
+    ),
     tolerance=1e-8,
     share_of="the value, or 2 v0",
     why=EXACT,
@@ -155,7 +160,12 @@ def end_piece() -> Iterator[Compared]:
         pulse("rectangle", 0.0002),
         part(4.0),
         part(0.5, joint_above={"kind": "contact", "gap": 0.0}),
-        gauges={"rod, end": 4.0, "rod, middle": 2.0, "piece, face": {"position": 4.0, "side": "far"}, "piece, end": 4.5},
+        gauges={
+            "rod, end": 4.0,
+            "rod, middle": 2.0,
+            "piece, face": {"position": 4.0, "side": "far"},
+            "piece, end": 4.5,
+        },
         duration=0.0016,
         dx=0.02,
     )
@@ -166,5 +176,3 @@ def end_piece() -> Iterator[Compared]:
         yield history(f"velocity of {name}", np.full(later.sum(), wanted), found, "m/s", 5.0)
     parted = next(e.time for e in run.events if e.kind == "joint_opened")
     yield value("joint opens (off in steps)", 0.0010, parted, "s", dt, 1.01)
-
-

@@ -28,7 +28,10 @@ def _speed(s: float) -> float:
 
 
 @check(
-    model="neo-Hookean rod held at both ends: fixed far end, head moved slowly to a stretch and held; viscous losses none",
+    model=(
+        "neo-Hookean rod held at both ends: fixed far end, head moved slowly to a stretch and held; "
+        "viscous losses none"
+    ),
     title="Simple states: stress at given stretches",
     source=OGDEN,
     formula="P = G (s - 1/s^2), G = E/3; slope E at s = 1",
@@ -62,7 +65,10 @@ def simple_states() -> Iterator[Compared]:
     source="Courant & Friedrichs 1948, simple waves (from memory); recomputed",
     formula="v = integral from 1 to s of sqrt((dP/ds)/rho) ds while waves run one way, whatever the history",
     tolerance=2e-3,
-    why="the wave fans out in tension, so that the mesh sees it ever smoother; Courant numbers are under 1 by the law's stiffening",
+    why=(
+        "the wave fans out in tension, so that the mesh sees it ever smoother; Courant numbers are under "
+        "1 by the law's stiffening"
+    ),
 )
 def pulled() -> Iterator[Compared | Picture]:
     run = solved(
@@ -99,8 +105,9 @@ def pulled() -> Iterator[Compared | Picture]:
     formula="V = U (1 - s), P = -rho U V, U = sqrt(P(s)/(rho (s - 1)))",
     tolerance=2e-2,
     why=(
-        "The law takes no energy, a shock must: the mesh puts it into ringing behind the front instead, whose mean is near "
-        "the state of the shock but not on it. The front itself runs 6 % too fast and is not held to anything."
+        "The law takes no energy, a shock must: the mesh puts it into ringing behind the front instead, "
+        "whose mean is near the state of the shock but not on it. The front itself runs 6 % too fast and "
+        "is not held to anything."
     ),
 )
 def pushed() -> Iterator[Compared]:
@@ -117,7 +124,9 @@ def pushed() -> Iterator[Compared]:
     )
     near = run.gauges["0.5 m"]
     behind = near.time > 0.5 / shock + 0.006
-    yield value("stress behind the front, mean", -RHO * shock * speed, float(np.mean(near.stress[behind])), "Pa")
+    yield value(
+        "stress behind the front, mean", -RHO * shock * speed, float(np.mean(near.stress[behind])), "Pa"
+    )
     yield value("stretch behind the front, mean", s, 1 + float(np.mean(near.strain[behind])))
 
 

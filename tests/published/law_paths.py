@@ -1,9 +1,12 @@
-"""Laws of ground, cushion and metal along given paths, read through the whole program: a member too stiff and too light to
-matter is moved by a prescribed velocity, and what resists it is read at its gauge."""
+"""Laws of ground, cushion and metal along given paths, read through the whole program.
+
+A member too stiff and too light to matter is moved by a prescribed velocity, and what resists it is read at its gauge.
+"""
 
 from __future__ import annotations
 
 from collections.abc import Iterator, Sequence
+from itertools import pairwise
 
 import numpy as np
 
@@ -25,7 +28,7 @@ def _along(points: Sequence[tuple[float, float]], **ground: dict) -> tuple[Resul
     Returns the run and the times of the points after the first, which is where the rod starts at rest.
     """
     times, speeds = [0.0], [0.0]
-    for (d0, v0), (d1, v1) in zip(points, points[1:], strict=False):
+    for (d0, v0), (d1, v1) in pairwise(points):
         times.append(times[-1] + 2e-3 * (d1 - d0) / (v0 + v1))
         speeds.append(v1)
     load = {"kind": "history", "quantity": "velocity", "times": times, "values": speeds}
@@ -60,8 +63,9 @@ SHAFT_STATIC = (50.0, 100.0, 100.0, 21.259843, -100.0, -100.0, -21.259843, 100.0
     title="Smith's spring and slider on the shaft, with damping",
     source=SMITH,
     formula=(
-        "R_s = K (D - D') within +-Ru; Smith R_s + J |R_s| v, viscous R_s + J Ru v, power R_s + J Ru |v|^N sign(v). The table "
-        "prints R_s (1 + J v), which gives energy back where R_s < 0; with the magnitude it takes energy both ways"
+        "R_s = K (D - D') within +-Ru; Smith R_s + J |R_s| v, viscous R_s + J Ru v, power R_s + J Ru "
+        "|v|^N sign(v). The table prints R_s (1 + J v), which gives energy back where R_s < 0; with the "
+        "magnitude it takes energy both ways"
     ),
     tolerance=1e-3,
     share_of="the strength",
@@ -70,7 +74,14 @@ SHAFT_STATIC = (50.0, 100.0, 100.0, 21.259843, -100.0, -100.0, -21.259843, 100.0
 )
 def shaft(law: str) -> Iterator[Compared]:
     more = {"exponent": 0.2} if law == "power" else {}
-    total = {"resistance": RU, "distribution": "uniform", "quake": QUAKE, "damping": J, "damping_law": law, **more}
+    total = {
+        "resistance": RU,
+        "distribution": "uniform",
+        "quake": QUAKE,
+        "damping": J,
+        "damping_law": law,
+        **more,
+    }
     run, times = _along(SHAFT_PATH, ground={"surface": 0.0, "shaft_total": total})
     found = _at(run, "head", times[:-1])
     for (d, v), static, at in zip(SHAFT_PATH[1:], SHAFT_STATIC, found, strict=False):
@@ -82,38 +93,11 @@ def shaft(law: str) -> Iterator[Compared]:
         yield value(f"D = {d:g} mm, v = {v:g} m/s", r + dashpot, at, "N", RU)
 
 
-TOE_PATH = ((-2, 0), (0, 2), (1.27, 2), (5, 0), (3, -1), (2.46, -1), (0, 0), (2.46, 1), (3, 1), (6, 0.5), (6.5, 0))
-
-
 @check(
-    model="toe resistance 100 kN, quake 2.54 mm, damping 0.05 s/ft; approach through a gap of 2 mm, lift-off and return",
-    title="Smith's toe: no tension, lost and found where it was left",
-    source=SMITH,
-    formula="0 <= R_s = K (D - D') <= Ru, D' = 2.46 mm after the first pass, R_s (1 + J v)",
-    tolerance=1e-3,
-    share_of="the strength",
-    why=WHY,
-)
-def toe() -> Iterator[Compared]:
-    ground = {"surface": 0.0, "toe": {"resistance": RU, "quake": QUAKE, "damping": J, "gap": 0.002}}
-    run, times = _along(TOE_PATH, far_end="ground", ground=ground)
-    printed = {
-        (1.27, 2): 66.404199,
-        (5, 0): 100.0,
-        (3, -1): 17.772336,
-        (2.46, -1): 0.0,
-        (0, 0): 0.0,
-        (2.46, 1): 0.0,
-        (3, 1): 24.747349,
-        (6, 0.5): 108.2021,
-    }
-    found = dict(zip(TOE_PATH[1:], _at(run, "end", times), strict=True))
-    for point, wanted in printed.items():
-        yield value(f"D = {point[0]:g} mm, v = {point[1]:g} m/s", wanted * 1e3, found[point], "N", RU)
-
-
-@check(
-    model="cushion of 1e9 N/m, restitution 0.8, pressed by 4 mm between a ram of 1000 kg and a base that does not give",
+    model=(
+        "cushion of 1e9 N/m, restitution 0.8, pressed by 4 mm between a ram of 1000 kg and a base that "
+        "does not give"
+    ),
     title="A cushion unloads along k/e^2",
     source="E. A. L. Smith 1960; Hirsch, Carr & Lowery 1976, FHWA-IP-76-13 (from memory); recomputed table",
     formula="F = k d up, k/e^2 (d - 1.44 mm) down",
@@ -129,7 +113,9 @@ def cushion() -> Iterator[Compared]:
         "cushion": {"stiffness": 1e9, "restitution": 0.8},
     }
     base = 1e13 * 0.01 / LONG
-    run = solved(load, part(LONG, of="stiff"), materials=[STIFF], far_end="fixed", duration=0.003, dx=LONG / 2)
+    run = solved(
+        load, part(LONG, of="stiff"), materials=[STIFF], far_end="fixed", duration=0.003, dx=LONG / 2
+    )
     train = run.head_train
     pressed = np.cumsum(train.ram_velocity) * run.time_step - train.cushion_force / base
     top = int(np.argmax(pressed))
@@ -142,7 +128,9 @@ def cushion() -> Iterator[Compared]:
     yield history("force on unloading", np.array(list(down.values())) * 1e3, found, "N", 4e6)
     rising = np.interp(at, pressed[:top], train.cushion_force[:top])
     yield history("force on loading", at * 1e9, rising, "N", 4e6)
-    yield value("energy lost, share of what it took", 0.36, run.ledger.final["cushion_loss"] / (8000.0 * share))
+    yield value(
+        "energy lost, share of what it took", 0.36, run.ledger.final["cushion_loss"] / (8000.0 * share)
+    )
 
 
 @check(
@@ -150,8 +138,8 @@ def cushion() -> Iterator[Compared]:
     title="Isotropic and kinematic hardening over three half cycles",
     source="Simo & Hughes 1998, Computational Inelasticity, ch. 1 (from memory); recomputed",
     formula=(
-        "first turn s1 = s_y + E_t (e1 - e_y); isotropic: reverse yield at -s1, then on by E_t; kinematic: reverse yield at "
-        "s1 - 2 s_y, so that the loop closes: -s1, +s1"
+        "first turn s1 = s_y + E_t (e1 - e_y); isotropic: reverse yield at -s1, then on by E_t; "
+        "kinematic: reverse yield at s1 - 2 s_y, so that the loop closes: -s1, +s1"
     ),
     tolerance=1e-3,
     share_of="the stress at the first turn",

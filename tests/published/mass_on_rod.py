@@ -16,8 +16,8 @@ MASS, SPEED = 1000.0, 5.0
 RATIOS = {"1/6": 1 / 6, "1/4": 1 / 4, "1/2": 1 / 2, "1": 1.0, "4": 4.0}
 HANDBOOK = "Timoshenko & Goodier 1970, longitudinal impact of bars (from memory); recomputed"
 SMEARED = (
-    "The front of the wave is smeared over the first node, an error of first order in Z dt/M that the program keeps under "
-    "0.1 % by its choice of mesh; required are 0.5 %."
+    "The front of the wave is smeared over the first node, an error of first order in Z dt/M that "
+    "the program keeps under 0.1 % by its choice of mesh; required are 0.5 %."
 )
 
 
@@ -31,7 +31,10 @@ def _strike(mass: float, speed: float, far_end: str, length: float, duration: fl
     model="rigid mass of 1000 kg at 5 m/s on a rod so long that nothing comes back",
     title="Mass on a long rod",
     source=HANDBOOK,
-    formula="F = Z V exp(-Z t/M), v = V exp(-Z t/M), u = (M V/Z)(1 - exp(-Z t/M)), energy (M V^2/2)(1 - exp(-2 Z t/M))",
+    formula=(
+        "F = Z V exp(-Z t/M), v = V exp(-Z t/M), u = (M V/Z)(1 - exp(-Z t/M)), energy (M V^2/2)(1 - "
+        "exp(-2 Z t/M))"
+    ),
     tolerance=2e-3,
     share_of="the largest value",
     why=SMEARED + " Energy, a product of two such records, errs by twice that.",
@@ -45,10 +48,14 @@ def long_rod() -> Iterator[Compared]:
     yield history("force on the rod", Z * SPEED * decay, -head.force[steps], "N", Z * SPEED)
     yield history("force on the mass", Z * SPEED * decay, train.cushion_force[steps], "N", Z * SPEED)
     yield history("velocity of the mass", SPEED * decay, train.ram_velocity[steps], "m/s", SPEED)
-    yield history("displacement of the head", MASS * SPEED / Z * (1 - decay), head.displacement[steps], "m", 0.0125)
+    yield history(
+        "displacement of the head", MASS * SPEED / Z * (1 - decay), head.displacement[steps], "m", 0.0125
+    )
     energy = MASS * SPEED**2 / 2 * (1 - decay**2)
     yield history("energy given to the rod", energy, head.transferred_energy[steps], "J", 12500.0)
-    yield value("force after 2.5 ms, printed 735.75888 kN", 735.75888e3, -head.force[steps[2]], "N", Z * SPEED)
+    yield value(
+        "force after 2.5 ms, printed 735.75888 kN", 735.75888e3, -head.force[steps[2]], "N", Z * SPEED
+    )
 
 
 @check(
@@ -138,7 +145,10 @@ PRINTED = {
 @check(
     model="rigid mass on a rod with its far end fixed, mesh chosen by the program; rod mass / striker mass",
     title="Saint-Venant's problem",
-    source="Saint-Venant and Flamant 1883, after Love 1927, art. 281 (from memory); recomputed, and the recomputed table",
+    source=(
+        "Saint-Venant and Flamant 1883, after Love 1927, art. 281 (from memory); recomputed, and the "
+        "recomputed table"
+    ),
     formula="polynomials times exponentials, passage after passage: see SaintVenant in mass_on_rod.py",
     tolerance=5e-3,
     why=SMEARED,
@@ -157,7 +167,12 @@ def saint_venant(name: str) -> Iterator[Compared]:
     yield value("contact time, printed", time, left / span, "L/c")
     gone = run.head_train.ram_velocity[round(left / run.time_step) + 5]
     yield value("velocity of the mass after it has left", after, gone / speed, "V")
-    yield value("largest stress at the fixed end", exact.fixed(tau).max(), -run.gauges["far end"].force.min() / Z, "rho c V")
+    yield value(
+        "largest stress at the fixed end",
+        exact.fixed(tau).max(),
+        -run.gauges["far end"].force.min() / Z,
+        "rho c V",
+    )
     yield value("the same, printed", fixed, -run.gauges["far end"].force.min() / Z, "rho c V")
     yield value("largest contact stress", contact, force.max() / Z, "rho c V")
 
@@ -180,7 +195,9 @@ def saint_venant_history() -> Iterator[Compared | Picture]:
     force, speed = run.head_train.cushion_force, run.head_train.ram_velocity
     yield history("contact stress", exact.contact(tau), force[steps] / Z, "rho c V")
     yield history("velocity of the mass", exact.striker(tau), speed[steps], "V")
-    yield history("stress at the fixed end", exact.fixed(tau), -run.gauges["far end"].force[later] / Z, "rho c V")
+    yield history(
+        "stress at the fixed end", exact.fixed(tau), -run.gauges["far end"].force[later] / Z, "rho c V"
+    )
     line = np.linspace(0, exact.duration(), 1200)
     shown = run.head_train.time <= 5.2 * span
     yield picture(
@@ -198,7 +215,10 @@ def saint_venant_history() -> Iterator[Compared | Picture]:
     model="rigid mass on a rod with its far end free; rod mass / striker mass 1/4, 1/2 and 2",
     title="Mass on a free rod: contact for exactly 2 L/c",
     source="recomputed: the tension front takes 2 rho c V off the contact stress",
-    formula="time 2 L/c, striker after V exp(-2 a), energy to the rod 1 - exp(-4 a), mean velocity V (1 - exp(-2 a))/a",
+    formula=(
+        "time 2 L/c, striker after V exp(-2 a), energy to the rod 1 - exp(-4 a), mean velocity V (1 - "
+        "exp(-2 a))/a"
+    ),
     tolerance=5e-3,
     why=SMEARED,
 )
@@ -221,7 +241,10 @@ def free_end() -> Iterator[Compared]:
     model="rigid mass on a fixed rod, rod mass / striker mass 1/2, 50 to 400 elements",
     title="Mass on a rod: the error halves with the mesh",
     source="first order of a front smeared over one node; recomputed",
-    formula="largest stress at the fixed end 2 (1 + exp(-2 a)) rho c V; its error is proportional to the element's length",
+    formula=(
+        "largest stress at the fixed end 2 (1 + exp(-2 a)) rho c V; its error is proportional to the "
+        "element's length"
+    ),
     tolerance=0.02,
     share_of="the ratio 2",
     why="the next order is 1 % of the first at 50 elements",
@@ -232,4 +255,6 @@ def mesh_halved() -> Iterator[Compared]:
         run = _strike(800.0, 1.0, "fixed", 5.0, 0.0035, dx=5.0 / elements)
         errors.append(2 * (1 + np.exp(-1.0)) + run.gauges["far end"].force.min() / Z)
     for i, elements in enumerate((50, 100, 200)):
-        yield value(f"error with {elements} elements over that with {2 * elements}", 2.0, errors[i] / errors[i + 1])
+        yield value(
+            f"error with {elements} elements over that with {2 * elements}", 2.0, errors[i] / errors[i + 1]
+        )

@@ -22,8 +22,8 @@ def angular_frequency(chain: Chain, gauge: str, expected: float, steady: float =
     """Angular frequency of the one mode that swings, 1/s, from the displacement at a gauge; `steady` (m/s) is a motion
     of the whole rod that is taken off.
 
-    A harmonic record obeys u(t + s) + u(t - s) = 2 cos(w s) u(t) for any shift s; the shift taken is near a quarter of the
-    expected period, where cos(w s) tells w best, and never so long that periods could be mistaken.
+    A harmonic record obeys u(t + s) + u(t - s) = 2 cos(w s) u(t) for any shift s; the shift taken is near a
+    quarter of the expected period, where cos(w s) tells w best and periods cannot be mistaken.
     """
     run = solve_chain(chain)
     record = run.gauges[gauge].displacement - steady * run.gauges[gauge].time

@@ -7,16 +7,23 @@ from collections.abc import Iterator
 import numpy as np
 
 from solver import Result
-from tests.published.registry import Array, Compared, Picture, check, history, picture, value
+from tests.published.registry import Array, Compared, Picture, check, picture, value
 from tests.published.rods import AREA, DENSITY, C, E, material, part, pulse, solved
 
 YIELD = 355e6
 SPEED_AT_YIELD = YIELD / (DENSITY * C)
-KARMAN = "von Karman & Duwez 1950, J. Appl. Phys. (abstract); Taylor 1946; Johnson 1972 (from memory); recomputed"
+KARMAN = (
+    "von Karman & Duwez 1950, J. Appl. Phys. (abstract); Taylor 1946; Johnson 1972 (from memory); recomputed"
+)
 
 
 def _plastic(hardening: float, kind: str = "isotropic") -> dict:
-    law = {"kind": "elastic_plastic", "yield_stress": YIELD, "hardening_modulus": hardening, "hardening": kind}
+    law = {
+        "kind": "elastic_plastic",
+        "yield_stress": YIELD,
+        "hardening_modulus": hardening,
+        "hardening": kind,
+    }
     return material("yielding", law=law)
 
 
@@ -37,13 +44,16 @@ def _on_wall(speed: float, elements: int) -> Result:
     model="elastic, perfectly plastic rod of 1 m against a rigid wall; element length given: 20 mm (1 mm at 10 m/s)",
     title="Perfectly plastic rod on a wall",
     source="recomputed: each passage 2 L/c takes 2 v_y off the velocity, plastic rate at the wall V_k - v_y",
-    formula="shortening = sum of (V_k - v_y) 2 L/c, rebound what is left under v_y; check (V^2 - V_out^2)/2 = s_y delta/(rho L)",
+    formula=(
+        "shortening = sum of (V_k - v_y) 2 L/c, rebound what is left under v_y; check (V^2 - V_out^2)/2 "
+        "= s_y delta/(rho L)"
+    ),
     tolerance=1e-2,
     share_of="the value; for the rebound, V",
     why=(
-        "Required: 1 %. A perfectly plastic zone has no length of its own: all of it falls into the one element at the wall, "
-        "which elements of the default length would be pressed flat by. So the mesh is part of the model here, and the "
-        "element length is given."
+        "Required: 1 %. A perfectly plastic zone has no length of its own: all of it falls into the one "
+        "element at the wall, which elements of the default length would be pressed flat by. So the mesh "
+        "is part of the model here, and the element length is given."
     ),
 )
 def on_wall() -> Iterator[Compared]:
@@ -57,12 +67,14 @@ def on_wall() -> Iterator[Compared]:
         last = run.gauges["front"].time[np.flatnonzero(np.abs(force) > 1e3)[-1] + 1]
         yield value(f"permanent shortening, V = {speed:g} m/s", shortening, plastic, "m")
         yield value(f"rebound, V = {speed:g} m/s", -rebound, mean, "m/s", speed)
-        yield value(f"time of contact, V = {speed:g} m/s (off in steps)", contact, last, "s", run.time_step, 2.01)
+        yield value(
+            f"time of contact, V = {speed:g} m/s (off in steps)", contact, last, "s", run.time_step, 2.01
+        )
         lost = DENSITY * AREA * (speed**2 - rebound**2) / 2
         yield value(f"energy lost, V = {speed:g} m/s", lost, run.ledger.final["plastic"], "J")
 
 
-def _pushed(speed: float, dx: float = 0.0025) -> Result:
+def _pushed(speed: float, dx: float = 0.00125) -> Result:
     """Bilinear rod of 1 m, its end held at a constant velocity: gauges every 5 mm near the end, until 0.18 ms."""
     places = {f"{x:.4f}": x for x in np.arange(0.005, 0.0451, 0.005)}
     far = {f"{x:.4f}": x for x in np.arange(0.3, 0.81, 0.1)}
@@ -80,13 +92,16 @@ def _pushed(speed: float, dx: float = 0.0025) -> Result:
     model="bilinear rod, E_t = E/100, its end pushed at a constant velocity",
     title="Elastic precursor and plastic plateau",
     source=KARMAN,
-    formula="v_y = s_y/(rho c) = 8.875 m/s; s = s_y + rho c_p (V - v_y), e = s_y/E + (V - v_y)/c_p, c_p = sqrt(E_t/rho) = 500 m/s",
-    tolerance=3e-3,
-    why=(
-        "Plateau stress 0.3 %; the strain 3 %, as the overshoot behind an undamped step is locked in as plastic strain and "
-        "goes slowly with the mesh; precursor 0.01 %, elastic states 1e-9."
+    formula=(
+        "v_y = s_y/(rho c) = 8.875 m/s; s = s_y + rho c_p (V - v_y), e = s_y/E + (V - v_y)/c_p, c_p = "
+        "sqrt(E_t/rho) = 500 m/s"
     ),
-    over={f"{v:g} m/s": v for v in (5.0, 10.0, 15.0, 20.0, 30.0)},
+    tolerance=2e-3,
+    why=(
+        "Plateau stress 0.2 %; the strain 3 %, as the overshoot behind an undamped step is locked in as "
+        "plastic strain and goes slowly with the mesh; precursor 0.01 %, elastic states 1e-9."
+    ),
+    over={f"{v:g} m/s": v for v in (5.0, 8.8, 8.875, 10.0, 15.0, 20.0, 30.0)},
 )
 def plateau(speed: float) -> Iterator[Compared]:
     run = _pushed(speed)
@@ -137,7 +152,9 @@ def caught() -> Iterator[Compared | Picture]:
     left = np.array([-(g.strain[-1] - g.stress[-1] / E) for g in run.gauges.values()])
     beyond = np.interp(0.5, (left[:-1] / kept)[::-1], places[:-1][::-1]) if left[0] > kept / 2 else np.nan
     meet = C * 500 * 0.001 / (C - 500)
-    yield value("plastic strain before the meeting", kept, float(np.mean(left[places < 0.5])), "", tolerance=0.03)
+    yield value(
+        "plastic strain before the meeting", kept, float(np.mean(left[places < 0.5])), "", tolerance=0.03
+    )
     yield value("place where it falls", meet, float(beyond), "m", tolerance=0.05)
     exact: Array = np.where(places < meet, kept, np.nan)
     yield picture(

@@ -35,6 +35,7 @@ TOPICS: dict[str, str] = {
     "stability": "Stability of the time step",
     "energy": "Energy",
     "wave_relations": "Waves read from one gauge",
+    "stress_limits": "Limits of driving stress",
 }
 """Modules of this folder that hold checks, in the order of the page, with their headings."""
 
@@ -105,7 +106,13 @@ def history(what: str, expected: Array, found: Array, unit: str = "", scale: flo
 
 
 def picture(
-    title: str, x_label: str, y_label: str, x: Array, expected: Array, found: Array, found_x: Array | None = None
+    title: str,
+    x_label: str,
+    y_label: str,
+    x: Array,
+    expected: Array,
+    found: Array,
+    found_x: Array | None = None,
 ) -> Picture:
     """A figure of the closed form and what the solver gave, over the same `x` unless told otherwise."""
     at = np.asarray(x if found_x is None else found_x)
@@ -184,7 +191,9 @@ def check(
 ) -> Callable[[Callable[..., Iterator[Compared | Picture]]], Callable[..., Iterator[Compared | Picture]]]:
     """Register a function as a check; `over` makes one check of each of its entries, handed in as the argument."""
 
-    def register(work: Callable[..., Iterator[Compared | Picture]]) -> Callable[..., Iterator[Compared | Picture]]:
+    def register(
+        work: Callable[..., Iterator[Compared | Picture]],
+    ) -> Callable[..., Iterator[Compared | Picture]]:
         topic = work.__module__.rpartition(".")[2]
         one = partial(Check, topic=topic, model=model, source=source, formula=formula, tolerance=tolerance)
         for label, argument in (over or {"": None}).items():

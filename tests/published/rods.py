@@ -13,7 +13,20 @@ from solver.model.load import GRAVITY
 
 Array = NDArray[np.float64]
 
-__all__ = ["AREA", "C", "DENSITY", "E", "GRAVITY", "LENGTH", "Z", "case_of", "material", "part", "pulse", "solved"]
+__all__ = [
+    "AREA",
+    "DENSITY",
+    "GRAVITY",
+    "LENGTH",
+    "C",
+    "E",
+    "Z",
+    "case_of",
+    "material",
+    "part",
+    "pulse",
+    "solved",
+]
 
 #: The round-number rod of most checks: c = 5000 m/s, Z = EA/c = 400 000 N s/m, L/c = 2 ms, 800 kg.
 E, DENSITY, AREA, LENGTH = 200e9, 8000.0, 0.01, 10.0
@@ -26,12 +39,14 @@ def material(name: str, young_modulus: float = E, density: float = DENSITY, **mo
 
 
 def part(length: float = LENGTH, area: float = AREA, of: str = "round", **more: Any) -> dict[str, Any]:
-    """A segment of `length` (m), `area` (m2) and the material named `of`; perimeter 1 m, so that areas of shaft are lengths."""
+    """A segment of `length` (m), `area` (m2) and the material named `of`; its perimeter is 1 m."""
     section = more.pop("section", {"shape": "custom", "area": float(area), "perimeter": 1.0})
     return {"length": float(length), "material": of, "section": section, **more}
 
 
-def pulse(shape: str, duration: float, peak: float = 1e6, quantity: str = "force", **more: Any) -> dict[str, Any]:
+def pulse(
+    shape: str, duration: float, peak: float = 1e6, quantity: str = "force", **more: Any
+) -> dict[str, Any]:
     """A pulse at the struck end."""
     return {"kind": "pulse", "quantity": quantity, "shape": shape, "peak": peak, "duration": duration, **more}
 
@@ -53,7 +68,7 @@ def case_of(
     lateral_inertia: bool = False,
     **run: Any,
 ) -> Case:
-    """A case, built through the same door as a project file. `dx` is the element length (m), chosen by the program if None."""
+    """A case, built through the same door as a project file; `dx` is the element length (m), None the program's own."""
     blow = dict(load)
     if "segments" in blow:
         blow["segments"] = _named(blow["segments"])

@@ -17,9 +17,17 @@ F0, LINE_MASS = 1e6, DENSITY * AREA
 LONG = 12.0
 
 
-def _layer(resistance: float, quake: float, damping: float = 0.0, law: str = "viscous", thickness: float = 50.0) -> dict:
+def _layer(
+    resistance: float, quake: float, damping: float = 0.0, law: str = "viscous", thickness: float = 50.0
+) -> dict:
     """One layer from the struck end on; the perimeter is 1 m, so that `resistance` is also that per metre."""
-    one = {"name": "soil", "thickness": thickness, "unit_resistance": resistance, "quake": quake, "damping": damping}
+    one = {
+        "name": "soil",
+        "thickness": thickness,
+        "unit_resistance": resistance,
+        "quake": quake,
+        "damping": damping,
+    }
     return {"surface": 0.0, "layers": [{**one, "damping_law": law}]}
 
 
@@ -47,8 +55,8 @@ def _step(ground: dict | None = None, quantity: str = "force", dashpots: float =
 
 
 FIRST_ORDER = (
-    "The half element at the struck end hands its share of the ground to the next node, an error of first order in the element "
-    "(20 mm): 0.05 %; the rest is of second order."
+    "The half element at the struck end hands its share of the ground to the next node, an error of "
+    "first order in the element (20 mm): 0.05 %; the rest is of second order."
 )
 
 
@@ -56,7 +64,10 @@ FIRST_ORDER = (
     model="springs and dashpots spread along the rod, step force of 1 MN; b = 16 000 N s/m2, k = 2e7 N/m2",
     title="Linear shaft: velocity of the struck end",
     source=TELEGRAPH,
-    formula="v = (F0/Z) exp(-a t) J0(t sqrt(w0^2 - a^2)); dashpots only exp(-a t) I0(a t); springs only J0(w0 t); a = b/(2 rho A)",
+    formula=(
+        "v = (F0/Z) exp(-a t) J0(t sqrt(w0^2 - a^2)); dashpots only exp(-a t) I0(a t); springs only "
+        "J0(w0 t); a = b/(2 rho A)"
+    ),
     tolerance=5e-4,
     share_of="F0/Z",
     why=FIRST_ORDER,
@@ -64,7 +75,11 @@ FIRST_ORDER = (
 def linear() -> Iterator[Compared | Picture]:
     b, k = 16000.0, 2e7
     # strengths never reached: what is left is J Ru = b and Ru/Q = k
-    runs = {"dashpots": _step(dashpots=b), "springs": _step(_layer(k, 1.0)), "both": _step(_layer(k, 1.0, b / k))}
+    runs = {
+        "dashpots": _step(dashpots=b),
+        "springs": _step(_layer(k, 1.0)),
+        "both": _step(_layer(k, 1.0, b / k)),
+    }
     at = np.array([0.5, 1.0, 2.0]) * 1e-3
     printed = {
         "dashpots": (2.3795601, 2.2677523, 2.0673464),
@@ -154,7 +169,10 @@ def driven() -> Iterator[Compared]:
     formula="v(0, t) = (F0 - q c t/2)/Z; F - Z v = q c t/2, the resistance down to x = c t/2",
     tolerance=1e-6,
     share_of="F0",
-    why="at Courant number 1 each node passes its own resistance on exactly; the quake of 1 micrometre takes what is left",
+    why=(
+        "at Courant number 1 each node passes its own resistance on exactly; the quake of 1 micrometre "
+        "takes what is left"
+    ),
 )
 def rigid_plastic() -> Iterator[Compared]:
     q = 50e3
@@ -170,7 +188,9 @@ def rigid_plastic() -> Iterator[Compared]:
         yield value(f"F - Z v after {ms:g} ms, printed", passed * 1e3, -2 * gauge.up_wave[n], "N", F0)
 
 
-def _at_a_point(resistance: float, damping: float, quake: float = 1e-6, law: str = "smith") -> tuple[Array, Result]:
+def _at_a_point(
+    resistance: float, damping: float, quake: float = 1e-6, law: str = "smith"
+) -> tuple[Array, Result]:
     """A step of 1 MN passes resistance on one node at 5 m; gauges 0.2 m before and behind it, time from its arrival."""
     unit = resistance / 0.02
     layer = {"name": "thin", "thickness": 0.02, "unit_resistance": unit, "quake": quake, "damping": damping}
@@ -222,7 +242,13 @@ def other_laws() -> Iterator[Compared]:
     v = (2 * F0 - ru) / (2 * Z + damping * ru)
     yield value("viscous: velocity there", v, run.gauges["there"].velocity[n], "m/s", F0 / Z)
     yield value("viscous: up-wave", (ru + damping * ru * v) / 2, -run.gauges["before"].up_wave[n], "N", F0)
-    layer = {"name": "thin", "thickness": 0.02, "unit_resistance": ru / 0.02, "quake": 1e-6, "damping": damping}
+    layer = {
+        "name": "thin",
+        "thickness": 0.02,
+        "unit_resistance": ru / 0.02,
+        "quake": 1e-6,
+        "damping": damping,
+    }
     run = solved(
         pulse("rectangle", 1.0),
         part(10.0),
@@ -246,10 +272,19 @@ def other_laws() -> Iterator[Compared]:
     formula="F - Z v at the head = resistance down to x = c t/2 = q1 x^2/(2 L)",
     tolerance=1e-5,
     share_of="F0",
-    why="at Courant number 1 each node passes its own resistance on exactly; the quake of 1 micrometre takes what is left",
+    why=(
+        "at Courant number 1 each node passes its own resistance on exactly; the quake of 1 micrometre "
+        "takes what is left"
+    ),
 )
 def growing() -> Iterator[Compared]:
-    layer = {"name": "soil", "thickness": LONG, "unit_resistance": 0.0, "unit_resistance_bottom": 48e3, "quake": 1e-6}
+    layer = {
+        "name": "soil",
+        "thickness": LONG,
+        "unit_resistance": 0.0,
+        "unit_resistance_bottom": 48e3,
+        "quake": 1e-6,
+    }
     total = {"resistance": 24e3 * LONG, "distribution": "growing", "quake": 1e-6, "damping": 0.0}
     for name, ground in (
         ("layer", {"surface": 0.0, "layers": [{**layer, "damping": 0.0}]}),

@@ -20,7 +20,10 @@ def _toe(resistance: float, damping: float = 0.0, quake: float = QUAKE) -> dict:
 
 
 @check(
-    model="rigid mass of 2000 kg at 2 m/s on a toe of 500 kN, quake 2.54 mm: a short rod 5000 times as stiff as the toe",
+    model=(
+        "rigid mass of 2000 kg at 2 m/s on a toe of 500 kN, quake 2.54 mm: a short rod 5000 times as "
+        "stiff as the toe"
+    ),
     title="A single mass on Smith's toe",
     source=SMITH,
     formula=(
@@ -62,9 +65,14 @@ def single_mass(damping: float) -> Iterator[Compared]:
 
 
 def _step_onto_toe(damping: float) -> tuple:
-    """A step of 1 MN from a long rod onto a toe of 1.2 MN: times after arrival, displacement and velocity of the toe."""
+    """A step of 1 MN runs onto a toe of 1.2 MN: times after arrival, displacement and velocity of the toe."""
     run = solved(
-        pulse("rectangle", 1.0), part(11.0), gauges={"toe": 11.0}, duration=0.0059, dx=0.0275, **_toe(1.2e6, damping)
+        pulse("rectangle", 1.0),
+        part(11.0),
+        gauges={"toe": 11.0},
+        duration=0.0059,
+        dx=0.0275,
+        **_toe(1.2e6, damping),
     )
     gauge = run.gauges["toe"]
     return gauge.time - 11.0 / C, gauge.displacement, gauge.velocity
@@ -116,7 +124,10 @@ def step_wave(damping: float) -> Iterator[Compared | Picture]:
 
 
 @check(
-    model="mass of 1000 kg at 5 m/s on a long rod (its wave as a decaying force), rigid-plastic toe: a quake of 1 micrometre",
+    model=(
+        "mass of 1000 kg at 5 m/s on a long rod (its wave as a decaying force), rigid-plastic toe: a "
+        "quake of 1 micrometre"
+    ),
     title="Set of one pass on a rigid-plastic toe",
     source="recomputed: incident wave Z V0 exp(-t/tau), v = (2 W - Ru)/Z until it stops",
     formula="stops at tau ln(2 Z V0/Ru); set = tau (2 V0 - (Ru/Z)(1 + ln(2 Z V0/Ru)))",
@@ -151,8 +162,12 @@ def _incident(t: float, mass: float, stiffness: float, impedance: float, speed: 
 @check(
     model="ram 4000 kg, drop 1 m, cushion 1e9 N/m, member Z = 1e6 N s/m of 40 m, Smith's toe",
     title="Set of a blow through a cushion",
-    source=SMITH + "; one equation of the toe integrated here at a tolerance of 1e-11, and the recomputed table",
-    formula="Z u' + R(u, u') = 2 W(t), W = Z V t* exp(-t*/2); largest movement where it stops, set = that less the quake",
+    source=SMITH
+    + "; one equation of the toe integrated here at a tolerance of 1e-11, and the recomputed table",
+    formula=(
+        "Z u' + R(u, u') = 2 W(t), W = Z V t* exp(-t*/2); largest movement where it stops, set = that "
+        "less the quake"
+    ),
     tolerance=5e-4,
     why="required are 0.5 %; 400 elements attain 1e-5",
     over={"Ru 1000, J 0": (1000, 0.0), "Ru 2000, J 0.492": (2000, 0.49212598), "Ru 3000, J 0": (3000, 0.0)},
@@ -183,7 +198,9 @@ def set_of_blow(which: tuple[float, float]) -> Iterator[Compared]:
     stop = np.interp(0.0, -gauge.velocity[top - 3 : top + 4], gauge.time[top - 3 : top + 4]) - 0.008
     yield value("largest movement of the toe, printed", reached * 1e-3, gauge.displacement[top], "m")
     yield value("its time after arrival", time * 1e-3, stop, "s", tolerance=2e-3)
-    yield value("set = largest movement - quake", reached * 1e-3 - QUAKE, run.max_toe_displacement - QUAKE, "m")
+    yield value(
+        "set = largest movement - quake", reached * 1e-3 - QUAKE, run.max_toe_displacement - QUAKE, "m"
+    )
 
     def rate(t: float, u: np.ndarray) -> list[float]:
         static = min(k * u[0], ru)

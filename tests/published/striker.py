@@ -1,4 +1,4 @@
-"""A rod strikes a rod: contact by impulse is exact at Courant number 1, and so is the time at which the striker leaves."""
+"""A rod strikes a rod: contact by impulse is exact at Courant number 1, and so is when the striker leaves."""
 
 from __future__ import annotations
 
@@ -12,14 +12,19 @@ from tests.published.rods import AREA, C, Z, material, part, solved
 
 KOLSKY = "Kolsky 1949, Proc. Phys. Soc. B 62; Kolsky 1963; Graff 1975 (from memory); recomputed"
 EXACT = (
-    "Required are 1e-8 of the first step; contact by impulse needs no stiffness and is exact at Courant number 1. The time of "
-    "an event is that of the first step without contact, one step late."
+    "Required are 1e-8 of the first step; contact by impulse needs no stiffness and is exact at "
+    "Courant number 1. The time of an event is that of the first step without contact, one step late."
 )
 SPEED, LONG = 10.0, 0.5
 
 
 def _shot(
-    *striker: dict, member: tuple[dict, ...] = (), dx: float = 0.01, far_end: str = "matched", end: float = 0.0021, **more
+    *striker: dict,
+    member: tuple[dict, ...] = (),
+    dx: float = 0.01,
+    far_end: str = "matched",
+    end: float = 0.0021,
+    **more,
 ) -> Result:
     load = {"kind": "striker", "velocity": SPEED, "segments": list(striker)}
     places = {
@@ -28,7 +33,9 @@ def _shot(
         "face": {"position": sum(s["length"] for s in striker), "on": "striker"},
         "head": 0.0,
     }
-    return solved(load, *(member or (part(4.0),)), far_end=far_end, gauges=places, duration=end, dx=dx, **more)
+    return solved(
+        load, *(member or (part(4.0),)), far_end=far_end, gauges=places, duration=end, dx=dx, **more
+    )
 
 
 def _left(run: Result) -> float:
@@ -57,7 +64,9 @@ def equal() -> Iterator[Compared]:
     yield value("impulse at 2 m", 400.0, -np.sum(bar.force) * dt, "N s")
     yield value("striker leaves (off in steps)", 0.0002, _left(run), "s", dt, 1.01)
     for place in ("rear", "face"):
-        yield value(f"velocity of the striker's {place} after", 0.0, run.gauges[place].velocity[-1], "m/s", SPEED)
+        yield value(
+            f"velocity of the striker's {place} after", 0.0, run.gauges[place].velocity[-1], "m/s", SPEED
+        )
 
 
 @check(
@@ -109,7 +118,9 @@ def lighter() -> Iterator[Compared]:
     inside, after = (t > 1.5 * dt) & (t < 0.0002 - 1.5 * dt), t > 0.0002 + 1.5 * dt
     yield history("force", np.full(inside.sum(), Z * SPEED / 3), -bar.force[inside], "N")
     yield history("force after", np.zeros(after.sum()), bar.force[after], "N", Z * SPEED / 3)
-    yield value("velocity of the striker's face after", -SPEED / 3, run.gauges["face"].velocity[-1], "m/s", SPEED)
+    yield value(
+        "velocity of the striker's face after", -SPEED / 3, run.gauges["face"].velocity[-1], "m/s", SPEED
+    )
     yield value("striker leaves (off in steps)", 0.0002, _left(run), "s", dt, 1.01)
     yield value("impulse", Z * SPEED / 3 * 0.0002, -np.sum(bar.force) * dt, "N s")
 
@@ -120,7 +131,8 @@ def lighter() -> Iterator[Compared]:
     source=KOLSKY + "; printed numbers",
     formula="F = V Zs Zb/(Zs + Zb) = 1027.0231 kN for 0.1963961 ms, v = 2.5295061 m/s, striker after -4.9409877 m/s",
     tolerance=1e-7,
-    why="Printed with eight digits; the member's length is chosen so that both travel times fit one step. " + EXACT,
+    why="Printed with eight digits; the member's length is chosen so that both travel times fit one step. "
+    + EXACT,
 )
 def aluminium_on_steel() -> Iterator[Compared]:
     steel, light = material("steel", 210e9, 7850), material("aluminium", 70e9, 2700)
@@ -142,7 +154,10 @@ def aluminium_on_steel() -> Iterator[Compared]:
 @check(
     model="striker of three segments of different section on a stepped rod",
     title="A striker of several segments",
-    source="first contact: momentum at the interface; later: the total impulse is the striker's momentum lost; recomputed",
+    source=(
+        "first contact: momentum at the interface; later: the total impulse is the striker's momentum "
+        "lost; recomputed"
+    ),
     formula="first step Zb V Zs/(Zs + Zb) with Zs of the segment that touches; impulse = momentum lost",
     tolerance=1e-8,
     why=EXACT,
@@ -197,7 +212,9 @@ def three_rods() -> Iterator[Compared]:
     yield value("mean velocity of the last rod", SPEED, speed, "m/s")
     yield value("striker after", 0.0, run.gauges["striker"].velocity[-1], "m/s", SPEED)
     for end in ("head", "end"):
-        yield value(f"middle rod, {end}, after", 0.0, run.gauges[f"middle rod, {end}"].velocity[-1], "m/s", SPEED)
+        yield value(
+            f"middle rod, {end}, after", 0.0, run.gauges[f"middle rod, {end}"].velocity[-1], "m/s", SPEED
+        )
     yield value("the last rod leaves (off in steps)", (2.0 + 2 * LONG) / C, parted, "s", dt, 1.01)
 
 

@@ -37,8 +37,8 @@ def _sine(omega: float, end: float) -> dict:
     formula="k = w sqrt(rho/(E + i w eta)); amplitude falls as exp(Im k x), phase runs at w/Re k",
     tolerance=5e-3,
     why=(
-        "The viscous part acts with the strain rate of the last half step, so that errors are of first order in dt: up to 0.3 % "
-        "of the attenuation and 0.15 % of the speed with elements of 10 mm."
+        "The viscous part acts with the strain rate of the last half step, so that errors are of first "
+        "order in dt: up to 0.3 % of the attenuation and 0.15 % of the speed with elements of 10 mm."
     ),
     over={"w eta/E = 0.02": 0.02, "w eta/E = 0.1": 0.1, "w eta/E = 0.3": 0.3},
 )
@@ -81,7 +81,15 @@ def attenuation(loss: float) -> Iterator[Compared]:
     why="printed with six to eight digits",
 )
 def step_bound() -> Iterator[Compared]:
-    table = {0.0: 1.0, 0.01: 0.99005, 0.05: 0.95124922, 0.1: 0.90498756, 0.2: 0.8198039, 0.5: 0.61803399, 1.0: 0.41421356}
+    table = {
+        0.0: 1.0,
+        0.01: 0.99005,
+        0.05: 0.95124922,
+        0.1: 0.90498756,
+        0.2: 0.8198039,
+        0.5: 0.61803399,
+        1.0: 0.41421356,
+    }
     for xi, wanted in (table | {2.0: 0.23606798}).items():
         # one element of 1 m: dx/c = 0.2 ms, eta/E = xi dx/c
         law = {"kind": "viscoelastic", "viscosity": max(xi, 1e-12) * E / C}
@@ -94,7 +102,10 @@ def step_bound() -> Iterator[Compared]:
     model="free Kelvin-Voigt rod, run at and above its bound",
     title="The bound is sharp",
     source="the same bound; a step 2 % longer makes the highest mode grow",
-    formula="xi = eta c/(E dx); at dt = (dx/c)(sqrt(1 + xi^2) - xi) the run stays bounded, at 1.02 of it it is refused",
+    formula=(
+        "xi = eta c/(E dx); at dt = (dx/c)(sqrt(1 + xi^2) - xi) the run stays bounded, at 1.02 of it it "
+        "is refused"
+    ),
     tolerance=1e-9,
     share_of="1",
     why="a closed form of the mesh, and two runs that either are accepted or refused",
