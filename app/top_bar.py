@@ -12,6 +12,7 @@ from app.case_row import CaseRow
 from app.document import Document
 from app.look import icon
 from app.look.spacing import GAP, ROW, SPACE
+from app.sight import Sight
 from app.solving import Solution
 from app.state_view import StateView
 from app.units import SYSTEMS, units_of
@@ -69,6 +70,7 @@ class TopBar(QWidget):
         actions: list[QAction],
         menus: QWidget | None = None,
         parent: QWidget | None = None,
+        sight: Sight | None = None,
     ) -> None:
         super().__init__(parent)
         self._document = document
@@ -87,7 +89,7 @@ class TopBar(QWidget):
             button.setProperty("role", "quiet")
             button.setDefaultAction(action)
             row.addWidget(button)
-        self.cases = CaseRow(document, self)
+        self.cases = CaseRow(document, self, sight)
         row.addWidget(self.cases, 1)
         self.state = StateView(document, solution, self)
         row.addWidget(self.state)
@@ -107,6 +109,12 @@ class TopBar(QWidget):
         row.addWidget(self.units)
         document.changed.connect(self._follow)
         self._follow()
+
+    def add_switch(self, switch: QWidget) -> None:
+        """Put the switch of the workspaces before the cases."""
+        row = self.layout()
+        assert isinstance(row, QHBoxLayout)
+        row.insertWidget(row.indexOf(self.cases), switch)
 
     def _follow(self) -> None:
         units = units_of(self._document.project)

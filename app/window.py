@@ -24,11 +24,13 @@ from app.notes_panel import NotesPanel
 from app.notices import Notices
 from app.panels_told import ABOUT, LIMITS, tell
 from app.recovery import Autosave
+from app.set_sheet.workspace import SetSheet
 from app.settings import Settings
 from app.sight import Sight
 from app.solving import Solution, Solve
 from app.standing import standing_of
 from app.top_bar import TopBar
+from app.workspaces import Workspaces
 from solver import Project
 
 SMALLEST = (1000, 640)
@@ -79,13 +81,20 @@ class Window(QMainWindow):
         self.split.setStretchFactor(1, 1)
         self.split.setCollapsible(1, False)
         self.split.setSizes([OUTLINE_WIDTH, USUAL[0] - OUTLINE_WIDTH])
+        self.set_sheet = SetSheet(self.document, self)
+        self.workspaces = Workspaces(self)
+        self.workspaces.add("Bench", "Describe one blow and watch its waves", self.split)
+        self.workspaces.add(
+            "Set sheet", "What set to stop at, with what drop, and whether it survives", self.set_sheet
+        )
+        self.top_bar.add_switch(self.workspaces.switch)
         middle = QWidget(self)
         column = QVBoxLayout(middle)
         column.setContentsMargins(SPACE, 0, SPACE, SPACE)
         column.setSpacing(GAP)
         for widget in (self.top_bar, self.notices, self.notes):
             column.addWidget(widget)
-        column.addWidget(self.split, 1)
+        column.addWidget(self.workspaces, 1)
         column.addWidget(self.tables)
         self.setCentralWidget(middle)
         self.setMinimumSize(*SMALLEST)
@@ -97,6 +106,7 @@ class Window(QMainWindow):
         self.solution.changed.connect(self._follow)
         self.notes.closed.connect(self.menus.notes.trigger)
         self.menus.notes.triggered.connect(lambda on: self.settings.set_flag("notes", on))
+        self.set_sheet.saving.told.connect(lambda text, state: self.notices.show_notice("sheet", text, state))
         self.autosave.failed.connect(lambda text: self.notices.show_notice("autosave", text, "over"))
         self.watch = FileWatch(self.document, self)
         self.watch.found.connect(self.files.tell_of_change)
@@ -241,7 +251,8 @@ class Window(QMainWindow):
         self.settings.set_layout("split", self.split.saveState())
         self.settings.set_shares("bench", self.bench.shares())
         self.settings.save()
-        self.ended_in_time = self.solution.close()
+        sheet_ended = self.set_sheet.close_down()
+        self.ended_in_time = self.solution.close() and sheet_ended
         event.accept()
 
     ended_in_time = True

@@ -71,5 +71,5 @@ class Saving(QObject):
         except OSError as error:
             self.told.emit(f"{path} cannot be written: {error.strerror or error}.", "over")
             return False
-        self.told.emit(f"Saved in {path}.", "within")
+        self.told.emit(f"Saved in {path}.", "tell")
         return True

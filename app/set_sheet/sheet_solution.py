@@ -19,7 +19,9 @@ from solver.studies.unknowns import usual_unknowns
 
 State = Literal["waiting", "solving", "answering", "fresh", "stopped", "refused"]
 #: Changes that follow each other faster than this are solved once, ms.
-SETTLE = 120
+SETTLE = 60
+#: Points that arrive are shown together so often, ms: painting each one would take the time of the window.
+SHOWN_EVERY = 80
 
 
 @dataclass(frozen=True)
@@ -59,6 +61,10 @@ class SheetSolution(QObject):
         self._timer.setSingleShot(True)
         self._timer.setInterval(SETTLE)
         self._timer.timeout.connect(self._begin)
+        self._showing = QTimer(self)
+        self._showing.setSingleShot(True)
+        self._showing.setInterval(SHOWN_EVERY)
+        self._showing.timeout.connect(self.changed)
         document.changed.connect(self._follow)
 
     @property
@@ -103,6 +109,7 @@ class SheetSolution(QObject):
     def close(self) -> bool:
         """End all work within a second."""
         self._timer.stop()
+        self._showing.stop()
         first, second = self._stream.close(0.5), self._samples.close(0.3)
         return first and second
 
@@ -182,6 +189,9 @@ class SheetSolution(QObject):
                 self.bands = None
         elif isinstance(found, Cell):
             self.cells[found.line, found.row] = found
+            if not self._showing.isActive():
+                self._showing.start()
+            return
         elif isinstance(found, Answers):
             self.answers = found
         elif found == "cells":
