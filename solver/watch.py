@@ -17,7 +17,7 @@ if TYPE_CHECKING:
     from solver.marching import March
 
 #: Share of the energy that a wave of two elements' length may grow to; short pulses alone stay below it.
-GROWN = 0.2
+GROWN = 0.05
 #: Least exponent N of the power law: below it |v|^N is a jump that no step resolves.
 LEAST_EXPONENT = 0.05
 #: Share of the largest energy that may fail to close before a run is refused.

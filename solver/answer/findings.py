@@ -11,7 +11,7 @@ from typing import Literal
 import numpy as np
 
 from solver.answer.cautions import Caution, cautions_of
-from solver.answer.result import Array, EventKind, Result
+from solver.answer.result import Array, EventKind, Result, first_of_largest
 from solver.model.derived import impact_energy, ram_mass, segment_mass
 from solver.model.load import GRAVITY, Drop, Striker
 from solver.model.project import Case
@@ -187,7 +187,8 @@ def _stress(result: Result, sign: Literal["compression", "tension"]) -> StressFi
 
     shares = values / np.array([np.inf if v is None else v for v in limits])[owner]
     limited = any(v is not None for v in limits)
-    return StressFinding(sign, at(int(np.argmax(values))), at(int(np.argmax(shares))) if limited else None)
+    worst = at(first_of_largest(shares, times)) if limited else None
+    return StressFinding(sign, at(first_of_largest(values, times)), worst)
 
 
 def _set(result: Result) -> SetFinding | None:

@@ -19,6 +19,7 @@ from solver.answer.result import (
     Residual,
     Result,
     Single,
+    first_of_largest,
     read_only,
 )
 from solver.answer.told import warnings_of
@@ -163,10 +164,7 @@ def _ledger(blow: Blow, residual: float) -> Ledger:
 
 
 def _peak(values: Array, position: Array, time: Array) -> Peak:
-    equal = np.flatnonzero(
-        values >= values.max() * (1 - 1e-9) if values.max() > 0 else values == values.max()
-    )
-    i = int(equal[np.argmin(time[equal])])
+    i = first_of_largest(values, time)
     return Peak(max(float(values[i]), 0.0), float(position[i]), float(time[i]))
 
 

@@ -56,6 +56,13 @@ class Peak:
     time: float
 
 
+def first_of_largest(values: Array, times: Array) -> int:
+    """Index of the largest value; of values that differ by rounding only, the one that stood first."""
+    largest = values.max()
+    equal = np.flatnonzero(values >= largest * (1 - 1e-9) if largest > 0 else values == largest)
+    return int(equal[np.argmin(times[equal])])
+
+
 @dataclass(frozen=True, eq=False)
 class GaugeRecord:
     """Everything at one gauge, at every step. All arrays have shape (n,), n the number of recorded times.

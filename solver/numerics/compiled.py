@@ -62,7 +62,7 @@ def kernel(function: Any) -> Any:
 
 def part_of_step(function: Any) -> Any:
     """Compile a function into whatever calls it: handing over groups of arrays at every step would cost too much."""
-    return njit(
+    return njit(  # type: ignore[call-overload]
         nogil=True,
         cache=_folder is not None,
         error_model="numpy",

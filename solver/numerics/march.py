@@ -131,7 +131,7 @@ def toe_node(bounds, push, u, v, w, sums, dt, note, step):
     """Resistance under the toe."""
     last = len(u) - 1
     free, half = 0.5 * (v[last] + w[last]), 0.5 * push[last]
-    before = bounds.toe_state[3]
+    pressed = bounds.toe_state[4 if bounds.toe_par[0] != toe.RADIATION else 1] > 0.0
     if bounds.toe_par[0] == toe.RADIATION:
         mean, slip, damped = toe.radiating(bounds.toe_par, bounds.toe_state, free, half, u[last], v[last], dt)
         w[last] = 2.0 * mean - v[last]
@@ -142,7 +142,7 @@ def toe_node(bounds, push, u, v, w, sums, dt, note, step):
         sums[IMPACT] += exchanged
     sums[SLIP] += slip
     sums[DAMPING] += damped
-    if before > 0.0 and bounds.toe_state[3] == 0.0:
+    if pressed and bounds.toe_state[3] == 0.0:
         remember(note, EVENT_TOE_LIFT, last, step)
 
 
