@@ -55,9 +55,9 @@ def kernel(function: Any) -> Any:
     Kernels allocate nothing and keep nothing, so they do without counting references, which at every slice and every
     field of a group of arrays would cost more than the arithmetic.
     """
-    return njit(nogil=True, cache=_folder is not None, error_model="numpy", fastmath=LOOSE_SUMS, _nrt=False)(
-        function
-    )
+    return njit(  # type: ignore[call-overload]
+        nogil=True, cache=_folder is not None, error_model="numpy", fastmath=LOOSE_SUMS, _nrt=False
+    )(function)
 
 
 def part_of_step(function: Any) -> Any:
