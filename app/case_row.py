@@ -19,9 +19,11 @@ from PySide6.QtWidgets import (
 )
 
 from app.document import Document
+from app.laid_over import fill_over_menu
 from app.look import icon
 from app.look.spacing import GAP, ROW
 from app.provenance import rearrange
+from app.sight import Sight
 from app.tree import copied
 
 Tree = dict[str, Any]
@@ -30,9 +32,9 @@ Tree = dict[str, Any]
 class CaseRow(QWidget):
     """A button for each case, a list of all where they do not fit, and "+" for a copy of the one looked at."""
 
-    def __init__(self, document: Document, parent: QWidget | None = None) -> None:
+    def __init__(self, document: Document, parent: QWidget | None = None, sight: Sight | None = None) -> None:
         super().__init__(parent)
-        self._document = document
+        self._document, self._sight = document, sight
         self._names: list[str] = []
         self._buttons: list[QPushButton] = []
         self._scroll = QScrollArea(self)
@@ -133,12 +135,12 @@ class CaseRow(QWidget):
         self._document.choose_case(index)
         menu = QMenu(self)
         menu.setAttribute(Qt.WidgetAttribute.WA_DeleteOnClose)
-        fill_case_menu(menu, self._document, self)
+        fill_case_menu(menu, self._document, self, self._sight)
         menu.popup(self._buttons[index].mapToGlobal(at))
 
 
-def fill_case_menu(menu: QMenu, document: Document, parent: QWidget) -> None:
-    """What can be done with the case that is looked at."""
+def fill_case_menu(menu: QMenu, document: Document, parent: QWidget, sight: Sight | None = None) -> None:
+    """What can be done with the case that is looked at; with a `sight`, other cases can be laid over it."""
     count, index = len(document.project.cases), document.case_index
     menu.addAction("Rename…", lambda: _ask_name(document, parent))
     menu.addAction(icon("duplicate"), "Add a copy", lambda: add_case(document))
@@ -146,6 +148,9 @@ def fill_case_menu(menu: QMenu, document: Document, parent: QWidget) -> None:
     menu.addAction("Move to the left", lambda: move_case(document, -1)).setEnabled(index > 0)
     menu.addAction("Move to the right", lambda: move_case(document, 1)).setEnabled(index < count - 1)
     menu.addSeparator()
+    if sight is not None and count > 1:
+        fill_over_menu(menu.addMenu("Lay over this case"), document, sight)
+        menu.addSeparator()
     menu.addAction("Remove", lambda: remove_case(document)).setEnabled(count > 1)
 
 

@@ -107,7 +107,7 @@ class Menus:
 
         def fill() -> None:
             menu.clear()
-            fill_case_menu(menu, document, window)
+            fill_case_menu(menu, document, window, window.sight)
             menu.addSeparator()
             menu.addAction(following)
             menu.addAction(previous)

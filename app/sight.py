@@ -21,12 +21,22 @@ class _Looked:
     strips: tuple[str, ...] = ("force_pair", "velocity")
     time_range: tuple[float, float] | None = None
     distance_range: tuple[float, float] | None = None
+    pinned: tuple[float, float | None] | None = None
+    arrivals: bool | None = None
+    pointed: tuple[int, ...] = ()
+    peaks: tuple[str, ...] = ()
+    laid_over: tuple[str, ...] = ()
+    locked_in: bool = False
 
 
 class Sight(QObject):
     """`time` (s) and `place` (m, `None` = nowhere) of the cursor; `selection`, a pointer relative to the case such as
     "member/segments/1", "gauges/0", "ground", "far_end", "load" or "run"; `quantity` of all pictures; `strips` shown,
-    of `STRIPS`; shared zoom as `time_range` (s) and `distance_range` (m), `None` = all."""
+    of `STRIPS`; shared zoom as `time_range` (s) and `distance_range` (m), `None` = all.
+
+    `pinned`: the second cursor (s, m). `arrivals`: whether predicted arrivals are drawn, `None` = where they are few;
+    `pointed`: numbers of those that the mouse is on. `peaks`: curves whose peaks are labelled, as "strip/curve".
+    `laid_over`: names of the cases drawn over this one. `locked_in`: the profile shows the force left by the blows."""
 
     changed = Signal()
 
@@ -68,3 +78,27 @@ class Sight(QObject):
     @property
     def distance_range(self) -> tuple[float, float] | None:
         return self._looked.distance_range
+
+    @property
+    def pinned(self) -> tuple[float, float | None] | None:
+        return self._looked.pinned
+
+    @property
+    def arrivals(self) -> bool | None:
+        return self._looked.arrivals
+
+    @property
+    def pointed(self) -> tuple[int, ...]:
+        return self._looked.pointed
+
+    @property
+    def peaks(self) -> tuple[str, ...]:
+        return self._looked.peaks
+
+    @property
+    def laid_over(self) -> tuple[str, ...]:
+        return self._looked.laid_over
+
+    @property
+    def locked_in(self) -> bool:
+        return self._looked.locked_in

@@ -67,7 +67,7 @@ class Window(QMainWindow):
             self.setMenuBar(self.menus.bar)
         icons = list(self.menus.icons.values())
         self.top_bar = TopBar(
-            self.document, self.solution, icons, None if own_menus else self.menus.bar, self
+            self.document, self.solution, icons, None if own_menus else self.menus.bar, self, self.sight
         )
         self.notes = NotesPanel(self.document, self)
         self.outline = Outline(self.document, self.sight, self.solution, self)
@@ -83,7 +83,13 @@ class Window(QMainWindow):
         self.split.setSizes([OUTLINE_WIDTH, USUAL[0] - OUTLINE_WIDTH])
         self.set_sheet = SetSheet(self.document, self)
         self.workspaces = Workspaces(self)
-        self.workspaces.add("Bench", "Describe one blow and watch its waves", self.split)
+        bench_and_tables = QWidget(self)
+        below = QVBoxLayout(bench_and_tables)
+        below.setContentsMargins(0, 0, 0, 0)
+        below.setSpacing(GAP)
+        below.addWidget(self.split, 1)
+        below.addWidget(self.tables)
+        self.workspaces.add("Bench", "Describe one blow and watch its waves", bench_and_tables)
         self.workspaces.add(
             "Set sheet", "What set to stop at, with what drop, and whether it survives", self.set_sheet
         )
@@ -95,7 +101,6 @@ class Window(QMainWindow):
         for widget in (self.top_bar, self.notices, self.notes):
             column.addWidget(widget)
         column.addWidget(self.workspaces, 1)
-        column.addWidget(self.tables)
         self.setCentralWidget(middle)
         self.setMinimumSize(*SMALLEST)
         self._draw_icons()
@@ -123,6 +128,8 @@ class Window(QMainWindow):
         if shares is not None and [len(row) for row in shares] == [len(row) for row in self.bench.shares()]:
             self.bench.set_shares(*shares)
         self.begin_looking()
+        if settings.flag("arrivals_chosen"):
+            self.sight.set(arrivals=settings.flag("arrivals"))
         self.menus.outline.setChecked(settings.flag("outline", usual=True))
         self.outline.setVisible(self.menus.outline.isChecked())
         for action in self.menus.looks.actions():
@@ -192,6 +199,7 @@ class Window(QMainWindow):
     def begin_looking(self) -> None:
         """Look at a project anew: from its beginning, at all of it, with its notes where it has any."""
         self.sight.set(time=0.0, place=None, selection="load", time_range=None, distance_range=None)
+        self.sight.set(pinned=None, pointed=(), peaks=(), laid_over=(), locked_in=False)
         self._unseen = True
         self.menus.notes.setChecked(
             bool(self.document.project.notes) and self.settings.flag("notes", usual=True)
@@ -250,9 +258,13 @@ class Window(QMainWindow):
         self.settings.set_layout("window", self.saveGeometry())
         self.settings.set_layout("split", self.split.saveState())
         self.settings.set_shares("bench", self.bench.shares())
+        if self.sight.arrivals is not None:
+            self.settings.set_flag("arrivals_chosen", True)
+            self.settings.set_flag("arrivals", self.sight.arrivals)
         self.settings.save()
         sheet_ended = self.set_sheet.close_down()
-        self.ended_in_time = self.solution.close() and sheet_ended
+        bench_ended = self.bench.close_work()
+        self.ended_in_time = self.solution.close() and sheet_ended and bench_ended
         event.accept()
 
     ended_in_time = True

@@ -21,6 +21,7 @@ from app.bench.strips import Strips
 from app.bench.time_bar import TimeBar
 from app.bench.xt_diagram import XtDiagram
 from app.document import Document
+from app.laid_over import LaidOver
 from app.look.palette import palette
 from app.sight import Sight
 from app.solving import Solution
@@ -37,9 +38,10 @@ class Bench(QWidget):
         super().__init__(parent)
         self.member = MemberDrawing(document, sight, solution)
         self.xt = XtDiagram(document, sight, solution)
-        self.profile = Profile(document, sight, solution)
+        self.laid_over = LaidOver(document, sight, self)
+        self.profile = Profile(document, sight, solution, laid_over=self.laid_over)
         self.at_cursor = AtCursor(document, sight, solution)
-        self.strips = Strips(document, sight, solution)
+        self.strips = Strips(document, sight, solution, laid_over=self.laid_over)
         self.findings = FindingsPanel(document, sight, solution)
         self.time_bar = TimeBar(document, sight, solution)
         self._sight = sight
@@ -73,8 +75,14 @@ class Bench(QWidget):
             self.time_bar.step(way * (10 if event.modifiers() & Qt.KeyboardModifier.ShiftModifier else 1))
         elif event.key() == Qt.Key.Key_Home:
             self._show_all()
+        elif event.key() == Qt.Key.Key_Escape and self._sight.pinned is not None:
+            self._sight.set(pinned=None)
         else:
             super().keyPressEvent(event)
+
+    def close_work(self) -> bool:
+        """End what goes on beside the window; False where it would not end in time."""
+        return self.laid_over.close()
 
     def _show_all(self) -> None:
         self._sight.set(time_range=None, distance_range=None)

@@ -33,13 +33,13 @@ class Wanted:
 
 
 def place_labels(
-    curves: Sequence[Drawn], wanted: Sequence[Wanted], plot: QRectF, height: float
+    curves: Sequence[Drawn], wanted: Sequence[Wanted], plot: QRectF, height: float, off: Sequence[QRectF] = ()
 ) -> list[QRectF | None]:
-    """A box for each name; `None` where none is free. In turn each takes the cheapest place left: off all curves,
-    where its own lies away from the others."""
+    """A box for each name; `None` where none is free. In turn each takes the cheapest place left: off all curves and
+    off the boxes `off`, where its own curve lies away from the others."""
     grid = np.arange(plot.left() + 4, plot.right() - 4, STEP)
     rows = [_row(c, grid) for c in curves]
-    taken: list[QRectF] = []
+    taken: list[QRectF] = list(off)
     placed: list[QRectF | None] = []
     for name in wanted:
         box = _cheapest(rows, name, grid, plot, height, taken)

@@ -40,6 +40,8 @@ ZOOM_PER_NOTCH = 0.8
 #: Smallest share of the whole that can be zoomed to.
 DEEPEST = 1e-3
 GREYED = 0.3
+#: Pixels within which a press and its release are a click.
+CLICK = 4
 
 
 @dataclass(frozen=True)
@@ -66,6 +68,8 @@ class Picture(QWidget):
         self._shown_moving: tuple[Any, ...] | None = None
         self._shown_region = QRegion()
         self._dragged_from: QPointF | None = None
+        self._pressed_at = QPointF()
+        self.menu_at = QPointF()
         self.setAttribute(Qt.WidgetAttribute.WA_OpaquePaintEvent)
         self.setFocusPolicy(Qt.FocusPolicy.ClickFocus)
         for source in (document, sight, solution):
@@ -85,7 +89,7 @@ class Picture(QWidget):
 
     def moving_key(self) -> tuple[Any, ...]:
         """Everything that the moving layer depends on."""
-        return (self.sight.time, self.sight.place)
+        return (self.sight.time, self.sight.place, self.sight.pinned)
 
     def draw_resting(self, painter: QPainter) -> None:
         raise NotImplementedError
@@ -99,6 +103,14 @@ class Picture(QWidget):
 
     def point_at(self, position: QPointF) -> None:
         """The mouse was pressed or dragged there: the cursor goes along."""
+        self.sight.set(**self._moment_and_place(position))
+
+    def pin_at(self, position: QPointF) -> None:
+        """Put the second cursor there: at the time and the place, or what the picture has of the two."""
+        there = self._moment_and_place(position)
+        self.sight.set(pinned=(there.get("time", self.sight.time), there.get("place")))
+
+    def _moment_and_place(self, position: QPointF) -> dict[str, float]:
         what: dict[str, float] = {}
         plot = self.plot()
         if self.has_time:
@@ -107,7 +119,7 @@ class Picture(QWidget):
             case_end = self.document.case.member.length
             place = self.distance_axis().value(position.y())
             what["place"] = min(max(place, whole_distance(self.document.case)[0]), case_end)
-        self.sight.set(**what)
+        return what
 
     def table(self) -> Table | None:
         """What the picture shows, as numbers; `None` where there are none."""
@@ -208,7 +220,7 @@ class Picture(QWidget):
 
     def mousePressEvent(self, event: QMouseEvent) -> None:
         if self._moves(event):
-            self._dragged_from = event.position()
+            self._dragged_from = self._pressed_at = event.position()
         elif event.button() == Qt.MouseButton.LeftButton:
             self.point_at(event.position())
 
@@ -220,6 +232,10 @@ class Picture(QWidget):
             self.point_at(event.position())
 
     def mouseReleaseEvent(self, event: QMouseEvent) -> None:
+        moved = (event.position() - self._pressed_at).manhattanLength()
+        pins = event.button() == Qt.MouseButton.LeftButton and (self.has_time or self.has_distance)
+        if self._dragged_from is not None and pins and moved < CLICK:
+            self.pin_at(event.position())
         self._dragged_from = None
 
     def mouseDoubleClickEvent(self, event: QMouseEvent) -> None:
@@ -255,8 +271,12 @@ class Picture(QWidget):
 
     def contextMenuEvent(self, event: QContextMenuEvent) -> None:
         menu = QMenu(self)
+        self.menu_at = QPointF(event.pos())
         self.fill_menu(menu)
         if self.has_time or self.has_distance:
+            menu.addAction("Pin a second cursor here (Shift+click)", lambda: self.pin_at(self.menu_at))
+            remove = menu.addAction("Remove the second cursor (Esc)", lambda: self.sight.set(pinned=None))
+            remove.setEnabled(self.sight.pinned is not None)
             menu.addAction("Show all of both axes", self.show_all)
             menu.addSeparator()
         add_export_actions(menu, self)

@@ -10,11 +10,11 @@ from typing import Any
 
 import numpy as np
 from PySide6.QtCore import QLineF, QPointF, QRectF, Qt
-from PySide6.QtGui import QColor, QFontMetricsF, QPainter, QPainterPath, QRegion
+from PySide6.QtGui import QColor, QFontMetricsF, QPainter, QPainterPath, QPen, QRegion
 
 from app.bench.axes import Axis, Margins, margins_of
 from app.bench.axis_drawing import distance_ticks, horizontal_ticks, in_units
-from app.bench.cursor import draw_place
+from app.bench.cursor import draw_pinned_place, draw_place
 from app.bench.curves import polygon
 from app.bench.field_values import (
     DIMENSIONS,
@@ -27,10 +27,13 @@ from app.bench.field_values import (
 )
 from app.bench.glyphs import pen
 from app.bench.lettering import CENTRE, put, put_on
+from app.bench.line_styles import over_pen
 from app.bench.picture import Picture, Table
+from app.laid_over import LaidOver, Over
 from app.look.fonts import font
 from app.look.palette import palette
 from app.units import rounded
+from solver import Result
 
 #: A limit this many times larger than all stresses is told in words at the edge, so that it does not flatten them.
 FAR_LIMIT = 2.5
@@ -40,9 +43,12 @@ TITLE = "Along the member"
 class Profile(Picture):
     has_distance = True
 
-    def __init__(self, *args: Any, **named: Any) -> None:
+    def __init__(self, *args: Any, laid_over: LaidOver | None = None, **named: Any) -> None:
         super().__init__(*args, **named)
         self.setAccessibleName("Along the member")
+        self._laid_over = laid_over
+        if laid_over is not None:
+            laid_over.changed.connect(self.look_again)
 
     def margins(self) -> Margins:
         shared = margins_of(self.font())
@@ -52,7 +58,10 @@ class Profile(Picture):
         return (*super().described(), tuple(limit_lines(self.case)))
 
     def resting_key(self) -> tuple[Any, ...]:
-        return (self.sight.quantity,)
+        return (self.sight.quantity, self._others())
+
+    def _others(self) -> tuple[Over, ...]:
+        return () if self._laid_over is None else self._laid_over.results()
 
     # Values in the units and sign of the screen -----------------------------------------------------------------
 
@@ -64,8 +73,13 @@ class Profile(Picture):
         """Largest magnitude of the whole run in SI, by which the unit is chosen."""
         if self.result is None:
             return 0.0
-        found = extremes_of(self.result, self.sight.quantity)
-        return float(max(np.max(-found.lowest, initial=0), np.max(found.highest, initial=0)))
+        found = [extremes_of(result, self.sight.quantity) for result in self._all_results()]
+        return float(max(max(np.max(-f.lowest, initial=0), np.max(f.highest, initial=0)) for f in found))
+
+    def _all_results(self) -> list[Result]:
+        """The one looked at, and those laid over it."""
+        over = [one.result for one in self._others() if one.result is not None]
+        return over if self.result is None else [self.result, *over]
 
     def factor(self) -> float:
         """From SI with tension positive to what is shown."""
@@ -96,8 +110,8 @@ class Profile(Picture):
         reach = self._largest() * abs(factor)
         near = [abs(v * factor) for _, _, _, v in self.limits() if abs(v * factor) <= FAR_LIMIT * reach]
         values = [v * factor for _, _, _, v in self.limits() if abs(v * factor) in near]
-        if self.result is not None:
-            found = extremes_of(self.result, self.sight.quantity)
+        for result in self._all_results() if self.result is not None else ():
+            found = extremes_of(result, self.sight.quantity)
             for ends in (found.lowest, found.highest):
                 if len(ends):
                     values += [float(np.min(ends)) * factor, float(np.max(ends)) * factor]
@@ -117,6 +131,7 @@ class Profile(Picture):
             painter.drawLine(QLineF(values.at(0), plot.top(), values.at(0), plot.bottom()))
         if self.result is not None:
             self._draw_extremes(painter, plot, distance, values)
+            self._draw_others(painter, plot, distance, values)
             self._draw_limits(painter, plot, distance, values)
         painter.restore()
         least = -sum(s.length for s in self.case.ram_segments)
@@ -133,6 +148,8 @@ class Profile(Picture):
         painter.save()
         painter.setClipRect(plot)
         draw_place(painter, plot, distance, self.sight.place)
+        if self.sight.pinned is not None:
+            draw_pinned_place(painter, plot, distance, self.sight.pinned[1])
         if self.result is not None and len(self.result.fields.position):
             self._draw_now(painter, distance)
         painter.restore()
@@ -155,48 +172,65 @@ class Profile(Picture):
         put(painter, x, 0.5 * self.margins().header, words, palette().soft_ink)
 
     def _draw_now(self, painter: QPainter, distance: Axis) -> None:
+        """The quantity at the cursor's time; thinner at the pinned cursor's; and that of the cases laid over it."""
         assert self.result is not None
-        values, factor = self.value_axis(), self.factor()
-        now = along_member(self.result, self.sight.quantity, self.sight.time) * factor
-        painter.setPen(pen(palette().ink, 1.8))
+        values, ink = self.value_axis(), palette().ink
+        pinned = self.sight.pinned
+        if pinned is not None:
+            self._draw_at(painter, self.result, pinned[0], values, distance, pen(palette().soft_ink, 1.0))
+        for one in self._others():
+            assert one.result is not None
+            self._draw_at(painter, one.result, self.sight.time, values, distance, over_pen(ink, one.number))
+        self._draw_at(painter, self.result, self.sight.time, values, distance, pen(ink, 1.8))
+
+    def _draw_at(
+        self, painter: QPainter, result: Result, time: float, values: Axis, distance: Axis, with_pen: QPen
+    ) -> None:
+        now = along_member(result, self.sight.quantity, time) * self.factor()
+        painter.setPen(with_pen)
         painter.setBrush(Qt.BrushStyle.NoBrush)
-        path = QPainterPath()
-        for start, end in self._runs():
-            x, y = self._row(now[start:end], start, end, values, distance)
-            path.addPolygon(polygon(x, y))
+        path, fields = QPainterPath(), result.fields
+        for start, end in _runs(result):
+            # one run of columns without a joint in it, carried on level to both of its faces
+            places = np.concatenate(([fields.edges[start]], fields.position[start:end], [fields.edges[end]]))
+            ends = np.concatenate(([now[start]], now[start:end], [now[end - 1]]))
+            path.addPolygon(polygon(np.asarray(values.pixel(ends)), np.asarray(distance.pixel(places))))
         painter.drawPath(path)
 
-    def _row(
-        self, shown: np.ndarray, start: int, end: int, values: Axis, distance: Axis
-    ) -> tuple[np.ndarray, np.ndarray]:
-        """Pixels of one run of columns without a joint in it, carried on level to both of its faces."""
-        assert self.result is not None
-        fields = self.result.fields
-        places = np.concatenate(([fields.edges[start]], fields.position[start:end], [fields.edges[end]]))
-        ends = np.concatenate(([shown[0]], shown, [shown[-1]]))
-        return np.asarray(values.pixel(ends)), np.asarray(distance.pixel(places))
+    def _draw_others(self, painter: QPainter, plot: QRectF, distance: Axis, values: Axis) -> None:
+        """Extremes of the cases laid over this one, each with its name where its larger curve leaves room."""
+        factor, colours, metrics = self.factor(), palette(), QFontMetricsF(painter.font())
+        hues = self._hues()
+        for one in self._others():
+            assert one.result is not None
+            found = extremes_of(one.result, self.sight.quantity)
+            y = np.asarray(distance.pixel(found.position))
+            for ends, hue in ((found.lowest, hues[0]), (found.highest, hues[1])):
+                painter.setPen(over_pen(hue, one.number))
+                painter.drawPolyline(polygon(np.asarray(values.pixel(ends * factor)), y))
+            compressive = -np.min(found.lowest, initial=0) >= np.max(found.highest, initial=0)
+            ends = found.lowest if compressive else found.highest
+            row = int((0.3 + 0.17 * one.number) * (len(ends) - 1))
+            name = metrics.elidedText(one.name, Qt.TextElideMode.ElideRight, plot.width() * 0.6)
+            width = metrics.horizontalAdvance(name)
+            x = values.at(float(ends[row]) * factor) - width / 2
+            x = min(max(x, plot.left() + 8), plot.right() - width - 2)
+            put_on(painter, x, float(y[row]), name, hues[0 if compressive else 1], colours.paper)
 
-    def _runs(self) -> Iterator[tuple[int, int]]:
-        """Ranges of columns that belong to one segment: stress jumps from one to the next."""
-        assert self.result is not None
-        case, fields = self.result.case, self.result.fields
-        joints = np.cumsum([0.0] + [s.length for s in case.member.segments])
-        above = -np.cumsum([0.0] + [s.length for s in reversed(case.ram_segments)])[::-1]
-        bounds = np.unique(np.concatenate((above, joints)))
-        cuts = np.searchsorted(fields.position, bounds)
-        for start, end in pairwise(cuts):
-            if end > start:
-                yield int(start), int(end)
+    def _hues(self) -> tuple[str, str]:
+        """Colours of the lowest and of the highest."""
+        colours = palette()
+        if self.sight.quantity in ("stress", "force"):
+            return colours.compression, colours.tension
+        return colours.backward, colours.forward
 
     def _draw_extremes(self, painter: QPainter, plot: QRectF, distance: Axis, values: Axis) -> None:
-        colours, factor, result = palette(), self.factor(), self.result
+        factor, result = self.factor(), self.result
         assert result is not None
         found = extremes_of(result, self.sight.quantity)
         if not len(found.position):
             return
-        stressed = self.sight.quantity in ("stress", "force")
-        low_hue = colours.compression if stressed else colours.backward
-        high_hue = colours.tension if stressed else colours.forward
+        low_hue, high_hue = self._hues()
         for ends, hue, pick in ((found.lowest, low_hue, np.argmin), (found.highest, high_hue, np.argmax)):
             x, y = np.asarray(values.pixel(ends * factor)), np.asarray(distance.pixel(found.position))
             painter.setPen(pen(hue, 1.2))
@@ -216,9 +250,7 @@ class Profile(Picture):
         factor = self.factor()
         compressive = -np.min(found.lowest) >= np.max(found.highest)
         ends = found.lowest if compressive else found.highest
-        stressed = self.sight.quantity in ("stress", "force")
-        colours = palette()
-        hues = (colours.compression, colours.tension) if stressed else (colours.backward, colours.forward)
+        colours, hues = palette(), self._hues()
         half = QFontMetricsF(painter.font()).horizontalAdvance("whole run") / 2 + 2
         x = min(max(values.at(float(ends[-1]) * factor), plot.left() + half), plot.right() - half)
         line = QFontMetricsF(painter.font()).height()
@@ -291,3 +323,15 @@ class Profile(Picture):
                 now,
             ],
         )
+
+
+def _runs(result: Result) -> Iterator[tuple[int, int]]:
+    """Ranges of columns that belong to one segment: stress jumps from one to the next."""
+    case, fields = result.case, result.fields
+    joints = np.cumsum([0.0] + [s.length for s in case.member.segments])
+    above = -np.cumsum([0.0] + [s.length for s in reversed(case.ram_segments)])[::-1]
+    bounds = np.unique(np.concatenate((above, joints)))
+    cuts = np.searchsorted(fields.position, bounds)
+    for start, end in pairwise(cuts):
+        if end > start:
+            yield int(start), int(end)

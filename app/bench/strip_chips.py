@@ -11,6 +11,7 @@ from PySide6.QtWidgets import QMenu, QToolButton, QWidget
 from app.bench.axes import margins_of
 from app.bench.strip_contents import CHIPS, OF_ONE_GAUGE, gauge_of
 from app.document import Document
+from app.laid_over import fill_over_menu
 from app.look.spacing import GAP, SPACE
 from app.sight import STRIPS, Sight
 
@@ -24,6 +25,10 @@ class StripChips(QWidget):
         self._document, self._sight = document, sight
         self._chips = {kind: self._make_chip(kind) for kind in STRIPS}
         self._gauge_menus = {kind: self._make_gauge_menu(kind) for kind in OF_ONE_GAUGE}
+        self._over = self._make_menu("Lay over ▾", "Draw other cases of the project over this one.")
+        self._over.setAccessibleName("Lay other cases over this one")
+        over_menu = self._over.menu()
+        over_menu.aboutToShow.connect(lambda: fill_over_menu(over_menu, document, sight))
         self._more = self._make_menu("More ▾", "Strips for which there is no room in this row.")
         menu = self._more.menu()
         menu.aboutToShow.connect(lambda: self._fill_more(menu))
@@ -111,6 +116,10 @@ class StripChips(QWidget):
             if chip.text() != text:
                 chip.setText(text)
             chip.setChecked(shown)
+        count = sum(c.name in self._sight.laid_over for c in self._document.project.cases if c is not case)
+        over = f"Laid over: {count} ▾" if count else "Lay over ▾"
+        if self._over.text() != over:
+            self._over.setText(over)
         self._lay_out()
 
     def _lay_out(self) -> None:
@@ -123,9 +132,13 @@ class StripChips(QWidget):
                 arrow = self._gauge_menus[kind]
                 parts[kind].append((arrow, arrow.fontMetrics().horizontalAdvance("▾") + 2 * GAP))
         widths = {kind: sum(w + GAP for _, w in row) for kind, row in parts.items()}
+        cases = len(self._document.project.cases) > 1
+        end = self._over.sizeHint().width() + GAP if cases else 0
+        self._over.setVisible(cases)
+        self._over.setGeometry(self.width() - end, GAP, max(end - GAP, 0), self._more.sizeHint().height())
         gutter, whole = int(margins_of(self.font()).gutter), sum(widths.values())
-        left = max(min(gutter, self.width() - whole), SPACE)
-        room = self.width() - left
+        left = max(min(gutter, self.width() - end - whole), SPACE)
+        room = self.width() - end - left
         fitting = set(parts)
         if whole > room:
             room -= self._more.sizeHint().width() + GAP

@@ -2,13 +2,14 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable
-from dataclasses import dataclass, field
+from collections.abc import Callable, Sequence
+from dataclasses import dataclass, field, replace
 
 import numpy as np
 from numpy.typing import NDArray
 from PySide6.QtCore import Qt
 
+from app.laid_over import Over
 from app.look.palette import palette
 from app.units import Units
 from solver import Case, GaugeRecord, Result
@@ -45,7 +46,7 @@ SMALL_SHARE = 0.01
 @dataclass(frozen=True, eq=False)
 class Curve:
     """One curve: its name as it stands on it, its colour, times (s) and values (SI), both of shape (n,). `faint`: the
-    second of a pair, drawn lighter than the first."""
+    second of a pair, drawn lighter than the first; `over`: number of the case laid over that it belongs to."""
 
     name: str
     hue: str
@@ -53,6 +54,7 @@ class Curve:
     values: Array
     style: Qt.PenStyle = SOLID
     faint: bool = False
+    over: int | None = None
 
 
 @dataclass(frozen=True, eq=False)
@@ -76,6 +78,18 @@ def content_of(kind: str, result: Result, gauge: str | None, units: Units) -> Co
             return Content("force", ())
         return (_force_pair if kind == "force_pair" else _waves)(result, record, units)
     return MAKERS[kind](result, units)
+
+
+def content_over(own: Content, strip: str, over: Sequence[Over], units: Units) -> Content:
+    """The curves of a strip with those of the cases laid over it, of the gauges with the same names."""
+    kind, curves = strip.partition(":")[0], list(own.curves)
+    for one in over:
+        if one.result is None:
+            continue
+        for curve in content_of(kind, one.result, gauge_of(strip, one.result.case), units).curves:
+            named = f"{curve.name} · {one.name}"
+            curves.append(replace(curve, name=named, over=one.number))
+    return replace(own, curves=tuple(curves))
 
 
 def gauge_of(strip: str, case: Case) -> str | None:
@@ -113,12 +127,19 @@ def _force_pair(result: Result, gauge: GaugeRecord, units: Units) -> Content:
         there_and_back = 2 * time_to_far_end(result.case, gauge.position)
         first = _first_arrival(gauge, there_and_back)
         if there_and_back > 0:
-            count = int((gauge.time[-1] - first) / there_and_back) + 1
-            ticks = tuple(first + n * there_and_back for n in range(min(count, 50)))
+            ticks = _returns(first, there_and_back, 2 * time_to_far_end(result.case, 0.0), gauge.time[-1])
     named = ""
     if len(ticks) > 1:
         named = f"2L/c = {units.show(ticks[1] - ticks[0], 'time')}, gauge to far end and back"
     return Content("force", curves, "gap = 2 × up-going wave", ticks, named)
+
+
+def _returns(first: float, there_and_back: float, period: float, last: float) -> tuple[float, ...]:
+    """The blow at the gauge (s), and when it comes back from the far end: once, and then, sent down again by the
+    struck end, after each further period 2L/c of the whole member."""
+    count = int(max(last - first - there_and_back, 0.0) / period) + 1
+    back = (first + there_and_back + n * period for n in range(min(count, 50)))
+    return (first, *(moment for moment in back if moment <= last))
 
 
 def _first_arrival(gauge: GaugeRecord, there_and_back: float) -> float:

@@ -9,6 +9,7 @@ from PySide6.QtWidgets import QWidget
 from app.bench.strip import Strip
 from app.bench.strip_chips import StripChips
 from app.document import Document
+from app.laid_over import LaidOver
 from app.sight import Sight
 from app.solving import Solution
 
@@ -18,10 +19,15 @@ LEAST = QSize(280, 150)
 
 class Strips(QWidget):
     def __init__(
-        self, document: Document, sight: Sight, solution: Solution, parent: QWidget | None = None
+        self,
+        document: Document,
+        sight: Sight,
+        solution: Solution,
+        parent: QWidget | None = None,
+        laid_over: LaidOver | None = None,
     ) -> None:
         super().__init__(parent)
-        self._ring = document, sight, solution
+        self._ring, self._laid_over = (document, sight, solution), laid_over
         self._sight = sight
         self._shown: list[Strip] = []
         self.chips = StripChips(document, sight, self)
@@ -45,7 +51,7 @@ class Strips(QWidget):
         for strip in self._shown:
             strip.hide()
             strip.deleteLater()
-        self._shown = [Strip(name, name == wanted[-1], *self._ring, self) for name in wanted]
+        self._shown = [Strip(name, name == wanted[-1], *self._ring, self, self._laid_over) for name in wanted]
         self._lay_out()
         for strip in self._shown:
             strip.show()

@@ -6,14 +6,23 @@ from functools import partial
 from typing import Any
 
 import numpy as np
-from PySide6.QtCore import QLineF, QRectF, Qt
-from PySide6.QtGui import QFontMetricsF, QImage, QPainter, QRegion, QResizeEvent
+from PySide6.QtCore import QEvent, QLineF, QPointF, QRectF, Qt
+from PySide6.QtGui import QFontMetricsF, QImage, QMouseEvent, QPainter, QRegion, QResizeEvent
 from PySide6.QtWidgets import QMenu, QToolButton
 
+from app.bench.arrival_drawing import draw_lines, draw_pointed, lines_near, write_name
+from app.bench.arrival_lines import Line, all_named, arrivals_shown, lines_of
 from app.bench.axes import Axis
 from app.bench.axis_drawing import crisp, distance_ticks, horizontal_ticks, in_units
 from app.bench.colouring import columns_under, entries_of, image_of, scale_top, table_of
-from app.bench.cursor import draw_cursor, draw_place
+from app.bench.cursor import (
+    between,
+    draw_between,
+    draw_cursor,
+    draw_pinned_moment,
+    draw_pinned_place,
+    draw_place,
+)
 from app.bench.field_values import DIMENSIONS, field_of
 from app.bench.glyphs import pen
 from app.bench.lettering import RIGHT, put
@@ -35,6 +44,10 @@ ENDS = {
     "velocity": ("↑ to the struck end", "↓ to the far end"),
     "displacement": ("↑ to the struck end", "↓ to the far end"),
 }
+ARRIVALS_TIP = (
+    "Where the front of the blow is expected, from lengths and wave speeds alone: straight lines down the member and, "
+    "where it meets a step, a joint, the ground or the far end, back up. Point at a line to read its name."
+)
 
 
 class XtDiagram(Picture):
@@ -45,19 +58,36 @@ class XtDiagram(Picture):
         super().__init__(*args, **named)
         self.setAccessibleName("Through time and along the member")
         self.setCursor(Qt.CursorShape.CrossCursor)
-        self._choice = QToolButton(self)
-        self._choice.setText("▾")
-        self._choice.setProperty("role", "quiet")
-        self._choice.setStyleSheet("QToolButton { padding: 0px; min-height: 0px; }")
-        self._choice.setCursor(Qt.CursorShape.ArrowCursor)
-        self._choice.setAccessibleName("Quantity shown")
+        self.setMouseTracking(True)
+        self._mouse = QPointF()
+        self._choice = self._button("▾", "Quantity shown", "quiet")
         self._choice.setToolTip("What the x-t diagram, the member and the profile show.")
         self._choice.setPopupMode(QToolButton.ToolButtonPopupMode.InstantPopup)
         menu = QMenu(self._choice)
-        self.fill_menu(menu)
+        self._add_quantities(menu)
         self._choice.setMenu(menu)
+        self.switch = self._button("Arrivals", "Predicted arrivals", "chip")
+        self.switch.setCheckable(True)
+        self.switch.setToolTip(ARRIVALS_TIP)
+        self.switch.clicked.connect(lambda on: self.sight.set(arrivals=on))
+
+    def _button(self, text: str, name: str, role: str) -> QToolButton:
+        button = QToolButton(self)
+        button.setText(text)
+        button.setAccessibleName(name)
+        button.setProperty("role", role)
+        button.setStyleSheet("QToolButton { padding: 0px; min-height: 0px; }")
+        button.setCursor(Qt.CursorShape.ArrowCursor)
+        return button
 
     def fill_menu(self, menu: QMenu) -> None:
+        self._add_quantities(menu)
+        shown = menu.addAction("Predicted arrivals", lambda: self.sight.set(arrivals=not self.has_lines()))
+        shown.setCheckable(True)
+        shown.setChecked(self.has_lines())
+        menu.addSeparator()
+
+    def _add_quantities(self, menu: QMenu) -> None:
         for quantity, heading in HEADINGS.items():
             menu.addAction(heading, partial(self.sight.set, quantity=quantity))
         menu.addSeparator()
@@ -69,6 +99,26 @@ class XtDiagram(Picture):
     def resizeEvent(self, event: QResizeEvent) -> None:
         self._place_choice()
 
+    # Predicted arrivals -----------------------------------------------------------------------------------------
+
+    def has_lines(self) -> bool:
+        """Whether the predicted arrivals are drawn: as chosen, and where nothing is, unless they are many."""
+        return arrivals_shown(self.sight, self.result)
+
+    def lines(self) -> tuple[Line, ...]:
+        return lines_of(self.result) if self.has_lines() and self.result is not None else ()
+
+    def mouseMoveEvent(self, event: QMouseEvent) -> None:
+        super().mouseMoveEvent(event)
+        self._mouse = event.position()
+        if not event.buttons():
+            over = self.plot().contains(self._mouse)
+            near = lines_near(self.lines(), self._mouse, self.time_axis(), self.distance_axis())
+            self.sight.set(pointed=near if over else ())
+
+    def leaveEvent(self, event: QEvent) -> None:
+        self.sight.set(pointed=())
+
     def _heading_end(self) -> float:
         """Where the heading ends, in pixels."""
         width = QFontMetricsF(font("strong")).horizontalAdvance(HEADINGS[self.sight.quantity])
@@ -78,9 +128,20 @@ class XtDiagram(Picture):
         line = QFontMetricsF(self.font()).height()
         left, top = round(self._heading_end()) + 3, round(0.5 * self.margins().header - 0.6 * line)
         self._choice.setGeometry(left, top, round(1.2 * line), round(1.2 * line))
+        width = QFontMetricsF(self.font()).horizontalAdvance(self.switch.text()) + 12
+        self.switch.setGeometry(left + round(1.2 * line) + 6, top, round(width), round(1.25 * line))
+        self.switch.setChecked(self.has_lines())
+        self.switch.setVisible(self._least_scale() + self.switch.geometry().right() < self.plot().right())
+
+    def _least_scale(self) -> float:
+        """Pixels that the scale needs with numbers alone."""
+        return QFontMetricsF(self.font()).horizontalAdvance("− 0000   0000 MPa") + 60
 
     def resting_key(self) -> tuple[Any, ...]:
-        return (self.sight.quantity,)
+        return (self.sight.quantity, self.has_lines())
+
+    def moving_key(self) -> tuple[Any, ...]:
+        return (*super().moving_key(), self.sight.pointed, self._mouse if self.sight.pointed else None)
 
     def draw_resting(self, painter: QPainter) -> None:
         plot, distance, time = self.plot(), self.distance_axis(), self.time_axis()
@@ -92,6 +153,10 @@ class XtDiagram(Picture):
             if distance.low < place < distance.high:
                 painter.drawLine(QLineF(plot.left(), distance.at(place), plot.right(), distance.at(place)))
         self._draw_gauge_lines(painter, plot, distance)
+        painter.save()
+        painter.setClipRect(plot)
+        draw_lines(painter, self.lines(), time, distance)
+        painter.restore()
         least = -sum(s.length for s in self.case.ram_segments)
         metres = float(self.units.number(1.0, "length"))
         distance_ticks(painter, in_units(distance, metres), plot.left(), False, least * metres)
@@ -100,8 +165,10 @@ class XtDiagram(Picture):
         horizontal_ticks(painter, in_units(time, seconds), plot.bottom(), False)
 
     def moving_region(self) -> QRegion:
-        """The two lines of the cursor, each a few pixels wide."""
+        """The two lines of the cursor, each a few pixels wide; everywhere while there is more to show."""
         plot = self.plot().toAlignedRect()
+        if self.sight.pinned is not None or self.sight.pointed:
+            return QRegion(plot.adjusted(-2, -2, 2, 2))
         x = round(self.time_axis().at(self.sight.time))
         region = QRegion(x - 2, plot.top(), 5, plot.height() + 1)
         if self.sight.place is not None:
@@ -110,8 +177,42 @@ class XtDiagram(Picture):
         return region
 
     def draw_moving(self, painter: QPainter) -> None:
-        draw_cursor(painter, self.plot(), self.time_axis(), self.sight.time)
-        draw_place(painter, self.plot(), self.distance_axis(), self.sight.place)
+        plot, time, distance = self.plot(), self.time_axis(), self.distance_axis()
+        draw_cursor(painter, plot, time, self.sight.time)
+        draw_place(painter, plot, distance, self.sight.place)
+        painter.save()
+        painter.setClipRect(plot)
+        self._draw_pinned(painter, plot, time, distance)
+        self._draw_pointed(painter, plot, time, distance)
+        painter.restore()
+
+    def _draw_pinned(self, painter: QPainter, plot: QRectF, time: Axis, distance: Axis) -> None:
+        pinned, place = self.sight.pinned, self.sight.place
+        if pinned is None:
+            return
+        draw_pinned_moment(painter, plot, time, pinned[0])
+        draw_pinned_place(painter, plot, distance, pinned[1])
+        joined = place is not None and pinned[1] is not None
+        heights = (place, pinned[1]) if place is not None and pinned[1] is not None else (0.0, 0.0)
+        start, end = (
+            QPointF(time.at(t), distance.at(p))
+            for t, p in zip((self.sight.time, pinned[0]), heights, strict=True)
+        )
+        words = between(self.units, self.sight.time, place, pinned)
+        draw_between(painter, plot, start, end, words, joined)
+
+    def _draw_pointed(self, painter: QPainter, plot: QRectF, time: Axis, distance: Axis) -> None:
+        """The arrivals that are pointed at here, or by their ticks on a strip, with their names."""
+        lines = self.lines()
+        pointed = [lines[n] for n in self.sight.pointed if n < len(lines)]
+        for line in pointed:
+            draw_pointed(painter, line, time, distance)
+        if pointed:
+            back = pointed[0].legs[-1]
+            here = QPointF(time.at(float(back.times.mean())), distance.at(float(back.places.mean())))
+            here = self._mouse if self.underMouse() else here
+            words = all_named(lines, self.sight.pointed, self.units)
+            write_name(painter, here.x(), here.y() - 12, f"↑ {words}", plot)
 
     def table(self) -> Table | None:
         """Time down, a column for each stretch of member, in the units and sign of the screen."""
@@ -171,7 +272,8 @@ class XtDiagram(Picture):
         y = 0.5 * self.margins().header
         painter.setFont(font("strong"))
         put(painter, plot.left(), y, HEADINGS[quantity], colours.ink)
-        end = self._heading_end() + 6 + 1.2 * y
+        shown = not self.switch.isHidden()
+        end = float(self.switch.geometry().right()) if shown else self._heading_end() + 6 + 1.2 * y
         painter.setFont(self.font())
         metrics = QFontMetricsF(painter.font())
         word = self.greyed() or {"solving": "", "stopped": "stopped early"}.get(self.solution.state, "")
@@ -191,9 +293,9 @@ class XtDiagram(Picture):
         right_text = f"{number} {units.unit(dimension, top)} {names[1]}"
         x = plot.right()
         room = x - end - 16
-        bar = min(max(room * 0.22, 40.0), 8 * metrics.height())
-        wanted = metrics.horizontalAdvance(right_text + names[0] + number) + bar + 24
-        if wanted > room:  # a narrow picture keeps the numbers and lets the words go
+        left_over = room - metrics.horizontalAdvance(right_text + names[0] + number) - 24
+        bar = min(max(left_over, 40.0), 6 * metrics.height())
+        if left_over < bar:  # a narrow picture keeps the numbers and lets the words go
             names = ("−", "") if signed else ("↑", "↓")
             right_text = f"{number} {units.unit(dimension, top)} {names[1]}".strip()
         x = put(painter, x, y, right_text, colours.soft_ink, RIGHT).left() - 6
