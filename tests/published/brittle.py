@@ -129,7 +129,8 @@ def under_strength() -> Iterator[Compared | Picture]:
     yield value("cracks", 0.0, float(len(run.crack_openings)), "", 1.0)
     broken = _struck(40e6, TRIANGLE, end=0.0026)
     x = broken.fields.position
-    at = int(np.argmin(np.abs(broken.fields.time - 0.00216)))
+    # the first opening is at 2.08 ms
+    at = int(np.searchsorted(broken.fields.time, 0.002078)) - 1
     s = LENGTH - x
     t = broken.fields.time[at]
     wave = lambda lag: np.where((lag >= 0) & (lag <= SPAN), 100.0 * (1 - lag / SPAN), 0.0)  # noqa: E731

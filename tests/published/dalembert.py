@@ -21,12 +21,12 @@ MEANS = (
 )
 FORMULA = "u = f(x - ct) + g(x + ct) by images of the struck end and the far end; F = Z v in a wave that runs one way"
 SHAPES = {
-    "rectangle": {},
-    "half_sine": {},
-    "haversine": {},
-    "triangle": {},
-    "trapezoid": {"rise": 0.0003, "fall": 0.0002},
-    "decay": {},
+    "rectangle": ("rectangle", {}),
+    "half-sine": ("half_sine", {}),
+    "haversine": ("haversine", {}),
+    "triangle": ("triangle", {}),
+    "trapezoid": ("trapezoid", {"rise": 0.0003, "fall": 0.0002}),
+    "decay": ("decay", {}),
 }
 
 
@@ -59,11 +59,10 @@ def _compare(
     why=MEANS,
     over=SHAPES,
 )
-def every_shape(more: dict) -> Iterator[Compared]:
-    shape = next(name for name, given in SHAPES.items() if given is more)
-    load = pulse(shape, 0.001, **more)
+def every_shape(which: tuple[str, dict]) -> Iterator[Compared]:
+    shape, more = which
     form = impulse(shape, 0.001, **more)
-    yield from _compare(load, lambda t: 1e6 / Z * form(t), 1, 1, "free")
+    yield from _compare(pulse(shape, 0.001, **more), lambda t: 1e6 / Z * form(t), 1, 1, "free")
 
 
 @check(

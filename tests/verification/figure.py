@@ -10,12 +10,13 @@ from tests.published.registry import Array, Curve, Picture
 
 WIDTH, HEIGHT = 720, 320
 LEFT, RIGHT, TOP, BOTTOM = 84, 16, 30, 46
-#: Points that a line of this width can show.
-MOST = 1400
+#: Points that a line of this width can show; a closed form known at fewer than these is shown by marks.
+MOST, FEW = 1400, 25
 
 STYLES = {
     "theory": 'stroke-width="5" stroke-opacity="0.3"',
     "solver": 'stroke-width="1.3"',
+    "marks": 'stroke="none" fill="currentColor" fill-opacity="0.35"',
 }
 
 
@@ -91,6 +92,9 @@ def _line(curve: Curve, xs: tuple[float, float], ys: tuple[float, float]) -> str
     if len(x) > MOST:
         kept = np.linspace(0, len(x) - 1, MOST).round().astype(int)
         x, y = x[kept], y[kept]
+    if curve.style == "theory" and len(x) < FEW:
+        marks = zip(_across(x, xs), _down(y, ys), strict=True)
+        return "".join(f'<circle cx="{a:.1f}" cy="{b:.1f}" r="5" {STYLES["marks"]}/>' for a, b in marks)
     points = " ".join(f"{a:.1f},{b:.1f}" for a, b in zip(_across(x, xs), _down(y, ys), strict=True))
     return f'<polyline points="{points}" stroke-linejoin="round" {STYLES[curve.style]}/>'
 
@@ -98,7 +102,10 @@ def _line(curve: Curve, xs: tuple[float, float], ys: tuple[float, float]) -> str
 def _legend(curves: tuple[Curve, ...]) -> list[str]:
     parts, x = [], WIDTH - RIGHT - 120 * len(curves)
     for curve in curves:
-        parts.append(f'<path d="M{x} 12h26" {STYLES[curve.style]}/>')
+        if curve.style == "theory" and len(curve.x) < FEW:
+            parts.append(f'<circle cx="{x + 16}" cy="12" r="5" {STYLES["marks"]}/>')
+        else:
+            parts.append(f'<path d="M{x} 12h26" {STYLES[curve.style]}/>')
         parts.append(_text(x + 32, 16, curve.label, "start"))
         x += 120
     return parts
