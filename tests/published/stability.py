@@ -145,7 +145,7 @@ def hard_cushion() -> Iterator[Compared]:
 @check(
     model="free rod at Courant numbers 0.3 to 1; linear",
     title="Energy of a linear rod closes at any stable step",
-    source="half-step energies (textbook of central differences); measured in the method's prototype",
+    source="half-step energies (textbook of central differences)",
     formula="v+ M v+/2 + u_n K u_(n+1)/2 - work = 0",
     tolerance=1e-10,
     share_of="the largest energy",
