@@ -34,7 +34,7 @@ def _compare(
     load: dict, entering, near: int, far: int, far_end: str, end: float = 0.0102
 ) -> Iterator[Compared]:
     """Run the round-number rod with gauges at its ends and inside, and compare all three records of each."""
-    places = {"struck end": 0.0, "2.5 m": 2.5, "7 m": 7.0, "far end": LENGTH}
+    places = {"the struck end": 0.0, "2.5 m": 2.5, "7 m": 7.0, "the far end": LENGTH}
     run = solved(load, far_end=far_end, gauges=places, duration=end, dx=0.1)
     scale = 1e6 / Z if load["quantity"] == "force" else 1.0
     for name, x in places.items():
@@ -42,11 +42,11 @@ def _compare(
         force, velocity, moved = at_gauge(
             entering, x, gauge.time, run.time_step, stiffness=E * AREA, length=LENGTH, c=C, near=near, far=far
         )
-        yield history(f"velocity at the {name}", velocity, gauge.velocity, "m/s", scale)
-        yield history(f"displacement at the {name}", moved, gauge.displacement, "m", scale * 0.001)
+        yield history(f"velocity at {name}", velocity, gauge.velocity, "m/s", scale)
+        yield history(f"displacement at {name}", moved, gauge.displacement, "m", scale * 0.001)
         # where motion is prescribed, the end's force is a reaction: it is compared inside the rod
         if not (load["quantity"] == "velocity" and x == 0.0):
-            yield history(f"force at the {name}", force, -gauge.force, "N", scale * Z)
+            yield history(f"force at {name}", force, -gauge.force, "N", scale * Z)
 
 
 @check(

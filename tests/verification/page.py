@@ -144,11 +144,15 @@ def row(compared: Compared, outcome: Outcome) -> tuple[str, str, str, str, str]:
     """What, expected, solver, difference, allowed."""
     sign = "" if compared.difference <= outcome.allowed(compared) else " ✕"
     unit = f" {compared.unit}" if compared.unit else ""
+    # beside what it is measured by, rounding is nothing to read
+    expected, found = (
+        0.0 if abs(x) < 1e-12 * compared.scale else x for x in (compared.expected, compared.found)
+    )
     what = compared.what + (f" ({compared.points} points)" if compared.points > 1 else "")
     return (
         what,
-        number(compared.expected) + unit,
-        number(compared.found) + unit,
+        number(expected) + unit,
+        number(found) + unit,
         short(compared.difference) + sign,
         short(outcome.allowed(compared)),
     )
