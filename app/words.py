@@ -18,6 +18,7 @@ from solver.answer.findings import (
     StressFinding,
     segment_of,
 )
+from solver.answer.remark import Remark, sentence
 from solver.model.project import Case
 
 #: A state is told by a sign and a word, never by a colour alone.
@@ -78,7 +79,11 @@ def notes(findings: Findings, case: Case, units: Units) -> tuple[Note, ...]:
         found.append(
             Note(f"The struck end rebounds by {units.show(findings.set.head_rebound, 'small_length')}.")
         )
-    found += [Note(text) for text in findings.warnings]
+    found += [
+        Note(warning(remark, units), position=remark.place or None)
+        for remark in findings.remarks
+        if remark.kind != "stopped"  # told below, before all others
+    ]
     found += [Note(caution(c, units), pointer=c.pointer) for c in findings.cautions]
     if not findings.quality.finished:
         found.insert(0, Note("Stopped before the end: this is what was solved until then."))
@@ -204,6 +209,11 @@ def _happening(one: Happening, case: Case, units: Units) -> str:
         "wall_contact": f"The far end meets the wall{again} at {when}",
         "toe_lift": f"The toe lifts off the ground{again} at {when}",
     }[one.kind]
+
+
+def warning(of: Remark, units: Units) -> str:
+    """What the solver has to tell about a run, in the units shown."""
+    return sentence(of, units.show)
 
 
 def caution(of: Caution, units: Units) -> str:

@@ -13,7 +13,16 @@ from app.report.blocks import Block, Bullets, Heading, Listing, Paragraph, Table
 from app.report.described import exact
 from app.report.outcome import Material, Solved
 from app.units import Units
-from app.words import AXIAL_CAUTION, LIMIT_CAUTION, LOAD_CAUTION, MODEL_CAUTION, caution, percent, quality
+from app.words import (
+    AXIAL_CAUTION,
+    LIMIT_CAUTION,
+    LOAD_CAUTION,
+    MODEL_CAUTION,
+    caution,
+    percent,
+    quality,
+    warning,
+)
 from solver import MeshCheck, project_to_text
 from solver.answer.cautions import cautions_of
 from solver.model.limits import ARTICLE, TO_CONFIRM
@@ -74,8 +83,8 @@ def quality_section(of: Material) -> Iterator[Block]:
             continue
         yield Heading(f"Case: {one.case.name}", 3)
         yield Bullets(quality(one.findings.quality, of.units))
-        for warning in one.findings.warnings:
-            yield Paragraph(f"! {warning}", "caution")
+        for remark in one.findings.remarks:
+            yield Paragraph(f"! {warning(remark, of.units)}", "caution")
         if one.mesh is not None:
             yield _mesh(one.mesh, of.units)
         else:

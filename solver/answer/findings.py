@@ -11,6 +11,7 @@ from typing import Literal
 import numpy as np
 
 from solver.answer.cautions import Caution, cautions_of
+from solver.answer.remark import Remark
 from solver.answer.result import Array, EventKind, Result, first_of_largest
 from solver.model.derived import impact_energy, ram_mass, segment_mass
 from solver.model.load import GRAVITY, Drop, Striker
@@ -132,7 +133,7 @@ class Findings:
     set: SetFinding | None
     energy: EnergyFinding | None
     happenings: tuple[Happening, ...]
-    warnings: tuple[str, ...]
+    remarks: tuple[Remark, ...]
     cautions: tuple[Caution, ...]
     quality: Quality
 
@@ -145,7 +146,7 @@ def findings_of(result: Result) -> Findings:
         set=_set(result),
         energy=_energy(result),
         happenings=_happenings(result),
-        warnings=result.warnings,
+        remarks=result.remarks,
         cautions=cautions_of(result.case),
         quality=Quality(
             result.elements,

@@ -22,7 +22,7 @@ from solver.answer.result import (
     first_of_largest,
     read_only,
 )
-from solver.answer.told import warnings_of
+from solver.answer.told import remarks_of
 from solver.numerics.assemble import gauge_link
 from solver.numerics.balance import LEDGER, residual_of
 from solver.numerics.chain import Chain
@@ -59,7 +59,7 @@ def gather(blow: Blow, finished: bool, seconds: float) -> Result:
         head_rebound=None if head_set is None else head_travel - head_set,
         max_toe_displacement=float(blow.extremes.travel[-1] - blow.rest[-1]),
         events=events_of(blow),
-        warnings=warnings_of(blow, residual, at_rest, finished),
+        remarks=remarks_of(blow, residual, at_rest, finished),
         solve_seconds=seconds,
         finished=finished,
         at_rest=at_rest,
@@ -207,6 +207,6 @@ def _crack_openings(blow: Blow) -> dict[str, float]:
     for stretch in blow.chain.member_stretches:
         if stretch.material.law.kind == "brittle_tension":
             at = slice(stretch.start, stretch.stop)
-            if blow.state.rod.state[0, at].any():
+            if blow.state.rod.state[1, at].any():
                 openings[stretch.segment.name] = float(blow.state.rod.state[1, at].max())
     return openings

@@ -13,6 +13,7 @@ from typing import Any, Literal
 import numpy as np
 from numpy.typing import NDArray
 
+from solver.answer.remark import Remark, sentence
 from solver.model.project import Case
 
 Array = NDArray[np.float64]
@@ -226,13 +227,18 @@ class Result:
     head_rebound: float | None
     max_toe_displacement: float
     events: tuple[Event, ...]
-    warnings: tuple[str, ...]
+    remarks: tuple[Remark, ...]
     solve_seconds: float
     finished: bool = True
     at_rest: bool = False
     head_train: HeadTrain | None = None
     residual: Residual | None = None
     crack_openings: dict[str, float] = field(default_factory=dict)
+
+    @property
+    def warnings(self) -> tuple[str, ...]:
+        """The remarks as sentences, in SI."""
+        return tuple(sentence(remark) for remark in self.remarks)
 
     @property
     def transferred_energy(self) -> dict[str, tuple[float, float]]:

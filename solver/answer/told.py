@@ -1,10 +1,11 @@
-"""What the user must be told about a run, in sentences."""
+"""What the user must be told about a run, found from what was recorded."""
 
 from __future__ import annotations
 
 import numpy as np
 
 from solver.answer.blow import Blow
+from solver.answer.remark import Remark
 from solver.numerics.compiled import cache_problem
 from solver.numerics.ground import bands_of
 from solver.numerics.mesh import MISMATCH
@@ -19,51 +20,35 @@ SMALL_STRAIN = 0.1
 TOLD = 0.01
 
 
-def warnings_of(blow: Blow, residual: float, at_rest: bool, finished: bool) -> tuple[str, ...]:
-    """Sentences, the gravest first."""
+def remarks_of(blow: Blow, residual: float, at_rest: bool, finished: bool) -> tuple[Remark, ...]:
+    """The gravest first."""
     chain, case, told = blow.chain, blow.chain.case, []
     if residual > TOLD:
-        told.append(f"The energy of this run does not close by {residual:.1%}: judge it with care.")
+        told.append(Remark("energy_open", residual))
     if 1 - chain.courant_worst > MISMATCH:
-        told.append(
-            "The travel times of the segments fit no common step: "
-            f"the worst Courant number is {chain.courant_worst:.3f}."
-        )
+        told.append(Remark("times_unfit", chain.courant_worst))
     few = [s for s in chain.stretches if s.material.law.kind == "viscoelastic" and s.stop - s.start < FEW]
     if few:
-        part = few[0]
-        told.append(
-            f"The viscosity of '{part.segment.name}' allows it only {part.stop - part.start} elements: "
-            "compare with a finer mesh."
-        )
+        told.append(Remark("few_elements", few[0].stop - few[0].start, name=few[0].segment.name))
     strain, place = _largest_plastic_strain(blow)
     if strain > SMALL_STRAIN:
-        told.append(
-            f"The plastic strain reaches {strain:.0%} at {place:.4g} m, beyond a law of small strains: "
-            "read the shortening of the whole, not the strain there."
-        )
+        told.append(Remark("large_strain", strain, place))
     if not finished:
-        told.append("This run was stopped early: it tells what happened so far.")
+        told.append(Remark("stopped"))
     elif case.run.duration is None and not at_rest:
-        told.append(
-            "The member does not come to rest by itself; "
-            f"the run was ended after {(blow.steps - 1) * chain.dt * 1000:.4g} ms."
-        )
+        told.append(Remark("not_at_rest", (blow.steps - 1) * chain.dt))
     returns = _ram_returns(blow)
     if finished and returns is not None:
-        told.append(
-            f"The ram is in the air at the end and falls again at about {returns:.3g} s: "
-            "give a longer duration to see that blow too."
-        )
+        told.append(Remark("ram_returns", returns))
     if case.ground is not None:
         bands = list(bands_of(case.ground, case.member.length))
         reach = max((b.bottom for b in bands), default=case.ground.surface)
         if bands and reach < case.member.length * (1 - 1e-9):
-            told.append(f"The layers end at {reach:.4g} m: below it no shaft resistance acts.")
+            told.append(Remark("layers_end", place=reach))
         if finished and not blow.settled:
-            told.append("No rest after the blow was found: the set is the plastic movement of the toe.")
+            told.append(Remark("no_rest"))
     if cache_problem:
-        told.append(cache_problem)
+        told.append(Remark("not_cached", name=cache_problem))
     return tuple(told)
 
 

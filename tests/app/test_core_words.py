@@ -10,7 +10,17 @@ from app.standing import time_left
 from app.starting_points import driven_pile, rod_or_bar
 from app.terms import TERMS
 from app.units import Units
-from app.words import LIMIT_CAUTION, MODEL_CAUTION, as_text, caution, notes, percent, quality, verdict
+from app.words import (
+    LIMIT_CAUTION,
+    MODEL_CAUTION,
+    as_text,
+    caution,
+    notes,
+    percent,
+    quality,
+    verdict,
+    warning,
+)
 from solver import project_from_tree
 from solver.answer.cautions import Caution, CautionKind
 from solver.answer.findings import (
@@ -22,6 +32,7 @@ from solver.answer.findings import (
     StressAt,
     StressFinding,
 )
+from solver.answer.remark import Remark, RemarkKind, sentence
 from solver.answer.result import EventKind
 
 METRIC, US = Units(), Units("us")
@@ -40,7 +51,7 @@ def findings(**changes):
         "set": SetFinding(6.5e-3, 9.1e-3, 3.2e-3, 0.04, 24.0),
         "energy": EnergyFinding("Head", 1.2, 41.4e3, 0.012, "ram", 44e3, 47.1e3),
         "happenings": (),
-        "warnings": (),
+        "remarks": (),
         "cautions": (),
         "quality": Quality(400, 3600, 1.1e-5, 1.0, 2e-13, True, True),
     }
@@ -128,13 +139,28 @@ def test_every_caution_has_its_sentence(kind, units):
 
 
 def test_the_paragraph_for_a_report_carries_every_line_and_the_cautions():
-    found = findings(warnings=("The ram is still in the air.",))
+    found = findings(remarks=(Remark("layers_end", place=9.144),))
     text = as_text(found, CASE, METRIC)
     for line in verdict(found, METRIC):
         assert line.figure in text
-    for sentence in ("The ram is still in the air.", MODEL_CAUTION, LIMIT_CAUTION):
-        assert sentence in text
+    for told in (
+        "The layers end at 9.14\u00a0m: below it no shaft resistance acts.",
+        MODEL_CAUTION,
+        LIMIT_CAUTION,
+    ):
+        assert told in text
     assert "\n" not in text
+
+
+@pytest.mark.parametrize("kind", get_args(RemarkKind))
+def test_every_remark_of_the_solver_has_its_sentence_in_the_units_shown(kind):
+    """The command line says it in SI, the window in what is chosen: 9.144 m are 30 ft, 0.5 s are 500 ms."""
+    remark = Remark(kind, 0.5, 9.144, "The kernels are not kept.")
+    plain, shown = sentence(remark), warning(remark, US)
+    assert plain.endswith(".")
+    assert shown.endswith(".")
+    assert ("9.144 m" in plain) == ("30.0\u00a0ft" in shown) == (kind in ("large_strain", "layers_end"))
+    assert ("500 ms" in plain) == ("500\u00a0ms" in shown) == (kind in ("not_at_rest", "ram_returns"))
 
 
 def test_a_run_that_was_stopped_says_so_first():
