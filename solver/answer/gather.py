@@ -207,6 +207,6 @@ def _crack_openings(blow: Blow) -> dict[str, float]:
     for stretch in blow.chain.member_stretches:
         if stretch.material.law.kind == "brittle_tension":
             at = slice(stretch.start, stretch.stop)
-            if blow.state.rod.state[1, at].any():
+            if blow.state.rod.state[0, at].any():
                 openings[stretch.segment.name] = float(blow.state.rod.state[1, at].max())
     return openings
