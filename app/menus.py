@@ -20,6 +20,14 @@ if TYPE_CHECKING:
 Key = QKeySequence.StandardKey
 LOOKS: dict[Choice, str] = {"system": "As the system", "light": "Light", "dark": "Dark"}
 
+#: Columns (True) and rows of the Bench that can be folded away, and their words.
+PANELS: dict[tuple[bool, int], str] = {
+    (True, 0): "Left column: member, at the cursor",
+    (True, 2): "Right column: along the member, findings",
+    (False, 0): "Upper row: member, x-t diagram, along the member",
+    (False, 1): "Lower row: at the cursor, strips, findings",
+}
+
 
 class Menus:
     """Holds the actions that change with the document; `bar` is the bar with all menus."""
@@ -125,13 +133,27 @@ class Menus:
         window, menu = self._window, self.bar.addMenu("&View")
         menu.addAction(self.outline)
         menu.addAction(self.notes)
-        menu.addAction(self._action("Full screen", window.turn_full_screen, QKeySequence("F11")))
+        menu.addSeparator()
+        menu.addAction(
+            self._action("One panel alone", lambda: window.bench.turn_alone(), QKeySequence("F11"))
+        )
+        self.panels = {place: self._panel_action(words, place) for place, words in PANELS.items()}
+        for action in self.panels.values():
+            menu.addAction(action)
+        menu.addSeparator()
+        menu.addAction(self._action("Full screen", window.turn_full_screen, QKeySequence("Shift+F11")))
         menu.addSeparator()
         for choice, words in LOOKS.items():
             action = self._action(words, partial(self._choose_look, choice), checkable=True)
             action.setData(choice)
             self.looks.addAction(action)
             menu.addAction(action)
+
+    def _panel_action(self, words: str, place: tuple[bool, int]) -> QAction:
+        def fold(on: bool) -> None:
+            self._window.bench.grid.fold(*place, not on)
+
+        return self._action(words, fold, checkable=True)
 
     def _choose_look(self, choice: Choice, on: bool) -> None:
         if on:

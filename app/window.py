@@ -112,6 +112,8 @@ class Window(QMainWindow):
         self.notes.closed.connect(self.menus.notes.trigger)
         self.menus.notes.triggered.connect(lambda on: self.settings.set_flag("notes", on))
         self.set_sheet.saving.told.connect(lambda text, state: self.notices.show_notice("sheet", text, state))
+        self.bench.alone_changed.connect(self._give_room)
+        self.bench.grid.folding_changed.connect(self._tell_folded)
         self.autosave.failed.connect(lambda text: self.notices.show_notice("autosave", text, "over"))
         self.watch = FileWatch(self.document, self)
         self.watch.found.connect(self.files.tell_of_change)
@@ -127,6 +129,10 @@ class Window(QMainWindow):
         shares = settings.shares("bench")
         if shares is not None and [len(row) for row in shares] == [len(row) for row in self.bench.shares()]:
             self.bench.set_shares(*shares)
+        for (upright, index), action in self.menus.panels.items():
+            if settings.flag(f"folded_{action.text().partition(':')[0]}"):
+                self.bench.grid.fold(upright, index, True)
+        self._tell_folded()
         self.begin_looking()
         if settings.flag("arrivals_chosen"):
             self.sight.set(arrivals=settings.flag("arrivals"))
@@ -213,6 +219,15 @@ class Window(QMainWindow):
         self.settings.set_flag("outline", on)
         self.outline.setVisible(on)
 
+    def _give_room(self, alone: bool) -> None:
+        """One panel of the Bench has all the room, or gives it back."""
+        self.outline.setVisible(not alone and self.menus.outline.isChecked())
+        self.notes.setVisible(not alone and self.menus.notes.isChecked())
+
+    def _tell_folded(self) -> None:
+        for (upright, index), action in self.menus.panels.items():
+            action.setChecked(not self.bench.grid.folded(upright, index))
+
     def turn_full_screen(self) -> None:
         self.setWindowState(self.windowState() ^ Qt.WindowState.WindowFullScreen)
 
@@ -258,6 +273,9 @@ class Window(QMainWindow):
         self.settings.set_layout("window", self.saveGeometry())
         self.settings.set_layout("split", self.split.saveState())
         self.settings.set_shares("bench", self.bench.shares())
+        for (upright, index), action in self.menus.panels.items():
+            name = f"folded_{action.text().partition(':')[0]}"
+            self.settings.set_flag(name, self.bench.grid.folded(upright, index))
         if self.sight.arrivals is not None:
             self.settings.set_flag("arrivals_chosen", True)
             self.settings.set_flag("arrivals", self.sight.arrivals)

@@ -8,7 +8,7 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 
-from PySide6.QtCore import QSize, Qt
+from PySide6.QtCore import QSize, Qt, Signal
 from PySide6.QtGui import QColor, QKeyEvent, QKeySequence, QPainter, QPaintEvent, QShortcut
 from PySide6.QtWidgets import QAbstractButton, QApplication, QComboBox, QVBoxLayout, QWidget
 
@@ -30,7 +30,11 @@ COLUMNS, ROWS = (0.18, 0.59, 0.23), (0.53, 0.47)
 
 
 class Bench(QWidget):
-    """All pictures and the time bar. `shares` and `set_shares` let the window remember how they are divided."""
+    """All pictures and the time bar. `shares` and `set_shares` let the window remember how they are divided.
+
+    `alone_changed`: one panel has taken all the room, or given it back."""
+
+    alone_changed = Signal(bool)
 
     def __init__(
         self, document: Document, sight: Sight, solution: Solution, parent: QWidget | None = None
@@ -52,6 +56,7 @@ class Bench(QWidget):
             COLUMNS,
             ROWS,
         )
+        self.grid.title_clicked.connect(self.turn_alone)
         whole = QVBoxLayout(self)
         whole.setContentsMargins(0, 0, 0, 0)
         whole.setSpacing(0)
@@ -65,6 +70,21 @@ class Bench(QWidget):
     def set_shares(self, columns: Sequence[float], rows: Sequence[float]) -> None:
         self.grid.set_shares(columns, rows)
 
+    def turn_alone(self, panel: QWidget | None = None) -> None:
+        """Give a panel all the room, that with the focus or under the mouse where none is named; or take it back."""
+        if self.grid.alone is not None:
+            panel = None
+        elif panel is None:
+            panel = self._panel_looked_at()
+        self.grid.show_alone(panel)
+        self.alone_changed.emit(panel is not None)
+
+    def _panel_looked_at(self) -> QWidget:
+        panels = (self.member, self.xt, self.profile, self.at_cursor, self.strips, self.findings)
+        focus = QApplication.focusWidget()
+        held = [p for p in panels if focus is not None and (p is focus or p.isAncestorOf(focus))]
+        return next((p for p in (*held, *panels) if p in held or p.underMouse()), self.xt)
+
     def paintEvent(self, event: QPaintEvent) -> None:
         QPainter(self).fillRect(event.rect(), QColor(palette().paper))
 
@@ -75,6 +95,8 @@ class Bench(QWidget):
             self.time_bar.step(way * (10 if event.modifiers() & Qt.KeyboardModifier.ShiftModifier else 1))
         elif event.key() == Qt.Key.Key_Home:
             self._show_all()
+        elif event.key() == Qt.Key.Key_Escape and self.grid.alone is not None:
+            self.turn_alone()
         elif event.key() == Qt.Key.Key_Escape and self._sight.pinned is not None:
             self._sight.set(pinned=None)
         else:

@@ -42,6 +42,8 @@ DEEPEST = 1e-3
 GREYED = 0.3
 #: Pixels within which a press and its release are a click.
 CLICK = 4
+#: Pixels at the top of a picture that are its title.
+TITLE = 24.0
 
 
 @dataclass(frozen=True)
@@ -221,8 +223,12 @@ class Picture(QWidget):
     def mousePressEvent(self, event: QMouseEvent) -> None:
         if self._moves(event):
             self._dragged_from = self._pressed_at = event.position()
-        elif event.button() == Qt.MouseButton.LeftButton:
+        elif event.button() == Qt.MouseButton.LeftButton and not self.on_title(event.position()):
             self.point_at(event.position())
+
+    def on_title(self, position: QPointF) -> bool:
+        """Whether a point lies on the heading above the plot."""
+        return position.y() < min(self.margins().header, TITLE) and self.margins().header > CLICK * 2
 
     def mouseMoveEvent(self, event: QMouseEvent) -> None:
         if self._dragged_from is not None:
@@ -239,7 +245,9 @@ class Picture(QWidget):
         self._dragged_from = None
 
     def mouseDoubleClickEvent(self, event: QMouseEvent) -> None:
-        if self.has_time or self.has_distance:
+        if self.on_title(event.position()):
+            event.ignore()  # what the panels lie in gives this one all the room, or takes it back
+        elif self.has_time or self.has_distance:
             self.show_all()
 
     def wheelEvent(self, event: QWheelEvent) -> None:

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import pytest
-from PySide6.QtCore import Qt
+from PySide6.QtCore import QPoint, Qt
 
 from app.settings import Settings
 from app.window import Window
@@ -43,3 +43,65 @@ def test_the_link_under_the_outline_opens_the_table_and_escape_closes_it(open_wi
     assert window.tables.geometry().top() >= window.split.geometry().bottom()
     qtbot.keyClick(window.tables.view, Qt.Key.Key_Escape)
     assert not window.tables.isVisible()
+
+
+def test_f11_gives_the_panel_with_the_focus_the_window_and_escape_takes_it_back(open_window, qtbot):
+    window = open_window()
+    bench = window.bench
+    bench.profile.setFocus()
+    narrow = bench.profile.width()
+    qtbot.keyClick(window, Qt.Key.Key_F11)
+    assert bench.grid.alone is bench.profile
+    assert bench.profile.width() > 3 * narrow
+    qtbot.waitUntil(lambda: bench.profile.width() > 0.95 * window.width())  # once the layout has settled
+    assert not bench.xt.isVisible()
+    assert not window.outline.isVisible()
+    qtbot.keyClick(bench.profile, Qt.Key.Key_Escape)
+    assert bench.grid.alone is None
+    assert bench.xt.isVisible()
+    assert window.outline.isVisible()
+    qtbot.waitUntil(lambda: bench.profile.width() == narrow)
+
+
+@pytest.mark.parametrize("name", ["xt", "profile", "member", "at_cursor", "strips", "findings"])
+def test_a_double_click_on_a_title_does_the_same_for_every_panel(open_window, qtbot, name):
+    window = open_window()
+    panel = getattr(window.bench, name)
+    time = window.sight.time
+    spot = (
+        QPoint(3, 10) if name == "strips" else QPoint(30, 10)
+    )  # beside the chips, which are the title of strips
+    for alone in (panel, None):
+        below = panel.childAt(spot) or panel
+        qtbot.mouseDClick(below, Qt.MouseButton.LeftButton, pos=below.mapFrom(panel, spot))
+        assert window.bench.grid.alone is alone
+    assert window.sight.time == time  # a title is no place in the plot
+
+
+def test_columns_and_rows_are_folded_from_the_menu_and_remembered(open_window, qtbot):
+    window = open_window()
+    wide = window.bench.xt.width()
+    left = window.menus.panels[True, 0]
+    assert left.isChecked()
+    left.trigger()
+    assert not window.bench.member.isVisible()
+    assert window.bench.xt.width() > wide
+    window.close()
+    again = open_window()
+    assert not again.bench.member.isVisible()
+    assert not again.menus.panels[True, 0].isChecked()
+    again.menus.panels[True, 0].trigger()
+    assert again.bench.member.isVisible()
+
+
+def test_a_handle_folds_by_a_double_click_and_the_last_row_stays(open_window, qtbot):
+    window = open_window()
+    grid = window.bench.grid
+    rows = next(h for h in grid._handles if not h.upright)
+    qtbot.mouseDClick(rows, Qt.MouseButton.LeftButton)
+    assert not window.bench.strips.isVisible()
+    window.menus.panels[False, 0].trigger()
+    assert window.bench.xt.isVisible()
+    assert window.menus.panels[False, 0].isChecked()
+    qtbot.mouseDClick(rows, Qt.MouseButton.LeftButton)
+    assert window.bench.strips.isVisible()
