@@ -60,8 +60,8 @@ def pile(duration: float | None = 0.1, drop_height: float = 1.0, elements: int |
     return project_from_tree(tree).cases[0]
 
 
-def layered(elements: int | None = 400) -> Case:
-    """Three layers whose travel times have no common divisor, under a long haversine: smooth enough for any method."""
+def layered(elements: int | None = 400, pulse: float = 0.001) -> Case:
+    """Three layers whose travel times have no common divisor, under a haversine of `pulse` seconds."""
     materials = [
         {"name": "a", "young_modulus": 200e9, "density": 7850.0},
         {"name": "b", "young_modulus": 70e9, "density": 2700.0},
@@ -85,7 +85,7 @@ def layered(elements: int | None = 400) -> Case:
             "quantity": "force",
             "shape": "haversine",
             "peak": 1e5,
-            "duration": 0.01,
+            "duration": pulse,
         },
         "far_end": {"kind": "free"},
         "ground": None,

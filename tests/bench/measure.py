@@ -19,7 +19,8 @@ SHORTEST = 0.02
 
 @dataclass
 class Row:
-    """One line of the answer: what was compared, how often, and what came of it. `reach`: least (or `most`) ratio."""
+    """One line of the answer: what was compared, how often, and what came of it. `reach`: least ratio (or with
+    `at_most` the largest). Where there is no ratio but a time or a rate, `ratio` holds it, and `unit` says of what."""
 
     name: str
     compared: str
@@ -27,6 +28,7 @@ class Row:
     reach: float | None = None
     at_most: bool = False
     at_least: float | None = None
+    unit: str = ""
     spread: float | None = None
     repetitions: int = 0
     noise: float | None = None
@@ -50,7 +52,11 @@ class Row:
         """As it is printed: plain values, rounded to what can be read from a spread."""
         row = {
             "name": self.name,
-            "ratio": _rounded(self.ratio),
+            **(
+                {"value": _rounded(self.ratio), "unit": self.unit}
+                if self.unit
+                else {"ratio": _rounded(self.ratio)}
+            ),
             "compared": self.compared,
             "reach": self.reach,
             "reach_is": "at most" if self.at_most else "at least",

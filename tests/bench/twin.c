@@ -7,7 +7,7 @@
 typedef double *restrict arr;
 
 struct twin {
-    int64_t nodes, steps, stride, head, columns, shaft_first, shaft_nodes, gauges;
+    int64_t nodes, steps, stride, head, columns, shaft_first, shaft_nodes, gauges, parts;
     double dt;
     arr u, v, w, force, rest, stiff, push, mass, weight, load;
     arr low, low_step, high, high_step, speed, travel, ledger, sums;
@@ -54,7 +54,7 @@ static void move(int64_t n, double dt, arr u, arr v, arr w, arr speed, arr trave
 
 static void record(const struct twin *t, double *row, int64_t frame, arr v, arr w, int piled) {
     int64_t n = t->nodes;
-    double dt = t->dt, kinetic = 0, gravity = 0, stored = 0, soil = 0, cushion = 0, taken = 0;
+    double dt = t->dt, kinetic = 0, before = 0, gravity = 0, stored = 0, soil = 0, cushion = 0, taken = 0;
     arr u = t->u, force = t->force, rest = t->rest, mass = t->mass, weight = t->weight, stiff = t->stiff;
     float *ff = t->frame_force + frame * t->columns, *fv = t->frame_velocity + frame * t->columns,
           *fu = t->frame_moved + frame * t->columns;
@@ -66,12 +66,14 @@ static void record(const struct twin *t, double *row, int64_t frame, arr v, arr 
     }
     for (int64_t i = 0; i < n; i++) {
         kinetic += mass[i] * w[i] * w[i];
+        before += mass[i] * v[i] * v[i];
         gravity += weight[i] * (u[i] + 0.5 * dt * w[i] - rest[i]);
     }
     for (int64_t i = 0; i < n - 1; i++) {
         double d = u[i + 1] - u[i];
         stored += 0.5 * stiff[i] * d * d;
     }
+    row[14] = 0.25 * (kinetic + before) + stored;
     for (int64_t i = 0; i < n - 1; i++)
         stored += 0.5 * force[i] * dt * (w[i + 1] - w[i]);
     if (piled) {
@@ -106,7 +108,7 @@ void linear(const struct twin *t) {
         w[head] += t->push[head] * pull;
         t->sums[WORK] += pull * 0.5 * (v[head] + w[head]) * t->dt;
         if (step % t->stride == 0)
-            record(t, t->ledger + 14 * (step / t->stride), step / t->stride, v, w, 0);
+            record(t, t->ledger + t->parts * (step / t->stride), step / t->stride, v, w, 0);
         extremes(n - 1, step, t->force, t->low, t->low_step, t->high, t->high_step);
         move(n, t->dt, t->u, v, w, t->speed, t->travel);
         double *swap = v;
@@ -302,7 +304,7 @@ void pile(const struct twin *t) {
         t->ram[t->steps + step] = 0.5 * (v[0] + w[0]);
         t->ram[2 * t->steps + step] = 0.5 * (v[head] + w[head]);
         if (step % t->stride == 0)
-            record(t, t->ledger + 14 * (step / t->stride), step / t->stride, v, w, 1);
+            record(t, t->ledger + t->parts * (step / t->stride), step / t->stride, v, w, 1);
         extremes(n - 1, step, t->force, t->low, t->low_step, t->high, t->high_step);
         move(n, t->dt, t->u, v, w, t->speed, t->travel);
         double *swap = v;

@@ -23,7 +23,7 @@ FLAGS = (
     "-shared", "-fPIC", "-lm",
 )  # fmt: skip
 
-WHOLE = ("nodes", "steps", "stride", "head", "columns", "shaft_first", "shaft_nodes", "gauges")
+WHOLE = ("nodes", "steps", "stride", "head", "columns", "shaft_first", "shaft_nodes", "gauges", "parts")
 POINTERS = (
     "u", "v", "w", "force", "rest", "stiff", "push", "mass", "weight", "load",
     "low", "low_step", "high", "high_step", "speed", "travel", "ledger", "sums", "column",
@@ -102,7 +102,7 @@ class Twin:
         }
         assert all(a.flags.c_contiguous for a in self.arrays.values())
         whole = (rig.chain.nodes, steps, rig.stride, rig.chain.head, len(records.columns))
-        whole += (int(s.shaft.first), len(s.shaft.r), gauges)
+        whole += (int(s.shaft.first), len(s.shaft.r), gauges, records.ledger.shape[1])
         self.struct = _Struct(*whole, rig.chain.dt, *(self.arrays[n].ctypes.data for n in POINTERS))
 
     def run(self, clock: Callable[[], float] = time.thread_time) -> float:
