@@ -143,6 +143,7 @@ class SheetSolution(QObject):
         if self.samples_done is not None:
             self._samples.stop()
             self.samples_done = None
+            self.changed.emit()
 
     def _follow(self) -> None:
         if self._looked:

@@ -71,7 +71,7 @@ def point(plan: Plan, resistance: float, level: Level, cancel: Cancel = None) ->
     result = solve(case, cancel=cancel)
     if not result.finished:
         raise Cancelled
-    return solved_cell(case, resistance, level, result)
+    return solved_cell(resistance, level, result)
 
 
 def safe_blow(plan: Plan, resistance: float, *, cancel: Cancel = None) -> SafeBlow:

@@ -8,7 +8,6 @@ from dataclasses import dataclass
 from solver.answer.findings import EnergyFinding, StressAt, StressFinding, findings_of
 from solver.answer.result import Result
 from solver.many import Outcome, solve_many
-from solver.model.project import Case
 from solver.studies.plan import Level, Plan
 
 #: A set below this (m) is called "practically no set": more than a thousand blows for 0.25 m, and less than can be read
@@ -118,18 +117,17 @@ def cells_of(
     cases = (plan.variant(plan.resistances[row], plan.levels[line]) for line, row in places)
     for outcome in (solver or solve_many)(cases, workers=workers, progress=progress, cancel=cancel):
         line, row = places[outcome.index]
-        yield cell_of(outcome, row, line, plan)
+        yield cell_of_outcome(outcome, row, line, plan.resistances[row], plan.levels[line])
 
 
-def cell_of(outcome: Outcome, row: int, line: int, plan: Plan) -> Cell:
-    """What one outcome says for the sheet."""
-    resistance, level = plan.resistances[row], plan.levels[line]
+def cell_of_outcome(outcome: Outcome, row: int, line: int, resistance: float, level: Level) -> Cell:
+    """What one outcome says: the figures, or why there are none."""
     if outcome.result is None:
         return Cell(row, line, resistance, level, problem=str(outcome.error))
     return _cell(outcome.result, row, line, resistance, level)
 
 
-def solved_cell(case: Case, resistance: float, level: Level, result: Result) -> Cell:
+def solved_cell(resistance: float, level: Level, result: Result) -> Cell:
     """A cell outside the grid, from one result."""
     return _cell(result, -1, -1, resistance, level)
 

@@ -100,7 +100,7 @@ def sampled(
         if outcome.result is None:
             continue
         row, index = divmod(outcome.index, each)
-        cell = solved_cell(outcome.result.case, plan.resistances[row], level, outcome.result)
+        cell = solved_cell(plan.resistances[row], level, outcome.result)
         assert cell.compression is not None
         assert cell.tension is not None
         share = cell.share if cell.share is not None else np.nan

@@ -1,0 +1,120 @@
+"""The command line writes what the Python interface gives; the page can be read by a PDF library of other people."""
+
+import csv
+import json
+from pathlib import Path
+
+import pypdfium2
+import pytest
+
+from app.command_line import main
+from app.set_sheet.rig_table import sets_to_read, shown_at
+from solver import project_to_text
+from solver.model.project import Project
+from solver.studies import plan_of, solve_sheet
+from solver.studies.settings import SheetSettings
+from tests.studies.piles import pile
+
+
+def project(limit: float | None = 200e6, studies: dict | None = None, units: str = "metric") -> Project:
+    case = pile(elements=24, limit=limit)
+    return Project(
+        format="striketrace-project",
+        version=1,
+        title="Trial <pile> № 7",
+        display_units=units,
+        display_sign="compression",
+        materials=tuple(case.materials.values()),
+        cases=(case,),
+        studies=studies,
+    )
+
+
+@pytest.fixture
+def written(tmp_path: Path) -> Path:
+    file = tmp_path / "pile.strike"
+    file.write_text(project_to_text(project()), encoding="utf-8")
+    assert main(["sheet", str(file), "--case", "Pile", "--out", str(tmp_path / "out"), "--quiet"]) == 0
+    return tmp_path / "out"
+
+
+def test_csv_and_json_hold_the_sheet(written: Path) -> None:
+    lines = (written / "sheet.csv").read_text(encoding="utf-8").splitlines()
+    rows = list(csv.DictReader(line for line in lines if not line.startswith("#")))
+    sheet = solve_sheet(plan_of(pile(elements=24)))
+    assert len(rows) == len(sheet.cells) == 30
+    for row, cell in zip(rows, sheet.cells, strict=True):
+        assert float(row["total_resistance_N"]) == cell.resistance
+        assert float(row["set_m"]) == cell.set
+        assert (row["blows_per_metre"] == "") == (not cell.moves)
+        assert float(row["largest_share_of_limit"]) == cell.share
+    tree = json.loads((written / "sheet.json").read_text(encoding="utf-8"))
+    assert [p["set_m"] for p in tree["points"]] == [c.set for c in sheet.cells]
+    assert tree["stop_at"]["total_resistance_N"] == 800e3
+    assert tree["largest_blow"]["outcome"] == "found"
+
+
+def test_page_is_one_page_with_the_sentence_and_the_table(written: Path) -> None:
+    document = pypdfium2.PdfDocument(str(written / "sheet.pdf"))
+    assert len(document) == 1
+    text = " ".join(document[0].get_textpage().get_text_bounded().split())
+    for words in (
+        "Set sheet: Pile",
+        "Trial <pile> № 7",
+        "Stop when the mean set of the last 10 blows is",
+        "10 blows move it by",
+        "What is assumed",
+        "for a licensed engineer to judge",
+        "limit passed in Pile",
+    ):
+        assert words in text, words
+
+
+def test_the_same_input_gives_the_same_bytes(tmp_path: Path) -> None:
+    file = tmp_path / "pile.strike"
+    file.write_text(project_to_text(project()), encoding="utf-8")
+    for folder in ("one", "two"):
+        assert main(["sheet", str(file), "--out", str(tmp_path / folder), "--quiet"]) == 0
+    for name in ("sheet.csv", "sheet.json", "sheet.pdf"):
+        assert (tmp_path / "one" / name).read_bytes() == (tmp_path / "two" / name).read_bytes()
+
+
+def test_long_page_stays_one_page_in_other_units(tmp_path: Path) -> None:
+    studies = {"set_sheet": {"values": [0.25, 0.5, 1.0, 1.5], "per": "ft", "count": 20}}
+    file = tmp_path / "pile.strike"
+    file.write_text(project_to_text(project(None, studies, "us")), encoding="utf-8")
+    assert main(["sheet", str(file), "--out", str(tmp_path / "out"), "--quiet"]) == 0
+    document = pypdfium2.PdfDocument(str(tmp_path / "out" / "sheet.pdf"))
+    text = " ".join(document[0].get_textpage().get_text_bounded().split())
+    assert len(document) == 1
+    assert "Blows per ft" in text
+    assert "whether it survives is not judged" in text
+
+
+def test_what_cannot_be_is_said_with_its_status(tmp_path: Path, capsys: pytest.CaptureFixture[str]) -> None:
+    file = tmp_path / "pile.strike"
+    out = str(tmp_path / "out")
+    file.write_text(project_to_text(project()), encoding="utf-8")
+    assert main(["sheet", str(file), "--case", "Other", "--out", out]) == 2
+    assert "no case named 'Other'" in capsys.readouterr().err
+    file.write_text(project_to_text(project(studies={"set_sheet": {"hihgest": 1.0}})), encoding="utf-8")
+    assert main(["sheet", str(file), "--out", out]) == 2
+    assert "/studies/set_sheet/hihgest" in capsys.readouterr().err
+    file.write_text(
+        project_to_text(project(studies={"set_sheet": {"pointer": "load/energy"}})), encoding="utf-8"
+    )
+    assert main(["sheet", str(file), "--out", out]) == 1
+    assert "'load/energy' is not a number" in capsys.readouterr().err
+    assert not (tmp_path / "out").exists()
+
+
+def test_table_for_the_rig_gives_the_points_of_the_sheet_back() -> None:
+    sheet = solve_sheet(SheetSettings().plan(pile(elements=24)))
+    for line in range(3):
+        for cell in sheet.line(line)[1:-1]:
+            if cell.set is not None and cell.moves:
+                shown = shown_at(sheet, line, cell.set)
+                assert shown.resistance == pytest.approx(cell.resistance, rel=1e-9)
+    sets = sets_to_read(sheet, 1e-3)
+    assert sets == sorted(sets)
+    assert 3 <= len(sets) <= 9
