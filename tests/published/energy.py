@@ -64,7 +64,9 @@ def that_comes_back() -> Iterator[Compared]:
 def on_the_toe() -> Iterator[Compared]:
     run = _pile(damping=0.0)
     yield value("energy of the ram", 4000.0 * GRAVITY * 1.0 * 0.8, run.ledger.parts["initial_energy"][0], "J")
-    yield value("lost in the ground by slip", 2e6 * run.set, run.ledger.final["ground_static_loss"], "J")
+    slipped = run.max_toe_displacement - 2.54e-3
+    yield value("lost in the ground by slip", 2e6 * slipped, run.ledger.final["ground_static_loss"], "J")
+    yield value("set = largest movement of the toe - quake", slipped, run.set, "m")
     # R_u (set + Q/2) <= energy transferred <= energy of the ram: what is between is left in the member
     energy, _ = run.transferred_energy["head"]
     low, high = 2e6 * (run.set + 2.54e-3 / 2), 4000.0 * GRAVITY * 0.8
