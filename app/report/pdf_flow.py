@@ -6,7 +6,7 @@ from collections.abc import Iterator, Sequence
 from xml.sax.saxutils import escape
 
 from reportlab.lib.styles import ParagraphStyle
-from reportlab.platypus import CondPageBreak, Flowable, KeepTogether, LongTable, TableStyle
+from reportlab.platypus import CondPageBreak, Flowable, KeepTogether, LongTable, Preformatted, TableStyle
 from reportlab.platypus import Paragraph as Words
 
 from app.report.blocks import Block, Bullets, Heading, Listing, Paragraph, Picture, Section, Table
@@ -16,8 +16,8 @@ from app.report.pdf_styles import GRID, HEAD, INK, SOFT, styles
 
 #: A cell with more letters is cut: a row must fit on a page.
 LONGEST_CELL = 1500
-#: Letters in a line of a listing, and lines of it that are printed.
-LISTING_WIDTH, LISTING_LINES = 128, 6000
+#: Letters in a line of a listing, and lines of it that are printed, and that are laid out at once.
+LISTING_WIDTH, LISTING_LINES, PIECE = 118, 6000, 20
 #: Bookmarks with more letters than this are cut.
 LONGEST_ENTRY = 90
 
@@ -50,7 +50,8 @@ def flow_of(section: Section, number: int, width: float) -> Iterator[Flowable]:
             waiting.append(heading(block.text, block.level, f"{section.key}-{index}"))
             continue
         made = list(_made(block, width))
-        need = sum(_height(f, width) for f in (*waiting, *made[:-1])) + _least(made[-1], width)
+        lead = made[:-1] if isinstance(block, Table) else []
+        need = sum(_height(f, width) for f in (*waiting, *lead)) + _least(made[len(lead)], width)
         yield CondPageBreak(need)
         yield from (*waiting, *made)
         waiting = []
@@ -85,7 +86,7 @@ def _made(block: Block, width: float) -> Iterator[Flowable]:
         case Picture():
             yield KeepTogether([FigureFlowable(block.figure), paragraph(block.caption, look["below"])])
         case Listing():
-            yield _listing(block.text)
+            yield from _listing(block.text)
 
 
 def _table(table: Table, width: float) -> LongTable:
@@ -126,13 +127,14 @@ def _short(text: str) -> str:
     return text if len(text) <= LONGEST_CELL else text[:LONGEST_CELL] + "…"
 
 
-def _listing(text: str) -> Words:
-    """Lines as they are, long ones broken, blanks at their beginning kept."""
+def _listing(text: str) -> Iterator[Flowable]:
+    """Lines as they are, long ones broken; in pieces, since a long piece is laid out anew at every page."""
     lines: list[str] = []
     for whole in text.rstrip("\n").split("\n"):
         lines += [whole[i : i + LISTING_WIDTH] for i in range(0, max(len(whole), 1), LISTING_WIDTH)]
     left_out = len(lines) - LISTING_LINES
     if left_out > 0:
         lines = [*lines[:LISTING_LINES], f"… {left_out} more lines stand in the project's file alone."]
-    kept = [escape(printable(line)).replace("  ", "\u00a0 ") for line in lines]
-    return Words("<br/>".join(kept), styles()["listing"])
+    for first in range(0, len(lines), PIECE):
+        piece = "\n".join(map(printable, lines[first : first + PIECE]))
+        yield Preformatted(piece, styles()["listing"], dedent=0)

@@ -26,7 +26,7 @@ SIZES: dict[str, tuple[float, float, float, float]] = {
     "caption": (8, 11, 8, 3),
     "below": (7.5, 10, 2, 10),
     "bullet": (9, 12.5, 0, 3),
-    "listing": (6.3, 8.2, 0, 6),
+    "listing": (6.3, 8.2, 0, 0),
 }
 STRONG = ("title", "heading1", "heading2", "heading3", "caution", "head", "caption")
 PALE = ("subtitle", "below", "small")

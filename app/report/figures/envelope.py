@@ -102,7 +102,16 @@ def _limits(plot: Plot, result: Result, shown: Shown, units: Units) -> list[Mark
                 right = x > (plot.x.start + plot.x.end) / 2
                 text = fitted(f"limit {units.show(value, 'stress')}, {segment.material}", SMALL, 170)
                 place = x + (-4 if right else 4)
-                marks.append(Text(place, span[1] - 4, text, PRINT.over, SMALL, "end" if right else "start"))
+                marks.append(
+                    Text(
+                        place,
+                        plot.y.end - 4 - (SMALL + 2) * ((len(told) - 1) // 2),
+                        text,
+                        PRINT.over,
+                        SMALL,
+                        "end" if right else "start",
+                    )
+                )
         if start > 0:
             marks.append(line([(plot.x.start, span[0]), (plot.x.end, span[0])], PRINT.edge, 0.6, dash=(1, 2)))
         start = end

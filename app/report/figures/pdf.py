@@ -4,11 +4,14 @@ from __future__ import annotations
 
 import io
 from datetime import datetime
+from weakref import WeakKeyDictionary
 
+import numpy as np
 from PIL import Image
 from reportlab.lib.colors import HexColor
 from reportlab.lib.utils import ImageReader
 from reportlab.pdfgen.canvas import Canvas
+from reportlab.pdfgen.pathobject import PDFPathObject
 from reportlab.platypus import Flowable
 
 from app.report.figures.marks import Figure, Mark, Path, Text
@@ -105,12 +108,20 @@ def _draw_path(canvas: Canvas, mark: Path, height: float) -> None:
     if mark.opacity < 1:  # after the colours, which bring an opacity of their own
         canvas.setFillAlpha(mark.opacity)
         canvas.setStrokeAlpha(mark.opacity)
-    path = canvas.beginPath()
-    (x, y), *others = mark.points
-    path.moveTo(x, height - y)
-    for x, y in others:
-        path.lineTo(x, height - y)
-    if mark.closed:
-        path.close()
-    canvas.drawPath(path, stroke=int(bool(mark.stroke)), fill=int(bool(mark.fill)))
+    canvas.drawPath(
+        PDFPathObject([_steps(mark, height)]), stroke=int(bool(mark.stroke)), fill=int(bool(mark.fill))
+    )
     canvas.restoreState()
+
+
+def _steps(mark: Path, height: float) -> str:
+    """The path in the PDF's own words. Kept, for a document is laid out several times until its contents are right."""
+    if mark not in _STEPS:
+        points = np.round(mark.points * (1, -1) + (0, height), 2).tolist()
+        (x, y), *others = points
+        lines = "".join(f" {x:g} {y:g} l" for x, y in others)
+        _STEPS[mark] = f"n {x:g} {y:g} m{lines}{' h' if mark.closed else ''}"
+    return _STEPS[mark]
+
+
+_STEPS: WeakKeyDictionary[Path, str] = WeakKeyDictionary()

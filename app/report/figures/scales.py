@@ -12,8 +12,8 @@ from numpy.typing import NDArray
 from app.units import MINUS, NARROW_SPACE
 
 Array = NDArray[np.float64]
-#: Points of a curve in print: three to a point of width.
-MOST_POINTS = 1200
+#: Points of a curve in print: two to a point of width.
+MOST_POINTS = 900
 
 
 @dataclass(frozen=True)
