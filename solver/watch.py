@@ -2,19 +2,19 @@
 
 from __future__ import annotations
 
-from typing import TYPE_CHECKING
+from typing import Protocol
 
 import numpy as np
+from numpy.typing import NDArray
 
 from solver.errors import SolveError
 from solver.model.project import Case
 from solver.model.surroundings import Resistance
+from solver.numerics.arrays import Extremes
 from solver.numerics.balance import growing_share, residual_of
-from solver.numerics.chain import Stretch, segments_of
+from solver.numerics.chain import Chain, Stretch, segments_of
+from solver.numerics.equilibrium import State
 from solver.numerics.stability import SMALLEST_STRETCH
-
-if TYPE_CHECKING:
-    from solver.marching import March
 
 #: Share of the energy that a wave of two elements' length may grow to; short pulses alone stay below it.
 GROWN = 0.05
@@ -22,6 +22,21 @@ GROWN = 0.05
 LEAST_EXPONENT = 0.05
 #: Share of the largest energy that may fail to close before a run is refused.
 REFUSED = 0.05
+
+
+class Watched(Protocol):
+    """What is looked at of a march on its way."""
+
+    chain: Chain
+    state: State
+    extremes: Extremes
+    start_row: NDArray[np.float64]
+    steps: int
+    stride: int
+
+    def ledger_rows(self) -> NDArray[np.float64]:
+        """Rows of the ledger so far, shape (frames, parts)."""
+        ...
 
 
 def refuse_unsupported(case: Case) -> None:
@@ -85,7 +100,7 @@ def _refuse_with_inertia(case: Case) -> None:
             raise SolveError(f"Lateral inertia needs Poisson's ratio of '{material.name}'.")
 
 
-def refuse_bad_state(march: March) -> None:
+def refuse_bad_state(march: Watched) -> None:
     """Raise `SolveError` where the state is no answer: not finite, turned inside out, or with energy from nothing."""
     chain, motion = march.chain, march.state.motion
     seconds = march.steps * chain.dt
@@ -115,7 +130,7 @@ def refuse_bad_state(march: March) -> None:
         )
 
 
-def _refuse_inside_out(march: March, part: Stretch) -> None:
+def _refuse_inside_out(march: Watched, part: Stretch) -> None:
     """An element pressed to nothing, judged by its least force so far (a large-strain pad: by its stretch of now)."""
     chain, law = march.chain, part.material.law.kind
     at = slice(part.start, part.stop)
