@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator
+from collections.abc import Iterator, Sequence
 from dataclasses import dataclass
 
 from app.units import Units, rounded
@@ -35,6 +35,8 @@ LIMIT_CAUTION = "Stress limits come from the governing code."
 AXIAL_CAUTION = "Axial average only: bending adds to it."
 LOAD_CAUTION = "Diesel and vibratory hammers are not modelled."
 
+#: Units of length in which blows are counted for each foot.
+FEET = ("ft", "in", "yd")
 #: Stresses below this share of the larger peak are rounding, and are told as none at all.
 NOTHING = 1e-9
 
@@ -100,14 +102,15 @@ def quality(of: Quality, units: Units) -> tuple[str, ...]:
     )
 
 
-def as_text(findings: Findings, case: Case, units: Units) -> str:
-    """A paragraph fit for a report: verdict, notes and the caution that goes with every result."""
+def as_text(findings: Findings, case: Case, units: Units, also: Sequence[Note] = ()) -> str:
+    """A paragraph fit for a report: verdict, notes, what there is `also` to say, and the cautions of every result."""
     lines = [f"{case.name}."]
     for line in verdict(findings, units):
-        lines.append(
-            f"{line.name[:1].upper()}{line.name[1:]} {line.figure}: {line.detail.replace(chr(10), '; ')}."
-        )
-    lines += [note.text for note in notes(findings, case, units)]
+        detail = line.detail.replace(chr(10), "; ").replace(" · ", ", ")
+        for sign in SIGNS.values():  # the words beside them say the same
+            detail = detail.replace(f"{sign} ", "")
+        lines.append(f"{line.name[:1].upper()}{line.name[1:]} {line.figure}: {detail}.")
+    lines += [note.text for note in (*notes(findings, case, units), *also)]
     lines += [AXIAL_CAUTION, MODEL_CAUTION, LIMIT_CAUTION]
     return " ".join(lines)
 
@@ -148,7 +151,7 @@ def _state(stress: StressAt) -> str:
 
 
 def _set(finding: SetFinding, units: Units) -> Line:
-    per, name = (0.3048, "foot") if units.system == "us" else (0.25, "0.25 m")
+    per, name = (0.3048, "foot") if units.unit("length") in FEET else (0.25, "0.25 m")
     moved = f"toe moved {units.show(finding.toe_largest, 'small_length')}"
     blows = finding.blows_per_metre
     detail = (

@@ -16,7 +16,7 @@ from app.bench.lettering import put_on
 from app.look.palette import palette
 
 #: Pixels within which the mouse is on a line, and on a tick; height of a tick.
-NEAR, NEAR_TICK, TICK = 5.0, 4.0, 7.0
+NEAR, NEAR_TICK, TICK = 5.0, 4.0, 8.0
 
 
 def draw_lines(painter: QPainter, lines: Sequence[Line], time: Axis, distance: Axis) -> None:
@@ -43,13 +43,19 @@ def lines_near(lines: Sequence[Line], at: QPointF, time: Axis, distance: Axis) -
 
 
 def draw_ticks(painter: QPainter, lines: Sequence[Line], place: float, time: Axis, plot: QRectF) -> None:
-    """Where arrivals come back past a gauge: short strokes at the foot of a strip."""
+    """Where arrivals come back past a gauge: small arrows up from the foot of a strip."""
     painter.setPen(pen(palette().soft_ink, 1.0))
+    painter.setBrush(pen(palette().soft_ink).color())
     for line in lines:
         moment = line.passes(place)
         if moment is not None and time.low <= moment <= time.high:
             x = time.at(moment)
             painter.drawLine(QLineF(x, plot.bottom(), x, plot.bottom() - TICK))
+            tip = plot.bottom() - TICK - 3
+            painter.drawPolygon(
+                QPolygonF([QPointF(x, tip), QPointF(x - 2.5, tip + 5), QPointF(x + 2.5, tip + 5)])
+            )
+    painter.setBrush(Qt.BrushStyle.NoBrush)
 
 
 def ticks_near(lines: Sequence[Line], place: float, at: QPointF, time: Axis, plot: QRectF) -> tuple[int, ...]:

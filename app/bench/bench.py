@@ -46,7 +46,7 @@ class Bench(QWidget):
         self.profile = Profile(document, sight, solution, laid_over=self.laid_over)
         self.at_cursor = AtCursor(document, sight, solution)
         self.strips = Strips(document, sight, solution, laid_over=self.laid_over)
-        self.findings = FindingsPanel(document, sight, solution)
+        self.findings = FindingsPanel(document, sight, solution, laid_over=self.laid_over)
         self.time_bar = TimeBar(document, sight, solution)
         self._sight = sight
         for picture, size in ((self.member, 150), (self.xt, 280), (self.profile, 170)):
@@ -104,7 +104,8 @@ class Bench(QWidget):
 
     def close_work(self) -> bool:
         """End what goes on beside the window; False where it would not end in time."""
-        return self.laid_over.close()
+        over, mesh = self.laid_over.close(), self.findings.mesh.close_work()
+        return over and mesh
 
     def _show_all(self) -> None:
         self._sight.set(time_range=None, distance_range=None)

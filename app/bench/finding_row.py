@@ -15,7 +15,8 @@ from app.look.spacing import RADIUS, SPACE
 
 @dataclass(frozen=True)
 class Told:
-    """What a row says. `leads`: what a click changes in the sight; `stands`: it holds whatever is entered now."""
+    """What a row says. `leads`: what a click changes in the sight; `stands`: it holds whatever is entered now; `brief`:
+    the detail in one short line, for where there is little room."""
 
     figure: str = ""
     name: str = ""
@@ -23,6 +24,7 @@ class Told:
     state: str | None = None
     leads: tuple[tuple[str, object], ...] = ()
     stands: bool = False
+    brief: str = ""
 
 
 class FindingRow(QAbstractButton):
@@ -31,6 +33,7 @@ class FindingRow(QAbstractButton):
     def __init__(self, parent: QWidget | None = None) -> None:
         super().__init__(parent)
         self.told = Told()
+        self._tight = False
         policy = QSizePolicy(QSizePolicy.Policy.Ignored, QSizePolicy.Policy.Fixed)
         policy.setHeightForWidth(True)
         self.setSizePolicy(policy)
@@ -46,8 +49,24 @@ class FindingRow(QAbstractButton):
         leads = bool(told.leads)
         self.setCursor(Qt.CursorShape.PointingHandCursor if leads else Qt.CursorShape.ArrowCursor)
         self.setFocusPolicy(Qt.FocusPolicy.StrongFocus if leads else Qt.FocusPolicy.NoFocus)
-        self.setToolTip("Show where and when" if leads else "")
+        self._tell_more()
         self.updateGeometry()
+
+    def set_tight(self, tight: bool) -> None:
+        """Say the detail in brief, where there is a brief form; all of it is in the tool tip then."""
+        if tight != self._tight:
+            self._tight = tight
+            self._tell_more()
+            self.updateGeometry()
+            self.update()
+
+    def _tell_more(self) -> None:
+        leads = "Show where and when" if self.told.leads else ""
+        cut = self.told.detail if self._tight and self.told.brief else ""
+        self.setToolTip("\n".join(part for part in (cut, leads) if part))
+
+    def _detail(self) -> str:
+        return self.told.brief if self._tight and self.told.brief else self.told.detail
 
     def sizeHint(self) -> QSize:
         width = self.width() if self.width() > 40 else 220
@@ -58,7 +77,12 @@ class FindingRow(QAbstractButton):
 
     def heightForWidth(self, width: int) -> int:
         head = self._head_height(width)
-        return round(head + self._detail_box(width, head).height() + 6)
+        return round(head + self._detail_box(width, head).height() + (2 if self._tight else 6))
+
+    def full_height(self, width: int) -> int:
+        """Height with the whole detail."""
+        head = self._head_height(width)
+        return round(head + self._detail_box(width, head, self.told.detail).height() + 6)
 
     def resizeEvent(self, event: QResizeEvent) -> None:
         super().resizeEvent(event)
@@ -90,7 +114,7 @@ class FindingRow(QAbstractButton):
         painter.setFont(font("body"))
         urgent = self.told.state in ("near", "over") or self.told.detail.startswith("✕")
         painter.setPen(QColor(colours.ink if urgent else colours.soft_ink))
-        painter.drawText(self._detail_box(self.width(), head), _WRAPPED, self.told.detail)
+        painter.drawText(self._detail_box(self.width(), head), _WRAPPED, self._detail())
 
     def _paint_head(self, painter: QPainter, head: float) -> None:
         """The figure, and its name beside it or, where that is too narrow, under it."""
@@ -115,10 +139,10 @@ class FindingRow(QAbstractButton):
         )
         return 2 + large.height() + (body.height() if needed > width else 0)
 
-    def _detail_box(self, width: int, top: float) -> QRectF:
+    def _detail_box(self, width: int, top: float, detail: str | None = None) -> QRectF:
         metrics = QFontMetricsF(font("body"))
         room = QRectF(SPACE, top, max(width - 2 * SPACE, 20), 10_000)
-        return metrics.boundingRect(room, _WRAPPED, self.told.detail)
+        return metrics.boundingRect(room, _WRAPPED, self._detail() if detail is None else detail)
 
 
 _WRAPPED = int(Qt.TextFlag.TextWordWrap | Qt.AlignmentFlag.AlignLeft | Qt.AlignmentFlag.AlignTop)

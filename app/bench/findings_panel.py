@@ -9,12 +9,15 @@ from collections.abc import Iterator
 from functools import lru_cache
 
 from PySide6.QtCore import Qt
-from PySide6.QtGui import QContextMenuEvent, QGuiApplication
+from PySide6.QtGui import QContextMenuEvent, QGuiApplication, QResizeEvent
 from PySide6.QtWidgets import QFrame, QLabel, QMenu, QScrollArea, QVBoxLayout, QWidget
 
-from app import words
+from app import run_words, words
+from app.bench.differences import Block, Differences
 from app.bench.finding_row import FindingRow, Told
+from app.bench.mesh_view import MeshView
 from app.document import Document
+from app.laid_over import LaidOver
 from app.look.spacing import GAP, SPACE
 from app.sight import Sight
 from app.solving import Solution
@@ -24,12 +27,20 @@ from solver import Findings, Result, findings_of
 
 class FindingsPanel(QFrame):
     def __init__(
-        self, document: Document, sight: Sight, solution: Solution, parent: QWidget | None = None
+        self,
+        document: Document,
+        sight: Sight,
+        solution: Solution,
+        parent: QWidget | None = None,
+        laid_over: LaidOver | None = None,
     ) -> None:
         super().__init__(parent)
         self._document, self._sight, self._solution = document, sight, solution
+        self._laid_over = laid_over
         self._shown: object = None
-        self._list: list[FindingRow] = []
+        self._verdict: list[FindingRow] = []
+        self._notes: list[FindingRow] = []
+        self.differences, self.mesh = Differences(), MeshView()
         self.setMinimumWidth(170)
         self.setAccessibleName("Findings")
         outer = QVBoxLayout(self)
@@ -39,14 +50,21 @@ class FindingsPanel(QFrame):
         heading.setProperty("role", "strong")
         heading.setContentsMargins(SPACE, 0, SPACE, GAP)
         outer.addWidget(heading)
-        scroll = QScrollArea()
+        self._scroll = scroll = QScrollArea()
         scroll.setWidgetResizable(True)
         scroll.setHorizontalScrollBarPolicy(Qt.ScrollBarPolicy.ScrollBarAlwaysOff)
         self._inside = QWidget()
-        self._rows = QVBoxLayout(self._inside)
-        self._rows.setContentsMargins(0, 0, 0, 0)
-        self._rows.setSpacing(2)
-        self._rows.addStretch(1)
+        inside = QVBoxLayout(self._inside)
+        inside.setContentsMargins(0, 0, 0, 0)
+        inside.setSpacing(2)
+        self._verdict_rows, self._note_rows = QVBoxLayout(), QVBoxLayout()
+        for rows in (self._verdict_rows, self._note_rows):
+            rows.setSpacing(2)
+        inside.addLayout(self._verdict_rows)
+        inside.addWidget(self.differences)
+        inside.addLayout(self._note_rows)
+        inside.addWidget(self.mesh)
+        inside.addStretch(1)
         scroll.setWidget(self._inside)
         self._inside.setAutoFillBackground(False)
         scroll.viewport().setAutoFillBackground(False)
@@ -59,56 +77,99 @@ class FindingsPanel(QFrame):
         outer.addWidget(caution)
         for source in (document, solution):
             source.changed.connect(self._look_again)
+        if laid_over is not None:
+            laid_over.changed.connect(self._look_again)
         self._look_again()
 
     def rows(self) -> list[FindingRow]:
         """The findings as they stand, from top to bottom."""
-        return [row for row in self._list if not row.isHidden()]
+        return [row for row in (*self._verdict, *self._notes) if not row.isHidden()]
+
+    def resizeEvent(self, event: QResizeEvent) -> None:
+        super().resizeEvent(event)
+        self._fit()
+
+    def _fit(self) -> None:
+        """The verdict is seen without scrolling: where its details do not fit, they are told in brief."""
+        rows = [row for row in self._verdict if not row.isHidden()]
+        width = self._scroll.width()
+        needed = sum(row.full_height(width) + 2 for row in rows)
+        if self.differences.blocks:
+            needed += self.differences.sizeHint().height()
+        for row in rows:
+            row.set_tight(needed > self._scroll.height())
 
     def contextMenuEvent(self, event: QContextMenuEvent) -> None:
         menu = QMenu(self)
-        copy = menu.addAction("Copy as text", self._copy)
+        copy = menu.addAction("Copy as text", self.copy)
         copy.setEnabled(self._solution.result is not None)
+        check = menu.addAction("Check the mesh", self.mesh.ask)
+        check.setEnabled(self.mesh.link.isEnabled())
         menu.exec(event.globalPos())
 
-    def _copy(self) -> None:
+    def copy(self) -> None:
+        """All findings as a paragraph, onto the clipboard."""
         result = self._solution.result
         if result is not None:
             units = units_of(self._document.project)
-            text = words.as_text(facts_of(result), result.case, units)
+            also = run_words.of_the_run(result, units)
+            text = words.as_text(facts_of(result), result.case, units, also)
             QGuiApplication.clipboard().setText(text)
 
     def _look_again(self) -> None:
         result, units = self._solution.result, units_of(self._document.project)
         stands = not self._document.rejected and self._solution.state not in ("stale", "refused")
-        shown = (result, units, stands, self._solution.message)
+        over = () if self._laid_over is None else self._laid_over.shown
+        shown = (result, units, stands, self._solution.message, over)
         if shown == self._shown:
             return
         self._shown = shown
-        told = list(self._told(result, units)) if result is not None else []
+        verdict = list(_verdict(result, units)) if result is not None else []
+        notes = list(_notes(result, units)) if result is not None else []
         if self._solution.state == "refused" and self._solution.message:
-            told.insert(0, Told(detail=f"✕ {self._solution.message}", stands=True))
-        while len(self._list) < len(told):
-            self._list.append(self._new_row())
-        for row, content in zip(self._list, told, strict=False):
+            verdict.insert(0, Told(detail=f"✕ {self._solution.message}", stands=True))
+        self._show(self._verdict, self._verdict_rows, verdict, stands)
+        self._show(self._notes, self._note_rows, notes, stands)
+        self.differences.tell(tuple(self._blocks(result, units)))
+        self.mesh.follow(result if stands else None, units)
+        self._fit()
+
+    def _blocks(self, result: Result | None, units: Units) -> Iterator[Block]:
+        """A block of differences for each case laid over this one."""
+        for one in () if self._laid_over is None or result is None else self._laid_over.shown:
+            rows: tuple[run_words.Difference, ...] = ()
+            if one.result is not None:
+                rows = run_words.differences(facts_of(result), facts_of(one.result), units)
+            yield one.name, one.number, rows, one.tells
+
+    def _show(self, rows: list[FindingRow], layout: QVBoxLayout, told: list[Told], stands: bool) -> None:
+        while len(rows) < len(told):
+            row = FindingRow()
+            row.clicked.connect(lambda _on=False, r=row: self._sight.set(**dict(r.told.leads)))
+            rows.append(row)
+            layout.addWidget(row)
+        for row, content in zip(rows, told, strict=False):
             row.tell(content)
             row.setEnabled(stands or content.stands)
-        for number, row in enumerate(self._list):
+        for number, row in enumerate(rows):
             row.setVisible(number < len(told))
 
-    def _told(self, result: Result, units: Units) -> Iterator[Told]:
-        facts = facts_of(result)
-        for line in words.verdict(facts, units):
-            leads = _leads(line.time, line.position)
-            yield Told(line.figure, line.name, line.detail, line.state, leads)
-        for note in words.notes(facts, result.case, units):
-            yield Told(detail=note.text, leads=_leads(note.time, note.position, note.pointer))
 
-    def _new_row(self) -> FindingRow:
-        row = FindingRow()
-        row.clicked.connect(lambda: self._sight.set(**dict(row.told.leads)))
-        self._rows.insertWidget(len(self._list), row)
-        return row
+def _verdict(result: Result, units: Units) -> Iterator[Told]:
+    facts = facts_of(result)
+    brief = run_words.in_brief(facts, units)
+    for line, short in zip(words.verdict(facts, units), brief, strict=True):
+        leads = _leads(line.time, line.position)
+        yield Told(line.figure, line.name, line.detail, line.state, leads, brief=short)
+
+
+def _notes(result: Result, units: Units) -> Iterator[Told]:
+    facts = facts_of(result)
+    for note in (*words.notes(facts, result.case, units), *run_words.of_the_run(result, units)):
+        yield Told(detail=note.text, leads=_leads(note.time, note.position, note.pointer))
+    locked = run_words.locked_in(result.residual, units) if result.residual is not None else None
+    if locked is not None:
+        yield Told(detail=locked.text, leads=(*_leads(None, locked.position), ("locked_in", True)))
 
 
 def _leads(time: float | None, position: float | None, pointer: str = "") -> tuple[tuple[str, object], ...]:
@@ -117,7 +178,7 @@ def _leads(time: float | None, position: float | None, pointer: str = "") -> tup
     return tuple((name, value) for name, value in found if value is not None)
 
 
-@lru_cache(maxsize=2)
+@lru_cache(maxsize=6)
 def facts_of(result: Result) -> Findings:
     """Findings of a result, worked out once."""
     return findings_of(result)

@@ -11,6 +11,7 @@ from typing import Any
 import numpy as np
 from PySide6.QtCore import QLineF, QPointF, QRectF, Qt
 from PySide6.QtGui import QColor, QFontMetricsF, QPainter, QPainterPath, QPen, QRegion
+from PySide6.QtWidgets import QMenu
 
 from app.bench.axes import Axis, Margins, margins_of
 from app.bench.axis_drawing import distance_ticks, horizontal_ticks, in_units
@@ -28,16 +29,18 @@ from app.bench.field_values import (
 from app.bench.glyphs import pen
 from app.bench.lettering import CENTRE, put, put_on
 from app.bench.line_styles import over_pen
+from app.bench.locked_in import draw_locked_in, table_of, unit_of
 from app.bench.picture import Picture, Table
 from app.laid_over import LaidOver, Over
 from app.look.fonts import font
 from app.look.palette import palette
 from app.units import rounded
 from solver import Result
+from solver.answer.result import Residual
 
 #: A limit this many times larger than all stresses is told in words at the edge, so that it does not flatten them.
 FAR_LIMIT = 2.5
-TITLE = "Along the member"
+TITLE, LOCKED_IN = "Along the member", "Locked-in force"
 
 
 class Profile(Picture):
@@ -58,7 +61,19 @@ class Profile(Picture):
         return (*super().described(), tuple(limit_lines(self.case)))
 
     def resting_key(self) -> tuple[Any, ...]:
-        return (self.sight.quantity, self._others())
+        return (self.sight.quantity, self._others(), self.residual())
+
+    def residual(self) -> Residual | None:
+        """The force left by the blows, where it is to be shown and there is one."""
+        return self.result.residual if self.sight.locked_in and self.result is not None else None
+
+    def fill_menu(self, menu: QMenu) -> None:
+        if self.result is not None and self.result.residual is not None:
+            on = self.sight.locked_in
+            action = menu.addAction(LOCKED_IN, lambda: self.sight.set(locked_in=not on))
+            action.setCheckable(True)
+            action.setChecked(on)
+            menu.addSeparator()
 
     def _others(self) -> tuple[Over, ...]:
         return () if self._laid_over is None else self._laid_over.results()
@@ -124,6 +139,13 @@ class Profile(Picture):
     def draw_resting(self, painter: QPainter) -> None:
         plot, distance, values = self.plot(), self.distance_axis(), self.value_axis()
         self._draw_heading(painter, plot)
+        least = -sum(s.length for s in self.case.ram_segments)
+        metres = float(self.units.number(1.0, "length"))
+        distance_ticks(painter, in_units(distance, metres), plot.left(), False, least * metres)
+        residual = self.residual()
+        if residual is not None:
+            draw_locked_in(painter, plot, distance, residual, self.units)
+            return
         painter.save()
         painter.setClipRect(plot)
         if values.low < 0 < values.high:
@@ -134,9 +156,6 @@ class Profile(Picture):
             self._draw_others(painter, plot, distance, values)
             self._draw_limits(painter, plot, distance, values)
         painter.restore()
-        least = -sum(s.length for s in self.case.ram_segments)
-        metres = float(self.units.number(1.0, "length"))
-        distance_ticks(painter, in_units(distance, metres), plot.left(), False, least * metres)
         horizontal_ticks(painter, values, plot.bottom(), self.result is not None)
 
     def moving_region(self) -> QRegion:
@@ -150,19 +169,27 @@ class Profile(Picture):
         draw_place(painter, plot, distance, self.sight.place)
         if self.sight.pinned is not None:
             draw_pinned_place(painter, plot, distance, self.sight.pinned[1])
-        if self.result is not None and len(self.result.fields.position):
+        if self.result is not None and len(self.result.fields.position) and self.residual() is None:
             self._draw_now(painter, distance)
         painter.restore()
 
     def _draw_heading(self, painter: QPainter, plot: QRectF) -> None:
         y = 0.5 * self.margins().header
         painter.setFont(font("strong"))
-        put(painter, 8, y, TITLE, palette().ink)
+        put(painter, 8, y, self._title(), palette().ink)
         painter.setFont(self.font())
+
+    def _title(self) -> str:
+        return TITLE if self.residual() is None else LOCKED_IN
 
     def _draw_moment(self, painter: QPainter) -> None:
         """The unit and the moment behind the heading, as much of it as there is room for."""
-        x = 14 + QFontMetricsF(font("strong")).horizontalAdvance(TITLE)
+        x = 14 + QFontMetricsF(font("strong")).horizontalAdvance(self._title())
+        residual = self.residual()
+        if residual is not None:
+            blows = f"{unit_of(residual, self.units)} after {len(residual.set_per_blow)} blows"
+            put(painter, x, 0.5 * self.margins().header, blows, palette().soft_ink)
+            return
         unit = self.units.unit(self.dimension, self._largest())
         moment = self.units.show(self.sight.time, "time")
         painter.setFont(self.font())
@@ -302,6 +329,9 @@ class Profile(Picture):
         """Distance, the extremes of the whole run, and the quantity now, in the units and sign of the screen."""
         if self.result is None:
             return None
+        residual = self.residual()
+        if residual is not None:
+            return table_of(residual, self.units)
         units, factor, quantity = self.units, self.factor(), self.sight.quantity
         found = extremes_of(self.result, quantity)
         fields = self.result.fields
