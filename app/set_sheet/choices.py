@@ -12,6 +12,7 @@ from app.look.spacing import GAP, SPACE, WIDE
 from app.set_sheet.answer_words import bands_words, safe_words, shown_words, stop_words
 from app.set_sheet.fields import NumbersField
 from app.set_sheet.numbers_to_vary import numbers_to_vary
+from app.set_sheet.ranges import Ranges
 from app.set_sheet.sheet_solution import SheetSolution
 from app.set_sheet.words import PER, per_of
 from app.units import Units, units_of
@@ -47,8 +48,8 @@ class Choices(QScrollArea):
         self.measured = NumbersField("Measured set", "Mean set of the last blows, measured on site.")
         self.error = NumbersField("± reading error", "How far the mean set may be off.")
         self.samples = _list("How many samples", [(n, f"{n} samples") for n in SAMPLES])
-        self.samples.setCurrentIndex(2)
         self.work_out = QPushButton("Work out")
+        self.ranges = Ranges()
         self._compose()
         self._connect()
         document.changed.connect(self.follow)
@@ -68,7 +69,7 @@ class Choices(QScrollArea):
             ("What is varied", (self.lowest, self.highest, self.vary, self.pointer, self.values, self.per)),
             ("What set to stop at", (self.resistance, self.value, self.stop_at, self.safe)),
             ("What a measured set shows", (self.measured, self.error, self.shown)),
-            ("What is not known", (run, self.samples_told)),
+            ("What is not known", (self.ranges, run, self.samples_told)),
         ):
             heading = QLabel(title)
             heading.setProperty("role", "title")
@@ -97,6 +98,8 @@ class Choices(QScrollArea):
         self.vary.activated.connect(lambda _i: self._set("vary", self.vary.currentData()))
         self.per.activated.connect(lambda _i: self._set("per", self.per.currentData()))
         self.pointer.activated.connect(lambda _i: self._choose_pointer())
+        self.samples.activated.connect(lambda _i: self._set("samples", self.samples.currentData()))
+        self.ranges.edited.connect(lambda unknowns: self._set("unknowns", unknowns))
         self.work_out.clicked.connect(self._sample)
 
     # -- edits --------------------------------------------------------------------------------------------------------
@@ -123,7 +126,7 @@ class Choices(QScrollArea):
 
     def _sample(self) -> None:
         if self._solution.samples_done is None:
-            self._solution.sample(int(self.samples.currentData()))
+            self._solution.sample()
         else:
             self._solution.stop_samples()
 
@@ -142,6 +145,8 @@ class Choices(QScrollArea):
         self.error.show_values(_one(settings.reading_error), (), "small_length", units)
         _choose(self.vary, settings.vary)
         _choose(self.per, per_of(units, settings.per))
+        _choose(self.samples, settings.samples)
+        self.ranges.show_ranges(case, settings.unknowns)
         self._follow_pointer(settings.pointer or blow_pointer(case))
         if plan is not None:
             first = plan.levels[0]

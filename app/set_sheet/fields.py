@@ -56,12 +56,17 @@ class NumbersField(QWidget):
         self._dimension, self._units = dimension, units
         self._shown = tuple(values or ())
         self.unit.setText(units.unit(dimension))
+        self.unit.setVisible(dimension != "none")
         text = self._text(values or ())
         pale = self._text(usual)
         if self.field.placeholderText() != pale:
             self.field.setPlaceholderText(pale)
         if not self.field.hasFocus() and self.field.text() != text and not self.problem.isVisibleTo(self):
             self.field.setText(text)
+
+    def refuse(self, sentence: str) -> None:
+        """Say under the field what is wrong with what was entered."""
+        self._tell(sentence)
 
     def _text(self, values: Sequence[float]) -> str:
         number: Callable[[float], str] = lambda v: f"{float(self._units.number(v, self._dimension)):.6g}"  # noqa: E731

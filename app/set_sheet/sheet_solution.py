@@ -14,8 +14,7 @@ from solver import Case
 from solver.studies import Cell, Plan, Sheet, StudyError, cells_of
 from solver.studies.questions import Cancelled, SafeBlow, ShownResistance, point, safe_blow, shown_by
 from solver.studies.settings import SheetSettings, settings_of
-from solver.studies.uncertainty import Bands, sampled
-from solver.studies.unknowns import usual_unknowns
+from solver.studies.uncertainty import FEWEST, Bands, sampled
 
 State = Literal["waiting", "solving", "answering", "fresh", "stopped", "refused"]
 #: Changes that follow each other faster than this are solved once, ms.
@@ -49,6 +48,7 @@ class SheetSolution(QObject):
         self.answers = Answers()
         self.bands: Bands | None = None
         self.samples_done: int | None = None
+        self._asked: tuple[object, ...] | None = None
         self.state: State = "waiting"
         self.message = ""
         self._stream = Stream(self)
@@ -97,6 +97,7 @@ class SheetSolution(QObject):
     def stop(self) -> None:
         """Break off; what is solved stays."""
         if self.state in ("solving", "answering"):
+            self._timer.stop()
             self._stream.stop()
             self.state, self.message = "stopped", "Stopped: the picture shows what was solved until then."
         self.stop_samples()
@@ -113,12 +114,13 @@ class SheetSolution(QObject):
         first, second = self._stream.close(0.5), self._samples.close(0.3)
         return first and second
 
-    def sample(self, samples: int, seed: int = 1) -> None:
+    def sample(self) -> None:
         """Work out the bands for what is not known, beside the sheet."""
-        plan = self.plan
+        plan, settings = self.plan, self.settings
         if plan is None:
             return
-        self.samples_done = 0
+        self.samples_done, self._asked = 0, _sampling(settings)
+        unknowns, samples, seed = settings.unknown_inputs(plan.case), settings.samples, settings.seed
 
         def work(cancel: Cancel) -> Iterator[Any]:
             told = 0
@@ -129,9 +131,7 @@ class SheetSolution(QObject):
                     told = done
                     self._samples.tell(done)
 
-            bands = sampled(
-                plan, usual_unknowns(plan.case), samples=samples, seed=seed, progress=progress, cancel=cancel
-            )
+            bands = sampled(plan, unknowns, samples=samples, seed=seed, progress=progress, cancel=cancel)
             if bands is not None:
                 yield bands
 
@@ -152,10 +152,19 @@ class SheetSolution(QObject):
             except StudyError as error:
                 self._refuse(str(error))
                 return
-            if self._key is None or key != self._key:
-                self._key = key
+            self._forget_samples_of_others(key[1])
+            if self._key is None or not _same(key, self._key):
+                self.state, self.message = "solving", ""
                 self._timer.start()
+            self._key = key
         self.changed.emit()
+
+    def _forget_samples_of_others(self, settings: SheetSettings) -> None:
+        """Drop the bands, or stop the samples, that were asked for with other ranges."""
+        asked = _sampling(settings)
+        if self._asked is not None and asked != self._asked:
+            self._asked, self.bands = None, None
+            self.stop_samples()
 
     def _refuse(self, sentence: str) -> None:
         self._stream.stop()
@@ -216,6 +225,17 @@ class SheetSolution(QObject):
         self.samples_done = None
         self.message = sentence
         self.changed.emit()
+
+
+def _sampling(settings: SheetSettings) -> tuple[object, ...]:
+    return settings.unknowns, settings.samples, settings.seed
+
+
+def _same(one: tuple[Case, SheetSettings], other: tuple[Case, SheetSettings]) -> bool:
+    """Whether both give the same sheet and answers: ranges of samples and the way blows are counted play no part."""
+    without = {"unknowns": None, "samples": FEWEST, "seed": 1, "per": None}
+    settings = [key[1].model_copy(update=without) for key in (one, other)]
+    return one[0] == other[0] and settings[0] == settings[1]
 
 
 def _answers(plan: Plan, settings: SheetSettings, cancel: Cancel) -> Iterator[Answers]:

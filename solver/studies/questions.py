@@ -11,7 +11,6 @@ from itertools import pairwise
 from typing import Literal
 
 import numpy as np
-from scipy.optimize import brentq
 
 from solver.model.project import Case
 from solver.run import solve
@@ -92,6 +91,8 @@ def safe_blow(plan: Plan, resistance: float, *, cancel: Cancel = None) -> SafeBl
         share = seen[value].share
         return float("nan") if share is None else share - 1
 
+    from scipy.optimize import brentq  # not at the start of the program, which it would slow down
+
     low, high = float(values[0]), float(values[-1])
     below = excess(low)
     if np.isnan(below):
@@ -123,6 +124,8 @@ def shown_by(
             cell = point(plan, float(np.exp(log_resistance)), level, cancel)
             seen[log_resistance] = max(cell.set or 0.0, 0.0)
         return seen[log_resistance]
+
+    from scipy.optimize import brentq
 
     grid = [float(v) for v in np.log(np.geomspace(lowest, highest, POINTS))]
 

@@ -11,7 +11,6 @@ from dataclasses import dataclass
 
 import numpy as np
 from numpy.typing import NDArray
-from scipy import stats
 
 from solver.many import solve_many
 from solver.model.project import Case
@@ -56,6 +55,8 @@ class Bands:
 
 def factors_of(unknowns: Sequence[Unknown], count: int, seed: Sequence[int]) -> Array:
     """Factors, shape (count, unknowns), by a Latin hypercube that follows from `seed` alone."""
+    from scipy import stats  # a second: only where it is sampled
+
     cube = stats.qmc.LatinHypercube(len(unknowns), rng=np.random.default_rng(list(seed))).random(count)
     columns = []
     for unknown, share in zip(unknowns, cube.T, strict=True):
@@ -157,6 +158,8 @@ def _bands(
 
 def _correlation(inputs: Array, outcome: Array) -> float:
     """Mean over the rows of Spearman's rank correlation; rows where nothing varies say nothing."""
+    from scipy import stats
+
     found = []
     for x, y in zip(inputs, outcome, strict=True):
         known = ~np.isnan(y)

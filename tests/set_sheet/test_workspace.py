@@ -149,6 +149,16 @@ def test_point_nearest_to_the_pointer_is_read_out(shown: SetSheet) -> None:
 def test_what_is_not_known_gives_bands_and_can_be_stopped(shown: SetSheet, qtbot: QtBot) -> None:
     choices = shown.choices
     choices.samples.setCurrentIndex(0)
+    choices.samples.activated.emit(0)
+    type_into(qtbot, choices.ranges.rows["cushion"].field, "1")
+    type_into(qtbot, choices.ranges.rows["quake"].field, "0.5 2")
+    studies = shown._document.project.studies
+    assert studies is not None
+    assert studies["set_sheet"]["samples"] == 200
+    first = studies["set_sheet"]["unknowns"][0]
+    assert (first["what"], first["low"], first["high"]) == ("quake", 0.5, 2.0)
+    assert "cushion" not in [u["what"] for u in studies["set_sheet"]["unknowns"]]
+    wait(qtbot, shown)
     qtbot.mouseClick(choices.work_out, Qt.MouseButton.LeftButton)
     assert choices.work_out.text() == "Stop"
     qtbot.mouseClick(choices.work_out, Qt.MouseButton.LeftButton)
