@@ -12,6 +12,7 @@ from functools import cache, lru_cache
 from math import isfinite
 from typing import TYPE_CHECKING, Any
 
+from app.unit_factors import known_factor
 from solver.model.quantity import SI_UNITS
 
 if TYPE_CHECKING:
@@ -121,6 +122,8 @@ def factor_of(unit: str, dimension: str) -> Decimal:
     """SI value of one of the unit. Raises `UnitError` for what is no unit of the dimension."""
     if unit == "":
         return Decimal(1)
+    if unit in KNOWN_UNITS[dimension]:
+        return known_factor(unit, dimension)
     candidates = [unit] + [k for k in KNOWN_UNITS[dimension] if k.casefold() == unit.casefold() and k != unit]
     for candidate in candidates:
         try:
