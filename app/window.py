@@ -24,6 +24,7 @@ from app.notes_panel import NotesPanel
 from app.notices import Notices
 from app.panels_told import ABOUT, LIMITS, tell
 from app.recovery import Autosave
+from app.report.screen.workspace import ReportSpace
 from app.set_sheet.workspace import SetSheet
 from app.settings import Settings
 from app.sight import Sight
@@ -93,6 +94,8 @@ class Window(QMainWindow):
         self.workspaces.add(
             "Set sheet", "What set to stop at, with what drop, and whether it survives", self.set_sheet
         )
+        self.report = ReportSpace(self.document, self)
+        self.workspaces.add("Report", "What the client reads: as pages, PDF or HTML", self.report)
         self.top_bar.add_switch(self.workspaces.switch)
         middle = QWidget(self)
         column = QVBoxLayout(middle)
@@ -112,6 +115,7 @@ class Window(QMainWindow):
         self.notes.closed.connect(self.menus.notes.trigger)
         self.menus.notes.triggered.connect(lambda on: self.settings.set_flag("notes", on))
         self.set_sheet.saving.told.connect(lambda text, state: self.notices.show_notice("sheet", text, state))
+        self.report.told.connect(lambda text, state: self.notices.show_notice("report", text, state))
         self.bench.alone_changed.connect(self._give_room)
         self.bench.grid.folding_changed.connect(self._tell_folded)
         self.autosave.failed.connect(lambda text: self.notices.show_notice("autosave", text, "over"))
@@ -195,6 +199,7 @@ class Window(QMainWindow):
     def commit_typing(self) -> None:
         """Hand over what stands in a field and has not been entered yet."""
         self.notes.commit()
+        self.report.form.take_words()
         field = QApplication.focusWidget()
         if isinstance(field, QLineEdit) and self.isAncestorOf(field):
             field.clearFocus()
@@ -282,7 +287,8 @@ class Window(QMainWindow):
         self.settings.save()
         sheet_ended = self.set_sheet.close_down()
         bench_ended = self.bench.close_work()
-        self.ended_in_time = self.solution.close() and sheet_ended and bench_ended
+        report_ended = self.report.close_down()
+        self.ended_in_time = self.solution.close() and sheet_ended and bench_ended and report_ended
         event.accept()
 
     ended_in_time = True

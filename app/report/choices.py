@@ -16,7 +16,7 @@ SECTIONS: dict[str, str] = {
     "limits": "Limits of stress and their sources",
     "quality": "Quality of the computation",
     "cautions": "Cautions",
-    "appendix": "Appendix: the input, and how to repeat this",
+    "appendix": "Appendix: input, and how to repeat it",
 }
 FIGURES: dict[str, str] = {
     "member": "Drawing of the member",

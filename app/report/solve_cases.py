@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Callable
+from dataclasses import replace
 
 from app.report.outcome import Solved, solved
 from solver import Project
@@ -15,14 +16,20 @@ def solve_cases(
     mesh_check: bool,
     tell: Tell | None = None,
     cancel: Callable[[], bool] | None = None,
+    known: tuple[Solved, ...] = (),
 ) -> tuple[Solved, ...]:
-    """Every case in order; one that cannot be solved is kept with the sentence why. `tell` hears what is being done."""
+    """Every case in order; one that cannot be solved is kept with the sentence why. `tell` hears what is being done.
+    A case that is among the `known` is not solved again."""
     from solver import SolveError, check_mesh, solve
 
     found = []
     for case in project.cases:
         if cancel is not None and cancel():
             break
+        before = next((one for one in known if one.case == case), None)
+        if before is not None and (before.mesh is not None or not mesh_check or before.result is None):
+            found.append(before if mesh_check else replace(before, mesh=None))
+            continue
         if tell:
             tell(f"Solving {case.name}")
         try:

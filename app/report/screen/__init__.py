@@ -1,0 +1,1 @@
+"""The workspace Report: choices on the left, the pages on the right."""
