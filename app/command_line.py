@@ -93,6 +93,7 @@ def _sheet_parser() -> argparse.ArgumentParser:
     parser.add_argument("file", metavar="FILE.strike", type=Path)
     parser.add_argument("--out", metavar="DIR", type=Path, required=True, help="folder for the sheet")
     parser.add_argument("--case", metavar="NAME", help="of this case (the first one otherwise)")
+    parser.add_argument("--samples", metavar="N", type=int, help="samples of what is not known, 50 to 5000")
     parser.add_argument("--quiet", action="store_true", help="say nothing but errors")
     return parser
 
@@ -171,9 +172,10 @@ def _records(argv: Sequence[str]) -> int:
 
 
 def _sheet(arguments: argparse.Namespace) -> int:
-    from app.set_sheet.command import write_sheet
+    from app.set_sheet.command import Choices, write_sheet
 
-    return write_sheet(arguments.file, arguments.case, arguments.out, arguments.quiet)
+    choices = Choices(arguments.case, arguments.samples, arguments.quiet)
+    return write_sheet(arguments.file, arguments.out, choices)
 
 
 def _report(argv: Sequence[str]) -> int:

@@ -2,10 +2,11 @@
 
 from __future__ import annotations
 
-from app.set_sheet.words import criterion, force_text, level_text, varied_text
+from app.set_sheet.words import force_text, level_text, varied_text
 from app.units import Units, rounded
 from app.words import percent
 from solver.studies import Cell
+from solver.studies.plan import at_value
 from solver.studies.questions import SafeBlow, ShownResistance
 from solver.studies.uncertainty import Bands
 
@@ -15,10 +16,7 @@ def safe_words(answer: SafeBlow, cell: Cell, units: Units) -> str:
     what, at = varied_text(cell.level), force_text(answer.resistance, units)
     if answer.why == "no limit":
         return "No material of the member has a limit: give one to be told the largest blow."
-    low, high = (
-        level_text(type(cell.level)(cell.level.pointer, value, cell.level.label, cell.level.dimension), units)
-        for value in (answer.low, answer.high)
-    )
+    low, high = (level_text(at_value(cell.level, value), units) for value in (answer.low, answer.high))
     if answer.why == "none within":
         return f"None in the range: even a {what} of {low} passes a limit at {at}."
     if answer.why == "all within":
@@ -44,10 +42,6 @@ def shown_words(answer: ShownResistance, units: Units) -> str:
     above = force_text(high, units) if high is not None else f"more than {force_text(answer.highest, units)}"
     middle = f", {force_text(answer.middle, units)} in the middle" if answer.middle is not None else ""
     return f"{lead} {below} to {above}{middle} (each to {percent(answer.tolerance)})."
-
-
-def stop_words(cell: Cell, units: Units) -> str:
-    return criterion(cell, units)
 
 
 def bands_words(bands: Bands, resistance: float, units: Units) -> str:

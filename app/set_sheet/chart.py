@@ -13,6 +13,7 @@ from app.set_sheet.scales import Scale, number, root_ticks, ticks
 from app.set_sheet.scene import Anchor, Area, Level, Line, Mark, Measure, Scene, Words
 from app.set_sheet.words import PER, level_text, over_text
 from app.units import Units
+from solver import Case
 from solver.studies import Cell, Sheet
 from solver.studies.uncertainty import Bands
 
@@ -51,7 +52,7 @@ def frame_of(sheet: Sheet, units: Units, width: float, height: float, bands: Ban
     )
     comp = max((c.compression.peak.value for c in cells if c.compression), default=1e6)
     tens = max((c.tension.peak.value for c in cells if c.tension), default=0.0)
-    limits = limits_of(sheet)
+    limits = case_limits(sheet.plan.case)
     # a limit far beyond what occurs is told, but does not squeeze the lines
     comp = max([comp, *(v for v in limits["compression"] if v < 1.8 * comp)]) * 1.08
     tens = max([tens, 0.12 * comp, *(v for v in limits["tension"] if v < max(4 * tens, 0.5 * comp))]) * 1.08
@@ -66,9 +67,8 @@ def frame_of(sheet: Sheet, units: Units, width: float, height: float, bands: Ban
     )
 
 
-def limits_of(sheet: Sheet) -> dict[str, list[float]]:
+def case_limits(case: Case) -> dict[str, list[float]]:
     """The limits of the member's materials, Pa, each once."""
-    case = sheet.plan.case
     found: dict[str, list[float]] = {}
     for sign in ("compression", "tension"):
         values = {case.material(s.material).limits.value(sign) for s in case.member.segments}
@@ -179,7 +179,7 @@ def _stress_axis(scene: Scene, frame: Frame, sheet: Sheet, units: Units) -> None
         x = scale.at(value * one)
         scene.append(Line(((x, y0), (x, y1)), "line" if value == 0 else "grid"))
         scene.append(Words((x, y0 + 16), number(value), "soft_ink", anchor="middle"))
-    given = limits_of(sheet)
+    given = case_limits(sheet.plan.case)
     push = 1 if units.compression_positive else -1
     missing = []
     for sign, side in (("compression", push), ("tension", -push)):

@@ -9,12 +9,13 @@ from PySide6.QtWidgets import QComboBox, QHBoxLayout, QLabel, QPushButton, QScro
 
 from app.document import Document
 from app.look.spacing import GAP, SPACE, WIDE
-from app.set_sheet.answer_words import bands_words, safe_words, shown_words, stop_words
+from app.set_sheet.answer_words import bands_words, safe_words, shown_words
+from app.set_sheet.depth_choices import DepthChoices
 from app.set_sheet.fields import NumbersField
 from app.set_sheet.numbers_to_vary import numbers_to_vary
 from app.set_sheet.ranges import Ranges
 from app.set_sheet.sheet_solution import SheetSolution
-from app.set_sheet.words import PER, per_of
+from app.set_sheet.words import PER, criterion, per_of
 from app.units import Units, units_of
 from solver.studies import resistance_of
 from solver.studies.plan import blow_pointer
@@ -50,6 +51,7 @@ class Choices(QScrollArea):
         self.samples = _list("How many samples", [(n, f"{n} samples") for n in SAMPLES])
         self.work_out = QPushButton("Work out")
         self.ranges = Ranges()
+        self.to_depth = DepthChoices(document)
         self._compose()
         self._connect()
         document.changed.connect(self.follow)
@@ -69,6 +71,7 @@ class Choices(QScrollArea):
             ("What is varied", (self.lowest, self.highest, self.vary, self.pointer, self.values, self.per)),
             ("What set to stop at", (self.resistance, self.value, self.stop_at, self.safe)),
             ("What a measured set shows", (self.measured, self.error, self.shown)),
+            ("Down to depth", (self.to_depth,)),
             ("What is not known", (self.ranges, run, self.samples_told)),
         ):
             heading = QLabel(title)
@@ -120,7 +123,9 @@ class Choices(QScrollArea):
         def change(tree: dict[str, Any]) -> None:
             studies = tree.get("studies") or {}
             sheet = {**studies.get("set_sheet", {}), **changes}
-            tree["studies"] = {**studies, "set_sheet": {k: v for k, v in sheet.items() if v is not None}}
+            kept = {k: v for k, v in sheet.items() if v is not None}
+            others = {k: v for k, v in studies.items() if k != "set_sheet"}
+            tree["studies"] = ({**others, "set_sheet": kept} if kept else others) or None
 
         self._document.edit_tree("Change the set sheet", change)
 
@@ -168,7 +173,7 @@ class Choices(QScrollArea):
     def _answers(self, units: Units) -> None:
         solution, answers = self._solution, self._solution.answers
         asking = solution.state in ("solving", "answering")
-        _say(self.stop_at, stop_words(answers.stop_at, units) if answers.stop_at else "…" if asking else "")
+        _say(self.stop_at, criterion(answers.stop_at, units) if answers.stop_at else "…" if asking else "")
         safe = ""
         if answers.safe is not None and answers.stop_at is not None:
             safe = safe_words(answers.safe, answers.stop_at, units)

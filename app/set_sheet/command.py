@@ -4,75 +4,113 @@ from __future__ import annotations
 
 import sys
 from collections.abc import Callable
+from dataclasses import dataclass
 from pathlib import Path
 
-from app.set_sheet.answer_words import safe_words
-from app.set_sheet.files import sheet_csv, sheet_json
+from app.set_sheet.answer_words import bands_words, safe_words
+from app.set_sheet.files import Answers, sheet_csv, sheet_json
+from app.set_sheet.printed import Page, page_pdf
 from app.set_sheet.words import criterion
-from app.units import NO_BREAK, units_of
+from app.units import NO_BREAK, Units, units_of
 from app.usable_project import load_usable
-from solver import ProjectError
+from solver import Case, Project, ProjectError, SolveError
+from solver.studies import Sheet, StudyError, solve_sheet
+from solver.studies.plan import at_value
+from solver.studies.questions import point, safe_blow
+from solver.studies.settings import SheetSettings, settings_of
+from solver.studies.uncertainty import sampled
 
 SOLVED, FAILED, UNUSABLE = 0, 1, 2
 
 
-def write_sheet(path: Path, name: str | None, out: Path, quiet: bool = False) -> int:
+@dataclass(frozen=True)
+class Choices:
+    """What the command line asks for; `samples` of what is not known, `None` = none."""
+
+    case: str | None = None
+    samples: int | None = None
+    quiet: bool = False
+
+
+def write_sheet(path: Path, out: Path, choices: Choices) -> int:
     """Write `sheet.csv`, `sheet.json` and `sheet.pdf` into `out`; returns the exit status as `solve` does."""
     try:
         project = load_usable(path)
     except ProjectError as error:
         return _complain(str(error), UNUSABLE)
-    chosen = next((c for c in project.cases if name in (None, c.name)), None)
-    if chosen is None:
+    case = next((c for c in project.cases if choices.case in (None, c.name)), None)
+    if case is None:
         known = ", ".join(f"'{c.name}'" for c in project.cases)
-        return _complain(f"{path}: /cases: there is no case named '{name}' (there are: {known})", UNUSABLE)
-
-    from app.set_sheet.printed import Page, page_pdf
-    from solver import SolveError
-    from solver.studies import StudyError, solve_sheet
-    from solver.studies.questions import point, safe_blow
-    from solver.studies.settings import settings_of
-
+        return _complain(
+            f"{path}: /cases: there is no case named '{choices.case}' (there are: {known})", UNUSABLE
+        )
     try:
         settings = settings_of(project)
     except StudyError as error:
         return _complain(f"{path}: {error}", UNUSABLE)
-    units = units_of(project)
     try:
-        plan = settings.plan(chosen)
-        total = len(plan.resistances) * len(plan.levels)
-        sheet = solve_sheet(plan, progress=None if quiet or not sys.stderr.isatty() else _progress(total))
-        level = plan.levels[0]
-        if settings.asked_value is not None:
-            level = type(level)(level.pointer, settings.asked_value, level.label, level.dimension)
-        resistance = settings.asked_resistance or plan.own_total
-        stop_at, safe = point(plan, resistance, level), safe_blow(plan, resistance)
+        sheet, answers = _solved(case, settings, choices)
     except (StudyError, SolveError) as error:
-        return _complain(f"The set sheet of case '{chosen.name}' cannot be made: {error}", FAILED)
-    words, answer = criterion(stop_at, units), safe_words(safe, stop_at, units)
-    page = Page(sheet, project.title, units, words, answer, settings.per)
+        return _complain(f"The set sheet of case '{case.name}' cannot be made: {error}", FAILED)
     try:
-        out.mkdir(parents=True, exist_ok=True)
-        (out / "sheet.csv").write_text(sheet_csv(sheet, project.title), encoding="utf-8", newline="\n")
-        (out / "sheet.json").write_text(
-            sheet_json(sheet, project.title, stop_at, safe, words.replace(NO_BREAK, " ")),
-            encoding="utf-8",
-            newline="\n",
-        )
-        (out / "sheet.pdf").write_bytes(page_pdf(page))
+        told = _write(project, sheet, answers, settings, out)
     except OSError as error:
         return _complain(f"The sheet cannot be written to {out}: {error.strerror or error}.", FAILED)
-    if not quiet:
-        print(
-            f"{chosen.name}: {len(sheet.cells)} points -> {out}\n  {words}\n  {answer}".replace(NO_BREAK, " ")
-        )
+    if not choices.quiet:
+        print("\n  ".join([f"{case.name}: {len(sheet.cells)} points -> {out}", *told]).replace(NO_BREAK, " "))
     return SOLVED
 
 
-def _progress(total: int) -> Callable[[int], None]:
+def _solved(case: Case, settings: SheetSettings, choices: Choices) -> tuple[Sheet, Answers]:
+    plan = settings.plan(case)
+    shown = not choices.quiet and sys.stderr.isatty()
+    points = len(plan.resistances) * len(plan.levels)
+    sheet = solve_sheet(plan, progress=_progress(points, "points") if shown else None)
+    level = plan.levels[0] if settings.asked_value is None else at_value(plan.levels[0], settings.asked_value)
+    resistance = settings.asked_resistance or plan.own_total
+    stop_at, safe = point(plan, resistance, level), safe_blow(plan, resistance)
+    bands = None
+    if choices.samples is not None:
+        bands = sampled(
+            plan,
+            settings.unknown_inputs(case),
+            samples=choices.samples,
+            seed=settings.seed,
+            progress=_progress(choices.samples, "samples") if shown else None,
+        )
+    return sheet, Answers(stop_at, safe, bands)
+
+
+def _write(project: Project, sheet: Sheet, answers: Answers, settings: SheetSettings, out: Path) -> list[str]:
+    """Write the three files; returns the sentences of the answers."""
+    units = units_of(project)
+    told = sentences(answers, units)
+    page = Page(sheet, project.title, units, told[0], tuple(told[1:]), settings.per, answers.bands)
+    out.mkdir(parents=True, exist_ok=True)
+    (out / "sheet.csv").write_text(sheet_csv(sheet, project.title), encoding="utf-8", newline="\n")
+    words = told[0].replace(NO_BREAK, " ")
+    (out / "sheet.json").write_text(
+        sheet_json(sheet, project.title, answers, words), encoding="utf-8", newline="\n"
+    )
+    (out / "sheet.pdf").write_bytes(page_pdf(page))
+    return told
+
+
+def sentences(answers: Answers, units: Units) -> list[str]:
+    """What the answers say: the criterion first."""
+    assert answers.stop_at is not None
+    found = [criterion(answers.stop_at, units)]
+    if answers.safe is not None:
+        found.append(safe_words(answers.safe, answers.stop_at, units))
+    if answers.bands is not None:
+        found.append(bands_words(answers.bands, answers.stop_at.resistance, units))
+    return found
+
+
+def _progress(total: int, what: str) -> Callable[[int], None]:
     def show(done: int) -> None:
         end = "\r\033[K" if done == total else ""
-        print(f"\r{done} of {total} points{end}", end="", file=sys.stderr, flush=True)
+        print(f"\r{done} of {total} {what}{end}", end="", file=sys.stderr, flush=True)
 
     return show
 

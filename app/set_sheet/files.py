@@ -5,12 +5,14 @@ from __future__ import annotations
 import csv
 import io
 import json
+from dataclasses import dataclass
 from typing import Any
 
 from app import __version__
 from solver.answer.findings import StressFinding
 from solver.studies import Cell, Sheet
 from solver.studies.questions import SafeBlow
+from solver.studies.uncertainty import Bands
 
 HEAD = (
     "total_resistance_N",
@@ -75,10 +77,19 @@ def _one_line(text: str) -> str:
     return " ".join(text.split())
 
 
-def sheet_json(sheet: Sheet, title: str, stop_at: Cell | None, safe: SafeBlow | None, criterion: str) -> str:
+@dataclass(frozen=True)
+class Answers:
+    """To the questions of the settings: the point to stop at, the largest blow, and the samples where asked for."""
+
+    stop_at: Cell | None = None
+    safe: SafeBlow | None = None
+    bands: Bands | None = None
+
+
+def sheet_json(sheet: Sheet, title: str, answers: Answers, criterion: str) -> str:
     """All of it for other programs: the plan, the points, and the answers."""
-    plan = sheet.plan
-    tree = {
+    plan, safe = sheet.plan, answers.safe
+    tree: dict[str, Any] = {
         "program": f"Striketrace {__version__}",
         "project": title,
         "case": plan.case.name,
@@ -88,22 +99,42 @@ def sheet_json(sheet: Sheet, title: str, stop_at: Cell | None, safe: SafeBlow | 
         "varied": plan.levels[0].pointer,
         "resistances_N": list(plan.resistances),
         "values": [level.value for level in plan.levels],
-        "points": [
-            dict(zip(HEAD, _row(cell), strict=True)) | {"at_rest": cell.at_rest} for cell in sheet.cells
-        ],
+        "points": [_point(cell) for cell in sheet.cells],
         "stopping_criterion": criterion,
-        "stop_at": None
-        if stop_at is None
-        else dict(zip(HEAD, _row(stop_at), strict=True)) | {"at_rest": stop_at.at_rest},
-        "largest_blow": None
-        if safe is None
-        else {
+        "stop_at": None if answers.stop_at is None else _point(answers.stop_at),
+    }
+    if safe is not None:
+        tree["largest_blow"] = {
             "resistance_N": safe.resistance,
             "outcome": safe.why,
             "value": safe.level.value if safe.level and safe.why == "found" else None,
             "looked_from": safe.low,
             "looked_to": safe.high,
             "tolerance": safe.tolerance,
-        },
-    }
+        }
+    if answers.bands is not None:
+        tree["not_known"] = _bands(answers.bands)
     return json.dumps(tree, indent=2, ensure_ascii=False) + "\n"
+
+
+def _point(cell: Cell) -> dict[str, Any]:
+    return dict(zip(HEAD, _row(cell), strict=True)) | {"at_rest": cell.at_rest}
+
+
+def _bands(bands: Bands) -> dict[str, Any]:
+    """Quantiles are of 10, 50 and 90 %."""
+    return {
+        "samples": bands.samples,
+        "failed": bands.failed,
+        "seed": bands.seed,
+        "value": bands.level.value,
+        "resistances_N": bands.resistances.tolist(),
+        "set_m": bands.set.tolist(),
+        "peak_compression_Pa": bands.compression.tolist(),
+        "peak_tension_Pa": bands.tension.tolist(),
+        "share_of_samples_over_a_limit": None if bands.over is None else bands.over.tolist(),
+        "rank_correlation": [
+            {"input": one.label, "with_set": one.on_set, "with_stress": one.on_stress}
+            for one in bands.influences
+        ],
+    }

@@ -34,13 +34,13 @@ PICTURE = (700.0, 400.0)
 
 @dataclass(frozen=True)
 class Page:
-    """What is printed: `criterion` and `answer` are sentences; `per`, what blows are counted for."""
+    """What is printed: `criterion` and `answers` are sentences; `per`, what blows are counted for."""
 
     sheet: Sheet
     title: str
     units: Units
     criterion: str
-    answer: str
+    answers: tuple[str, ...]
     per: str | None = None
     bands: Bands | None = None
 
@@ -73,7 +73,7 @@ class _Writer:
         self.text(page.title, REGULAR, 9.5)
         self.y -= 3
         self.text(member_words(case, page.units), REGULAR, 8.5)
-        self.box(page.criterion, page.answer)
+        self.box(page.criterion, page.answers)
         self.picture()
         self.table()
         self.list("What is assumed", assumed(page.sheet, page.units))
@@ -89,11 +89,11 @@ class _Writer:
             self.y -= size * 1.25
             self.canvas.drawString(MARGIN + indent, self.y, line)
 
-    def box(self, first: str, second: str) -> None:
+    def box(self, first: str, others: tuple[str, ...]) -> None:
         """The sentence that the page is for."""
         inner = self.room - 16
         large = simpleSplit(printable(first, True), BOLD, 12, inner)
-        small = simpleSplit(printable(second), REGULAR, 9, inner) if second else []
+        small = [line for words in others for line in simpleSplit(printable(words), REGULAR, 9, inner)]
         height = 12 + 15 * len(large) + 12 * len(small)
         self.y -= 8
         self.canvas.setStrokeColor(PRINT.ink)

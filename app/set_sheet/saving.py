@@ -10,10 +10,8 @@ from PySide6.QtWidgets import QFileDialog, QWidget
 
 from app.document import Document
 from app.export import folder_names
-from app.set_sheet.answer_words import safe_words
-from app.set_sheet.files import sheet_csv
+from app.set_sheet.files import Answers, sheet_csv
 from app.set_sheet.sheet_solution import SheetSolution
-from app.set_sheet.words import criterion
 from app.units import units_of
 
 
@@ -34,23 +32,20 @@ class Saving(QObject):
 
     def page(self) -> bytes:
         """The page of what is on the screen."""
+        from app.set_sheet.command import sentences  # with what prints, which takes its time to be read
         from app.set_sheet.printed import Page, page_pdf
 
         sheet, units = self._solution.sheet, units_of(self._document.project)
         assert sheet is not None
-        stop_at, safe = self._solution.answers.stop_at, self._solution.answers.safe
-        words = criterion(stop_at, units) if stop_at else ""
-        answer = safe_words(safe, stop_at, units) if safe and stop_at else ""
+        found = self._solution.answers
+        told = (
+            sentences(Answers(found.stop_at, found.safe, self._solution.bands), units)
+            if found.stop_at
+            else [""]
+        )
+        per, bands = self._solution.settings.per, self._solution.bands
         return page_pdf(
-            Page(
-                sheet,
-                self._document.project.title,
-                units,
-                words,
-                answer,
-                self._solution.settings.per,
-                self._solution.bands,
-            )
+            Page(sheet, self._document.project.title, units, told[0], tuple(told[1:]), per, bands)
         )
 
     def table(self) -> bytes:

@@ -12,6 +12,7 @@ from app.document import Document
 from app.set_sheet.stream import Cancel, Stream
 from solver import Case
 from solver.studies import Cell, Plan, Sheet, StudyError, cells_of
+from solver.studies.plan import at_value
 from solver.studies.questions import Cancelled, SafeBlow, ShownResistance, point, safe_blow, shown_by
 from solver.studies.settings import SheetSettings, settings_of
 from solver.studies.uncertainty import FEWEST, Bands, sampled
@@ -242,7 +243,7 @@ def _answers(plan: Plan, settings: SheetSettings, cancel: Cancel) -> Iterator[An
     """The questions one after the other, each answer as soon as it is found."""
     level = plan.levels[0]
     if settings.asked_value is not None:
-        level = type(level)(level.pointer, settings.asked_value, level.label, level.dimension)
+        level = at_value(level, settings.asked_value)
     resistance = settings.asked_resistance or plan.own_total
     try:
         stop_at = point(plan, resistance, level, cancel)

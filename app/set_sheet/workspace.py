@@ -4,12 +4,23 @@ from __future__ import annotations
 
 from PySide6.QtCore import Qt
 from PySide6.QtGui import QHideEvent, QShowEvent
-from PySide6.QtWidgets import QFrame, QHBoxLayout, QLabel, QProgressBar, QPushButton, QVBoxLayout, QWidget
+from PySide6.QtWidgets import (
+    QButtonGroup,
+    QFrame,
+    QHBoxLayout,
+    QLabel,
+    QProgressBar,
+    QPushButton,
+    QStackedWidget,
+    QVBoxLayout,
+    QWidget,
+)
 
 from app.document import Document
 from app.look.spacing import GAP, SPACE
 from app.set_sheet.chart_view import ChartView
 from app.set_sheet.choices import Choices
+from app.set_sheet.depth_view import DepthView
 from app.set_sheet.saving import Saving
 from app.set_sheet.sheet_solution import SheetSolution
 from app.set_sheet.words import per_of, reading, summary
@@ -35,6 +46,9 @@ class SetSheet(QWidget):
         self.told.setAlignment(Qt.AlignmentFlag.AlignTop)
         self.told.setMinimumHeight(2 * self.told.fontMetrics().lineSpacing() + GAP)
         self.state = QLabel()
+        self.over_resistance, self.over_depth = _chip("Over resistance"), _chip("Down to depth")
+        self.over_resistance.setChecked(True)
+        self.to_depth = DepthView(document, self.follow, self)
         self.progress = QProgressBar()
         self.progress.setTextVisible(False)
         self.progress.setRange(0, 1000)
@@ -55,6 +69,10 @@ class SetSheet(QWidget):
     def _compose(self) -> None:
         top = QHBoxLayout()
         top.setSpacing(SPACE)
+        views = QButtonGroup(self)
+        for chip in (self.over_resistance, self.over_depth):
+            views.addButton(chip)
+            top.addWidget(chip)
         top.addWidget(self.state, 1)
         for widget in (self.progress, self.stop, self.export, self.print_page):
             top.addWidget(widget)
@@ -64,7 +82,11 @@ class SetSheet(QWidget):
         column.setContentsMargins(SPACE, SPACE, SPACE, SPACE)
         column.setSpacing(GAP)
         column.addLayout(top)
-        column.addWidget(self.chart, 1)
+        self.pictures = QStackedWidget()
+        self.pictures.addWidget(self.chart)
+        self.pictures.addWidget(self.to_depth)
+        views.buttonToggled.connect(self._choose_picture)
+        column.addWidget(self.pictures, 1)
         column.addWidget(self.told)
         row = QHBoxLayout(self)
         row.setContentsMargins(0, 0, 0, 0)
@@ -74,7 +96,8 @@ class SetSheet(QWidget):
 
     def close_down(self) -> bool:
         """End the threads; False where one did not end in time."""
-        return self.solution.close()
+        depth_ended = self.to_depth.close_down()
+        return self.solution.close() and depth_ended
 
     def showEvent(self, event: QShowEvent) -> None:
         self.solution.look(True)
@@ -111,10 +134,16 @@ class SetSheet(QWidget):
         ready = sheet is not None and sheet.complete and not refused
         self.print_page.setEnabled(ready)
         self.export.setEnabled(ready)
-        if self._cell is not None:
+        if self.over_depth.isChecked():
+            _say(self.told, self.to_depth.text)
+        elif self._cell is not None:
             _say(self.told, reading(self._cell, per, units))
         else:
             _say(self.told, summary(sheet, units) if sheet is not None and sheet.cells else "")
+
+    def _choose_picture(self) -> None:
+        self.pictures.setCurrentWidget(self.to_depth if self.over_depth.isChecked() else self.chart)
+        self.follow()
 
     def _point(self, cell: Cell | None) -> None:
         self._cell = cell
@@ -125,6 +154,13 @@ class SetSheet(QWidget):
             self.solution.solve_again()
         else:
             self.solution.stop()
+
+
+def _chip(name: str) -> QPushButton:
+    chip = QPushButton(name)
+    chip.setProperty("role", "chip")
+    chip.setCheckable(True)
+    return chip
 
 
 def _say(widget: QLabel | QPushButton, text: str) -> None:

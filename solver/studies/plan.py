@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 
 import numpy as np
 
@@ -41,6 +41,11 @@ class Level:
         return (
             case if value_at(case, self.pointer) == self.value else with_value(case, self.pointer, self.value)
         )
+
+
+def at_value(level: Level, value: float) -> Level:
+    """The same number of the case at another value."""
+    return replace(level, value=value)
 
 
 @dataclass(frozen=True)

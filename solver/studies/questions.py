@@ -14,7 +14,7 @@ import numpy as np
 
 from solver.model.project import Case
 from solver.run import solve
-from solver.studies.plan import Level, Plan
+from solver.studies.plan import Level, Plan, at_value
 from solver.studies.sheet import Cell, solved_cell
 
 #: How near an answer is to what was asked: share of the value that is looked for.
@@ -86,7 +86,7 @@ def safe_blow(plan: Plan, resistance: float, *, cancel: Cancel = None) -> SafeBl
     seen: dict[float, Cell] = {}
 
     def excess(value: float) -> float:
-        level = Level(own.pointer, float(value), own.label, own.dimension)
+        level = at_value(own, float(value))
         seen[value] = point(plan, resistance, level, cancel)
         share = seen[value].share
         return float("nan") if share is None else share - 1

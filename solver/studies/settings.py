@@ -65,7 +65,7 @@ class DepthSettings(Described):
     (N); `blows_per_minute`."""
 
     penetrations: Annotated[tuple[Positive, ...], Field(min_length=1, max_length=200)] | None = None
-    factors: Annotated[dict[str, NotNegative], Field(default_factory=dict)]
+    factors: dict[str, NotNegative] = Field(default_factory=dict)
     toe_at: tuple[tuple[NotNegative, NotNegative], ...] = ()
     blows_per_minute: Positive = 40.0
 

@@ -79,6 +79,18 @@ def test_the_same_input_gives_the_same_bytes(tmp_path: Path) -> None:
         assert (tmp_path / "one" / name).read_bytes() == (tmp_path / "two" / name).read_bytes()
 
 
+def test_samples_are_told_in_the_files(tmp_path: Path) -> None:
+    file = tmp_path / "pile.strike"
+    file.write_text(project_to_text(project()), encoding="utf-8")
+    assert main(["sheet", str(file), "--out", str(tmp_path), "--samples", "60", "--quiet"]) == 0
+    told = json.loads((tmp_path / "sheet.json").read_text(encoding="utf-8"))["not_known"]
+    assert told["samples"] == 60
+    assert len(told["set_m"]) == 10
+    document = pypdfium2.PdfDocument(str(tmp_path / "sheet.pdf"))
+    assert len(document) == 1
+    assert "in eight of ten samples" in " ".join(document[0].get_textpage().get_text_bounded().split())
+
+
 def test_long_page_stays_one_page_in_other_units(tmp_path: Path) -> None:
     studies = {"set_sheet": {"values": [0.25, 0.5, 1.0, 1.5], "per": "ft", "count": 20}}
     file = tmp_path / "pile.strike"

@@ -169,6 +169,25 @@ def test_what_is_not_known_gives_bands_and_can_be_stopped(shown: SetSheet, qtbot
     assert "A limit is passed in" in choices.samples_told.text()
 
 
+def test_down_to_depth_follows_a_factor_on_the_ground(shown: SetSheet, qtbot: QtBot) -> None:
+    qtbot.mouseClick(shown.over_depth, Qt.MouseButton.LeftButton)
+    qtbot.waitUntil(lambda: shown.to_depth.depths is not None, timeout=PATIENCE)
+    before = shown.to_depth.depths
+    assert before is not None
+    assert len(before.points) == 12
+    assert shown.told.text().startswith("At 10.0\u00a0m: 800\u00a0kN")
+    assert texts(shown.to_depth.scene()).count("Driving time") == 1
+    type_into(qtbot, shown.choices.to_depth.factors["shaft"].field, "0.5")
+    type_into(qtbot, shown.choices.to_depth.penetrations.field, "5 10")
+    qtbot.waitUntil(
+        lambda: shown.to_depth.depths is not None and len(shown.to_depth.depths.points) == 2, timeout=PATIENCE
+    )
+    depths = shown.to_depth.depths
+    assert depths is not None
+    assert [(p.shaft, p.toe) for p in depths.points] == [(100e3, 400e3), (200e3, 400e3)]
+    qtbot.waitUntil(lambda: shown.told.text().startswith("At 10.0\u00a0m: 600\u00a0kN"), timeout=PATIENCE)
+
+
 def test_case_without_ground_is_refused_with_a_sentence(shown: SetSheet, qtbot: QtBot) -> None:
     def bare(tree: dict) -> None:
         tree["cases"][0]["ground"] = None
