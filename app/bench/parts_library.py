@@ -6,6 +6,7 @@ printed source. Nothing here names a product.
 
 from __future__ import annotations
 
+import re
 from collections.abc import Mapping
 from dataclasses import dataclass
 from typing import Any, Literal
@@ -42,14 +43,19 @@ class Part:
     own: bool = False
 
     def matches(self, text: str) -> bool:
-        """Whether every word of the text stands somewhere in the entry."""
-        here = f"{self.name} {self.tells} {self.source}".casefold()
-        return all(word in here for word in text.casefold().split())
+        """Whether a word of the entry begins with each word of the text."""
+        return _begin(text, f"{self.name} {self.tells} {self.source}")
 
 
 def parts_of_kind(kind: PartKind, text: str = "") -> list[Part]:
-    """Entries of one kind that match a search text, in the order of the library."""
-    return [part for part in LIBRARY if part.kind == kind and part.matches(text)]
+    """Entries of one kind that match a search text: those that match by their name come first."""
+    parts = [part for part in LIBRARY if part.kind == kind and part.matches(text)]
+    return sorted(parts, key=lambda part: not _begin(text, part.name))
+
+
+def _begin(text: str, here: str) -> bool:
+    """Only beginnings count: "50" is not meant to find 2500 kg/m³, and Enter takes the first entry."""
+    return all(re.search(rf"(?<!\w){re.escape(word)}", here.casefold()) for word in text.casefold().split())
 
 
 def part_named(kind: PartKind, name: str) -> Part:
@@ -82,7 +88,14 @@ def _concretes() -> list[Part]:
         for fck, modulus in grades
     ]
     american = [
-        _material(f"concrete {psi} psi", modulus, 2403.0, 0.2, ACI, "150 lb/ft³")
+        _material(
+            f"concrete {psi} psi, static modulus",
+            modulus,
+            2403.0,
+            0.2,
+            ACI,
+            "150 lb/ft³ · a blow meets a stiffer one",
+        )
         for psi, modulus in ((5000, 27.7894e9), (6000, 30.4417e9), (8000, 35.1511e9))
     ]
     return dynamic + static + american

@@ -47,6 +47,12 @@ def test_parts_are_found_by_words_in_any_order() -> None:
     assert parts_of_kind("ram", "no such thing") == []
 
 
+@pytest.mark.parametrize("grade", [30, 40, 50, 60, 80])
+def test_the_entry_that_enter_takes_is_the_one_whose_name_was_typed(grade: int) -> None:
+    """Figures inside other figures, such as the 50 in 2500 kg/m³, must not bring another grade to the top."""
+    assert parts_of_kind("material", f"concrete {grade}")[0].name == f"concrete {grade} MPa, dynamic modulus"
+
+
 def test_damping_factors_of_the_library_are_in_seconds_per_metre() -> None:
     """0.05 s/ft is 0.164 s/m (E. A. L. Smith 1960, from memory); four decimals are kept."""
     smith = next(p for p in parts_of_kind("layer") if p.source.startswith("E. A. L. Smith"))
