@@ -39,8 +39,12 @@ class Menus:
         self.undo = window.document.undo_stack.createUndoAction(window, "Undo")
         self.undo.setShortcut(Key.Undo)
         self.redo = window.document.undo_stack.createRedoAction(window, "Redo")
-        self.redo.setShortcuts([QKeySequence(Key.Redo), QKeySequence("Ctrl+Y")])
+        usual, also = QKeySequence.keyBindings(Key.Redo), QKeySequence("Ctrl+Y")
+        self.redo.setShortcuts(usual if also in usual else [*usual, also])  # one given twice does nothing
         self.records = self._action("Save gauge records…", window.ask_records, QKeySequence("Ctrl+E"))
+        self.records_as = self._action(
+            "Choose what records are saved…", window.choose_records, QKeySequence("Ctrl+Shift+E")
+        )
         self.notes = self._action("Notes", window.show_notes, QKeySequence("Ctrl+Shift+N"), checkable=True)
         self.outline = self._action("Outline", window.show_outline, QKeySequence("F9"), checkable=True)
         self.looks = QActionGroup(window)
@@ -88,6 +92,7 @@ class Menus:
         menu.addAction(self._action("Save as…", window.ask_save_as, QKeySequence("Ctrl+Shift+S")))
         menu.addSeparator()
         menu.addAction(self.records)
+        menu.addAction(self.records_as)
         menu.addSeparator()
         menu.addAction(self._action("Close", window.close, QKeySequence("Ctrl+Q")))
 

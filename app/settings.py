@@ -62,6 +62,16 @@ class Settings:
     def set_flag(self, name: str, on: bool) -> None:
         self._stored.setValue(f"flags/{name}", on)
 
+    def kept(self, name: str) -> Any:
+        """Plain values that a dialog was left with, `None` where nothing (or nonsense) is remembered."""
+        try:
+            return json.loads(str(self._stored.value(f"kept/{name}", "null")))
+        except ValueError:
+            return None
+
+    def keep(self, name: str, tree: Any) -> None:
+        self._stored.setValue(f"kept/{name}", json.dumps(tree))
+
     def layout(self, name: str) -> QByteArray | None:
         """State of a window or a splitter as Qt saved it."""
         stored: Any = self._stored.value(f"layout/{name}")

@@ -196,6 +196,13 @@ class Window(QMainWindow):
     def ask_records(self) -> bool:
         return self.files.ask_records()
 
+    def choose_records(self) -> None:
+        """Open the dialog that says which records are saved, and how."""
+        from app.records_dialog import RecordsDialog  # with the libraries that write them
+
+        self.commit_typing()
+        RecordsDialog(self.document, self.solution, self.settings, self).open_for(self.notices)
+
     def commit_typing(self) -> None:
         """Hand over what stands in a field and has not been entered yet."""
         self.notes.commit()
