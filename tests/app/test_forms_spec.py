@@ -224,5 +224,9 @@ def test_both_ends_of_a_tapered_filled_pipe_get_the_same_fill() -> None:
     after = chosen(tree, "member/segments/0", "Fill", "grout")
     case = case_of(after)
     assert case.member.segments[0].end_section.fill == case.member.segments[0].section.fill == "grout"
-    use_part(after, part_named("material", "concrete 5000 psi, static modulus"), "/cases/0/member/segments/0/section/fill")
+    use_part(
+        after,
+        part_named("material", "concrete 5000 psi, static modulus"),
+        "/cases/0/member/segments/0/section/fill",
+    )
     assert case_of(after).member.segments[0].end_section.fill == "concrete 5000 psi, static modulus"
