@@ -2,22 +2,18 @@
 
 from __future__ import annotations
 
-from functools import partial
-
 from PySide6.QtCore import Qt
 from PySide6.QtGui import QAction, QKeyEvent
-from PySide6.QtWidgets import QHBoxLayout, QLineEdit, QMenu, QPushButton, QSizePolicy, QToolButton, QWidget
+from PySide6.QtWidgets import QHBoxLayout, QLineEdit, QPushButton, QSizePolicy, QToolButton, QWidget
 
 from app.case_row import CaseRow
 from app.document import Document
-from app.look import icon
 from app.look.spacing import GAP, ROW, SPACE
 from app.sight import Sight
 from app.solving import Solution
 from app.state_view import StateView
-from app.units import SYSTEMS, units_of
-
-SYSTEM_WORDS = {"metric": "Metric", "us": "US"}
+from app.units import units_of
+from app.units_menu import SYSTEM_WORDS, UnitsMenu
 
 
 class TitleField(QLineEdit):
@@ -102,10 +98,7 @@ class TopBar(QWidget):
         self.units.setToolTip(
             "Units of every picture, field and report. Fields take any unit that is typed with them."
         )
-        menu = QMenu(self.units)
-        for system in SYSTEMS:
-            menu.addAction(SYSTEM_WORDS[system], partial(choose_units, document, system))
-        self.units.setMenu(menu)
+        self.units.setMenu(UnitsMenu(document, self.units))
         row.addWidget(self.units)
         document.changed.connect(self._follow)
         self._follow()
@@ -134,16 +127,3 @@ def turn_sign(document: Document) -> None:
     """Show the other of compression and tension as positive."""
     other = "compression" if document.project.display_sign == "tension" else "tension"
     document.edit(f"Show {other} as positive", "/display_sign", other)
-
-
-def choose_units(document: Document, system: str) -> None:
-    """Show metric or US units; units chosen for single quantities stay."""
-    shown = document.project.display_units
-    value = system if isinstance(shown, str) else {**shown, "system": system}
-    document.edit(f"Show {SYSTEM_WORDS[system]} units", "/display_units", value)
-
-
-def refresh_icons(actions: dict[str, QAction]) -> None:
-    """Draw the icons anew, in the colour of text in the palette in force."""
-    for name, action in actions.items():
-        action.setIcon(icon(name))
