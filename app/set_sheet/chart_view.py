@@ -2,11 +2,13 @@
 
 from __future__ import annotations
 
+from functools import lru_cache
+
 from PySide6.QtCore import QPointF, QRectF, QSize, Qt, Signal
-from PySide6.QtGui import QColor, QFontMetricsF, QMouseEvent, QPainter, QPaintEvent, QPen, QPolygonF
+from PySide6.QtGui import QColor, QFont, QFontMetricsF, QMouseEvent, QPainter, QPaintEvent, QPen, QPolygonF
 from PySide6.QtWidgets import QSizePolicy, QWidget
 
-from app.look.fonts import font
+from app.look.fonts import base_size, font
 from app.look.palette import Palette, palette
 from app.set_sheet.chart import chart, frame_of
 from app.set_sheet.scene import Area, Level, Line, Mark, Scene, Words, outline_of
@@ -95,7 +97,18 @@ class ChartView(QWidget):
 
 def measure(text: str, level: Level) -> float:
     """Width of a text, in pixels."""
-    return QFontMetricsF(font(level)).horizontalAdvance(text)
+    return _metrics(level, base_size()).horizontalAdvance(text)
+
+
+@lru_cache(maxsize=16)
+def _metrics(level: Level, size: float) -> QFontMetricsF:
+    """Metrics of a level; `size` only tells apart what they were made for."""
+    return QFontMetricsF(font(level))
+
+
+@lru_cache(maxsize=16)
+def _font(level: Level, size: float) -> QFont:
+    return font(level)
 
 
 def paint(painter: QPainter, scene: Scene, colours: Palette) -> None:
@@ -131,10 +144,10 @@ def _mark(painter: QPainter, mark: Mark, colour: QColor, paper: QColor) -> None:
 
 
 def _words(painter: QPainter, words: Words, colour: QColor) -> None:
-    painter.setFont(font(words.level))
+    painter.setFont(_font(words.level, base_size()))
     painter.setPen(colour)
-    width = painter.fontMetrics().horizontalAdvance(words.text)
-    shift = {"left": 0.0, "middle": -width / 2, "right": -float(width)}[words.anchor]
+    width = 0.0 if words.anchor == "left" and not words.turned else measure(words.text, words.level)
+    shift = {"left": 0.0, "middle": -width / 2, "right": -width}[words.anchor]
     x, y = words.at
     if words.turned:
         painter.save()

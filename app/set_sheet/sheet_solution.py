@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import os
 from collections.abc import Iterator
 from dataclasses import dataclass
 from typing import Any, Literal
@@ -20,6 +21,8 @@ from solver.studies.uncertainty import FEWEST, Bands, sampled
 State = Literal["waiting", "solving", "answering", "fresh", "stopped", "refused"]
 #: Changes that follow each other faster than this are solved once, ms.
 SETTLE = 60
+#: One processor is left to the window, so that it never waits for the solver.
+WORKERS = max(1, (os.cpu_count() or 1) - 1)
 #: Points that arrive are shown together so often, ms: painting each one would take the time of the window.
 SHOWN_EVERY = 80
 
@@ -132,7 +135,9 @@ class SheetSolution(QObject):
                     told = done
                     self._samples.tell(done)
 
-            bands = sampled(plan, unknowns, samples=samples, seed=seed, progress=progress, cancel=cancel)
+            bands = sampled(
+                plan, unknowns, samples=samples, seed=seed, progress=progress, cancel=cancel, workers=WORKERS
+            )
             if bands is not None:
                 yield bands
 
@@ -183,7 +188,7 @@ class SheetSolution(QObject):
         def work(cancel: Cancel) -> Iterator[Any]:
             plan = settings.plan(case)
             yield plan
-            yield from cells_of(plan, cancel=cancel)
+            yield from cells_of(plan, cancel=cancel, workers=WORKERS)
             if not cancel():
                 yield "cells"
                 yield from _answers(plan, settings, cancel)
