@@ -138,9 +138,8 @@ class March:
         """The ledger just before the first step: the same balance, on the half step before it."""
         row, s, dt = np.zeros(len(LEDGER) + 1), self.state, self.chain.dt
         motion, force = s.motion, np.zeros_like(s.motion.force)
-        note = (np.zeros((1, 3), dtype=np.int64), np.zeros(1, dtype=np.int64))
         rod = s.rod._replace(state=s.rod.state.copy())
-        link_forces(rod, motion.u, motion.v, force, dt, self.flags + 1, note, 0)
+        link_forces(rod, motion.u, motion.v, force, dt)
         balance(
             row, rod, s.shaft, s.bounds, motion.rest, motion.u, -motion.v, -motion.v, force, self.sums, dt
         )

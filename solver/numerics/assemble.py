@@ -9,7 +9,7 @@ from numpy.typing import NDArray
 
 from solver.model.load import History, Pulse
 from solver.model.project import Gauge
-from solver.numerics.arrays import Bounds, Extremes, Motion, Records, Rod
+from solver.numerics.arrays import Bounds, Extremes, Motion, Records, Rod, aligned
 from solver.numerics.balance import LEDGER
 from solver.numerics.chain import Chain, Stretch
 from solver.numerics.ground import toe_of
@@ -40,12 +40,12 @@ def rod_of(chain: Chain, drag: float = 0.0) -> Rod:
     weight = chain.mass * chain.gravity
     return Rod(
         blocks=_blocks(chain),
-        stiff=chain.axial / chain.length,
+        stiff=aligned(chain.axial / chain.length),
         par=par,
         state=state,
-        push=dt / effective,
-        mass=chain.mass.copy(),
-        weight=weight,
+        push=aligned(dt / effective),
+        mass=aligned(chain.mass),
+        weight=aligned(weight),
         special=special,
         spring=chain.spring[special],
         dashpot=chain.damping[special],
@@ -157,14 +157,15 @@ def bounds_of(chain: Chain) -> Bounds:
 def motion_of(chain: Chain) -> Motion:
     """At rest but for what strikes. A free fall has half a step to go before the first half-step velocity."""
     n = chain.nodes
-    velocity = chain.velocity.copy()
-    return Motion(np.zeros(n), velocity, velocity.copy(), np.zeros(n - 1), np.zeros(n))
+    velocity = chain.velocity
+    still, slack = np.zeros(n), np.zeros(n - 1)
+    return Motion(*(aligned(a) for a in (still, velocity, velocity, slack, still)))
 
 
 def extremes_of(chain: Chain) -> Extremes:
     """Envelopes before the first step."""
     links, nodes = chain.nodes - 1, chain.nodes
-    return Extremes(
+    values = (
         np.full(links, 1e300),
         np.zeros(links),
         np.full(links, -1e300),
@@ -172,6 +173,7 @@ def extremes_of(chain: Chain) -> Extremes:
         np.full(nodes, -np.inf),
         np.full(nodes, -np.inf),
     )
+    return Extremes(*(aligned(a) for a in values))
 
 
 def gauge_readings(chain: Chain) -> tuple[NDArray[np.int64], Array]:

@@ -4,7 +4,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from solver.numerics import toe
-from solver.numerics.compiled import kernel
+from solver.numerics.compiled import part_of_step
 from solver.numerics.links import stored_in_blocks
 
 Array = NDArray[np.float64]
@@ -31,7 +31,7 @@ WHOLE = len(LEDGER)
 WORK, DASHPOTS, SLIP, DAMPING, IMPACT, PULL, PULL_BEFORE = range(7)
 
 
-@kernel
+@part_of_step
 def balance(row, rod, ground, bounds, rest, u, v, w, force, sums, dt):
     """One row of the ledger, on the half step ahead of the displacements `u` (columns: `LEDGER`).
 

@@ -147,11 +147,8 @@ def _static_displacements(chain: Chain, state: State, weight: Array, soil: _Soil
     count = int(dof[-1]) + 1
     held = chain.fixed_end or chain.wall_gap == 0
     u, force = np.zeros(n), np.zeros(n - 1)
-    note = (np.zeros((1, 3), dtype=np.int64), np.zeros(1, dtype=np.int64))
-    flags = np.zeros(len(state.rod.blocks), dtype=np.int64)
     for _ in range(200):
-        link_forces(state.rod, u, np.zeros(n), force, chain.dt, flags, note, 0)
-        if note[1][0]:
+        if link_forces(state.rod, u, np.zeros(n), force, chain.dt) >= 0:
             raise SolveError(
                 "The member leaves its elastic range under its own weight: see the material's law."
             )
@@ -209,9 +206,7 @@ def _press_joints(chain: Chain, state: State, pull: Array) -> None:
     Raises `SolveError` where a joint would have to hold what hangs on it.
     """
     bounds, force = state.bounds, state.motion.force
-    note = (np.zeros((1, 3), dtype=np.int64), np.zeros(1, dtype=np.int64))
-    flags = np.ones(len(state.rod.blocks), dtype=np.int64)
-    link_forces(state.rod, state.motion.u, np.zeros_like(state.motion.u), force, chain.dt, flags, note, 0)
+    link_forces(state.rod, state.motion.u, np.zeros_like(state.motion.u), force, chain.dt)
     for j, joint in enumerate(chain.joints):
         if joint.link < chain.head:
             continue

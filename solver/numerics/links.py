@@ -2,35 +2,56 @@
 
 from solver.numerics.compiled import kernel, part_of_step
 from solver.numerics.laws import brittle_tension, elastic, elastic_plastic, large_strain, viscoelastic
-from solver.numerics.records import EVENT_LEFT_ELASTIC, remember
+from solver.numerics.records import EVENT_LEFT_ELASTIC, highest, lowest, remember
 
 #: Laws by the number that a block carries; a new law gets a line here and a branch in `link_forces` and `energies`.
 ELASTIC, VISCOELASTIC, ELASTIC_PLASTIC, BRITTLE, LARGE_STRAIN = range(5)
 
 
+#: Links that are gone through at once: what one short loop has read or written, the next finds in the nearest cache.
+BLOCK = 512
+
+
 @part_of_step
-def link_forces(rod, u, v, force, dt, flags, note, step):
-    """Force of every link by its block's law; the first link of a block that leaves the elastic range is noted."""
-    for b in range(len(rod.blocks)):
-        law, start, stop = rod.blocks[b, 0], rod.blocks[b, 1], rod.blocks[b, 2]
-        if law == ELASTIC:
-            elastic.force(u, v, rod.stiff, rod.par, rod.state, force, start, stop, dt)
-            continue
-        left = -1
-        if law == VISCOELASTIC:
-            viscoelastic.force(u, v, rod.stiff, rod.par, rod.state, force, start, stop, dt)
-        elif law == ELASTIC_PLASTIC:
-            left = elastic_plastic.force(u, v, rod.stiff, rod.par, rod.state, force, start, stop, dt)
-        elif law == BRITTLE:
-            left = brittle_tension.force(u, v, rod.stiff, rod.par, rod.state, force, start, stop, dt)
-        else:
-            large_strain.force(u, v, rod.stiff, rod.par, rod.state, force, start, stop, dt)
-        if left >= 0 and flags[b] == 0:
-            flags[b] = 1
-            remember(note, EVENT_LEFT_ELASTIC, left, step)
+def law_forces(law, rod, u, v, force, start, stop, dt):
+    """Force of the links `start` to `stop` by one law; the first that leaves the elastic range, or -1."""
+    if law == ELASTIC:
+        return elastic.force(u, v, rod.stiff, rod.par, rod.state, force, start, stop, dt)
+    if law == VISCOELASTIC:
+        return viscoelastic.force(u, v, rod.stiff, rod.par, rod.state, force, start, stop, dt)
+    if law == ELASTIC_PLASTIC:
+        return elastic_plastic.force(u, v, rod.stiff, rod.par, rod.state, force, start, stop, dt)
+    if law == BRITTLE:
+        return brittle_tension.force(u, v, rod.stiff, rod.par, rod.state, force, start, stop, dt)
+    return large_strain.force(u, v, rod.stiff, rod.par, rod.state, force, start, stop, dt)
 
 
 @kernel
+def link_forces(rod, u, v, force, dt):
+    """Force of every link by its block's law; returns a link that leaves the elastic range, or -1."""
+    found = -1
+    for b in range(len(rod.blocks)):
+        left = law_forces(rod.blocks[b, 0], rod, u, v, force, rod.blocks[b, 1], rod.blocks[b, 2], dt)
+        found = left if left >= 0 else found
+    return found
+
+
+@part_of_step
+def forces_and_extremes(rod, ext, u, v, force, dt, flags, note, step):
+    """The same with the envelopes of force; the first link of a block that leaves the elastic range is noted."""
+    at = float(step)
+    for b in range(len(rod.blocks)):
+        for start in range(rod.blocks[b, 1], rod.blocks[b, 2], BLOCK):
+            stop = min(start + BLOCK, rod.blocks[b, 2])
+            left = law_forces(rod.blocks[b, 0], rod, u, v, force, start, stop, dt)
+            if left >= 0 and flags[b] == 0:
+                flags[b] = 1
+                remember(note, EVENT_LEFT_ELASTIC, left, step)
+            lowest(force[start:stop], ext.low[start:stop], ext.low_step[start:stop], at)
+            highest(force[start:stop], ext.high[start:stop], ext.high_step[start:stop], at)
+
+
+@part_of_step
 def stored_in_blocks(rod, u, v, force, dt):
     """Energy stored and lost in all blocks, J, and the part of the viscous laws in what is lost."""
     stored, lost, viscous = 0.0, 0.0, 0.0

@@ -10,12 +10,12 @@ import numpy as np
 from solver.numerics import contact, shaft, toe, train
 from solver.numerics.balance import DAMPING, DASHPOTS, IMPACT, PULL, PULL_BEFORE, SLIP, WORK, balance
 from solver.numerics.compiled import kernel, part_of_step
-from solver.numerics.links import link_forces
+from solver.numerics.links import forces_and_extremes
 from solver.numerics.records import (
     EVENT_IMPACT,
     EVENT_SEPARATION,
     EVENT_TOE_LIFT,
-    envelopes,
+    move,
     read_gauges,
     remember,
     take_frame,
@@ -188,7 +188,7 @@ def march(rod, ground, bounds, motion, ext, rec, sums, load, first, count, strid
     for n in range(count):
         step = first + n
         driven = step < rod.driven[1]
-        link_forces(rod, u, v, force, dt, rec.flags, note, step)
+        forces_and_extremes(rod, ext, u, v, force, dt, rec.flags, note, step)
         if inert:
             inertia_velocities(rod, v, w, force, load[n], driven, u, dt)
         else:
@@ -233,7 +233,7 @@ def march(rod, ground, bounds, motion, ext, rec, sums, load, first, count, strid
         if step % stride == 0:
             take_frame(rec, u, v, w, force, rest, n // stride)
             balance(rec.ledger[n // stride], rod, ground, bounds, motion.rest, u, v, w, force, sums, dt)
-        envelopes(ext, force, v, w, u, dt, step)
+        move(ext, u, v, w, dt)
         v, w = w, v
     for i in range(len(v)):
         motion.v[i] = v[i]

@@ -25,22 +25,16 @@ def remember(note, kind, place, step):
         count[0] += 1
 
 
-#: Links or nodes that are gone through at once: what one short loop has read, the next finds in the nearest cache.
+#: Nodes that are gone through at once: what one short loop has read, the next finds in the nearest cache.
 BLOCK = 512
 
 
 @part_of_step
-def envelopes(ext, force, v, w, u, dt, step):
-    """Extremes of force per link; of velocity and displacement per node, the displacements then move on to the
-    next step.
+def move(ext, u, v, w, dt):
+    """Extremes of velocity and displacement per node; the displacements then move on to the next step.
 
     One short loop per extreme, values read before any is written: so the loops run in vector instructions.
     """
-    at = float(step)
-    for start in range(0, len(force), BLOCK):
-        here = slice(start, start + BLOCK)
-        lowest(force[here], ext.low[here], ext.low_step[here], at)
-        highest(force[here], ext.high[here], ext.high_step[here], at)
     for start in range(0, len(u), BLOCK):
         here = slice(start, start + BLOCK)
         fastest(v[here], w[here], ext.speed[here])
@@ -115,7 +109,7 @@ def read_gauges(rec, u, v, w, force, rest, dt, column):
         rec.strain[g, column] = strain
 
 
-@kernel
+@part_of_step
 def take_frame(rec, u, v, w, force, rest, row):
     """One line of the pictures: values in the middle of each shown link."""
     for c in range(len(rec.columns)):

@@ -88,9 +88,7 @@ class _Rest:
         """Force left over on every node (N), and slopes (N/m) of nodes to ground and of links."""
         chain, rod = self.chain, self.state.rod._replace(state=self.state.rod.state.copy())
         force = np.zeros_like(self.state.motion.force)
-        note = (np.zeros((1, 3), dtype=np.int64), np.zeros(1, dtype=np.int64))
-        flags = np.ones(len(rod.blocks), dtype=np.int64)
-        link_forces(rod, u, np.zeros_like(u), force, chain.dt, flags, note, 0)
+        link_forces(rod, u, np.zeros_like(u), force, chain.dt)
         grounded, links = chain.spring.copy(), rod.stiff.copy()
         for _, joint in self.joints:
             gap = u[joint.link + 1] - u[joint.link] + joint.gap
@@ -137,10 +135,8 @@ class _Rest:
     def take(self, u: Array) -> None:
         """Write the rest into the state: displacements, materials, ground, joints."""
         chain, state = self.chain, self.state
-        note = (np.zeros((1, 3), dtype=np.int64), np.zeros(1, dtype=np.int64))
-        flags = np.ones(len(state.rod.blocks), dtype=np.int64)
         still = np.zeros_like(u)
-        link_forces(state.rod, u, still, state.motion.force, chain.dt, flags, note, 0)
+        link_forces(state.rod, u, still, state.motion.force, chain.dt)
         state.motion.u[:] = u
         s, bounds = state.shaft, state.bounds
         plain, power, radiation = (spring.resist(u)[0] for spring in self.springs[:3])
