@@ -146,8 +146,8 @@ static void toe(const struct twin *t, arr v, arr w) {
     arr par = t->toe_par, state = t->toe_state;
     double dt = t->dt, top = par[1], k = par[2], j = par[3], plastic = state[0], old = state[1], before = state[4];
     double half = 0.5 * t->push[last], goal = w[last] - half * before, moves = goal;
-    double start = k * (t->u[last] - plastic), slope = 0.5 * k * dt, new = start + slope * goal, acts = 0;
-    if (new > 0) {
+    double start = k * (t->u[last] - plastic), slope = 0.5 * k * dt, new = 0, acts = 0;
+    if (start + slope * goal > 0) {
         double linear = 1 + half * (slope + j * start);
         if (j > 0 && slope > 0) {
             double square = half * j * slope, left = goal - half * start;
@@ -204,11 +204,10 @@ static void branch(int which, const double *par, const double *state, double gap
     }
 }
 
-static double misfit(double force, double rel, int cushioned, const double *par, const double *state, double gap,
-                     double dt) {
-    double held = 0.5 * state[2];
+static double misfit(int which, double force, double rel, int cushioned, const double *par, const double *state,
+                     double gap, double dt) {
     if (!cushioned)
-        return fmax(held - force, 0) + fmax(dt * rel - gap, 0) * (force <= held ? 1e300 : 0);
+        return which == CLOSED ? fmax(0.5 * state[2] - force, 0) : (dt * rel > gap ? 1e300 : 0);
     double new = cushion_force(state[0] + 0.5 * dt * (state[3] + rel), par[0], par[1], state[1], par[2]);
     return fabs(force - 0.5 * (state[2] + new));
 }
@@ -233,8 +232,8 @@ static void train(const struct twin *t, arr v, arr w) {
             if (det == 0)
                 continue;
             double f1 = (r1 * m22 - m12 * r2) / det, f2 = (m11 * r2 - r1 * m21) / det;
-            double wrong = misfit(f1, rel1 - (p0 + p1) * f1 + p1 * f2, 1, t->train_par, first, gap1, dt);
-            wrong += misfit(f2, rel2 + p1 * f1 - (p1 + p2) * f2, 0, t->train_par + 3, second, gap2, dt);
+            double wrong = misfit(cushion_ways[i], f1, rel1 - (p0 + p1) * f1 + p1 * f2, 1, t->train_par, first, gap1, dt);
+            wrong += misfit(contact_ways[j], f2, rel2 + p1 * f1 - (p1 + p2) * f2, 0, t->train_par + 3, second, gap2, dt);
             if (wrong < least) {
                 best1 = f1;
                 best2 = f2;
