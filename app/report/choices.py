@@ -101,7 +101,7 @@ def report_choices(studies: Mapping[str, Any] | None) -> ReportChoices:
         logo=logo if isinstance(logo, str) else "",
         paper=paper if paper in ("A4", "Letter") else usual.paper,
         decimal_comma=tree.get("decimal_comma") is True,
-        dates=dates if dates in DATES else usual.dates,
+        dates=dates if isinstance(dates, str) and dates in DATES else usual.dates,
         mesh_check=tree.get("mesh_check") is not False,
     )
 

@@ -7,7 +7,7 @@ import sys
 from datetime import datetime
 from pathlib import Path
 
-from app.export.records_options import date_of
+from app.export.records_options import date_of, positive
 from app.usable_project import load_usable
 from solver import ProjectError
 
@@ -23,10 +23,24 @@ def report_parser() -> argparse.ArgumentParser:
     )
     parser.add_argument("file", metavar="FILE.strike", type=Path)
     parser.add_argument("--out", metavar="FILE.pdf", type=_out, required=True, help="ends in .pdf or .html")
+    parser.add_argument(
+        "--figures",
+        metavar="DIR",
+        type=Path,
+        help="write each figure as SVG, PDF and PNG into this folder as well",
+    )
+    parser.add_argument("--dpi", metavar="N", type=_dpi, default=300.0, help="of the PNG files; default 300")
     parser.add_argument("--date", metavar="DATE", type=date_of, help="date to write, as 2026-12-01")
     parser.add_argument("--no-mesh-check", action="store_true", help="do not solve again on a finer mesh")
     parser.add_argument("--quiet", action="store_true", help="say nothing but errors")
     return parser
+
+
+def _dpi(text: str) -> float:
+    value = positive(text)
+    if value > 1200:
+        raise argparse.ArgumentTypeError(f"'{text}' is more than 1200 dots an inch")
+    return value
 
 
 def _out(text: str) -> Path:
@@ -57,6 +71,10 @@ def run_report(given: argparse.Namespace) -> int:
         cases = solve_cases(project, mesh_check)
         report = build_report(project, cases, date, given.file)
         write_report(report, given.out, date)
+        if given.figures is not None:
+            from app.report.figure_files import write_figures
+
+            write_figures(report, given.figures, date, given.dpi)
     except OSError as error:
         return _complain(f"The report cannot be written to {given.out}: {error.strerror or error}.", FAILED)
     except MemoryError:

@@ -162,6 +162,7 @@ class ChoicesForm(QScrollArea):
             self._change("an own paragraph", words={**self.choices.words, key: text})
 
     def _take_particular(self, key: str) -> None:
+        self.particulars[key].setModified(False)
         text = self.particulars[key].text().strip()
         self._change(PARTICULARS[key].lower(), particulars={**self.choices.particulars, key: text})
 
