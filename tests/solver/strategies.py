@@ -246,6 +246,21 @@ def resistances(draw: st.DrawFn) -> Tree:
 
 
 @st.composite
+def layers(draw: st.DrawFn, length: float, fewest: int = 0) -> list[Tree]:
+    """Up to three layers, constant or linear with depth, that may reach below the member's end."""
+    return [
+        {
+            "name": f"layer {i + 1}",
+            "thickness": draw(between(0.2, 1)) * length,
+            "unit_resistance": draw(logarithmic(1e3, 1e5)),
+            "unit_resistance_bottom": draw(st.none() | logarithmic(1e3, 1e5)),
+        }
+        | draw(resistances())
+        for i in range(draw(st.integers(fewest, 3)))
+    ]
+
+
+@st.composite
 def grounds(draw: st.DrawFn, length: float, stiffness: float, toe: bool) -> Tree:
     """Layers or a total, sized by the member's EA (N), and a toe where one is wanted."""
     strength = STRAINS.map(lambda strain: float(f"{stiffness * strain:.3g}"))
@@ -254,16 +269,7 @@ def grounds(draw: st.DrawFn, length: float, stiffness: float, toe: bool) -> Tree
         total = {"resistance": draw(strength), "distribution": draw(st.sampled_from(["uniform", "growing"]))}
         ground["shaft_total"] = total | draw(resistances())
     else:
-        ground["layers"] = [
-            {
-                "name": f"layer {i + 1}",
-                "thickness": draw(between(0.2, 1)) * length,
-                "unit_resistance": draw(logarithmic(1e3, 1e5)),
-                "unit_resistance_bottom": draw(st.none() | logarithmic(1e3, 1e5)),
-            }
-            | draw(resistances())
-            for i in range(draw(st.integers(0, 3)))
-        ]
+        ground["layers"] = draw(layers(length))
     ground["inner_share"] = draw(st.sampled_from([0.0, 0.5]))
     if toe:
         gap = draw(st.sampled_from([0.0, 0.0, 0.001]))
