@@ -28,7 +28,8 @@ class Rod(NamedTuple):
     """Links and nodes. `blocks`: law, first link, stop, shape (blocks, 3). `push` = dt/m of each node, with what acts
     implicitly on it. `special`: nodes with a spring or dashpot to ground, their `spring` (N/m) and `dashpot` (N·s/m).
     `inertia`: Love's coupling mass per link (kg), empty where there is none; `pivot` and `carry` factorise its
-    matrix."""
+    matrix. `driven`: the struck end's node, and the first step on which it is not driven. `opening`: forces of the
+    first step (N) on nodes that move already at time 0, or empty."""
 
     blocks: Ints
     stiff: Array
@@ -45,6 +46,7 @@ class Rod(NamedTuple):
     carry: Array
     fixed_end: bool
     driven: Ints
+    opening: Array
 
 
 class Shaft(NamedTuple):

@@ -54,6 +54,7 @@ def rod_of(chain: Chain, drag: float = 0.0) -> Rod:
         carry=carry,
         fixed_end=chain.fixed_end,
         driven=np.array([chain.head, _driven_until(chain)]),
+        opening=np.zeros(0),
     )
 
 

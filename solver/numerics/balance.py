@@ -126,7 +126,8 @@ def growing_share(start: Array, rows: Array) -> tuple[float, int]:
     came = np.maximum(rows[:, coming] - start[coming], 0.0).sum(axis=1)
     there = float(np.abs(start[staying]).sum()) + np.maximum.accumulate(came)
     off = np.maximum(rows[:, WHOLE] - there, 0.0)
-    row = int(np.argmax(off))
-    if off[row] <= 2 * off[: row // 2 + 1].max():
+    middle, late = off[len(off) // 3 : 2 * len(off) // 3], off[2 * len(off) // 3 :]
+    row = len(off) - len(late) + int(np.argmax(late))
+    if not len(middle) or off[row] <= 2 * middle.max():
         return 0.0, row
     return float(off[row]) / max(float(there.max()), 1e-300), row

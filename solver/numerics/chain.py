@@ -23,6 +23,8 @@ from solver.numerics.stability import stiffening_of
 
 Array = NDArray[np.float64]
 
+#: Fewest elements of a rod that strikes.
+FEWEST_IN_STRIKER = 10
 #: Courant number below which a segment is too short for the mesh of the others.
 WORST_COURANT = 0.2
 
@@ -157,6 +159,9 @@ def _wanted(case: Case, total: float) -> int:
         if stiff:
             finest = min(finest, min(stiff) * total / impedance)
         wanted = max(wanted, int(np.ceil(finest)))
+    strikes = [travel_time(s, case.materials) for s in case.ram_segments]
+    if strikes:
+        wanted = max(wanted, int(np.ceil(FEWEST_IN_STRIKER * total / sum(strikes))))
     return min(wanted, MOST)
 
 

@@ -105,18 +105,33 @@ def _step_back_half(chain: Chain, state: State) -> None:
 
 
 def step_ground_back(chain: Chain, state: State) -> None:
-    """The ground's part of it: shaft and toe half a step before a member that moves already at time 0."""
+    """The ground's part of it: shaft and toe half a step before a member that moves already at time 0.
+
+    What acts on half steps began to act at time 0, not before: the first step, which takes the mean of both, is given
+    the difference as a force of its own (`Rod.opening`), for the ground and for springs.
+    """
     back = state.motion.v * chain.dt / 2
+    opening = -chain.spring * back / 2
     par, toe = state.bounds.toe_par, state.bounds.toe_state
     if len(par) and toe[3] > 0:
+        before = toe[1]
         toe[1] = min(max(toe[1] - par[2] * float(back[-1]), 0.0), par[1])
         toe[4] = toe[1]
         if par[0] == RADIATION:
             toe[2] -= float(back[-1])
+        opening[-1] -= (before - toe[1]) / 2
     s = state.shaft
-    s.r[:] = np.clip(s.r - s.par[1] * back[s.first : s.first + len(s.r)], -s.par[0], s.par[0])
+    plain = slice(s.first, s.first + len(s.r))
+    before = s.r.copy()
+    s.r[:] = np.clip(s.r - s.par[1] * back[plain], -s.par[0], s.par[0])
+    opening[plain] -= (before - s.r) / 2
+    before = s.power[0].copy()
     s.power[0] = np.clip(s.power[0] - s.power[2] * back[s.power_nodes], -s.power[1], s.power[1])
+    np.subtract.at(opening, s.power_nodes, (before - s.power[0]) / 2)
     s.radiation[0] -= back[s.radiation_nodes]
+    np.subtract.at(opening, s.radiation_nodes, s.radiation[2] * back[s.radiation_nodes] / 2)
+    if opening.any():
+        state.rod = state.rod._replace(opening=opening)
 
 
 def _refuse_unheld(chain: Chain, weight: float, soil: _Soil) -> None:

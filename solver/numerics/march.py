@@ -195,6 +195,9 @@ def march(rod, ground, bounds, motion, ext, rec, sums, load, first, count, strid
             new_velocities(push, weight, gain, v, w, force)
             if not driven:
                 w[head] += push[head] * load[n]
+        if step == 0:
+            for i in range(len(rod.opening)):
+                w[i] += push[i] * rod.opening[i]
         if special:
             special_nodes(rod, u, v, w, drag, gain, step)
         if shafts:
@@ -223,6 +226,9 @@ def march(rod, ground, bounds, motion, ext, rec, sums, load, first, count, strid
         sums[PULL_BEFORE], sums[PULL] = sums[PULL], pull
         if special:
             sums[DASHPOTS] += dashpot_losses(rod, v, w, step) * dt
+        if step == 0:
+            for i in range(len(rod.opening)):
+                sums[IMPACT] -= rod.opening[i] * 0.5 * (v[i] + w[i]) * dt
         sums[WORK] += pull * 0.5 * (v[head] + w[head]) * dt
         if gauges:
             read_gauges(rec, u, v, w, force, rest, dt, n)
