@@ -9,13 +9,14 @@ from datetime import datetime
 from pathlib import Path
 from typing import Any
 
-from PySide6.QtCore import QIODevice, QLockFile, QObject, QSaveFile, QTimer, Signal
+from PySide6.QtCore import QElapsedTimer, QIODevice, QLockFile, QObject, QSaveFile, QTimer, Signal
 
 from app.document import Document
 from solver import Project, ProjectError, parse_project, project_to_text
 
-#: Work is written so long after the first edit that is not yet kept, ms; an edit is safe within 3 s.
-DELAY = 1500
+#: Work is written so long after the first edit that is not yet kept, ms. An edit must be safe within 3 s, also on a
+#: machine so busy that this window gets no turn for two of them.
+DELAY = 750
 FORMAT = "striketrace-recovery"
 
 
@@ -44,6 +45,7 @@ class Autosave(QObject):
         self._lock.setStaleLockTime(0)
         self._written: Project | None = None
         self._told = False
+        self._since = QElapsedTimer()
         self._timer = QTimer(self, singleShot=True, interval=DELAY)
         self._timer.timeout.connect(self.keep_now)
         document.changed.connect(self._follow)
@@ -51,8 +53,12 @@ class Autosave(QObject):
     def _follow(self) -> None:
         if not self._document.dirty:
             self.drop()
-        elif self._document.project is not self._written and not self._timer.isActive():
-            self._timer.start()
+        elif self._document.project is not self._written:
+            if not self._timer.isActive():
+                self._since.start()
+                self._timer.start()
+            elif self._since.hasExpired(DELAY):
+                self.keep_now()  # so many events wait that the timer does not get its turn
 
     def keep_now(self) -> None:
         """Write what is not saved. Where the disk refuses, says so once and goes on trying at each edit."""

@@ -17,6 +17,7 @@ class _Looked:
     time: float = 0.0
     place: float | None = None
     selection: str = "load"
+    also: tuple[str, ...] = ()
     quantity: ShownQuantity = "stress"
     strips: tuple[str, ...] = ("force_pair", "velocity")
     time_range: tuple[float, float] | None = None
@@ -34,6 +35,7 @@ class Sight(QObject):
     "member/segments/1", "gauges/0", "ground", "far_end", "load" or "run"; `quantity` of all pictures; `strips` shown,
     of `STRIPS`; shared zoom as `time_range` (s) and `distance_range` (m), `None` = all.
 
+    `also`: further entries of the list that `selection` is of; they go when something else is selected.
     `pinned`: the second cursor (s, m). `arrivals`: whether predicted arrivals are drawn, `None` = where they are few;
     `pointed`: numbers of those that the mouse is on. `peaks`: curves whose peaks are labelled, as "strip/curve".
     `laid_over`: names of the cases drawn over this one. `locked_in`: the profile shows the force left by the blows."""
@@ -46,6 +48,8 @@ class Sight(QObject):
 
     def set(self, **what: Any) -> None:
         """Change several at once; one signal, and only where something differs. An unknown name is a `TypeError`."""
+        if "selection" in what:
+            what.setdefault("also", ())
         looked = replace(self._looked, **what)
         if looked != self._looked:
             self._looked = looked
@@ -62,6 +66,10 @@ class Sight(QObject):
     @property
     def selection(self) -> str:
         return self._looked.selection
+
+    @property
+    def also(self) -> tuple[str, ...]:
+        return self._looked.also
 
     @property
     def quantity(self) -> ShownQuantity:

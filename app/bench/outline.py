@@ -7,6 +7,7 @@ from itertools import pairwise
 from PySide6.QtCore import QPoint, Qt, QTimer, Signal
 from PySide6.QtGui import QKeyEvent
 from PySide6.QtWidgets import (
+    QApplication,
     QFrame,
     QHBoxLayout,
     QPushButton,
@@ -17,11 +18,14 @@ from PySide6.QtWidgets import (
 
 from app.bench.derived_text import caution_lines, derived_lines
 from app.bench.forms.form import Form
-from app.bench.forms.part_forms import form_of
-from app.bench.forms.spec import Context
+from app.bench.forms.part_forms import differing, form_of_all
+from app.bench.forms.spec import Context, Spec
 from app.bench.outline_actions import Actions
+from app.bench.outline_edits import word_for
 from app.bench.outline_row import BAR, RowButton
 from app.bench.outline_rows import Row, row_for, rows_of
+from app.bench.part_actions import PartActions
+from app.bench.several import extended, reaching, toggled
 from app.document import Document
 from app.look.spacing import GAP, SPACE
 from app.sight import Sight
@@ -79,7 +83,7 @@ class Outline(QWidget):
         below.setSpacing(GAP)
         self.form = Form(self._document, self.folded_out)
         self.form.view_chosen.connect(self._choose_view)
-        self.doing = Actions(self._document, self._sight, self, self.folded_out)
+        self.doing = Actions(PartActions(self._document, self._sight, lambda: self.context), self.folded_out)
         below.addWidget(self.form)
         below.addWidget(self.doing)
         self._column.addWidget(self.folded_out)
@@ -120,13 +124,16 @@ class Outline(QWidget):
         for button, row in zip(self.buttons, self._rows, strict=True):
             place = context.full(row.pointer)
             inside = any(p.startswith(place + "/") or p.split("#")[0] == place for p in wrong)
-            button.show_row(row, row is selected, inside and row is not selected)
+            also = row.pointer in self._sight.also
+            button.show_row(row, row is selected, inside and row is not selected, also)
         self._place_form(selected)
         if selected is not None:
+            specs = form_of_all(context, selected.pointer, self._sight.also)
             self.form.show_form(
-                form_of(context, selected.pointer),
+                specs,
                 units,
-                derived_lines(project, case, units, selected.pointer),
+                self._told_of_several(selected, specs)
+                or derived_lines(project, case, units, selected.pointer),
                 caution_lines(case, units, selected.pointer),
             )
             self.doing.show_for(selected)
@@ -138,10 +145,19 @@ class Outline(QWidget):
             self._shown = selected.pointer
             QTimer.singleShot(0, self, self._bring_into_view)
 
+    def _told_of_several(self, selected: Row, specs: list[Spec]) -> list[str]:
+        count = 1 + len(self._sight.also)
+        if count == 1:
+            return []
+        differs = differing(specs)
+        word = word_for(selected.list_pointer)
+        lines = [f"{count} {word}s are selected: what is changed here is changed in all of them."]
+        return lines + ([f"They differ in: {', '.join(differs).lower()}."] if differs else [])
+
     def _fit_buttons(self, count: int) -> None:
         while len(self.buttons) < count:
             button = RowButton(self._inside)
-            button.clicked.connect(lambda _on=False, b=button: self.select(b.row))
+            button.clicked.connect(lambda _on=False, b=button: self._clicked(b.row))
             button.asked.connect(lambda what, b=button: self._asked(what, b.row))
             button.setContextMenuPolicy(Qt.ContextMenuPolicy.CustomContextMenu)
             button.customContextMenuRequested.connect(lambda at, b=button: self._open_menu(b, at))
@@ -202,7 +218,20 @@ class Outline(QWidget):
         """Select the part of a row."""
         self._sight.set(selection=row.pointer)
 
+    def _clicked(self, row: Row) -> None:
+        """With Control one entry more or less of the same list, with Shift all from the selected one to it."""
+        keys = QApplication.keyboardModifiers()
+        if keys & Qt.KeyboardModifier.ControlModifier:
+            self._sight.set(**toggled(self._sight, row.pointer))
+        elif keys & Qt.KeyboardModifier.ShiftModifier:
+            self._sight.set(**reaching(self._sight, row.pointer))
+        else:
+            self.select(row)
+
     def _asked(self, what: str, row: Row) -> None:
+        if what in ("also up", "also down"):
+            self._sight.set(**extended(self._sight, -1 if what == "also up" else 1, self._pointers()))
+            return
         index = self._rows.index(row)
         to = {"up": index - 1, "down": index + 1, "first": 0, "last": len(self._rows) - 1}.get(what)
         if to is not None:
@@ -213,8 +242,11 @@ class Outline(QWidget):
             if self.form.rows:
                 self.form.rows[0].setFocus(Qt.FocusReason.TabFocusReason)
         else:
-            self.doing.do(what, row)
+            self.doing.parts.do(what, row)
             self.focus_row()
+
+    def _pointers(self) -> list[str]:
+        return [row.pointer for row in self._rows if row.index >= 0]
 
     def focus_row(self) -> None:
         """Let the keys act on the selected row."""
@@ -223,7 +255,8 @@ class Outline(QWidget):
             self.buttons[self._rows.index(selected)].setFocus(Qt.FocusReason.OtherFocusReason)
 
     def _open_menu(self, button: RowButton, at: QPoint) -> None:
-        self.select(button.row)
+        if button.row.pointer not in self._sight.also:
+            self.select(button.row)
         row = self.selected
         if row is not None:
             self.doing.menu(row, self).popup(button.mapToGlobal(at))

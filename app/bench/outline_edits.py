@@ -6,7 +6,8 @@ Marks of typical values follow their entries. Every function gives an `Edit` tha
 from __future__ import annotations
 
 from collections.abc import Callable, Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
+from functools import partial
 from itertools import pairwise
 from typing import Any
 
@@ -33,6 +34,7 @@ class Edit:
     label: str
     change: Callable[[Tree], None]
     select: str
+    also: tuple[str, ...] = ()
 
 
 def word_for(list_pointer: str) -> str:
@@ -103,7 +105,7 @@ def remove(context: Context, list_pointer: str, indices: Sequence[int]) -> Edit:
         _rearranged(tree, context.full(list_pointer), kept)
         _first_is_bonded(tree, context.full(list_pointer))
 
-    after = min(indices[0], len(kept) - 1)
+    after = min(min(indices), len(kept) - 1)
     return Edit(f"Remove {what}", change, f"{list_pointer}/{after}" if kept else list_pointer)
 
 
@@ -121,6 +123,46 @@ def move(context: Context, list_pointer: str, index: int, by: int) -> Edit | Non
 
     direction = "up" if by < 0 else "down"
     return Edit(f"Move {called(context, list_pointer, index)} {direction}", change, f"{list_pointer}/{to}")
+
+
+def duplicate_all(context: Context, list_pointer: str, indices: Sequence[int]) -> Edit:
+    """Copies of several entries, each behind its original."""
+    steps = [(duplicate, index + done) for done, index in enumerate(sorted(indices))]
+    label = f"Duplicate {len(indices)} {word_for(list_pointer)}s"
+    return _in_turn(context, list_pointer, label, steps, [index + 1 for _, index in steps])
+
+
+def move_all(context: Context, list_pointer: str, indices: Sequence[int], by: int) -> Edit | None:
+    """Several entries moved up or down together; `None` where the first of them is at that end."""
+    ahead = sorted(indices, reverse=by > 0)
+    if not 0 <= ahead[0] + by < len(entries_of(context, list_pointer)):
+        return None
+    direction = "up" if by < 0 else "down"
+    label = f"Move {len(indices)} {word_for(list_pointer)}s {direction}"
+    steps = [(partial(move, by=by), index) for index in ahead]
+    return _in_turn(context, list_pointer, label, steps, [index + by for index in sorted(indices)])
+
+
+def _in_turn(
+    context: Context,
+    list_pointer: str,
+    label: str,
+    steps: Sequence[tuple[Callable[[Context, str, int], Edit | None], int]],
+    then: Sequence[int],
+) -> Edit:
+    """Edits of single entries one after the other, as one."""
+    tree = copied(context.tree)
+    for make, index in steps:
+        edit = make(replace(context, tree=tree), list_pointer, index)
+        if edit is not None:
+            edit.change(tree)
+
+    def change(before: Tree) -> None:
+        before.clear()
+        before.update(tree)
+
+    select, *also = [f"{list_pointer}/{index}" for index in then]
+    return Edit(label, change, select, tuple(also))
 
 
 def called(context: Context, list_pointer: str, index: int) -> str:

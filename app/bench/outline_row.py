@@ -7,6 +7,7 @@ from PySide6.QtGui import QColor, QFontMetrics, QKeyEvent, QPainter, QPaintEvent
 from PySide6.QtWidgets import QAbstractButton, QSizePolicy, QWidget
 
 from app.bench.outline_rows import Row
+from app.bench.part_actions import action_of
 from app.look import font, pixmap
 from app.look.palette import palette
 from app.look.spacing import GAP, ICON, RADIUS, ROW, SPACE
@@ -20,9 +21,6 @@ KEYS = {
     Qt.Key.Key_End: "last",
     Qt.Key.Key_Return: "enter",
     Qt.Key.Key_Enter: "enter",
-    Qt.Key.Key_Delete: "remove",
-    Qt.Key.Key_Backspace: "remove",
-    Qt.Key.Key_Insert: "add",
 }
 
 
@@ -44,15 +42,15 @@ class RowButton(QAbstractButton):
     def row(self) -> Row:
         return self._row
 
-    def show_row(self, row: Row, selected: bool, wrong: bool) -> None:
-        """Show a row; `wrong`: something entered in its form was not taken."""
+    def show_row(self, row: Row, selected: bool, wrong: bool, also: bool = False) -> None:
+        """Show a row; `wrong`: something entered in its form was not taken; `also`: selected with the one unfolded."""
         figure = "✕ not valid" if wrong else row.figure
         if (row, wrong) != (self._row, self._wrong):
             self._row, self._wrong = row, wrong
             self.setAccessibleName(f"{row.name}, {figure}" if figure else row.name)
             self.setToolTip(f"{row.name}: {figure}" if figure else row.name)
             self.update()
-        self.setChecked(selected)
+        self.setChecked(selected or also)
         policy = Qt.FocusPolicy.StrongFocus if selected else Qt.FocusPolicy.ClickFocus
         if self.focusPolicy() != policy:
             self.setFocusPolicy(policy)
@@ -67,13 +65,13 @@ class RowButton(QAbstractButton):
         return QSize(80, self.sizeHint().height())
 
     def keyPressEvent(self, event: QKeyEvent) -> None:
-        key = Qt.Key(event.key())
-        moving = event.modifiers() & Qt.KeyboardModifier.AltModifier
-        if moving and key in (Qt.Key.Key_Up, Qt.Key.Key_Down):
-            self.asked.emit("move up" if key == Qt.Key.Key_Up else "move down")
-        elif event.modifiers() & Qt.KeyboardModifier.ControlModifier and key == Qt.Key.Key_D:
-            self.asked.emit("duplicate")
-        elif key in KEYS and not event.modifiers() & ~Qt.KeyboardModifier.KeypadModifier:
+        key, keys = Qt.Key(event.key()), event.modifiers() & ~Qt.KeyboardModifier.KeypadModifier
+        action = action_of(event)
+        if action:
+            self.asked.emit(action)
+        elif keys == Qt.KeyboardModifier.ShiftModifier and key in (Qt.Key.Key_Up, Qt.Key.Key_Down):
+            self.asked.emit("also up" if key == Qt.Key.Key_Up else "also down")
+        elif key in KEYS and not keys:
             self.asked.emit(KEYS[key])
         else:
             super().keyPressEvent(event)

@@ -19,15 +19,15 @@ def put_number(document: Document, spec: NumberSpec, value: float | None, units:
     """Set a number (SI), or nothing. A burst of typing is one step of undo. False where it is refused."""
     shown = "" if value is None else f"{value:g}" if spec.whole else units.show(value, spec.dimension)
     number = int(value) if spec.whole and value is not None else value
-    return _put(document, spec, number, shown, spec.write, f"typing {spec.pointer}" if live else None)
+    return _put(document, spec, number, shown, f"typing {spec.pointer}" if live else None)
 
 
 def put_text(document: Document, spec: TextSpec, text: str) -> bool:
     """Set a text; an empty one is no text where there may be none."""
     value = text.strip()
     if spec.write is None and not value and spec.optional:
-        return _put(document, spec, None, "", None, None)
-    return _put(document, spec, value, value, spec.write, None)
+        return _put(document, spec, None, "", None)
+    return _put(document, spec, value, value, None)
 
 
 def put_choice(document: Document, spec: ChoiceSpec, key: str) -> str | None:
@@ -40,10 +40,11 @@ def put_choice(document: Document, spec: ChoiceSpec, key: str) -> str | None:
     before = document.tree
 
     def change(tree: Tree) -> None:
-        if spec.change is not None:
-            spec.change(tree, key)
-        else:
-            _set(tree, spec.pointer, key)
+        for one in (spec, *spec.twins):
+            if isinstance(one, ChoiceSpec) and one.change is not None:
+                one.change(tree, key)
+            else:
+                _set(tree, one.pointer, key)
         forget_changed(before, tree)
 
     fault = _fault_of(document, change)
@@ -69,36 +70,41 @@ def sentence_of(error: ProjectError, tree: Tree, document: Document) -> str:
 
 def put_check(document: Document, spec: CheckSpec, on: bool) -> bool:
     """Switch on or off."""
-    return _put(document, spec, on, "on" if on else "off", None, None)
+    return _put(document, spec, on, "on" if on else "off", None)
 
 
 def confirm_mark(document: Document, spec: Spec) -> bool:
     """The user stands by a typical value."""
     label = f"Confirm {spec.label[:1].lower()}{spec.label[1:]}"
-    return document.edit_tree(label, lambda tree: confirm(tree, spec.pointer))
+
+    def change(tree: Tree) -> None:
+        for one in (spec, *spec.twins):
+            if mark_at(tree, one.pointer) is not None:
+                confirm(tree, one.pointer)
+
+    return document.edit_tree(label, change)
 
 
-def _put(
-    document: Document,
-    spec: Spec,
-    value: Any,
-    shown: str,
-    write: Callable[[Tree, Any], None] | None,
-    merge: str | None,
-) -> bool:
+def _put(document: Document, spec: Spec, value: Any, shown: str, merge: str | None) -> bool:
     tree = document.tree
     label = label_of(tree, spec, shown)
-    if write is None and mark_at(tree, spec.pointer) is None:
+    if not spec.twins and _write_of(spec) is None and mark_at(tree, spec.pointer) is None:
         return document.edit(label, spec.pointer, value, merge=merge)
 
     def change(after: Tree) -> None:
-        if write is not None:
-            write(after, value)
-        else:
-            _set(after, spec.pointer, value)
+        for one in (spec, *spec.twins):
+            write = _write_of(one)
+            if write is not None:
+                write(after, value)
+            else:
+                _set(after, one.pointer, value)
         forget_changed(tree, after)
 
     return document.edit_tree(label, change, merge=merge, pointer=spec.pointer)
+
+
+def _write_of(spec: Spec) -> Callable[[Tree, Any], None] | None:
+    return spec.write if isinstance(spec, NumberSpec | TextSpec) else None
 
 
 def _set(tree: Tree, pointer: str, value: Any) -> None:

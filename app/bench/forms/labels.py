@@ -28,6 +28,9 @@ def label_of(tree: dict[str, Any], spec: Spec, shown: str) -> str:
     """The label of an edit that sets the field of `spec` to what is shown as `shown`."""
     pointer = spec.pointer.split("#")[0]
     part = part_called(tree, pointer)
+    entry = ENTRY.fullmatch(pointer)
+    if spec.twins and entry:
+        part = f"{1 + len(spec.twins)} {entry.group(2)}"
     if pointer.endswith("/name"):
         return f"Rename {part} to {shown}"
     if pointer.endswith("/position") and "/gauges/" in pointer:

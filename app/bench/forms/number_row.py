@@ -116,7 +116,8 @@ class NumberRow(FieldRow):
 
     def _put(self, value: float | None, live: bool) -> bool:
         refused = self.document.problem_at(self.spec.pointer) is not None
-        if not refused and _same(value, self.spec.value):
+        shown = [spec.value for spec in (self.spec, *self.spec.twins) if isinstance(spec, NumberSpec)]
+        if not refused and all(_same(value, one) for one in shown):
             return True
         return put_number(self.document, self.spec, value, self._units, live)
 

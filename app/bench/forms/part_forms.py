@@ -3,6 +3,8 @@
 from __future__ import annotations
 
 import re
+from collections.abc import Sequence
+from dataclasses import replace
 
 from app.bench.forms.fields import field_specs, model_specs
 from app.bench.forms.spec import Context, Spec
@@ -21,6 +23,26 @@ ENTRIES = (
     (re.compile(r"member/attachments/\d+"), Attachment),
     (re.compile(r"/materials/\d+"), Material),
 )
+
+
+def form_of_all(context: Context, pointer: str, also: Sequence[str]) -> list[Spec]:
+    """The form of a part, whose rows also set what the same rows of other parts set. Names stay each part's own."""
+    shared: dict[tuple[str, str], list[Spec]] = {}
+    for other in also:
+        for spec in form_of(context, other):
+            shared.setdefault((spec.label, spec.pointer.removeprefix(context.full(other))), []).append(spec)
+    found = []
+    for spec in form_of(context, pointer):
+        place = spec.pointer.removeprefix(context.full(pointer))
+        twins = shared.get((spec.label, place), []) if place != "/name" else []
+        found.append(replace(spec, twins=tuple(one for one in twins if type(one) is type(spec))))
+    return found
+
+
+def differing(specs: list[Spec]) -> list[str]:
+    """Labels of the rows in which the parts selected together do not have the same."""
+    values = [(spec, getattr(spec, "value", None)) for spec in specs]
+    return [s.label for s, value in values if any(getattr(twin, "value", None) != value for twin in s.twins)]
 
 
 def form_of(context: Context, pointer: str) -> list[Spec]:

@@ -45,6 +45,8 @@ class Spec:
     label: str
     tells: str = ""
     source: str = ""
+    #: The same row of other parts that are selected too: what is entered goes to them as well.
+    twins: tuple[Spec, ...] = field(default=(), kw_only=True)
 
     @property
     def key(self) -> tuple[Any, ...]:
