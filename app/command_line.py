@@ -94,6 +94,9 @@ def _sheet_parser() -> argparse.ArgumentParser:
     parser.add_argument("--out", metavar="DIR", type=Path, required=True, help="folder for the sheet")
     parser.add_argument("--case", metavar="NAME", help="of this case (the first one otherwise)")
     parser.add_argument("--samples", metavar="N", type=int, help="samples of what is not known, 50 to 5000")
+    parser.add_argument(
+        "--cluster", metavar="ADDRESS", help="solve on a Dask cluster (needs striketrace[cluster])"
+    )
     parser.add_argument("--quiet", action="store_true", help="say nothing but errors")
     return parser
 
@@ -174,7 +177,7 @@ def _records(argv: Sequence[str]) -> int:
 def _sheet(arguments: argparse.Namespace) -> int:
     from app.set_sheet.command import Choices, write_sheet
 
-    choices = Choices(arguments.case, arguments.samples, arguments.quiet)
+    choices = Choices(arguments.case, arguments.samples, arguments.quiet, arguments.cluster)
     return write_sheet(arguments.file, arguments.out, choices)
 
 

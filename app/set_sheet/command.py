@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import sys
 from collections.abc import Callable
+from contextlib import nullcontext
 from dataclasses import dataclass
 from pathlib import Path
 
@@ -15,9 +16,11 @@ from app.units import NO_BREAK, Units, units_of
 from app.usable_project import load_usable
 from solver import Case, Project, ProjectError, SolveError
 from solver.studies import Sheet, StudyError, solve_sheet
+from solver.studies.cluster import on_cluster
 from solver.studies.plan import at_value
 from solver.studies.questions import point, safe_blow
 from solver.studies.settings import SheetSettings, settings_of
+from solver.studies.sheet import Solver
 from solver.studies.uncertainty import sampled
 
 SOLVED, FAILED, UNUSABLE = 0, 1, 2
@@ -25,11 +28,13 @@ SOLVED, FAILED, UNUSABLE = 0, 1, 2
 
 @dataclass(frozen=True)
 class Choices:
-    """What the command line asks for; `samples` of what is not known, `None` = none."""
+    """What the command line asks for; `samples` of what is not known, `None` = none; `cluster`, the
+    address of a Dask cluster, `None` = this computer."""
 
     case: str | None = None
     samples: int | None = None
     quiet: bool = False
+    cluster: str | None = None
 
 
 def write_sheet(path: Path, out: Path, choices: Choices) -> int:
@@ -49,7 +54,8 @@ def write_sheet(path: Path, out: Path, choices: Choices) -> int:
     except StudyError as error:
         return _complain(f"{path}: {error}", UNUSABLE)
     try:
-        sheet, answers = _solved(case, settings, choices)
+        with on_cluster(choices.cluster) if choices.cluster is not None else nullcontext() as solver:
+            sheet, answers = _solved(case, settings, choices, solver)
     except (StudyError, SolveError) as error:
         return _complain(f"The set sheet of case '{case.name}' cannot be made: {error}", FAILED)
     try:
@@ -61,11 +67,13 @@ def write_sheet(path: Path, out: Path, choices: Choices) -> int:
     return SOLVED
 
 
-def _solved(case: Case, settings: SheetSettings, choices: Choices) -> tuple[Sheet, Answers]:
+def _solved(
+    case: Case, settings: SheetSettings, choices: Choices, solver: Solver | None
+) -> tuple[Sheet, Answers]:
     plan = settings.plan(case)
     shown = not choices.quiet and sys.stderr.isatty()
     points = len(plan.resistances) * len(plan.levels)
-    sheet = solve_sheet(plan, progress=_progress(points, "points") if shown else None)
+    sheet = solve_sheet(plan, solver=solver, progress=_progress(points, "points") if shown else None)
     level = plan.levels[0] if settings.asked_value is None else at_value(plan.levels[0], settings.asked_value)
     resistance = settings.asked_resistance or plan.own_total
     stop_at, safe = point(plan, resistance, level), safe_blow(plan, resistance)
@@ -76,6 +84,7 @@ def _solved(case: Case, settings: SheetSettings, choices: Choices) -> tuple[Shee
             settings.unknown_inputs(case),
             samples=choices.samples,
             seed=settings.seed,
+            solver=solver,
             progress=_progress(choices.samples, "samples") if shown else None,
         )
     return sheet, Answers(stop_at, safe, bands)
