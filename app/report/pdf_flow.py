@@ -6,7 +6,15 @@ from collections.abc import Iterator, Sequence
 from xml.sax.saxutils import escape
 
 from reportlab.lib.styles import ParagraphStyle
-from reportlab.platypus import CondPageBreak, Flowable, KeepTogether, LongTable, Preformatted, TableStyle
+from reportlab.platypus import (
+    CondPageBreak,
+    Flowable,
+    KeepTogether,
+    LongTable,
+    Preformatted,
+    Spacer,
+    TableStyle,
+)
 from reportlab.platypus import Paragraph as Words
 
 from app.report.blocks import Block, Bullets, Heading, Listing, Paragraph, Picture, Section, Table
@@ -138,3 +146,4 @@ def _listing(text: str) -> Iterator[Flowable]:
     for first in range(0, len(lines), PIECE):
         piece = "\n".join(map(printable, lines[first : first + PIECE]))
         yield Preformatted(piece, styles()["listing"], dedent=0)
+    yield Spacer(1, 8)

@@ -15,6 +15,8 @@ from app.report.build import build_report
 from app.report.choices import FIGURES, SECTIONS, ReportChoices, report_choices, written_date
 from app.report.decimals import with_commas
 from app.report.figure_files import write_figures
+from app.report.figures.envelope import stress_envelope
+from app.report.figures.marks import Path, Text
 from app.report.figures.scales import thinned, tick_texts
 from app.report.html import html_of
 from app.report.lettering import MISSING, fitted, printable, text_width
@@ -240,3 +242,18 @@ def test_command_writes_the_report_or_says_why_not(tmp_path, capsys):
 def test_every_figure_that_can_be_chosen_is_drawn(plain):
     names = [block.figure.name for s in plain.sections for block in s.blocks if hasattr(block, "figure")]
     assert len(set(names)) == len(FIGURES)
+
+
+def test_the_envelope_in_print_keeps_the_peak_of_a_long_member():
+    """4,000 elements are drawn with fewer points, and the largest stress is among them."""
+    tree = bar_tree()
+    tree["cases"][0]["run"] = {"duration": 0.0009, "element_length": 0.001}
+    project = project_from_tree(tree)
+    result = solve(project.cases[0])
+    figure = stress_envelope(result, units_of(project))
+    curves = [m for m in figure.marks if isinstance(m, Path) and m.stroke and len(m.points) > 100]
+    assert all(len(curve.points) < 1000 for curve in curves)
+    plain = [float(np.min(c.points[:, 0])) for c in curves]
+    # tension positive: the most compressive stress is farthest to the left, where its mark stands
+    mark = next(m for m in figure.marks if isinstance(m, Text) and m.text.startswith("compression"))
+    assert abs(abs(min(plain) - mark.x) - 6) < 0.01

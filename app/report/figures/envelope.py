@@ -11,7 +11,7 @@ from numpy.typing import NDArray
 from app.look.colours import PRINT
 from app.report.figures.marks import Figure, Mark, Path, Text, line
 from app.report.figures.plot import SMALL, WIDTH, Plot, plot_in
-from app.report.figures.scales import bounds_of
+from app.report.figures.scales import bounds_of, thinned
 from app.report.figures.traces import sign_words
 from app.report.lettering import fitted
 from app.units import Units
@@ -54,9 +54,9 @@ def stress_envelope(result: Result, units: Units) -> Figure:
     # of the solver's sign: low is compression, high is tension
     places = np.asarray(units.number(envelope.position, "length"))
     for values, hue, word in ((low, PRINT.compression, "compression"), (high, PRINT.tension, "tension")):
-        drawn = shown(values)
-        plot.marks.append(_filled(plot, drawn, places, hue))
-        plot.curve(drawn, places, hue, 1.1)
+        along, drawn = thinned(places, shown(values))
+        plot.marks.append(_filled(plot, drawn, along, hue))
+        plot.curve(drawn, along, hue, 1.1)
         peak = result.peak_compression if word == "compression" else result.peak_tension
         _mark_peak(plot, peak.value, peak.position, word, hue, shown, units)
     marks = [*plot.marks, *_limits(plot, result, shown, units)]

@@ -7,7 +7,7 @@ from collections.abc import Sequence
 import numpy as np
 
 from app.look.colours import PRINT
-from app.report.figures.marks import Figure, Mark, Text
+from app.report.figures.marks import Anchor, Figure, Mark, Text
 from app.report.figures.plot import SMALL, WIDTH, legend, plot_in
 from app.report.figures.scales import Array, bounds_of
 from app.report.lettering import fitted
@@ -66,7 +66,9 @@ def force_pair(result: Result, gauge: GaugeRecord, units: Units) -> Figure:
                 at = units.number(when, "time", float(gauge.time[-1]))
                 plot.upright(at, PRINT.line)
                 told = f"return from the {arrival.kind.replace('_', ' ')}, {units.show(when, 'time')}"
-                plot.say(plot.x.at(at) + 3, plot.y.end + SMALL, told, PRINT.soft_ink)
+                place, late = plot.x.at(at), when > 0.6 * gauge.time[-1]
+                anchor: Anchor = "end" if late else "start"
+                plot.say(place + (-3 if late else 3), plot.y.end + SMALL, told, PRINT.soft_ink, anchor)
     entries = [
         ("force", PRINT.ink, ()),
         (f"{minus}impedance × velocity", PRINT.gauge(0), SECOND),
