@@ -9,18 +9,22 @@ from typing import Any
 import numpy as np
 from PySide6.QtCore import QEvent, QLineF, QPointF, QRectF, Qt
 from PySide6.QtGui import QColor, QFontMetricsF, QKeyEvent, QMouseEvent, QPainter, QRegion
+from PySide6.QtWidgets import QMenu
 
-from app.bench.axes import Axis, Margins, margins_of
+from app.bench.axes import Axis, Margins, margins_of, tidy_step
 from app.bench.axis_drawing import crisp, distance_ticks, in_units
 from app.bench.colouring import columns_under, entries_of, image_of, scale_top, table_of
 from app.bench.field_values import along_member
 from app.bench.glyphs import pen, pointer_right
 from app.bench.lettering import RIGHT, fitted, in_lines, put, put_on, spread
+from app.bench.levels_drawing import draw_levels, room_for_levels
 from app.bench.load_train import blocks_of, draw_drop, draw_pulse
 from app.bench.member_drag import MemberDrag
 from app.bench.member_handles import Handle, handles_of
+from app.bench.member_menu import MemberMenu
 from app.bench.member_shapes import Piece, Pieces, pieces_of
 from app.bench.picture import Picture
+from app.bench.several import toggled
 from app.bench.surroundings_drawing import draw_attachments, draw_far_end, draw_ground, ground_bands
 from app.look.fonts import font
 from app.look.palette import palette
@@ -42,12 +46,15 @@ class MemberDrawing(Picture):
         self.setMouseTracking(True)
         self._drag: MemberDrag | None = None
         self._pointed_at: Handle | None = None
+        self._toggles: str | None = None
+        self._menu = MemberMenu(self.document, self.sight)
 
     def margins(self) -> Margins:
         """Left only what the numbers of the distance need; above and below as all pictures in the row."""
         shared = margins_of(self.font())
         metrics = QFontMetricsF(self.font())
-        return replace(shared, gutter=float(round(metrics.horizontalAdvance("−000") + 8)), right=4.0)
+        right = 4.0 + room_for_levels(self.case, metrics)
+        return replace(shared, gutter=float(round(metrics.horizontalAdvance("−000") + 8)), right=right)
 
     def described(self) -> tuple[Any, ...]:
         return (self.case,)
@@ -58,6 +65,7 @@ class MemberDrawing(Picture):
             self.sight.time,
             self.sight.place,
             self.sight.selection,
+            self.sight.also,
             self.sight.quantity,
             told,
             self._pointed_at,
@@ -90,6 +98,7 @@ class MemberDrawing(Picture):
         least = -sum(s.length for s in case.ram_segments)
         factor = float(self.units.number(1.0, "length"))
         distance_ticks(painter, in_units(axis, factor), plot.left(), True, least * factor)
+        draw_levels(painter, case, self.units, axis, plot, self.width() - 4.0)
 
     def _heading(self, painter: QPainter, unit: str) -> None:
         y = 0.5 * self.margins().header
@@ -198,14 +207,14 @@ class MemberDrawing(Picture):
         return list(zip(places, rows, strict=True))
 
     def _draw_selected(self, painter: QPainter, axis: Axis, pieces: Pieces) -> None:
-        colours, chosen = palette(), self.sight.selection
+        colours, chosen = palette(), (self.sight.selection, *self.sight.also)
         painter.setPen(pen(colours.accent, 2.0))
         painter.setBrush(Qt.BrushStyle.NoBrush)
         for piece in (*pieces.striking, *pieces.member):
-            if piece.pointer == chosen:
+            if piece.pointer in chosen:
                 painter.drawPath(piece.path(self.centre(), axis))
         for block in self._blocks(pieces):
-            if block.pointer == chosen:
+            if block.pointer in chosen:
                 painter.drawRect(block.box.adjusted(-1, -1, 1, 1))
 
     def _draw_handle(self, painter: QPainter, plot: QRectF, axis: Axis) -> None:
@@ -276,12 +285,15 @@ class MemberDrawing(Picture):
         left = event.button() == Qt.MouseButton.LeftButton
         handle = self.handle_at(event.position()) if left else None
         part = handle.pointer if handle else self.part_at(event.position()) if left else None
-        if part is not None:
+        one_more = left and bool(event.modifiers() & Qt.KeyboardModifier.ControlModifier)
+        self._toggles = part if one_more else None
+        if part is not None and not one_more:
             self.sight.set(selection=part)
+        if part is not None:
+            self.setFocus()
         if handle is not None:
             self._drag = MemberDrag(self.document, handle, self.distance_axis(), event.position())
-            self.setFocus()
-        else:
+        elif not one_more:
             super().mousePressEvent(event)
 
     # Dragging ---------------------------------------------------------------------------------------------------
@@ -305,7 +317,9 @@ class MemberDrawing(Picture):
             free = bool(
                 event.modifiers() & (Qt.KeyboardModifier.AltModifier | Qt.KeyboardModifier.ControlModifier)
             )
-            self._drag.move(event.position(), free)
+            if self._drag.move(event.position(), free) and self._toggles:
+                self.sight.set(selection=self._toggles)
+                self._toggles = None  # a drag with Control held is a free one, and no choice of one part more
         elif event.buttons():
             super().mouseMoveEvent(event)
         else:
@@ -321,7 +335,17 @@ class MemberDrawing(Picture):
             self._drag.end()
             self._drag = None
             self.look_again()
+        if self._toggles is not None:
+            self.sight.set(**toggled(self.sight, self._toggles))
+            self._toggles = None
         super().mouseReleaseEvent(event)
+
+    def fill_menu(self, menu: QMenu) -> None:
+        part, axis = self.part_at(self.menu_at), self.distance_axis()
+        if part is not None and part not in (self.sight.selection, *self.sight.also):
+            self.sight.set(selection=part)
+        step = tidy_step(axis.high - axis.low, int(axis.length))
+        self._menu.fill(menu, part, round(axis.value(self.menu_at.y()) / step) * step)
 
     def leaveEvent(self, event: QEvent) -> None:
         self._pointed_at = None
@@ -332,5 +356,5 @@ class MemberDrawing(Picture):
             self._drag.take_back()
             self._drag = None
             self.look_again()
-        else:
+        elif not self._menu.key(event):
             super().keyPressEvent(event)
