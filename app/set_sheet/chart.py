@@ -11,7 +11,7 @@ from itertools import pairwise
 
 from app.set_sheet.scales import Scale, number, root_ticks, ticks
 from app.set_sheet.scene import Anchor, Area, Level, Line, Mark, Measure, Scene, Words
-from app.set_sheet.words import PER, level_text, over_text
+from app.set_sheet.words import PER, level_text, over_lines
 from app.units import Units
 from solver import Case
 from solver.studies import Cell, Sheet
@@ -247,11 +247,10 @@ def _names(scene: Scene, frame: Frame, sheet: Sheet, units: Units, measure: Meas
             continue
         text = level_text(level, units)
         ends.append((frame.set.at(max(cells[0].set or 0.0, 0.0)), text, "strong" if index == 0 else "small"))
-        over = next((c for c in cells if c.over), None)
-        if over is not None:
+        for line, words in enumerate(over_lines(cells, units) or ()):
             at = (frame.set.stop - 4, frame.resistance.stop + 16 + LINE * told)
             told += 1
-            scene.append(Words(at, f"✕ {text}: {over_text(over, units)}", "over", "small", "right"))
+            scene.append(Words(at, f"✕ {text}: {words}" if line == 0 else words, "over", "small", "right"))
     right = frame.set.stop + 4
     weight: Level
     for x, text, weight in sorted(ends, reverse=True):

@@ -19,6 +19,7 @@ from app.set_sheet.words import PER, criterion, per_of
 from app.units import Units, units_of
 from solver.studies import resistance_of
 from solver.studies.plan import blow_pointer
+from solver.studies.settings import SheetSettings
 
 #: The column's width; wide enough for a sentence.
 WIDTH = 312
@@ -96,7 +97,7 @@ class Choices(QScrollArea):
             (self.measured, "measured_set"),
         ):
             field.entered.connect(lambda given, key=key: self._set(key, given[0] if given else None))
-        self.error.entered.connect(lambda given: self._set("reading_error", given[0] if given else 0.0005))
+        self.error.entered.connect(lambda given: self._set("reading_error", given[0] if given else None))
         self.values.entered.connect(lambda given: self._set("values", list(given) or None))
         self.vary.activated.connect(lambda _i: self._set("vary", self.vary.currentData()))
         self.per.activated.connect(lambda _i: self._set("per", self.per.currentData()))
@@ -147,7 +148,11 @@ class Choices(QScrollArea):
         self.highest.show_values(_one(settings.highest), ends[1], "force", units)
         self.resistance.show_values(_one(settings.asked_resistance), own, "force", units)
         self.measured.show_values(_one(settings.measured_set), (), "small_length", units)
-        self.error.show_values(_one(settings.reading_error), (), "small_length", units)
+        usual_error = SheetSettings().reading_error
+        error = settings.reading_error
+        self.error.show_values(
+            None if error == usual_error else (error,), (usual_error,), "small_length", units
+        )
         _choose(self.vary, settings.vary)
         _choose(self.per, per_of(units, settings.per))
         _choose(self.samples, settings.samples)

@@ -11,7 +11,7 @@ from pathlib import Path
 from app.set_sheet.answer_words import bands_words, safe_words
 from app.set_sheet.files import Answers, sheet_csv, sheet_json
 from app.set_sheet.printed import Page, page_pdf
-from app.set_sheet.words import criterion
+from app.set_sheet.words import criterion, unit_of
 from app.units import NO_BREAK, Units, units_of
 from app.usable_project import load_usable
 from solver import Case, Project, ProjectError, SolveError
@@ -55,7 +55,7 @@ def write_sheet(path: Path, out: Path, choices: Choices) -> int:
         return _complain(f"{path}: {error}", UNUSABLE)
     try:
         with on_cluster(choices.cluster) if choices.cluster is not None else nullcontext() as solver:
-            sheet, answers = _solved(case, settings, choices, solver)
+            sheet, answers = _solved(case, settings, choices, units_of(project), solver)
     except (StudyError, SolveError) as error:
         return _complain(f"The set sheet of case '{case.name}' cannot be made: {error}", FAILED)
     try:
@@ -68,9 +68,9 @@ def write_sheet(path: Path, out: Path, choices: Choices) -> int:
 
 
 def _solved(
-    case: Case, settings: SheetSettings, choices: Choices, solver: Solver | None
+    case: Case, settings: SheetSettings, choices: Choices, units: Units, solver: Solver | None
 ) -> tuple[Sheet, Answers]:
-    plan = settings.plan(case)
+    plan = settings.plan(case, unit_of(units))
     shown = not choices.quiet and sys.stderr.isatty()
     points = len(plan.resistances) * len(plan.levels)
     sheet = solve_sheet(plan, solver=solver, progress=_progress(points, "points") if shown else None)

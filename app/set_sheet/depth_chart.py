@@ -162,16 +162,17 @@ def _stress(
     for sign, side in (("compression", push), ("tension", -push)):
         anchor: Anchor = "right" if side > 0 else "left"
         edge = scale.stop if side > 0 else scale.start
-        scene.append(Words((edge, down.start - 24), sign, sign, "small", anchor))
+        beyond = [v for v in limits[sign] if not low <= side * v <= high]
+        words = f"{sign}, limit {units.show(beyond[0], 'stress')}" if beyond else sign
+        words = words if limits[sign] else f"{sign}, no limit"
+        scene.append(Words((edge, down.start - 24), words, sign, "small", anchor))
         for value in limits[sign]:
-            inside = low <= side * value <= high
-            x = scale.at(side * value) if inside else edge
-            if inside:
+            if value not in beyond:
+                x = scale.at(side * value)
                 scene.append(Line(((x, down.start), (x, down.stop)), sign, 1.0, (1.5, 2.5)))
-            words = f"limit {units.show(value, 'stress')}" + ("" if inside else " beyond")
-            scene.append(Words((x, down.start - 8), words, sign, "small", anchor))
-        if not limits[sign]:
-            scene.append(Words((edge, down.start - 8), "no limit", sign, "small", anchor))
+                scene.append(
+                    Words((x, down.start - 8), f"limit {units.show(value, 'stress')}", sign, "small", anchor)
+                )
     _curve(scene, down, points, lambda p: _peak(p, "compression", scale, push), "compression", 0)
     _curve(scene, down, points, lambda p: _peak(p, "tension", scale, -push), "tension", 0)
 

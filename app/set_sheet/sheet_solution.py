@@ -11,6 +11,8 @@ from PySide6.QtCore import QObject, QTimer, Signal
 
 from app.document import Document
 from app.set_sheet.stream import Cancel, Stream
+from app.set_sheet.words import unit_of
+from app.units import units_of
 from solver import Case
 from solver.studies import Cell, Plan, Sheet, StudyError, cells_of
 from solver.studies.plan import at_value
@@ -18,6 +20,8 @@ from solver.studies.questions import Cancelled, SafeBlow, ShownResistance, point
 from solver.studies.settings import SheetSettings, settings_of
 from solver.studies.uncertainty import FEWEST, Bands, sampled
 
+#: What a sheet belongs to; the units, because ranges that the program chooses are round in them.
+Key = tuple[Case, SheetSettings, str]
 State = Literal["waiting", "solving", "answering", "fresh", "stopped", "refused"]
 #: Changes that follow each other faster than this are solved once, ms.
 SETTLE = 60
@@ -46,7 +50,7 @@ class SheetSolution(QObject):
         super().__init__(parent)
         self._document = document
         self._looked = False
-        self._key: tuple[Case, SheetSettings] | None = None
+        self._key: Key | None = None
         self.plan: Plan | None = None
         self.cells: dict[tuple[int, int], Cell] = {}
         self.answers = Answers()
@@ -154,7 +158,8 @@ class SheetSolution(QObject):
     def _follow(self) -> None:
         if self._looked:
             try:
-                key = (self._document.case, settings_of(self._document.project))
+                project = self._document.project
+                key = (self._document.case, settings_of(project), units_of(project).system)
             except StudyError as error:
                 self._refuse(str(error))
                 return
@@ -181,12 +186,14 @@ class SheetSolution(QObject):
     def _begin(self) -> None:
         if self._key is None:
             return
-        case, settings = self._key
+        case, settings, _system = self._key
         self.stop_samples()
         self.state, self.message = "solving", ""
 
+        units = units_of(self._document.project)
+
         def work(cancel: Cancel) -> Iterator[Any]:
-            plan = settings.plan(case)
+            plan = settings.plan(case, unit_of(units))
             yield plan
             yield from cells_of(plan, cancel=cancel, workers=WORKERS)
             if not cancel():
@@ -237,11 +244,11 @@ def _sampling(settings: SheetSettings) -> tuple[object, ...]:
     return settings.unknowns, settings.samples, settings.seed
 
 
-def _same(one: tuple[Case, SheetSettings], other: tuple[Case, SheetSettings]) -> bool:
+def _same(one: Key, other: Key) -> bool:
     """Whether both give the same sheet and answers: ranges of samples and the way blows are counted play no part."""
     without = {"unknowns": None, "samples": FEWEST, "seed": 1, "per": None}
     settings = [key[1].model_copy(update=without) for key in (one, other)]
-    return one[0] == other[0] and settings[0] == settings[1]
+    return one[0] == other[0] and one[2] == other[2] and settings[0] == settings[1]
 
 
 def _answers(plan: Plan, settings: SheetSettings, cancel: Cancel) -> Iterator[Answers]:

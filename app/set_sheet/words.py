@@ -2,12 +2,19 @@
 
 from __future__ import annotations
 
+from collections.abc import Callable
+
 from app.units import NO_BREAK, Units, rounded
 from app.words import percent
 from solver.studies import Cell, Level, Sheet
 
 #: What blows are counted for, m.
 PER = {"0.25 m": 0.25, "m": 1.0, "ft": 0.3048}
+
+
+def unit_of(units: Units) -> Callable[[str], float]:
+    """SI value of the unit that the reader sees, by its dimension."""
+    return lambda dimension: 1 / float(units.number(1.0, dimension))
 
 
 def per_of(units: Units, chosen: str | None) -> str:
@@ -43,13 +50,17 @@ def blows_text(cell: Cell, per: str) -> str:
     return "–" if blows is None else rounded(blows * PER[per], 2 if blows * PER[per] < 10 else 3)
 
 
-def over_text(cell: Cell, units: Units) -> str:
-    """Which limit is passed where: "tension limit passed in Lower at 12.3 m"."""
-    assert cell.worst is not None
-    sign, stress = cell.worst
+def over_lines(cells: tuple[Cell, ...] | list[Cell], units: Units) -> tuple[str, str] | None:
+    """Which limit is passed where on one line, and at which resistances; `None` where none is."""
+    over = [c for c in cells if c.over]
+    if not over:
+        return None
+    sign, stress = max((c.worst for c in over if c.worst is not None), key=lambda pair: pair[1].share or 0.0)
+    low, high = over[0].resistance, over[-1].resistance
+    at = force_text(low, units) if low == high else f"{force_text(low, units)} to {force_text(high, units)}"
     return (
-        f"{sign} limit passed in {stress.segment} at {units.show(stress.position, 'length')}, "
-        f"from {units.show(cell.resistance, 'force')}"
+        f"{sign} limit passed at {at}",
+        f"most in {stress.segment} at {units.show(stress.position, 'length')}",
     )
 
 
@@ -82,9 +93,10 @@ def criterion(cell: Cell, units: Units) -> str:
     resistance = force_text(cell.resistance, units)
     if not cell.moves:
         return f"With a {blow} the member practically does not move at {resistance}: no set shows it."
-    mean = f"the mean set of the last 10 blows is {units.show(cell.set or 0.0, 'small_length', 2)} or less"
-    over = " A limit is passed at this blow: do not drive so." if cell.over else ""
-    return f"Stop when {mean} with a {blow}: that shows {resistance}.{over}"
+    measured = units.show(cell.set or 0.0, "small_length", 2)
+    if cell.over:
+        return f"Do not drive with a {blow}: a limit is passed at {resistance} (the set would be {measured})."
+    return f"Stop when the mean set of the last 10 blows is {measured} or less with a {blow}: that shows {resistance}."
 
 
 def summary(sheet: Sheet, units: Units) -> str:
@@ -92,12 +104,10 @@ def summary(sheet: Sheet, units: Units) -> str:
     parts = []
     for index, level in enumerate(sheet.plan.levels):
         cells = sheet.line(index)
-        over = next((c for c in cells if c.over), None)
+        over = over_lines(cells, units)
         known = any(c.share is not None for c in cells)
-        state = (
-            "no limit given"
-            if not known
-            else ("✓ within limits" if over is None else f"✕ {over_text(over, units)}")
-        )
+        state = "no limit given" if not known else "✓ within limits"
+        if over is not None:
+            state = f"✕ {over[0]}, {over[1]}"
         parts.append(f"{level_text(level, units)}: {state}")
     return " · ".join(parts)

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Sequence
+from collections.abc import Callable, Sequence
 from dataclasses import dataclass, replace
 
 import numpy as np
@@ -68,6 +68,15 @@ class Plan:
         return varied.model_copy(update={"run": varied.run.model_copy(update={"duration": None})})
 
 
+#: SI value of the unit in which a dimension (a key of `SI_UNITS`) is shown.
+UnitOf = Callable[[str], float]
+
+
+def one(dimension: str) -> float:
+    """SI units themselves."""
+    return 1.0
+
+
 def blow_pointer(case: Case) -> str | None:
     """Pointer to the number that says how hard the blow is; `None` where no single number does."""
     load = case.load
@@ -89,9 +98,11 @@ def plan_of(
     lowest: float | None = None,
     highest: float | None = None,
     count: int = COUNT,
+    unit_of: UnitOf = one,
 ) -> Plan:
     """What to solve. All that is not given is chosen from the case: `count` resistances from 0.4 to 2.5 times its own
-    total (N), and its blow at 0.7, 1 and 1.3 times what it is. `pointer` names another number to take `values`.
+    total (N), and its blow at 0.7, 1 and 1.3 times what it is, in numbers that are round in the units of `unit_of`.
+    `pointer` names another number to take `values`.
 
     Raises `StudyError` where a case has no ground, or a level is not valid.
     """
@@ -99,12 +110,12 @@ def plan_of(
     if case.ground is None or total.total <= 0:
         raise StudyError("A set needs ground that resists: give the case a shaft or a toe resistance.")
     if resistances is None:
-        resistances = chosen_resistances(case, lowest, highest, count, vary)
+        resistances = chosen_resistances(case, lowest, highest, count, vary, unit_of("force"))
     if not resistances or min(resistances) <= 0:
         raise StudyError("The resistances of a set sheet must be more than 0.")
     if len(resistances) > MOST_RESISTANCES:
         raise StudyError(f"A set sheet takes up to {MOST_RESISTANCES} resistances, not {len(resistances)}.")
-    levels = _levels(case, pointer, values)
+    levels = _levels(case, pointer, values, unit_of)
     plan = Plan(case, tuple(sorted({float(r) for r in resistances})), levels, vary)
     for level in plan.levels:
         plan.variant(plan.resistances[0], level)
@@ -112,11 +123,11 @@ def plan_of(
 
 
 def chosen_resistances(
-    case: Case, lowest: float | None, highest: float | None, count: int, vary: Vary
+    case: Case, lowest: float | None, highest: float | None, count: int, vary: Vary, unit: float = 1.0
 ) -> tuple[float, ...]:
     """Even steps from `lowest` to `highest` (N); what is not given follows from the case's own total, rounded."""
     own = resistance_of(case)
-    step = round_step(own.total * (HIGHEST - LOWEST) / max(1, count - 1))
+    step = unit * round_step(own.total * (HIGHEST - LOWEST) / max(1, count - 1) / unit)
     low = lowest if lowest is not None else max(step, step * round(LOWEST * own.total / step))
     if vary == "toe" and lowest is None:
         low = max(low, step * float(np.ceil(own.shaft / step)))
@@ -136,7 +147,9 @@ def round_step(size: float) -> float:
     return float(min((m * power for m in (1, 2, 2.5, 4, 5, 8, 10)), key=lambda s: abs(np.log(s / size))))
 
 
-def _levels(case: Case, pointer: str | None, values: Sequence[float] | None) -> tuple[Level, ...]:
+def _levels(
+    case: Case, pointer: str | None, values: Sequence[float] | None, unit_of: UnitOf
+) -> tuple[Level, ...]:
     place = pointer or blow_pointer(case)
     if place is None:
         raise StudyError(
@@ -147,7 +160,8 @@ def _levels(case: Case, pointer: str | None, values: Sequence[float] | None) -> 
         raise StudyError(f"'{place}' is not a number of this case that is given, so it cannot be varied.")
     label, dimension = label_of(case, place)
     if values is None:
-        values = [_tidy(float(own) * share) if share != 1 else float(own) for share in SHARES]
+        unit = unit_of(dimension)
+        values = [_tidy(float(own) * share / unit) * unit if share != 1 else float(own) for share in SHARES]
     if not 1 <= len(values) <= MOST_LEVELS:
         raise StudyError(f"A set sheet takes 1 to {MOST_LEVELS} values of '{label}', not {len(values)}.")
     if len(set(values)) < len(values):

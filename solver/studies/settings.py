@@ -8,7 +8,7 @@ from pydantic import Field, ValidationError
 
 from solver.model.project import Case, Project
 from solver.model.quantity import Described, NotNegative, Number, Positive, Quantity
-from solver.studies.plan import COUNT, MOST_LEVELS, MOST_RESISTANCES, Plan, plan_of
+from solver.studies.plan import COUNT, MOST_LEVELS, MOST_RESISTANCES, Plan, UnitOf, one, plan_of
 from solver.studies.uncertainty import FEWEST, MOST
 from solver.studies.unknowns import Unknown, usual_unknowns
 from solver.studies.variation import StudyError, Vary
@@ -46,8 +46,8 @@ class SheetSettings(Described):
         """What is not known of a case: as given, or the usual ranges of what it has."""
         return usual_unknowns(case) if self.unknowns is None else self.unknowns
 
-    def plan(self, case: Case) -> Plan:
-        """What to solve for a case. Raises `StudyError`."""
+    def plan(self, case: Case, unit_of: UnitOf = one) -> Plan:
+        """What to solve for a case; what the program chooses is round in units of `unit_of`. Raises `StudyError`."""
         return plan_of(
             case,
             pointer=self.pointer,
@@ -56,6 +56,7 @@ class SheetSettings(Described):
             lowest=self.lowest,
             highest=self.highest,
             count=self.count,
+            unit_of=unit_of,
         )
 
 

@@ -80,7 +80,7 @@ def test_lines_are_broken_exactly_where_a_limit_is_passed(shown: SetSheet) -> No
     assert sum(bool(line.dash) for line in lines) == 4 * over  # set, compression, tension, energy
     assert len(lines) == 4 * 27
     assert sum(isinstance(i, Mark) for i in scene) == 4 * 30
-    named = [t for t in texts(scene) if "limit passed in Pile at" in t]
+    named = [t for t in texts(scene) if "limit passed at" in t]
     assert len(named) == sum(any(c.over for c in sheet.line(n)) for n in range(3))
 
 
