@@ -57,11 +57,9 @@ def over_lines(cells: tuple[Cell, ...] | list[Cell], units: Units) -> tuple[str,
         return None
     sign, stress = max((c.worst for c in over if c.worst is not None), key=lambda pair: pair[1].share or 0.0)
     low, high = over[0].resistance, over[-1].resistance
-    at = force_text(low, units) if low == high else f"{force_text(low, units)} to {force_text(high, units)}"
-    return (
-        f"{sign} limit passed at {at}",
-        f"most in {stress.segment} at {units.show(stress.position, 'length')}",
-    )
+    top = force_text(high, units)
+    at = top if low == high else f"{force_text(low, units).split(NO_BREAK)[0]} to {top}"
+    return f"{sign} limit passed at", f"{at}, in {stress.segment} {units.show(stress.position, 'length')}"
 
 
 def reading(cell: Cell, per: str, units: Units) -> str:
@@ -108,6 +106,6 @@ def summary(sheet: Sheet, units: Units) -> str:
         known = any(c.share is not None for c in cells)
         state = "no limit given" if not known else "✓ within limits"
         if over is not None:
-            state = f"✕ {over[0]}, {over[1]}"
+            state = f"✕ {over[0]} {over[1]}"
         parts.append(f"{level_text(level, units)}: {state}")
     return " · ".join(parts)
