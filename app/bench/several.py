@@ -11,7 +11,7 @@ from app.sight import Sight
 def toggled(sight: Sight, pointer: str) -> dict[str, Any]:
     """One entry more, or less where it is selected already; one of another list is selected alone."""
     chosen = [sight.selection, *sight.also]
-    if _list_of(pointer) != _list_of(sight.selection):
+    if _list_of(pointer) is None or _list_of(pointer) != _list_of(sight.selection):
         return {"selection": pointer}
     left = [one for one in chosen if one != pointer]
     if len(left) == len(chosen):

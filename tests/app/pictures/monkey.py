@@ -161,7 +161,8 @@ class Monkey:
             actions = [a for a in actions if a.text().replace("&", "") != "Close"]
             if actions:
                 popup.setActiveAction(self.random.choice(actions))
-                QTest.keyClick(popup, Key.Key_Return)
+                # not from here: while a dialog that it opens is there, this timer would stand still
+                QTimer.singleShot(0, popup, lambda: QTest.keyClick(popup, Key.Key_Return))
         elif popup is not None:
             popup.close()
         dialog = QApplication.activeModalWidget()
@@ -242,8 +243,11 @@ def main() -> int:
             window.resize(1280, 800)
             window.show()
             monkey = Monkey(window, chance)
+            # where it hangs is told with its place in the code
+            faulthandler.dump_traceback_later(300, exit=True)
             monkey.play(min(wanted.events - done, 1000))
             window.close()
+            faulthandler.cancel_dump_traceback_later()
             done, turn = done + monkey.events, turn + 1
             worst = max(worst, (monkey.longest, monkey.longest_was))
             print(
