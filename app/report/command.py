@@ -8,6 +8,7 @@ from datetime import datetime
 from pathlib import Path
 
 from app.export.records_options import date_of, positive
+from app.units import units_of
 from app.usable_project import load_usable
 from solver import ProjectError
 
@@ -27,7 +28,7 @@ def report_parser() -> argparse.ArgumentParser:
         "--figures",
         metavar="DIR",
         type=Path,
-        help="write each figure as SVG, PDF and PNG into this folder as well",
+        help="write each figure as SVG, PDF and PNG, and each case as GIF, into this folder as well",
     )
     parser.add_argument("--dpi", metavar="N", type=_dpi, default=300.0, help="of the PNG files; default 300")
     parser.add_argument("--date", metavar="DATE", type=date_of, help="date to write, as 2026-12-01")
@@ -72,9 +73,11 @@ def run_report(given: argparse.Namespace) -> int:
         report = build_report(project, cases, date, given.file)
         write_report(report, given.out, date)
         if given.figures is not None:
+            from app.report.animation import write_animations
             from app.report.figure_files import write_figures
 
             write_figures(report, given.figures, date, given.dpi)
+            write_animations(cases, units_of(project), given.figures)
     except OSError as error:
         return _complain(f"The report cannot be written to {given.out}: {error.strerror or error}.", FAILED)
     except MemoryError:

@@ -3,14 +3,17 @@
 from __future__ import annotations
 
 import copy
+import io
 import re
 from datetime import datetime
 
 import numpy as np
 import pypdfium2
 import pytest
+from PIL import Image
 
 from app.command_line import main
+from app.report.animation import wave_gif
 from app.report.build import build_report
 from app.report.choices import FIGURES, SECTIONS, ReportChoices, report_choices, written_date
 from app.report.decimals import with_commas
@@ -257,3 +260,13 @@ def test_the_envelope_in_print_keeps_the_peak_of_a_long_member():
     # tension positive: the most compressive stress is farthest to the left, where its mark stands
     mark = next(m for m in figure.marks if isinstance(m, Text) and m.text.startswith("compression"))
     assert abs(abs(min(plain) - mark.x) - 6) < 0.01
+
+
+def test_the_wave_as_an_animated_picture(monkeypatch):
+    monkeypatch.setattr("app.report.animation.FRAMES", 5)
+    project = project_from_tree(bar_tree())
+    made = wave_gif(solve(project.cases[0]), units_of(project))
+    with Image.open(io.BytesIO(made)) as picture:
+        assert picture.format == "GIF"
+        assert picture.n_frames == 5
+        assert picture.size == (640, 280)  # 480 by 210 points at 96 dots an inch

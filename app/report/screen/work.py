@@ -59,6 +59,11 @@ class ReportWork(QObject):
         self._made.connect(self._take)
         self._failed.connect(self._fail)
 
+    @property
+    def cases(self) -> tuple[Solved, ...]:
+        """What the report is made of."""
+        return self._known
+
     def look(self, on: bool) -> None:
         """Begin or end working; what is under way is dropped."""
         self._looked = on

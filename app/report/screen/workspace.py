@@ -14,6 +14,7 @@ from app.look.spacing import GAP, SPACE
 from app.report.screen.choices_form import ChoicesForm
 from app.report.screen.pages import Pages
 from app.report.screen.work import ReportWork
+from app.units import units_of
 
 
 class ReportSpace(QWidget):
@@ -32,7 +33,9 @@ class ReportSpace(QWidget):
         self.pdf.setProperty("role", "main")
         self.html = QPushButton("Save as HTML…")
         self.figures = QPushButton("Save the figures…")
-        self.figures.setToolTip("Each figure as SVG, PDF and PNG (300 DPI), in a folder")
+        self.figures.setToolTip(
+            "Each figure as SVG, PDF and PNG (300 DPI), in a folder; the waves of each case as GIF"
+        )
         self._shown = b""
         self._compose()
         self.pdf.clicked.connect(lambda: self._ask("pdf"))
@@ -125,12 +128,14 @@ class ReportSpace(QWidget):
 
     def save_figures(self, folder: Path) -> bool:
         """Write every figure of the report, and say where they are."""
+        from app.report.animation import write_animations
         from app.report.figure_files import write_figures
 
         if self.work.report is None:
             return False
         try:
             written = write_figures(self.work.report, folder, self.work.date)
+            written += write_animations(self.work.cases, units_of(self._document.project), folder)
         except OSError as error:
             self.told.emit(f"The figures cannot be written to {folder}: {error.strerror or error}.", "over")
             return False
