@@ -45,43 +45,25 @@ def plain(first, v, w, push, r, par, dt):
 
 @kernel
 def power_speed(a, b, exponent, rest):
-    """Root w of a w + b |w|^N sign(w) = rest, a > 0, b >= 0, 0 < N <= 1."""
-    goal = abs(rest)
-    if goal == 0.0:
-        return 0.0
-    # both bounds lie above the root
-    most = min(goal / b if b > 0.0 else 1e300, (goal / a) ** exponent)
-    return power_root(a, b, exponent, rest, most)[0]
+    """Root w of a w + b |w|^N sign(w) = rest, a > 0, b >= 0, 0 < N <= 1.
 
-
-@kernel
-def power_root(a, b, exponent, rest, guess):
-    """The same root and y = |w|^N, from a guess of y.
-
-    In y the left side is a y^(1/N) + b y, convex and rising. Halley's step (the third derivative is all that it
-    neglects) takes two powers where Newton's takes four; where it would leave the range, Newton's is taken.
+    With y = |w|^N the left side is a y^(1/N) + b y, convex and rising, so Newton's steps fall onto the root from
+    above.
     """
     goal = abs(rest)
     if goal == 0.0:
-        return 0.0, 0.0
+        return 0.0
     inverse = 1.0 / exponent
-    y = guess if guess > 0.0 else (goal / a) ** exponent
-    if b > 0.0:
-        y = min(y, goal / b)
+    # both bounds lie above the root
+    y = min(goal / b if b > 0.0 else 1e300, (goal / a) ** exponent)
     for _ in range(50):
         lead = a * y ** (inverse - 1.0)
-        off, slope = lead * y + b * y - goal, inverse * lead + b
-        bend = 0.5 * inverse * (inverse - 1.0) * lead / y
-        below = slope - off * bend / slope
-        change = off / below if below > 0.5 * slope and off < 0.5 * below * y else off / slope
+        change = (lead * y + b * y - goal) / (inverse * lead + b)
         y -= change
-        if change < -0.5 * y:
-            # a step up by more than half of what it reaches would overshoot: begin at the bounds above the root
-            y = min(goal / b if b > 0.0 else 1e300, (goal / a) ** exponent)
-        elif abs(change) <= 1e-13 * y:
+        if change <= 1e-13 * y:
             break
     size = (goal - b * y) / a
-    return (size if rest > 0.0 else -size), y
+    return size if rest > 0.0 else -size
 
 
 @kernel
@@ -99,15 +81,14 @@ def power(nodes, v, w, push, r, strength, stiff, flexible, factor, exponent, dt)
         half = 0.5 * push[i]
         old, top, b, n = r[j], strength[j], factor[j], exponent[j]
         k = stiff[j] * dt
-        y = abs(v[i]) ** n if v[i] != 0.0 else 0.0
-        before = b * y if v[i] > 0.0 else -b * y
+        before = b * abs(v[i]) ** n * (1.0 if v[i] > 0.0 else -1.0) if v[i] != 0.0 else 0.0
         goal = w[i] - half * (old + before)
-        new_w, y = power_root(1.0 + 0.5 * half * k, half * b, n, goal - half * (old + 0.5 * k * v[i]), y)
+        new_w = power_speed(1.0 + 0.5 * half * k, half * b, n, goal - half * (old + 0.5 * k * v[i]))
         new = old + 0.5 * k * (v[i] + new_w)
         if abs(new) > top:
             new = top if new > 0.0 else -top
-            new_w, y = power_root(1.0, half * b, n, goal - half * new, y)
-        after = b * y if new_w > 0.0 else -b * y
+            new_w = power_speed(1.0, half * b, n, goal - half * new)
+        after = b * abs(new_w) ** n * (1.0 if new_w > 0.0 else -1.0) if new_w != 0.0 else 0.0
         moved = 0.5 * dt * (v[i] + new_w)
         damped = 0.5 * (before + after) * moved
         damping_loss += max(damped, 0.0)
