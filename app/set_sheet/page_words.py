@@ -41,12 +41,16 @@ def assumed(sheet: Sheet, units: Units) -> list[str]:
         if plan.vary == "all"
         else "the shaft is kept and the toe takes the rest"
     )
+    blows = (
+        "one blow on ground that was at rest"
+        if case.run.blows == 1
+        else "the last of repeated blows, each on ground as the one before left it"
+    )
     low, high = units.show(plan.resistances[0], "force"), units.show(plan.resistances[-1], "force")
     found = [
         f"Total resistance from {low} to {high}: {kept}. Lines differ in the {varied_text(plan.levels[0])}; "
         "all else is as in the case.",
-        "Each point is one blow on ground that was at rest, solved until the member is at rest; the set is the "
-        "permanent movement of the toe.",
+        f"Each point is {blows}, solved until the member is at rest; the set is the permanent movement of the toe.",
     ]
     load = case.load
     if isinstance(load, Drop) and load.cushion is not None:
