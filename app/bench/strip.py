@@ -239,7 +239,8 @@ class Strip(Picture):
         plot = self.plot().toAlignedRect()
         if self.sight.pinned is not None or self.sight.pointed:
             return QRegion(plot.adjusted(-2, -2, 2, 2))
-        x = round(self.time_axis().at(self.sight.time))
+        time = self.time_axis()
+        x = round(time.at(time.clipped(self.sight.time)))  # a pixel far away is more than Qt can count
         return QRegion(x - 2, plot.top(), 5, plot.height() + 1)
 
     def moving_key(self) -> tuple[Any, ...]:
@@ -294,7 +295,9 @@ class Strip(Picture):
     def _fill_between(self, painter: QPainter, drawn: list[Drawn], hue: str) -> None:
         """A point a pixel and no smoothing: thousands of points filled smoothly took longer than all the rest."""
         first, second = drawn[:2]
-        left, right = max(first.x[0], second.x[0]), min(first.x[-1], second.x[-1])
+        plot = self.plot()  # of a record that runs far beyond it, only what lies in it
+        left = max(first.x[0], second.x[0], plot.left())
+        right = min(first.x[-1], second.x[-1], plot.right())
         x = np.arange(left, right, 1.0)
         upper, lower = np.interp(x, first.x, first.y), np.interp(x, second.x, second.y)
         colour = QColor(hue)

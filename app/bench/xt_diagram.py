@@ -169,10 +169,12 @@ class XtDiagram(Picture):
         plot = self.plot().toAlignedRect()
         if self.sight.pinned is not None or self.sight.pointed:
             return QRegion(plot.adjusted(-2, -2, 2, 2))
-        x = round(self.time_axis().at(self.sight.time))
+        time = self.time_axis()
+        x = round(time.at(time.clipped(self.sight.time)))  # a pixel far away is more than Qt can count
         region = QRegion(x - 2, plot.top(), 5, plot.height() + 1)
         if self.sight.place is not None:
-            y = round(self.distance_axis().at(self.sight.place))
+            distance = self.distance_axis()
+            y = round(distance.at(distance.clipped(self.sight.place)))
             region = region.united(QRegion(plot.left(), y - 2, plot.width() + 1, 5))
         return region
 

@@ -5,6 +5,7 @@ from __future__ import annotations
 from itertools import pairwise
 
 import numpy as np
+import pytest
 from hypothesis import given
 from hypothesis import strategies as st
 from PySide6.QtCore import QRectF
@@ -13,6 +14,7 @@ from app.bench.axes import Axis, inside, tick_texts, ticks
 from app.bench.curve_labels import Drawn, Wanted, place_labels
 from app.bench.curves import polygon, thinned
 from app.bench.lettering import spread
+from app.bench.strip import Strip
 
 
 @given(
@@ -97,3 +99,17 @@ def test_a_range_that_is_wanted_is_kept_inside_the_whole(low, span):
     got = inside((low, low + span), (0.0, 30.0))
     assert 0 <= got[0] < got[1] <= 30 + 1e-9
     assert abs((got[1] - got[0]) - min(span, 30.0)) < 1e-9
+
+
+@pytest.mark.parametrize("milliseconds", [1e-9, 1e-3, 1e9])
+def test_a_run_far_shorter_or_longer_than_what_is_shown_is_drawn_while_it_is_solved(
+    open_bench, pile, milliseconds
+):
+    """The cursor and the record of the last run lie up to 1e13 pixels away: Qt counts in 32 bits, memory is short."""
+    there = open_bench(pile)
+    there.sight.set(time=0.005, place=1e9)
+    there.solution.stop()
+    there.document.edit("Set duration", "run/duration", milliseconds / 1e3)
+    assert there.bench.xt.time_axis().high == milliseconds / 1e3
+    for picture in (there.bench.xt, *there.bench.strips.findChildren(Strip)):
+        assert not picture.grab().isNull()
