@@ -5,7 +5,7 @@ from __future__ import annotations
 from functools import partial
 from typing import Any
 
-from PySide6.QtCore import QEvent, QPoint, Qt
+from PySide6.QtCore import QEvent, QPoint, QSize, Qt
 from PySide6.QtGui import QResizeEvent
 from PySide6.QtWidgets import (
     QFrame,
@@ -27,6 +27,9 @@ from app.sight import Sight
 from app.tree import copied
 
 Tree = dict[str, Any]
+ELIDE = Qt.TextElideMode.ElideRight
+#: Pixels of a case's button around its words, and to which the one looked at is cut where all else is cut.
+ROUND_TEXT, LEAST_CHIP = 22, 90
 
 
 class CaseRow(QWidget):
@@ -95,14 +98,43 @@ class CaseRow(QWidget):
             button.setChecked(index == self._document.case_index)
         self._fit()
 
+    def wanted(self) -> int:
+        """Pixels at which all cases are shown."""
+        return sum(self._widths()) + GAP + self._add.sizeHint().width()
+
+    def least(self) -> int:
+        """Pixels for the case looked at, the list of all, and the button for another."""
+        widths = self._widths()
+        if not widths:
+            return self.wanted()
+        listed = self._all.sizeHint().width() if len(widths) > 1 else 0
+        return (
+            min(widths[self._document.case_index], LEAST_CHIP) + GAP + listed + self._add.sizeHint().width()
+        )
+
+    def minimumSizeHint(self) -> QSize:
+        return QSize(self.least(), super().minimumSizeHint().height())
+
+    def _widths(self) -> list[int]:
+        metrics = self.fontMetrics()
+        return [metrics.horizontalAdvance(_short(name)) + ROUND_TEXT + GAP for name in self._names]
+
     def _fit(self) -> None:
-        """As wide as the cases, up to the room there is; the one looked at is always in sight."""
-        wanted = sum(button.sizeHint().width() + GAP for button in self._buttons) + GAP
-        room = self.width() - self._add.sizeHint().width()
-        self._all.setVisible(wanted > room)
-        self._scroll.setMaximumWidth(wanted)
-        if self._buttons:
-            self._scroll.ensureWidgetVisible(self._buttons[self._document.case_index])
+        """As many cases as there is room for, whole ones, and the one looked at among them."""
+        widths, at = self._widths(), self._document.case_index
+        fits = self.wanted() <= self.width()
+        room = self.width() - self.least() - max(widths[at] - LEAST_CHIP, 0)
+        first, last = (0, len(widths)) if fits else (at, at + 1)
+        while not fits and last < len(widths) and widths[last] <= room:
+            room, last = room - widths[last], last + 1
+        while not fits and first > 0 and widths[first - 1] <= room:
+            room, first = room - widths[first - 1], first - 1
+        for index, button in enumerate(self._buttons):
+            button.setVisible(first <= index < last)
+            text = widths[index] - ROUND_TEXT - GAP + (min(room, 0) if index == at and not fits else 0)
+            button.setText(self.fontMetrics().elidedText(_short(self._names[index]), ELIDE, text))
+        self._all.setVisible(not fits)
+        self._scroll.setMaximumWidth(sum(widths[first:last]) + GAP)
 
     def _rebuild(self) -> None:
         for button in self._buttons:

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from PySide6.QtCore import Qt
+from PySide6.QtCore import QEvent, Qt
 from PySide6.QtGui import QAction, QKeyEvent
 from PySide6.QtWidgets import QHBoxLayout, QLineEdit, QPushButton, QSizePolicy, QToolButton, QWidget
 
@@ -14,6 +14,9 @@ from app.solving import Solution
 from app.state_view import StateView
 from app.units import units_of
 from app.units_menu import SYSTEM_WORDS, UnitsMenu
+
+#: Pixels that the title keeps at all sizes, and beside cases that need the room.
+LEAST_TITLE, USUAL_TITLE = 80, 170
 
 
 class TitleField(QLineEdit):
@@ -27,10 +30,8 @@ class TitleField(QLineEdit):
         self.setAccessibleName("Title of the project")
         self.setToolTip("Title of the project; click to change it")
         self.editingFinished.connect(self._commit)
-        self.textChanged.connect(self._fit)
         document.changed.connect(self._follow)
         self._follow()
-        self._fit()
 
     def keyPressEvent(self, event: QKeyEvent) -> None:
         if event.key() == Qt.Key.Key_Escape:
@@ -51,9 +52,10 @@ class TitleField(QLineEdit):
                 self.setText(shown)
                 self.setCursorPosition(0)
 
-    def _fit(self) -> None:
+    def wanted(self) -> int:
+        """Pixels for the whole title, within reason."""
         text = self.text() or self.placeholderText()
-        self.setFixedWidth(min(max(self.fontMetrics().horizontalAdvance(text) + 34, 120), 320))
+        return min(max(self.fontMetrics().horizontalAdvance(text) + 34, 120), 320)
 
 
 class TopBar(QWidget):
@@ -70,21 +72,25 @@ class TopBar(QWidget):
     ) -> None:
         super().__init__(parent)
         self._document = document
-        self.setFixedHeight(ROW + 2 * SPACE)
+        self._menus = menus
+        self.setFixedHeight(max(ROW, self.fontMetrics().height() + SPACE) + 2 * SPACE)
         row = QHBoxLayout(self)
         row.setContentsMargins(SPACE, GAP, SPACE, GAP)
         row.setSpacing(GAP)
         if menus is not None:
-            menus.setFixedHeight(ROW)
+            menus.setFixedHeight(max(ROW, self.fontMetrics().height() + SPACE))
             menus.setSizePolicy(QSizePolicy.Policy.Maximum, QSizePolicy.Policy.Fixed)
             row.addWidget(menus, 0, Qt.AlignmentFlag.AlignVCenter)
         self.title = TitleField(document, self)
+        self.title.textChanged.connect(self._fit)
         row.addWidget(self.title)
+        self._icons: list[QToolButton] = []
         for action in actions:
             button = QToolButton(self)
             button.setProperty("role", "quiet")
             button.setDefaultAction(action)
             row.addWidget(button)
+            self._icons.append(button)
         self.cases = CaseRow(document, self, sight)
         row.addWidget(self.cases, 1)
         self.state = StateView(document, solution, self)
@@ -109,9 +115,37 @@ class TopBar(QWidget):
         assert isinstance(row, QHBoxLayout)
         row.insertWidget(row.indexOf(self.cases), switch)
 
+    def event(self, event: QEvent) -> bool:
+        if event.type() in (QEvent.Type.LayoutRequest, QEvent.Type.Resize):
+            self._fit()
+        return super().event(event)
+
+    def _fit(self) -> None:
+        """Where there is little room the title goes short first, then the icons go, whose actions are in the menus,
+        last the title, which the window's own bar has too."""
+        row = self.layout()
+        if not isinstance(row, QHBoxLayout) or not hasattr(self, "units"):
+            return
+        if self._menus is not None:
+            self._menus.setMinimumWidth(self._menus.sizeHint().width())
+        shown = [row.itemAt(i).widget() for i in range(row.count())]
+        fixed = [
+            w for w in shown if w and w not in (self.title, self.cases, *self._icons) and not w.isHidden()
+        ]
+        gaps = row.spacing() * row.count() + 3 * SPACE
+        icons = sum(button.sizeHint().width() for button in self._icons)
+        room = self.width() - sum(w.sizeHint().width() for w in fixed) - gaps - icons
+        squeezed = room - self.cases.least() < LEAST_TITLE
+        room += icons if squeezed else 0
+        for button in self._icons:
+            button.setVisible(not squeezed)
+        self.title.setVisible(room - self.cases.least() >= LEAST_TITLE)
+        most = max(LEAST_TITLE, min(room - self.cases.least(), max(USUAL_TITLE, room - self.cases.wanted())))
+        self.title.setFixedWidth(min(self.title.wanted(), most))
+
     def _follow(self) -> None:
         units = units_of(self._document.project)
-        words = SYSTEM_WORDS[units.system] + (", own choice" if units.own else "")
+        words = SYSTEM_WORDS[units.system] + (", mixed" if units.own else "")
         if self.sign.text() != units.sign_word:
             self.sign.setText(units.sign_word)
             self.sign.setAccessibleName(f"Sign: {units.sign_word.removesuffix(' +')} positive")

@@ -36,6 +36,8 @@ from solver import Project
 
 SMALLEST = (1000, 640)
 USUAL = (1440, 900)
+#: Height of a line of text for which the outline has its usual width, px, and how much wider larger ones make it.
+USUAL_LINE, MOST_WIDER = 18, 1.2
 
 
 class Window(QMainWindow):
@@ -81,7 +83,8 @@ class Window(QMainWindow):
         self.split.addWidget(self.bench)
         self.split.setStretchFactor(1, 1)
         self.split.setCollapsible(1, False)
-        self.split.setSizes([OUTLINE_WIDTH, USUAL[0] - OUTLINE_WIDTH])
+        outline = round(OUTLINE_WIDTH * min(max(self.fontMetrics().height() / USUAL_LINE, 1.0), MOST_WIDER))
+        self.split.setSizes([outline, USUAL[0] - outline])
         self.set_sheet = SetSheet(self.document, self)
         self.workspaces = Workspaces(self)
         bench_and_tables = QWidget(self)

@@ -5,7 +5,7 @@ from __future__ import annotations
 from typing import Any
 
 from PySide6.QtCore import QRectF, QSize, Qt
-from PySide6.QtGui import QColor, QFontMetricsF, QMouseEvent, QPainter
+from PySide6.QtGui import QColor, QFontMetricsF, QMouseEvent, QPainter, QResizeEvent
 from PySide6.QtWidgets import QScrollArea, QWidget
 
 from app.bench.field_values import DIMENSIONS, gauge_value, screen_sign, value_at
@@ -48,7 +48,12 @@ class _Readings(Picture):
 
     def block(self) -> float:
         """Height of one gauge with its readings."""
-        return 3 * self.line() + SPACE
+        return (3 if self.two_columns() else 5) * self.line() + SPACE
+
+    def two_columns(self) -> bool:
+        """Whether two readings have room side by side: in large type on a small screen they have not."""
+        metrics = QFontMetricsF(self.font())
+        return metrics.horizontalAdvance("−0000 MPa −0000 kN ") <= self.right() - 8
 
     def right(self) -> float:
         """Where the second column of readings ends: not far from the first, however wide the panel."""
@@ -63,6 +68,10 @@ class _Readings(Picture):
 
     def minimumSizeHint(self) -> QSize:
         return self.sizeHint()
+
+    def resizeEvent(self, event: QResizeEvent) -> None:
+        super().resizeEvent(event)
+        self._fit()
 
     def _fit(self) -> None:
         self.setMinimumHeight(self.sizeHint().height())
@@ -104,8 +113,9 @@ class _Readings(Picture):
                 continue
             for number, (quantity, dimension) in enumerate(READ):
                 value = screen_sign(quantity, units) * gauge_value(record, quantity, sight.time)
-                at, align = ((8.0, LEFT), (right, RIGHT))[number % 2]
-                y += line if number % 2 == 0 else 0
+                beside = number % 2 == 1 and self.two_columns()
+                at, align = (right, RIGHT) if beside else (8.0, LEFT)
+                y += 0 if beside else line
                 put(painter, at, y, units.show(value, dimension), colours.ink, align)
 
     def _draw_place(self, painter: QPainter, y: float, right: float) -> None:

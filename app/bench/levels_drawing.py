@@ -21,7 +21,7 @@ def level_of(case: Case) -> float | None:
 
 def room_for_levels(case: Case, metrics: QFontMetricsF) -> float:
     """Pixels right of the plot that the numbers need, 0 where there are none."""
-    return 0.0 if level_of(case) is None else round(metrics.horizontalAdvance(f"+000{MINUS}") + LONG)
+    return 0.0 if level_of(case) is None else round(metrics.horizontalAdvance(f"{MINUS}00") + LONG + 2)
 
 
 def draw_levels(painter: QPainter, case: Case, units: Units, axis: Axis, plot: QRectF, right: float) -> None:
