@@ -128,10 +128,9 @@ class TopBar(QWidget):
             return
         if self._menus is not None:
             self._menus.setMinimumWidth(self._menus.sizeHint().width())
-        shown = [row.itemAt(i).widget() for i in range(row.count())]
-        fixed = [
-            w for w in shown if w and w not in (self.title, self.cases, *self._icons) and not w.isHidden()
-        ]
+        flexible = (self.title, self.cases, *self._icons)
+        parts = self.findChildren(QWidget, options=Qt.FindChildOption.FindDirectChildrenOnly)
+        fixed = [w for w in parts if w not in flexible and row.indexOf(w) >= 0 and not w.isHidden()]
         gaps = row.spacing() * row.count() + 3 * SPACE
         icons = sum(button.sizeHint().width() for button in self._icons)
         room = self.width() - sum(w.sizeHint().width() for w in fixed) - gaps - icons
