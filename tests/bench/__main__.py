@@ -35,7 +35,7 @@ ROWS = {
     "playback": "window",
     "start": "starting",
 }
-SHORT = ("linear_vs_c", "full_vs_c", "vs_numpy", "laws", "vs_ivp")
+SHORT = ("linear_vs_c", "full_vs_c", "vs_numpy", "laws")
 
 
 def main(arguments: list[str]) -> int:

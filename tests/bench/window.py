@@ -31,17 +31,17 @@ BEAT = 0.005
 
 
 class Paints(QObject):
-    """Counts paint events of some widgets, and knows which were painted since `forget`."""
+    """Counts paint events of some widgets, and knows which were painted since `forget` while `when` held."""
 
-    def __init__(self, widgets: list[QWidget]) -> None:
+    def __init__(self, widgets: list[QWidget], when: Callable[[], bool] = lambda: True) -> None:
         super().__init__()
-        self.widgets, self.count = widgets, 0
+        self.widgets, self.count, self._when = widgets, 0, when
         self.painted: set[int] = set()
         for widget in widgets:
             widget.installEventFilter(self)
 
     def eventFilter(self, watched: QObject, event: QEvent) -> bool:
-        if event.type() == QEvent.Type.Paint:
+        if event.type() == QEvent.Type.Paint and self._when():
             self.count += 1
             self.painted.add(id(watched))
         return False
@@ -107,7 +107,12 @@ def edit_to_picture(short: bool) -> Iterator[Row]:
             for r in window.outline.form.rows
             if isinstance(r, NumberRow) and r.spec.pointer.endswith("drop_height")
         )
-        paints = Paints([window.bench.xt, *window.bench.strips.shown()])
+        solution, document = window.solution, window.document
+
+        def shows_the_edit() -> bool:
+            return solution.state == "fresh" and solution.result.case == document.case
+
+        paints = Paints([window.bench.xt, *window.bench.strips.shown()], shows_the_edit)
         for i in range(repetitions):
             beats.append(calibration())
             row.edit.setFocus()
@@ -116,9 +121,6 @@ def edit_to_picture(short: bool) -> Iterator[Row]:
             paints.forget()
             began = time.perf_counter()
             QTest.keyClick(row.edit, Qt.Key.Key_Return)
-            solution, document = window.solution, window.document
-            _wait(app, lambda: solution.state == "fresh" and solution.result.case == document.case)  # noqa: B023
-            paints.forget()
             times.append(_wait(app, lambda: paints.all_painted) - began)
             QTest.qWait(20)
     median, late = float(np.median(times)), float(np.percentile(times, 95))
