@@ -85,15 +85,15 @@ class Difference:
 def differences(own: Findings, other: Findings, units: Units) -> tuple[Difference, ...]:
     """Peak compression and tension, set and energy of another run, against the one looked at."""
     rows = [
-        ("peak compression", "stress", own.compression.peak.value, other.compression.peak.value),
-        ("peak tension", "stress", own.tension.peak.value, other.tension.peak.value),
+        ("compression", "stress", own.compression.peak.value, other.compression.peak.value),
+        ("tension", "stress", own.tension.peak.value, other.tension.peak.value),
     ]
     if own.set is not None or other.set is not None:
         mine, its = (np.nan if one.set is None else one.set.value for one in (own, other))
-        rows.append(("set per blow", "small_length", mine, its))
+        rows.append(("set", "small_length", mine, its))
     if own.energy is not None or other.energy is not None:
         mine, its = (np.nan if one.energy is None else one.energy.value for one in (own, other))
-        rows.append(("energy past gauge", "energy", mine, its))
+        rows.append(("energy", "energy", mine, its))
     return tuple(
         Difference(name, "none" if np.isnan(its) else units.show(its, dimension), _change(mine, its))
         for name, dimension, mine, its in rows

@@ -72,6 +72,8 @@ class Bench(QWidget):
 
     def turn_alone(self, panel: QWidget | None = None) -> None:
         """Give a panel all the room, that with the focus or under the mouse where none is named; or take it back."""
+        if not self.isVisible():
+            return
         if self.grid.alone is not None:
             panel = None
         elif panel is None:

@@ -71,8 +71,9 @@ def draw_between(
 ) -> None:
     """The words beside the middle of what they measure, `joined` by a line, inside the plot."""
     if joined:
-        painter.setPen(pen(palette().ink, 1.4))
-        painter.drawPolyline(QPolygonF([start, end]))
+        for made in (pen(palette().paper, 3.4), pen(palette().ink, 1.4)):  # with a rim, over dark and light
+            painter.setPen(made)
+            painter.drawPolyline(QPolygonF([start, end]))
     text = " · ".join(words)
     metrics = QFontMetricsF(painter.font())
     width, half = metrics.horizontalAdvance(text), metrics.height() / 2

@@ -33,7 +33,7 @@ def screen_sign(quantity: str, units: Units) -> int:
     return units.sign if quantity in SIGNED else 1
 
 
-@lru_cache(maxsize=2)
+@lru_cache(maxsize=4)
 def field_of(result: Result, quantity: ShownQuantity) -> NDArray[np.float32]:
     """The quantity over time and distance, shape (frames, columns), single precision."""
     fields = result.fields
@@ -85,7 +85,7 @@ class Extremes:
     highest: Array
 
 
-@lru_cache(maxsize=2)
+@lru_cache(maxsize=4)  # the result looked at, and those laid over it
 def extremes_of(result: Result, quantity: ShownQuantity) -> Extremes:
     """Of stress the solver's own envelope, on which the findings stand, and of force that times the area; of motion
     the largest from the envelope and the lowest from the field, which is thinned in time."""

@@ -73,7 +73,8 @@ class Picture(QWidget):
         self._pressed_at = QPointF()
         self.menu_at = QPointF()
         self.setAttribute(Qt.WidgetAttribute.WA_OpaquePaintEvent)
-        self.setFocusPolicy(Qt.FocusPolicy.ClickFocus)
+        self.setFocusPolicy(Qt.FocusPolicy.StrongFocus)
+        self._framed = False
         for source in (document, sight, solution):
             source.changed.connect(self.look_again)
 
@@ -184,6 +185,11 @@ class Picture(QWidget):
         if self.greyed():
             painter.setOpacity(GREYED)
         self.draw_moving(painter)
+        if self._framed:
+            painter.setOpacity(1.0)
+            painter.setPen(QPen(QColor(palette().accent), 2))
+            painter.setBrush(Qt.BrushStyle.NoBrush)
+            painter.drawRoundedRect(QRectF(self.rect()).adjusted(1, 1, -1, -1), RADIUS, RADIUS)
         self._shown_moving, self._shown_region = self.moving_key(), self.moving_region()
 
     def paint_whole(self, painter: QPainter) -> None:
@@ -216,6 +222,15 @@ class Picture(QWidget):
 
     def changeEvent(self, event: QEvent) -> None:
         super().changeEvent(event)
+        self.update()
+
+    def focusInEvent(self, event: QFocusEvent) -> None:
+        """A frame for who comes by the keyboard; the mouse shows by itself where it is."""
+        self._framed = event.reason() in BY_KEYS
+        self.update()
+
+    def focusOutEvent(self, event: QFocusEvent) -> None:
+        self._framed = False
         self.update()
 
     # Pointing, zooming, moving ----------------------------------------------------------------------------------

@@ -41,6 +41,8 @@ ENERGY = {
 }
 #: A part of the energy smaller than this share of all that was put in gets no curve.
 SMALL_SHARE = 0.01
+#: Share of its largest value from which on a wave counts as being at its top.
+FLAT = 0.995
 
 
 @dataclass(frozen=True, eq=False)
@@ -143,12 +145,12 @@ def _returns(first: float, there_and_back: float, period: float, last: float) ->
 
 
 def _first_arrival(gauge: GaugeRecord, there_and_back: float) -> float:
-    """When the blow itself is largest at a gauge, s: the top of the down-going wave in the time that its beginning
-    takes to the far end."""
+    """When the blow itself is largest at a gauge, s: the top of the down-going wave, or where its flat top begins, in
+    the time that its beginning takes to the far end."""
     down = np.abs(gauge.down_wave)
     begun = float(gauge.time[int(np.argmax(down >= 0.3 * down.max()))])
-    within = gauge.time <= begun + there_and_back / 2
-    return float(gauge.time[int(np.argmax(np.where(within, down, 0.0)))])
+    within = np.where(gauge.time <= begun + there_and_back / 2, down, 0.0)
+    return float(gauge.time[int(np.argmax(within >= FLAT * within.max()))])
 
 
 def _waves(result: Result, gauge: GaugeRecord, units: Units) -> Content:
