@@ -16,7 +16,11 @@ from app.case_row import add_case, move_case, remove_case, rename_case
 from app.differences import differences
 from app.document import Document, DocumentError
 from app.starting_points import driven_pile
-from app.tree import with_files_moved
+from app.top_bar import turn_sign
+from app.tree import value_at, with_files_moved
+from app.unit_text import KNOWN_UNITS
+from app.units import units_of
+from app.units_menu import QUANTITIES, choose_one_system, choose_unit, choose_units
 from solver import load_project, project_from_tree, project_to_text
 
 pytestmark = pytest.mark.usefixtures("qapp")
@@ -280,6 +284,56 @@ class Editing(RuleBasedStateMachine):
         several = len(self.document.project.cases) > 1
         assert remove_case(self.document) == several  # the only case stays
 
+    @rule(by=st.sampled_from([-1, 1]))
+    def reorder_cases(self, by):
+        """The same cases in another order, the one looked at still the same one, and marks at the same values."""
+        before, looked_at, to = self.document.project, self.document.case, self.document.case_index + by
+        if not 0 <= to < len(before.cases):
+            return
+        assert move_case(self.document, by)
+        assert self.document.case == looked_at
+        assert self.document.case_index == to
+        after = self.document.project
+        assert sorted(case.name for case in after.cases) == sorted(case.name for case in before.cases)
+        assert len(after.provenance) == len(before.provenance)
+
+    @rule(name=st.sampled_from(["A", "B", "Drop 1.0 m"]))
+    def rename_case(self, name):
+        names = [case.name for case in self.document.project.cases]
+        names.pop(self.document.case_index)
+        taken = name.casefold() in [other.casefold() for other in names]
+        assert rename_case(self.document, name) != taken
+
+    @rule(
+        dimension=st.sampled_from(list(QUANTITIES)),
+        at=st.integers(0, 3),
+        system=st.sampled_from([None, "metric", "us"]),
+    )
+    def choose_units(self, dimension, at, system):
+        """What is shown changes; what is solved does not."""
+        before = self.document.project
+        if system is None:
+            unit = [None, *KNOWN_UNITS[dimension]][: at + 1][-1]
+            choose_unit(self.document, dimension, unit)
+            if unit is not None:
+                assert units_of(self.document.project).unit(dimension) == unit
+        else:
+            choose_units(self.document, system)
+            assert units_of(self.document.project).system == system
+        assert self.document.project.cases == before.cases
+        assert self.document.project.materials == before.materials
+
+    @rule()
+    def one_system_for_all(self):
+        choose_one_system(self.document)
+        assert not units_of(self.document.project).own
+
+    @rule()
+    def turn_sign(self):
+        before = units_of(self.document.project).sign
+        turn_sign(self.document)
+        assert units_of(self.document.project).sign == -before
+
     @rule()
     def undo(self):
         could = self.document.undo_stack.canUndo()
@@ -317,6 +371,17 @@ class Editing(RuleBasedStateMachine):
             assert project_from_tree(self.document.tree) == self.document.project
             assert 0 <= self.document.case_index < len(self.document.project.cases)
             assert self.document.case in self.document.project.cases
+
+    @invariant()
+    def every_mark_stands_at_a_value(self):
+        if hasattr(self, "document"):
+            for pointer in self.document.project.provenance or {}:
+                assert value_at(self.document.tree, pointer) is not None
+
+    @invariant()
+    def what_is_not_valid_is_told(self):
+        if hasattr(self, "document"):
+            assert all(entry.sentence.endswith((".", "?")) for entry in self.document.rejected.values())
 
 
 TestEditing = Editing.TestCase
