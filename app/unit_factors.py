@@ -10,7 +10,7 @@ from decimal import Decimal
 FOOT, POUND, GRAVITY = Decimal("0.3048"), Decimal("0.45359237"), Decimal("9.80665")
 INCH = FOOT / 12
 
-_METRIC = {
+_METRIC: dict[str, int | str] = {
     "m": 1, "mm": "1e-3", "cm": "1e-2", "km": "1e3", "µm": "1e-6",
     "t": "1e3", "kg": 1, "s": 1, "ms": "1e-3", "µs": "1e-6", "h": 3600,
     "N": 1, "kN": "1e3", "MN": "1e6", "GN": "1e9",
