@@ -17,7 +17,7 @@ from solver.errors import SolveError
 from solver.model.derived import shaft_resistance
 from solver.model.load import History, Pulse
 from solver.numerics.arrays import Frames
-from solver.numerics.assemble import extremes_of, records_of
+from solver.numerics.assemble import extremes_of, gauge_readings, records_of
 from solver.numerics.balance import LEDGER, SLIP, balance
 from solver.numerics.chain import Chain
 from solver.numerics.equilibrium import State
@@ -71,6 +71,7 @@ class March:
         links = np.flatnonzero(chain.axial > 0)
         shown = np.unique(np.linspace(0, len(links) - 1, min(COLUMNS, len(links))).round().astype(int))
         self.columns = links[shown]
+        self.readings = gauge_readings(chain)
         self.gauges = Store(5 * len(chain.case.gauges), self.planned)
         self.ram = Store(3 if chain.train else 0, self.planned)
         self.frames: list[Frames] = []
@@ -82,15 +83,19 @@ class March:
         if self.chain.case.run.duration is None:
             # looked at several times while a wave passes once, so that a moment of stillness is not taken for rest
             per_chunk = min(per_chunk, max(64, self.chain.nodes // 2))
-        told = time.perf_counter()
+        told, checked = time.perf_counter(), 0
         while self.steps < self.planned:
             self._chunk(self._aligned(min(per_chunk, self.planned - self.steps)))
-            refuse_bad_state(self)
-            if self.steps >= self.planned or self._came_to_rest():
-                break
-            if cancel is not None and cancel():
-                return True
-            if progress is not None and time.perf_counter() - told > 0.02:
+            ended = self.steps >= self.planned or self._came_to_rest()
+            stopped = not ended and cancel is not None and cancel()
+            tells = progress is not None and time.perf_counter() - told > 0.02
+            # short chunks need no check each; nothing is shown or returned without one
+            if ended or stopped or tells or (self.steps - checked) * self.chain.nodes >= CHUNK / 4:
+                refuse_bad_state(self)
+                checked = self.steps
+            if ended or stopped:
+                return stopped
+            if tells and progress is not None:
                 told = time.perf_counter()
                 progress(self._progress())
         return False
@@ -176,7 +181,7 @@ class March:
 
     def _chunk(self, count: int) -> None:
         s, chain = self.state, self.chain
-        records = records_of(chain, count, self.stride, self.columns, self.flags)
+        records = records_of(chain, self.readings, count, self.stride, self.columns, self.flags)
         march(
             s.rod, s.shaft, s.bounds, s.motion, self.extremes, records, self.sums, self._load(count),
             self.steps, count, self.stride, chain.dt, 0.0,

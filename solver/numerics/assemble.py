@@ -240,10 +240,15 @@ def _reading(chain: Chain, side: str, node: int) -> tuple[float, ...]:
 
 
 def records_of(
-    chain: Chain, steps: int, stride: int, columns: NDArray[np.int64], flags: NDArray[np.int64]
+    chain: Chain,
+    readings: tuple[NDArray[np.int64], Array],
+    steps: int,
+    stride: int,
+    columns: NDArray[np.int64],
+    flags: NDArray[np.int64],
 ) -> Records:
-    """Room for what a chunk of `steps` steps records."""
-    nodes, weights = gauge_readings(chain)
+    """Room for what a chunk of `steps` steps records; `readings` as `gauge_readings` gives them."""
+    nodes, weights = readings
     g, frames = len(nodes), (steps - 1) // stride + 1
     pictures = (frames, len(columns))
     return Records(

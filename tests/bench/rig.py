@@ -11,7 +11,7 @@ from solver import Case
 from solver.marching import COLUMNS, FRAMES
 from solver.model.load import Pulse
 from solver.numerics.arrays import aligned
-from solver.numerics.assemble import bounds_of, extremes_of, motion_of, records_of, rod_of
+from solver.numerics.assemble import bounds_of, extremes_of, gauge_readings, motion_of, records_of, rod_of
 from solver.numerics.chain import build_chain
 from solver.numerics.equilibrium import State, bring_to_rest
 from solver.numerics.ground import shaft_of
@@ -34,7 +34,9 @@ class Rig:
         links = np.flatnonzero(self.chain.axial > 0)
         shown = np.unique(np.linspace(0, len(links) - 1, min(COLUMNS, len(links))).round().astype(int))
         self.flags = np.zeros(len(self.fresh.rod.blocks), dtype=np.int64)
-        self.records = records_of(self.chain, steps, self.stride, links[shown], self.flags)
+        self.records = records_of(
+            self.chain, gauge_readings(self.chain), steps, self.stride, links[shown], self.flags
+        )
         self.load = self._load()
         self.reset()
 

@@ -145,7 +145,7 @@ class _KernelTime:
 
 def many(short: bool) -> Iterator[Row]:
     """1,000 default pile cases on two threads."""
-    batch = (cases.pile(None, 0.5 + 0.001 * i) for i in range(1_000))
+    batch = [cases.pile(None, 0.5 + 0.001 * i) for i in range(1_000)]
     timed = _KernelTime(solver.marching.march)
     list(solve_many([cases.pile(None)], workers=1))
     beats = [calibration() for _ in range(5)]
