@@ -25,6 +25,8 @@ Array = NDArray[np.float64]
 
 #: Fewest elements of a rod that strikes.
 FEWEST_IN_STRIKER = 10
+#: Most elements along the member that a person may ask for; a mistyped length must not fill the memory.
+MOST_ASKED = 1_000_000
 #: Courant number below which a segment is too short for the mesh of the others.
 WORST_COURANT = 0.2
 
@@ -115,7 +117,10 @@ def segments_of(case: Case) -> tuple[tuple[Segment, ...], slice]:
 
 
 def steps_of(case: Case, element_length: float | None) -> Steps:
-    """The mesh of a case: chosen by the program, or close to `element_length` (m)."""
+    """The mesh of a case: chosen by the program, or close to `element_length` (m).
+
+    Raises `SolveError` where that makes more than `MOST_ASKED` elements.
+    """
     segments, member = segments_of(case)
     materials = case.materials
     times = []
@@ -127,6 +132,11 @@ def steps_of(case: Case, element_length: float | None) -> Steps:
     marks = [_time_to(case, times[member], g.position) for g in case.gauges if g.on == "member"]
     if element_length is not None:
         speeds = [s.length / t.travel_time for s, t in zip(segments, times, strict=True)][member]
+        if total * max(speeds) > MOST_ASKED * element_length:
+            raise SolveError(
+                f"Elements of {element_length:.3g} m are more than {MOST_ASKED} along the member: give a longer one, "
+                "or leave its choice to the program."
+            )
         wanted = max(2, round(total * max(speeds) / element_length))
         return choose_steps(times, member, wanted, True, marks)
     return choose_steps(times, member, _wanted(case, total), False, marks)

@@ -105,6 +105,12 @@ def refusal(case: Any, **how: Any) -> str:
     return str(caught.value)
 
 
+@pytest.mark.parametrize("length", [1e-9, 1e-300])
+def test_elements_too_many_for_the_memory_are_refused_before_any_is_made(length: float) -> None:
+    """A rod of some metres in elements of 1 nm would be 1e10 of them."""
+    assert "elements" in refusal(case_of(HALF_SINE, duration=0.02), element_length=length).casefold()
+
+
 def test_a_run_that_diverges_says_when_where_and_what_helps() -> None:
     """At 1.02 times the stable step; the sentence has a time, a place and advice, and no result is shown."""
     chain = build_chain(case_of(HALF_SINE, duration=0.02, dx=0.05))
