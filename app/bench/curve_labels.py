@@ -38,7 +38,7 @@ def place_labels(
     """A box for each name; `None` where none is free. In turn each takes the cheapest place left: off all curves and
     off the boxes `off`, where its own curve lies away from the others."""
     grid = np.arange(plot.left() + 4, plot.right() - 4, STEP)
-    rows = [_row(c, grid) for c in curves]
+    rows = np.array([_row(c, grid) for c in curves]).reshape(len(curves), len(grid))
     taken: list[QRectF] = list(off)
     placed: list[QRectF | None] = []
     for name in wanted:
@@ -57,19 +57,20 @@ def _row(curve: Drawn, grid: Array) -> Array:
 
 
 def _cheapest(
-    rows: Sequence[Array], name: Wanted, grid: Array, plot: QRectF, height: float, taken: Sequence[QRectF]
+    rows: Array, name: Wanted, grid: Array, plot: QRectF, height: float, taken: Sequence[QRectF]
 ) -> QRectF | None:
     span = int(np.ceil(name.width / STEP)) + 1
     if len(grid) < span:
         return None
-    tops = [np.nan_to_num(sliding_window_view(r, span).min(axis=1), nan=1e9) for r in rows]
-    bottoms = [np.nan_to_num(sliding_window_view(r, span).max(axis=1), nan=-1e9) for r in rows]
-    own = rows[name.curve][span // 2 : span // 2 + len(tops[0])]
-    apart = np.full(len(own), 60.0)
-    for index, row in enumerate(rows):
-        if index != name.curve:
-            gap = np.abs(row[span // 2 : span // 2 + len(own)] - own)
-            apart = np.minimum(apart, np.nan_to_num(gap, nan=60.0))
+    # the lowest and the highest of each curve over the width of the name, shape (curves, places)
+    there = np.isfinite(rows)
+    tops = sliding_window_view(np.where(there, rows, 1e9), span, axis=1).min(axis=2)
+    bottoms = sliding_window_view(np.where(there, rows, -1e9), span, axis=1).max(axis=2)
+    middles = rows[:, span // 2 : span // 2 + tops.shape[1]]
+    own = middles[name.curve]
+    others = np.arange(len(rows)) != name.curve
+    gaps = np.where(there[:, span // 2 : span // 2 + tops.shape[1]], np.abs(middles - own), 60.0)[others]
+    apart = np.nan_to_num(np.min(gaps, axis=0, initial=60.0), nan=60.0)
     best: tuple[float, QRectF] | None = None
     lefts = grid[: len(own)]
     for above in (True, False):
@@ -77,13 +78,12 @@ def _cheapest(
         cost = -1.0 * apart + 0.01 * (lefts - plot.left())
         # how far the words stand from the middle of what they name
         cost += 0.5 * np.abs(edge + height / 2 - own)
-        for index, (top, bottom) in enumerate(zip(tops, bottoms, strict=True)):
-            if index != name.curve:
-                cost += np.where((bottom > edge - 1) & (top < edge + height + 1), 400.0, 0.0)
+        meets = (tops[others] < edge + height + 1) & (bottoms[others] > edge - 1)
+        cost += 400.0 * np.count_nonzero(meets, axis=0)
         for box in taken:
-            meets = (lefts < box.right() + 6) & (lefts + name.width > box.left() - 6)
-            meets &= (edge < box.bottom() + 1) & (edge + height > box.top() - 1)
-            cost += np.where(meets, 2000.0, 0.0)
+            covers = (lefts < box.right() + 6) & (lefts + name.width > box.left() - 6)
+            covers &= (edge < box.bottom() + 1) & (edge + height > box.top() - 1)
+            cost += np.where(covers, 2000.0, 0.0)
         outside = (edge < plot.top()) | (edge + height > plot.bottom()) | ~np.isfinite(own)
         cost += np.where(outside, 1e6, 0.0)
         cost = np.nan_to_num(cost, nan=1e6)

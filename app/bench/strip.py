@@ -201,7 +201,7 @@ class Strip(Picture):
         for curve, shape in zip(content.curves, drawn, strict=True):
             opacity = FAINT if curve.faint else 1.0
             own = pen(curve.hue, 1.0, curve.style, opacity)
-            painter.setPen(own if curve.over is None else over_pen(curve.hue, curve.over, opacity))
+            painter.setPen(own if curve.over is None else over_pen(curve.hue, curve.over, opacity, thin=True))
             painter.drawPolyline(polygon(shape.x, shape.y))
         draw_returns(painter, content, plot, time)
         gauge = self.gauge_shown()
