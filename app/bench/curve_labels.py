@@ -49,6 +49,14 @@ def place_labels(
     return placed
 
 
+def crosses(curve: Drawn, box: QRectF) -> bool:
+    """Whether a curve runs through a box."""
+    inside = (curve.x >= box.left()) & (curve.x <= box.right())
+    ends = np.interp((box.left(), box.right()), curve.x, curve.y) if len(curve.x) else np.zeros(0)
+    heights = np.concatenate((curve.y[inside], ends))
+    return bool(len(heights) and heights.min() < box.bottom() and heights.max() > box.top())
+
+
 def _row(curve: Drawn, grid: Array) -> Array:
     """Pixel heights on the grid; not a number where the curve does not reach."""
     if not len(curve.x):

@@ -22,7 +22,7 @@ from app.bench.arrival_lines import Line, all_named, arrivals_shown, lines_of
 from app.bench.axes import Axis, Margins, margins_of
 from app.bench.axis_drawing import horizontal_ticks, in_units, value_ticks
 from app.bench.cursor import between, draw_between, draw_cursor, draw_pinned_moment
-from app.bench.curve_labels import Drawn, Wanted, place_labels
+from app.bench.curve_labels import Drawn, Wanted, crosses, place_labels
 from app.bench.curves import polygon, thinned
 from app.bench.glyphs import pen
 from app.bench.lettering import CENTRE, put, put_on
@@ -333,8 +333,10 @@ class Strip(Picture):
             names.append((len(drawn) - 1, content.filled, colours.soft_ink))
             wanted.append(Wanted(len(drawn) - 1, metrics.horizontalAdvance(content.filled)))
         boxes = place_labels(drawn, wanted, room, height, taken)
-        for (_, name, hue), box in zip(names, boxes, strict=True):
-            if box is not None:
+        for (curve, name, hue), box in zip(names, boxes, strict=True):
+            # what names an area and finds no free place in it is left out; it would strike through a curve
+            of_area = curve >= len(content.curves)
+            if box is not None and not (of_area and any(crosses(d, box) for d in drawn[:2])):
                 put_on(painter, box.left(), box.center().y(), name, hue, colours.paper)
 
     def table(self) -> Table | None:

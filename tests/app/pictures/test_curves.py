@@ -11,7 +11,7 @@ from hypothesis import strategies as st
 from PySide6.QtCore import QRectF
 
 from app.bench.axes import Axis, inside, tick_texts, ticks
-from app.bench.curve_labels import Drawn, Wanted, place_labels
+from app.bench.curve_labels import Drawn, Wanted, crosses, place_labels
 from app.bench.curves import polygon, thinned
 from app.bench.lettering import spread
 from app.bench.strip import Strip
@@ -113,3 +113,10 @@ def test_a_run_far_shorter_or_longer_than_what_is_shown_is_drawn_while_it_is_sol
     assert there.bench.xt.time_axis().high == milliseconds / 1e3
     for picture in (there.bench.xt, *there.bench.strips.findChildren(Strip)):
         assert not picture.grab().isNull()
+
+
+def test_a_box_is_crossed_by_a_curve_through_it_even_without_a_point_in_it():
+    slope = Drawn(np.array([0.0, 100.0]), np.array([0.0, 100.0]))
+    assert crosses(slope, QRectF(40, 40, 20, 20))
+    assert not crosses(slope, QRectF(40, 0, 20, 20))
+    assert not crosses(Drawn(np.zeros(0), np.zeros(0)), QRectF(0, 0, 10, 10))

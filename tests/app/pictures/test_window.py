@@ -4,10 +4,13 @@ from __future__ import annotations
 
 import pytest
 from PySide6.QtCore import QPoint, Qt
+from PySide6.QtWidgets import QMenu
 
+from app.case_row import fill_case_menu
 from app.settings import Settings
 from app.window import Window
 from solver import solve
+from tests.app.pictures.test_laid_over import cases_of
 
 
 @pytest.fixture
@@ -105,3 +108,28 @@ def test_a_handle_folds_by_a_double_click_and_the_last_row_stays(open_window, qt
     assert window.menus.panels[False, 0].isChecked()
     qtbot.mouseDClick(rows, Qt.MouseButton.LeftButton)
     assert window.bench.strips.isVisible()
+
+
+def test_whether_arrivals_are_shown_is_remembered(open_window, qtbot):
+    window = open_window()
+    assert window.sight.arrivals is None  # nothing chosen: shown where they are few
+    qtbot.mouseClick(window.bench.xt.switch, Qt.MouseButton.LeftButton)
+    assert window.sight.arrivals
+    window.close()
+    assert open_window().sight.arrivals
+
+
+def test_a_new_project_is_looked_at_without_what_was_pinned_or_laid_over(open_window):
+    window = open_window()
+    window.sight.set(pinned=(0.01, 3.0), peaks=("velocity/Head",), locked_in=True)
+    window.begin_looking()
+    assert (window.sight.pinned, window.sight.peaks, window.sight.locked_in) == (None, (), False)
+
+
+def test_the_menu_of_cases_lays_others_over(open_window):
+    window = open_window(cases_of(1.2, 0.8))
+    menu = QMenu()
+    fill_case_menu(menu, window.document, window, window.sight)
+    over = next(a.menu() for a in menu.actions() if a.text() == "Lay over this case")
+    over.actions()[0].trigger()
+    assert window.sight.laid_over == ("Drop 0.8 m",)
