@@ -61,6 +61,7 @@ ALIASES = {
     "kips": "kip",
     "lbs": "lb",
     "pounds": "lb",
+    "lbm": "pound",
     "inches": "inch",
     "msec": "ms",
     '"': "inch",
@@ -145,6 +146,8 @@ def factor_of(unit: str, dimension: str) -> Decimal:
 def _pint_text(unit: str, dimension: str) -> str:
     if not PLAIN_UNIT.fullmatch(unit) or re.search(r"\d\d|\*\*\s*[(.]", unit):
         raise UnitError(f"'{unit}' is not a unit.")
+    if dimension in MASSES:
+        unit = re.sub(r"(?<=[A-Za-z])[-_ ]mass\b", "", unit)  # Pint reads the word as milliarcseconds
     text = unit.strip().replace("μ", "µ").replace("^", "**").replace("⋅", "*").replace("·", "*")
     for sign, power in POWERS.items():
         text = text.replace(sign, power)

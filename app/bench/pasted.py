@@ -2,6 +2,33 @@
 
 from __future__ import annotations
 
+import re
+from collections.abc import Sequence
+from itertools import zip_longest
+
+
+def without_headings(block: list[list[str]], headings: Sequence[str]) -> list[list[str]]:
+    """The block without a first row that repeats the headings of its columns, as in "Length" or "Length (ft)".
+
+    A unit in such a heading goes to the numbers under it, which would otherwise be taken in the column's own unit.
+    """
+    if len(block) < 2:
+        return block
+    units: list[str] = []
+    for cell, heading in zip(block[0], headings, strict=False):
+        title = re.fullmatch(r"([^(\[,]+?)\s*(?:[(\[,]\s*(.*?)\s*[)\]]?)?", cell)
+        if title is None or title[1].casefold() != heading.casefold():
+            return block
+        units.append(title[2] or "")
+    return [
+        [_with_unit(cell, unit) for cell, unit in zip_longest(line, units, fillvalue="")]
+        for line in block[1:]
+    ]
+
+
+def _with_unit(cell: str, unit: str) -> str:
+    return f"{cell} {unit}" if unit and cell[-1:].isdigit() else cell
+
 
 def cells_of(text: str) -> list[list[str]]:
     """Rows of cells: parted by tabs, or where there are none by semicolons, or by commas between plain numbers.

@@ -18,7 +18,7 @@ from PySide6.QtWidgets import (
 )
 
 from app.bench import outline_edits as edits
-from app.bench.pasted import cells_of
+from app.bench.pasted import cells_of, without_headings
 from app.bench.table_cells import CellEditors
 from app.bench.table_edits import Cell, block_cells
 from app.bench.table_model import TableModel
@@ -191,8 +191,9 @@ class Tables(QWidget):
 
     def paste(self) -> None:
         """The block on the clipboard, its corner at the current cell; one value fills all selected cells."""
-        block = cells_of(QGuiApplication.clipboard().text())
         current = self.view.currentIndex()
+        headings = [column.heading for column in self.model.content.columns[max(current.column(), 0) :]]
+        block = without_headings(cells_of(QGuiApplication.clipboard().text()), headings)
         if not block or not current.isValid():
             return
         chosen = self.view.selectionModel().selectedIndexes()

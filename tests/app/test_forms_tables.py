@@ -115,6 +115,22 @@ def test_a_pasted_block_is_one_step_and_adds_the_rows_it_needs(desk) -> None:
     assert [layer.name for layer in at.case.ground.layers] == ["Soft clay", "Dense sand"]
 
 
+def test_headings_of_a_pasted_sheet_make_no_row_and_their_units_hold(desk) -> None:
+    at = desk(driven_pile(), "ground/layers")
+    at.paste_at(0, "Name", "Name\tThickness (ft)\tUnit resistance [ksf]\nFill\t10\t1\nClay\t20\t2\n")
+    assert [layer.name for layer in at.case.ground.layers] == ["Fill", "Clay"]
+    assert [layer.thickness for layer in at.case.ground.layers] == pytest.approx(
+        [3.048, 6.096]
+    )  # exact: feet
+    assert at.case.ground.layers[0].unit_resistance == pytest.approx(47880.26, rel=1e-6)  # 1000 lbf/ft²
+
+
+def test_a_first_row_that_is_not_the_headings_of_its_columns_stays(desk) -> None:
+    at = desk(driven_pile(), "ground/layers")
+    at.paste_at(0, "Name", "Thickness\t2\nName\t3\n")
+    assert [layer.name for layer in at.case.ground.layers] == ["Thickness", "Name"]
+
+
 def test_cells_that_make_no_sense_say_why_and_the_others_are_taken(desk) -> None:
     at = desk(driven_pile(), "gauges")
     at.paste_at(0, "Position", "2\nnowhere\n18\n")
