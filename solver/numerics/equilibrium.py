@@ -145,9 +145,9 @@ def _refuse_unheld(chain: Chain, weight: float, soil: _Soil) -> None:
         return
     holding = float(soil.high.sum())
     if holding <= weight:
-        what = f"can hold {holding / 1000:.3g} kN" if holding else "is not there"
+        what = f"can hold {holding / 1000:,.0f} kN" if holding else "is not there"
         raise SolveError(
-            f"With gravity on, the member (with its cap {weight / 1000:.3g} kN) does not come to rest before the blow: "
+            f"With gravity on, the member (with its cap {weight / 1000:,.0f} kN) does not come to rest before the blow: "
             f"its ground {what}. Give the ground more resistance, hold the far end, or turn gravity off."
         )
 
