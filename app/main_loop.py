@@ -73,6 +73,8 @@ def _first_window(settings: Settings, file: str | None) -> Window:
     if sentence:
         window.notices.show_notice("file", sentence, "over")
     window.files.offer_recovery(found)
+    if not found:
+        window.offer_first_steps()
     return window
 
 

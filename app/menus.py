@@ -166,6 +166,8 @@ class Menus:
 
     def _help(self) -> None:
         menu: QMenu = self.bar.addMenu("&Help")
+        menu.addAction(self._action("First steps", self._window.tell_first_steps))
         menu.addAction(self._action("What this program computes, and what not", self._window.show_limits))
         menu.addAction(self._action("Terms", self._window.show_terms, Key.HelpContents))
+        menu.addAction(self._action("What is this?", self._window.explain_at_hand, QKeySequence("Shift+F1")))
         menu.addAction(self._action("About Striketrace", self._window.show_about))

@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Callable, Sequence
 from typing import Literal
 
-from PySide6.QtCore import QEvent, Qt
+from PySide6.QtCore import QEvent, Qt, Signal
 from PySide6.QtWidgets import (
     QFrame,
     QHBoxLayout,
@@ -28,6 +28,9 @@ Choice = tuple[str, Callable[[], object]]
 
 class Notices(QWidget):
     """At most one strip for each key; a new one with the same key takes the place of the old."""
+
+    #: Somebody closed the strip with this key, or took one of its choices.
+    dismissed = Signal(str)
 
     def __init__(self, parent: QWidget | None = None) -> None:
         super().__init__(parent)
@@ -104,10 +107,11 @@ class Notices(QWidget):
         away.setIcon(icon("close"))
         away.setToolTip("Close this message")
         away.setAccessibleName("Close this message")
-        away.clicked.connect(lambda: self.drop(key))
+        away.clicked.connect(lambda: self._taken(key, lambda: None))
         row.addWidget(away)
         return strip
 
     def _taken(self, key: str, action: Callable[[], object]) -> None:
         self.drop(key)
+        self.dismissed.emit(key)
         action()

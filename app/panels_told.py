@@ -21,6 +21,11 @@ ABOUT = f"""Striketrace {__version__}
 One-dimensional stress waves in long slender members that are struck: driven piles, drill strings, instrumented bars.
 MIT licence. Made with Qt, numpy, scipy, numba, pydantic and Pint."""
 
+STEPS = (
+    "First steps: choose a part on the left and type, or drag it in the drawing; every change is solved at once. "
+    "Point at a wave to read its place and time; the space bar plays it. File, New begins a project of your own; "
+    "Shift+F1 tells what a part of the window is about."
+)
 LIMITS = f"""It computes plane waves of axial stress in rods, with what strikes them and what holds them.
 
 {AXIAL_CAUTION} Near the struck end, over about 1.5 diameters, the stress is not yet even over the section.
@@ -81,4 +86,4 @@ def _dialog(parent: QWidget, title: str) -> tuple[QDialog, QVBoxLayout]:
     return dialog, column
 
 
-__all__ = ["ABOUT", "LIMITS", "offer_starting_points", "tell"]
+__all__ = ["ABOUT", "LIMITS", "STEPS", "offer_starting_points", "tell"]

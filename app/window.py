@@ -6,7 +6,7 @@ import sys
 from pathlib import Path
 
 from PySide6.QtCore import QEvent, Qt
-from PySide6.QtGui import QCloseEvent, QDragEnterEvent, QDropEvent, QIcon
+from PySide6.QtGui import QCloseEvent, QCursor, QDragEnterEvent, QDropEvent, QIcon
 from PySide6.QtWidgets import QApplication, QLineEdit, QMainWindow, QSplitter, QVBoxLayout, QWidget
 
 from app import terms
@@ -14,6 +14,7 @@ from app.bench.bench import Bench
 from app.bench.outline import Outline
 from app.bench.tables import Tables
 from app.document import Document
+from app.explaining import explain
 from app.file_watch import FileWatch
 from app.files import Files
 from app.look import apply_look, icon, pixmap
@@ -22,7 +23,7 @@ from app.look.theme import Choice
 from app.menus import Menus
 from app.notes_panel import NotesPanel
 from app.notices import Notices
-from app.panels_told import ABOUT, LIMITS, tell
+from app.panels_told import ABOUT, LIMITS, STEPS, tell
 from app.recovery import Autosave
 from app.report.screen.workspace import ReportSpace
 from app.set_sheet.workspace import SetSheet
@@ -36,6 +37,8 @@ from solver import Project
 
 SMALLEST = (1000, 640)
 USUAL = (1440, 900)
+#: Key of the strip, and of the setting that remembers that it was closed.
+FIRST_STEPS = "first_steps"
 #: Height of a line of text for which the outline has its usual width, px, and how much wider larger ones make it.
 USUAL_LINE, MOST_WIDER = 18, 1.2
 
@@ -58,6 +61,7 @@ class Window(QMainWindow):
         self._connect()
         self._restore_layout()
         self.setAcceptDrops(True)
+        self.bench.setAccessibleName("Pictures")
         self.bench.setFocusPolicy(Qt.FocusPolicy.StrongFocus)
         self.bench.setFocus()
         self._follow()
@@ -116,6 +120,7 @@ class Window(QMainWindow):
         self.document.refused.connect(lambda text: self.notices.show_notice("edit", text, "over"))
         self.solution.changed.connect(self._follow)
         self.notes.closed.connect(self.menus.notes.trigger)
+        self.notices.dismissed.connect(self._dismissed)
         self.menus.notes.triggered.connect(lambda on: self.settings.set_flag("notes", on))
         self.set_sheet.saving.told.connect(lambda text, state: self.notices.show_notice("sheet", text, state))
         self.report.told.connect(lambda text, state: self.notices.show_notice("report", text, state))
@@ -228,7 +233,23 @@ class Window(QMainWindow):
         self.show_notes(self.menus.notes.isChecked())
 
     def show_notes(self, on: bool) -> None:
-        self.notes.setVisible(on)
+        """The notes wait while the first steps are told: one strip to read is enough."""
+        self.notes.setVisible(on and self.notices.text_of(FIRST_STEPS) is None)
+
+    def tell_first_steps(self) -> None:
+        """How to begin, until it has been read once and closed."""
+        self.notices.show_notice(FIRST_STEPS, STEPS)
+        self.show_notes(self.menus.notes.isChecked())
+
+    def offer_first_steps(self) -> None:
+        """Tell them to whoever has not closed them yet."""
+        if self.settings.flag(FIRST_STEPS, usual=True):
+            self.tell_first_steps()
+
+    def _dismissed(self, key: str) -> None:
+        if key == FIRST_STEPS:
+            self.settings.set_flag(FIRST_STEPS, False)
+            self.show_notes(self.menus.notes.isChecked())
 
     def show_outline(self, on: bool) -> None:
         self.settings.set_flag("outline", on)
@@ -258,6 +279,11 @@ class Window(QMainWindow):
 
     def show_terms(self) -> None:
         tell(self, "Terms", terms.as_rich_text())
+
+    def explain_at_hand(self) -> None:
+        """Tell what the part with the focus is about, else the one under the pointer."""
+        if not explain(QApplication.focusWidget()):
+            explain(QApplication.widgetAt(QCursor.pos()))
 
     def show_about(self) -> None:
         tell(self, "About Striketrace", ABOUT)

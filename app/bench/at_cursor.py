@@ -30,6 +30,7 @@ class AtCursor(QScrollArea):
     ) -> None:
         super().__init__(parent)
         self.setWidgetResizable(True)
+        self.setAccessibleName("At the cursor")
         self.setHorizontalScrollBarPolicy(Qt.ScrollBarPolicy.ScrollBarAlwaysOff)
         self.readings = _Readings(document, sight, solution)
         self.setWidget(self.readings)

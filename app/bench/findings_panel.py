@@ -17,6 +17,7 @@ from app.bench.differences import Block, Differences
 from app.bench.finding_row import FindingRow, Told
 from app.bench.mesh_view import MeshView
 from app.document import Document
+from app.explaining import explain
 from app.laid_over import LaidOver
 from app.look.spacing import GAP, SPACE
 from app.sight import Sight
@@ -51,6 +52,7 @@ class FindingsPanel(QFrame):
         heading.setContentsMargins(SPACE, 0, SPACE, GAP)
         outer.addWidget(heading)
         self._scroll = scroll = QScrollArea()
+        scroll.setAccessibleName("Findings")
         scroll.setWidgetResizable(True)
         scroll.setHorizontalScrollBarPolicy(Qt.ScrollBarPolicy.ScrollBarAlwaysOff)
         self._inside = QWidget()
@@ -105,6 +107,8 @@ class FindingsPanel(QFrame):
         copy.setEnabled(self._solution.result is not None)
         check = menu.addAction("Check the mesh", self.mesh.ask)
         check.setEnabled(self.mesh.link.isEnabled())
+        under = self.childAt(event.pos())
+        menu.addAction("What is this?", lambda: explain(under or self))
         menu.exec(event.globalPos())
 
     def copy(self) -> None:

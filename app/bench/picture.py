@@ -16,10 +16,12 @@ from PySide6.QtCore import QEvent, QPointF, QRectF, Qt
 from PySide6.QtGui import (
     QColor,
     QContextMenuEvent,
+    QFocusEvent,
     QKeyEvent,
     QMouseEvent,
     QPainter,
     QPaintEvent,
+    QPen,
     QPixmap,
     QRegion,
     QWheelEvent,
@@ -29,7 +31,9 @@ from PySide6.QtWidgets import QMenu, QWidget
 from app.bench.axes import Axis, Margins, inside, margins_of, whole_distance, whole_time
 from app.bench.plot_export import add_export_actions
 from app.document import Document
+from app.explaining import explain
 from app.look.palette import palette
+from app.look.spacing import RADIUS
 from app.sight import Sight
 from app.solving import Solution
 from app.units import Units, units_of
@@ -40,6 +44,12 @@ ZOOM_PER_NOTCH = 0.8
 #: Smallest share of the whole that can be zoomed to.
 DEEPEST = 1e-3
 GREYED = 0.3
+#: Ways in which a picture gets the focus without the mouse.
+BY_KEYS = (
+    Qt.FocusReason.TabFocusReason,
+    Qt.FocusReason.BacktabFocusReason,
+    Qt.FocusReason.ShortcutFocusReason,
+)
 #: Pixels within which a press and its release are a click.
 CLICK = 4
 #: Pixels at the top of a picture that are its title.
@@ -303,6 +313,8 @@ class Picture(QWidget):
             menu.addAction("Show all of both axes", self.show_all)
             menu.addSeparator()
         add_export_actions(menu, self)
+        menu.addSeparator()
+        menu.addAction("What is this?", lambda: explain(self))
         menu.exec(event.globalPos())
 
     def fill_menu(self, menu: QMenu) -> None:

@@ -33,6 +33,7 @@ class Choices(QScrollArea):
     def __init__(self, document: Document, solution: SheetSolution, parent: QWidget | None = None) -> None:
         super().__init__(parent)
         self._document, self._solution = document, solution
+        self.setAccessibleName("Choices of the set sheet")
         self.setFixedWidth(WIDTH)
         self.setWidgetResizable(True)
         self.setHorizontalScrollBarPolicy(Qt.ScrollBarPolicy.ScrollBarAlwaysOff)

@@ -5,11 +5,13 @@ from __future__ import annotations
 from typing import Any
 
 from PySide6.QtCore import Qt
-from PySide6.QtWidgets import QGridLayout, QLabel, QSizePolicy, QWidget
+from PySide6.QtGui import QContextMenuEvent
+from PySide6.QtWidgets import QGridLayout, QLabel, QMenu, QSizePolicy, QWidget
 
 from app.bench.forms.commit import confirm_mark
 from app.bench.forms.spec import Spec
 from app.document import Document
+from app.explaining import explain
 from app.look.spacing import FIELD, GAP
 from app.units import Units
 
@@ -27,6 +29,7 @@ class FieldRow(QWidget):
     def __init__(self, document: Document, spec: Spec, parent: QWidget | None = None) -> None:
         super().__init__(parent)
         self.document = document
+        self._editor: QWidget = self
         self.spec = spec
         self._grid = QGridLayout(self)
         self._grid.setContentsMargins(0, 0, 0, 0)
@@ -60,7 +63,19 @@ class FieldRow(QWidget):
         editor.setSizePolicy(QSizePolicy.Policy.Expanding, QSizePolicy.Policy.Fixed)
         editor.setMinimumWidth(24)
         self._grid.addWidget(editor, 0, 1, Qt.AlignmentFlag.AlignVCenter)
-        self.setFocusProxy(editor)
+        self._editor = editor
+
+    def setFocus(self, reason: Qt.FocusReason = Qt.FocusReason.OtherFocusReason) -> None:
+        """To the editor. A focus proxy would do that too, but Tab takes a row for its proxy and goes round in the form
+        for ever."""
+        if self._editor is not self:
+            self._editor.setFocus(reason)
+
+    def contextMenuEvent(self, event: QContextMenuEvent) -> None:
+        menu = QMenu(self)
+        menu.setAttribute(Qt.WidgetAttribute.WA_DeleteOnClose)
+        menu.addAction("What is this?", lambda: explain(self.label))
+        menu.popup(event.globalPos())
 
     @property
     def stops(self) -> list[QWidget]:

@@ -226,7 +226,7 @@ class PointsRow(FieldRow):
             row.addWidget(button)
         self.put_editor(holder)
         self._grid.addWidget(holder, 0, 1, 1, 2)
-        self.setFocusProxy(self.paste)
+        self._editor = self.paste
 
     def show_value(self, units: Units, refused: bool) -> None:
         self.label.setText(f"{self.spec.count} points")
