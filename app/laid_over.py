@@ -68,6 +68,10 @@ class LaidOver(QObject):
         """Those of `shown` that are solved."""
         return tuple(one for one in self._shown if one.result is not None)
 
+    def drop(self) -> None:
+        """Break off what is being solved."""
+        self._aside.drop()
+
     def close(self) -> bool:
         return self._aside.close()
 

@@ -106,6 +106,8 @@ class Bench(QWidget):
 
     def close_work(self) -> bool:
         """End what goes on beside the window; False where it would not end in time."""
+        self.laid_over.drop()  # both are told to end before either is waited for
+        self.findings.mesh.drop()
         over, mesh = self.laid_over.close(), self.findings.mesh.close_work()
         return over and mesh
 

@@ -68,6 +68,10 @@ class MeshView(QWidget):
         self._say("Solving on elements half as long …")
         self._aside.start(work)
 
+    def drop(self) -> None:
+        """Break off a check under way."""
+        self._aside.drop()
+
     def close_work(self) -> bool:
         return self._aside.close()
 

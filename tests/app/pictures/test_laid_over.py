@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from time import perf_counter, sleep
 from types import SimpleNamespace
 
 import numpy as np
@@ -136,3 +137,24 @@ def test_the_profile_has_room_for_what_is_laid_over(open_bench, three, qtbot):
     assert profile._largest() == pytest.approx(three.result.peak_compression.value)
     assert profile.value_axis().high >= alone
     assert the.bench.close_work()
+
+
+def test_what_is_under_way_beside_the_window_ends_at_once_when_it_closes(open_bench, three, qtbot):
+    """Both kinds of work go on until they are told to stop; the least that a solver looks at that is every 0.1 s."""
+    the = open_bench(three)
+    begun = []
+
+    def endless(_what, cancel, **_how):
+        begun.append(1)
+        while not cancel():
+            sleep(0.01)
+        return iter(())
+
+    the.bench.laid_over._solve_many = endless
+    the.bench.findings.mesh._check = endless
+    the.sight.set(laid_over=("Drop 0.8 m",))
+    the.bench.findings.mesh.ask()
+    qtbot.waitUntil(lambda: len(begun) == 2)
+    before = perf_counter()
+    assert the.bench.close_work()
+    assert perf_counter() - before < 0.5
