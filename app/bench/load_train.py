@@ -10,7 +10,7 @@ from PySide6.QtCore import QLineF, QPointF, QRectF, Qt
 from PySide6.QtGui import QColor, QFontMetricsF, QPainter, QPolygonF
 
 from app.bench.glyphs import arrow_down, outline, pen, pulse_shape
-from app.bench.lettering import fitted, put
+from app.bench.lettering import RIGHT, fitted, put
 from app.look.palette import palette
 from app.units import Units
 from solver import Case
@@ -73,9 +73,14 @@ def draw_drop(
     arrow_down(painter, x, ram.top() + 2, landing, 5, colours.soft_ink)
     lines = [units.show(load.ram_mass, "mass"), strength_text(load, units)]
     metrics = QFontMetricsF(painter.font())
+    needed = max(metrics.horizontalAdvance(text) for text in lines)
+    beside = x + 5 + needed <= right or ram.left() - 8 < needed  # right of the arrow, else left of the ram
     for row, text in enumerate(lines):
         y = ram.top() + (row + 0.5) * metrics.height()
-        put(painter, x + 5, y, fitted(text, painter.font(), right - x - 5), colours.soft_ink)
+        if beside:
+            put(painter, x + 5, y, fitted(text, painter.font(), right - x - 5), colours.soft_ink)
+        else:
+            put(painter, ram.left() - 6, y, text, colours.soft_ink, RIGHT)
 
 
 def strength_text(load: Drop, units: Units) -> str:

@@ -17,7 +17,6 @@ from app.bench.colouring import columns_under, entries_of, image_of, scale_top, 
 from app.bench.field_values import along_member
 from app.bench.glyphs import pen, pointer_right
 from app.bench.lettering import RIGHT, fitted, in_lines, put, put_on, spread
-from app.bench.levels_drawing import draw_levels, room_for_levels
 from app.bench.load_train import blocks_of, draw_drop, draw_pulse
 from app.bench.member_drag import MemberDrag
 from app.bench.member_handles import Handle, handles_of
@@ -53,8 +52,7 @@ class MemberDrawing(Picture):
         """Left only what the numbers of the distance need; above and below as all pictures in the row."""
         shared = margins_of(self.font())
         metrics = QFontMetricsF(self.font())
-        right = 4.0 + room_for_levels(self.case, metrics)
-        return replace(shared, gutter=float(round(metrics.horizontalAdvance("−000") + 8)), right=right)
+        return replace(shared, gutter=float(round(metrics.horizontalAdvance("−000") + 8)), right=4.0)
 
     def described(self) -> tuple[Any, ...]:
         return (self.case,)
@@ -98,7 +96,6 @@ class MemberDrawing(Picture):
         least = -sum(s.length for s in case.ram_segments)
         factor = float(self.units.number(1.0, "length"))
         distance_ticks(painter, in_units(axis, factor), plot.left(), True, least * factor)
-        draw_levels(painter, case, self.units, axis, plot, self.width() - 4.0)
 
     def _heading(self, painter: QPainter, unit: str) -> None:
         y = 0.5 * self.margins().header
@@ -110,7 +107,7 @@ class MemberDrawing(Picture):
     def _draw_load(self, painter: QPainter, plot: QRectF, axis: Axis, pieces: Pieces) -> None:
         case, struck = self.case, axis.at(0.0)
         if isinstance(case.load, Drop):
-            draw_drop(painter, case, self.units, self._blocks(pieces), self.width(), struck)
+            draw_drop(painter, case, self.units, self._blocks(pieces), plot.right(), struck)
         elif isinstance(case.load, Pulse | History):
             draw_pulse(painter, case, self.units, self.centre(), struck, plot.top(), plot.right())
 
