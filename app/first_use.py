@@ -29,6 +29,9 @@ def prepare(extra: str = "") -> None:
     from app import needs
 
     folder = needs.checkout()
+    if folder is not None and needs.runs_inside(folder / ".venv"):
+        # what the solver compiles lies in the checkout too, as all that a start from it makes
+        os.environ.setdefault("STRIKETRACE_CACHE", str(needs.kernels(folder)))
     if folder is None or needs.ready(folder, extra):
         return  # an installed package has what it needs: pip saw to that
     # Imported only now, as most starts do without it: it costs more than all that stands above.

@@ -52,6 +52,11 @@ def venv_python(venv: Path) -> Path:
     return venv / "Scripts" / "python.exe" if os.name == "nt" else venv / "bin" / "python"
 
 
+def kernels(folder: Path) -> Path:
+    """Where a start from the checkout `folder` keeps what the solver compiles."""
+    return folder / ".venv" / "kernels"
+
+
 def runs_inside(venv: Path) -> bool:
     """Whether this interpreter is the one of `venv`."""
     try:

@@ -88,7 +88,16 @@ def _make_whole(folder: Path, extra: str, again: str, lock: IO[bytes]) -> None:
         )
     shutil.rmtree(venv / "set-up", ignore_errors=True)
     needs.write_stamp(venv, needs.Stamp(True, needs.digest(folder), _python_of(venv)))
+    _compile_solver(folder)
     say(f"Ready after {time.monotonic() - started:.0f} s. The next start needs none of this.")
+
+
+def _compile_solver(folder: Path) -> None:
+    """Compile the solver now, so that the first window need not wait; where that fails, it is compiled then."""
+    say("  compiling the solver, once")
+    command = [str(needs.venv_python(folder / ".venv")), "-X", "utf8", "-m", "solver.warm_up"]
+    environment = {**os.environ, "STRIKETRACE_CACHE": str(needs.kernels(folder))}
+    subprocess.run(command, cwd=folder, env=environment, capture_output=True)
 
 
 def _refuse_if_hopeless(folder: Path, again: str) -> None:
