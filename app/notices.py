@@ -96,7 +96,11 @@ class Notices(QWidget):
         words = QLabel(text, strip)
         words.setWordWrap(True)
         words.setTextInteractionFlags(Qt.TextInteractionFlag.TextSelectableByMouse)
-        words.setSizePolicy(QSizePolicy.Policy.Expanding, QSizePolicy.Policy.Preferred)
+        policy = words.sizePolicy()
+        policy.setHorizontalPolicy(
+            QSizePolicy.Policy.Expanding
+        )  # and as high as its lines, which it tells itself
+        words.setSizePolicy(policy)
         row.addWidget(words, 1)
         for label, action in choices:
             button = QPushButton(label, strip)

@@ -1,4 +1,4 @@
-"""Elevations beside the member, where the level of its struck end is given: a second scale, upwards."""
+"""Elevations between the member and its x-t diagram, where the level of the struck end is given: a scale upwards."""
 
 from __future__ import annotations
 
@@ -10,7 +10,7 @@ from app.bench.axis_drawing import LONG, in_units
 from app.bench.glyphs import pen
 from app.bench.lettering import RIGHT, put
 from app.look.palette import palette
-from app.units import MINUS, Units
+from app.units import Units
 from solver import Case
 
 
@@ -19,13 +19,8 @@ def level_of(case: Case) -> float | None:
     return case.ground.level_of_struck_end if case.ground else None
 
 
-def room_for_levels(case: Case, metrics: QFontMetricsF) -> float:
-    """Pixels right of the plot that the numbers need, 0 where there are none."""
-    return 0.0 if level_of(case) is None else round(metrics.horizontalAdvance(f"{MINUS}00") + LONG + 2)
-
-
-def draw_levels(painter: QPainter, case: Case, units: Units, axis: Axis, plot: QRectF, right: float) -> None:
-    """Ticks at tidy elevations on the right edge of the plot, with numbers that tell on which side of zero they are."""
+def draw_levels(painter: QPainter, case: Case, units: Units, axis: Axis, plot: QRectF) -> None:
+    """Ticks at tidy elevations left of the plot, with numbers that tell on which side of zero they are."""
     level = level_of(case)
     if level is None:
         return
@@ -34,13 +29,13 @@ def draw_levels(painter: QPainter, case: Case, units: Units, axis: Axis, plot: Q
     )
     metrics = QFontMetricsF(painter.font())
     most = max(int(axis.length / (2.6 * metrics.height())), 2)
-    values = ticks(upwards.high, upwards.low, most)
+    values = [v for v in ticks(upwards.high, upwards.low, most) if upwards.at(v) >= axis.at(0.0) - 0.5]
     for value, text in zip(values, tick_texts(values), strict=True):
         y = upwards.at(value)
         painter.setPen(pen(palette().line))
-        painter.drawLine(QLineF(plot.right(), y, plot.right() + LONG, y))
+        painter.drawLine(QLineF(plot.left() - LONG, y, plot.left(), y))
         signed = text if value <= 0 else f"+{text}"
-        put(painter, right, y, signed, palette().soft_ink, RIGHT)
-    painter.setPen(pen(palette().line))
-    painter.drawLine(QLineF(plot.right(), plot.top(), plot.right(), plot.bottom()))
-    put(painter, right, plot.top() - 0.8 * metrics.height(), "level", palette().soft_ink, RIGHT)
+        put(painter, plot.left() - LONG - 3, y, signed, palette().soft_ink, RIGHT)
+    top = max(plot.top(), axis.at(0.0))
+    words = f"Level, {units.unit('length')}"
+    put(painter, plot.left() - LONG - 3, top - 1.1 * metrics.height(), words, palette().soft_ink, RIGHT)

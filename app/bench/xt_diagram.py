@@ -26,6 +26,7 @@ from app.bench.cursor import (
 from app.bench.field_values import DIMENSIONS, field_of
 from app.bench.glyphs import pen
 from app.bench.lettering import RIGHT, put
+from app.bench.levels_drawing import draw_levels, level_of
 from app.bench.picture import Picture, Table
 from app.look.fonts import font
 from app.look.palette import palette
@@ -138,7 +139,7 @@ class XtDiagram(Picture):
         return QFontMetricsF(self.font()).horizontalAdvance("− 0000   0000 MPa") + 60
 
     def resting_key(self) -> tuple[Any, ...]:
-        return (self.sight.quantity, self.has_lines())
+        return (self.sight.quantity, self.has_lines(), level_of(self.case))
 
     def moving_key(self) -> tuple[Any, ...]:
         return (*super().moving_key(), self.sight.pointed, self._mouse if self.sight.pointed else None)
@@ -160,6 +161,7 @@ class XtDiagram(Picture):
         least = -sum(s.length for s in self.case.ram_segments)
         metres = float(self.units.number(1.0, "length"))
         distance_ticks(painter, in_units(distance, metres), plot.left(), False, least * metres)
+        draw_levels(painter, self.case, self.units, distance, plot)
         near = time.high - time.low
         seconds = float(self.units.number(1.0, "time", near))
         horizontal_ticks(painter, in_units(time, seconds), plot.bottom(), False)

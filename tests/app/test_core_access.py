@@ -154,3 +154,11 @@ def test_first_steps_are_told_until_they_are_closed_and_never_above_the_notes(op
     window.offer_first_steps()
     assert window.notices.text_of(FIRST_STEPS) is None
     assert open_window().settings.flag(FIRST_STEPS, usual=True) is False
+
+
+def test_workspaces_are_reached_by_ctrl_and_their_number(open_window, qtbot):
+    window = open_window()
+    for number in (1, 2, 0):
+        key = (Qt.Key.Key_1, Qt.Key.Key_2, Qt.Key.Key_3)[number]
+        qtbot.keyClick(window, key, Qt.KeyboardModifier.ControlModifier)
+        assert window.workspaces.currentIndex() == number

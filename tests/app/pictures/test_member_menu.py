@@ -78,17 +78,14 @@ def test_the_menu_of_the_ground_offers_what_its_row_does(open_bench, pile):
 def test_elevations_stand_at_the_pixels_of_their_distances(open_bench, pile, monkeypatch, level):
     """A place x below a struck end at elevation z0 lies at z0 - x; the scale must agree with that of distance."""
     the = open_bench(pile)
-    member = the.bench.member
-    narrow = member.plot().width()
     the.document.edit("Level", "ground/level_of_struck_end", level)
-    assert member.plot().width() < narrow  # room is made for the numbers
     put = []
     monkeypatch.setattr(
         levels_drawing, "put", lambda _painter, _x, y, text, *_rest: put.append((y, text.replace("−", "-")))
     )
-    member.grab()
-    axis = member.distance_axis()
-    assert put[-1][1] == "level"
+    the.bench.xt.grab()
+    axis = the.bench.member.distance_axis()  # the x-t diagram shares it
+    assert put[-1][1] == "Level, m"
     assert len(put) > 3
     for y, text in put[:-1]:
         assert axis.value(y) == pytest.approx(level - float(text), abs=1e-9)
