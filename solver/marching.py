@@ -97,7 +97,7 @@ class March:
                 return stopped
             if tells and progress is not None:
                 told = time.perf_counter()
-                progress(self._progress())
+                progress(self.progress())
         return False
 
     def result(self, stopped: bool, settled: bool, at_end: Array | None) -> Result:
@@ -209,7 +209,8 @@ class March:
         self.still = self.still + 1 if quiet else 0
         return self.still >= STILL_CHUNKS
 
-    def _progress(self) -> Progress:
+    def progress(self) -> Progress:
+        """How far the run is."""
         done = self.base + self.share * self.steps / self.planned
         elapsed = time.perf_counter() - self.began
         return Progress(done, elapsed * (1 - done) / done, lambda: self.result(True, False, None))

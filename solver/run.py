@@ -61,6 +61,10 @@ def solve_chain(
         repeats = len(sets) > 1 and abs(sets[-1] - sets[-2]) <= tolerance
         if stopped or repeats or blow == most - 1:
             return march.result(stopped, settled, at_end)
+        if progress is not None:
+            progress(march.progress())
+        if cancel is not None and cancel():
+            return march.result(True, settled, at_end)
         state = _next_blow(chain, state)
     raise AssertionError("a run has at least one blow")
 

@@ -148,7 +148,8 @@ def _refuse_unheld(chain: Chain, weight: float, soil: _Soil) -> None:
         what = f"can hold {holding / 1000:,.0f} kN" if holding else "is not there"
         raise SolveError(
             f"With gravity on, the member (with its cap {weight / 1000:,.0f} kN) does not come to rest "
-            f"before the blow: its ground {what}. Give the ground more resistance, hold the far end, or turn gravity off."
+            f"before the blow: its ground {what}. Give the ground more resistance, hold the far end, "
+            "or turn gravity off."
         )
 
 
