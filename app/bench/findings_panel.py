@@ -42,6 +42,7 @@ class FindingsPanel(QFrame):
         self._verdict: list[FindingRow] = []
         self._notes: list[FindingRow] = []
         self.differences, self.mesh = Differences(), MeshView()
+        self._answered = False
         self.setMinimumWidth(170)
         self.setAccessibleName("Findings")
         outer = QVBoxLayout(self)
@@ -77,6 +78,8 @@ class FindingsPanel(QFrame):
         caution.setToolTip(f"{words.AXIAL_CAUTION} {words.LIMIT_CAUTION}")
         caution.setContentsMargins(SPACE, GAP, SPACE, 0)
         outer.addWidget(caution)
+        self.mesh.said.connect(lambda: self._show_answer(True))
+        scroll.verticalScrollBar().rangeChanged.connect(lambda: self._show_answer(self._answered))
         for source in (document, solution):
             source.changed.connect(self._look_again)
         if laid_over is not None:
@@ -90,6 +93,12 @@ class FindingsPanel(QFrame):
     def resizeEvent(self, event: QResizeEvent) -> None:
         super().resizeEvent(event)
         self._fit()
+
+    def _show_answer(self, wanted: bool) -> None:
+        """Bring the answer of the check into view, again when it has got its height."""
+        self._answered = wanted
+        if wanted:
+            self._scroll.ensureWidgetVisible(self.mesh.answer, 0, 0)
 
     def _fit(self) -> None:
         """The verdict is seen without scrolling: where its details do not fit, they are told in brief."""
@@ -127,7 +136,7 @@ class FindingsPanel(QFrame):
         shown = (result, units, stands, self._solution.message, over)
         if shown == self._shown:
             return
-        self._shown = shown
+        self._shown, self._answered = shown, False
         verdict = list(_verdict(result, units)) if result is not None else []
         notes = list(_notes(result, units)) if result is not None else []
         if self._solution.state == "refused" and self._solution.message:

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Callable, Iterator
 
-from PySide6.QtCore import Qt
+from PySide6.QtCore import Qt, Signal
 from PySide6.QtWidgets import QLabel, QPushButton, QVBoxLayout, QWidget
 
 from app.aside import Aside, Cancel
@@ -17,7 +17,10 @@ Check = Callable[..., MeshCheck]
 
 
 class MeshView(QWidget):
-    """A link that asks for the check, and under it what came of it. The answer goes with the result it belongs to."""
+    """A link that asks for the check, and under it what came of it. The answer goes with the result it belongs to.
+    `said`: there are other words under it."""
+
+    said = Signal()
 
     def __init__(self, parent: QWidget | None = None, check: Check = check_mesh) -> None:
         super().__init__(parent)
@@ -88,3 +91,5 @@ class MeshView(QWidget):
         if self.answer.text() != words:
             self.answer.setText(words)
             self.answer.setVisible(bool(words))
+            if words:
+                self.said.emit()

@@ -162,6 +162,10 @@ def test_the_mesh_is_checked_beside_the_window_and_told_in_plain_words(open_benc
     assert f"({expected.finer_elements} elements for {expected.elements})" in text
     for figure in ("peak compression", "the set", "the energy past the first gauge"):
         assert f"{figure} changes by" in text
+    panel = the.bench.findings
+    foot = panel._scroll.viewport().rect().bottomLeft()
+    below = panel._scroll.viewport().mapTo(panel, foot).y()
+    qtbot.waitUntil(lambda: mesh.answer.mapTo(panel, mesh.answer.rect().bottomLeft()).y() <= below + 1)
     # what was found belongs to the result: with another one it is gone
     the.document.edit("Drop", "load/drop_height", 1.0)
     qtbot.waitUntil(lambda: the.solution.state == "fresh" and the.solution.result is not pile.result)
