@@ -133,7 +133,7 @@ class CaseRow(QWidget):
             button.setVisible(first <= index < last)
             text = widths[index] - ROUND_TEXT - GAP + (min(room, 0) if index == at and not fits else 0)
             button.setText(self.fontMetrics().elidedText(_short(self._names[index]), ELIDE, text))
-        self._all.setVisible(not fits)
+        self._all.setVisible(not fits and len(widths) > 1)
         self._scroll.setMaximumWidth(sum(widths[first:last]) + GAP)
 
     def _rebuild(self) -> None:

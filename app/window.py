@@ -18,6 +18,7 @@ from app.explaining import explain
 from app.file_watch import FileWatch
 from app.files import Files
 from app.look import apply_look, icon, pixmap
+from app.look.fonts import widened
 from app.look.spacing import GAP, OUTLINE_WIDTH, SPACE
 from app.look.theme import Choice
 from app.menus import Menus
@@ -39,8 +40,6 @@ SMALLEST = (1000, 640)
 USUAL = (1440, 900)
 #: Key of the strip, and of the setting that remembers that it was closed.
 FIRST_STEPS = "first_steps"
-#: Height of a line of text for which the outline has its usual width, px, and how much wider larger ones make it.
-USUAL_LINE, MOST_WIDER = 18, 1.2
 
 
 class Window(QMainWindow):
@@ -87,7 +86,7 @@ class Window(QMainWindow):
         self.split.addWidget(self.bench)
         self.split.setStretchFactor(1, 1)
         self.split.setCollapsible(1, False)
-        outline = round(OUTLINE_WIDTH * min(max(self.fontMetrics().height() / USUAL_LINE, 1.0), MOST_WIDER))
+        outline = widened(OUTLINE_WIDTH, most=1.2)  # the pictures need their room as well
         self.split.setSizes([outline, USUAL[0] - outline])
         self.set_sheet = SetSheet(self.document, self)
         self.workspaces = Workspaces(self)

@@ -4,9 +4,11 @@ from __future__ import annotations
 
 from typing import Literal
 
-from PySide6.QtGui import QFont, QGuiApplication
+from PySide6.QtGui import QFont, QFontMetrics, QGuiApplication
 
 Level = Literal["small", "body", "strong", "title", "figure"]
+#: Height of a line of body text for which widths in `spacing` were chosen, px.
+USUAL_LINE = 18
 #: Size as a share of the system's, and weight.
 LEVELS: dict[Level, tuple[float, QFont.Weight]] = {
     "small": (0.9, QFont.Weight.Normal),
@@ -25,6 +27,11 @@ def font(level: Level = "body") -> QFont:
     made.setWeight(weight)
     made.setFeature(QFont.Tag("tnum"), 1)
     return made
+
+
+def widened(width: int, most: float = 1.4) -> int:
+    """A width chosen for type of the usual size, wider for larger type, up to `most` times."""
+    return round(width * min(max(QFontMetrics(font()).height() / USUAL_LINE, 1.0), most))
 
 
 def base_size() -> float:

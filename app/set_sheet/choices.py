@@ -8,6 +8,7 @@ from PySide6.QtCore import Qt
 from PySide6.QtWidgets import QComboBox, QHBoxLayout, QLabel, QPushButton, QScrollArea, QVBoxLayout, QWidget
 
 from app.document import Document
+from app.look.fonts import widened
 from app.look.spacing import GAP, SPACE, WIDE
 from app.set_sheet.answer_words import bands_words, safe_words, shown_words
 from app.set_sheet.depth_choices import DepthChoices
@@ -34,7 +35,7 @@ class Choices(QScrollArea):
         super().__init__(parent)
         self._document, self._solution = document, solution
         self.setAccessibleName("Choices of the set sheet")
-        self.setFixedWidth(WIDTH)
+        self.setFixedWidth(widened(WIDTH))
         self.setWidgetResizable(True)
         self.setHorizontalScrollBarPolicy(Qt.ScrollBarPolicy.ScrollBarAlwaysOff)
         self.lowest = NumbersField(

@@ -22,6 +22,7 @@ from PySide6.QtWidgets import (
 )
 
 from app.document import Document
+from app.look.fonts import widened
 from app.look.spacing import GAP, OUTLINE_WIDTH, SPACE
 from app.report.choices import (
     DATES,
@@ -60,7 +61,7 @@ class ChoicesForm(QScrollArea):
         self.setWidgetResizable(True)
         self.setFrameShape(QFrame.Shape.NoFrame)
         self.setHorizontalScrollBarPolicy(Qt.ScrollBarPolicy.ScrollBarAlwaysOff)
-        self.setFixedWidth(OUTLINE_WIDTH + 24)
+        self.setFixedWidth(widened(OUTLINE_WIDTH + 24))
         self.sections = OrderedList(SECTIONS, "Sections", self)
         self.figures = OrderedList(FIGURES, "Figures", self)
         self.particulars = {key: QLineEdit(self) for key in PARTICULARS}
