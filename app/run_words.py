@@ -58,19 +58,22 @@ def in_brief(findings: Findings, units: Units) -> tuple[str, ...]:
     return tuple(found)
 
 
-def on_a_finer_mesh(check: MeshCheck, units: Units) -> str:
+def on_a_finer_mesh(check: MeshCheck) -> str:
     """What changes on elements half as long, figure by figure, in one sentence."""
     largest = max((abs(c.finer) for c in check.changes if c.figure.startswith("peak")), default=0.0)
-    parts = []
-    for change in check.changes:
-        small = change.figure.startswith("peak") and abs(change.finer) < COMPARED * largest
-        if change.share is not None and not small:
-            share = abs(change.share)
-            by = f"less than {percent(SMALLEST)}" if share < SMALLEST else percent(share)
-            parts.append(f"{FIGURES[change.figure]} changes by {by}")
-    told = ", ".join(parts) if parts else "nothing that could be compared is there"
-    finer, own = check.finer_elements, check.elements
-    return f"On a finer mesh ({finer} elements for {own}): {told}."
+    shares = {
+        FIGURES[c.figure]: abs(c.share)
+        for c in check.changes
+        if c.share is not None and not (c.figure.startswith("peak") and abs(c.finer) < COMPARED * largest)
+    }
+    least, meshes = "less than 0.1 %", f"({check.finer_elements} elements for {check.elements})"
+    if not shares:
+        return f"On a finer mesh {meshes} there is nothing that could be compared."
+    if len(shares) > 1 and all(share < SMALLEST for share in shares.values()):
+        *first, last = shares
+        return f"On a finer mesh {meshes} {', '.join(first)} and {last} change by {least}."
+    parts = [f"{n} changes by {least if share < SMALLEST else percent(share)}" for n, share in shares.items()]
+    return f"On a finer mesh {meshes}: {', '.join(parts)}."
 
 
 @dataclass(frozen=True)

@@ -144,7 +144,7 @@ class FindingsPanel(QFrame):
         self._show(self._verdict, self._verdict_rows, verdict, stands)
         self._show(self._notes, self._note_rows, notes, stands)
         self.differences.tell(tuple(self._blocks(result, units)))
-        self.mesh.follow(result if stands else None, units)
+        self.mesh.follow(result if stands else None)
         self._fit()
 
     def _blocks(self, result: Result | None, units: Units) -> Iterator[Block]:

@@ -10,7 +10,6 @@ from PySide6.QtWidgets import QLabel, QPushButton, QVBoxLayout, QWidget
 from app.aside import Aside, Cancel
 from app.look.spacing import SPACE
 from app.run_words import on_a_finer_mesh
-from app.units import Units
 from solver import MeshCheck, Result, check_mesh
 
 Check = Callable[..., MeshCheck]
@@ -26,8 +25,6 @@ class MeshView(QWidget):
         super().__init__(parent)
         self._check = check
         self._result: Result | None = None
-        self._units: Units | None = None
-        self._found: MeshCheck | None = None
         self.link = QPushButton("Check the mesh")
         self.link.setProperty("role", "link")
         self.link.setCursor(Qt.CursorShape.PointingHandCursor)
@@ -49,16 +46,13 @@ class MeshView(QWidget):
         column.addWidget(self.link, 0, Qt.AlignmentFlag.AlignLeft)
         column.addWidget(self.answer)
 
-    def follow(self, result: Result | None, units: Units) -> None:
+    def follow(self, result: Result | None) -> None:
         """Belong to a result; what was found for another one is dropped."""
         if result is not self._result:
             self._aside.drop()
-            self._result, self._found = result, None
+            self._result = result
             self._say("")
-        self._units = units
         self.link.setEnabled(result is not None and result.finished)
-        if self._found is not None:
-            self._say(on_a_finer_mesh(self._found, units))
 
     def ask(self) -> None:
         result, check = self._result, self._check
@@ -79,9 +73,7 @@ class MeshView(QWidget):
         return self._aside.close()
 
     def _take(self, found: MeshCheck) -> None:
-        self._found = found
-        if self._units is not None:
-            self._say(on_a_finer_mesh(found, self._units))
+        self._say(on_a_finer_mesh(found))
 
     def _end(self, sentence: str) -> None:
         if sentence:
