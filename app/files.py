@@ -74,7 +74,9 @@ class Files:
 
     def offer_recovery(self, found: list[Kept]) -> None:
         """Tell of unsaved work, with both times and what differs, and offer to go on with it."""
-        for number, kept in enumerate(found[:3]):
+        for kept in [one for one in found if _is_saved(one)]:
+            discard(kept)  # killed between saving and dropping it: nothing is lost, and nothing to ask
+        for number, kept in enumerate([one for one in found if not _is_saved(one)][:3]):
             name = f"'{kept.path.name}'" if kept.path else f"the project '{kept.project.title}'"
             saved = f" (the file was saved {_when(kept.saved)})" if kept.saved else ""
             text = f"Unsaved work on {name} from {_when(kept.kept)}{saved}. {_against_file(kept)}"
@@ -253,6 +255,14 @@ def _when(time: datetime | None) -> str:
         return "at an unknown time"
     today = time.date() == datetime.now().astimezone().date()
     return f"at {time:%H:%M} today" if today else f"on {time:%d %b %Y, %H:%M}"
+
+
+def _is_saved(kept: Kept) -> bool:
+    """Whether the file holds just what was kept."""
+    try:
+        return kept.path is not None and load_project(kept.path) == kept.project
+    except ProjectError:
+        return False
 
 
 def _against_file(kept: Kept) -> str:

@@ -273,6 +273,23 @@ def test_a_recovery_folder_that_cannot_be_written_is_told_once(window, tmp_path)
     assert "cannot be kept" in window.notices.text_of("autosave")
 
 
+def test_kept_work_that_the_file_holds_already_is_dropped_and_not_offered(window, tmp_path):
+    """As a kill leaves it that comes between writing the file and dropping what was kept."""
+    path, left = tmp_path / "x.strike", tmp_path / "left" / "kept.json"
+    window.files.save_to(path)
+    window.document.edit("Title", "/title", "One")
+    window.autosave.keep_now()
+    left.parent.mkdir()
+    left.write_bytes(next(window.settings.recovery_folder.glob("*.json")).read_bytes())
+    window.files.offer_recovery(kept_work(left.parent))
+    assert "Unsaved work" in window.notices.text_of("recovery0")
+    window.notices.drop("recovery0")
+    window.save()
+    window.files.offer_recovery(kept_work(left.parent))
+    assert window.notices.text_of("recovery0") is None
+    assert not left.exists()
+
+
 def test_a_file_changed_by_another_program_is_told(window, tmp_path, qtbot):
     path = tmp_path / "x.strike"
     window.files.save_to(path)
