@@ -84,13 +84,14 @@ def rows(text: str) -> list[Row]:
 
 
 def described() -> set[type[BaseModel]]:
-    """Every description that a file can hold."""
+    """Every description that a file can hold but for its studies, which are described in words."""
     pending: list[type[BaseModel]] = [Described]
     found = set()
     while pending:
         below = pending.pop().__subclasses__()
         found |= set(below)
         pending += below
+    found = {model for model in found if model.__module__.startswith("solver.model.")}
     return found - {Section, surroundings.Resistance}
 
 
