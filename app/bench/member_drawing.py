@@ -8,7 +8,7 @@ from typing import Any
 
 import numpy as np
 from PySide6.QtCore import QEvent, QLineF, QPointF, QRectF, Qt
-from PySide6.QtGui import QColor, QFontMetricsF, QKeyEvent, QMouseEvent, QPainter, QRegion
+from PySide6.QtGui import QColor, QContextMenuEvent, QFontMetricsF, QKeyEvent, QMouseEvent, QPainter, QRegion
 from PySide6.QtWidgets import QMenu
 
 from app.bench.axes import Axis, Margins, margins_of, tidy_step
@@ -46,6 +46,7 @@ class MemberDrawing(Picture):
         self._drag: MemberDrag | None = None
         self._pointed_at: Handle | None = None
         self._toggles: str | None = None
+        self._menu_by_keys = False
         self._menu = MemberMenu(self.document, self.sight)
 
     def margins(self) -> Margins:
@@ -337,7 +338,16 @@ class MemberDrawing(Picture):
             self._toggles = None
         super().mouseReleaseEvent(event)
 
+    def contextMenuEvent(self, event: QContextMenuEvent) -> None:
+        """By the keyboard for the part that is selected, at the cursor's place; by the mouse for what lies under it."""
+        self._menu_by_keys = event.reason() == QContextMenuEvent.Reason.Keyboard
+        super().contextMenuEvent(event)
+
     def fill_menu(self, menu: QMenu) -> None:
+        if self._menu_by_keys:
+            place = self.sight.place if self.sight.place is not None else self.case.member.length / 2
+            self._menu.fill(menu, self.sight.selection, place)
+            return
         part, axis = self.part_at(self.menu_at), self.distance_axis()
         if part is not None and part not in (self.sight.selection, *self.sight.also):
             self.sight.set(selection=part)

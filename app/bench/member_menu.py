@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from dataclasses import replace
 
+from PySide6.QtCore import Qt
 from PySide6.QtGui import QKeyEvent
 from PySide6.QtWidgets import QMenu
 
@@ -43,11 +44,23 @@ class MemberMenu:
 
     def key(self, event: QKeyEvent) -> bool:
         """Do what a key asks for with the part that is selected; False where it asks for nothing."""
+        way = {Qt.Key.Key_Up: -1, Qt.Key.Key_Down: 1}.get(Qt.Key(event.key()), 0)
+        if way and not event.modifiers() & ~Qt.KeyboardModifier.KeypadModifier:
+            self._step(way)
+            return True
         action, row = action_of(event), self._row(self._sight.selection)
         if action and row is not None and row.index >= 0:
             self._actions.do(action, row)
             return True
         return False
+
+    def _step(self, way: int) -> None:
+        """Select the part before or behind the selected one, in the order in which the blow passes them."""
+        document, chosen = self._document, self._sight.selection
+        rows = rows_of(document.project, document.case, units_of(document.project), chosen)
+        row = row_for(rows, chosen)
+        at = rows.index(row) if row is not None else 0
+        self._sight.set(selection=rows[min(max(at + way, 0), len(rows) - 1)].pointer)
 
     def _context(self) -> Context:
         document = self._document

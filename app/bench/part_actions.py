@@ -19,7 +19,7 @@ from app.sight import Sight
 ACTIONS = (
     ("add", "add", "Add another", "Insert"),
     ("duplicate", "duplicate", "Duplicate", "Ctrl+D"),
-    ("split", "split", "Split in two", ""),
+    ("split", "split", "Split in two", "Ctrl+Shift+D"),
     ("move up", "up", "Move up", "Alt+Up"),
     ("move down", "down", "Move down", "Alt+Down"),
     ("remove", "remove", "Remove", "Del"),
@@ -34,7 +34,7 @@ def action_of(event: QKeyEvent) -> str:
     if keys & Qt.KeyboardModifier.AltModifier and key in (Qt.Key.Key_Up, Qt.Key.Key_Down):
         return "move up" if key == Qt.Key.Key_Up else "move down"
     if keys & Qt.KeyboardModifier.ControlModifier and key == Qt.Key.Key_D:
-        return "duplicate"
+        return "split" if keys & Qt.KeyboardModifier.ShiftModifier else "duplicate"
     return KEYS.get(key, "") if not keys & ~Qt.KeyboardModifier.KeypadModifier else ""
 
 

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import pytest
 from PySide6.QtCore import QPoint, QPointF, Qt
+from PySide6.QtGui import QContextMenuEvent
 from PySide6.QtWidgets import QMenu
 
 from app.bench import levels_drawing
@@ -89,3 +90,28 @@ def test_elevations_stand_at_the_pixels_of_their_distances(open_bench, pile, mon
     assert len(put) > 3
     for y, text in put[:-1]:
         assert axis.value(y) == pytest.approx(level - float(text), abs=1e-9)
+
+
+def test_the_keys_choose_split_and_copy_parts_and_open_their_menu(open_bench, pile, qtbot, monkeypatch):
+    the = open_bench(pile)
+    member = the.bench.member
+    member.setFocus()
+    chosen = [the.sight.selection]
+    for _ in range(4):
+        qtbot.keyClick(member, Qt.Key.Key_Down)
+        chosen.append(the.sight.selection)
+    assert chosen == ["load", "load/cushion", "load/cap_mass", "load/pile_cushion", "member/segments/0"]
+    qtbot.keyClick(member, Qt.Key.Key_D, CONTROL | Qt.KeyboardModifier.ShiftModifier)
+    assert [s.length for s in the.document.case.member.segments] == [8.0, 8.0, 8.0]
+    assert the.sight.selection == "member/segments/1"
+    qtbot.keyClick(member, Qt.Key.Key_Up)
+    assert the.sight.selection == "member/segments/0"
+    words = []
+    monkeypatch.setattr(QMenu, "exec", lambda menu, *_at: words.extend(a.text() for a in menu.actions()))
+    the.sight.set(place=3.0)
+    middle = member.rect().center()
+    keys = QContextMenuEvent.Reason.Keyboard
+    member.contextMenuEvent(QContextMenuEvent(keys, middle, member.mapToGlobal(middle)))
+    assert "Split at 3.00\u00a0m" in words
+    assert "Add a gauge at 3.00\u00a0m" in words
+    assert the.sight.selection == "member/segments/0"
