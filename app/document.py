@@ -34,6 +34,15 @@ class Rejected:
     waiting: bool = True
 
 
+def why_not_opened(path: Path, error: ProjectError) -> str:
+    """Sentences for the user; what the solver says of a file as a whole has the file's name for its subject."""
+    lines = [
+        f"It {p.sentence}." if not p.pointer and p.sentence.startswith(("is ", "cannot ")) else f"{p}."
+        for p in error.problems[:8]
+    ]
+    return "\n".join([f"'{path.name}' cannot be opened.", *lines])
+
+
 class Document(QObject):
     """Holds a valid project at all times; what is not valid stays outside of it, in `rejected`.
 
@@ -210,8 +219,7 @@ class Document(QObject):
         try:
             project = load_project(path)
         except ProjectError as error:
-            listed = "\n".join(str(problem) for problem in error.problems[:8])
-            raise DocumentError(f"'{path.name}' cannot be opened.\n{listed}") from None
+            raise DocumentError(why_not_opened(path, error)) from None
         self.new(project, path)
 
     def save(self) -> None:

@@ -14,6 +14,7 @@ from PySide6.QtWidgets import QApplication
 
 from app.closing_signals import ClosingSignals
 from app.demo_files import demo_paths
+from app.document import why_not_opened
 from app.look import apply_look, follow_system
 from app.recovery import kept_work
 from app.settings import Settings, user_settings
@@ -60,7 +61,7 @@ def _first_window(settings: Settings, file: str | None) -> Window:
         try:
             project = load_project(path)
         except ProjectError as error:
-            sentence = sentence or f"'{path.name}' cannot be opened.\n{error}"
+            sentence = sentence or why_not_opened(path, error)
             continue
         window = Window(settings, project)
         window.document.new(project, path if own else None, folder=path.parent)

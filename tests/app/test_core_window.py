@@ -214,7 +214,7 @@ def test_a_file_that_cannot_be_opened_is_told_and_nothing_changes(window, tmp_pa
     bad.write_text("{")
     before = window.document.project
     assert not window.open_path(bad)
-    assert "'bad.strike' cannot be opened" in window.notices.text_of("file")
+    assert "'bad.strike' cannot be opened.\nIt is not valid JSON at line 1" in window.notices.text_of("file")
     assert window.document.project is before
 
 
