@@ -18,7 +18,8 @@ def safe_words(answer: SafeBlow, cell: Cell, units: Units) -> str:
         return "No material of the member has a limit: give one to be told the largest blow."
     low, high = (level_text(at_value(cell.level, value), units) for value in (answer.low, answer.high))
     if answer.why == "none within":
-        return f"None in the range: even a {what} of {low} passes a limit at {at}."
+        # a small blow may pass where larger ones do not, when a ram that falls again meets a pile that still rings
+        return f"Already a {what} of {low} passes a limit at {at}: no largest one is told. See the curves."
     if answer.why == "all within":
         return f"Every {what} up to {high} keeps all stresses within their limits at {at}."
     assert answer.level is not None
