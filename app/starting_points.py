@@ -51,7 +51,7 @@ def driven_pile() -> Tree:
     clay = part_named("layer", "clay (cohesive)")
     toe = part_named("toe", "any ground, pile that displaces little")
     case = {
-        "name": "Drop 1.0 m",
+        "name": "First blow",
         "member": {
             "segments": [{"name": "Pile", "length": 20.0, "material": "steel", "section": pipe}],
             "lateral_inertia": False,
@@ -99,7 +99,7 @@ def rod_or_bar() -> Tree:
     """A steel striker thrown against a longer steel bar with a thinner end: one pulse, and its reflections."""
     thick, thin = {"shape": "solid_round", "diameter": 0.02}, {"shape": "solid_round", "diameter": 0.014}
     case = {
-        "name": "Striker at 10 m/s",
+        "name": "First blow",
         "member": {
             "segments": [
                 {"name": "Bar", "length": 1.5, "material": "steel", "section": thick},
