@@ -25,6 +25,8 @@ WORDS = {
     "attachments": "attachment",
     "materials": "material",
 }
+#: What is added with the values of the entry before it, and so with its marks of typical values.
+LIKE_THEIR_NEIGHBOUR = ("segment", "layer")
 
 
 @dataclass(frozen=True)
@@ -49,7 +51,8 @@ def add(context: Context, list_pointer: str, after: int | None = None) -> Edit:
     entry = _new_entry(context, list_pointer, index)
     word = word_for(list_pointer)
     label = f"Add {entry['name']}" if "name" in entry else f"Add {word}"
-    return _insert(context, list_pointer, index, entry, None, label)
+    neighbour = max(0, index - 1) if word in LIKE_THEIR_NEIGHBOUR and entries else None
+    return _insert(context, list_pointer, index, entry, neighbour, label)
 
 
 def duplicate(context: Context, list_pointer: str, index: int) -> Edit:
@@ -70,7 +73,7 @@ def split(context: Context, list_pointer: str, index: int, share: float = 0.5) -
     upper, lower = copied(entries[index]), copied(entries[index])
     size = "length" if list_pointer.endswith("segments") else "thickness"
     upper[size], lower[size] = entries[index][size] * share, entries[index][size] * (1 - share)
-    lower["name"] = free_name(f"{upper['name']} lower", [e["name"] for e in entries])
+    lower["name"] = free_name(f"{upper['name'].removesuffix(' lower')} lower", [e["name"] for e in entries])
     if size == "length":
         lower["joint_above"] = {"kind": "bonded"}
         if upper.get("end_section"):
@@ -188,7 +191,7 @@ def _segments(context: Context, list_pointer: str) -> Sequence[Any]:
 def _new_entry(context: Context, list_pointer: str, index: int) -> Tree:
     entries = entries_of(context, list_pointer)
     word = word_for(list_pointer)
-    if word in ("segment", "layer") and entries:
+    if word in LIKE_THEIR_NEIGHBOUR and entries:
         entry: Tree = copied(entries[max(0, index - 1)])
         if word == "segment":
             entry.update(end_section=None, joint_above={"kind": "bonded"})

@@ -65,6 +65,27 @@ def test_a_split_layer_resists_as_much_and_keeps_its_marks() -> None:
     assert quakes[0] == quakes[1] == tree["provenance"]["/cases/0/ground/layers/0/quake"]["source"]
 
 
+def test_an_added_layer_has_the_typical_values_of_the_one_above_marked_as_such() -> None:
+    tree = driven_pile()
+    context = context_of(tree)
+    changed = after(context, edits.add(context, "ground/layers"))
+    marks = changed["provenance"]
+    assert marks["/cases/0/ground/layers/2/quake"] == tree["provenance"]["/cases/0/ground/layers/1/quake"]
+    assert "/cases/0/ground/layers/2/unit_resistance" not in marks
+
+
+def test_halves_of_halves_have_short_names() -> None:
+    tree = driven_pile()
+    for index in (0, 1):
+        context = context_of(tree)
+        tree = after(context, edits.split(context, "member/segments", index, 0.5))
+    assert [s["name"] for s in tree["cases"][0]["member"]["segments"]] == [
+        "Pile",
+        "Pile lower",
+        "Pile lower 2",
+    ]
+
+
 def test_moving_up_and_down_again_changes_nothing() -> None:
     context = context_of(driven_pile())
     down = after(context, edits.move(context, "ground/layers", 0, 1))
