@@ -9,6 +9,7 @@ from dataclasses import dataclass
 from typing import Any
 
 from app import __version__
+from app.words import LIMIT_CAUTION, MODEL_CAUTION
 from solver.answer.findings import StressFinding
 from solver.studies import Cell, Sheet
 from solver.studies.questions import SafeBlow
@@ -43,6 +44,7 @@ def sheet_csv(sheet: Sheet, title: str) -> str:
         + (
             "all of the resistance is varied" if plan.vary == "all" else "the resistance of the toe is varied"
         ),
+        f"{MODEL_CAUTION} {LIMIT_CAUTION}",
     ):
         out.write(f"# {line}\n")
     writer = csv.writer(out, lineterminator="\n")

@@ -25,6 +25,7 @@ from app.set_sheet.saving import Saving
 from app.set_sheet.sheet_solution import SheetSolution
 from app.set_sheet.words import per_of, reading, summary
 from app.units import units_of
+from app.words import LIMIT_CAUTION, MODEL_CAUTION
 from solver.studies import Cell
 
 NAME = "Set sheet"
@@ -88,6 +89,10 @@ class SetSheet(QWidget):
         views.buttonToggled.connect(self._choose_picture)
         column.addWidget(self.pictures, 1)
         column.addWidget(self.told)
+        caution = QLabel(f"{MODEL_CAUTION} {LIMIT_CAUTION}")
+        caution.setProperty("role", "small")
+        caution.setWordWrap(True)
+        column.addWidget(caution)
         row = QHBoxLayout(self)
         row.setContentsMargins(0, 0, 0, 0)
         row.setSpacing(SPACE)

@@ -5,7 +5,7 @@ from pathlib import Path
 
 import pytest
 from PySide6.QtCore import QPointF, Qt
-from PySide6.QtWidgets import QFileDialog
+from PySide6.QtWidgets import QFileDialog, QLabel
 from pytestqt.qtbot import QtBot
 
 from app.document import Document
@@ -13,6 +13,7 @@ from app.set_sheet.chart import frame_of
 from app.set_sheet.scene import Line, Mark, Scene, Words
 from app.set_sheet.workspace import SetSheet
 from app.units import units_of
+from app.words import MODEL_CAUTION
 from solver import project_from_tree, solve
 from tests.set_sheet.test_page_and_command import project
 
@@ -60,6 +61,10 @@ def test_fills_and_answers_by_itself(shown: SetSheet) -> None:
     assert shown.choices.stop_at.text().startswith("Stop when the mean set of the last 10 blows is")
     assert shown.choices.safe.text().startswith("Up to a drop height of")
     assert "drop height" in shown.choices.value.label.text()
+
+
+def test_what_the_numbers_are_stands_beside_them(shown: SetSheet) -> None:
+    assert any(MODEL_CAUTION in label.text() and label.isVisible() for label in shown.findChildren(QLabel))
 
 
 def test_lines_are_broken_exactly_where_a_limit_is_passed(shown: SetSheet) -> None:
