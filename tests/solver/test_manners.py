@@ -72,6 +72,20 @@ def test_stop_is_heard_within_a_chunk() -> None:
     assert np.array_equal(result.gauges["middle"].force, whole.gauges["middle"].force[: result.steps])
 
 
+def test_stop_is_heard_between_blows() -> None:
+    case = case_of(DROP, far_end="ground", ground=GROUND, duration=0.03, dx=0.1, blows=50, gravity=True)
+    result = solve(case, cancel=lambda: True)
+    assert not result.finished
+
+
+def test_progress_is_told_between_blows() -> None:
+    told: list[float] = []
+    case = case_of(DROP, far_end="ground", ground=GROUND, duration=0.03, dx=0.1, blows=8, gravity=True)
+    solve(case, progress=lambda p: told.append(p.fraction))
+    assert told == sorted(set(told))
+    assert len(told) >= 2
+
+
 @given(project_trees(), st.integers(2, 5))
 def test_a_shorter_run_is_the_beginning_of_a_longer_one(tree: Tree, times: int) -> None:
     """Bit for bit: nothing that is recorded depends on how long the run will last (frames are thinned, loads
