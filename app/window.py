@@ -117,6 +117,7 @@ class Window(QMainWindow):
     def _connect(self) -> None:
         self.document.changed.connect(self._follow)
         self.document.refused.connect(lambda text: self.notices.show_notice("edit", text, "over"))
+        self.document.undo_stack.indexChanged.connect(lambda _index: self.notices.drop("edit"))
         self.solution.changed.connect(self._follow)
         self.notes.closed.connect(self.menus.notes.trigger)
         self.notices.dismissed.connect(self._dismissed)

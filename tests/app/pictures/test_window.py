@@ -133,3 +133,12 @@ def test_the_menu_of_cases_lays_others_over(open_window):
     over = next(a.menu() for a in menu.actions() if a.text() == "Lay over this case")
     over.actions()[0].trigger()
     assert window.sight.laid_over == ("Drop 0.8 m",)
+
+
+def test_what_was_refused_is_told_until_the_next_edit_is_taken(open_window):
+    window = open_window()
+    document = window.document
+    document.edit_tree("Remove Lower", lambda tree: tree["cases"][0]["member"]["segments"].pop())
+    assert "Toe" in window.notices.text_of("edit")  # its gauge would lie beyond the end
+    assert document.edit("Set drop height", "load/drop_height", 0.9)
+    assert window.notices.text_of("edit") is None
