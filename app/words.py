@@ -142,6 +142,8 @@ def _stress(finding: StressFinding, units: Units, larger: float) -> Line:
         )
     else:
         detail = f"{_state(worst)} · {place_and_time(peak.position, peak.time, units)}"
+    if finding.struck_again is not None:
+        detail += f"\nafter the ram struck again, {units.show(finding.struck_again, 'time')}"
     return Line(units.show(peak.value, "stress"), name, detail, finding.state, peak.time, peak.position)
 
 
@@ -230,6 +232,11 @@ def caution(of: Caution, units: Units) -> str:
         return (
             f"The pulse is {units.show(of.value, 'length')} long, less than ten diameters: too short for rod theory, "
             "a real rod would spread it."
+        )
+    if of.kind == "wave_speed":
+        return (
+            f"{of.name} would carry waves at {units.show(of.value, 'velocity')}, as no usual material does: "
+            "check the units of its modulus and density."
         )
     if of.kind == "static_modulus":
         return (

@@ -10,7 +10,7 @@ from solver.model.load import Pulse
 from solver.model.project import Case
 from solver.model.surroundings import Resistance
 
-CautionKind = Literal["gauge_near_end", "short_pulse", "static_modulus", "damping_unit"]
+CautionKind = Literal["gauge_near_end", "short_pulse", "wave_speed", "static_modulus", "damping_unit"]
 
 #: Distance from the struck end, in diameters, after which a blow has spread over the section (common practice).
 DIAMETERS_TO_SPREAD = 1.5
@@ -21,6 +21,8 @@ DIAMETERS_OF_PULSE = 10.0
 #: static modulus (common practice: 3,500 to 4,500 m/s in sound concrete).
 CONCRETE_DENSITY = (2200.0, 2600.0)
 CONCRETE_SLOW = 3400.0
+#: Wave speeds of rods (m/s) from plastics to ceramics (common practice: 1,400 m/s in polycarbonate, 5,200 in steel).
+USUAL_SPEEDS = (500.0, 13000.0)
 #: Damping factors outside these bounds (s/m) are likely to be s/ft or mistyped. Smith 1960 (from memory):
 #: 0.05 s/ft = 0.16 s/m along the shaft, 0.15 s/ft = 0.49 s/m at the toe.
 SHAFT_DAMPING = (0.1, 3.0)
@@ -43,7 +45,7 @@ class Caution:
 
 def cautions_of(case: Case) -> tuple[Caution, ...]:
     """All cautions of a case that knows its materials."""
-    return (*_gauges(case), *_pulse(case), *_concrete(case), *_damping(case))
+    return (*_gauges(case), *_pulse(case), *_speeds(case), *_concrete(case), *_damping(case))
 
 
 def _gauges(case: Case) -> Iterator[Caution]:
@@ -74,6 +76,19 @@ def _concrete(case: Case) -> Iterator[Caution]:
             told.add(material.name)
             at = f"member/segments/{index}"
             yield Caution("static_modulus", at, material.name, material.wave_speed, CONCRETE_SLOW)
+
+
+def _speeds(case: Case) -> Iterator[Caution]:
+    """Waves faster or slower than any usual material carries them: most slips of a unit show here."""
+    told = set()
+    for index, segment in enumerate(case.member.segments):
+        material = case.material(segment.material)
+        low, high = USUAL_SPEEDS
+        usual = low <= material.wave_speed <= high or material.law.kind == "large_strain"
+        if not usual and material.name not in told:
+            told.add(material.name)
+            bound = low if material.wave_speed < low else high
+            yield Caution("wave_speed", f"member/segments/{index}", material.name, material.wave_speed, bound)
 
 
 def _damping(case: Case) -> Iterator[Caution]:

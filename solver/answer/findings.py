@@ -47,11 +47,15 @@ class StressAt:
 
 @dataclass(frozen=True)
 class StressFinding:
-    """The largest stress of one sign, and where its share of a limit is largest (`None`: no limit anywhere)."""
+    """The largest stress of one sign, and where its share of a limit is largest (`None`: no limit anywhere).
+
+    `struck_again` is the time (s) at which the ram had struck again before the peak; `None` where it had not.
+    """
 
     sign: Literal["compression", "tension"]
     peak: StressAt
     worst: StressAt | None
+    struck_again: float | None = None
 
     @property
     def state(self) -> State:
@@ -189,7 +193,9 @@ def _stress(result: Result, sign: Literal["compression", "tension"]) -> StressFi
     shares = values / np.array([np.inf if v is None else v for v in limits])[owner]
     limited = any(v is not None for v in limits)
     worst = at(first_of_largest(shares, times)) if limited else None
-    return StressFinding(sign, at(first_of_largest(values, times)), worst)
+    peak = at(first_of_largest(values, times))
+    blows = [e.time for e in result.events if e.kind == "impact"][1:]
+    return StressFinding(sign, peak, worst, next((t for t in blows if t < peak.time), None))
 
 
 def _set(result: Result) -> SetFinding | None:
