@@ -70,15 +70,17 @@ def two_histories(draw: st.DrawFn) -> tuple[Tree, Tree, Tree]:
 
 @given(two_histories())
 def test_loads_add(cases: tuple[Tree, Tree, Tree]) -> None:
-    """Superposition, 1e-10 of the larger of both answers and of their sum."""
+    """Superposition, 1e-9 of the larger of both answers and of their sum (impulses of histories are
+    differences of long sums).
+    """
     a, b, both = (solve(case_in(tree)) for tree in cases)
     one, two = records(a), records(b)
     total = {name: (one[name][0] + two[name][0], one[name][1] + two[name][1]) for name in one}
     force = max(float(np.abs(r[name][0]).max()) for r in (one, two, total) for name in one) or 1e-300
     movement = max(float(np.abs(r[name][1]).max()) for r in (one, two, total) for name in one) or 1e-300
     for name, gauge in both.gauges.items():
-        assert_close(gauge.force, total[name][0], 1e-10, f"force {name}", force)
-        assert_close(gauge.displacement, total[name][1], 1e-10, f"movement {name}", movement)
+        assert_close(gauge.force, total[name][0], 1e-9, f"force {name}", force)
+        assert_close(gauge.displacement, total[name][1], 1e-9, f"movement {name}", movement)
 
 
 @given(LINEAR.map(with_gauges).filter(lambda t: t["cases"][0]["load"]["kind"] == "pulse"), st.integers(1, 40))

@@ -95,8 +95,8 @@ FACTORS = st.sampled_from([0.125, 0.5, 1.0, 2.0, 8.0])
 
 @given(project_trees().map(without_gravity), FACTORS, FACTORS, FACTORS)
 def test_the_answer_does_not_depend_on_units(tree: Tree, length: float, time: float, mass: float) -> None:
-    """Gauges, envelope and ledger, each to 1e-9 of its largest value: sums of many terms and powers of speed round
-    apart. The set to 1e-5 of the largest movement and 1e-11 m: rest is iterated to a tolerance.
+    """Gauges, envelope and ledger, each to 1e-7 of its largest value: powers of speed round apart, and cracks and
+    sliders carry that on. The set to 1e-5 of the largest movement and 1e-11 m: rest is iterated to a tolerance.
     """
     units = Units(length, time, mass)
     try:
@@ -120,7 +120,7 @@ def test_the_answer_does_not_depend_on_units(tree: Tree, length: float, time: fl
     rows = [np.array([result.ledger.parts[k] for k in here.ledger.parts]) for result in (there, here)]
     pairs += [(*rows, ENERGY)]
     for found, value, exponents in pairs:
-        assert_close(found, np.asarray(value) * units.factor(exponents), 1e-9, f"exponents {exponents}")
+        assert_close(found, np.asarray(value) * units.factor(exponents), 1e-7, f"exponents {exponents}")
     if here.set is not None:
         moved = float(np.abs(here.fields.displacement).max()) * length
         assert there.set == pytest.approx(here.set * length, abs=1e-5 * moved + 1e-11)
