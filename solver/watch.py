@@ -11,7 +11,7 @@ from solver.errors import SolveError
 from solver.model.project import Case
 from solver.model.surroundings import Resistance
 from solver.numerics.arrays import Extremes
-from solver.numerics.balance import growing_share, residual_of
+from solver.numerics.balance import growing_share, moving_share, residual_of
 from solver.numerics.chain import Chain, Stretch, segments_of
 from solver.numerics.equilibrium import State
 from solver.numerics.stability import SMALLEST_STRETCH
@@ -123,9 +123,14 @@ def refuse_bad_state(march: Watched) -> None:
             "so it is not shown. Shorter elements may help."
         )
     grown, frame = growing_share(march.start_row, rows)
+    if any(part.material.law.kind == "brittle_tension" for part in chain.stretches):
+        # cracks jump in a single step and may leave such a wave at once
+        moving, moving_frame = moving_share(march.start_row, rows)
+        if moving > grown:
+            grown, frame = moving, moving_frame
     if grown > GROWN:
         raise SolveError(
-            f"A wave of two elements' length grows in this run (by {frame * march.stride * chain.dt * 1000:.4g} ms to "
+            f"A wave of two elements' length stands in this run (by {frame * march.stride * chain.dt * 1000:.4g} ms to "
             f"{grown:.0%} of the energy), which no mesh can carry, so it is not shown. Another element length may help."
         )
 

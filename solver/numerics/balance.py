@@ -114,6 +114,22 @@ def residual_of(start: Array, rows: Array) -> tuple[float, int]:
     return float(off[row]) / scale, row
 
 
+def moving_share(start: Array, rows: Array) -> tuple[float, int]:
+    """How far the energy of motion exceeds all that came in, as a share of it, and the row."""
+    there = _came_in(start, rows)
+    off = np.maximum(rows[:, LEDGER.index("kinetic")] - there, 0.0)
+    row = int(np.argmax(off))
+    return float(off[row]) / max(float(there.max()), 1e-300), row
+
+
+def _came_in(start: Array, rows: Array) -> Array:
+    """All energy that was there and that came in until each row, J."""
+    coming = [LEDGER.index(name) for name in CAME_IN]
+    staying = [i for i in range(len(LEDGER)) if i not in coming]
+    came = np.maximum(rows[:, coming] - start[coming], 0.0).sum(axis=1)
+    return float(np.abs(start[staying]).sum()) + np.maximum.accumulate(came)
+
+
 def growing_share(start: Array, rows: Array) -> tuple[float, int]:
     """How far the energy of the whole step has grown beyond all that came in, as a share of it, and the row.
 
@@ -121,10 +137,7 @@ def growing_share(start: Array, rows: Array) -> tuple[float, int]:
     grows with the square of time. Short pulses lie above what came in as well, but stay where they are: those count
     as 0.
     """
-    coming = [LEDGER.index(name) for name in CAME_IN]
-    staying = [i for i in range(len(LEDGER)) if i not in coming]
-    came = np.maximum(rows[:, coming] - start[coming], 0.0).sum(axis=1)
-    there = float(np.abs(start[staying]).sum()) + np.maximum.accumulate(came)
+    there = _came_in(start, rows)
     off = np.maximum(rows[:, WHOLE] - there, 0.0)
     middle, late = off[len(off) // 3 : 2 * len(off) // 3], off[2 * len(off) // 3 :]
     row = len(off) - len(late) + int(np.argmax(late))

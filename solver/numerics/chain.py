@@ -23,6 +23,8 @@ from solver.numerics.stability import stiffening_of
 
 Array = NDArray[np.float64]
 
+#: Most elements that a stiff cushion asks for; a stiffer one is nearly none, and single elements ring by some percent.
+MOST_FOR_CUSHION = 4000
 #: Fewest elements of a rod that strikes.
 FEWEST_IN_STRIKER = 10
 #: Most elements along the member that a person may ask for; a mistyped length must not fill the memory.
@@ -162,12 +164,13 @@ def _wanted(case: Case, total: float) -> int:
     if isinstance(load, Drop) and load.ram_mass is not None:
         axial, mass, _ = profile_along(case.member.segments[0], case.materials, np.zeros(1))
         impedance = float(np.sqrt(axial * mass)[0])
-        # Z dt under 0.1 % of the mass: the front is smeared over the first node; a cushion spreads it over more nodes
-        # where it is no stiffer than they are, k dt <= Z
-        finest = 1000 * impedance * total / load.ram_mass
+        # Z dt under 0.1 % of a mass without a cushion, whose front is smeared over the first node; single elements ring
+        # under a cushion some times stiffer than they are, so there k dt <= 2 Z
         stiff = [c.loading_stiffness for c in (load.cushion, load.pile_cushion) if c is not None]
         if stiff:
-            finest = min(finest, min(stiff) * total / impedance)
+            finest = min(max(stiff) * total / (2 * impedance), MOST_FOR_CUSHION)
+        else:
+            finest = 1000 * impedance * total / load.ram_mass
         wanted = max(wanted, int(np.ceil(finest)))
     strikes = [travel_time(s, case.materials) for s in case.ram_segments]
     if strikes:
