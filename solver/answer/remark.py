@@ -11,6 +11,7 @@ RemarkKind = Literal[
     "times_unfit",
     "few_elements",
     "large_strain",
+    "cracked",
     "stopped",
     "not_at_rest",
     "ram_returns",
@@ -55,6 +56,11 @@ def sentence(of: Remark, show: Show = in_si) -> str:
             return (
                 f"The plastic strain reaches {of.value:.0%} at {show(of.place, 'length')}, beyond a law of small "
                 "strains: read the shortening of the whole, not the strain there."
+            )
+        case "cracked":
+            return (
+                f"'{of.name}' cracked in a single step, which leaves a ripple in single elements: from then on "
+                "read its gauges, openings and the place and time of the crack rather than peak stresses."
             )
         case "stopped":
             return "This run was stopped early: it tells what happened so far."

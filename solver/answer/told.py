@@ -33,6 +33,13 @@ def remarks_of(blow: Blow, residual: float, at_rest: bool, finished: bool) -> tu
     strain, place = _largest_plastic_strain(blow)
     if strain > SMALL_STRAIN:
         told.append(Remark("large_strain", strain, place))
+    for part in chain.stretches:
+        if (
+            part.material.law.kind == "brittle_tension"
+            and blow.state.rod.state[0, part.start : part.stop].any()
+        ):
+            told.append(Remark("cracked", name=part.segment.name))
+            break
     if not finished:
         told.append(Remark("stopped"))
     elif case.run.duration is None and not at_rest:
