@@ -53,9 +53,9 @@ def take(app: Any, shot: Shot, settings: Path, folder: Path) -> None:
     from PySide6.QtCore import QEvent
 
     from app.demo_files import demo_paths
+    from app.frame.window import Window
     from app.look import apply_look
     from app.settings import Settings
-    from app.window import Window
     from solver import load_project
 
     apply_look(app, shot.look)

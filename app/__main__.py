@@ -4,7 +4,7 @@ import sys
 
 
 def main() -> int:
-    from app import first_use
+    from app.first_start import first_use
 
     first_use.prepare()
     # Imported only now: it needs the packages that the line above has made sure of.

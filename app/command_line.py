@@ -10,7 +10,7 @@ from math import isfinite
 from pathlib import Path
 
 from app import __version__
-from app.closing_signals import ClosingSignals
+from app.frame.closing_signals import ClosingSignals
 
 SOLVED, FAILED, UNUSABLE, NO_WINDOW = 0, 1, 2, 3
 
@@ -126,15 +126,15 @@ def _window(arguments: argparse.Namespace) -> int:
     try:
         from PySide6 import QtGui, QtSvg, QtWidgets  # noqa: F401  (a system library that is missing shows here)
     except ImportError as error:
-        from app.qt_needs import explain_qt_failure
+        from app.first_start.qt_needs import explain_qt_failure
 
         return _say(explain_qt_failure(error), NO_WINDOW)
-    from app.qt_needs import explain_no_display
+    from app.first_start.qt_needs import explain_no_display
 
     reason = explain_no_display()
     if reason:
         return _say(reason, NO_WINDOW)
-    from app.main_loop import run_window
+    from app.frame.main_loop import run_window
 
     return run_window(arguments.file, signals)
 

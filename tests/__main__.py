@@ -10,7 +10,7 @@ COLLECTIONS = ("bench", "verification")
 
 
 def main(arguments: list[str]) -> int:
-    from app import first_use
+    from app.first_start import first_use
 
     first_use.prepare("test")
     # Windows of the tests stay in memory, unless somebody wants to watch them.
@@ -24,7 +24,7 @@ def main(arguments: list[str]) -> int:
 def run_pytest(arguments: list[str]) -> int:
     import pytest
 
-    from app import first_use, qt_needs
+    from app.first_start import first_use, qt_needs
 
     try:
         import PySide6.QtWidgets  # noqa: F401

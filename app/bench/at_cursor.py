@@ -9,8 +9,8 @@ from PySide6.QtGui import QColor, QFontMetricsF, QMouseEvent, QPainter, QResizeE
 from PySide6.QtWidgets import QScrollArea, QWidget
 
 from app.bench.field_values import DIMENSIONS, gauge_value, screen_sign, value_at
-from app.bench.lettering import LEFT, RIGHT, fitted, put
-from app.bench.picture import Picture, Table
+from app.bench.pictures.lettering import LEFT, RIGHT, fitted, put
+from app.bench.pictures.picture import Picture, Table
 from app.document import Document
 from app.look.fonts import font
 from app.look.palette import palette

@@ -13,11 +13,11 @@ from PySide6.QtGui import QColor, QKeyEvent, QKeySequence, QPainter, QPaintEvent
 from PySide6.QtWidgets import QAbstractButton, QApplication, QComboBox, QVBoxLayout, QWidget
 
 from app.bench.at_cursor import AtCursor
-from app.bench.cross_grid import CrossGrid
 from app.bench.findings_panel import FindingsPanel
-from app.bench.member_drawing import MemberDrawing
+from app.bench.member.drawing import MemberDrawing
+from app.bench.pictures.cross_grid import CrossGrid
 from app.bench.profile import Profile
-from app.bench.strips import Strips
+from app.bench.strips.strips import Strips
 from app.bench.time_bar import TimeBar
 from app.bench.xt_diagram import XtDiagram
 from app.document import Document

@@ -6,8 +6,8 @@ from PySide6.QtCore import QLineF, QSize
 from PySide6.QtGui import QFontMetricsF, QPainter, QPaintEvent
 from PySide6.QtWidgets import QSizePolicy, QWidget
 
-from app.bench.lettering import RIGHT, fitted, put
-from app.bench.line_styles import over_pen
+from app.bench.pictures.lettering import RIGHT, fitted, put
+from app.bench.pictures.line_styles import over_pen
 from app.look.fonts import font
 from app.look.palette import palette
 from app.look.spacing import GAP, SPACE

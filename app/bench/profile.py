@@ -13,10 +13,6 @@ from PySide6.QtCore import QLineF, QPointF, QRectF, Qt
 from PySide6.QtGui import QColor, QFontMetricsF, QPainter, QPainterPath, QPen, QRegion
 from PySide6.QtWidgets import QMenu
 
-from app.bench.axes import Axis, Margins, margins_of
-from app.bench.axis_drawing import distance_ticks, horizontal_ticks, in_units
-from app.bench.cursor import draw_pinned_place, draw_place
-from app.bench.curves import polygon
 from app.bench.field_values import (
     DIMENSIONS,
     Extremes,
@@ -26,11 +22,15 @@ from app.bench.field_values import (
     limit_lines,
     screen_sign,
 )
-from app.bench.glyphs import pen
-from app.bench.lettering import CENTRE, put, put_on
-from app.bench.line_styles import over_pen
-from app.bench.locked_in import draw_locked_in, table_of, unit_of
-from app.bench.picture import Picture, Table
+from app.bench.member.glyphs import pen
+from app.bench.member.locked_in import draw_locked_in, table_of, unit_of
+from app.bench.pictures.axes import Axis, Margins, margins_of
+from app.bench.pictures.axis_drawing import distance_ticks, horizontal_ticks, in_units
+from app.bench.pictures.cursor import draw_pinned_place, draw_place
+from app.bench.pictures.curves import polygon
+from app.bench.pictures.lettering import CENTRE, put, put_on
+from app.bench.pictures.line_styles import over_pen
+from app.bench.pictures.picture import Picture, Table
 from app.laid_over import LaidOver, Over
 from app.look.fonts import font
 from app.look.palette import palette

@@ -9,7 +9,7 @@ from time import perf_counter
 from PySide6.QtCore import Qt, QTimer
 from PySide6.QtWidgets import QHBoxLayout, QLabel, QMenu, QSlider, QToolButton, QWidget
 
-from app.bench.axes import whole_time
+from app.bench.pictures.axes import whole_time
 from app.document import Document
 from app.look.icons import icon
 from app.look.palette import palette

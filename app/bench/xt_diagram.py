@@ -10,12 +10,15 @@ from PySide6.QtCore import QEvent, QLineF, QPointF, QRectF, Qt
 from PySide6.QtGui import QFontMetricsF, QImage, QMouseEvent, QPainter, QRegion, QResizeEvent
 from PySide6.QtWidgets import QMenu, QToolButton
 
-from app.bench.arrival_drawing import draw_lines, draw_pointed, lines_near, write_name
-from app.bench.arrival_lines import Line, all_named, arrivals_shown, lines_of
-from app.bench.axes import Axis
-from app.bench.axis_drawing import crisp, distance_ticks, horizontal_ticks, in_units
-from app.bench.colouring import columns_under, entries_of, image_of, scale_top, table_of
-from app.bench.cursor import (
+from app.bench.field_values import DIMENSIONS, field_of
+from app.bench.member.glyphs import pen
+from app.bench.member.levels import draw_levels, level_of
+from app.bench.pictures.arrival_drawing import draw_lines, draw_pointed, lines_near, write_name
+from app.bench.pictures.arrival_lines import Line, all_named, arrivals_shown, lines_of
+from app.bench.pictures.axes import Axis
+from app.bench.pictures.axis_drawing import crisp, distance_ticks, horizontal_ticks, in_units
+from app.bench.pictures.colouring import columns_under, entries_of, image_of, scale_top, table_of
+from app.bench.pictures.cursor import (
     between,
     draw_between,
     draw_cursor,
@@ -23,11 +26,8 @@ from app.bench.cursor import (
     draw_pinned_place,
     draw_place,
 )
-from app.bench.field_values import DIMENSIONS, field_of
-from app.bench.glyphs import pen
-from app.bench.lettering import RIGHT, put
-from app.bench.levels_drawing import draw_levels, level_of
-from app.bench.picture import Picture, Table
+from app.bench.pictures.lettering import RIGHT, put
+from app.bench.pictures.picture import Picture, Table
 from app.look.fonts import font
 from app.look.palette import palette
 from app.units import rounded

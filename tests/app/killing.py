@@ -47,10 +47,10 @@ def work(folder: Path, seed: int, share_of_saves: float) -> None:
     from PySide6.QtTest import QTest
     from PySide6.QtWidgets import QApplication
 
+    from app.frame.window import Window
     from app.look import apply_look
     from app.settings import Settings
     from app.starting_points import driven_pile
-    from app.window import Window
     from solver import project_from_tree
 
     chance = random.Random(seed)
@@ -97,7 +97,7 @@ def number_of(project: object) -> int:
 
 def kill_once(folder: Path, seed: int, after: float, share_of_saves: float = 0.05) -> Killed:
     """Start the person, kill her `after` so many seconds of work, and look at what is left on disk."""
-    from app.recovery import kept_work
+    from app.frame.recovery import kept_work
     from solver import ProjectError, load_project
 
     process = subprocess.Popen(

@@ -7,11 +7,11 @@ from PySide6.QtCore import Qt
 from PySide6.QtWidgets import QAbstractButton, QApplication, QLabel, QWhatsThis, QWidget
 
 from app.bench.finding_row import FindingRow
-from app.bench.picture import Picture
+from app.bench.pictures.picture import Picture
 from app.explaining import explain, explanation_of
+from app.frame.window import FIRST_STEPS, Window
 from app.settings import Settings
 from app.starting_points import driven_pile
-from app.window import FIRST_STEPS, Window
 from solver import project_from_tree, solve
 
 

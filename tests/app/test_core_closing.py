@@ -20,7 +20,7 @@ CHECKOUT = Path(__file__).resolve().parents[2]
 PROGRAM = """
 import os, signal, sys, time
 from PySide6.QtCore import QTimer
-from app import window as window_module
+from app.frame import window as window_module
 
 class Window(window_module.Window):
     def __init__(self, *given):

@@ -12,15 +12,15 @@ from hypothesis import strategies as st
 from hypothesis.stateful import RuleBasedStateMachine, initialize, invariant, precondition, rule
 
 from app import document as document_module
-from app.case_row import add_case, move_case, remove_case, rename_case
 from app.differences import differences
 from app.document import Document, DocumentError
+from app.frame.case_row import add_case, move_case, remove_case, rename_case
+from app.frame.top_bar import turn_sign
+from app.frame.units_menu import QUANTITIES, choose_one_system, choose_unit, choose_units
 from app.starting_points import driven_pile
-from app.top_bar import turn_sign
 from app.tree import value_at, with_files_moved
 from app.unit_text import KNOWN_UNITS
 from app.units import units_of
-from app.units_menu import QUANTITIES, choose_one_system, choose_unit, choose_units
 from solver import load_project, project_from_tree, project_to_text
 
 pytestmark = pytest.mark.usefixtures("qapp")

@@ -9,10 +9,10 @@ from PySide6.QtCore import Qt
 from PySide6.QtWidgets import QFileDialog, QLineEdit
 
 from app.bench.finding_row import FindingRow
+from app.frame.window import Window
 from app.settings import Settings
 from app.starting_points import driven_pile
 from app.units import units_of
-from app.window import Window
 from app.words import verdict
 from solver import findings_of, project_from_tree, solve
 

@@ -8,13 +8,13 @@ import pytest
 from PySide6.QtGui import QFont
 from PySide6.QtWidgets import QApplication, QMenuBar, QPushButton, QWidget
 
-from app.case_row import add_case, rename_case
 from app.document import Document
+from app.frame.case_row import add_case, rename_case
+from app.frame.top_bar import TopBar
+from app.frame.workspaces import Workspaces
 from app.sight import Sight
 from app.solving import Solution
 from app.starting_points import rod_or_bar
-from app.top_bar import TopBar
-from app.workspaces import Workspaces
 from solver import project_from_tree, solve
 
 

@@ -5,9 +5,9 @@ from __future__ import annotations
 import pytest
 
 from app.document import Document
+from app.frame.units_menu import QUANTITIES, SYSTEM_WORDS, UnitsMenu
 from app.starting_points import driven_pile
 from app.units import units_of
-from app.units_menu import QUANTITIES, SYSTEM_WORDS, UnitsMenu
 from app.words import verdict
 from solver import load_project, project_from_tree, solve
 from solver.answer.findings import findings_of

@@ -11,12 +11,12 @@ from PySide6.QtCore import QMimeData, QPointF, Qt, QUrl
 from PySide6.QtGui import QDropEvent
 from PySide6.QtWidgets import QAbstractButton, QFileDialog, QMessageBox
 
+from app.frame.recovery import kept_work
+from app.frame.window import Window
 from app.look import apply_look
 from app.look.palette import palette
-from app.recovery import kept_work
 from app.settings import Settings
 from app.starting_points import STARTING_POINTS, rod_or_bar
-from app.window import Window
 from solver import SolveError, load_project, project_from_tree, solve
 
 

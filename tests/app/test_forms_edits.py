@@ -6,8 +6,8 @@ from typing import Any
 
 import pytest
 
-from app.bench import outline_edits as edits
 from app.bench.forms.spec import Context
+from app.bench.outline import edits
 from app.starting_points import driven_pile, slender_rod_by_echo
 from app.tree import copied
 from solver import Case, project_from_tree

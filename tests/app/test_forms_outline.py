@@ -13,7 +13,7 @@ from app.bench.forms.field_row import FieldRow
 from app.bench.forms.number_row import NumberRow
 from app.bench.forms.other_rows import CheckRow, ChoiceRow, PointsRow, TextRow
 from app.bench.forms.picker import PartPicker
-from app.bench.outline import Outline
+from app.bench.outline.outline import Outline
 from app.document import Document
 from app.sight import Sight
 from app.starting_points import driven_pile, new_tree, slender_rod_by_echo

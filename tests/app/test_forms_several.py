@@ -6,7 +6,7 @@ import pytest
 from PySide6.QtCore import Qt
 from PySide6.QtWidgets import QWidget
 
-from app.bench.outline import Outline
+from app.bench.outline.outline import Outline
 from app.document import Document
 from app.sight import Sight
 from app.starting_points import driven_pile

@@ -14,8 +14,8 @@ from PySide6.QtGui import QGuiApplication
 from PySide6.QtTest import QTest
 from PySide6.QtWidgets import QTableView, QWidget
 
-from app.bench.pasted import cells_of
-from app.bench.tables import Tables
+from app.bench.tables.pasted import cells_of
+from app.bench.tables.tables import Tables
 from app.document import Document
 from app.sight import Sight
 from app.starting_points import driven_pile, slender_rod_by_echo

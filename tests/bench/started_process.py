@@ -4,13 +4,14 @@ import time
 
 
 def main() -> None:
-    from app import first_use
+    from app.first_start import first_use
 
     first_use.prepare()
     from PySide6.QtCore import QEvent, QObject, QTimer
     from PySide6.QtWidgets import QApplication
 
-    from app import command_line, main_loop
+    from app import command_line
+    from app.frame import main_loop
 
     class Ear(QObject):
         def __init__(self, window: main_loop.Window) -> None:

@@ -18,10 +18,10 @@ from PySide6.QtTest import QTest
 from PySide6.QtWidgets import QApplication, QWidget
 
 from app.bench.forms.number_row import NumberRow
+from app.frame.window import Window
 from app.look import apply_look
 from app.settings import Settings
 from app.starting_points import driven_pile
-from app.window import Window
 from solver import project_from_tree
 from tests.bench.measure import Row, calibration, spread_of
 

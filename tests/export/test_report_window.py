@@ -10,8 +10,8 @@ from PySide6.QtCore import Qt
 from PySide6.QtWidgets import QFileDialog
 
 from app.document import Document
-from app.notices import Notices
-from app.records_dialog import RecordsDialog
+from app.frame.notices import Notices
+from app.frame.records_dialog import RecordsDialog
 from app.report.screen.workspace import ReportSpace
 from app.settings import Settings
 from solver import project_from_tree, solve

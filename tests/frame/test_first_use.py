@@ -6,7 +6,7 @@ from pathlib import Path
 
 import pytest
 
-from app import first_use, needs, setting_up
+from app.first_start import first_use, needs, setting_up
 
 ROOT = Path(__file__).resolve().parents[2]
 
@@ -101,7 +101,13 @@ def test_a_python_that_only_refuses_does_not_count_as_here(tmp_path: Path) -> No
 
 @pytest.mark.parametrize(
     "name",
-    ["app/__init__.py", "app/__main__.py", "app/first_use.py", "tests/__init__.py", "tests/__main__.py"],
+    [
+        "app/__init__.py",
+        "app/__main__.py",
+        "app/first_start/first_use.py",
+        "tests/__init__.py",
+        "tests/__main__.py",
+    ],
 )
 def test_old_pythons_can_read_what_refuses_them(name: str) -> None:
     ast.parse((ROOT / name).read_text(encoding="utf-8"), feature_version=(3, 6))

@@ -5,7 +5,7 @@ from pathlib import Path
 
 import pytest
 
-from app import first_use, needs
+from app.first_start import first_use, needs
 
 PYPROJECT = """
 [project]

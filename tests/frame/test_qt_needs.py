@@ -4,7 +4,7 @@ import sys
 
 import pytest
 
-from app import qt_needs
+from app.first_start import qt_needs
 
 linux = pytest.mark.skipif(not sys.platform.startswith("linux"), reason="asks the loader of Linux")
 

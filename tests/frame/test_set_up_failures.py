@@ -8,7 +8,7 @@ from pathlib import Path
 
 import pytest
 
-from app import set_up_failures
+from app.first_start import set_up_failures
 
 FOLDER = Path("some where") / "striketrace"
 AGAIN = "python3 -m app"

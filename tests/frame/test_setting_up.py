@@ -9,7 +9,7 @@ from types import SimpleNamespace
 
 import pytest
 
-from app import needs, set_up_progress, setting_up
+from app.first_start import needs, set_up_progress, setting_up
 
 ROOT = Path(__file__).resolve().parents[2]
 
@@ -18,10 +18,10 @@ ROOT = Path(__file__).resolve().parents[2]
 def folder(tmp_path: Path) -> Path:
     """A checkout that needs nothing, on a path with a space and a letter that is not ASCII."""
     folder = tmp_path / "über all"
-    (folder / "app").mkdir(parents=True)
-    for name in ("__init__", "needs"):
-        source = (ROOT / "app" / f"{name}.py").read_text(encoding="utf-8")
-        (folder / "app" / f"{name}.py").write_text(source, encoding="utf-8")
+    (folder / "app" / "first_start").mkdir(parents=True)
+    for name in ("__init__.py", "first_start/__init__.py", "first_start/needs.py"):
+        source = (ROOT / "app" / name).read_text(encoding="utf-8")
+        (folder / "app" / name).write_text(source, encoding="utf-8")
     text = '[project]\nrequires-python = ">=3.11,<3.14"\ndependencies = []\n'
     (folder / "pyproject.toml").write_text(text, encoding="utf-8")
     return folder
@@ -152,7 +152,7 @@ def test_a_folder_that_cannot_be_written_to_is_told(folder: Path, monkeypatch: p
 HOLD_THE_LOCK = """
 import sys
 from pathlib import Path
-from app import setting_up
+from app.first_start import setting_up
 with setting_up._only_one_at_a_time(Path(sys.argv[1])):
     print("held", flush=True)
     sys.stdin.read()

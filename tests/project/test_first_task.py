@@ -19,9 +19,9 @@ from PySide6.QtWidgets import (
     QPushButton,
 )
 
+from app.frame.window import Window
 from app.settings import Settings
 from app.starting_points import rod_or_bar
-from app.window import Window
 from solver import load_project, project_from_tree, solve
 
 README = (Path(__file__).resolve().parents[2] / "README.md").read_text(encoding="utf-8")

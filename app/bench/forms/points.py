@@ -8,7 +8,7 @@ from pathlib import Path
 from PySide6.QtGui import QGuiApplication
 from PySide6.QtWidgets import QFileDialog, QWidget
 
-from app.bench.pasted import cells_of
+from app.bench.tables.pasted import cells_of
 from app.document import Document
 from app.tree import value_at
 from app.unit_text import UnitError, value_of

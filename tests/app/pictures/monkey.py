@@ -221,8 +221,8 @@ def main() -> int:
     wanted = reader.parse_args()
     os.environ.setdefault("QT_QPA_PLATFORM", "offscreen")
     faulthandler.enable()
+    from app.frame.window import Window
     from app.settings import Settings
-    from app.window import Window
     from solver import load_project, solve
 
     app = QApplication([])

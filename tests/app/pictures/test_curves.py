@@ -10,11 +10,11 @@ from hypothesis import given
 from hypothesis import strategies as st
 from PySide6.QtCore import QRectF
 
-from app.bench.axes import Axis, inside, tick_texts, ticks
-from app.bench.curve_labels import Drawn, Wanted, crosses, place_labels
-from app.bench.curves import polygon, thinned
-from app.bench.lettering import spread
-from app.bench.strip import Strip
+from app.bench.pictures.axes import Axis, inside, tick_texts, ticks
+from app.bench.pictures.curve_labels import Drawn, Wanted, crosses, place_labels
+from app.bench.pictures.curves import polygon, thinned
+from app.bench.pictures.lettering import spread
+from app.bench.strips.strip import Strip
 
 
 @given(

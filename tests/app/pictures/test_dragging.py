@@ -5,7 +5,7 @@ from __future__ import annotations
 import pytest
 from PySide6.QtCore import QPoint, Qt
 
-from app.bench.member_handles import handles_of
+from app.bench.member.handles import handles_of
 
 
 def spot(member, place, side):

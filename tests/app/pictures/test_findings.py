@@ -8,7 +8,7 @@ from PySide6.QtCore import Qt
 
 from app.bench.field_values import extremes_of, limit_lines, value_at
 from app.bench.findings_panel import facts_of
-from app.bench.strip_contents import content_of
+from app.bench.strips.contents import content_of
 from app.units import units_of
 from solver import findings_of, solve
 from tests.app.pictures.conftest import PILE, project_of

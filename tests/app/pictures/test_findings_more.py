@@ -11,7 +11,7 @@ from PySide6.QtGui import QGuiApplication
 from PySide6.QtWidgets import QMenu
 
 from app.bench.findings_panel import facts_of
-from app.bench.locked_in import axis_of, table_of
+from app.bench.member.locked_in import axis_of, table_of
 from app.run_words import differences, in_brief, of_the_run, on_a_finer_mesh
 from app.units import units_of
 from app.words import percent, verdict

@@ -8,8 +8,8 @@ from pathlib import Path
 import pytest
 from PySide6.QtWidgets import QFileDialog
 
+from app.frame.window import Window
 from app.settings import Settings
-from app.window import Window
 from solver import load_project, solve
 from tests.app.pictures.monkey import Messages, Monkey, nothing_chosen
 

@@ -11,7 +11,7 @@ from PySide6.QtCore import QPoint, QPointF, Qt
 from PySide6.QtGui import QImage, QWheelEvent
 from PySide6.QtWidgets import QApplication
 
-from app.bench.plot_export import csv_of, png_of, save, svg_of
+from app.bench.pictures.plot_export import csv_of, png_of, save, svg_of
 
 
 def at(picture, time=None, place=None):

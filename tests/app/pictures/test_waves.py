@@ -9,10 +9,10 @@ import pytest
 from PySide6.QtCore import QPoint, QPointF, Qt
 from PySide6.QtWidgets import QMenu
 
-from app.bench.arrival_lines import all_named, lines_of, ordinal
-from app.bench.cursor import between
-from app.bench.strip_contents import content_of
-from app.bench.strip_peaks import peaks_of
+from app.bench.pictures.arrival_lines import all_named, lines_of, ordinal
+from app.bench.pictures.cursor import between
+from app.bench.strips.contents import content_of
+from app.bench.strips.peaks import peaks_of
 from app.units import units_of
 from solver import solve
 from tests.app.pictures.conftest import PILE, project_of

@@ -6,9 +6,9 @@ import pytest
 from PySide6.QtCore import QPoint, Qt
 from PySide6.QtWidgets import QMenu
 
-from app.case_row import fill_case_menu
+from app.frame.case_row import fill_case_menu
+from app.frame.window import Window
 from app.settings import Settings
-from app.window import Window
 from solver import solve
 from tests.app.pictures.test_laid_over import cases_of
 

@@ -1,0 +1,73 @@
+"""A drag in the member drawing: follows the pointer in tidy steps, edits the project as it goes, can be taken back."""
+
+from __future__ import annotations
+
+from itertools import count
+
+from PySide6.QtCore import QPointF
+
+from app.bench.member.handles import DROP_PER_PIXEL, DROP_STEP, Handle, change_to, told
+from app.bench.pictures.axes import Axis, tidy_step
+from app.document import Document
+from app.units import units_of
+
+#: Pixels that the pointer must move before a press becomes a drag.
+DEAD = 3.0
+_numbers = count(1)
+
+
+class MemberDrag:
+    """One drag of one handle, from the press on. `told`: what it does, empty while nothing has moved.
+
+    Places are reckoned on the axis as it was at the press: the axis may change with what is dragged.
+    """
+
+    def __init__(self, document: Document, handle: Handle, axis: Axis, at: QPointF) -> None:
+        self.handle, self.told = handle, ""
+        self._document, self._axis, self._from = document, axis, at
+        self._case, self._case_index = document.case, document.case_index
+        self._steps_before = document.undo_stack.index()
+        self._merge = f"drag {next(_numbers)}"
+        self._place = handle.place
+
+    def move(self, to: QPointF, free: bool) -> bool:
+        """Follow the pointer, in tidy steps of the unit shown unless `free`. True where something is being dragged."""
+        down = to.y() - self._from.y()
+        if not self.told and abs(down) < DEAD:
+            return False
+        wanted = self._snapped(self._wanted(down), free)
+        place = min(max(wanted, self.handle.low), self.handle.high)
+        if place != self._place or not self.told:
+            self._place = place
+            self.told = told(self.handle, place, self._case, units_of(self._document.project))
+            self._edit()
+        return True
+
+    def take_back(self) -> None:
+        """As if it had never begun."""
+        stack = self._document.undo_stack
+        while stack.index() > self._steps_before:
+            stack.undo()
+
+    def end(self) -> None:
+        """One drag is one step of undo, however slow it was."""
+        if self._document.undo_stack.index() > self._steps_before + 1:
+            self.take_back()
+            self._edit()
+
+    def _edit(self) -> None:
+        change = change_to(self.handle, self._place, self._case, self._case_index)
+        self._document.edit_tree(self.told, change, merge=self._merge)
+
+    def _wanted(self, down: float) -> float:
+        if self.handle.kind == "drop":
+            return self.handle.place - down * DROP_PER_PIXEL
+        return self.handle.place + down * (self._axis.high - self._axis.low) / self._axis.length
+
+    def _snapped(self, place: float, free: bool) -> float:
+        if free:
+            return place
+        one = float(units_of(self._document.project).number(1.0, "length"))
+        span = (self._axis.high - self._axis.low) * one
+        step = DROP_STEP if self.handle.kind == "drop" else tidy_step(span, int(self._axis.length)) / one
+        return round(place / step) * step

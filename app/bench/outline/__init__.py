@@ -1,0 +1,1 @@
+"""The outline of a case: rows, and what a person does with parts."""

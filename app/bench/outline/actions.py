@@ -1,0 +1,76 @@
+"""What can be done with the selected part, as buttons under its form."""
+
+from __future__ import annotations
+
+from PySide6.QtCore import QEvent
+from PySide6.QtWidgets import QHBoxLayout, QMenu, QPushButton, QToolButton, QWidget
+
+from app.bench.outline import edits
+from app.bench.outline.part_actions import ACTIONS, PartActions, can_split
+from app.bench.outline.rows import Row
+from app.look import icon
+from app.look.spacing import FIELD, GAP
+
+
+class Actions(QWidget):
+    """Buttons for an entry of a list, or one that adds an entry to a group."""
+
+    def __init__(self, actions: PartActions, parent: QWidget) -> None:
+        super().__init__(parent)
+        self.buttons: dict[str, QToolButton] = {}
+        self.parts = actions
+        self._row = Row("", "none", "")
+        line = QHBoxLayout(self)
+        line.setContentsMargins(0, 0, 0, 0)
+        line.setSpacing(GAP)
+        for name, picture, words, key in ACTIONS:
+            button = QToolButton(self)
+            button.setProperty("role", "quiet")
+            button.setFixedHeight(FIELD)
+            button.setProperty("picture", picture)
+            button.setAccessibleName(words)
+            button.setToolTip(f"{words}  ({key})" if key else words)
+            button.clicked.connect(lambda _on=False, n=name: self.parts.do(n, self._row))
+            line.addWidget(button)
+            self.buttons[name] = button
+        self._draw_icons()
+        self.add_button = QPushButton(self)
+        self.add_button.setProperty("role", "link")
+        self.add_button.clicked.connect(lambda: self.parts.do("add", self._row))
+        line.addWidget(self.add_button)
+        line.addStretch(1)
+
+    def changeEvent(self, event: QEvent) -> None:
+        if event.type() == QEvent.Type.PaletteChange:
+            self._draw_icons()
+        super().changeEvent(event)
+
+    def _draw_icons(self) -> None:
+        for button in self.buttons.values():
+            button.setIcon(icon(button.property("picture")))
+
+    @property
+    def stops(self) -> list[QWidget]:
+        """What the Tab key stops at, in order."""
+        return [*self.buttons.values(), self.add_button]
+
+    def show_for(self, row: Row) -> None:
+        """Offer what fits the row."""
+        self._row = row
+        able = self.parts.able(row)
+        entry = row.index >= 0
+        for name, button in self.buttons.items():
+            button.setVisible(entry and (name != "split" or can_split(row)))
+            button.setEnabled(name in able)
+        self.add_button.setVisible(bool(row.adds_to))
+        if row.adds_to:
+            self.add_button.setText(f"+ Add {edits.word_for(row.adds_to)}")
+        self.setVisible(entry or bool(row.adds_to))
+
+    def menu(self, row: Row, parent: QWidget) -> QMenu:
+        """The same as a menu."""
+        menu = QMenu(parent)
+        self.parts.fill(menu, row)
+        if menu.isEmpty():
+            menu.addAction("Nothing can be added or removed here").setEnabled(False)
+        return menu

@@ -1,0 +1,1 @@
+"""What all pictures of the Bench share: axes, curves, labels, cursors, export."""

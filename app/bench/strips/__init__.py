@@ -1,0 +1,1 @@
+"""Quantities over time at the gauges."""

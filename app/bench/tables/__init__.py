@@ -1,0 +1,1 @@
+"""Parts of one kind as a table that takes pasted blocks."""

@@ -1,0 +1,1 @@
+"""The window around the workspaces: top bar, menus, files, recovery, notices."""
