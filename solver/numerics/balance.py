@@ -28,7 +28,7 @@ LEDGER = (
 )
 #: One column more: kinetic and elastic energy on the whole step, which a wave of two steps' length cannot hide from.
 WHOLE = len(LEDGER)
-WORK, DASHPOTS, SLIP, DAMPING, IMPACT, PULL, PULL_BEFORE = range(7)
+WORK, DASHPOTS, SLIP, DAMPING, IMPACT, PULL = range(6)
 
 
 @part_of_step

@@ -8,7 +8,7 @@ one kind after the other; records; displacements of the next step.
 import numpy as np
 
 from solver.numerics import contact, shaft, toe, train
-from solver.numerics.balance import DAMPING, DASHPOTS, IMPACT, PULL, PULL_BEFORE, SLIP, WORK, balance
+from solver.numerics.balance import DAMPING, DASHPOTS, IMPACT, PULL, SLIP, WORK, balance
 from solver.numerics.compiled import kernel, part_of_step
 from solver.numerics.links import forces_and_extremes
 from solver.numerics.records import (
@@ -206,9 +206,8 @@ def march(rod, ground, bounds, motion, ext, rec, sums, load, first, count, strid
             toe_node(bounds, push, u, v, w, sums, dt, note, step)
         pull = load[n]
         if step == rod.driven[1] and step > 0:
-            # what held the struck end over the last step, carried on from its means two and one steps ago, still acts
-            # with its half in the step in which it lets go
-            let_go = 0.5 * (1.5 * sums[PULL] - 0.5 * sums[PULL_BEFORE])
+            # what held the struck end over the last step still acts with its half in the step in which it lets go
+            let_go = 0.5 * sums[PULL]
             pull += let_go
             w[head] += push[head] * let_go
         if driven:
@@ -223,7 +222,8 @@ def march(rod, ground, bounds, motion, ext, rec, sums, load, first, count, strid
             sums[IMPACT] += contact.wall(bounds, push, u, v, w, dt, note, step)
         if rams:
             train_step(bounds, push, u, v, w, sums, dt, note, step)
-        sums[PULL_BEFORE], sums[PULL] = sums[PULL], pull
+        # a step acts with the mean of two half steps, f = (g_before + g)/2
+        sums[PULL] = 2.0 * pull - sums[PULL] if driven else 0.0
         if special:
             sums[DASHPOTS] += dashpot_losses(rod, v, w, step) * dt
         if step == 0:

@@ -103,7 +103,7 @@ class _Rest:
             np.subtract.at(out, spring.node, resist)
             np.add.at(grounded, spring.node, slope)
         if chain.wall_gap < np.inf:
-            over = max(u[-1] - chain.wall_gap, 0.0)
+            over = max(u[-1] - self.state.bounds.wall[0], 0.0)
             out[-1] -= self.faces * over
             grounded[-1] += self.faces if over > 0 else 0.0
         if chain.fixed_end:
