@@ -132,6 +132,11 @@ def _blows(result: Result, units: Units) -> Iterator[Note]:
 
 
 def _stress(of: StressFinding, units: Units) -> str:
+    if of.first is not None:
+        before = f"second blow; before it {units.show(of.first.value, 'stress')}"
+        return f"{SIGNS[of.state]} {before}" + (
+            "" if of.first.share is None else f", {percent(of.first.share)}"
+        )
     if of.worst is None:
         state = f"{SIGNS['no limit']} {STATES['no limit']}"
         return f"{state} · {units.show(of.peak.position, 'length')}"

@@ -142,8 +142,14 @@ def _stress(finding: StressFinding, units: Units, larger: float) -> Line:
         )
     else:
         detail = f"{_state(worst)} · {place_and_time(peak.position, peak.time, units)}"
-    if finding.struck_again is not None:
-        detail += f"\nafter the ram struck again, {units.show(finding.struck_again, 'time')}"
+    if finding.first is not None and finding.struck_again is not None:
+        before, its = finding.first, ""
+        if before.share is not None:
+            its = f" ({percent(before.share)})"
+        detail += (
+            f"\nafter a second blow, {units.show(finding.struck_again, 'time')}; before it "
+            f"{units.show(before.value, 'stress')}{its} {place_and_time(before.position, before.time, units)}"
+        )
     return Line(units.show(peak.value, "stress"), name, detail, finding.state, peak.time, peak.position)
 
 

@@ -1,6 +1,6 @@
 """One-dimensional stress waves in struck members: describe a case, solve it, read the answer. Knows no screen."""
 
-from solver.answer.findings import Findings, findings_of
+from solver.answer.findings import Findings, findings_of, first_blow
 from solver.answer.result import Envelope, Event, Fields, GaugeRecord, Ledger, Peak, Result
 from solver.convergence import Change, MeshCheck, check_mesh
 from solver.errors import SolveError
@@ -31,6 +31,7 @@ __all__ = [
     "SolveError",
     "check_mesh",
     "findings_of",
+    "first_blow",
     "load_project",
     "parse_project",
     "project_from_tree",

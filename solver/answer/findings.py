@@ -5,19 +5,20 @@ Every number here is read from the arrays that the pictures draw, so that a find
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from typing import Literal
 
 import numpy as np
 
 from solver.answer.cautions import Caution, cautions_of
 from solver.answer.remark import Remark
-from solver.answer.result import Array, EventKind, Result, first_of_largest
+from solver.answer.result import Array, Envelope, EventKind, Result, first_of_largest
 from solver.model.derived import impact_energy, ram_mass, segment_mass
 from solver.model.load import GRAVITY, Drop, Striker
 from solver.model.project import Case
 
 State = Literal["within", "near", "over", "no limit"]
+Sign = Literal["compression", "tension"]
 
 #: Share of a limit above which a stress counts as near to it (a choice of this program).
 NEAR = 0.9
@@ -49,13 +50,16 @@ class StressAt:
 class StressFinding:
     """The largest stress of one sign, and where its share of a limit is largest (`None`: no limit anywhere).
 
-    `struck_again` is the time (s) at which the ram had struck again before the peak; `None` where it had not.
+    `struck_again` is the time (s) at which the ram had struck again before the peak, `first` the peak before that;
+    `None` where it had not. Such a peak belongs to a ram that fell on a member that still rings, as nothing in the
+    model damps it.
     """
 
-    sign: Literal["compression", "tension"]
+    sign: Sign
     peak: StressAt
     worst: StressAt | None
     struck_again: float | None = None
+    first: StressAt | None = None
 
     @property
     def state(self) -> State:
@@ -145,8 +149,8 @@ class Findings:
 def findings_of(result: Result) -> Findings:
     """The facts of a result, finished or not."""
     return Findings(
-        compression=_stress(result, "compression"),
-        tension=_stress(result, "tension"),
+        compression=_of_all_blows(result, "compression"),
+        tension=_of_all_blows(result, "tension"),
         set=_set(result),
         energy=_energy(result),
         happenings=_happenings(result),
@@ -170,8 +174,25 @@ def segment_of(case: Case, position: Array) -> Array:
     return np.minimum(np.searchsorted(ends, position, side="right"), len(ends) - 1)
 
 
-def _stress(result: Result, sign: Literal["compression", "tension"]) -> StressFinding:
-    envelope, case = result.envelope, result.case
+def first_blow(result: Result) -> tuple[StressFinding, StressFinding]:
+    """Compression and tension before the ram or striker strikes again, each held against its limits.
+
+    Where it does not strike again these are the findings of the whole run. For judging how hard a blow may be: peaks of
+    a second blow depend on when the ram falls back, and do not grow steadily with the first.
+    """
+    envelope = result.envelope if result.first_envelope is None else result.first_envelope
+    return _stress(result, envelope, "compression"), _stress(result, envelope, "tension")
+
+
+def _of_all_blows(result: Result, sign: Sign) -> StressFinding:
+    found, again = _stress(result, result.envelope, sign), result.struck_again
+    if again is None or result.first_envelope is None or found.peak.time < again:
+        return found
+    return replace(found, struck_again=again, first=_stress(result, result.first_envelope, sign).peak)
+
+
+def _stress(result: Result, envelope: Envelope, sign: Sign) -> StressFinding:
+    case = result.case
     if sign == "compression":
         values, times = np.maximum(-envelope.lowest_stress, 0.0), envelope.lowest_stress_time
     else:
@@ -193,9 +214,7 @@ def _stress(result: Result, sign: Literal["compression", "tension"]) -> StressFi
     shares = values / np.array([np.inf if v is None else v for v in limits])[owner]
     limited = any(v is not None for v in limits)
     worst = at(first_of_largest(shares, times)) if limited else None
-    peak = at(first_of_largest(values, times))
-    blows = [e.time for e in result.events if e.kind == "impact"][1:]
-    return StressFinding(sign, peak, worst, next((t for t in blows if t < peak.time), None))
+    return StressFinding(sign, at(first_of_largest(values, times)), worst)
 
 
 def _set(result: Result) -> SetFinding | None:

@@ -23,6 +23,7 @@ from solver.answer.result import (
     read_only,
 )
 from solver.answer.told import remarks_of
+from solver.numerics.arrays import Extremes
 from solver.numerics.assemble import gauge_link
 from solver.numerics.balance import LEDGER, residual_of
 from solver.numerics.chain import Chain
@@ -33,7 +34,9 @@ Array = NDArray[np.float64]
 def gather(blow: Blow, finished: bool, seconds: float) -> Result:
     """The answer of one blow (the last of several)."""
     chain = blow.chain
-    envelope = _envelope(blow)
+    ext = blow.extremes
+    envelope = _envelope(blow, ext)
+    again = len(ext.second) > 0 and ext.second[2] > 0
     residual, _ = residual_of(blow.start_row, blow.frames.ledger)
     ledger = _ledger(blow, residual)
     at_rest = chain.case.run.duration is None and blow.steps < blow.planned
@@ -66,6 +69,8 @@ def gather(blow: Blow, finished: bool, seconds: float) -> Result:
         head_train=_head_train(blow),
         residual=_residual(blow),
         crack_openings=_crack_openings(blow),
+        struck_again=float(ext.second[2] * chain.dt) if again else None,
+        first_envelope=_envelope(blow, _of_first_blow(ext)) if again else None,
     )
 
 
@@ -98,8 +103,8 @@ def _rest_force(chain: Chain, rest: Array, link: int) -> float:
     return float(chain.axial[link] / chain.length[link] * (rest[link + 1] - rest[link]))
 
 
-def _envelope(blow: Blow) -> Envelope:
-    chain, ext = blow.chain, blow.extremes
+def _envelope(blow: Blow, ext: Extremes) -> Envelope:
+    chain = blow.chain
     links = blow.member_links
     area, reach = chain.area[links], _yield_reach(blow)[links]
     moved = ext.travel - blow.rest
@@ -111,6 +116,14 @@ def _envelope(blow: Blow) -> Envelope:
         highest_stress_time=read_only(ext.high_step[links] * chain.dt),
         max_velocity=read_only(np.maximum(ext.speed[links], ext.speed[links + 1])),
         max_displacement=read_only(np.maximum(moved[links], moved[links + 1])),
+    )
+
+
+def _of_first_blow(ext: Extremes) -> Extremes:
+    low, low_step, high, high_step = ext.first_links
+    speed, travel = ext.first_nodes
+    return ext._replace(
+        low=low, low_step=low_step, high=high, high_step=high_step, speed=speed, travel=travel
     )
 
 

@@ -128,7 +128,7 @@ class GaugeRecord:
 
 @dataclass(frozen=True, eq=False)
 class Envelope:
-    """Extremes over the whole run along the member. All arrays have shape (elements of the member,).
+    """Extremes over a run, or over its first blow, along the member. All arrays have shape (elements of the member,).
 
     `position` (m) is the middle of each element. Stresses in Pa with sign (lowest = most compressive), each with
     the time (s) at which it stood; largest velocity (m/s) and displacement (m) towards the far end.
@@ -208,7 +208,11 @@ class Residual:
 @dataclass(frozen=True, eq=False)
 class Result:
     """All that a run tells. `finished` is False where it was stopped early; `at_rest` where it came to rest by
-    itself."""
+    itself.
+
+    `struck_again` is the time (s) at which the ram or striker struck again, having been away for longer than a wave
+    takes to the far end and back; `first_envelope` what the envelope was until then. Both `None` where it did not.
+    """
 
     case: Case
     elements: int
@@ -234,6 +238,8 @@ class Result:
     head_train: HeadTrain | None = None
     residual: Residual | None = None
     crack_openings: dict[str, float] = field(default_factory=dict)
+    struck_again: float | None = None
+    first_envelope: Envelope | None = None
 
     @property
     def warnings(self) -> tuple[str, ...]:

@@ -174,7 +174,28 @@ def extremes_of(chain: Chain) -> Extremes:
         np.full(nodes, -np.inf),
         np.full(nodes, -np.inf),
     )
-    return Extremes(*(aligned(a) for a in values))
+    second = _second_blow(chain)
+    first = len(second) > 0
+    low, low_step, high, high_step, speed, travel = (aligned(a) for a in values)
+    at_links, at_nodes = np.zeros((4, links if first else 0)), np.zeros((2, nodes if first else 0))
+    return Extremes(low, low_step, high, high_step, speed, travel, at_links, at_nodes, second)
+
+
+def _second_blow(chain: Chain) -> NDArray[np.int64]:
+    """What the march needs to know a second blow: see `Extremes`.
+
+    What strikes may leave and touch again many times while waves run through the member; it strikes again when it was
+    away for longer than a wave takes to the far end and back (a choice of this program).
+    """
+    joint = next((k for k, j in enumerate(chain.joints) if j.link == chain.head - 1), -1)
+    if joint < 0 and not chain.train:
+        return np.zeros(0, dtype=np.int64)
+    rods = np.flatnonzero(chain.axial > 0)
+    rods = rods[rods >= chain.head]
+    there_and_back = 2 * float(
+        np.sum(chain.length[rods] * np.sqrt(chain.line_mass[rods] / chain.axial[rods]))
+    )
+    return np.array([0, int(np.ceil(there_and_back / chain.dt)), 0, joint], dtype=np.int64)
 
 
 def gauge_readings(chain: Chain) -> tuple[NDArray[np.int64], Array]:

@@ -15,6 +15,7 @@ from solver.numerics.records import (
     EVENT_IMPACT,
     EVENT_SEPARATION,
     EVENT_TOE_LIFT,
+    keep_first_blow,
     move,
     read_gauges,
     remember,
@@ -184,7 +185,7 @@ def march(rod, ground, bounds, motion, ext, rec, sums, load, first, count, strid
     inert, special, gauges = len(rod.inertia) > 0, len(rod.special) > 0, len(rec.node) > 0
     shafts = len(ground.r) + len(ground.power_nodes) + len(ground.radiation_nodes) > 0
     toes, jointed, walled = len(bounds.toe_par) > 0, len(bounds.joints) > 0, bounds.wall[0] < np.inf
-    rams, train_heard = len(bounds.train_links) > 0, len(rec.ram) > 0
+    rams, train_heard, strikes = len(bounds.train_links) > 0, len(rec.ram) > 0, len(ext.second) > 0
     for n in range(count):
         step = first + n
         driven = step < rod.driven[1]
@@ -222,6 +223,8 @@ def march(rod, ground, bounds, motion, ext, rec, sums, load, first, count, strid
             sums[IMPACT] += contact.wall(bounds, push, u, v, w, dt, note, step)
         if rams:
             train_step(bounds, push, u, v, w, sums, dt, note, step)
+        if strikes:
+            keep_first_blow(ext, bounds, step)
         # a step acts with the mean of two half steps, f = (g_before + g)/2
         sums[PULL] = 2.0 * pull - sums[PULL] if driven else 0.0
         if special:

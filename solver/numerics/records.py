@@ -25,6 +25,26 @@ def remember(note, kind, place, step):
         count[0] += 1
 
 
+@part_of_step
+def keep_first_blow(ext, bounds, step):
+    """When what strikes comes back after it was away, keep the envelopes as they stood; see `Extremes.second`."""
+    joint = ext.second[3]
+    if joint >= 0:
+        force = bounds.joint_force[joint]
+    else:
+        force = bounds.train_state[0, 2] if bounds.train_kinds[0] == 0 else bounds.train_force[0]
+    if force <= 0.0:
+        return
+    if ext.second[2] == 0 and step - ext.second[0] > ext.second[1]:
+        ext.second[2] = step
+        for i in range(len(ext.low)):
+            ext.first_links[0, i], ext.first_links[1, i] = ext.low[i], ext.low_step[i]
+            ext.first_links[2, i], ext.first_links[3, i] = ext.high[i], ext.high_step[i]
+        for i in range(len(ext.speed)):
+            ext.first_nodes[0, i], ext.first_nodes[1, i] = ext.speed[i], ext.travel[i]
+    ext.second[0] = step
+
+
 #: Nodes that are gone through at once: what one short loop has read, the next finds in the nearest cache.
 BLOCK = 512
 
