@@ -28,6 +28,10 @@ class Aside(QObject):
         self._thread: Thread | None = None
         self._reported.connect(self._take)
 
+    def tell(self, what: object) -> None:
+        """Hand something over from within the latest work, beside what it yields."""
+        self._report(self._number, False, what)
+
     def start(self, work: Work) -> None:
         """Begin; work under way is broken off first, and nothing more is heard of it."""
         self._number += 1
@@ -49,7 +53,8 @@ class Aside(QObject):
         return self._thread is None or not self._thread.is_alive()
 
     def _run(self, number: int, work: Work, before: Thread | None) -> None:
-        from solver import SolveError
+        from solver import SolveError  # with the kernels, which take their time
+        from solver.studies import StudyError
 
         sentence = ""
         try:
@@ -58,7 +63,7 @@ class Aside(QObject):
             if number == self._number:
                 for piece in work(lambda: number != self._number):
                     self._report(number, False, piece)
-        except SolveError as error:
+        except (SolveError, StudyError) as error:
             sentence = str(error)
         except Exception as error:
             logging.getLogger(__name__).exception("Work beside the window failed")

@@ -9,6 +9,7 @@ from PySide6.QtCore import QSize, QTimer
 from PySide6.QtGui import QColor, QHideEvent, QPainter, QPaintEvent, QShowEvent
 from PySide6.QtWidgets import QWidget
 
+from app.aside import Aside, Cancel
 from app.document import Document
 from app.look.palette import palette
 from app.set_sheet.chart import case_limits
@@ -16,7 +17,6 @@ from app.set_sheet.chart_view import measure, paint
 from app.set_sheet.depth_chart import depth_chart, depth_summary
 from app.set_sheet.scene import Scene
 from app.set_sheet.sheet_solution import SETTLE
-from app.set_sheet.stream import Cancel, Stream
 from app.units import units_of
 from solver import Case
 from solver.studies import StudyError
@@ -35,9 +35,9 @@ class DepthView(QWidget):
         self._key: tuple[Case, DepthSettings] | None = None
         self.depths: Depths | None = None
         self.problem = ""
-        self._stream = Stream(self)
-        self._stream.arrived.connect(self._take)
-        self._stream.ended.connect(self._end)
+        self._aside = Aside(self)
+        self._aside.found.connect(self._take)
+        self._aside.ended.connect(self._end)
         self._timer = QTimer(self)
         self._timer.setSingleShot(True)
         self._timer.setInterval(SETTLE)
@@ -54,14 +54,14 @@ class DepthView(QWidget):
 
     def close_down(self) -> bool:
         self._timer.stop()
-        return self._stream.close(0.3)
+        return self._aside.close(0.3)
 
     def showEvent(self, event: QShowEvent) -> None:
         self._follow()
         super().showEvent(event)
 
     def hideEvent(self, event: QHideEvent) -> None:
-        self._stream.stop()
+        self._aside.drop()
         if self.depths is None:
             self._key = None
         super().hideEvent(event)
@@ -98,7 +98,7 @@ class DepthView(QWidget):
             if found is not None:
                 yield found
 
-        self._stream.start(work)
+        self._aside.start(work)
 
     def _take(self, found: object) -> None:
         if isinstance(found, Depths):

@@ -9,8 +9,8 @@ from typing import Any, Literal
 
 from PySide6.QtCore import QObject, QTimer, Signal
 
+from app.aside import Aside, Cancel
 from app.document import Document
-from app.set_sheet.stream import Cancel, Stream
 from app.set_sheet.words import unit_of
 from app.units import units_of
 from solver import Case
@@ -59,11 +59,11 @@ class SheetSolution(QObject):
         self._asked: tuple[object, ...] | None = None
         self.state: State = "waiting"
         self.message = ""
-        self._stream = Stream(self)
-        self._stream.arrived.connect(self._take)
-        self._stream.ended.connect(self._end)
-        self._samples = Stream(self)
-        self._samples.arrived.connect(self._take_samples)
+        self._aside = Aside(self)
+        self._aside.found.connect(self._take)
+        self._aside.ended.connect(self._end)
+        self._samples = Aside(self)
+        self._samples.found.connect(self._take_samples)
         self._samples.ended.connect(self._end_samples)
         self._timer = QTimer(self)
         self._timer.setSingleShot(True)
@@ -106,7 +106,7 @@ class SheetSolution(QObject):
         """Break off; what is solved stays."""
         if self.state in ("solving", "answering"):
             self._timer.stop()
-            self._stream.stop()
+            self._aside.drop()
             self.state, self.message = "stopped", "Stopped: the picture shows what was solved until then."
         self.stop_samples()
         self.changed.emit()
@@ -119,7 +119,7 @@ class SheetSolution(QObject):
         """End all work within a second."""
         self._timer.stop()
         self._showing.stop()
-        first, second = self._stream.close(0.5), self._samples.close(0.3)
+        first, second = self._aside.close(0.5), self._samples.close(0.3)
         return first and second
 
     def sample(self) -> None:
@@ -151,7 +151,7 @@ class SheetSolution(QObject):
     def stop_samples(self) -> None:
         """Break off the samples under way."""
         if self.samples_done is not None:
-            self._samples.stop()
+            self._samples.drop()
             self.samples_done = None
             self.changed.emit()
 
@@ -178,7 +178,7 @@ class SheetSolution(QObject):
             self.stop_samples()
 
     def _refuse(self, sentence: str) -> None:
-        self._stream.stop()
+        self._aside.drop()
         self._key = None
         self.state, self.message = "refused", sentence
         self.changed.emit()
@@ -200,7 +200,7 @@ class SheetSolution(QObject):
                 yield "cells"
                 yield from _answers(plan, settings, cancel)
 
-        self._stream.start(work)
+        self._aside.start(work)
         self.changed.emit()
 
     def _take(self, found: object) -> None:
