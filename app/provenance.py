@@ -45,10 +45,12 @@ def forget_missing(tree: Tree) -> None:
 
 
 def forget_changed(before: Tree, after: Tree) -> None:
-    """Drop the marks of values that an edit by hand has changed; both trees have their parts at the same places."""
-    marks = after.get("provenance")
+    """Drop the marks of values that an edit by hand has changed; both trees have their parts at the same places. Marks
+    that the edit itself has set stay."""
+    marks, old = after.get("provenance"), before.get("provenance") or {}
     if marks:
-        _keep(after, {p: mark for p, mark in marks.items() if value_at(before, p) == value_at(after, p)})
+        same = {p: value_at(before, p) == value_at(after, p) for p in marks if p in old}
+        _keep(after, {p: mark for p, mark in marks.items() if same.get(p, True)})
 
 
 def rearrange(tree: Tree, pointer: str, came_from: Sequence[int | None]) -> None:

@@ -6,6 +6,7 @@ import re
 from collections.abc import Callable
 from dataclasses import dataclass
 
+from app.limit_words import limit_lines
 from app.units import Units
 from app.words import LOAD_CAUTION, caution
 from solver import Case, Project
@@ -182,6 +183,7 @@ def _material(seen: Seen, index: int) -> Lines:
         f"Wave speed {units.show(material.wave_speed, 'velocity')}",
         f"E {units.show(material.young_modulus, 'modulus')}, density {units.show(material.density, 'density')}",
         f"Used by {names}",
+        *limit_lines(material, units),
     ]
 
 

@@ -4,11 +4,11 @@ from __future__ import annotations
 
 import platform
 from collections.abc import Iterator
-from typing import Literal
 
 import numpy
 
 from app import __version__
+from app.limit_words import SIGNS, TO_BE_CONFIRMED, published, what_it_rests_on
 from app.report.blocks import Block, Bullets, Heading, Listing, Paragraph, Table
 from app.report.described import exact
 from app.report.outcome import Material, Solved
@@ -26,10 +26,7 @@ from app.words import (
 from solver import MeshCheck, project_to_text
 from solver.answer.cautions import cautions_of
 from solver.model.limits import ARTICLE, TO_CONFIRM
-from solver.model.material import Limit
 
-TO_BE_CONFIRMED = "! To be confirmed against the governing code."
-SIGNS: tuple[Literal["compression", "tension"], ...] = ("compression", "tension")
 EXPRESSIONS = (
     ("Steel", "0.9 φ f_y", "0.9 φ f_y"),
     (
@@ -47,19 +44,17 @@ def limits(of: Material) -> Iterator[Block]:
     rows = []
     for material in of.project.materials:
         for sign in SIGNS:
-            limit = getattr(material.limits, sign)
-            if limit is None:
+            value, own = material.limits.value(sign), getattr(material.limits, sign)
+            if value is None:
                 rows.append((material.name, sign, "– no limit given", "", ""))
-            elif isinstance(limit, Limit):
-                rests = "\n".join(t for t in (limit.basis, limit.reason) if t) or "basis not given"
-                source = limit.source or "source not given"
-                rows.append((material.name, sign, exact(limit.value, "stress", of.units), rests, source))
-            else:
-                shown = exact(limit, "stress", of.units)
-                rows.append(
-                    (material.name, sign, shown, "given by hand, basis not given", "source not given")
-                )
-    yield Paragraph(TO_BE_CONFIRMED, "caution")
+                continue
+            by_rule = published(material.limits, sign)
+            rests = what_it_rests_on(material.limits, sign, of.units) or "given by hand, basis not given"
+            source = by_rule.source if by_rule else getattr(own, "source", None)
+            rows.append(
+                (material.name, sign, exact(value, "stress", of.units), rests, source or "source not given")
+            )
+    yield Paragraph(f"! {TO_BE_CONFIRMED}", "caution")
     names = ("Material", "Stress", "Limit", "Basis and reason", "Source")
     yield Table(names, tuple(rows), (0.18, 0.12, 0.15, 0.3, 0.25), "Limits used in this report (magnitudes)")
     yield Heading("Published expressions for driving stresses")

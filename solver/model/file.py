@@ -18,7 +18,9 @@ from solver.model.project import FORMAT, VERSION, Project
 from solver.model.quantity import Described
 
 #: From each older version to the next: a function that changes the tree. Version 1 is the first.
-MIGRATIONS: dict[int, Callable[[dict[str, Any]], dict[str, Any]]] = {}
+MIGRATIONS: dict[int, Callable[[dict[str, Any]], dict[str, Any]]] = {
+    1: lambda tree: tree,  # version 2 only adds a key: an expression beside the limits of a material
+}
 
 
 class ProjectError(ValueError):
@@ -72,7 +74,7 @@ def project_from_tree(tree: Any, folder: Path | None = None) -> Project:
     if problems:
         raise ProjectError(problems)
     cases = tuple(case.with_materials(project.materials) for case in project.cases)
-    return project.model_copy(update={"cases": cases})
+    return project.model_copy(update={"cases": cases, "version": project.oldest_version()})
 
 
 def project_to_text(project: Project) -> str:
@@ -130,6 +132,16 @@ def _problems(details: Sequence[ErrorDetails], tree: Any) -> list[Problem]:
         if not misfit and problem not in found:
             found.append(problem)
     return found or [Problem(*_first(details[0], tree))]
+
+
+def faults_of(kind: type[Described], tree: Any, at: str) -> list[Problem]:
+    """What keeps a tree, which stands at the pointer `at`, from describing a `kind`: each fault with its place."""
+    try:
+        kind.model_validate(tree)
+    except ValidationError as error:
+        found = _problems(error.errors(include_url=False), tree)
+        return [Problem(at + problem.pointer, problem.sentence) for problem in found]
+    return []
 
 
 def _first(detail: ErrorDetails, tree: Any) -> tuple[str, str]:

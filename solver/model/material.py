@@ -7,6 +7,7 @@ from typing import Annotated, Literal
 
 from pydantic import Field
 
+from solver.model.limits import Expression, Limit
 from solver.model.quantity import Described, Name, NotNegative, Positive, Quantity
 
 
@@ -64,24 +65,19 @@ Law = Annotated[
 ]
 
 
-class Limit(Described):
-    """A limit of stress with what it rests on."""
-
-    value: Annotated[Positive, Quantity("stress", "Limit", "Largest stress allowed, as a magnitude.")]
-    basis: str | None = None
-    reason: str | None = None
-    source: str | None = None
-
-
 class Limits(Described):
-    """Largest stresses allowed, as magnitudes; `None` = no limit given."""
+    """Largest stresses allowed, as magnitudes: by a published expression, by numbers of one's own, which go before it,
+    or `None` = no limit given."""
 
     compression: Annotated[Positive, Quantity("stress", "Compression limit")] | Limit | None = None
     tension: Annotated[Positive, Quantity("stress", "Tension limit")] | Limit | None = None
+    expression: Annotated[Expression | None, Field(exclude_if=lambda v: v is None)] = None
 
     def value(self, sign: Literal["compression", "tension"]) -> float | None:
         """The limit's number in Pa, whichever way it was given."""
         limit = getattr(self, sign)
+        if limit is None and self.expression is not None:
+            return getattr(self.expression.allowed, sign).value
         return limit.value if isinstance(limit, Limit) else limit
 
 

@@ -13,7 +13,8 @@ from solver.model.quantity import Described, Name, NotNegative, Number, Positive
 from solver.model.surroundings import FarEnd, Ground
 
 FORMAT = "striketrace-project"
-VERSION = 1
+#: The newest version of the file that this program reads. It writes the oldest that holds what is in a project.
+VERSION = 2
 
 
 class Gauge(Described):
@@ -114,3 +115,7 @@ class Project(Described):
     studies: Annotated[dict[str, Any] | None, Field(exclude_if=lambda v: v is None)] = None
     materials: tuple[Material, ...] = ()
     cases: Annotated[tuple[Case, ...], Field(min_length=1)]
+
+    def oldest_version(self) -> int:
+        """The oldest version of the file that has a place for all of it: 2 brought expressions of limits."""
+        return 2 if any(m.limits.expression is not None for m in self.materials) else 1

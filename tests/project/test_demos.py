@@ -10,7 +10,9 @@ import pytest
 
 from app.command_line import main
 from app.demo_files import demo_paths
+from app.limit_words import what_it_rests_on
 from app.unit_text import value_of
+from app.units import Units
 from solver import Result, findings_of, load_project, project_to_text, solve
 from solver.answer.cautions import cautions_of
 from tests.project.demo_claims import CLAIMS, Claim
@@ -76,8 +78,13 @@ def test_its_notes_say_what_to_see_in_few_words(path):
 @pytest.mark.parametrize("path", DEMOS, ids=NAMES)
 def test_its_limits_tell_what_they_rest_on(path):
     for material in load_project(path).materials:
-        for limit in (material.limits.compression, material.limits.tension):
-            assert limit is None or (limit.basis and limit.source)
+        for sign in ("compression", "tension"):
+            told = what_it_rests_on(material.limits, sign, Units())
+            assert bool(told) == (material.limits.value(sign) is not None)
+
+
+def test_two_have_their_limits_by_a_published_expression():
+    assert [n for n, p in zip(NAMES, DEMOS, strict=True) if load_project(p).version == 2] == NAMES[:2]
 
 
 def test_one_is_read_in_us_units_and_tension_governs_it():

@@ -10,7 +10,7 @@ import pytest
 from pydantic import BaseModel
 
 from app.demo_files import demo_paths
-from solver.model import load, material, member, project, section, surroundings
+from solver.model import limits, load, material, member, project, section, surroundings
 from solver.model.quantity import Described, quantity_of
 from solver.model.section import Section
 
@@ -21,6 +21,10 @@ HEADINGS: dict[str, type[BaseModel]] = {
     "A mark of `provenance`": project.Provenance,
     "A material": material.Material,
     "A limit with its basis": material.Limit,
+    "Expression `steel`": limits.SteelLimits,
+    "Expression `prestressed_concrete`": limits.PrestressedConcreteLimits,
+    "Expression `reinforced_concrete`": limits.ReinforcedConcreteLimits,
+    "Expression `timber`": limits.TimberLimits,
     "Law `elastic`": material.Elastic,
     "Law `viscoelastic`": material.Viscoelastic,
     "Law `elastic_plastic`": material.ElasticPlastic,

@@ -1,4 +1,4 @@
-"""Rows that show a value in another way than the file holds it: elevations, wave speed, shares, limits, names."""
+"""Rows that show a value in another way than the file holds it: elevations, wave speed, shares, names."""
 
 from __future__ import annotations
 
@@ -6,12 +6,13 @@ from collections.abc import Callable
 
 from pydantic import BaseModel
 
+from app.bench.forms.limit_rows import limit_rows
 from app.bench.forms.spec import ChoiceSpec, Context, NumberSpec, Option, PointsSpec, Spec, TextSpec, Tree
 from app.provenance import forget
 from app.tree import value_at
 from solver.model import derived
 from solver.model.load import History, Pulse
-from solver.model.material import Limits, Material, material_from_any_two
+from solver.model.material import Material, material_from_any_two
 from solver.model.member import Attachment, Member, Segment
 from solver.model.project import Gauge
 from solver.model.quantity import Bounds
@@ -205,43 +206,6 @@ def _rename(node: object, old: str, new: str) -> None:
                 _rename(inner, old, new)
 
 
-def _limit_rows(field: str) -> Rows:
-    """A limit as a number, and what it rests on, whichever of its two forms the file has."""
-
-    def rows(context: Context, pointer: str) -> list[Spec]:
-        limit = (value_at(context.tree, pointer) or {}).get(field)
-        parts = limit if isinstance(limit, dict) else {"value": limit}
-
-        def put(tree: Tree, **changes: object) -> None:
-            now = {k: v for k, v in (parts | changes).items() if v}
-            limits = value_at(tree, pointer)
-            limits[field] = now if len(now) > 1 and "value" in now else now.get("value")
-
-        number = NumberSpec(
-            f"{pointer}/{field}",
-            f"Limit in {field}",
-            f"Largest stress in {field} allowed, as a magnitude. Limits come from the governing code.",
-            value=parts["value"],
-            dimension="stress",
-            bounds=Bounds(above=0.0),
-            empty="no limit given",
-            write=lambda tree, value: put(tree, value=value),
-        )
-        if limit is None:
-            return [number]
-        basis = TextSpec(
-            f"{pointer}/{field}#basis",
-            "rests on",
-            "What the limit rests on, such as a clause of a code.",
-            value=parts.get("basis"),
-            optional=True,
-            write=lambda tree, text: put(tree, basis=text or None),
-        )
-        return [number, basis]
-
-    return rows
-
-
 def _points(context: Context, pointer: str) -> list[Spec]:
     load = context.case.load
     assert isinstance(load, History)
@@ -276,8 +240,7 @@ ONLY_IF: dict[tuple[type[BaseModel], str], Callable[[Context, str], bool]] = {
 INSTEAD: dict[tuple[type[BaseModel], str], Rows] = {
     (Material, "name"): _material_name,
     (Material, "young_modulus"): _material_rows,
-    (Limits, "compression"): _limit_rows("compression"),
-    (Limits, "tension"): _limit_rows("tension"),
+    (Material, "limits"): limit_rows,
     (History, "times"): _points,
     (Member, "segments"): lambda context, pointer: [],
 }
