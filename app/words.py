@@ -240,9 +240,19 @@ def caution(of: Caution, units: Units) -> str:
             "a real rod would spread it."
         )
     if of.kind == "wave_speed":
+        slip = "check the units of its modulus and density"
+        if of.suspect:
+            slip = f"check the unit of its {of.suspect}, {units.show(of.given, of.suspect)}"
+        return f"{of.name} would carry waves at {units.show(of.value, 'velocity')}, as no usual material does: {slip}."
+    if of.kind == "stiff_cushion":
         return (
-            f"{of.name} would carry waves at {units.show(of.value, 'velocity')}, as no usual material does: "
-            "check the units of its modulus and density."
+            f"The {of.name} of {units.show(of.value, 'stiffness')} is stiffer than a plate of the member's own section "
+            "1 mm thick, and acts as none: check its unit, or leave it out."
+        )
+    if of.kind == "heavy_ram":
+        return (
+            f"The {of.name} of {units.show(of.value, 'mass')} is heavier than any, the largest of which have "
+            "some hundred tonnes: check its unit."
         )
     if of.kind == "static_modulus":
         return (

@@ -6,11 +6,24 @@ from collections.abc import Iterator
 from dataclasses import dataclass
 from typing import Literal
 
-from solver.model.load import Pulse
+import numpy as np
+
+from solver.model.load import Drop, Pulse
+from solver.model.material import Material
 from solver.model.project import Case
 from solver.model.surroundings import Resistance
+from solver.numerics.along import profile_along
 
-CautionKind = Literal["gauge_near_end", "short_pulse", "wave_speed", "static_modulus", "damping_unit"]
+CautionKind = Literal[
+    "gauge_near_end",
+    "short_pulse",
+    "wave_speed",
+    "static_modulus",
+    "damping_unit",
+    "stiff_cushion",
+    "heavy_ram",
+]
+Suspect = Literal["", "density", "modulus"]
 
 #: Distance from the struck end, in diameters, after which a blow has spread over the section (common practice).
 DIAMETERS_TO_SPREAD = 1.5
@@ -23,6 +36,15 @@ CONCRETE_DENSITY = (2200.0, 2600.0)
 CONCRETE_SLOW = 3400.0
 #: Wave speeds of rods (m/s) from plastics to ceramics (common practice: 1,400 m/s in polycarbonate, 5,200 in steel).
 USUAL_SPEEDS = (500.0, 13000.0)
+#: Densities (kg/m3) and moduli (Pa) of solids, from foam to osmium and from soft rubber to diamond (common practice):
+#: what lies outside them is the likely slip behind an unusual wave speed.
+USUAL_DENSITY = (100.0, 23_000.0)
+USUAL_MODULUS = (1e6, 1.2e12)
+#: A cushion stiffer than a plate of the member's own section and material this thick (m) is none (a choice of this
+#: program: cushions are some centimetres of softer stuff).
+STIFF_PLATE = 0.001
+#: No ram is heavier (kg; common practice: the largest are of some hundred tonnes).
+HEAVIEST_RAM = 500e3
 #: Damping factors outside these bounds (s/m) are likely to be s/ft or mistyped. Smith 1960 (from memory):
 #: 0.05 s/ft = 0.16 s/m along the shaft, 0.15 s/ft = 0.49 s/m at the toe.
 SHAFT_DAMPING = (0.1, 3.0)
@@ -33,7 +55,9 @@ TOE_DAMPING = (0.2, 3.0)
 class Caution:
     """One caution: `pointer` is the place in the case, `value` what was found and `bound` what it is held against.
 
-    SI units: metres for `gauge_near_end` and `short_pulse`, m/s for `static_modulus`, s/m for `damping_unit`.
+    SI units: metres for `gauge_near_end` and `short_pulse`, m/s for `wave_speed` and `static_modulus`, s/m for
+    `damping_unit`, N/m for `stiff_cushion`, kg for `heavy_ram`. `suspect` names the number that is likely to be wrong
+    where it can be told, and `given` is its value.
     """
 
     kind: CautionKind
@@ -41,11 +65,14 @@ class Caution:
     name: str
     value: float
     bound: float
+    suspect: Suspect = ""
+    given: float = 0.0
 
 
 def cautions_of(case: Case) -> tuple[Caution, ...]:
     """All cautions of a case that knows its materials."""
-    return (*_gauges(case), *_pulse(case), *_speeds(case), *_concrete(case), *_damping(case))
+    found = (_gauges, _pulse, _speeds, _concrete, _train, _damping)
+    return tuple(caution for kind in found for caution in kind(case))
 
 
 def _gauges(case: Case) -> Iterator[Caution]:
@@ -81,14 +108,48 @@ def _concrete(case: Case) -> Iterator[Caution]:
 def _speeds(case: Case) -> Iterator[Caution]:
     """Waves faster or slower than any usual material carries them: most slips of a unit show here."""
     told = set()
-    for index, segment in enumerate(case.member.segments):
+    striking = "load/segments" if case.load.kind == "striker" else "load/ram/segments"
+    parts = [(f"member/segments/{i}", s) for i, s in enumerate(case.member.segments)]
+    parts += [(f"{striking}/{i}", s) for i, s in enumerate(case.ram_segments)]
+    for pointer, segment in parts:
         material = case.material(segment.material)
-        low, high = USUAL_SPEEDS
-        usual = low <= material.wave_speed <= high or material.law.kind == "large_strain"
+        usual = not _outside(material.wave_speed, USUAL_SPEEDS) or material.law.kind == "large_strain"
         if not usual and material.name not in told:
             told.add(material.name)
+            low, high = USUAL_SPEEDS
             bound = low if material.wave_speed < low else high
-            yield Caution("wave_speed", f"member/segments/{index}", material.name, material.wave_speed, bound)
+            suspect, given = _suspect(material)
+            yield Caution("wave_speed", pointer, material.name, material.wave_speed, bound, suspect, given)
+
+
+def _suspect(of: Material) -> tuple[Suspect, float]:
+    """Which of density and modulus is the one that no solid has, if it is one of them."""
+    density, modulus = _outside(of.density, USUAL_DENSITY), _outside(of.young_modulus, USUAL_MODULUS)
+    if density == modulus:
+        return "", 0.0
+    return ("density", of.density) if density else ("modulus", of.young_modulus)
+
+
+def _outside(value: float, bounds: tuple[float, float]) -> bool:
+    return not bounds[0] <= value <= bounds[1]
+
+
+def _train(case: Case) -> Iterator[Caution]:
+    """A ram that is too heavy and cushions that are too stiff to be meant."""
+    load = case.load
+    if not isinstance(load, Drop):
+        return
+    if load.ram_mass is not None and load.ram_mass > HEAVIEST_RAM:
+        yield Caution("heavy_ram", "load", "ram", load.ram_mass, HEAVIEST_RAM)
+    head = case.member.segments[0]
+    axial, _, _ = profile_along(head, case.materials, np.zeros(1))
+    bound = float(axial[0]) / STIFF_PLATE
+    for key, name, cushion in (
+        ("cushion", "cushion", load.cushion),
+        ("pile_cushion", "pile cushion", load.pile_cushion),
+    ):
+        if cushion is not None and cushion.loading_stiffness > bound:
+            yield Caution("stiff_cushion", f"load/{key}", name, cushion.loading_stiffness, bound)
 
 
 def _damping(case: Case) -> Iterator[Caution]:

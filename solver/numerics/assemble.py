@@ -138,8 +138,9 @@ def bounds_of(chain: Chain) -> Bounds:
     for i, link in enumerate(chain.train):
         if link.cushion is not None:
             kinds[i] = 1
-            cushion = link.cushion
-            train_par[i] = cushion.loading_stiffness, cushion.unloading_stiffness, cushion.restitution
+            e = link.cushion.restitution
+            k = min(link.cushion.loading_stiffness, stiffest_cushion(chain, link.link))
+            train_par[i] = k, k / e**2, e
     return Bounds(
         toe_par=par,
         toe_state=state,
@@ -153,6 +154,16 @@ def bounds_of(chain: Chain) -> Bounds:
         train_state=train_state,
         train_force=np.zeros(2),
     )
+
+
+def stiffest_cushion(chain: Chain, link: int) -> float:
+    """Stiffest cushion between the nodes of a link that a step resolves, N/m; a stiffer one is marched as this one.
+
+    Its swing between the two masses, w^2 = k (1/m1 + 1/m2), then has w dt = 2: against an element, k dt = 2 Z. What is
+    stiffer rises within one step all the same, and would make single elements ring about the mean of their neighbours.
+    """
+    above, below = chain.mass[link], chain.mass[link + 1]
+    return float(4 * above * below / (above + below) / chain.dt**2)
 
 
 def motion_of(chain: Chain) -> Motion:

@@ -23,7 +23,7 @@ from solver.numerics.stability import stiffening_of
 
 Array = NDArray[np.float64]
 
-#: Most elements that a stiff cushion asks for; a stiffer one is nearly none, and single elements ring by some percent.
+#: Most elements that a stiff cushion asks for; a stiffer one is nearly none: see `assemble.stiffest_cushion`.
 MOST_FOR_CUSHION = 4000
 #: Fewest elements of a rod that strikes.
 FEWEST_IN_STRIKER = 10
@@ -164,13 +164,13 @@ def _wanted(case: Case, total: float) -> int:
     if isinstance(load, Drop) and load.ram_mass is not None:
         axial, mass, _ = profile_along(case.member.segments[0], case.materials, np.zeros(1))
         impedance = float(np.sqrt(axial * mass)[0])
-        # Z dt under 0.1 % of a mass without a cushion, whose front is smeared over the first node; single elements ring
-        # under a cushion some times stiffer than they are, so there k dt <= 2 Z
+        # Z dt under 0.1 % of a mass without a cushion, whose front is smeared over the first node; a cushion either
+        # rises over some steps, k dt <= 0.3 Z, or under a mass like that within one, k dt <= 2 Z
+        finest = 1000 * impedance * total / load.ram_mass
         stiff = [c.loading_stiffness for c in (load.cushion, load.pile_cushion) if c is not None]
         if stiff:
-            finest = min(max(stiff) * total / (2 * impedance), MOST_FOR_CUSHION)
-        else:
-            finest = 1000 * impedance * total / load.ram_mass
+            steps = max(stiff) * total / impedance
+            finest = min(max(steps / 2, min(steps / 0.3, finest)), MOST_FOR_CUSHION)
         wanted = max(wanted, int(np.ceil(finest)))
     strikes = [travel_time(s, case.materials) for s in case.ram_segments]
     if strikes:

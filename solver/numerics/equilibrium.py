@@ -207,11 +207,10 @@ def _lay_train(chain: Chain, state: State, u: Array, cap_weight: float) -> None:
     above = u[chain.head]
     if len(chain.train) == 2:
         state.bounds.train_force[1] = cap_weight
-        cushion = chain.train[1].cushion
-        if cushion is None:
+        if chain.train[1].cushion is None:
             state.bounds.train_state[1, 2] = cap_weight
         else:
-            pressed = cap_weight / cushion.loading_stiffness
+            pressed = cap_weight / float(state.bounds.train_par[1, 0])
             state.bounds.train_state[1, :3] = pressed, pressed, cap_weight
             above += pressed
         u[chain.head - 1] = above

@@ -27,14 +27,23 @@ def largest_force(ram: float, stiffness: float) -> float:
 
 
 @pytest.mark.parametrize("ram", [500.0, 2000.0])
-@pytest.mark.parametrize("stiffness", [1e8, 1e9, 1e10, 1e11, 3e11, 1e12])
+@pytest.mark.parametrize("stiffness", [1e8, 1e9, 1e10, 1e11, 3e11, 1e12, 1e13, 1e30])
 def test_peak_force_at_gauge_and_in_the_envelope(ram: float, stiffness: float) -> None:
     """0.5 % at the struck end and in every element (required); restitution plays no part before the peak.
 
-    1e12 N/m is 12 EA/dx of the usual 400 elements: the program then takes more of them. Beyond some 30 EA/dx
-    single elements ring about the mean that a gauge reads, by up to 10 %: a cushion like that is none, and the
-    file should say so.
+    1e12 N/m is 12 EA/dx of the usual 400 elements: the program then takes more of them, up to 4,000. A stiffer one
+    rises within a step: it is none, and is marched as the stiffest that the step resolves.
     """
+    peaks_agree(ram, stiffness)
+
+
+@pytest.mark.parametrize("stiffness", [1e10, 1e11, 1e12])
+def test_a_light_ram_whose_blow_is_nearly_over_as_the_cushion_is_pressed(stiffness: float) -> None:
+    """50 kg, the mass of 0.6 m of the rod: rise and fall take equally long, so the peak wants a finer mesh."""
+    peaks_agree(50.0, stiffness)
+
+
+def peaks_agree(ram: float, stiffness: float) -> None:
     drop = {
         "kind": "drop",
         "ram_mass": ram,

@@ -1,10 +1,11 @@
 """What an engineer must be told beside a number: slips of units, and peaks that come after a second blow."""
 
 import numpy as np
+import pytest
 
 from solver import Result, findings_of, first_blow
 from solver.answer.cautions import cautions_of
-from tests.published.rods import material, part, pulse, solved
+from tests.published.rods import case_of, material, part, pulse, solved
 
 
 def test_a_density_in_the_wrong_unit_shows_by_its_wave_speed() -> None:
@@ -14,6 +15,34 @@ def test_a_density_in_the_wrong_unit_shows_by_its_wave_speed() -> None:
     told = [one for one in cautions_of(run.case) if one.kind == "wave_speed"]
     assert [one.name for one in told] == ["slip"]
     assert 163_000 < told[0].value < 164_000
+    assert (told[0].suspect, told[0].given) == ("density", 7.85)
+
+
+def test_a_modulus_in_the_wrong_unit_is_named() -> None:
+    # 210 GPa written as 210e9 GPa
+    slip = material("slip", young_modulus=2.1e20, density=7850.0)
+    (told,) = (
+        one for one in cautions_of(case_of(pulse("half_sine", 1e-3), part(of="slip"), materials=[slip]))
+    )
+    assert (told.kind, told.suspect) == ("wave_speed", "modulus")
+
+
+def test_a_ram_and_a_cushion_that_cannot_be_meant_are_told_at_their_place() -> None:
+    drop = {
+        "kind": "drop",
+        "ram_mass": 1e12,
+        "impact_velocity": 1.0,
+        "cushion": {"stiffness": 2e9, "restitution": 0.8},
+        "cap_mass": 500.0,
+        "pile_cushion": {"stiffness": 1e30, "restitution": 0.5},
+    }
+    told = {one.pointer: one for one in cautions_of(case_of(drop))}
+    assert {key: one.kind for key, one in told.items()} == {
+        "load": "heavy_ram",
+        "load/pile_cushion": "stiff_cushion",
+    }
+    # EA = 2e9 N over 1 mm
+    assert told["load/pile_cushion"].bound == pytest.approx(2e12)
 
 
 def test_steel_needs_no_word_on_its_wave_speed() -> None:
