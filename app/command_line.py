@@ -140,6 +140,7 @@ def _window(arguments: argparse.Namespace) -> int:
 
 
 def _check(arguments: argparse.Namespace) -> int:
+    from app.study_faults import study_faults
     from app.usable_project import load_usable
     from solver import ProjectError
 
@@ -147,6 +148,9 @@ def _check(arguments: argparse.Namespace) -> int:
     for path in arguments.files:
         try:
             project = load_usable(path)
+            faults = study_faults(project)
+            if faults:
+                raise ProjectError(faults, str(path))
         except ProjectError as error:
             status = _say(str(error), UNUSABLE)
         else:

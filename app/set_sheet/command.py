@@ -11,7 +11,7 @@ from pathlib import Path
 from app.set_sheet.answer_words import bands_words, safe_words
 from app.set_sheet.files import Answers, sheet_csv, sheet_json
 from app.set_sheet.printed import Page, page_pdf
-from app.set_sheet.words import criterion, unit_of
+from app.set_sheet.words import criterion, told_in, unit_of
 from app.units import NO_BREAK, Units, units_of
 from app.usable_project import load_usable
 from solver import Case, Project, ProjectError, SolveError
@@ -54,7 +54,8 @@ def write_sheet(path: Path, out: Path, choices: Choices) -> int:
     except StudyError as error:
         return _complain(f"{path}: {error}", UNUSABLE)
     try:
-        with on_cluster(choices.cluster) if choices.cluster is not None else nullcontext() as solver:
+        on_machines = on_cluster(choices.cluster) if choices.cluster is not None else nullcontext()
+        with told_in(units_of(project)), on_machines as solver:
             sheet, answers = _solved(case, settings, choices, units_of(project), solver)
     except (StudyError, SolveError) as error:
         return _complain(f"The set sheet of case '{case.name}' cannot be made: {error}", FAILED)

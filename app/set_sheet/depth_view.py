@@ -16,11 +16,12 @@ from app.set_sheet.chart import case_limits
 from app.set_sheet.chart_view import measure, paint
 from app.set_sheet.depth_chart import depth_chart, depth_summary
 from app.set_sheet.scene import Scene
-from app.set_sheet.sheet_solution import SETTLE
+from app.set_sheet.sheet_solution import SETTLE, WORKERS
+from app.set_sheet.words import told_in
 from app.units import units_of
 from solver import Case
 from solver.studies import StudyError
-from solver.studies.depth import Depths, down_to_depth
+from solver.studies.depth import Depths
 from solver.studies.settings import DepthSettings, depth_settings_of
 
 
@@ -85,16 +86,11 @@ class DepthView(QWidget):
             return
         case, settings = self._key
         self.problem = ""
+        units = units_of(self._document.project)
 
         def work(cancel: Cancel) -> Iterator[Any]:
-            found = down_to_depth(
-                case,
-                settings.depths(case),
-                settings.factors,
-                toe_at=settings.toe_at,
-                blows_per_minute=settings.blows_per_minute,
-                cancel=cancel,
-            )
+            with told_in(units):
+                found = settings.study(case, cancel=cancel, workers=WORKERS)
             if found is not None:
                 yield found
 

@@ -11,7 +11,7 @@ from PySide6.QtCore import QObject, QTimer, Signal
 
 from app.aside import Aside, Cancel
 from app.document import Document
-from app.set_sheet.words import unit_of
+from app.set_sheet.words import told_in, unit_of
 from app.units import units_of
 from solver import Case
 from solver.studies import Cell, Plan, Sheet, StudyError, cells_of
@@ -193,12 +193,13 @@ class SheetSolution(QObject):
         units = units_of(self._document.project)
 
         def work(cancel: Cancel) -> Iterator[Any]:
-            plan = settings.plan(case, unit_of(units))
-            yield plan
-            yield from cells_of(plan, cancel=cancel, workers=WORKERS)
-            if not cancel():
-                yield "cells"
-                yield from _answers(plan, settings, cancel)
+            with told_in(units):
+                plan = settings.plan(case, unit_of(units))
+                yield plan
+                yield from cells_of(plan, cancel=cancel, workers=WORKERS)
+                if not cancel():
+                    yield "cells"
+                    yield from _answers(plan, settings, cancel)
 
         self._aside.start(work)
         self.changed.emit()

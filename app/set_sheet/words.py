@@ -2,11 +2,12 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable
+from collections.abc import Callable, Iterator
+from contextlib import contextmanager
 
 from app.units import NO_BREAK, Units, rounded
 from app.words import percent
-from solver.studies import Cell, Level, Sheet
+from solver.studies import Cell, Level, Sheet, StudyError
 
 #: What blows are counted for, m.
 PER = {"0.25 m": 0.25, "m": 1.0, "ft": 0.3048}
@@ -15,6 +16,15 @@ PER = {"0.25 m": 0.25, "m": 1.0, "ft": 0.3048}
 def unit_of(units: Units) -> Callable[[str], float]:
     """SI value of the unit that the reader sees, by its dimension."""
     return lambda dimension: 1 / float(units.number(1.0, dimension))
+
+
+@contextmanager
+def told_in(units: Units) -> Iterator[None]:
+    """Tells why a study cannot be made in the units of the reader."""
+    try:
+        yield
+    except StudyError as error:
+        raise StudyError(error.told(units.show)) from None
 
 
 def per_of(units: Units, chosen: str | None) -> str:

@@ -217,7 +217,9 @@ def _sentence(detail: ErrorDetails, parent: Any) -> str:
     if kind == "string_too_long":
         return f"must not be longer than {context['max_length']} characters"
     if kind in ("too_short", "too_long"):
-        return f"needs {'at least' if kind == 'too_short' else 'at most'} one entry"
+        most = context.get("max_length", context.get("min_length"))
+        entries = f"{most} entries" if most != 1 else "one entry"
+        return f"needs {'at least' if kind == 'too_short' else 'at most'} {entries}"
     if kind == "value_error":
         return str(context["error"])
     if kind in SENTENCES:

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable, Mapping, Sequence
+from collections.abc import Callable, Iterable, Mapping, Sequence
 from dataclasses import dataclass
 from itertools import pairwise
 
@@ -65,14 +65,22 @@ def at_penetration(case: Case, penetration: float, factors: Mapping[str, float] 
         raise StudyError("A study of depths needs ground: the case has none.")
     if not 0 < penetration <= length:
         raise StudyError(
-            f"A penetration of {penetration:g} m must be more than 0 and at most the length, {length:g} m."
+            "A penetration of {depth} must be more than 0 and at most the length, {length}.",
+            depth=(penetration, "length"),
+            length=(length, "length"),
         )
     factors = factors or {}
-    known = {layer.name for layer in ground.layers} | {"toe", "shaft"}
-    for name in factors:
+    check_factors(case, factors)
+    return checked(case.model_copy(update={"ground": _moved(ground, length, penetration, factors)}))
+
+
+def check_factors(case: Case, names: Iterable[str]) -> None:
+    """Raises `StudyError` for a name that neither a layer of the case has, nor "toe" or "shaft"."""
+    layers = case.ground.layers if case.ground else ()
+    known = {layer.name for layer in layers} | {"toe", "shaft"}
+    for name in names:
         if name not in known:
             raise StudyError(f"The ground has no layer named '{name}' (it has: {', '.join(sorted(known))}).")
-    return checked(case.model_copy(update={"ground": _moved(ground, length, penetration, factors)}))
 
 
 def _moved(ground: Ground, length: float, penetration: float, factors: Mapping[str, float]) -> Ground:

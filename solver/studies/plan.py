@@ -134,7 +134,9 @@ def chosen_resistances(
     high = highest if highest is not None else low + step * (count - 1)
     if not 0 < low < high:
         raise StudyError(
-            f"The lowest resistance ({low:.6g} N) must be above 0 and below the highest ({high:.6g} N)."
+            "The lowest resistance ({low}) must be above 0 and below the highest ({high}).",
+            low=(low, "force"),
+            high=(high, "force"),
         )
     if not 2 <= count <= MOST_RESISTANCES:
         raise StudyError(f"A set sheet takes 2 to {MOST_RESISTANCES} resistances, not {count}.")

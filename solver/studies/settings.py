@@ -2,16 +2,21 @@
 
 from __future__ import annotations
 
+from collections.abc import Callable, Iterator, Sequence
 from typing import Annotated, Literal, TypeVar
 
-from pydantic import Field, ValidationError
+from pydantic import Field
 
+from solver.model.file import faults_of
+from solver.model.problem import Problem, step
 from solver.model.project import Case, Project
 from solver.model.quantity import Described, NotNegative, Number, Positive, Quantity
+from solver.studies.depth import Depths, check_factors, down_to_depth
 from solver.studies.plan import COUNT, MOST_LEVELS, MOST_RESISTANCES, Plan, UnitOf, one, plan_of
+from solver.studies.sheet import Solver
 from solver.studies.uncertainty import FEWEST, MOST
-from solver.studies.unknowns import Unknown, usual_unknowns
-from solver.studies.variation import StudyError, Vary
+from solver.studies.unknowns import INPUTS, Unknown, usual_unknowns
+from solver.studies.variation import StudyError, Vary, resistance_of
 
 Given = TypeVar("Given", bound=Described)
 #: Depths that the program chooses.
@@ -78,6 +83,26 @@ class DepthSettings(Described):
         embedded = case.member.length - surface
         return tuple(embedded * n / STEPS for n in range(1, STEPS + 1))
 
+    def study(
+        self,
+        case: Case,
+        *,
+        cancel: Callable[[], bool] | None = None,
+        workers: int | None = None,
+        solver: Solver | None = None,
+    ) -> Depths | None:
+        """The case down to these depths; `None` when `cancel` answered True. Raises `StudyError`."""
+        return down_to_depth(
+            case,
+            self.depths(case),
+            self.factors,
+            toe_at=self.toe_at,
+            blows_per_minute=self.blows_per_minute,
+            cancel=cancel,
+            workers=workers,
+            solver=solver,
+        )
+
 
 def settings_of(project: Project) -> SheetSettings:
     """The choices in a project. Raises `StudyError` with their place in the file."""
@@ -90,9 +115,57 @@ def depth_settings_of(project: Project) -> DepthSettings:
 
 
 def _read(project: Project, key: str, kind: type[Given]) -> Given:
+    tree = (project.studies or {}).get(key, {})
+    faults = faults_of(kind, tree, f"/studies/{key}")
+    if faults:
+        raise StudyError(f"{faults[0]}.")
+    return kind.model_validate(tree)
+
+
+def faults_in_studies(project: Project) -> list[Problem]:
+    """What is wrong with the choices of a project, each with its place; also what fits none of its cases."""
+    studies = project.studies or {}
+    found = faults_of(SheetSettings, studies.get("set_sheet", {}), "/studies/set_sheet")
+    found += faults_of(DepthSettings, studies.get("depth", {}), "/studies/depth")
+    if not found and "set_sheet" in studies:
+        found += _sheet_fits_none(project.cases, settings_of(project))
+    if not found and "depth" in studies:
+        found += _depth_fits_none(project.cases, depth_settings_of(project))
+    return found
+
+
+def _sheet_fits_none(cases: Sequence[Case], settings: SheetSettings) -> Iterator[Problem]:
+    if settings.lowest is not None and settings.highest is not None and settings.lowest >= settings.highest:
+        yield Problem("/studies/set_sheet/lowest", "must be below 'highest'")
+        return
+    # a case without ground has no sheet, and the choices wait for one that has
+    told = [_why_not(settings.plan, case) for case in cases if resistance_of(case).total > 0]
+    if told and all(told):
+        key = "pointer" if settings.pointer is not None else "values" if settings.values is not None else ""
+        yield Problem("/studies/set_sheet" + (key and f"/{key}"), f"fits no case of the project: {told[0]}")
+    for index, unknown in enumerate(settings.unknowns or ()):
+        if not any(INPUTS[unknown.what].present(case) for case in cases):
+            yield Problem(
+                f"/studies/set_sheet/unknowns/{index}/what",
+                f"no case of the project has a {INPUTS[unknown.what].label} to vary",
+            )
+
+
+def _depth_fits_none(cases: Sequence[Case], settings: DepthSettings) -> Iterator[Problem]:
+    for name in settings.factors:
+        told = [_why_not(check_factors, case, [name]) for case in cases]
+        if all(told):
+            yield Problem("/studies/depth/factors" + step(name), f"fits no case of the project: {told[0]}")
+    longest = max(case.member.length for case in cases)
+    for index, depth in enumerate(settings.penetrations or ()):
+        if depth > longest:
+            sentence = f"a penetration of {depth:g} m is more than the length of any member, {longest:g} m"
+            yield Problem(f"/studies/depth/penetrations/{index}", sentence)
+
+
+def _why_not(attempt: Callable[..., object], *given: object) -> str:
     try:
-        return kind.model_validate((project.studies or {}).get(key, {}))
-    except ValidationError as error:
-        told = error.errors(include_url=False)[0]
-        place = "/".join(["/studies", key, *(str(part) for part in told["loc"])])
-        raise StudyError(f"{place}: {told['msg']}.") from None
+        attempt(*given)
+    except StudyError as error:
+        return str(error).rstrip(".")
+    return ""

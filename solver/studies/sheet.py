@@ -6,6 +6,7 @@ from collections.abc import Callable, Iterator
 from dataclasses import dataclass
 
 from solver.answer.findings import EnergyFinding, StressAt, StressFinding, findings_of
+from solver.answer.remark import Remark
 from solver.answer.result import Result
 from solver.many import Outcome, solve_many
 from solver.studies.plan import Level, Plan
@@ -38,7 +39,7 @@ class Cell:
     at_rest: bool = False
     strikes: int = 0
     lifted: bool = False
-    warnings: tuple[str, ...] = ()
+    remarks: tuple[Remark, ...] = ()
     problem: str = ""
 
     @property
@@ -147,5 +148,5 @@ def _cell(result: Result, row: int, line: int, resistance: float, level: Level) 
         at_rest=result.at_rest,
         strikes=sum(event.kind == "impact" for event in result.events),
         lifted=any(event.kind == "toe_lift" and event.time > 0 for event in result.events),
-        warnings=result.warnings,
+        remarks=result.remarks,
     )

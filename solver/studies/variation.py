@@ -10,10 +10,11 @@ from typing import Any, Literal
 
 from pydantic import BaseModel, ValidationError
 
+from solver.answer.remark import Show
 from solver.model.checks import problems_of
 from solver.model.derived import shaft_resistance
 from solver.model.project import FORMAT, VERSION, Case, Project
-from solver.model.quantity import quantity_of
+from solver.model.quantity import SI_UNITS, quantity_of
 from solver.model.surroundings import Ground, Layer
 
 #: What of the resistance is varied: shaft and toe together, or the toe alone.
@@ -21,7 +22,26 @@ Vary = Literal["all", "toe"]
 
 
 class StudyError(ValueError):
-    """A study that cannot be made. Its text is one sentence for a person."""
+    """A study that cannot be made: one sentence for a person, with a place in braces for each of `values` (SI, and the
+    dimension, a key of `SI_UNITS`). Its text is in SI; `told` writes the values as the reader has them."""
+
+    def __init__(self, sentence: str, **values: tuple[float, str]) -> None:
+        self._sentence, self._values = sentence, values
+        super().__init__(self.told(_in_si))
+
+    def told(self, show: Show) -> str:
+        """The sentence with values written by `show`, from the value and its dimension."""
+        if not self._values:
+            return self._sentence
+        return self._sentence.format(**{name: show(*value) for name, value in self._values.items()})
+
+
+def _without_places(text: str) -> str:
+    return text.replace("{", "{{").replace("}", "}}")
+
+
+def _in_si(value: float, dimension: str) -> str:
+    return f"{value:.6g} {SI_UNITS[dimension]}".strip()
 
 
 @dataclass(frozen=True)
@@ -63,7 +83,9 @@ def with_resistance(case: Case, total: float, vary: Vary = "all") -> Case:
     rest = total - now.shaft
     if rest < 0:
         raise StudyError(
-            f"The shaft alone has {now.shaft:.6g} N, more than the total of {total:.6g} N: vary all of the resistance."
+            "The shaft alone has {shaft}, more than the total of {total}: vary all of the resistance.",
+            shaft=(now.shaft, "force"),
+            total=(total, "force"),
         )
     return case.model_copy(update={"ground": scaled_ground(ground, 1.0, rest / now.toe)})
 
@@ -121,7 +143,13 @@ def with_value(case: Case, pointer: str, value: float) -> Case:
     except ValidationError as error:
         told = error.errors(include_url=False)[0]
         reason = told.get("ctx", {}).get("error") or told["msg"]
-        raise StudyError(f"'{pointer}' cannot be {value:g}: {reason}.") from None
+        label, dimension = label_of(case, pointer)
+        words = [
+            _without_places(f"{label} ('{pointer}')"),
+            "cannot be {value}:",
+            _without_places(f"{reason}."),
+        ]
+        raise StudyError(" ".join(words), value=(value, dimension)) from None
     materials = tuple(case.materials.values())
     bound: Case = changed.with_materials(materials)
     return checked(bound)
