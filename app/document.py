@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable
+from collections.abc import Callable, Sequence
 from dataclasses import dataclass
 from pathlib import Path
 from time import monotonic
@@ -12,6 +12,7 @@ from PySide6.QtCore import QIODevice, QObject, QSaveFile, Signal
 from PySide6.QtGui import QUndoCommand, QUndoStack
 
 from app import tree as trees
+from app.carried_along import Moved, carried_along, sentence_of
 from app.disk import DiskState, disk_state
 from app.faults import sentence_for
 from app.units import units_of
@@ -51,8 +52,10 @@ class Document(QObject):
     """
 
     changed = Signal()
-    #: An edit without a field to show its fault at was refused; carries the sentence.
+    #: An edit without a field to show its fault at was refused; carries what was not done, and why.
     refused = Signal(str)
+    #: An edit was taken and has changed more than was asked for; carries the sentence on it.
+    told = Signal(str)
 
     def __init__(self, project: Project, parent: QObject | None = None) -> None:
         super().__init__(parent)
@@ -127,7 +130,8 @@ class Document(QObject):
         """Set one value as one step of undo named `label`. False, and an entry in `rejected`, where it is not valid.
 
         Values that were rejected before are tried again with it: two fields that fit only together can be changed
-        one after the other.
+        one after the other. What a shorter rod has no place for moves with its end, which is told. While a burst of
+        typing (`merge`) goes on, what is refused or would move something is left without a word: 1 of 15 is not meant.
         """
         pointer = self.full_pointer(pointer)
         waiting = {p: r.given for p, r in self._rejected.items() if r.waiting and p != pointer}
@@ -137,18 +141,20 @@ class Document(QObject):
             after = self._tree
             try:
                 after = trees.with_values(self._tree, attempt)
-                project = self._validated(after)
+                project, moved = self._fitted(after)
             except LookupError:
                 sentence = "This part is no longer in the project."
             except ProjectError as error:
                 sentence = sentence_for(pointer, error.problems, after, units_of(self._project))
             else:
+                if moved and merge is not None:
+                    return False
                 self._rejected = {p: r for p, r in self._rejected.items() if p not in attempt}
-                self._push(label, project, merge)
+                self._push(label, project, merge, moved)
                 return True
         if pointer.endswith("/-"):
-            self.refused.emit(sentence)  # what was not appended has no field to show it at
-        else:
+            self.refused.emit(_not_done(label, sentence))  # what was not appended has no field to show it at
+        elif merge is None:
             self.reject(pointer, value, sentence, waiting=True)
         return False
 
@@ -160,23 +166,25 @@ class Document(QObject):
         pointer: str = "",
     ) -> bool:
         """Change a copy of the whole tree as one step. Where that is not valid, the sentence goes to `rejected` at
-        `pointer`, or without one to the signal `refused`."""
+        `pointer`, or without one to the signal `refused`. Bursts as for `edit`."""
         after = self.tree
         change(after)
         where = self.full_pointer(pointer) if pointer else ""
         try:
-            project = self._validated(after)
+            project, moved = self._fitted(after)
         except ProjectError as error:
             sentence = sentence_for(where, error.problems, after, units_of(self._project))
-            if where:
+            if where and merge is None:
                 self.reject(where, trees.value_at(after, where), sentence, waiting=False)
-            else:
-                self.refused.emit(sentence)
+            elif not where:
+                self.refused.emit(_not_done(label, sentence))
+            return False
+        if moved and merge is not None:
             return False
         self._rejected = {
             p: r for p, r in self._rejected.items() if p != where and trees.same_place(self._tree, after, p)
         }
-        self._push(label, project, merge)
+        self._push(label, project, merge, moved)
         return True
 
     def reject(self, pointer: str, given: Any, sentence: str, waiting: bool = False) -> None:
@@ -255,6 +263,16 @@ class Document(QObject):
     def _validated(self, tree: dict[str, Any]) -> Project:
         return project_from_tree(tree, self._folder)
 
+    def _fitted(self, after: dict[str, Any]) -> tuple[Project, list[Moved]]:
+        """The project of a tree after an edit, with what moved along because its rod has become shorter."""
+        try:
+            return self._validated(after), []
+        except ProjectError as error:
+            carried = carried_along(self._tree, after, error.problems)
+            if carried is None:
+                raise
+        return self._validated(carried[0]), carried[1]  # raises for what else is wrong
+
     def _moved(self, folder: Path) -> Project:
         """The project as it must be written in another folder, so that its history files are still found."""
         assert self._folder is not None
@@ -263,11 +281,13 @@ class Document(QObject):
         except ProjectError as error:
             raise DocumentError(f"The project cannot be saved in {folder}: {error}") from None
 
-    def _push(self, label: str, project: Project, merge: str | None) -> None:
+    def _push(self, label: str, project: Project, merge: str | None, moved: Sequence[Moved] = ()) -> None:
         if project == self._project:
             self.changed.emit()  # a rejected entry may have gone
         else:
             self.undo_stack.push(_Edit(self, label, self._project, project, merge))
+        if moved:
+            self.told.emit(sentence_of(moved, units_of(project)))
 
     def _show(self, project: Project, keep_rejected: bool) -> None:
         self._project, self._tree = project, project.model_dump(mode="json")
@@ -305,6 +325,10 @@ class _Edit(QUndoCommand):
 
     def undo(self) -> None:
         self._document._show(self._before, keep_rejected=False)
+
+
+def _not_done(label: str, sentence: str) -> str:
+    return f"Not done: {label[:1].lower()}{label[1:]}. {sentence}"
 
 
 def _write(path: Path, text: str) -> None:

@@ -15,15 +15,24 @@ METRES = re.compile(r"(?<![\w.])(-?\d+(?:\.\d+)?(?:e[-+]?\d+)?) m(?![\w/])")
 #: What was given, as the model read it, in SI: the person sees what she typed beside the sentence.
 GIVEN = re.compile(r", not -?[\d.]+(?:e[-+]?\d+)?$")
 
+#: What helps where an edit is refused for what is wrong elsewhere then.
+ADVICE = (
+    (re.compile(r"/gauges/\d+/position"), "Move or remove the gauge first."),
+    (re.compile(r"/attachments/\d+/position"), "Move or remove the attachment first."),
+    (re.compile(r"/ground/surface"), "Give the ground surface a smaller distance first."),
+)
+
 
 def sentence_for(pointer: str, problems: Sequence[Problem], tree: Any, units: Units) -> str:
     """One sentence on the fault at the place of an edit, or on the first elsewhere, with its place in words."""
     here = [p for p in problems if p.pointer == pointer or pointer.startswith(p.pointer + "/")]
     problem = (here or list(problems))[0]
     text = METRES.sub(lambda m: units.show(float(m.group(1)), "length"), GIVEN.sub("", problem.sentence))
+    advice = ""
     if not here and problem.pointer:
         text = f"{place_in_words(problem.pointer, tree)}: {text}"
-    return text[:1].upper() + text[1:] + ("" if text.endswith((".", "?", ")")) else ".")
+        advice = next((f" {words}" for place, words in ADVICE if place.search(problem.pointer)), "")
+    return text[:1].upper() + text[1:] + ("" if text.endswith((".", "?", ")")) else ".") + advice
 
 
 def place_in_words(pointer: str, tree: Any) -> str:

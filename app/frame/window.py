@@ -117,6 +117,10 @@ class Window(QMainWindow):
     def _connect(self) -> None:
         self.document.changed.connect(self._follow)
         self.document.refused.connect(lambda text: self.notices.show_notice("edit", text, "over"))
+        undo = self.document.undo_stack.undo
+        self.document.told.connect(
+            lambda text: self.notices.show_notice("edit", text, "near", [("Undo", undo)])
+        )
         self.document.undo_stack.indexChanged.connect(lambda _index: self.notices.drop("edit"))
         self.solution.changed.connect(self._follow)
         self.notes.closed.connect(self.menus.notes.trigger)

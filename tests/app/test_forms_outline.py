@@ -184,11 +184,12 @@ def test_a_bound_of_the_model_is_told_in_the_shown_unit(desk) -> None:
     assert problem_of(row) == "✕ Must be more than 0 t."
 
 
-def test_a_segment_too_short_for_its_gauges_says_which_gauge(desk) -> None:
+def test_a_segment_too_short_for_the_ground_says_so_and_what_helps(desk) -> None:
     at = desk(driven_pile())
     at.select("member/segments/0")
-    row = at.type_into("Length", "12")
-    assert "gauge 'Toe' at 19.5 m lies beyond the member's end at 12.0 m" in problem_of(row)
+    row = at.type_into("Length", "3")
+    assert "the ground surface at 4.00 m lies below the member's end at 3.00 m" in problem_of(row)
+    assert "smaller distance first" in problem_of(row)
     assert at.case.member.length == 20.0
     at.select("run")
     assert "not valid" in at.button("Pile").accessibleName()
