@@ -6,6 +6,7 @@ import time
 from collections.abc import Callable
 
 from solver.answer.result import Result
+from solver.beyond import refuse_beyond_measure
 from solver.errors import SolveError
 from solver.marching import March, Progress
 from solver.model.project import Case, RepeatedBlows
@@ -30,6 +31,7 @@ def solve(
     what is solved so far is returned with `finished` False. Raises `SolveError` with a sentence where the case cannot
     be solved.
     """
+    refuse_beyond_measure(case)
     refuse_unsupported(case)
     return solve_chain(build_chain(case, element_length), progress, cancel)
 

@@ -116,4 +116,6 @@ def _repeated(at: str, what: str, names: Sequence[str]) -> Iterator[Problem]:
     for i, name in enumerate(names):
         first = names.index(name)
         if first < i:
-            yield Problem(f"{at}/{i}/name", f"the name '{name}' is taken by number {first + 1} of the {what}")
+            yield Problem(
+                f"{at}/{i}/name", f"numbers {first + 1} and {i + 1} of the {what} are both called '{name}'"
+            )

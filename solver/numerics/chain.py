@@ -237,8 +237,9 @@ class _Builder:
 
 def build_chain(case: Case, element_length: float | None = None) -> Chain:
     """Discretise a case; `element_length` (m) overrides the program's choice."""
-    steps = steps_of(case, element_length or case.run.element_length)
-    _refuse_tiny(case, steps)
+    given = element_length or case.run.element_length
+    steps = steps_of(case, given)
+    _refuse_tiny(case, steps, given is not None)
     load, rod = case.load, case.ram_segments
     laid = _Builder(case)
     joints: list[JointLink] = []
@@ -262,14 +263,16 @@ def build_chain(case: Case, element_length: float | None = None) -> Chain:
     return _finished(case, steps, laid, tuple(joints), tuple(train), head)
 
 
-def _refuse_tiny(case: Case, steps: Steps) -> None:
+def _refuse_tiny(case: Case, steps: Steps, given: bool) -> None:
     """Raise `SolveError` where one segment is so short that it would make all others slow and blurred."""
     if steps.courant_worst >= WORST_COURANT:
         return
-    shortest = min(segments_of(case)[0], key=lambda s: travel_time(s, case.materials))
+    by_time = sorted(segments_of(case)[0], key=lambda s: travel_time(s, case.materials))
+    shortest, longest = by_time[0], by_time[-1]
     raise SolveError(
-        f"Segment '{shortest.name}' ({shortest.length:.3g} m) is too short beside the others to be solved with them: "
-        "join it to its neighbour, give it as an attached mass, or give an element length."
+        f"Segment '{shortest.name}' ({shortest.length:.3g} m) is too short to be solved beside '{longest.name}' "
+        f"({longest.length:.3g} m): join it to its neighbour, give it as an attached mass, or give "
+        f"{'a shorter' if given else 'an'} element length."
     )
 
 

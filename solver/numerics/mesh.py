@@ -45,7 +45,8 @@ class SegmentSteps:
     def longest_step(self, count: NDArray[np.float64]) -> NDArray[np.float64]:
         """Largest stable step (s) with `count` elements; the inverse of `most_elements`."""
         transit = self.travel_time / count / np.sqrt(self.stiffening)
-        return np.asarray(np.hypot(transit, self.viscous_time) - self.viscous_time)
+        # hypot(transit, viscous) - viscous without the difference of nearly equal numbers
+        return np.asarray(transit * (transit / (np.hypot(transit, self.viscous_time) + self.viscous_time)))
 
     @property
     def plain(self) -> bool:

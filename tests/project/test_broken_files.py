@@ -114,7 +114,7 @@ def test_a_name_that_is_taken_leaves_another_unknown(tmp_path, capsys):
     path = tmp_path / "broken.strike"
     path.write_text(json.dumps(tree), encoding="utf-8")
     answers = (
-        ("/materials/1/name", "the name 'steel' is taken by number 1 of the materials"),
+        ("/materials/1/name", "numbers 1 and 2 of the materials are both called 'steel'"),
         ("/cases/2/member/segments/1/material", "no material named 'copper' (it has: 'steel')"),
     )
     refused(path, answers, capsys)

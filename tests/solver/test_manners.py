@@ -4,6 +4,7 @@ by themselves.
 
 from __future__ import annotations
 
+import re
 import tracemalloc
 from concurrent.futures import ThreadPoolExecutor
 from dataclasses import replace
@@ -17,7 +18,7 @@ from hypothesis import strategies as st
 from solver import Progress, Result, SolveError, solve
 from solver.numerics.chain import build_chain
 from solver.run import solve_chain
-from tests.published.rods import Z, case_of, part, pulse, solved
+from tests.published.rods import Z, case_of, material, part, pulse, solved
 from tests.solver.strategies import Tree, case_in, project_trees
 
 #: Long enough for many chunks of 8 million element-steps: 2 s on 500 elements of 20 mm are 500,000 steps.
@@ -346,3 +347,17 @@ def test_two_threads_solve_apart() -> None:
         together = list(pool.map(solve, cases))
     for a, b in zip(alone, together, strict=True):
         assert np.array_equal(a.gauges["g"].force, b.gauges["g"].force)
+
+
+def test_a_number_beyond_all_measure_is_named_before_anything_overflows() -> None:
+    """Warnings of numpy are errors in this suite: an overflow on the way would fail as one."""
+    lively = {**DROP, "cushion": {"stiffness": 1e9, "restitution": 1e-200}}
+    heavy = [material("heavy", density=1e31)]
+    for told, case in {
+        "Segment 'part 1': Length 1e+300 m": case_of(HALF_SINE, part(1e300), part(4.0)),
+        "Segment 'part 1', section: Area 1e-300 m^2": case_of(HALF_SINE, part(area=1e-300)),
+        "Load, cushion: Coefficient of restitution 1e-200": case_of(lively),
+        "Material 'heavy': Density 1e+31 kg/m^3": case_of(HALF_SINE, part(of="heavy"), materials=heavy),
+    }.items():
+        with pytest.raises(SolveError, match=re.escape(told)):
+            solve(case)
