@@ -2,12 +2,13 @@
 
 from __future__ import annotations
 
-from app.set_sheet.words import force_text, level_text, varied_text
+from app.set_sheet.words import force_text, level_below, level_text, varied_text
 from app.units import Units, rounded
 from app.words import percent
 from solver.studies import Cell
 from solver.studies.plan import at_value
-from solver.studies.questions import SafeBlow, ShownResistance
+from solver.studies.questions import ShownResistance
+from solver.studies.safe_blow import SafeBlow
 from solver.studies.uncertainty import Bands
 
 
@@ -16,16 +17,23 @@ def safe_words(answer: SafeBlow, cell: Cell, units: Units) -> str:
     what, at = varied_text(cell.level), force_text(answer.resistance, units)
     if answer.why == "no limit":
         return "No material of the member has a limit: give one to be told the largest blow."
-    low, high = (level_text(at_value(cell.level, value), units) for value in (answer.low, answer.high))
-    if answer.why == "none within":
-        # a small blow may pass where larger ones do not, when a ram that falls again meets a pile that still rings
-        return f"Already a {what} of {low} passes a limit at {at}: no largest one is told. See the curves."
+    low, high, least = (
+        level_text(at_value(cell.level, value), units) for value in (answer.low, answer.high, answer.at_least)
+    )
+    if answer.why == "none within" or answer.level is None:
+        return f"None of {answer.steps} values of the {what} from {low} to {high} keeps within the limits at {at}."
+    smaller = {
+        "": "",
+        "later": f" Below {least} a limit is passed, but only after the ram has struck again on the ringing member.",
+        "at once": f" Below {least} a limit is passed as well.",
+    }[answer.smaller_pass]
     if answer.why == "all within":
-        return f"Every {what} up to {high} keeps all stresses within their limits at {at}."
-    assert answer.level is not None
+        return f"Every {what} looked at up to {high} keeps all stresses within their limits at {at}.{smaller}"
+    later = answer.passed is not None and answer.passed.again_only
+    above = " Above it a limit is passed only after the ram has struck again." if later else ""
     return (
-        f"Up to a {what} of {level_text(answer.level, units)} every stress stays within its limit at {at} "
-        f"(to {percent(answer.tolerance)})."
+        f"Up to a {what} of {level_below(answer.level, units)} every stress stays within its limit at {at} "
+        f"(to {percent(answer.tolerance)}).{above}{smaller}"
     )
 
 

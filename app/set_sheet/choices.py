@@ -161,7 +161,7 @@ class Choices(QScrollArea):
         self.ranges.show_ranges(case, settings.unknowns)
         self._follow_pointer(settings.pointer or blow_pointer(case))
         if plan is not None:
-            first = plan.levels[0]
+            first = plan.own_level
             usual = sorted(level.value for level in plan.levels)
             self.values.show_values(settings.values, usual, first.dimension, units)
             self.value.label.setText(f"with a {first.label[:1].lower()}{first.label[1:]} of")

@@ -18,7 +18,8 @@ from solver import Case, Project, ProjectError, SolveError
 from solver.studies import Sheet, StudyError, solve_sheet
 from solver.studies.cluster import on_cluster
 from solver.studies.plan import at_value
-from solver.studies.questions import point, safe_blow
+from solver.studies.questions import point
+from solver.studies.safe_blow import safe_blow
 from solver.studies.settings import SheetSettings, settings_of
 from solver.studies.sheet import Solver
 from solver.studies.uncertainty import sampled
@@ -75,9 +76,11 @@ def _solved(
     shown = not choices.quiet and sys.stderr.isatty()
     points = len(plan.resistances) * len(plan.levels)
     sheet = solve_sheet(plan, solver=solver, progress=_progress(points, "points") if shown else None)
-    level = plan.levels[0] if settings.asked_value is None else at_value(plan.levels[0], settings.asked_value)
+    level = plan.own_level
+    if settings.asked_value is not None:
+        level = at_value(level, settings.asked_value)
     resistance = settings.asked_resistance or plan.own_total
-    stop_at, safe = point(plan, resistance, level), safe_blow(plan, resistance)
+    stop_at, safe = point(plan, resistance, level), safe_blow(plan, resistance, solver=solver)
     bands = None
     if choices.samples is not None:
         bands = sampled(

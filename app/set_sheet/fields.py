@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import re
-from collections.abc import Callable, Sequence
+from collections.abc import Sequence
 
 from PySide6.QtCore import Signal
 from PySide6.QtWidgets import QHBoxLayout, QLabel, QLineEdit, QVBoxLayout, QWidget
@@ -69,8 +69,7 @@ class NumbersField(QWidget):
         self._tell(sentence)
 
     def _text(self, values: Sequence[float]) -> str:
-        number: Callable[[float], str] = lambda v: f"{float(self._units.number(v, self._dimension)):.6g}"  # noqa: E731
-        return "  ".join(number(v) for v in values)
+        return "  ".join(self._units.plain(v, self._dimension) for v in values)
 
     def _enter(self) -> None:
         text = self.field.text().strip()

@@ -12,7 +12,7 @@ from app import __version__
 from app.words import LIMIT_CAUTION, MODEL_CAUTION
 from solver.answer.findings import StressFinding
 from solver.studies import Cell, Sheet
-from solver.studies.questions import SafeBlow
+from solver.studies.safe_blow import SafeBlow
 from solver.studies.uncertainty import Bands
 
 HEAD = (
@@ -26,6 +26,7 @@ HEAD = (
     "peak_tension_position_m",
     "largest_share_of_limit",
     "share_position_m",
+    "passed_only_after_ram_struck_again",
     "energy_past_gauge_J",
     "at_rest",
     "problem",
@@ -65,6 +66,7 @@ def _row(cell: Cell) -> tuple[Any, ...]:
         *_peak(cell.tension),
         cell.share,
         worst[1].position if worst else None,
+        str(cell.again_only).lower(),
         cell.energy.value if cell.energy else None,
         str(cell.at_rest).lower(),
         cell.problem or None,
@@ -112,6 +114,10 @@ def sheet_json(sheet: Sheet, title: str, answers: Answers, criterion: str) -> st
             "value": safe.level.value if safe.level and safe.why == "found" else None,
             "looked_from": safe.low,
             "looked_to": safe.high,
+            "steps_looked_at": safe.steps,
+            "admissible_from": safe.at_least if safe.level else None,
+            "smaller_values_pass_a_limit": safe.smaller_pass or "none",
+            "passed_above_only_after_the_ram_struck_again": safe.passed.again_only if safe.passed else None,
             "tolerance": safe.tolerance,
         }
     if answers.bands is not None:
@@ -120,7 +126,8 @@ def sheet_json(sheet: Sheet, title: str, answers: Answers, criterion: str) -> st
 
 
 def _point(cell: Cell) -> dict[str, Any]:
-    return dict(zip(HEAD, _row(cell), strict=True)) | {"at_rest": cell.at_rest}
+    told = {"at_rest": cell.at_rest, "passed_only_after_ram_struck_again": cell.again_only}
+    return dict(zip(HEAD, _row(cell), strict=True)) | told
 
 
 def _bands(bands: Bands) -> dict[str, Any]:

@@ -16,7 +16,8 @@ from app.units import units_of
 from solver import Case
 from solver.studies import Cell, Plan, Sheet, StudyError, cells_of
 from solver.studies.plan import at_value
-from solver.studies.questions import Cancelled, SafeBlow, ShownResistance, point, safe_blow, shown_by
+from solver.studies.questions import Cancelled, ShownResistance, point, shown_by
+from solver.studies.safe_blow import SafeBlow, safe_blow
 from solver.studies.settings import SheetSettings, settings_of
 from solver.studies.uncertainty import FEWEST, Bands, sampled
 
@@ -254,14 +255,14 @@ def _same(one: Key, other: Key) -> bool:
 
 def _answers(plan: Plan, settings: SheetSettings, cancel: Cancel) -> Iterator[Answers]:
     """The questions one after the other, each answer as soon as it is found."""
-    level = plan.levels[0]
+    level = plan.own_level
     if settings.asked_value is not None:
         level = at_value(level, settings.asked_value)
     resistance = settings.asked_resistance or plan.own_total
     try:
         stop_at = point(plan, resistance, level, cancel)
         yield Answers(None, stop_at)
-        safe = safe_blow(plan, resistance, cancel=cancel)
+        safe = safe_blow(plan, resistance, cancel=cancel, workers=WORKERS)
         yield Answers(safe, stop_at)
         if settings.measured_set is not None:
             shown = shown_by(plan, level, settings.measured_set, settings.reading_error, cancel=cancel)

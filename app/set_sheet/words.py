@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Callable, Iterator
 from contextlib import contextmanager
+from math import floor, log10
 
 from app.units import NO_BREAK, Units, rounded
 from app.words import percent
@@ -37,6 +38,14 @@ def level_text(level: Level, units: Units) -> str:
     number = float(units.number(level.value, level.dimension, level.value))
     unit = units.unit(level.dimension, level.value)
     return f"{number:.4g}{NO_BREAK}{unit}".strip()
+
+
+def level_below(level: Level, units: Units) -> str:
+    """The value that a line stands for, rounded down to three digits: what is allowed must not be told larger."""
+    number = float(units.number(level.value, level.dimension, level.value))
+    size = 10.0 ** (floor(log10(number)) - 2) if number > 0 else 1.0
+    down = floor(number / size + 1e-9) * size
+    return f"{down:.3g}{NO_BREAK}{units.unit(level.dimension, level.value)}".strip()
 
 
 def force_text(value: float, units: Units) -> str:

@@ -62,6 +62,11 @@ class Plan:
         """Total resistance of the case itself, N."""
         return resistance_of(self.case).total
 
+    @property
+    def own_level(self) -> Level:
+        """The level that the case itself has, whether or not it is one of the lines."""
+        return at_value(self.levels[0], float(value_at(self.case, self.levels[0].pointer)))
+
     def variant(self, resistance: float, level: Level) -> Case:
         """The case that is solved for one point: until the member is at rest, for its set."""
         varied = with_resistance(level.of(self.case), resistance, self.vary)
@@ -162,6 +167,8 @@ def _levels(
         raise StudyError(f"'{place}' is not a number of this case that is given, so it cannot be varied.")
     label, dimension = label_of(case, place)
     if values is None:
+        if own == 0:
+            raise StudyError(f"'{label}' is 0 in the case: give the values that the lines shall have.")
         unit = unit_of(dimension)
         values = [_tidy(float(own) * share / unit) * unit if share != 1 else float(own) for share in SHARES]
     if not 1 <= len(values) <= MOST_LEVELS:

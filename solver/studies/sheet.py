@@ -3,9 +3,9 @@
 from __future__ import annotations
 
 from collections.abc import Callable, Iterator
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 
-from solver.answer.findings import EnergyFinding, StressAt, StressFinding, findings_of
+from solver.answer.findings import EnergyFinding, StressAt, StressFinding, findings_of, first_blow
 from solver.answer.remark import Remark
 from solver.answer.result import Result
 from solver.many import Outcome, solve_many
@@ -24,7 +24,7 @@ class Cell:
 
     `set` and `toe_largest` in m, `None` where the case could not be solved: then `problem` says why. The stresses are
     magnitudes in Pa with place and limit; `worst` where the share of a limit is largest. `energy` (J) past the first
-    gauge on the member, `None` without one.
+    gauge on the member, `None` without one. `again_only`: a limit is passed, but not before the ram has struck again.
     """
 
     row: int
@@ -39,6 +39,7 @@ class Cell:
     at_rest: bool = False
     strikes: int = 0
     lifted: bool = False
+    again_only: bool = False
     remarks: tuple[Remark, ...] = ()
     problem: str = ""
 
@@ -135,7 +136,7 @@ def solved_cell(resistance: float, level: Level, result: Result) -> Cell:
 
 def _cell(result: Result, row: int, line: int, resistance: float, level: Level) -> Cell:
     facts = findings_of(result)
-    return Cell(
+    cell = Cell(
         row,
         line,
         resistance,
@@ -150,3 +151,8 @@ def _cell(result: Result, row: int, line: int, resistance: float, level: Level) 
         lifted=any(event.kind == "toe_lift" and event.time > 0 for event in result.events),
         remarks=result.remarks,
     )
+    return replace(cell, again_only=cell.over and not _over_at_first(result))
+
+
+def _over_at_first(result: Result) -> bool:
+    return any(found.state == "over" for found in first_blow(result))

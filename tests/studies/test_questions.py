@@ -1,11 +1,17 @@
 """Answers put back into the solver give what was asked for, and where there is none it is said."""
 
+from pathlib import Path
+
 import pytest
 
-from solver import solve
-from solver.studies import plan_of
-from solver.studies.questions import point, safe_blow, shown_by
+from solver import load_project, solve
+from solver.studies import plan_of, with_value
+from solver.studies.plan import at_value
+from solver.studies.questions import point, shown_by
+from solver.studies.safe_blow import safe_blow
 from tests.studies.piles import pile
+
+DEMO = Path(__file__).resolve().parents[2] / "demo_projects" / "02-concrete-pile-in-soft-ground.strike"
 
 
 def test_largest_drop_put_back_reaches_the_limit_and_does_not_pass_it() -> None:
@@ -30,6 +36,45 @@ def test_no_answer_is_said_as_such(limit: float | None, why: str) -> None:
     answer = safe_blow(plan, 0.8e6)
     assert answer.why == why
     assert (answer.level is None) == (why in ("none within", "no limit"))
+
+
+def test_smaller_blows_that_pass_a_limit_on_a_ringing_pile_do_not_hide_the_largest_admissible_one() -> None:
+    """Under small drops the ram of the concrete demo falls again on a pile that still rings; at 85 % of the limit the
+    second blow passes it from about 0.25 to 0.43 m, the first blow from 0.6 m on."""
+    project = load_project(DEMO)
+    concrete = next(m for m in project.materials if m.limits.value("tension"))
+    limit = 0.85 * concrete.limits.value("tension")
+    weaker = concrete.model_copy(update={"limits": concrete.limits.model_copy(update={"tension": limit})})
+    others = [weaker if m.name == concrete.name else m for m in project.materials]
+    case = with_value(project.cases[0].with_materials(others), "load/drop_height", 0.5)
+    plan = plan_of(case)
+    answer = safe_blow(plan, plan.own_total)
+    assert answer.why == "found"
+    assert answer.smaller_pass == "later"
+    assert answer.level is not None
+    assert 0.25 < answer.at_least < 0.5 < answer.level.value < 0.65
+    for edge, beyond in ((answer.level.value, 1.003), (answer.at_least, 0.997)):
+        inside = point(plan, plan.own_total, at_value(answer.level, edge))
+        assert inside.share is not None
+        assert 0.99 < inside.share <= 1
+        assert point(plan, plan.own_total, at_value(answer.level, edge * beyond)).over
+    assert point(plan, plan.own_total, at_value(answer.level, 0.3)).again_only
+
+
+def test_when_the_case_itself_passes_a_limit_the_nearest_blow_is_told() -> None:
+    plan = plan_of(pile(limit=200e6, elements=20, height=3.0), count=3)
+    assert point(plan, 1.0e6, plan.own_level).over
+    answer = safe_blow(plan, 1.0e6)
+    assert answer.level is not None
+    assert answer.level.value < 3.0
+    assert point(plan, 1.0e6, answer.level).share == pytest.approx(1, abs=2 * answer.tolerance)
+
+
+def test_value_that_the_model_does_not_take_is_left_out() -> None:
+    plan = plan_of(pile(elements=20), count=3, pointer="load/cushion/restitution", values=[0.5, 0.8])
+    answer = safe_blow(plan, 0.8e6)
+    assert answer.high <= 1
+    assert answer.why in ("found", "all within")
 
 
 def test_set_that_a_resistance_shows_gives_the_resistance_back() -> None:
