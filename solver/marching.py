@@ -72,6 +72,7 @@ class March:
         shown = np.unique(np.linspace(0, len(links) - 1, min(COLUMNS, len(links))).round().astype(int))
         self.columns = links[shown]
         self.readings = gauge_readings(chain)
+        self.rest_forces = self._rest_forces()
         self.gauges = Store(5 * len(chain.case.gauges), self.planned)
         self.ram = Store(3 if chain.train else 0, self.planned)
         self.frames: list[Frames] = []
@@ -115,6 +116,7 @@ class March:
             events=np.concatenate(self.events),
             start_row=self.start_row,
             rest=self.rest,
+            rest_forces=self.rest_forces,
             at_end=at_end if at_end is not None else self.state.motion.u.copy(),
             settled=settled,
             sets=tuple(self.sets),
@@ -149,6 +151,19 @@ class March:
             row, rod, s.shaft, s.bounds, motion.rest, motion.u, -motion.v, -motion.v, force, self.sums, dt
         )
         return row
+
+    def _rest_forces(self) -> Array:
+        """What each gauge reads of the state of rest, N, shape (gauges,)."""
+        rod, force = self.state.rod, np.zeros_like(self.state.motion.force)
+        link_forces(
+            rod._replace(state=rod.state.copy()), self.rest, np.zeros_like(self.rest), force, self.chain.dt
+        )
+        node, weights = self.readings
+        share, left, right, constant = (weights[:, :, i] for i in (0, 1, 2, 4))
+        # a weight of a link that is not there is 0
+        last = len(force) - 1
+        reading = left * force[np.maximum(node - 1, 0)] + right * force[np.minimum(node, last)] + constant
+        return (share * reading).sum(axis=1)
 
     def _aligned(self, count: int) -> int:
         """A whole number of frames, but for the last chunk."""

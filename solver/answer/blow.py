@@ -30,6 +30,7 @@ class Blow:
     events: NDArray[np.int64]
     start_row: Array
     rest: Array
+    rest_forces: Array
     at_end: Array
     settled: bool
     sets: tuple[float, ...]

@@ -26,7 +26,6 @@ from solver.answer.told import remarks_of
 from solver.numerics.arrays import Extremes
 from solver.numerics.assemble import gauge_link
 from solver.numerics.balance import LEDGER, residual_of
-from solver.numerics.chain import Chain
 
 Array = NDArray[np.float64]
 
@@ -87,7 +86,7 @@ def _gauges(blow: Blow) -> dict[str, GaugeRecord]:
             on=gauge.on,
             impedance=float(chain.impedance[link]),
             area=float(chain.area[link]),
-            rest_force=_rest_force(chain, blow.rest, link),
+            rest_force=float(blow.rest_forces[g]),
             time_step=chain.dt,
             axial_stiffness=float(chain.axial[link]) if elastic else None,
             force=force,
@@ -97,10 +96,6 @@ def _gauges(blow: Blow) -> dict[str, GaugeRecord]:
             element_strain=strain,
         )
     return found
-
-
-def _rest_force(chain: Chain, rest: Array, link: int) -> float:
-    return float(chain.axial[link] / chain.length[link] * (rest[link + 1] - rest[link]))
 
 
 def _envelope(blow: Blow, ext: Extremes) -> Envelope:

@@ -10,7 +10,7 @@ import numpy as np
 import pytest
 
 from solver import SolveError, solve
-from tests.published.rods import AREA, LENGTH, C, E, Z, case_of, material, part, pulse, solved
+from tests.published.rods import AREA, GRAVITY, LENGTH, C, E, Z, case_of, material, part, pulse, solved
 from tests.solver.test_properties_energy import unbalanced
 
 HALF_SINE = pulse("half_sine", 0.001)
@@ -319,3 +319,24 @@ def test_a_member_that_sags_keeps_its_distance_to_the_wall(law: str) -> None:
     assert np.abs(gauge.velocity[gauge.time < 0.0019]).max() < 1e-9
     assert gauge.displacement.max() == pytest.approx(1e-4, rel=1e-6)
     assert result.ledger.final["impact_loss"] > -1e-9
+
+
+def test_every_gauge_begins_at_its_own_force_of_rest() -> None:
+    """A pile under its own weight before the pulse: what a gauge reads less its force of rest begins at 0 at both
+    ends, on a node and between two (to 1e-12 of the weight). Halfway it is half the weight; at 2.31 m, that above it.
+    """
+    gauges = {"head": 0.0, "between": 2.31, "middle": LENGTH / 2, "toe": LENGTH}
+    toe = {"resistance": 1e6, "quake": 0.0025, "damping": 0.3}
+    load = pulse("half_sine", 0.001, start=0.001)
+    result = solved(
+        load,
+        far_end="ground",
+        ground={"surface": 9.9, "toe": toe},
+        gravity=True,
+        gauges=gauges,
+        duration=0.002,
+    )
+    weight = 8000 * AREA * LENGTH * GRAVITY
+    for gauge in result.gauges.values():
+        assert gauge.force[0] == pytest.approx(gauge.rest_force, abs=1e-12 * weight)
+        assert gauge.rest_force == pytest.approx(-weight * gauge.position / LENGTH, abs=1e-3 * weight)
