@@ -112,7 +112,7 @@ class Bench(QWidget):
         return over and mesh
 
     def _show_all(self) -> None:
-        self._sight.set(time_range=None, distance_range=None)
+        self.xt.show_all()
 
     def _shortcuts(self) -> None:
         space = QShortcut(QKeySequence("Space"), self)

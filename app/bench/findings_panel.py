@@ -7,6 +7,7 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 from functools import lru_cache
+from typing import Any
 
 from PySide6.QtCore import Qt
 from PySide6.QtGui import QContextMenuEvent, QGuiApplication, QResizeEvent
@@ -16,6 +17,7 @@ from app import run_words, words
 from app.bench.differences import Block, Differences
 from app.bench.finding_row import FindingRow, Told
 from app.bench.mesh_view import MeshView
+from app.bench.pictures.time_shown import with_moment_shown
 from app.document import Document
 from app.explaining import explain
 from app.laid_over import LaidOver
@@ -155,10 +157,17 @@ class FindingsPanel(QFrame):
                 rows = run_words.differences(facts_of(result), facts_of(one.result), units)
             yield one.name, one.number, rows, one.tells
 
+    def _lead(self, where: dict[str, Any]) -> None:
+        """Bring the cursor to the place and time of a finding, and the pictures with it."""
+        if "time" in where:
+            case, result = self._document.case, self._solution.result
+            where |= with_moment_shown(self._sight, case, result, where["time"])
+        self._sight.set(**where)
+
     def _show(self, rows: list[FindingRow], layout: QVBoxLayout, told: list[Told], stands: bool) -> None:
         while len(rows) < len(told):
             row = FindingRow()
-            row.clicked.connect(lambda _on=False, r=row: self._sight.set(**dict(r.told.leads)))
+            row.clicked.connect(lambda _on=False, r=row: self._lead(dict(r.told.leads)))
             rows.append(row)
             layout.addWidget(row)
         for row, content in zip(rows, told, strict=False):

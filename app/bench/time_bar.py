@@ -1,4 +1,4 @@
-"""The time of the cursor: play in slow motion, step, drag."""
+"""The time of the cursor: play in slow motion, step, drag; and how much of the run the pictures show."""
 
 from __future__ import annotations
 
@@ -7,9 +7,17 @@ from functools import partial
 from time import perf_counter
 
 from PySide6.QtCore import Qt, QTimer
-from PySide6.QtWidgets import QHBoxLayout, QLabel, QMenu, QSlider, QToolButton, QWidget
+from PySide6.QtWidgets import QHBoxLayout, QLabel, QMenu, QToolButton, QWidget
 
-from app.bench.pictures.axes import whole_time
+from app.bench.pictures.time_shown import (
+    all_of_it,
+    opening_time,
+    shown_time,
+    shows_all,
+    whole_time,
+    with_moment_shown,
+)
+from app.bench.time_slider import TimeSlider
 from app.document import Document
 from app.look.icons import icon
 from app.look.palette import palette
@@ -17,6 +25,7 @@ from app.look.spacing import GAP, SPACE
 from app.sight import Sight
 from app.solving import Solution
 from app.units import units_of
+from solver import Case, Result
 
 #: What one second of play shows, s, offered at choice; the one taken at first is the nearest to the run in 20 s.
 PACES = (10e-6, 20e-6, 50e-6, 100e-6, 200e-6, 500e-6, 1e-3, 2e-3, 5e-3, 10e-3, 20e-3, 50e-3)
@@ -25,6 +34,7 @@ USUAL_PLAY = 20.0
 FINE, COARSE = 10_000, 400
 #: Pause between two pictures of play-back, ms: the pace of most screens.
 BEAT = 16
+WHOLE_TIP = "Show the whole run; or, off, its first passages, in which waves can be told apart (Home)"
 
 
 class TimeBar(QWidget):
@@ -43,27 +53,22 @@ class TimeBar(QWidget):
         self._back = self._button("Step back (Left arrow)", lambda: self.step(-1))
         self._play = self._button("Play or pause (Space)", self.toggle)
         self._on = self._button("Step on (Right arrow)", lambda: self.step(1))
-        self._slider = QSlider(Qt.Orientation.Horizontal)
-        self._slider.setRange(0, FINE)
-        self._slider.setSingleStep(FINE // COARSE)
-        self._slider.setPageStep(FINE // 20)
-        self._slider.setAccessibleName("Time of the cursor")
-        self._slider.valueChanged.connect(self._dragged)
+        self._slider = self._make_slider()
         self._clock = QLabel()
         self._clock.setAlignment(Qt.AlignmentFlag.AlignRight | Qt.AlignmentFlag.AlignVCenter)
-        self._paces = QToolButton()
-        self._paces.setProperty("role", "quiet")
-        self._paces.setToolTip("How much of the run one second of play shows.")
-        self._paces.setPopupMode(QToolButton.ToolButtonPopupMode.InstantPopup)
-        menu = QMenu(self._paces)
-        menu.aboutToShow.connect(lambda: self._fill_paces(menu))
-        self._paces.setMenu(menu)
+        self._paces = self._make_paces()
+        self.whole_run = self._button(WHOLE_TIP, self._turn_whole)
+        self.whole_run.setText("Whole run")
+        self.whole_run.setAccessibleName("Whole run")
+        self.whole_run.setProperty("role", "chip")
+        self.whole_run.setCheckable(True)
         row = QHBoxLayout(self)
         row.setContentsMargins(SPACE, GAP, SPACE, GAP)
         row.setSpacing(SPACE)
         for widget in (self._back, self._play, self._on):
             row.addWidget(widget)
         row.addWidget(self._slider, 1)
+        row.addWidget(self.whole_run)
         row.addWidget(self._clock)
         row.addWidget(self._paces)
         for source in (document, sight, solution):
@@ -100,6 +105,25 @@ class TimeBar(QWidget):
 
     # Inside -----------------------------------------------------------------------------------------------------
 
+    def _make_slider(self) -> TimeSlider:
+        slider = TimeSlider()
+        slider.setRange(0, FINE)
+        slider.setSingleStep(FINE // COARSE)
+        slider.setPageStep(FINE // 20)
+        slider.setAccessibleName("Time of the cursor")
+        slider.valueChanged.connect(self._dragged)
+        return slider
+
+    def _make_paces(self) -> QToolButton:
+        paces = QToolButton()
+        paces.setProperty("role", "quiet")
+        paces.setToolTip("How much of the run one second of play shows.")
+        paces.setPopupMode(QToolButton.ToolButtonPopupMode.InstantPopup)
+        menu = QMenu(paces)
+        menu.aboutToShow.connect(lambda: self._fill_paces(menu))
+        paces.setMenu(menu)
+        return paces
+
     def _button(self, words: str, act: Callable[[], None]) -> QToolButton:
         button = QToolButton()
         button.setProperty("role", "quiet")
@@ -109,16 +133,25 @@ class TimeBar(QWidget):
         return button
 
     def _whole(self) -> tuple[float, float]:
-        return whole_time(self._document.case, self._solution.result)
+        return whole_time(*self._of())
+
+    def _of(self) -> tuple[Case, Result | None]:
+        return self._document.case, self._solution.result
 
     def _shown_time(self) -> tuple[float, float]:
         """The times that the pictures show: play stays within them."""
-        return self._sight.time_range or self._whole()
+        return shown_time(self._sight, *self._of())
+
+    def _turn_whole(self) -> None:
+        shown = shows_all(self._sight, *self._of())
+        self._sight.set(time_range=None if shown else all_of_it(*self._of()))
+        self._look_again()  # a click has turned the button whatever it did
 
     def _pace_now(self) -> float:
         if self._pace is not None:
             return self._pace
-        wanted = (self._whole()[1] - self._whole()[0]) / USUAL_PLAY
+        low, high = opening_time(*self._of())
+        wanted = (high - low) / USUAL_PLAY
         return min(PACES, key=lambda p: abs(p - wanted) / p)
 
     def _beat(self) -> None:
@@ -133,7 +166,7 @@ class TimeBar(QWidget):
 
     def _go(self, time: float) -> None:
         low, high = self._whole()
-        self._sight.set(time=min(max(time, low), high))
+        self._sight.set(**with_moment_shown(self._sight, *self._of(), min(max(time, low), high)))
 
     def _dragged(self, value: int) -> None:
         low, high = self._whole()
@@ -162,6 +195,7 @@ class TimeBar(QWidget):
         place = self._place_on_slider()
         if self._slider.value() != place:
             self._slider.setValue(place)
+        self._show_part()
         units = units_of(self._document.project)
         end = self._whole()[1]
         unit = units.unit("time", end)
@@ -179,6 +213,13 @@ class TimeBar(QWidget):
         pace = f"{self._pace_text(self._pace_now())} ▾"
         if self._paces.text() != pace:
             self._paces.setText(pace)
+
+    def _show_part(self) -> None:
+        """How much of the run the pictures show, and the button to change it where the run is long."""
+        (start, end), (low, high) = self._whole(), self._shown_time()
+        self._slider.show_part((low - start) / (end - start), (high - start) / (end - start))
+        self.whole_run.setVisible(opening_time(*self._of()) != (start, end) or (low, high) != (start, end))
+        self.whole_run.setChecked((low, high) == (start, end))
 
     def _dress(self) -> None:
         """Icons in the colours of the palette."""

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from functools import lru_cache
 from typing import Literal
 
 from PySide6.QtGui import QFont, QFontMetrics, QGuiApplication
@@ -21,12 +22,7 @@ LEVELS: dict[Level, tuple[float, QFont.Weight]] = {
 
 def font(level: Level = "body") -> QFont:
     """A font of the scale, with figures of equal width so that columns of numbers stand in line."""
-    scale, weight = LEVELS[level]
-    made = QFont(QGuiApplication.font())
-    made.setPointSizeF(base_size() * scale)
-    made.setWeight(weight)
-    made.setFeature(QFont.Tag("tnum"), 1)
-    return made
+    return QFont(_made(level, QGuiApplication.font()))
 
 
 def widened(width: int, most: float = 1.4) -> int:
@@ -38,3 +34,14 @@ def base_size() -> float:
     """Point size of body text."""
     size = QGuiApplication.font().pointSizeF()
     return size if size > 0 else 9.0
+
+
+@lru_cache(maxsize=32)
+def _made(level: Level, of: QFont) -> QFont:
+    """The font of a level, made from the application's; kept, since pictures ask for it at every word."""
+    scale, weight = LEVELS[level]
+    made = QFont(of)
+    made.setPointSizeF(base_size() * scale)
+    made.setWeight(weight)
+    made.setFeature(QFont.Tag("tnum"), 1)
+    return made

@@ -42,7 +42,7 @@ QLineEdit[invalid="true"] {{ border: 2px solid {over}; padding: 0 {inner_focus}p
 QLineEdit[role="title"] {{ background: transparent; border: 1px solid transparent; font-weight: 600; }}
 QLineEdit[role="title"]:hover {{ background: {raised}; border: 1px solid {edge}; }}
 QLineEdit[role="title"]:focus {{ background: {raised}; border: 2px solid {accent}; }}
-QPlainTextEdit[role="notes"] {{ background: transparent; border: 1px solid transparent; padding: 0; }}
+QPlainTextEdit[role="notes"] {{ background: transparent; border: 1px solid transparent; padding: 1px; }}
 QPlainTextEdit[role="notes"]:focus {{ background: {raised}; border: 2px solid {accent}; padding: 0; }}
 QLineEdit:disabled, QComboBox:disabled {{ color: {line}; background: {paper}; }}
 QComboBox::drop-down {{ border: none; width: 20px; }}
@@ -70,6 +70,7 @@ QPushButton[role="link"] {{ background: transparent; border: none; color: {accen
     text-decoration: underline; padding: 2px; }}
 QPushButton[role="link"]:focus {{ border: 2px solid {accent}; padding: 0; }}
 QPushButton[role="choice"] {{ text-align: left; padding: {space}px {wide}px; min-height: 40px; }}
+QPushButton[role="choice"]:focus {{ padding: {space_focus}px {wide_focus}px; }}
 QPushButton::menu-indicator, QToolButton::menu-indicator {{ image: none; width: 0; }}
 
 QCheckBox:focus, QRadioButton:focus {{ outline: 2px solid {accent}; }}
@@ -118,7 +119,9 @@ def stylesheet(palette: Palette, base_size: float) -> str:
         arrow=(HERE / f"arrow_{'dark' if palette.dark else 'light'}.svg").as_posix(),
         gap=GAP,
         space=SPACE,
+        space_focus=SPACE - 1,
         wide=2 * SPACE,
+        wide_focus=2 * SPACE - 1,
         radius=RADIUS,
         inner=inner,
         inner_focus=inner - 1,

@@ -88,7 +88,12 @@ def arrivals_shown(sight: Sight, result: Result | None) -> bool:
     """Whether predicted arrivals are drawn: as chosen, and where nothing is, unless they are many."""
     if result is None:
         return False
-    return len(reflectors_of(result.case)) <= MANY if sight.arrivals is None else sight.arrivals
+    return _few(result) if sight.arrivals is None else sight.arrivals
+
+
+@lru_cache(maxsize=4)
+def _few(result: Result) -> bool:
+    return len(reflectors_of(result.case)) <= MANY
 
 
 def ordinal(number: int) -> str:

@@ -8,6 +8,7 @@ column equal widths and equal margins left and right, so equal values lie on equ
 from __future__ import annotations
 
 from dataclasses import dataclass
+from functools import lru_cache
 from itertools import pairwise
 from math import ceil, floor, log10
 
@@ -15,15 +16,11 @@ import numpy as np
 from PySide6.QtCore import QRectF
 from PySide6.QtGui import QFont, QFontMetricsF
 
-from solver.answer.result import Result
-from solver.model.derived import travel_time
 from solver.model.project import Case
 
 #: Room above the struck end for what strikes, and below the far end for what holds it, in lengths of the member.
 ROOM_ABOVE = {"drop": 0.2, "pulse": 0.17, "history": 0.17, "none": 0.04}
 ROOM_BELOW = 0.07
-#: Travel times along the member that an unsolved case without a duration shows.
-PASSES_SHOWN = 6.0
 
 
 @dataclass(frozen=True)
@@ -74,6 +71,7 @@ class Margins:
         )
 
 
+@lru_cache(maxsize=16)
 def margins_of(font: QFont) -> Margins:
     """Margins of every picture, in whole pixels, from the height of its letters."""
     metrics = QFontMetricsF(font)
@@ -92,16 +90,6 @@ def whole_distance(case: Case) -> tuple[float, float]:
     striking = sum(s.length for s in case.ram_segments)
     above = 1.06 * striking if striking else ROOM_ABOVE.get(case.load.kind, 0.1) * length
     return -above, length * (1 + ROOM_BELOW)
-
-
-def whole_time(case: Case, result: Result | None) -> tuple[float, float]:
-    """Times from the blow to the end of the run, s; of a case that is not solved yet what it asks for."""
-    if case.run.duration is not None:
-        return 0.0, case.run.duration
-    if result is not None and result.duration > 0:
-        return 0.0, result.duration
-    passes = sum(travel_time(segment, case.materials) for segment in case.member.segments)
-    return 0.0, PASSES_SHOWN * passes
 
 
 def inside(wanted: tuple[float, float] | None, whole: tuple[float, float]) -> tuple[float, float]:

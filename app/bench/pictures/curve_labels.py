@@ -51,10 +51,28 @@ def place_labels(
 
 def crosses(curve: Drawn, box: QRectF) -> bool:
     """Whether a curve runs through a box."""
-    inside = (curve.x >= box.left()) & (curve.x <= box.right())
-    ends = np.interp((box.left(), box.right()), curve.x, curve.y) if len(curve.x) else np.zeros(0)
-    heights = np.concatenate((curve.y[inside], ends))
+    heights = _over(curve, box)
     return bool(len(heights) and heights.min() < box.bottom() and heights.max() > box.top())
+
+
+def crossings(curves: Sequence[Drawn], box: QRectF) -> int:
+    """How many curves run through a box."""
+    return sum(crosses(curve, box) for curve in curves)
+
+
+def reaches(curve: Drawn, box: QRectF, away: float) -> bool:
+    """Whether a curve comes nearer than that to a box, above or below it."""
+    heights = _over(curve, box)
+    return bool(len(heights) and heights.min() < box.bottom() + away and heights.max() > box.top() - away)
+
+
+def _over(curve: Drawn, box: QRectF) -> Array:
+    """Heights of a curve over the width of a box, none where it does not reach."""
+    if not len(curve.x) or curve.x[0] > box.right() or curve.x[-1] < box.left():
+        return np.zeros(0)
+    first, last = np.searchsorted(curve.x, (box.left(), box.right()))
+    ends = np.interp((box.left(), box.right()), curve.x, curve.y)
+    return np.concatenate((curve.y[first:last], ends))
 
 
 def _row(curve: Drawn, grid: Array) -> Array:

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Sequence
+from functools import lru_cache
 
 import numpy as np
 from PySide6.QtCore import QPointF, QRectF, Qt
@@ -20,7 +21,7 @@ def put(
 ) -> QRectF:
     """Write one line with its middle at `y`, and its left end, right end or middle at `x`. Gives the box it fills."""
     metrics = QFontMetricsF(painter.font())
-    width, height = metrics.horizontalAdvance(text), metrics.height()
+    width, height = width_of(text, painter.font()), metrics.height()
     left = x - width if align & Qt.AlignmentFlag.AlignRight else x
     if align & Qt.AlignmentFlag.AlignHCenter:
         left = x - width / 2
@@ -41,7 +42,7 @@ def put_on(
 ) -> None:
     """As `put`, with a rim in the ground's colour so that the words can be read over curves and fields."""
     metrics = QFontMetricsF(painter.font())
-    width = metrics.horizontalAdvance(text)
+    width = width_of(text, painter.font())
     left = x - width if align & Qt.AlignmentFlag.AlignRight else x
     if align & Qt.AlignmentFlag.AlignHCenter:
         left = x - width / 2
@@ -51,6 +52,12 @@ def put_on(
     for across, up in RIM:
         painter.drawText(QPointF(left + across, base + up), text)
     put(painter, x, y, text, colour, align)
+
+
+@lru_cache(maxsize=2048)
+def width_of(text: str, font: QFont) -> float:
+    """Pixels that a line takes. Kept: the same numbers stand on the axes of every picture, and shaping them is slow."""
+    return QFontMetricsF(font).horizontalAdvance(text)
 
 
 def fitted(text: str, font: QFont, width: float) -> str:

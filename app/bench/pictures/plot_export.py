@@ -7,23 +7,20 @@ from collections.abc import Callable
 from io import StringIO
 from itertools import zip_longest
 from pathlib import Path
-from typing import TYPE_CHECKING
 
 from PySide6.QtCore import QBuffer, QByteArray, QIODevice, QSaveFile, QSize
 from PySide6.QtGui import QColor, QImage, QPainter
 from PySide6.QtSvg import QSvgGenerator
 from PySide6.QtWidgets import QFileDialog, QMenu, QMessageBox
 
+from app.bench.pictures.layers import Layered, Table
 from app.look.palette import palette
-
-if TYPE_CHECKING:
-    from app.bench.pictures.picture import Picture, Table
 
 #: Pixels of a saved PNG for each pixel on the screen, so that it can be printed.
 PNG_SCALE = 2
 
 
-def add_export_actions(menu: QMenu, picture: Picture) -> None:
+def add_export_actions(menu: QMenu, picture: Layered) -> None:
     """Three actions that save what the picture shows."""
     numbers = menu.addAction("Save the numbers as CSV…", lambda: _ask(picture, "csv"))
     numbers.setEnabled(picture.table() is not None)
@@ -31,7 +28,7 @@ def add_export_actions(menu: QMenu, picture: Picture) -> None:
     menu.addAction("Save the picture as SVG…", lambda: _ask(picture, "svg"))
 
 
-def save(picture: Picture, path: Path) -> None:
+def save(picture: Layered, path: Path) -> None:
     """Write the picture in the format that the name's ending says. Raises `OSError` with a sentence."""
     table = picture.table()
     if path.suffix == ".csv":
@@ -53,7 +50,7 @@ def csv_of(table: Table) -> str:
     return text.getvalue()
 
 
-def png_of(picture: Picture) -> bytes:
+def png_of(picture: Layered) -> bytes:
     image = QImage(picture.size() * PNG_SCALE, QImage.Format.Format_RGB32)
     image.setDevicePixelRatio(PNG_SCALE)
     image.fill(QColor(palette().paper))
@@ -64,7 +61,7 @@ def png_of(picture: Picture) -> bytes:
     return _through_buffer(lambda buffer: image.save(buffer, "PNG"))  # type: ignore[call-overload]
 
 
-def svg_of(picture: Picture) -> bytes:
+def svg_of(picture: Layered) -> bytes:
     def write(buffer: QBuffer) -> None:
         generator = QSvgGenerator()
         generator.setOutputDevice(buffer)
@@ -87,7 +84,7 @@ def _through_buffer(write: Callable[[QBuffer], object]) -> bytes:
     return bytes(data.data())
 
 
-def _ask(picture: Picture, ending: str) -> None:
+def _ask(picture: Layered, ending: str) -> None:
     name = f"{picture.case.name} {picture.accessibleName().lower()}.{ending}"
     safe = "".join(c if c.isalnum() or c in " .-_" else "_" for c in name)
     chosen, _ = QFileDialog.getSaveFileName(picture, f"Save as {ending.upper()}", safe, f"*.{ending}")

@@ -2,13 +2,12 @@
 
 from __future__ import annotations
 
-from collections.abc import Sequence
 from dataclasses import replace
 from typing import Any
 
 import numpy as np
 from PySide6.QtCore import QEvent, QPointF, QRectF, Qt
-from PySide6.QtGui import QColor, QFontMetricsF, QMouseEvent, QPainter, QRegion
+from PySide6.QtGui import QFontMetricsF, QMouseEvent, QPainter, QRegion
 from PySide6.QtWidgets import QMenu, QWidget
 
 from app.bench.member.glyphs import pen
@@ -23,13 +22,14 @@ from app.bench.pictures.arrival_lines import Line, all_named, arrivals_shown, li
 from app.bench.pictures.axes import Axis, Margins, margins_of
 from app.bench.pictures.axis_drawing import horizontal_ticks, in_units, value_ticks
 from app.bench.pictures.cursor import between, draw_between, draw_cursor, draw_pinned_moment
-from app.bench.pictures.curve_labels import Drawn, Wanted, crosses, place_labels
+from app.bench.pictures.curve_labels import Drawn
 from app.bench.pictures.curves import polygon, thinned
-from app.bench.pictures.lettering import CENTRE, put, put_on
+from app.bench.pictures.lettering import CENTRE, put
 from app.bench.pictures.line_styles import over_pen
 from app.bench.pictures.picture import Picture, Table
 from app.bench.strips.contents import CHIPS, OF_ONE_GAUGE, Content, Curve, content_of, content_over, gauge_of
-from app.bench.strips.marks import draw_peaks, draw_returns, name_returns
+from app.bench.strips.marks import draw_peaks, draw_returns, fill_between
+from app.bench.strips.naming import Names
 from app.document import Document
 from app.laid_over import LaidOver
 from app.look.palette import palette
@@ -62,6 +62,7 @@ class Strip(Picture):
         self.setAccessibleName(f"{CHIPS[self.kind]} through time")
         self.setCursor(Qt.CursorShape.CrossCursor)
         self.setMouseTracking(True)
+        self._names = Names()
         if laid_over is not None:
             laid_over.changed.connect(self.look_again)
 
@@ -159,7 +160,11 @@ class Strip(Picture):
         factor = self._factor(content, max(-low, high))
         span = (high - low) or 1.0 / factor
         low, high = (low - 0.08 * span) * factor, (high + 0.08 * span) * factor
-        return Axis(low, high, plot.bottom(), -plot.height())
+        return Axis(low, high, plot.bottom(), self._band(content) - plot.height())
+
+    def _band(self, content: Content) -> float:
+        """Pixels at the top that are kept for the marks of 2L/c, so that no curve runs through them."""
+        return QFontMetricsF(self.font()).height() if len(content.ticks) > 1 else 0.0
 
     def _factor(self, content: Content, near: float) -> float:
         return float(self.units.number(1.0, content.dimension, near))
@@ -195,7 +200,7 @@ class Strip(Picture):
         painter.setClipRect(plot)
         drawn = [self._drawn(c, time, values, factor) for c in content.curves]
         if content.filled and len(drawn) >= 2:
-            self._fill_between(painter, drawn, content.curves[0].hue)
+            fill_between(painter, drawn[0], drawn[1], plot, content.curves[0].hue)
         painter.setRenderHint(QPainter.RenderHint.Antialiasing)
         painter.setBrush(Qt.BrushStyle.NoBrush)
         for curve, shape in zip(content.curves, drawn, strict=True):
@@ -207,9 +212,9 @@ class Strip(Picture):
         gauge = self.gauge_shown()
         if gauge is not None and self.result is not None:
             draw_ticks(painter, self.lines(), self.result.case.gauges[gauge].position, time, plot)
-        room = plot.adjusted(0, 0, 0, -TICK if self.lines() else 0)
+        room = plot.adjusted(0, self._band(content), 0, -TICK if self.lines() else 0)
         taken = self._draw_peaks(painter, content, time, values, factor)
-        self._draw_names(painter, content, drawn, room, taken)
+        self._names.draw(painter, content, drawn, room, taken)
         painter.restore()
 
     def _draw_peaks(
@@ -291,53 +296,6 @@ class Strip(Picture):
         painter.rotate(-90)
         put(painter, 0, 0, unit, palette().soft_ink, CENTRE)
         painter.restore()
-
-    def _fill_between(self, painter: QPainter, drawn: list[Drawn], hue: str) -> None:
-        """A point a pixel and no smoothing: thousands of points filled smoothly took longer than all the rest."""
-        first, second = drawn[:2]
-        plot = self.plot()  # of a record that runs far beyond it, only what lies in it
-        left = max(first.x[0], second.x[0], plot.left())
-        right = min(first.x[-1], second.x[-1], plot.right())
-        x = np.arange(left, right, 1.0)
-        upper, lower = np.interp(x, first.x, first.y), np.interp(x, second.x, second.y)
-        colour = QColor(hue)
-        colour.setAlphaF(0.16)
-        painter.setRenderHint(QPainter.RenderHint.Antialiasing, False)
-        painter.setPen(Qt.PenStyle.NoPen)
-        painter.setBrush(colour)
-        shape = polygon(np.concatenate((x, x[::-1])), np.concatenate((upper, lower[::-1])))
-        painter.drawPolygon(shape, Qt.FillRule.WindingFill)
-
-    def _draw_names(
-        self,
-        painter: QPainter,
-        content: Content,
-        drawn: list[Drawn],
-        plot: QRectF,
-        taken: Sequence[QRectF],
-    ) -> None:
-        colours, metrics = palette(), QFontMetricsF(painter.font())
-        height = metrics.height()
-        # of a pair that is laid over, the first one's name tells for both
-        names = [(i, c.name, c.hue) for i, c in enumerate(content.curves) if c.over is None or not c.faint]
-        room = plot
-        if len(content.ticks) >= 2:
-            name_returns(painter, content, plot, self.time_axis(), plot.top() + 4 + 0.1 * height)
-            room = plot.adjusted(0, height * 0.8, 0, 0)
-        wanted = [Wanted(i, metrics.horizontalAdvance(name)) for i, name, _ in names]
-        if content.filled and len(drawn) >= 2:
-            middle = Drawn(drawn[0].x, (drawn[0].y + np.interp(drawn[0].x, drawn[1].x, drawn[1].y)) / 2)
-            apart = np.abs(drawn[0].y - middle.y)
-            wide = Drawn(middle.x[apart > 3], np.maximum(drawn[0].y, 2 * middle.y - drawn[0].y)[apart > 3])
-            drawn = [*drawn, wide]
-            names.append((len(drawn) - 1, content.filled, colours.soft_ink))
-            wanted.append(Wanted(len(drawn) - 1, metrics.horizontalAdvance(content.filled)))
-        boxes = place_labels(drawn, wanted, room, height, taken)
-        for (curve, name, hue), box in zip(names, boxes, strict=True):
-            # what names an area and finds no free place in it is left out; it would strike through a curve
-            of_area = curve >= len(content.curves)
-            if box is not None and not (of_area and any(crosses(d, box) for d in drawn[:2])):
-                put_on(painter, box.left(), box.center().y(), name, hue, colours.paper)
 
     def table(self) -> Table | None:
         """Time and every curve, in the units and sign of the screen; all steps, nothing thinned."""
