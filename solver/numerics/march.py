@@ -37,12 +37,14 @@ def new_velocities(push, weight, gain, v, w, force):
 
 
 @kernel
-def inertia_velocities(rod, v, w, force, load, driven, u, dt):
+def inertia_velocities(rod, v, w, force, load, driven, u, dt, step):
     """Love's rod: the tridiagonal mass matrix solved by one sweep down and one up.
 
-    A node whose velocity is given (struck end driven, far end fixed) is no unknown: the factors leave it out.
+    A node whose velocity is given (struck end driven, far end fixed) is no unknown: the factors leave it out. For the
+    first step see `special_nodes` and `Rod.opening`.
     """
     last = len(v) - 1
+    share = 0.5 if step == 0 else 1.0
     for i in range(last + 1):
         pull = rod.weight[i]
         if i < last:
@@ -53,7 +55,10 @@ def inertia_velocities(rod, v, w, force, load, driven, u, dt):
     w[0] += 0.0 if driven else load
     for s in range(len(rod.special)):
         i = rod.special[s]
-        w[i] -= rod.spring[s] * u[i] + rod.dashpot[s] * v[i]
+        w[i] -= rod.spring[s] * u[i] + share * rod.dashpot[s] * v[i]
+    if step == 0:
+        for i in range(len(rod.opening)):
+            w[i] += rod.opening[i]
     if driven:
         w[0] = (load - v[0]) * rod.pivot[0]
         w[1] += rod.inertia[0] * (load - v[0]) / dt
@@ -191,12 +196,12 @@ def march(rod, ground, bounds, motion, ext, rec, sums, load, first, count, strid
         driven = step < rod.driven[1]
         forces_and_extremes(rod, ext, u, v, force, dt, rec.flags, note, step)
         if inert:
-            inertia_velocities(rod, v, w, force, load[n], driven, u, dt)
+            inertia_velocities(rod, v, w, force, load[n], driven, u, dt, step)
         else:
             new_velocities(push, weight, gain, v, w, force)
             if not driven:
                 w[head] += push[head] * load[n]
-        if step == 0:
+        if step == 0 and not inert:
             for i in range(len(rod.opening)):
                 w[i] += push[i] * rod.opening[i]
         if special:

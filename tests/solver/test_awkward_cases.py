@@ -340,3 +340,21 @@ def test_every_gauge_begins_at_its_own_force_of_rest() -> None:
     for gauge in result.gauges.values():
         assert gauge.force[0] == pytest.approx(gauge.rest_force, abs=1e-12 * weight)
         assert gauge.rest_force == pytest.approx(-weight * gauge.position / LENGTH, abs=1e-3 * weight)
+
+
+@pytest.mark.parametrize("kind", ["dashpot", "spring"])
+def test_lateral_inertia_with_a_member_that_moves_into_what_holds_it(kind: str) -> None:
+    """What holds a node acts from time 0 on, half as long in the first step; a linear case: 1e-10."""
+    held = {"position": 5.0, "kind": kind, "value": 4e5 if kind == "dashpot" else 2e9}
+    rod = part(of="thick", section={"shape": "solid_round", "diameter": 0.2})
+    result = solved(
+        {"kind": "none"},
+        rod,
+        materials=[material("thick", poisson_ratio=0.3)],
+        attachments=[held],
+        lateral_inertia=True,
+        initial_velocity=1.0,
+        dx=0.2,
+        duration=0.01,
+    )
+    assert result.ledger.residual < 1e-10
