@@ -72,11 +72,12 @@ class Section:
 
 @dataclass(frozen=True)
 class TitlePage:
-    """What stands on the first page: pairs of word and text, and a picture file for the logo."""
+    """What stands on the first page: pairs of word and text, the answer in a line or two, a picture for the logo."""
 
     title: str
     subtitle: str
     particulars: tuple[tuple[str, str], ...]
+    verdict: tuple[str, ...]
     caution: str
     logo: bytes | None = None
 

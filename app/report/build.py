@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import io
 from collections.abc import Callable, Iterator
+from dataclasses import replace
 from datetime import datetime
 from pathlib import Path
 
@@ -12,7 +13,7 @@ from PIL import Image
 from app import __version__
 from app.export.fingerprint import input_hash
 from app.report import section_closing as closing
-from app.report.blocks import Block, Paragraph, Report, Section, TitlePage
+from app.report.blocks import Block, Paragraph, Picture, Report, Section, Table, TitlePage
 from app.report.choices import PARTICULARS, SECTIONS, report_choices, written_date
 from app.report.decimals import with_commas
 from app.report.outcome import Material, Solved
@@ -20,8 +21,9 @@ from app.report.section_input import analysed
 from app.report.section_model import model
 from app.report.section_results import results
 from app.report.section_summary import summary
+from app.report.verdict import verdict_lines
 from app.units import units_of
-from app.words import LIMIT_CAUTION, MODEL_CAUTION
+from app.words import AXIAL_CAUTION, LIMIT_CAUTION, MODEL_CAUTION
 from solver import Project
 
 WRITERS: dict[str, Callable[[Material], Iterator[Block]]] = {
@@ -64,8 +66,26 @@ def build_report(
     title = " ".join(project.title.split()) or "Untitled project"
     footer = f"{title} · Striketrace {__version__} · {written_date(date, choices.dates)}"
     front = _front(of, title, folder or (path.parent if path else None))
-    report = Report(front, tuple(sections), footer, choices.paper)
+    report = Report(front, numbered(sections), footer, choices.paper)
     return with_commas(report, project) if choices.decimal_comma else report
+
+
+def numbered(sections: list[Section]) -> tuple[Section, ...]:
+    """Figures and tables with their numbers before their captions."""
+    counts = {"Figure": 0, "Table": 0}
+
+    def caption(word: str, text: str) -> str:
+        counts[word] += 1
+        return f"{word} {counts[word]}. {text}"
+
+    def told(block: Block) -> Block:
+        if isinstance(block, Picture):
+            return replace(block, caption=caption("Figure", block.caption))
+        if isinstance(block, Table) and block.caption:
+            return replace(block, caption=caption("Table", block.caption))
+        return block
+
+    return tuple(replace(section, blocks=tuple(map(told, section.blocks))) for section in sections)
 
 
 def _front(of: Material, title: str, folder: Path | None) -> TitlePage:
@@ -73,18 +93,22 @@ def _front(of: Material, title: str, folder: Path | None) -> TitlePage:
     told = [(PARTICULARS[key], choices.particulars[key]) for key in PARTICULARS if key in choices.particulars]
     told += [
         ("Date", written_date(of.date, choices.dates)),
-        ("Cases", str(len(of.cases))),
         ("Program", f"Striketrace {__version__}"),
         ("Input", f"SHA-256 {of.hash}"),
     ]
-    caution = f"{MODEL_CAUTION} {LIMIT_CAUTION}"
+    caution = f"{MODEL_CAUTION} {LIMIT_CAUTION} {AXIAL_CAUTION}"
     logo = None
     if choices.logo:
         logo = _logo(choices.logo, folder)
         if logo is None:
             caution += f" The picture '{choices.logo}' could not be read as a logo."
     return TitlePage(
-        title, "Stress waves under a blow: a prediction by wave analysis", tuple(told), caution, logo
+        title,
+        "Stress waves under a blow: a prediction by wave analysis",
+        tuple(told),
+        verdict_lines(of.project, of.cases),
+        caution,
+        logo,
     )
 
 

@@ -8,7 +8,7 @@ from datetime import datetime
 from pathlib import Path
 
 from app.export.records_options import date_of, positive
-from app.units import units_of
+from app.units import NO_BREAK, units_of
 from app.usable_project import load_usable
 from solver import ProjectError
 
@@ -87,7 +87,8 @@ def run_report(given: argparse.Namespace) -> int:
         if one.result is None:
             status = _complain(f"Case '{one.case.name}' cannot be solved: {one.refusal}", FAILED)
     if not given.quiet:
-        print(f"{given.out}: {len(cases)} case{'s' if len(cases) > 1 else ''}")
+        told = " ".join(report.front.verdict)
+        print(f"{given.out}: {len(cases)} case{'s' if len(cases) > 1 else ''}. {told}".replace(NO_BREAK, " "))
     return status
 
 

@@ -32,15 +32,24 @@ UNTOLD = (
 )
 
 
+#: Numbers are told with as few digits as stay this near to them, as a share; six at most.
+NEAR = 5e-5
+
+
 def exact(value: float, dimension: str, units: Units) -> str:
-    """A number as it was given, up to six digits, with its unit."""
+    """A number as it was given, with its unit. Digits that only come from changing units are left out."""
     unit = units.unit(dimension, value)
-    text = units.text(value, dimension, value)
+    number = float(units.number(value, dimension, value))
+    short = next(
+        (s for s in (float(f"{number:.{n}g}") for n in (3, 4, 5)) if abs(s - number) <= NEAR * abs(number)),
+        number,
+    )
+    text = units.text(value * (short / number) if number else value, dimension, value)
     return f"{text}{NO_BREAK}{unit}" if unit else text
 
 
-def as_given(project: Project, pointer: str, units: Units) -> str:
-    """The value at a JSON pointer of the project, in the units shown where it is a declared quantity."""
+def as_given(project: Project, pointer: str, units: Units) -> tuple[str, str]:
+    """The label of the value at a JSON pointer, and the value, in the units shown where it is a declared quantity."""
     node: Any = project
     parent, name = node, ""
     for part in parts_of(pointer):
@@ -49,9 +58,10 @@ def as_given(project: Project, pointer: str, units: Units) -> str:
     quantity = None
     if isinstance(parent, BaseModel) and name in type(parent).model_fields:
         quantity = quantity_of(type(parent), name)
+    label = quantity.label if quantity else name.replace("_", " ")
     if isinstance(node, int | float) and not isinstance(node, bool):
-        return exact(node, quantity.dimension if quantity else "none", units)
-    return "–" if isinstance(node, BaseModel) or node is None else str(node).replace("_", " ")
+        return label, exact(node, quantity.dimension if quantity else "none", units)
+    return label, "–" if isinstance(node, BaseModel) or node is None else str(node).replace("_", " ")
 
 
 def rows_of(part: BaseModel, units: Units, dimension: str = "none") -> Iterator[tuple[str, str]]:
@@ -138,7 +148,7 @@ def material_table(project: Project, units: Units) -> Table:
     return Table(head, tuple(rows), (0.18, 0.13, 0.13, 0.12, 0.18, 0.13, 0.13), "Materials")
 
 
-def load_table(case: Case, units: Units) -> Table:
+def load_rows(case: Case, units: Units) -> tuple[Row, ...]:
     """The blow, with its train."""
     load = case.load
     dimension = getattr(load, "quantity", "none")
@@ -158,7 +168,7 @@ def load_table(case: Case, units: Units) -> Table:
         rows.append(("Largest value", exact(float(samples.values.max()), load.quantity, units)))
     if case.run.initial_velocity is not None:
         rows.append(("Initial velocity of the member", exact(case.run.initial_velocity, "velocity", units)))
-    return Table(("Load", ""), tuple(rows), (0.4, 0.6), "What strikes")
+    return tuple(rows)
 
 
 def _cushion(word: str, cushion: Cushion | None, units: Units) -> list[Row]:

@@ -42,6 +42,7 @@ def html_of(report: Report) -> str:
     rows = "".join(
         f"<tr><td>{_text(word)}</td><td>{_text(told)}</td></tr>" for word, told in front.particulars
     )
+    verdict = "".join(f'<p class="caution">{_text(line)}</p>' for line in front.verdict)
     contents = "".join(
         f'<li><a href="#{section.key}">{_text(section.title)}</a></li>' for section in report.sections
     )
@@ -50,7 +51,7 @@ def html_of(report: Report) -> str:
         f'<!DOCTYPE html>\n<html lang="en"><head><meta charset="utf-8"><title>{title}</title>'
         f"<style>{STYLE.replace('PAPER', report.paper)}</style></head><body>{logo}"
         f'<h1 dir="auto">{title}</h1><p>{_text(front.subtitle)}</p><table class="particulars"><tbody>{rows}</tbody>'
-        f'</table><p class="caution">{_text(front.caution)}</p><ol>{contents}</ol>{body}'
+        f'</table>{verdict}<p class="caution">{_text(front.caution)}</p><ol>{contents}</ol>{body}'
         f'<footer dir="auto">{_text(report.footer)}</footer></body></html>\n'
     )
 

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import json
 import re
 import unicodedata
 from functools import lru_cache
@@ -61,9 +62,35 @@ def printable(text: str, bold: bool = False) -> str:
     """
     known = register_fonts()[BOLD if bold else REGULAR]
     text = UNSEEN.sub("", unicodedata.normalize("NFC", text))
-    if any(unicodedata.bidirectional(c) in RIGHT_TO_LEFT for c in text):
+    if _turns(text):
         text = "\n".join(_turned(line) for line in text.split("\n"))
     return "".join(c if ord(c) in known or c == "\n" else " " if c.isspace() else MISSING for c in text)
+
+
+def broken(text: str, size: float, room: float) -> list[str]:
+    """A line in pieces that are no wider than `room` points; at least one piece."""
+    pieces, start, wide = [], 0, 0.0
+    for at, letter in enumerate(text):
+        step = _letter_width(letter, size)
+        if wide + step > room and at > start:
+            pieces.append(text[start:at])
+            start, wide = at, 0.0
+        wide += step
+    return [*pieces, text[start:]]
+
+
+@lru_cache(maxsize=4096)
+def _letter_width(letter: str, size: float) -> float:
+    return text_width(letter, size)
+
+
+def escaped(text: str) -> str:
+    """Text of which every letter can be printed and read back: others as JSON writes them."""
+    return "".join(c if printable(c) == c and not _turns(c) else json.dumps(c)[1:-1] for c in text)
+
+
+def _turns(text: str) -> bool:
+    return any(unicodedata.bidirectional(c) in RIGHT_TO_LEFT for c in text)
 
 
 def _turned(line: str) -> str:

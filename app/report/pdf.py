@@ -29,7 +29,7 @@ from app.report.pdf_flow import flow_of, heading, key_value_table, paragraph
 from app.report.pdf_styles import SOFT, contents_styles, styles
 
 SIZES = {"A4": A4, "Letter": LETTER}
-MARGIN, FOOT = 20 * mm, 12 * mm
+MARGIN, HIGH, FOOT = 20 * mm, 16 * mm, 9 * mm
 
 
 def pdf_of(report: Report, date: datetime) -> bytes:
@@ -51,8 +51,8 @@ class _Pages(BaseDocTemplate):
             pagesize=size,
             leftMargin=MARGIN,
             rightMargin=MARGIN,
-            topMargin=MARGIN,
-            bottomMargin=MARGIN,
+            topMargin=HIGH,
+            bottomMargin=HIGH,
             title=printable(report.front.title),
             author="",
             subject=printable(report.front.subtitle),
@@ -61,7 +61,7 @@ class _Pages(BaseDocTemplate):
         )
         self._report, self._date = report, date
         self._pages = self._last = 0
-        frame = Frame(MARGIN, MARGIN, self.width, self.height, 0, 0, 0, 0)
+        frame = Frame(MARGIN, HIGH, self.width, self.height, 0, 0, 0, 0)
         self.addPageTemplates([PageTemplate("plain", [frame], onPage=self._furnish)])
 
     def _furnish(self, canvas: Canvas, _document: Any) -> None:
@@ -98,7 +98,7 @@ class _Pages(BaseDocTemplate):
 def _story(report: Report, width: float) -> Iterator[Flowable]:
     yield from _front(report, width)
     for number, section in enumerate(report.sections, 1):
-        yield PageBreak() if section.key in ("input", "results", "appendix") else Spacer(1, 14)
+        yield PageBreak() if section.key in ("input", "appendix") else Spacer(1, 14)
         yield from flow_of(section, number, width)
 
 
@@ -108,18 +108,17 @@ def _front(report: Report, width: float) -> Iterator[Flowable]:
         wide, high = ImageReader(io.BytesIO(front.logo)).getSize()
         share = min(150 / wide, 60 / high)
         yield Image(io.BytesIO(front.logo), wide * share, high * share, hAlign="LEFT")
-    yield Spacer(1, 40)
+    yield Spacer(1, 10)
     yield paragraph(front.title[:600], styles()["title"], bold=True)
     yield Spacer(1, 6)
     yield paragraph(front.subtitle, styles()["subtitle"])
-    yield Spacer(1, 22)
+    yield Spacer(1, 12)
     yield key_value_table(front.particulars, width)
-    yield Spacer(1, 16)
-    yield paragraph(front.caution, styles()["caution"])
-    yield Spacer(1, 22)
+    yield Spacer(1, 8)
+    yield from (paragraph(line, styles()["caution"], bold=True) for line in front.verdict)
+    yield paragraph(front.caution, styles()["body"])
     yield heading("Contents", 2, None)
     contents = TableOfContents()
     contents.levelStyles = contents_styles()
     contents.dotsMinLevel = 0
     yield contents
-    yield PageBreak()

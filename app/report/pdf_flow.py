@@ -19,15 +19,20 @@ from reportlab.platypus import Paragraph as Words
 
 from app.report.blocks import Block, Bullets, Heading, Listing, Paragraph, Picture, Section, Table
 from app.report.figures.pdf import FigureFlowable
-from app.report.lettering import printable
+from app.report.lettering import broken, escaped, printable
 from app.report.pdf_styles import GRID, HEAD, INK, SOFT, styles
 
 #: A cell with more letters is cut: a row must fit on a page.
 LONGEST_CELL = 1500
-#: Letters in a line of a listing, and lines of it that are printed, and that are laid out at once.
-LISTING_WIDTH, LISTING_LINES, PIECE = 118, 6000, 20
+#: Lines of a listing that are printed, and that are laid out at once.
+LISTING_LINES, PIECE = 6000, 20
+GOES_ON = "↩"
 #: Bookmarks with more letters than this are cut.
 LONGEST_ENTRY = 90
+#: A heading is kept with all that follows down to a figure, where that is less than this, points.
+MOST_KEPT = 520.0
+#: A heading with no more than this below it does not stand without the next heading.
+SHORT = 90.0
 
 
 def markup(text: str, bold: bool = False) -> str:
@@ -51,19 +56,54 @@ def heading(text: str, level: int, key: str | None) -> Words:
 
 
 def flow_of(section: Section, number: int, width: float) -> Iterator[Flowable]:
-    """A section with its heading. Headings wait until what follows them is known to fit below."""
-    waiting: list[Flowable] = [heading(f"{number}. {section.title}", 1, section.key)]
+    """A section with its heading. Headings stand on the page of what they lead to: text up to a figure or table, with
+    it where that is not most of a page."""
+    first = heading(f"{number}. {section.title}", 1, section.key)
+    parts: list[tuple[Block | None, list[Flowable]]] = [(None, [first])]
     for index, block in enumerate(section.blocks):
         if isinstance(block, Heading):
-            waiting.append(heading(block.text, block.level, f"{section.key}-{index}"))
-            continue
-        made = list(_made(block, width))
-        lead = made[:-1] if isinstance(block, Table) else []
-        need = sum(_height(f, width) for f in (*waiting, *lead)) + _least(made[len(lead)], width)
-        yield CondPageBreak(need)
-        yield from (*waiting, *made)
-        waiting = []
-    yield from waiting
+            parts.append((block, [heading(block.text, block.level, f"{section.key}-{index}")]))
+        else:
+            parts.append((block, list(_made(block, width))))
+    for index, (kind, made) in enumerate(parts):
+        if _leads(kind):
+            if index and _leads(parts[index - 1][0]):
+                yield from made  # it is kept with the heading before it
+                continue
+            yield CondPageBreak(_room_below(parts[index:], width))
+        elif isinstance(kind, Table):
+            yield CondPageBreak(_room_for(kind, made, width))
+        yield from made
+
+
+def _leads(block: Block | None) -> bool:
+    return block is None or isinstance(block, Heading)
+
+
+def _room_below(parts: Sequence[tuple[Block | None, list[Flowable]]], width: float) -> float:
+    """What a heading needs below it: the least, or all down to the first figure or table."""
+    whole = least = 0.0
+    text = False
+    for block, made in parts:
+        if _leads(block) and text and whole > SHORT:
+            break
+        if block is not None and not _leads(block):
+            least = least or whole + _room_for(block, made, width)
+        text = text or not _leads(block)
+        whole += _room_for(block, made, width) if isinstance(block, Table) else _heights(made, width)
+        if isinstance(block, Picture | Table):
+            break
+    return whole if whole < MOST_KEPT else max(least, 60.0)
+
+
+def _room_for(block: Block | None, made: list[Flowable], width: float) -> float:
+    """The least of a block that may stand at the end of a page."""
+    lead = made[:-1] if isinstance(block, Table) else []
+    return _heights(lead, width) + _least(made[len(lead)], width)
+
+
+def _heights(made: Sequence[Flowable], width: float) -> float:
+    return sum(_height(flowable, width) for flowable in made)
 
 
 def _height(flowable: Flowable, width: float) -> float:
@@ -92,9 +132,11 @@ def _made(block: Block, width: float) -> Iterator[Flowable]:
                 yield paragraph(block.caption, look["caption"], bold=True)
             yield _table(block, width)
         case Picture():
-            yield KeepTogether([FigureFlowable(block.figure), paragraph(block.caption, look["below"])])
+            yield KeepTogether(
+                [Spacer(1, 6), FigureFlowable(block.figure), paragraph(block.caption, look["below"])]
+            )
         case Listing():
-            yield from _listing(block.text)
+            yield from _listing(block.text, width)
 
 
 def _table(table: Table, width: float) -> LongTable:
@@ -135,15 +177,18 @@ def _short(text: str) -> str:
     return text if len(text) <= LONGEST_CELL else text[:LONGEST_CELL] + "…"
 
 
-def _listing(text: str) -> Iterator[Flowable]:
-    """Lines as they are, long ones broken; in pieces, since a long piece is laid out anew at every page."""
+def _listing(text: str, width: float) -> Iterator[Flowable]:
+    """Lines as they are, long ones broken and marked; in pieces, since a long piece is laid out anew at every page."""
     lines: list[str] = []
-    for whole in text.rstrip("\n").split("\n"):
-        lines += [whole[i : i + LISTING_WIDTH] for i in range(0, max(len(whole), 1), LISTING_WIDTH)]
+    for whole in map(escaped, text.rstrip("\n").split("\n")):
+        pieces = broken(whole, styles()["listing"].fontSize, width - 10)
+        lines += [*(piece + GOES_ON for piece in pieces[:-1]), pieces[-1]]
+    if any(line.endswith(GOES_ON) for line in lines):
+        yield paragraph(f"A line that ends in {GOES_ON} goes on in the next one.", styles()["small"])
     left_out = len(lines) - LISTING_LINES
     if left_out > 0:
         lines = [*lines[:LISTING_LINES], f"… {left_out} more lines stand in the project's file alone."]
     for first in range(0, len(lines), PIECE):
-        piece = "\n".join(map(printable, lines[first : first + PIECE]))
+        piece = "\n".join(lines[first : first + PIECE])
         yield Preformatted(piece, styles()["listing"], dedent=0)
     yield Spacer(1, 8)

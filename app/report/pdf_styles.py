@@ -61,9 +61,9 @@ def contents_styles() -> list[ParagraphStyle]:
             f"contents{level}",
             fontName=BOLD if level == 0 else REGULAR,
             fontSize=8.5,
-            leading=12,
+            leading=10.5,
             leftIndent=14 * level,
-            spaceBefore=4 if level == 0 else 0,
+            spaceBefore=1 if level == 0 else 0,
             textColor=INK,
         )
         for level in (0, 1)

@@ -11,7 +11,9 @@ from app import __version__
 from app.limit_words import SIGNS, TO_BE_CONFIRMED, published, what_it_rests_on
 from app.report.blocks import Block, Bullets, Heading, Listing, Paragraph, Table
 from app.report.described import exact
+from app.report.input_text import input_text
 from app.report.outcome import Material, Solved
+from app.report.verdict import typical_lines
 from app.units import Units
 from app.words import (
     AXIAL_CAUTION,
@@ -20,10 +22,8 @@ from app.words import (
     MODEL_CAUTION,
     caution,
     percent,
-    quality,
     warning,
 )
-from solver import MeshCheck, project_to_text
 from solver.answer.cautions import cautions_of
 from solver.model.limits import ARTICLE, TO_CONFIRM
 
@@ -73,17 +73,41 @@ def quality_section(of: Material) -> Iterator[Block]:
         "These figures judge the computation, not the model: how fine it is, whether the energy put in is found "
         "again, and what changes where elements are half as long."
     )
-    for one in of.cases:
-        if one.findings is None:
-            continue
-        yield Heading(f"Case: {one.case.name}", 3)
-        yield Bullets(quality(one.findings.quality, of.units))
+    solved = [one for one in of.cases if one.findings is not None]
+    yield _runs(solved, of.units)
+    checked = [one for one in solved if one.mesh is not None]
+    if checked:
+        yield _meshes(checked, of.units)
+    unchecked = [one.case.name for one in solved if one.mesh is None]
+    if unchecked:
+        yield Paragraph(f"The check on a finer mesh was not made for: {', '.join(unchecked)}.")
+    for one in solved:
+        assert one.findings is not None
+        if one.findings.remarks:
+            yield Heading(f"Case: {one.case.name}", 3)
         for remark in one.findings.remarks:
             yield Paragraph(f"! {warning(remark, of.units)}", "caution")
-        if one.mesh is not None:
-            yield _mesh(one.mesh, of.units)
-        else:
-            yield Paragraph("The check on a finer mesh was not made.")
+
+
+def _runs(cases: list[Solved], units: Units) -> Table:
+    """How each case was computed."""
+    rows = []
+    for one in cases:
+        assert one.findings is not None
+        run = one.findings.quality
+        ends = "at rest" if run.at_rest else "still moves"
+        rows.append(
+            (
+                one.case.name,
+                str(run.elements),
+                f"{run.steps} of {units.show(run.time_step, 'time')}",
+                f"{run.courant_worst:.4f}",
+                f"{100 * run.energy_residual:.2g} %",
+                ends if run.finished else "stopped",
+            )
+        )
+    head = ("Case", "Elements", "Steps", "Worst Courant number", "Energy that does not close", "At the end")
+    return Table(head, tuple(rows), (0.26, 0.12, 0.18, 0.14, 0.16, 0.14), "Mesh, step and energy")
 
 
 FIGURES = {
@@ -94,15 +118,29 @@ FIGURES = {
 }
 
 
-def _mesh(check: MeshCheck, units: Units) -> Table:
+def _meshes(cases: list[Solved], units: Units) -> Table:
+    """Each figure of a verdict beside that of elements half as long."""
     rows = []
-    for change in check.changes:
-        word, dimension = FIGURES.get(change.figure, (change.figure.replace("_", " "), "none"))
-        share = change.share
-        told = "–" if share is None else f"{_sign(share)}{percent(abs(share))}"
-        rows.append((word, units.show(change.value, dimension), units.show(change.finer, dimension), told))
-    head = ("Figure", f"{check.elements} elements", f"{check.finer_elements} elements", "Change")
-    return Table(head, tuple(rows), (0.34, 0.22, 0.22, 0.22), "Check on elements half as long")
+    for one in cases:
+        assert one.mesh is not None
+        for change in one.mesh.changes:
+            word, dimension = FIGURES.get(change.figure, (change.figure.replace("_", " "), "none"))
+            shown = units.show(change.value, dimension), units.show(change.finer, dimension)
+            rows.append((one.case.name, word, *shown, _change(change.share)))
+    head = ("Case", "Figure", "As solved", "Finer", "Change")
+    return Table(head, tuple(rows), (0.3, 0.24, 0.15, 0.15, 0.16), "Check on elements half as long")
+
+
+def _change(share: float | None) -> str:
+    if share is None:
+        return "–"
+    if abs(share) < UNSEEN:
+        return f"below {100 * UNSEEN:g} %"
+    return f"{_sign(share)}{percent(abs(share))}"
+
+
+#: Changes below this share are not told in numbers.
+UNSEEN = 1e-5
 
 
 def _sign(share: float) -> str:
@@ -120,11 +158,7 @@ def cautions(of: Material) -> Iterator[Block]:
         if found:
             yield Heading(f"Case: {one.case.name}", 3)
             yield Bullets(tuple(f"! {text}" for text in found))
-    typical = sum(mark.state == "typical" for mark in (of.project.provenance or {}).values())
-    if typical:
-        yield Paragraph(
-            f"! {typical} values of the input are typical ones that nobody has confirmed.", "caution"
-        )
+    yield from (Paragraph(line, "caution") for line in typical_lines(of.project))
 
 
 def _without_limit(one: Solved) -> str:
@@ -157,4 +191,4 @@ def appendix(of: Material) -> Iterator[Block]:
         yield Paragraph(f"The input reads these files as well: {', '.join(dict.fromkeys(histories))}.")
     yield Heading("The input")
     yield Paragraph("SI units throughout, tension positive, as the file holds it.", "small")
-    yield Listing(project_to_text(of.project))
+    yield Listing(input_text(of.project))

@@ -15,12 +15,13 @@ from app.report.described import (
     gauge_table,
     ground_tables,
     in_one_line,
-    load_table,
+    load_rows,
     material_table,
     segment_table,
 )
 from app.report.figures.member import member_figure
 from app.report.outcome import Material
+from app.report.verdict import typical_lines
 from app.units import Units
 from solver import Case
 from solver.model.derived import segment_mass, time_between
@@ -33,8 +34,8 @@ def analysed(of: Material) -> Iterator[Block]:
         yield Heading("Notes of the project")
         yield Paragraph(of.project.notes)
     yield Paragraph(
-        "Distances run along the member from its struck end. Numbers are as given, up to six digits; what follows "
-        "from them is rounded to three."
+        "Distances run along the member from its struck end. Given numbers are told to 1 part in 20 000 or better, and "
+        "in full in the appendix; what follows from them is rounded to three digits."
     )
     yield material_table(of.project, of.units)
     before: list[Case] = []
@@ -53,30 +54,68 @@ def _case(case: Case, before: list[Case], of: Material) -> Iterator[Block]:
             yield Picture(
                 member_figure(case, units), "The member, to scale in length; widths are exaggerated."
             )
-    same = _first(before, lambda c: c.member == case.member)
-    if same is not None:
-        yield Paragraph(f"Member: as in case '{same.name}'.")
-    else:
-        yield segment_table(
-            case.member.segments, case, units, "Segments of the member, from the struck end on"
-        )
-        mass = sum(segment_mass(s, case.materials) for s in case.member.segments)
-        passage = 2 * time_between(case, 0.0, case.member.length)
-        yield Paragraph(
-            f"The member is {exact(case.member.length, 'length', units)} long and has a mass of "
-            f"{units.show(mass, 'mass')}. A wave runs along it and back in {units.show(passage, 'time')} (2L/c). "
-            f"Lateral inertia is {'in' if case.member.lateral_inertia else 'left out of'} the model."
-        )
-        yield from _attachments(case, units)
-    yield load_table(case, units)
-    if case.ram_segments:
+    alike = {
+        "Member": _first(before, lambda c: c.member == case.member),
+        "far end": _first(before, lambda c: (c.member, c.far_end) == (case.member, case.far_end)),
+        "ground": _first(before, lambda c: (c.member, c.ground) == (case.member, case.ground)),
+        "gauges": _first(before, lambda c: (c.member, c.gauges) == (case.member, case.gauges)),
+    }
+    yield from _told_before(alike)
+    if alike["Member"] is None:
+        yield from _member(case, units)
+    yield _load(case, before, units)
+    if case.ram_segments and not any(c.ram_segments == case.ram_segments for c in before):
         yield segment_table(
             case.ram_segments, case, units, "Rod that strikes, its far end from the impact first"
         )
-    yield from _ground_and_end(case, before, units)
-    if case.gauges:
+    if alike["far end"] is None:
+        told = in_one_line(case.far_end, units)
+        yield Paragraph(f"Far end: {END_WORDS[case.far_end.kind]}{f', {told}' if told else ''}.")
+    if alike["ground"] is None:
+        yield from _ground(case, units)
+    if case.gauges and alike["gauges"] is None:
         yield gauge_table(case, units)
     yield Paragraph(f"Run: {_run(case, units)}.")
+
+
+def _told_before(alike: dict[str, Case | None]) -> Iterator[Block]:
+    """What is the same as in a case before, in one sentence for each such case."""
+    names: dict[str, list[str]] = {}
+    for word, case in alike.items():
+        if case is not None:
+            names.setdefault(case.name, []).append(word)
+    for name, words in names.items():
+        told = words[0] if len(words) == 1 else f"{', '.join(words[:-1])} and {words[-1]}"
+        yield Paragraph(f"{told[:1].upper()}{told[1:]}: as in case '{name}'.")
+
+
+def _member(case: Case, units: Units) -> Iterator[Block]:
+    yield segment_table(case.member.segments, case, units, "Segments of the member, from the struck end on")
+    mass = sum(segment_mass(s, case.materials) for s in case.member.segments)
+    passage = 2 * time_between(case, 0.0, case.member.length)
+    yield Paragraph(
+        f"The member is {exact(case.member.length, 'length', units)} long and has a mass of "
+        f"{units.show(mass, 'mass')}. A wave runs along it and back in {units.show(passage, 'time')} (2L/c). "
+        f"Lateral inertia is {'in' if case.member.lateral_inertia else 'left out of'} the model."
+    )
+    yield from _attachments(case, units)
+
+
+def _load(case: Case, before: list[Case], units: Units) -> Block:
+    """All of the load, or what is not as in an earlier case that is told by the same words."""
+    rows = load_rows(case, units)
+    words = [word for word, _ in rows]
+    for other in before:
+        known = load_rows(other, units)
+        if [word for word, _ in known] == words:
+            differs = tuple(row for row in rows if row not in known)
+            if not differs:
+                return Paragraph(f"What strikes: as in case '{other.name}'.")
+            return Table(HEAD, differs, (0.4, 0.6), f"What strikes: as in case '{other.name}', but for")
+    return Table(HEAD, rows, (0.4, 0.6), "What strikes")
+
+
+HEAD = ("Of the load", "Given")
 
 
 def _drawn(case: Case) -> tuple[object, ...]:
@@ -103,16 +142,9 @@ def _attachments(case: Case, units: Units) -> Iterator[Block]:
     yield Table(("Attachment", "Position", "Value"), rows, (0.34, 0.33, 0.33), "Attached to the member")
 
 
-def _ground_and_end(case: Case, before: list[Case], units: Units) -> Iterator[Block]:
-    end = case.far_end
-    told = in_one_line(end, units)
-    yield Paragraph(f"Far end: {END_WORDS[end.kind]}{f', {told}' if told else ''}.")
+def _ground(case: Case, units: Units) -> Iterator[Block]:
     if case.ground is None:
         yield Paragraph("There is no ground in this case.")
-        return
-    same = _first(before, lambda c: c.ground == case.ground and c.member == case.member)
-    if same is not None:
-        yield Paragraph(f"Ground: as in case '{same.name}'.")
         return
     surface = f"The ground surface lies {exact(case.ground.surface, 'length', units)} from the struck end."
     if case.ground.inner_share:
@@ -160,24 +192,22 @@ def _sources(of: Material) -> Iterator[Block]:
     tree = of.project.model_dump(mode="json")
     typical = {p: m for p, m in marks.items() if m.state == "typical"}
     confirmed = {p: m for p, m in marks.items() if m.state == "confirmed"}
-    if typical:
-        yield Paragraph(
-            f"! {len(typical)} value{'s are' if len(typical) > 1 else ' is'} typical and not confirmed for this site.",
-            "caution",
-        )
+    yield from (Paragraph(line, "caution") for line in typical_lines(of.project))
     rows = list(dict.fromkeys(_source_row(of, tree, p, m) for p, m in [*typical.items(), *confirmed.items()]))
     head = ("Value", "Given", "Source", "State")
-    yield Table(head, tuple(_in_cases(of, rows)), (0.32, 0.14, 0.36, 0.18), "Sources of values")
+    yield Table(head, tuple(_in_cases(of, rows)), (0.29, 0.12, 0.36, 0.23), "Sources of values")
 
 
 def _source_row(of: Material, tree: Any, pointer: str, mark: Provenance) -> tuple[int | None, Row]:
     """The number of the case that a value is in, and its place, value, source and state."""
+    label, given = as_given(of.project, pointer, of.units)
     inside = re.fullmatch(r"/cases/(\d+)/.*", pointer)
     number = int(inside.group(1)) if inside else None
     one = {"cases": [tree["cases"][number]]} if number is not None else tree
-    place = place_in_words(re.sub(r"^/cases/\d+/", "/cases/0/", pointer), one)
+    part = re.sub(r"^/cases/\d+/", "/cases/0/", pointer).rpartition("/")[0]
+    place = f"{place_in_words(part, one)}: {label}"
     state = "✓ confirmed" if mark.state == "confirmed" else "! typical, not confirmed"
-    return number, (place, as_given(of.project, pointer, of.units), mark.source, state)
+    return number, (place, given, mark.source, state)
 
 
 def _in_cases(of: Material, rows: list[tuple[int | None, Row]]) -> Iterator[Row]:

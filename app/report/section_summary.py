@@ -7,17 +7,12 @@ from collections.abc import Iterator
 from app.report.blocks import Block, Paragraph, Table
 from app.report.outcome import Material, Solved
 from app.units import Units
-from app.words import AXIAL_CAUTION, LIMIT_CAUTION, MODEL_CAUTION, Line, verdict
+from app.words import Line, verdict
 
 
 def summary(of: Material) -> Iterator[Block]:
     """One row a case, in the words of the verdict on the screen."""
-    count = len(of.cases)
-    yield Paragraph(
-        f"{count} case{'s' if count > 1 else ''} of one-dimensional stress waves "
-        f"{'were' if count > 1 else 'was'} computed. The table gives the verdict of each; "
-        "the sections that follow say what it rests on."
-    )
+    yield Paragraph("The verdict of each case; the sections that follow say what it rests on.")
     shown = [solved for solved in of.cases if solved.findings is not None]
     if shown:
         yield _verdicts(shown, of.units)
@@ -26,7 +21,6 @@ def summary(of: Material) -> Iterator[Block]:
             yield Paragraph(f"! Case '{one.case.name}' could not be computed: {one.refusal}", "caution")
         elif one.result is not None and not one.result.finished:
             yield Paragraph(f"! Case '{one.case.name}' was stopped before its end.", "caution")
-    yield Paragraph(f"{MODEL_CAUTION} {LIMIT_CAUTION} {AXIAL_CAUTION}", "caution")
 
 
 def _verdicts(cases: list[Solved], units: Units) -> Table:
@@ -40,8 +34,9 @@ def _verdicts(cases: list[Solved], units: Units) -> Table:
     if any(line.name.startswith("past gauge") for lines in found.values() for line in lines):
         columns.append(("past gauge", "Energy past the first gauge"))
     rows = tuple((name, *(_cell(lines, key) for key, _ in columns)) for name, lines in found.items())
-    first = 0.18
-    shares = (first, *([(1 - first) / len(columns)] * len(columns)))
+    wide = {"set per blow": 0.85, "past gauge": 1.05}
+    weights = [0.75, *(wide.get(key, 1.2) for key, _ in columns)]
+    shares = tuple(weight / sum(weights) for weight in weights)
     return Table(("Case", *(word for _, word in columns)), rows, shares, "Verdict of each case")
 
 
@@ -49,4 +44,5 @@ def _cell(lines: list[Line], name: str) -> str:
     line = next((one for one in lines if one.name.startswith(name)), None)
     if line is None:
         return "–"
-    return f"{line.figure}\n{line.detail}"
+    detail = line.detail.partition("\n")[0] if name == "past gauge" else line.detail
+    return f"{line.figure}\n{detail}"

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import logging
 from collections.abc import Callable
 from dataclasses import replace
 
@@ -36,6 +37,11 @@ def solve_cases(
             result = solve(case, cancel=cancel)
         except SolveError as error:
             found.append(Solved(case, None, str(error)))
+            continue
+        except Exception as error:  # the other cases shall still be told
+            logging.getLogger(__name__).exception("A case failed")
+            told = f"it failed unexpectedly ({type(error).__name__}: {error}); please report this."
+            found.append(Solved(case, None, told))
             continue
         mesh = None
         if mesh_check and result.finished:

@@ -9,15 +9,15 @@ import numpy as np
 from numpy.typing import NDArray
 
 from app.look.colours import PRINT
-from app.report.figures.marks import Figure, Mark, Path, Text, line
-from app.report.figures.plot import SMALL, WIDTH, Plot, plot_in
+from app.report.figures.marks import Anchor, Figure, Mark, Path, Text, line
+from app.report.figures.plot import SMALL, WIDTH, Plot, clearing, plot_in
 from app.report.figures.scales import bounds_of, thinned
 from app.report.figures.traces import sign_words
 from app.report.lettering import fitted
 from app.units import Units
 from solver import Result
 
-HEIGHT = 260.0
+HEIGHT = 222.0
 SIGNS: tuple[Literal["compression", "tension"], ...] = ("compression", "tension")
 #: From stresses of the solver (Pa) to numbers in the unit and the sign shown.
 Shown = Callable[[Any], NDArray[np.float64]]
@@ -81,7 +81,7 @@ def _mark_peak(
     plot.marks.append(line([(x - 3, y), (x + 3, y)], hue, 1.6))
     inwards = x > (plot.x.start + plot.x.end) / 2
     text = f"{word} {units.show(value, 'stress')}"
-    plot.say(x + (-6 if inwards else 6), y + 2.5, text, hue, "end" if inwards else "start")
+    plot.say(x + (-6 if inwards else 6), y + 2.5, text, hue, "end" if inwards else "start", cleared=True)
 
 
 def _limits(plot: Plot, result: Result, shown: Shown, units: Units) -> list[Mark]:
@@ -101,17 +101,11 @@ def _limits(plot: Plot, result: Result, shown: Shown, units: Units) -> list[Mark
                 told.add((sign, value))
                 right = x > (plot.x.start + plot.x.end) / 2
                 text = fitted(f"limit {units.show(value, 'stress')}, {segment.material}", SMALL, 170)
+                anchor: Anchor = "end" if right else "start"
                 place = x + (-4 if right else 4)
-                marks.append(
-                    Text(
-                        place,
-                        plot.y.end - 4 - (SMALL + 2) * ((len(told) - 1) // 2),
-                        text,
-                        PRINT.over,
-                        SMALL,
-                        "end" if right else "start",
-                    )
-                )
+                y = plot.y.end - 4 - (SMALL + 2) * ((len(told) - 1) // 2)
+                marks.append(clearing(place, y, text, anchor))
+                marks.append(Text(place, y, text, PRINT.over, SMALL, anchor))
         if start > 0:
             marks.append(line([(plot.x.start, span[0]), (plot.x.end, span[0])], PRINT.edge, 0.6, dash=(1, 2)))
         start = end

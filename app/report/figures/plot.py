@@ -3,12 +3,12 @@
 from __future__ import annotations
 
 from collections.abc import Sequence
-from dataclasses import dataclass, field
+from dataclasses import dataclass, field, replace
 
 import numpy as np
 
 from app.look.colours import PRINT
-from app.report.figures.marks import Anchor, Mark, Path, Text, line
+from app.report.figures.marks import Anchor, Mark, Path, Text, box, line
 from app.report.figures.scales import Array, Scale, thinned, tick_texts
 from app.report.lettering import text_width
 
@@ -49,14 +49,27 @@ class Plot:
         at = self.x.at(x)
         self.marks.append(line([(at, self.y.start), (at, self.y.end)], colour, width, dash=dash))
 
-    def say(self, x: float, y: float, text: str, colour: str, anchor: Anchor = "start") -> None:
-        """Text at a place in points, moved down where another text stands already."""
+    def say(
+        self, x: float, y: float, text: str, colour: str, anchor: Anchor = "start", cleared: bool = False
+    ) -> None:
+        """Text at a place in points, moved down where another text stands already; `cleared`: what lies under it is
+        nearly covered."""
         for _ in range(12):
             if all(abs(y - other) > SMALL + 1 or abs(x - at) > 110 for at, other in self._named):
                 break
             y += SMALL + 2
         self._named.append((x, y))
+        if cleared:
+            self.marks.append(clearing(x, y, text, anchor))
         self.marks.append(Text(x, y, text, colour, SMALL, anchor))
+
+
+def clearing(x: float, y: float, text: str, anchor: Anchor) -> Path:
+    """A nearly covering patch of paper for under a text."""
+    wide = text_width(text, SMALL) + 3
+    left = x - 1.5 if anchor == "start" else x - wide + 1.5 if anchor == "end" else x - wide / 2
+    patch = box(left, y - SMALL + 0.5, wide, SMALL + 2, PRINT.paper)
+    return replace(patch, opacity=0.85)
 
 
 def plot_in(

@@ -16,6 +16,8 @@ from solver import GaugeRecord, Result
 from solver.answer.waves import arrivals
 
 HEIGHT = 190.0
+#: Of the plots that share a page with the x-t diagram.
+LOWER = 168.0
 SECOND: tuple[float, ...] = (5, 2)
 #: Curves in one plot; more gauges than that go into further plots.
 MOST_CURVES = 6
@@ -115,15 +117,15 @@ def energy_over_time(result: Result, units: Units) -> Figure:
     shown = {word: units.number(values, "energy", near) for word, values in kept.items()}
     time, unit = _time(ledger.time, units)
     labels = (f"Time, {unit}", f"Energy, {units.unit('energy', near)}")
-    plot = plot_in((0, time[-1]), bounds_of(*shown.values()), WIDTH, 0, HEIGHT, labels)
+    plot = plot_in((0, time[-1]), bounds_of(*shown.values()), WIDTH, 0, LOWER, labels)
     entries = []
     for number, (word, values) in enumerate(shown.items()):
         hue = PRINT.ink if word == "put in" else PRINT.gauge(number)
         dash = DASHES[number % len(DASHES)]
         plot.curve(time, values, hue, 1.2 if word == "put in" else 0.9, dash)
         entries.append((word, hue, dash))
-    marks, taken = legend(entries, plot.x.start, HEIGHT + 4, plot.x.end - plot.x.start)
-    return Figure("Energy over time", WIDTH, HEIGHT + taken, (*plot.marks, *marks))
+    marks, taken = legend(entries, plot.x.start, LOWER + 4, plot.x.end - plot.x.start)
+    return Figure("Energy over time", WIDTH, LOWER + taken, (*plot.marks, *marks))
 
 
 def set_over_time(result: Result, units: Units) -> Figure:
@@ -139,7 +141,7 @@ def set_over_time(result: Result, units: Units) -> Figure:
         f"Time, {unit}",
         f"Movement, {units.unit('small_length', near)} (positive towards the far end)",
     )
-    plot = plot_in((0, time[-1]), bounds_of(*shown), WIDTH, 0, HEIGHT, labels)
+    plot = plot_in((0, time[-1]), bounds_of(*shown), WIDTH, 0, LOWER, labels)
     plot.curve(time, shown[0], PRINT.ink, 1.0)
     plot.curve(time, shown[1], PRINT.gauge(0), 1.0, SECOND)
     extra: list[Mark] = []
@@ -149,8 +151,8 @@ def set_over_time(result: Result, units: Units) -> Figure:
         told = f"set {units.show(result.set, 'small_length')}"
         extra.append(Text(plot.x.end - 2, plot.y.at(at) - 3, told, PRINT.ink, SMALL, "end"))
     entries = [("struck end", PRINT.ink, ()), ("toe or far end", PRINT.gauge(0), SECOND)]
-    marks, taken = legend(entries, plot.x.start, HEIGHT + 4, plot.x.end - plot.x.start)
-    return Figure("Movement of both ends", WIDTH, HEIGHT + taken, (*plot.marks, *extra, *marks))
+    marks, taken = legend(entries, plot.x.start, LOWER + 4, plot.x.end - plot.x.start)
+    return Figure("Movement of both ends", WIDTH, LOWER + taken, (*plot.marks, *extra, *marks))
 
 
 def _time(time: Array, units: Units) -> tuple[Array, str]:

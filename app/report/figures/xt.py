@@ -13,7 +13,7 @@ from app.report.lettering import fitted
 from app.units import Units
 from solver import Result
 
-HEIGHT, SCALE_ROOM = 250.0, 22.0
+HEIGHT, SCALE_ROOM = 236.0, 22.0
 #: Pixels of the picture, at most: 150 to an inch at its size in print.
 MOST_COLUMNS, MOST_ROWS = 900, 420
 
