@@ -195,10 +195,12 @@ class Document(QObject):
             self._rejected[pointer] = entry
             self.changed.emit()
 
-    def forget_rejected(self) -> None:
-        """Drop everything that was entered and not taken; fields show the project's values again."""
-        if self._rejected:
-            self._rejected = {}
+    def forget_rejected(self, under: str = "") -> None:
+        """Drop what was entered and not taken, all of it or that below a pointer; fields show the project's values."""
+        place = self.full_pointer(under) if under else ""
+        kept = {p: r for p, r in self._rejected.items() if not p.startswith(f"{place}/")}
+        if kept != self._rejected:
+            self._rejected = kept
             self.changed.emit()
 
     def new(
@@ -224,11 +226,15 @@ class Document(QObject):
     def open(self, path: Path | str) -> None:
         """Read a project file. Raises `DocumentError`; the project at hand then stays."""
         path = Path(path).absolute()
+        self.new(self.read(path), path)
+
+    @staticmethod
+    def read(path: Path) -> Project:
+        """The project in a file. Raises `DocumentError`."""
         try:
-            project = load_project(path)
+            return load_project(path)
         except ProjectError as error:
             raise DocumentError(why_not_opened(path, error)) from None
-        self.new(project, path)
 
     def save(self) -> None:
         """Write to the project's own file, whole or not at all. Raises `DocumentError`."""

@@ -15,6 +15,8 @@ METRES = re.compile(r"(?<![\w.])(-?\d+(?:\.\d+)?(?:e[-+]?\d+)?) m(?![\w/])")
 #: What was given, as the model read it, in SI: the person sees what she typed beside the sentence.
 GIVEN = re.compile(r", not -?[\d.]+(?:e[-+]?\d+)?$")
 
+#: A gauge that is called so already.
+TWICE = re.compile(r"\b(gauge) '(gauge\b)", re.IGNORECASE)
 #: What helps where an edit is refused for what is wrong elsewhere then.
 ADVICE = (
     (re.compile(r"/gauges/\d+/position"), "Move or remove the gauge first."),
@@ -27,12 +29,23 @@ def sentence_for(pointer: str, problems: Sequence[Problem], tree: Any, units: Un
     """One sentence on the fault at the place of an edit, or on the first elsewhere, with its place in words."""
     here = [p for p in problems if p.pointer == pointer or pointer.startswith(p.pointer + "/")]
     problem = (here or list(problems))[0]
-    text = METRES.sub(lambda m: units.show(float(m.group(1)), "length"), GIVEN.sub("", problem.sentence))
+    text = _in_units(TWICE.sub(r"'\2", GIVEN.sub("", problem.sentence)), units)
     advice = ""
     if not here and problem.pointer:
         text = f"{place_in_words(problem.pointer, tree)}: {text}"
         advice = next((f" {words}" for place, words in ADVICE if place.search(problem.pointer)), "")
     return text[:1].upper() + text[1:] + ("" if text.endswith((".", "?", ")")) else ".") + advice
+
+
+def _in_units(text: str, units: Units) -> str:
+    """Lengths with as many digits as tell different ones apart."""
+    lengths = {float(found) for found in METRES.findall(text)}
+    digits = next(n for n in range(3, 8) if n == 7 or _told_apart(lengths, units, n))
+    return METRES.sub(lambda m: units.show(float(m.group(1)), "length", digits), text)
+
+
+def _told_apart(lengths: set[float], units: Units, digits: int) -> bool:
+    return len({units.show(length, "length", digits) for length in lengths}) == len(lengths)
 
 
 def place_in_words(pointer: str, tree: Any) -> str:

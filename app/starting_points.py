@@ -76,9 +76,9 @@ def driven_pile() -> Tree:
             "toe": {"resistance": 900e3, **toe.values},
         },
         "gauges": [
-            {"name": "Head", "position": 1.5},
-            {"name": "Middle", "position": 10.0},
-            {"name": "Toe", "position": 19.5},
+            {"name": "Gauge 1", "position": 1.5},
+            {"name": "Gauge 2", "position": 10.0},
+            {"name": "Gauge 3", "position": 19.5},
         ],
         "run": {"duration": None, "element_length": None, "gravity": True, "blows": 1},
     }
@@ -115,7 +115,7 @@ def rod_or_bar() -> Tree:
         },
         "far_end": {"kind": "free"},
         "ground": None,
-        "gauges": [{"name": "Bar", "position": 0.75}, {"name": "Thin end", "position": 1.75}],
+        "gauges": [{"name": "Gauge 1", "position": 0.75}, {"name": "Gauge 2", "position": 1.75}],
         "run": {"duration": 0.0012, "element_length": None, "gravity": False, "blows": 1},
     }
     return _project("New bar", "tension", "steel", case)
@@ -146,7 +146,7 @@ def slender_rod_by_echo() -> Tree:
         },
         "far_end": {"kind": "free"},
         "ground": None,
-        "gauges": [{"name": "Head", "position": 0.0}, {"name": "Middle", "position": 9.0}],
+        "gauges": [{"name": "Gauge 1", "position": 0.0}, {"name": "Gauge 2", "position": 9.0}],
         "run": {"duration": 0.02, "element_length": None, "gravity": False, "blows": 1},
     }
     return _project("New echo test", "compression", material, case)

@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Mapping
 from dataclasses import dataclass
 from functools import cached_property, lru_cache
-from math import floor, isfinite, log10
+from math import floor, isclose, isfinite, log10
 from typing import Any
 
 import numpy as np
@@ -64,6 +64,8 @@ US: dict[str, tuple[str, ...]] = {
 SYSTEMS = {"metric": METRIC, "us": US}
 #: The usual unit is kept for numbers in this range of it.
 USUAL_RANGE = (0.1, 1e5)
+#: Where that begins elsewhere: cushions are told in MPa.
+USUAL_FROM = {"modulus": 1.0}
 #: Below this share of the usual unit a computed number is noise, and `show` says 0.
 NOISE = 1e-9
 MINUS, NARROW_SPACE, NO_BREAK = "\u2212", "\u202f", "\u00a0"
@@ -99,7 +101,7 @@ class Units:
             return usual
         size = abs(near)
         in_usual = size / self._factor(usual, dimension)
-        if USUAL_RANGE[0] <= in_usual < USUAL_RANGE[1] or in_usual < NOISE:
+        if USUAL_FROM.get(dimension, USUAL_RANGE[0]) <= in_usual < USUAL_RANGE[1] or in_usual < NOISE:
             return usual
         by_size = sorted((usual, *others), key=lambda u: self._factor(u, dimension))
         fitting = [u for u in by_size if size >= self._factor(u, dimension)]
@@ -111,16 +113,23 @@ class Units:
         return np.asarray(value_si) / factor if isinstance(value_si, np.ndarray) else value_si / factor
 
     def text(self, value_si: float, dimension: str, near: float | None = None) -> str:
-        """Number alone, for a field: up to six digits, and it reads back with `parse`."""
+        """Number alone, for a field: as `plain`, with zeros up to three digits where it has a unit."""
+        number = float(self.number(value_si, dimension, near))
+        written = self.plain(value_si, dimension, near)
+        wanted = _decimals(number, 3) if isfinite(number) else 0
+        has = len(written.partition(".")[2])
+        if isfinite(number) and "e" not in written and has < wanted and number != 0 and dimension != "none":
+            written = f"{number:.{wanted}f}"
+        return written
+
+    def plain(self, value_si: float, dimension: str, near: float | None = None) -> str:
+        """Number alone, with the digits that somebody has typed, up to seven; four of one that nobody has typed in
+        this unit, such as 16.4042 for 5 m in ft. Reads back with `parse`."""
         number = float(self.number(value_si, dimension, near))
         if not isfinite(number):
             return "–"
-        written = _plain(number, 6)
-        wanted = _decimals(number, 3)
-        has = len(written.partition(".")[2])
-        if "e" not in written and 0 < wanted and has < wanted and number != 0 and dimension != "none":
-            written = f"{number:.{wanted}f}"
-        return written
+        typed = isclose(float(f"{number:.8e}"), number, rel_tol=1e-12)
+        return _plain(number, 7 if typed else 4)
 
     def show(self, value_si: float, dimension: str, digits: int = 3) -> str:
         """Number and unit for reading: "16.0 m", "1755 kN", "50 kg"; digits and unit follow the size.

@@ -1,7 +1,7 @@
 """Parts with typical values, each with its source: copied into a project when chosen, and marked there as typical.
 
-Values are in SI, under the keys of the project file. "(from memory)" marks what was not checked against the
-printed source. Nothing here names a product.
+Values are in SI, under the keys of the project file, and exact in the units in which their sources print them.
+"(from memory)" marks what was not checked against the printed source. Nothing here names a product.
 """
 
 from __future__ import annotations
@@ -9,13 +9,14 @@ from __future__ import annotations
 import re
 from collections.abc import Mapping
 from dataclasses import dataclass
+from math import sqrt
 from typing import Any, Literal
 
 from solver.model.material import Material
 
 PartKind = Literal["material", "cushion", "ram", "section", "layer", "toe"]
 
-FOOT, INCH, PSI = 0.3048, 0.0254, 6894.757293168
+FOOT, INCH, PSI, POUND_PER_CUBIC_FOOT = 0.3048, 0.0254, 6894.757293168, 0.45359237 / 0.3048**3
 EC3 = "EN 1993-1-1 (from memory)"
 EC2 = "EN 1992-1-1, Ecm = 22 (fcm/10)^0.3 (from memory)"
 EC2_DYNAMIC = "EN 1992-1-1 Ecm, raised by 15 % for a dynamic modulus (common practice)"
@@ -76,7 +77,7 @@ def _material(
 
 
 def _concretes() -> list[Part]:
-    grades = ((30, 32.8366e9), (40, 35.2205e9), (50, 37.2779e9), (60, 39.0999e9), (80, 42.2442e9))
+    grades = [(fck, 22e9 * ((fck + 8) / 10) ** 0.3) for fck in (30, 40, 50, 60, 80)]
     static = [
         _material(
             f"concrete {fck} MPa, static modulus", modulus, 2500.0, 0.2, EC2, "a blow meets a stiffer one"
@@ -84,19 +85,19 @@ def _concretes() -> list[Part]:
         for fck, modulus in grades
     ]
     dynamic = [
-        _material(f"concrete {fck} MPa, dynamic modulus", round(1.15 * modulus, -6), 2500.0, 0.2, EC2_DYNAMIC)
+        _material(f"concrete {fck} MPa, dynamic modulus", 1.15 * modulus, 2500.0, 0.2, EC2_DYNAMIC)
         for fck, modulus in grades
     ]
     american = [
         _material(
             f"concrete {psi} psi, static modulus",
-            modulus,
-            2403.0,
+            57e3 * sqrt(psi) * PSI,
+            150 * POUND_PER_CUBIC_FOOT,
             0.2,
             ACI,
             "150 lb/ft³ · a blow meets a stiffer one",
         )
-        for psi, modulus in ((5000, 27.7894e9), (6000, 30.4417e9), (8000, 35.1511e9))
+        for psi in (5000, 6000, 8000)
     ]
     return dynamic + static + american
 
@@ -117,9 +118,14 @@ def _timbers() -> list[Part]:
 
 MATERIALS = [
     _material("steel", 210e9, 7850.0, 0.3, EC3),
-    _material("steel, 29,000 ksi", 199.948e9, 7849.05, 0.3, HANDBOOK, "490 lb/ft³"),
+    _material("steel, 29,000 ksi", 29e6 * PSI, 490 * POUND_PER_CUBIC_FOOT, 0.3, HANDBOOK, "490 lb/ft³"),
     _material(
-        "steel, 30,000 ksi", 206.843e9, 7881.08, 0.3, COMMON, "492 lb/ft³, usual for piles in US units"
+        "steel, 30,000 ksi",
+        30e6 * PSI,
+        492 * POUND_PER_CUBIC_FOOT,
+        0.3,
+        COMMON,
+        "492 lb/ft³, usual for piles in US units",
     ),
     *_concretes(),
     *_timbers(),
@@ -137,7 +143,7 @@ MATERIALS = [
 
 
 def _cushion(name: str, psi: float, restitution: float) -> Part:
-    modulus = round(psi * PSI, -3)
+    modulus = psi * PSI
     tells = f"{modulus / 1e6:.0f} MPa · restitution {restitution:g}"
     return Part("cushion", name, tells, TTI, {"young_modulus": modulus, "restitution": restitution})
 
@@ -224,7 +230,7 @@ SECTIONS = [
 
 def _ground(kind: PartKind, name: str, quake: float, per_foot: float, source: str, tells: str = "") -> Part:
     """A quake in m and a Smith damping factor in s/ft, as the sources print it; the project takes s/m."""
-    damping = round(per_foot / FOOT, 4)
+    damping = per_foot / FOOT
     lead = f"quake {quake * 1e3:.3g} mm · damping {damping:.2g} s/m ({per_foot:g} s/ft)"
     values = {"quake": quake, "damping": damping, "damping_law": "smith"}
     return Part(kind, name, f"{lead} · {tells}" if tells else lead, source, values)

@@ -52,7 +52,9 @@ class Files:
     def open_path(self, path: Path) -> bool:
         """Open a project file, once the work at hand is safe."""
         path = Path(path).absolute()
-        done = self._begin(lambda: self._window.document.open(path))
+        done = self._begin(
+            lambda: self._window.document.open(path), readable=lambda: self._window.document.read(path)
+        )
         if done:
             self._window.settings.add_recent(path)
         elif not path.exists():
@@ -61,7 +63,10 @@ class Files:
 
     def open_demo(self, path: Path) -> bool:
         """Open a demo as a project without a file of its own, so that saving does not change the demo."""
-        return self._begin(lambda: self._window.document.new(load_project(path), folder=path.parent))
+        return self._begin(
+            lambda: self._window.document.new(load_project(path), folder=path.parent),
+            readable=lambda: load_project(path),
+        )
 
     def recover(self, kept: Kept) -> bool:
         """Go on with unsaved work of an earlier start."""
@@ -86,12 +91,15 @@ class Files:
             ]
             self._window.notices.show_notice(f"recovery{number}", text, "near", choices)
 
-    def _begin(self, begin: Callable[[], object]) -> bool:
+    def _begin(self, begin: Callable[[], object], readable: Callable[[], object] = lambda: None) -> bool:
+        """Nothing is asked about the work at hand before the other file is known to be readable; it is read again
+        after that, as it may be the file that has just been saved."""
         window = self._window
         window.commit_typing()
-        if not self._may_leave():
-            return False
         try:
+            readable()
+            if not self._may_leave():
+                return False
             begin()
         except DocumentError as error:
             window.notices.show_notice("file", str(error), "over")

@@ -204,7 +204,7 @@ def test_faults_are_told_in_the_units_shown_and_with_their_place_in_words(docume
     document.edit("Units", "/display_units", "us")
     document.edit("Move", "gauges/0/position", 30.48)
     assert document.problem_at("gauges/0/position") == (
-        "Gauge 'Head' at 100\u00a0ft lies beyond the member's end at 65.6\u00a0ft."
+        "'Gauge 1' at 100\u00a0ft lies beyond the member's end at 65.6\u00a0ft."
     )
     document.forget_rejected()
     document.edit("Shorten", "member/segments/0/length", 3.0)
@@ -214,10 +214,19 @@ def test_faults_are_told_in_the_units_shown_and_with_their_place_in_words(docume
     )
 
 
+def test_a_fault_has_as_many_digits_as_tell_two_lengths_apart(document):
+    document.edit("Move", "gauges/0/position", 20.001)
+    assert document.problem_at("gauges/0/position") == (
+        "'Gauge 1' at 20.001\u00a0m lies beyond the member's end at 20.000\u00a0m."
+    )
+
+
 def test_differences_are_told_in_words(document):
     before = document.project
     document.edit("Move", "gauges/0/position", 1.75)
-    assert differences(before, document.project) == "1 value differs: gauges Head position 1.5 \u2192 1.75."
+    assert (
+        differences(before, document.project) == "1 value differs: gauges Gauge 1 position 1.5 \u2192 1.75."
+    )
     assert differences(before, before) == "Nothing differs."
 
 
@@ -267,7 +276,7 @@ class Editing(RuleBasedStateMachine):
         assert self.document.edit_tree("Remove gauge", change)
         assert len(self.document.case.gauges) == count - (at < count)
 
-    @rule(name=st.sampled_from(["A", "B", "Head"]))
+    @rule(name=st.sampled_from(["A", "B", "Gauge 1"]))
     def add_gauge(self, name):
         taken = name in [gauge.name for gauge in self.document.case.gauges]
         new = {"name": name, "position": 0.5}

@@ -209,7 +209,9 @@ def test_saving_and_opening(window, tmp_path, monkeypatch):
     assert load_project(file).title == "Saved again"
 
 
-def test_a_file_that_cannot_be_opened_is_told_and_nothing_changes(window, tmp_path):
+def test_a_file_that_cannot_be_opened_is_told_before_anything_is_asked(window, tmp_path, monkeypatch):
+    monkeypatch.setattr(QMessageBox, "question", lambda *_a: pytest.fail("asked to save for nothing"))
+    window.document.edit("Title", "/title", "Own")
     bad = tmp_path / "bad.strike"
     bad.write_text("{")
     before = window.document.project

@@ -7,8 +7,13 @@ from copy import deepcopy
 import pytest
 
 from app import provenance
+from app.bench.forms.commit import put_choice
+from app.bench.forms.part_forms import form_of
+from app.bench.forms.spec import ChoiceSpec, Context
 from app.bench.forms.use_part import use_part
+from app.bench.outline.edits import add
 from app.bench.parts_library import LIBRARY, parts_of_kind
+from app.document import Document
 from app.own_parts import FILE, forget_part, keep_part, own_parts, part_from
 from app.starting_points import STARTING_POINTS, driven_pile, new_tree
 from app.tree import value_at, with_values
@@ -111,3 +116,48 @@ def test_a_part_that_is_not_whole_cannot_be_kept() -> None:
     assert part_from(tree, "cushion", "/cases/0/load/pile_cushion", "none") is None
     tree["cases"][0]["load"]["cushion"] = {"stiffness": 1e9, "restitution": 0.5}
     assert part_from(tree, "cushion", "/cases/0/load/cushion", "stiff") is None
+
+
+def typical(document: Document) -> set[str]:
+    return {
+        p.removeprefix("/cases/0/") for p, m in document.project.provenance.items() if m.state == "typical"
+    }
+
+
+def choose(document: Document, pointer: str, label: str, key: str) -> None:
+    context = Context(document.tree, document.case, "/cases/0")
+    spec = next(s for s in form_of(context, pointer) if isinstance(s, ChoiceSpec) and s.label == label)
+    assert put_choice(document, spec, key) is None
+
+
+def test_a_number_that_a_choice_brings_is_marked_until_somebody_stands_by_it(qapp) -> None:
+    document = Document(project_from_tree(driven_pile()), qapp)
+    choose(document, "load/pile_cushion", "Given by", "size")
+    brought = {f"load/pile_cushion/{k}" for k in ("area", "thickness", "young_modulus", "restitution")}
+    assert brought <= typical(document)
+    assert document.edit_tree("Ground", lambda tree: tree["cases"][0]["ground"].update(layers=[]))
+    document.edit_tree("No marks", lambda tree: provenance.forget(tree, "/cases/0/ground/layers"))
+    edit = add(Context(document.tree, document.case, "/cases/0"), "ground/layers")
+    assert document.edit_tree(edit.label, edit.change)
+    assert {f"ground/layers/0/{k}" for k in ("quake", "damping", "unit_resistance")} <= typical(document)
+
+
+def test_a_stiffness_worked_out_from_a_typical_modulus_is_typical_and_goes_back_exactly(qapp) -> None:
+    document = Document(project_from_tree(driven_pile()), qapp)
+    before = document.case.load.cushion
+    choose(document, "load/cushion", "Given by", "stiffness")
+    assert "load/cushion/stiffness" in typical(document)
+    assert document.case.load.cushion.loading_stiffness == before.loading_stiffness
+    choose(document, "load/cushion", "Given by", "size")
+    assert "load/cushion/young_modulus" in typical(document)
+    assert document.case.load.cushion.young_modulus == pytest.approx(before.young_modulus, rel=1e-14)
+
+
+def test_what_somebody_has_typed_is_not_marked_when_it_is_told_in_another_way(qapp) -> None:
+    document = Document(project_from_tree(driven_pile()), qapp)
+    own = {"stiffness": 2e9, "restitution": 0.7}
+    assert document.edit_tree("Own", lambda tree: tree["cases"][0]["load"].update(cushion=own))
+    document.edit_tree("No marks", lambda tree: provenance.forget(tree, "/cases/0/load/cushion"))
+    choose(document, "load/cushion", "Given by", "size")
+    marked = {p for p in typical(document) if p.startswith("load/cushion")}
+    assert marked == {"load/cushion/area", "load/cushion/thickness"}

@@ -148,7 +148,14 @@ def test_a_block_that_the_project_refuses_changes_nothing_and_says_why(desk) -> 
     at.paste_at(0, "Position", "2\n30\n")
     assert [g.position for g in at.case.gauges] == [1.5, 10.0, 19.5]
     told = at.tables.note.text().replace("\u00a0", " ")
-    assert "gauge 'Middle' at 30.0 m lies beyond the member's end" in told
+    assert "'Gauge 2' at 30.0 m lies beyond the member's end" in told
+
+
+def test_a_block_that_is_refused_leaves_no_red_cells_of_the_block_before(desk) -> None:
+    at = desk(driven_pile(), "gauges")
+    at.paste_at(0, "Position", "2\nnowhere\n18\n")
+    at.paste_at(0, "Position", "2\n30\n")
+    assert at.text(1, "Position") == "10.0"
 
 
 def test_one_value_fills_all_selected_cells(desk) -> None:
@@ -194,7 +201,7 @@ def test_rows_are_added_and_removed_and_follow_the_selection(desk, qtbot) -> Non
     assert len(at.case.gauges) == 4
     qtbot.waitUntil(lambda: at.tables.view.currentIndex().row() == 1)
     qtbot.mouseClick(at.tables.buttons["remove"], Qt.MouseButton.LeftButton)
-    assert [g.name for g in at.case.gauges] == ["Head", "Middle", "Toe"]
+    assert [g.name for g in at.case.gauges] == ["Gauge 1", "Gauge 2", "Gauge 3"]
     at.sight.set(selection="gauges/2")
     assert at.tables.view.currentIndex().row() == 2
 

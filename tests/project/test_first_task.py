@@ -120,9 +120,9 @@ def test_the_task_can_be_done_as_it_is_written(newcomer: Newcomer, tmp_path, mon
     newcomer.part("Toe")
     newcomer.type_into("Toe resistance", "1.2 MN")
     newcomer.part("Gauges")
-    newcomer.part("Middle")
+    newcomer.part("Gauge 2")
     newcomer.press("Remove")
-    newcomer.part("Head")
+    newcomer.part("Gauge 1")
     newcomer.type_into("Position", "1.2")
     newcomer.part("Materials")
     newcomer.part("steel")
@@ -137,7 +137,7 @@ def test_the_task_can_be_done_as_it_is_written(newcomer: Newcomer, tmp_path, mon
     assert case.load.drop_height == pytest.approx(1.2192)
     assert case.far_end.kind == "ground"
     assert case.ground.toe.resistance == pytest.approx(1.2e6)
-    assert [g.name for g in case.gauges] == ["Head", "Toe"]
+    assert [g.name for g in case.gauges] == ["Gauge 1", "Gauge 3"]
     told = " ".join(label.text() for label in window.bench.findChildren(QLabel)) + " ".join(
         button.accessibleName() for button in window.bench.findChildren(QAbstractButton)
     )
@@ -151,8 +151,8 @@ def test_the_task_can_be_done_as_it_is_written(newcomer: Newcomer, tmp_path, mon
     newcomer.acts += 2
     table = pd.read_csv(records, comment="#")
     answer = solve(load_project(project).cases[0])
-    assert table["Head.force_N"].abs().max() == abs(answer.gauges["Head"].force).max()
-    assert {name.partition(".")[0] for name in table.columns[1:]} == {"Head", "Toe"}
+    assert table["Gauge 1.force_N"].abs().max() == abs(answer.gauges["Gauge 1"].force).max()
+    assert {name.partition(".")[0] for name in table.columns[1:]} == {"Gauge 1", "Gauge 3"}
     assert newcomer.acts < 50  # 10 minutes are enough for so many clicks and numbers
 
     bold = set(re.findall(r"\*\*(.+?)\*\*", TASK))

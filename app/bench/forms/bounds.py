@@ -18,5 +18,13 @@ def breach_of(spec: NumberSpec, value: float | None, units: Units) -> str | None
         ("at most", bounds.at_most, bounds.at_most is not None and value > bounds.at_most),
     ):
         if broken and bound is not None:
-            return f"Must be {word} {f'{bound:g}' if spec.whole else units.show(bound, spec.dimension)}."
+            return f"Must be {word} {f'{bound:g}' if spec.whole else _beside(bound, value, spec, units)}."
     return None
+
+
+def _beside(bound: float, value: float, spec: NumberSpec, units: Units) -> str:
+    """The bound with as many digits as tell it apart from the number."""
+    shown = [
+        (units.show(bound, spec.dimension, n), units.show(value, spec.dimension, n)) for n in range(3, 8)
+    ]
+    return next((mine for mine, other in shown if mine != other or bound == value), shown[-1][0])

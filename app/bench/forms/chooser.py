@@ -50,8 +50,3 @@ def new_kind(model: type[BaseModel], field: str) -> Callable[[Tree, str, Context
         parent[field] = start_value(model, field, key, context)
 
     return change
-
-
-def six_digits(value: float) -> float:
-    """A number worked out from others, rounded to what anyone would write."""
-    return float(f"{value:.6g}")

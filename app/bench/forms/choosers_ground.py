@@ -2,8 +2,8 @@
 
 from __future__ import annotations
 
-from app.bench.forms.chooser import Chooser, Choosers, options, options_of_union, six_digits, start_value
-from app.bench.forms.kinds import RADIATION, SHAFT_TOTAL, TOE
+from app.bench.forms.chooser import Chooser, Choosers, options, options_of_union, start_value
+from app.bench.forms.kinds import EXPONENT, RADIATION, SHAFT_TOTAL, TOE
 from app.bench.forms.spec import Context, Tree
 from solver.model import derived
 from solver.model.project import Case
@@ -43,7 +43,7 @@ def _change_law(part: Tree, key: str, context: Context) -> None:
     if was_radiation:
         part.update(quake=TOE["quake"], damping=TOE["damping"])
     if key == "power":
-        part["exponent"] = 0.2
+        part["exponent"] = EXPONENT
 
 
 def _shaft_key(ground: Tree) -> str:
@@ -55,7 +55,7 @@ def _change_shaft(ground: Tree, key: str, context: Context) -> None:
         first = (ground.get("layers") or [{}])[0]
         total = SHAFT_TOTAL | {k: first[k] for k in ("quake", "damping", "damping_law") if first.get(k)}
         resistance = derived.shaft_resistance(context.case)
-        ground["shaft_total"] = total | ({"resistance": six_digits(resistance)} if resistance else {})
+        ground["shaft_total"] = total | ({"resistance": resistance} if resistance else {})
         ground["layers"] = []
     else:
         ground["shaft_total"] = None

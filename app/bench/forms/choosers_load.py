@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Callable
 
-from app.bench.forms.chooser import Chooser, Choosers, options, options_of_union, six_digits, start_value
+from app.bench.forms.chooser import Chooser, Choosers, options, options_of_union, start_value
 from app.bench.forms.kinds import CUSHION, RAM_ROD, filled, words_of
 from app.bench.forms.spec import Context, Tree
 from solver.model import derived
@@ -25,7 +25,7 @@ def _change_ram(load: Tree, key: str, context: Context) -> None:
     else:
         assert isinstance(context.case.load, Drop)
         mass = derived.ram_mass(context.case.load, context.case.materials)
-        load["ram"], load["ram_mass"] = None, six_digits(mass)
+        load["ram"], load["ram_mass"] = None, mass
 
 
 def _change_speed(load: Tree, key: str, context: Context) -> None:
@@ -35,9 +35,9 @@ def _change_speed(load: Tree, key: str, context: Context) -> None:
     energy = derived.impact_energy(drop, materials)
     load.update(drop_height=None, efficiency=None, energy=None, impact_velocity=None)
     if key == "height":
-        load.update(drop_height=six_digits(derived.height_for_velocity(velocity)), efficiency=1.0)
+        load.update(drop_height=derived.height_for_velocity(velocity), efficiency=1.0)
     else:
-        load[key] = six_digits(energy if key == "energy" else velocity)
+        load[key] = energy if key == "energy" else velocity
 
 
 def _speed_key(load: Tree) -> str:
@@ -63,12 +63,12 @@ def _change_cushion(field: str) -> Callable[[Tree, str, Context], None]:
             load[field] = None
         elif key == "stiffness":
             stiffness = Cushion.model_validate(old).loading_stiffness
-            load[field] = {"stiffness": six_digits(stiffness), "restitution": old["restitution"]}
+            load[field] = {"stiffness": stiffness, "restitution": old["restitution"]}
         else:
             load[field] = CUSHION | {"restitution": old["restitution"]}
             if old.get("stiffness"):
                 unit = Cushion.model_validate(CUSHION).loading_stiffness / CUSHION["young_modulus"]
-                load[field]["young_modulus"] = six_digits(old["stiffness"] / unit)
+                load[field]["young_modulus"] = old["stiffness"] / unit
 
     return change
 
@@ -80,7 +80,7 @@ def _change_pulse_quantity(load: Tree, key: str, context: Context) -> None:
         impedance = derived.impedance(case.member.segments[0], case.materials)
         factor = impedance if key == "force" else 1 / impedance
         if load["kind"] == "pulse":
-            load["peak"] = six_digits(load["peak"] * factor)
+            load["peak"] = load["peak"] * factor
         elif load.get("values"):
             load["values"] = [v * factor for v in load["values"]]
     load["quantity"] = key

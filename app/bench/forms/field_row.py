@@ -9,6 +9,7 @@ from PySide6.QtGui import QContextMenuEvent
 from PySide6.QtWidgets import QGridLayout, QLabel, QMenu, QSizePolicy, QWidget
 
 from app.bench.forms.commit import confirm_mark
+from app.bench.forms.kinds import NO_SOURCE
 from app.bench.forms.spec import Spec
 from app.document import Document
 from app.explaining import explain
@@ -110,9 +111,12 @@ class FieldRow(QWidget):
         typical = mark is not None and mark["state"] == "typical"
         self._mark.setVisible(typical)
         if typical and mark is not None:
-            self._mark.setText('typical value · <a href="confirm">Confirm</a>')
-            self._mark.setToolTip(f"A typical value, from {mark['source']}. Confirm it once you stand by it.")
-            self._mark.setAccessibleName(f"{self.spec.label}: typical value, from {mark['source']}")
+            begun = mark["source"] == NO_SOURCE
+            word = "starting value" if begun else "typical value"
+            where = "a number to begin with, of no source" if begun else f"from {mark['source']}"
+            self._mark.setText(f'{word} · <a href="confirm">Confirm</a>')
+            self._mark.setToolTip(f"A {word}, {where}. Type your own, or confirm it once you stand by it.")
+            self._mark.setAccessibleName(f"{self.spec.label}: {word}, {where}")
 
 
 def _note_label(parent: QWidget, role: str) -> QLabel:

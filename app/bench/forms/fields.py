@@ -8,6 +8,7 @@ from typing import Any
 from pydantic import BaseModel
 
 from app.bench.forms import declared
+from app.bench.forms.begun import mark_begun
 from app.bench.forms.chooser import Chooser, Choosers
 from app.bench.forms.choosers_ground import OF_GROUND
 from app.bench.forms.choosers_load import OF_LOAD
@@ -17,7 +18,7 @@ from app.bench.forms.more_fields import INSTEAD, MORE, ONLY_IF
 from app.bench.forms.spec import CheckSpec, ChoiceSpec, Context, NumberSpec, Option, Spec, TextSpec, Tree
 from app.bench.forms.use_part import name_material
 from app.provenance import forget_missing
-from app.tree import value_at
+from app.tree import copied, value_at
 from solver.model.member import Segment
 from solver.model.quantity import Quantity, bounds_of, quantity_of
 from solver.model.section import FilledPipe
@@ -154,7 +155,9 @@ def _changing(context: Context, chooser: Chooser, pointer: str) -> Callable[[Tre
     def change(tree: Tree, key: str) -> None:
         part = value_at(tree, pointer)
         if key != chooser.key_of(part):
+            before = copied(tree)
             chooser.change(part, key, context)
             forget_missing(tree)
+            mark_begun(tree, pointer, before)
 
     return change

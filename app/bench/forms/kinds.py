@@ -11,6 +11,7 @@ from typing import Any
 
 from pydantic import BaseModel
 
+from app.bench.parts_library import part_named
 from solver.model.load import Pulse
 from solver.model.material import Material
 from solver.model.member import Member, Segment
@@ -41,6 +42,8 @@ RAM_ROD = {
     "material": MATERIAL,
     "section": {"shape": "solid_round", "diameter": 0.6},
 }
+#: Of the power of velocity in the law of damping.
+EXPONENT = 0.2
 PULSE = {"quantity": "force", "shape": "half_sine", "peak": 1e6, "duration": 0.002, "start": 0.0}
 
 #: By the field of the model that holds the union: its kinds, by the value of `kind` or `shape`.
@@ -161,16 +164,15 @@ KINDS: dict[tuple[type[BaseModel], str], dict[str, Kind]] = {
     },
 }
 
-CUSHION = {"area": 0.16, "thickness": 0.15, "young_modulus": 310e6, "restitution": 0.5}
+OAK = part_named("cushion", "oak, load across the grain")
+SAND = part_named("layer", "sand or gravel (not cohesive)")
+UNDER_TOE = part_named("toe", "any ground, pile that displaces little")
+STEEL = part_named("material", "steel")
+SIZE = {"area": 0.16, "thickness": 0.15}
+CUSHION = {**SIZE, **OAK.values}
 RADIATION = {"kind": "radiation", "shear_modulus": 20e6, "soil_density": 1800.0, "poisson_ratio": 0.3}
-TOE = {"resistance": 500e3, "quake": 0.00254, "damping": 0.4921, "damping_law": "smith"}
-SHAFT_TOTAL = {
-    "resistance": 500e3,
-    "distribution": "uniform",
-    "quake": 0.00254,
-    "damping": 0.1640,
-    "damping_law": "smith",
-}
+TOE = {"resistance": 500e3, **UNDER_TOE.values}
+SHAFT_TOTAL = {"resistance": 500e3, "distribution": "uniform", **SAND.values}
 #: What is added to a list, without its name.
 NEW_PARTS: dict[str, Tree] = {
     "segments": {
@@ -179,16 +181,46 @@ NEW_PARTS: dict[str, Tree] = {
         "section": {"shape": "solid_round", "diameter": 0.5},
         "joint_above": {"kind": "bonded"},
     },
-    "layers": {
-        "thickness": 3.0,
-        "unit_resistance": 30e3,
-        "quake": 0.00254,
-        "damping": 0.1640,
-        "damping_law": "smith",
-    },
+    "layers": {"thickness": 3.0, "unit_resistance": 30e3, **SAND.values},
     "gauges": {"position": 0.0},
     "attachments": {"position": 0.0, "kind": "mass", "value": 100.0},
-    "materials": {"young_modulus": 210e9, "density": 7850.0, "law": {"kind": "elastic"}},
+    "materials": {
+        "young_modulus": STEEL.values["young_modulus"],
+        "density": STEEL.values["density"],
+        "law": {"kind": "elastic"},
+    },
+}
+
+#: The source of a mark on a number that only fills a field.
+NO_SOURCE = "no source: a number to begin with"
+#: Numbers above that stand for the behaviour of a material, cushion or ground, by key and value, with their source.
+#: Sizes, masses and speeds of what is struck or strikes are the person's own to give, and not marked.
+BEGINS: dict[tuple[str, float], str] = {
+    **{
+        (key, value): part.source
+        for part in (STEEL, OAK, SAND, UNDER_TOE)
+        for key, value in part.values.items()
+        if isinstance(value, float) and key != "poisson_ratio"
+    },
+    ("exponent", EXPONENT): "Gibson and Coyle 1968 (from memory)",
+    ("yield_stress", 355e6): "EN 10025, S355 (from memory)",
+    **dict.fromkeys(
+        (
+            *SIZE.items(),
+            ("efficiency", 0.8),
+            ("stiffness", 1e9),
+            ("restitution", 0.8),
+            ("stiffness", 1e8),
+            ("coefficient", 1e6),
+            ("resistance", 500e3),
+            ("unit_resistance", 30e3),
+            ("shear_modulus", 20e6),
+            ("soil_density", 1800.0),
+            ("viscosity", 1e5),
+            ("tensile_strength", 3e6),
+        ),
+        NO_SOURCE,
+    ),
 }
 
 #: Words for values of choices, where the value itself is not the word.

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from typing import Any
 
+from app.bench.forms.kinds import NO_SOURCE, SIZE
 from app.bench.parts_library import Part
 from app.provenance import confirm, forget, forget_missing, mark_typical
 from app.tree import copied, value_at
@@ -39,15 +40,15 @@ def use_part(tree: Tree, part: Part, pointer: str) -> None:
         value_at(tree, parent)[key] = place = dict(part.values)
     for other in OTHER_WAYS.get(part.kind, ()):
         place[other] = None
+    missing: dict[str, float] = {}
     if part.kind == "cushion":
-        place.update({k: v for k, v in SIZE.items() if place.get(k) is None})
+        missing = {k: v for k, v in SIZE.items() if place.get(k) is None}
+        place.update(missing)
     place.update(copied(dict(part.values)))
     forget_missing(tree)
     _mark(tree, part, pointer)
-
-
-#: Area and thickness of a cushion that is told by its material, where none are given yet.
-SIZE = {"area": 0.16, "thickness": 0.15}
+    for key in missing:
+        mark_typical(tree, f"{pointer}/{key}", NO_SOURCE)
 
 
 def _take_material(tree: Tree, part: Part, pointer: str) -> None:

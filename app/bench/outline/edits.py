@@ -11,6 +11,7 @@ from functools import partial
 from itertools import pairwise
 from typing import Any
 
+from app.bench.forms.begun import mark_begun
 from app.bench.forms.kinds import NEW_PARTS, filled
 from app.bench.forms.spec import Context, Tree
 from app.bench.forms.use_part import free_name
@@ -229,6 +230,8 @@ def _insert(
             parent, key = pointer.rsplit("/", 1)
             value_at(tree, parent)[key] = []
         value_at(tree, pointer).insert(index, copied(entry))
+        if copied_from is None:
+            mark_begun(tree, f"{pointer}/{index}")
 
     return Edit(label, change, f"{list_pointer}/{index}")
 

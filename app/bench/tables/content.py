@@ -70,13 +70,16 @@ def _put_behind(columns: dict[Key, Column], before: Key | None, column: Column) 
     columns.update({c.key: c for c in ordered})
 
 
-def text_of(spec: Spec, units: Units) -> str:
-    """A cell as text: numbers in the unit of their column, choices by their word."""
+def text_of(spec: Spec, units: Units, exact: bool = False) -> str:
+    """A cell as text: numbers in the unit of their column, choices by their word. `exact` with all digits of numbers
+    that are worked out, for pasting back."""
     match spec:
         case NumberSpec(value=None):
             return ""
         case NumberSpec(whole=True):
             return str(int(spec.value or 0))
+        case NumberSpec() if exact:
+            return f"{float(units.number(spec.value or 0.0, spec.dimension)):.15g}"
         case NumberSpec():
             return units.text(spec.value or 0.0, spec.dimension)
         case TextSpec():

@@ -7,6 +7,7 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 from dataclasses import dataclass
+from math import isclose
 from typing import Any
 
 from app.bench.forms.bounds import breach_of
@@ -132,9 +133,12 @@ def _put(tree: Tree, context: Context, content: Content, cell: Cell, units: Unit
         value = value_from(spec, cell.text, units)
     except ValueError as error:
         return Fault(pointer, cell.text, str(error))
-    breach = breach_of(spec, value, units) if isinstance(spec, NumberSpec) else None
-    if breach:
-        return Fault(pointer, cell.text, breach)
+    if isinstance(spec, NumberSpec):
+        breach = breach_of(spec, value, units)
+        if breach:
+            return Fault(pointer, cell.text, breach)
+        if None not in (value, spec.value) and isclose(value, spec.value or 0.0, rel_tol=1e-12):
+            return None  # what was copied from here comes back as it was
     _write(tree, spec, pointer, value)
     return None
 

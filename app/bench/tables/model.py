@@ -68,6 +68,8 @@ class TableModel(QAbstractTableModel):
 
     def fill(self, cells: Sequence[Cell], label: str = "") -> bool:
         """Put texts into cells as one step of undo; False where nothing was taken, with the reason in `refusal`."""
+        if len(cells) > 1:  # a block tells anew what is wrong with its cells
+            self._document.forget_rejected(self._list_pointer)
         sentence = fill_cells(self._document, self.context, self._content, cells, self._units, label)
         self.refusal = sentence or ""
         self.follow()
@@ -134,6 +136,11 @@ class TableModel(QAbstractTableModel):
         if role != Role.EditRole or self.spec_at(index) is None:
             return False
         return self.fill([Cell(index.row(), index.column(), str(value))])
+
+    def copied_text(self, row: int, column: int) -> str:
+        """A cell for the clipboard: numbers with all their digits."""
+        spec = self._content.spec_at(row, column)
+        return text_of(spec, self._units, exact=True) if spec is not None else ""
 
     def choices_at(self, index: Index) -> list[str]:
         """The words of a choice, none for other cells."""

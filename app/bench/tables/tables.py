@@ -212,10 +212,7 @@ class Tables(QWidget):
             return
         rows = range(min(i.row() for i in chosen), max(i.row() for i in chosen) + 1)
         columns = range(min(i.column() for i in chosen), max(i.column() for i in chosen) + 1)
-        texts = [
-            "\t".join(str(self.model.index(r, c).data(Qt.ItemDataRole.EditRole) or "") for c in columns)
-            for r in rows
-        ]
+        texts = ["\t".join(self.model.copied_text(row, column) for column in columns) for row in rows]
         QGuiApplication.clipboard().setText("\n".join(texts))
 
     def clear_cells(self) -> None:
