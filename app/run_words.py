@@ -9,7 +9,7 @@ from dataclasses import dataclass
 import numpy as np
 
 from app.units import Units, rounded
-from app.words import FEET, SIGNS, STATES, Note, percent
+from app.words import FEET, SIGNS, STATES, Note, graver, percent
 from solver.answer.findings import EnergyFinding, Findings, SetFinding, StressFinding
 from solver.answer.result import Residual, Result
 from solver.convergence import MeshCheck
@@ -55,6 +55,7 @@ def in_brief(findings: Findings, units: Units) -> tuple[str, ...]:
         found.append(_set(findings.set, units))
     if findings.energy is not None:
         found.append(_energy(findings.energy))
+    found += [_stress(one, units) for one in graver(findings.striking)]
     return tuple(found)
 
 

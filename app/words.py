@@ -64,14 +64,36 @@ class Note:
 
 
 def verdict(findings: Findings, units: Units) -> tuple[Line, ...]:
-    """The verdict: peaks with their share of the limit, set, energy past the first gauge."""
+    """The verdict: peaks with their share of the limit, set, energy past the first gauge; and what is near or over its
+    limit in a rod that strikes."""
     larger = max(findings.compression.peak.value, findings.tension.peak.value)
     lines = [_stress(findings.compression, units, larger), _stress(findings.tension, units, larger)]
     if findings.set is not None:
         lines.append(_set(findings.set, units))
     if findings.energy is not None:
         lines.append(_energy(findings.energy, units))
+    lines += [_in_the_striking_rod(one, units) for one in graver(findings.striking)]
     return tuple(lines)
+
+
+def graver(striking: tuple[StressFinding, ...]) -> list[StressFinding]:
+    """Stresses in a rod that strikes that belong to the verdict: near or over their limit."""
+    return [one for one in striking if one.state in ("near", "over")]
+
+
+def _in_the_striking_rod(of: StressFinding, units: Units) -> Line:
+    worst = of.worst
+    assert worst is not None
+    face = f"{units.show(-worst.position, 'length')} behind its struck face, {units.show(worst.time, 'time')}"
+    name = f"{of.sign} in {worst.segment}, which strikes"
+    return Line(
+        units.show(worst.value, "stress"),
+        name,
+        f"{_state(worst)} · {face}",
+        of.state,
+        worst.time,
+        worst.position,
+    )
 
 
 def notes(findings: Findings, case: Case, units: Units) -> tuple[Note, ...]:
@@ -81,6 +103,7 @@ def notes(findings: Findings, case: Case, units: Units) -> tuple[Note, ...]:
         found.append(
             Note(f"The struck end rebounds by {units.show(findings.set.head_rebound, 'small_length')}.")
         )
+    found += _striking(findings.striking, units)
     found += [
         Note(warning(remark, units), position=remark.place or None)
         for remark in findings.remarks
@@ -151,6 +174,18 @@ def _stress(finding: StressFinding, units: Units, larger: float) -> Line:
             f"{units.show(before.value, 'stress')}{its} {place_and_time(before.position, before.time, units)}"
         )
     return Line(units.show(peak.value, "stress"), name, detail, finding.state, peak.time, peak.position)
+
+
+def _striking(both: tuple[StressFinding, ...], units: Units) -> Iterator[Note]:
+    """What a rod that strikes sees, where it is not grave enough for the verdict."""
+    larger = max((one.peak.value for one in both), default=0.0)
+    for one in both:
+        if one in graver(both) or one.peak.value <= NOTHING * larger:
+            continue
+        state = "" if one.worst is None else f", {_state(one.worst)}"
+        stress = units.show(one.peak.value, "stress")
+        text = f"{one.peak.segment}, which strikes, sees up to {stress} of {one.sign}{state}."
+        yield Note(text, one.peak.time, one.peak.position)
 
 
 def _state(stress: StressAt) -> str:

@@ -5,6 +5,7 @@ Every number here is read from the arrays that the pictures draw, so that a find
 
 from __future__ import annotations
 
+from collections.abc import Sequence
 from dataclasses import dataclass, replace
 from typing import Literal
 
@@ -15,10 +16,12 @@ from solver.answer.remark import Remark
 from solver.answer.result import Array, Envelope, EventKind, Result, first_of_largest
 from solver.model.derived import impact_energy, ram_mass, segment_mass
 from solver.model.load import GRAVITY, Drop, Striker
+from solver.model.member import Segment
 from solver.model.project import Case
 
 State = Literal["within", "near", "over", "no limit"]
 Sign = Literal["compression", "tension"]
+SIGNS: tuple[Sign, Sign] = ("compression", "tension")
 
 #: Share of a limit above which a stress counts as near to it (a choice of this program).
 NEAR = 0.9
@@ -134,7 +137,8 @@ class Quality:
 
 @dataclass(frozen=True)
 class Findings:
-    """All facts of a run, verdict first."""
+    """All facts of a run, verdict first. `striking`: compression and tension in a rod that strikes (ram or striker), at
+    its negative positions; empty where none does."""
 
     compression: StressFinding
     tension: StressFinding
@@ -144,10 +148,12 @@ class Findings:
     remarks: tuple[Remark, ...]
     cautions: tuple[Caution, ...]
     quality: Quality
+    striking: tuple[StressFinding, ...] = ()
 
 
 def findings_of(result: Result) -> Findings:
     """The facts of a result, finished or not."""
+    rod, striking = result.striking_envelope, result.case.ram_segments
     return Findings(
         compression=_of_all_blows(result, "compression"),
         tension=_of_all_blows(result, "tension"),
@@ -165,13 +171,19 @@ def findings_of(result: Result) -> Findings:
             result.finished,
             result.at_rest,
         ),
+        striking=() if rod is None else tuple(_stress(result.case, rod, striking, sign) for sign in SIGNS),
     )
 
 
 def segment_of(case: Case, position: Array) -> Array:
     """Index of the member's segment at each position (m), same shape; a place on a joint counts to the lower one."""
-    ends = np.cumsum([s.length for s in case.member.segments])
-    return np.minimum(np.searchsorted(ends, position, side="right"), len(ends) - 1)
+    return _owner(case.member.segments, position)
+
+
+def _owner(segments: Sequence[Segment], distance: Array) -> Array:
+    """The same along any rod; `distance` (m) from where its first segment begins."""
+    ends = np.cumsum([s.length for s in segments])
+    return np.minimum(np.searchsorted(ends, distance, side="right"), len(ends) - 1)
 
 
 def first_blow(result: Result) -> tuple[StressFinding, StressFinding]:
@@ -181,25 +193,30 @@ def first_blow(result: Result) -> tuple[StressFinding, StressFinding]:
     a second blow depend on when the ram falls back, and do not grow steadily with the first.
     """
     envelope = result.envelope if result.first_envelope is None else result.first_envelope
-    return _stress(result, envelope, "compression"), _stress(result, envelope, "tension")
+    case = result.case
+    compression, tension = (_stress(case, envelope, case.member.segments, sign) for sign in SIGNS)
+    return compression, tension
 
 
 def _of_all_blows(result: Result, sign: Sign) -> StressFinding:
-    found, again = _stress(result, result.envelope, sign), result.struck_again
+    case, again = result.case, result.struck_again
+    found = _stress(case, result.envelope, case.member.segments, sign)
     if again is None or result.first_envelope is None or found.peak.time < again:
         return found
-    return replace(found, struck_again=again, first=_stress(result, result.first_envelope, sign).peak)
+    return replace(
+        found, struck_again=again, first=_stress(case, result.first_envelope, case.member.segments, sign).peak
+    )
 
 
-def _stress(result: Result, envelope: Envelope, sign: Sign) -> StressFinding:
-    case = result.case
+def _stress(case: Case, envelope: Envelope, segments: Sequence[Segment], sign: Sign) -> StressFinding:
+    """Of the member, or of a rod that strikes, which ends at its struck face, 0."""
     if sign == "compression":
         values, times = np.maximum(-envelope.lowest_stress, 0.0), envelope.lowest_stress_time
     else:
         values, times = np.maximum(envelope.highest_stress, 0.0), envelope.highest_stress_time
-    segments = case.member.segments
     limits = [case.material(s.material).limits.value(sign) for s in segments]
-    owner = segment_of(case, envelope.position)
+    begins = 0.0 if envelope.position[0] > 0 else -sum(s.length for s in segments)
+    owner = _owner(segments, envelope.position - begins)
 
     def at(index: int) -> StressAt:
         number = int(owner[index])

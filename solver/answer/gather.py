@@ -34,7 +34,8 @@ def gather(blow: Blow, finished: bool, seconds: float) -> Result:
     """The answer of one blow (the last of several)."""
     chain = blow.chain
     ext = blow.extremes
-    envelope = _envelope(blow, ext)
+    envelope = _envelope(blow, ext, blow.member_links)
+    striking = np.flatnonzero(chain.axial[: chain.head] > 0)
     again = len(ext.second) > 0 and ext.second[2] > 0
     residual, _ = residual_of(blow.start_row, blow.frames.ledger)
     ledger = _ledger(blow, residual)
@@ -69,7 +70,8 @@ def gather(blow: Blow, finished: bool, seconds: float) -> Result:
         residual=_residual(blow),
         crack_openings=_crack_openings(blow),
         struck_again=float(ext.second[2] * chain.dt) if again else None,
-        first_envelope=_envelope(blow, _of_first_blow(ext)) if again else None,
+        first_envelope=_envelope(blow, _of_first_blow(ext), blow.member_links) if again else None,
+        striking_envelope=_envelope(blow, ext, striking) if len(striking) else None,
     )
 
 
@@ -98,9 +100,8 @@ def _gauges(blow: Blow) -> dict[str, GaugeRecord]:
     return found
 
 
-def _envelope(blow: Blow, ext: Extremes) -> Envelope:
+def _envelope(blow: Blow, ext: Extremes, links: NDArray[np.int64]) -> Envelope:
     chain = blow.chain
-    links = blow.member_links
     area, reach = chain.area[links], _yield_reach(blow)[links]
     moved = ext.travel - blow.rest
     return Envelope(

@@ -212,6 +212,7 @@ class Result:
 
     `struck_again` is the time (s) at which the ram or striker struck again, having been away for longer than a wave
     takes to the far end and back; `first_envelope` what the envelope was until then. Both `None` where it did not.
+    `striking_envelope` is that of a rod that strikes, at its negative positions; `None` where there is none.
     """
 
     case: Case
@@ -240,6 +241,7 @@ class Result:
     crack_openings: dict[str, float] = field(default_factory=dict)
     struck_again: float | None = None
     first_envelope: Envelope | None = None
+    striking_envelope: Envelope | None = None
 
     @property
     def warnings(self) -> tuple[str, ...]:

@@ -190,3 +190,15 @@ def test_every_term_is_one_or_two_plain_sentences():
     for term in TERMS:
         assert term.means.endswith("."), term.word
         assert len(term.means) < 240, term.word
+
+
+def test_a_rod_that_strikes_comes_into_the_verdict_once_it_nears_its_limit():
+    calm, grave = stress(value=50e6, limit=100e6), stress(value=110e6, limit=100e6)
+    lines = verdict(findings(striking=(grave, calm)), METRIC)
+    assert len(lines) == len(verdict(findings(), METRIC)) + 1
+    assert lines[-1].state == "over"
+    assert "which strikes" in lines[-1].name
+    assert any(
+        "which strikes, sees up to 50.0 MPa" in plain(n.text)
+        for n in notes(findings(striking=(grave, calm)), CASE, METRIC)
+    )

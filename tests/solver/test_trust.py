@@ -100,3 +100,20 @@ def test_faces_that_part_and_touch_while_the_wave_runs_are_one_blow() -> None:
     assert [event.kind for event in run.events].count("impact") > 1
     assert run.struck_again is None
     assert first_blow(run)[0] == findings_of(run).compression
+
+
+@pytest.mark.parametrize("kind", ["drop", "striker"])
+def test_a_rod_that_strikes_is_held_against_its_own_limits(kind: str) -> None:
+    """Equal rods at 3 m/s: E v / 2c = 60 MPa in both. The lower half of the one that strikes allows 50 MPa only."""
+    soft = material("soft", limits={"compression": 50e6, "tension": 1e6})
+    rod = [part(1.0), part(1.0, of="soft")]
+    load = {"kind": "striker", "velocity": 3.0, "segments": rod}
+    if kind == "drop":
+        load = {"kind": "drop", "impact_velocity": 3.0, "cap_mass": 0.0, "ram": {"segments": rod}}
+    compression, tension = findings_of(solved(load, materials=[soft], duration=0.002)).striking
+    assert compression.worst is not None
+    assert compression.peak.value == pytest.approx(60e6, rel=1e-9)
+    assert (compression.state, compression.worst.segment) == ("over", "part 2")
+    assert compression.worst.share == pytest.approx(1.2, rel=1e-9)
+    assert -1.0 < compression.worst.position < 0.0
+    assert tension.state == "within"
