@@ -11,11 +11,12 @@ from pathlib import Path
 from reportlab.pdfbase import pdfmetrics
 from reportlab.pdfbase.ttfonts import TTFont
 
+from app.report.reading_order import on_paper, turns
+
 REGULAR, BOLD = "ReportText", "ReportStrong"
 FILES = {REGULAR: "DejaVuSans.ttf", BOLD: "DejaVuSans-Bold.ttf"}
 #: Stands for a letter that the font lacks, such as an emoji.
 MISSING = "□"
-RIGHT_TO_LEFT = ("R", "AL")
 #: Marks that only steer how text runs: joiners, directions, variants. They have no shape of their own.
 UNSEEN = re.compile("[\u200b-\u200f\u202a-\u202e\u2060-\u206f\ufe00-\ufe0f\ufeff]")
 
@@ -57,13 +58,12 @@ def fitted(text: str, size: float, room: float, bold: bool = False) -> str:
 def printable(text: str, bold: bool = False) -> str:
     """Text as the font can show it from left to right, with line breaks kept.
 
-    A letter without a shape becomes a box. Runs of letters that read from right to left are turned round, which shows
-    Hebrew as it is written, and Arabic in letters that are not joined.
+    A letter without a shape becomes a box; Hebrew and Arabic stand in their order, Arabic joined.
     """
     known = register_fonts()[BOLD if bold else REGULAR]
     text = UNSEEN.sub("", unicodedata.normalize("NFC", text))
-    if _turns(text):
-        text = "\n".join(_turned(line) for line in text.split("\n"))
+    if turns(text):
+        text = "\n".join(map(on_paper, text.split("\n")))
     return "".join(c if ord(c) in known or c == "\n" else " " if c.isspace() else MISSING for c in text)
 
 
@@ -86,23 +86,28 @@ def _letter_width(letter: str, size: float) -> float:
 
 def escaped(text: str) -> str:
     """Text of which every letter can be printed and read back: others as JSON writes them."""
-    return "".join(c if printable(c) == c and not _turns(c) else json.dumps(c)[1:-1] for c in text)
+    return "".join(c if printable(c) == c and not turns(c) else json.dumps(c)[1:-1] for c in text)
 
 
-def _turns(text: str) -> bool:
-    return any(unicodedata.bidirectional(c) in RIGHT_TO_LEFT for c in text)
+def wrapped(text: str, size: float, room: float, bold: bool = False) -> str:
+    """Text that reads from right to left with line breaks where a line is full: they must be known before its letters
+    are put in order. Other text as it is."""
+    if not turns(text):
+        return text
+    lines = []
+    for whole in text.split("\n"):
+        line = ""
+        for word in whole.split(" "):
+            longer = f"{line} {word}" if line else word
+            if line and text_width(longer, size, bold) > room:
+                lines.append(line)
+                line = word
+            else:
+                line = longer
+        lines.append(line)
+    return "\n".join(lines)
 
 
-def _turned(line: str) -> str:
-    """A line with each run of right-to-left letters, and the blanks inside it, turned round."""
-    found, run, blanks = [], "", ""
-    for letter in line:
-        way = unicodedata.bidirectional(letter)
-        if way in RIGHT_TO_LEFT or (run and way == "NSM"):
-            run, blanks = run + blanks + letter, ""
-        elif run and letter == " ":
-            blanks += letter
-        else:
-            found.append(run[::-1] + blanks + letter)
-            run = blanks = ""
-    return "".join(found) + run[::-1] + blanks
+def plain(text: str) -> str:
+    """For a reader that orders letters itself, such as the title of a PDF: without what cannot be told."""
+    return "".join(c for c in UNSEEN.sub("", text) if c >= " " and not "\ud800" <= c <= "\udfff")

@@ -24,7 +24,7 @@ from reportlab.platypus.tableofcontents import TableOfContents
 
 from app.report.blocks import Report
 from app.report.figures.pdf import set_date
-from app.report.lettering import REGULAR, fitted, printable, register_fonts
+from app.report.lettering import REGULAR, fitted, plain, printable, register_fonts
 from app.report.pdf_flow import flow_of, heading, key_value_table, paragraph
 from app.report.pdf_styles import SOFT, contents_styles, styles
 
@@ -53,9 +53,9 @@ class _Pages(BaseDocTemplate):
             rightMargin=MARGIN,
             topMargin=HIGH,
             bottomMargin=HIGH,
-            title=printable(report.front.title),
+            title=plain(report.front.title),
             author="",
-            subject=printable(report.front.subtitle),
+            subject=plain(report.front.subtitle),
             creator="Striketrace",
             invariant=1,
         )
@@ -109,7 +109,7 @@ def _front(report: Report, width: float) -> Iterator[Flowable]:
         share = min(150 / wide, 60 / high)
         yield Image(io.BytesIO(front.logo), wide * share, high * share, hAlign="LEFT")
     yield Spacer(1, 10)
-    yield paragraph(front.title[:600], styles()["title"], bold=True)
+    yield paragraph(front.title[:600], styles()["title"], bold=True, room=width)
     yield Spacer(1, 6)
     yield paragraph(front.subtitle, styles()["subtitle"])
     yield Spacer(1, 12)

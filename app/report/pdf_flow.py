@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterator, Sequence
 from xml.sax.saxutils import escape
 
+from reportlab.lib.enums import TA_RIGHT
 from reportlab.lib.styles import ParagraphStyle
 from reportlab.platypus import (
     CondPageBreak,
@@ -19,8 +20,9 @@ from reportlab.platypus import Paragraph as Words
 
 from app.report.blocks import Block, Bullets, Heading, Listing, Paragraph, Picture, Section, Table
 from app.report.figures.pdf import FigureFlowable
-from app.report.lettering import broken, escaped, printable
+from app.report.lettering import broken, escaped, plain, printable, wrapped
 from app.report.pdf_styles import GRID, HEAD, INK, SOFT, styles
+from app.report.reading_order import begins_at_the_right, turns
 
 #: A cell with more letters is cut: a row must fit on a page.
 LONGEST_CELL = 1500
@@ -40,18 +42,23 @@ def markup(text: str, bold: bool = False) -> str:
     return escape(printable(text, bold)).replace("\n", "<br/>")
 
 
-def paragraph(text: str, style: ParagraphStyle, bold: bool = False) -> Words:
-    """A paragraph of plain text."""
+def paragraph(text: str, style: ParagraphStyle, bold: bool = False, room: float = 0.0) -> Words:
+    """A paragraph of plain text. `room` (points) is the width of its lines: with it, text that reads from right to left
+    is broken in its own order and begins at the right."""
+    if room and turns(text):
+        text = wrapped(text, style.fontSize, room, bold)
+        if begins_at_the_right(text):
+            style = ParagraphStyle(f"{style.name}-right", parent=style, alignment=TA_RIGHT)
     return Words(markup(text, bold), style)
 
 
-def heading(text: str, level: int, key: str | None) -> Words:
+def heading(text: str, level: int, key: str | None, room: float = 0.0) -> Words:
     """A heading; with a key it stands in the contents (levels 1 and 2)."""
-    made = paragraph(text, styles()[f"heading{level}"], bold=True)
+    made = paragraph(text, styles()[f"heading{level}"], bold=True, room=room)
     if key is not None and level < 3:
         short = text if len(text) <= LONGEST_ENTRY else text[: LONGEST_ENTRY - 1] + "…"
         made.contents_level, made.contents_key = level - 1, key
-        made.contents_text, made.contents_markup = printable(short), markup(short, level == 1)
+        made.contents_text, made.contents_markup = plain(short), markup(short, level == 1)
     return made
 
 
@@ -62,7 +69,7 @@ def flow_of(section: Section, number: int, width: float) -> Iterator[Flowable]:
     parts: list[tuple[Block | None, list[Flowable]]] = [(None, [first])]
     for index, block in enumerate(section.blocks):
         if isinstance(block, Heading):
-            parts.append((block, [heading(block.text, block.level, f"{section.key}-{index}")]))
+            parts.append((block, [heading(block.text, block.level, f"{section.key}-{index}", width)]))
         else:
             parts.append((block, list(_made(block, width))))
     for index, (kind, made) in enumerate(parts):
@@ -124,16 +131,20 @@ def _made(block: Block, width: float) -> Iterator[Flowable]:
     look = styles()
     match block:
         case Paragraph():
-            yield paragraph(block.text, look[block.style], bold=block.style == "caution")
+            yield paragraph(block.text, look[block.style], block.style == "caution", width)
         case Bullets():
             yield from (Words(markup(item), look["bullet"], bulletText="•") for item in block.items)
         case Table():
             if block.caption:
-                yield paragraph(block.caption, look["caption"], bold=True)
+                yield paragraph(block.caption, look["caption"], bold=True, room=width)
             yield _table(block, width)
         case Picture():
             yield KeepTogether(
-                [Spacer(1, 6), FigureFlowable(block.figure), paragraph(block.caption, look["below"])]
+                [
+                    Spacer(1, 6),
+                    FigureFlowable(block.figure),
+                    paragraph(block.caption, look["below"], room=width),
+                ]
             )
         case Listing():
             yield from _listing(block.text, width)
@@ -143,7 +154,10 @@ def _table(table: Table, width: float) -> LongTable:
     look = styles()
     cells = [[paragraph(text, look["head"], bold=True) for text in table.head]]
     for row in table.rows:
-        cells.append([paragraph(_short(text), look["cell"]) for text in row])
+        rooms = [share * width - 9 for share in table.shares]
+        cells.append(
+            [paragraph(_short(t), look["cell"], room=room) for t, room in zip(row, rooms, strict=True)]
+        )
     if not table.rows:
         cells.append([paragraph("none", look["cell"]), *([""] * (len(table.head) - 1))])
     made = LongTable(cells, [share * width for share in table.shares], repeatRows=1, splitByRow=1)

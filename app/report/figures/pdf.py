@@ -15,7 +15,7 @@ from reportlab.pdfgen.pathobject import PDFPathObject
 from reportlab.platypus import Flowable
 
 from app.report.figures.marks import Figure, Mark, Path, Text
-from app.report.lettering import BOLD, REGULAR, printable, register_fonts
+from app.report.lettering import BOLD, REGULAR, plain, printable, register_fonts
 
 
 class FigureFlowable(Flowable):
@@ -47,7 +47,7 @@ def figure_pdf(figure: Figure, date: datetime) -> bytes:
     stream = io.BytesIO()
     canvas = Canvas(stream, pagesize=(figure.width, figure.height), invariant=1)
     set_date(canvas, date)
-    canvas.setTitle(printable(figure.name))
+    canvas.setTitle(plain(figure.name))
     register_fonts()
     draw_figure(canvas, figure)
     canvas.showPage()
