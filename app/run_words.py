@@ -8,9 +8,9 @@ from dataclasses import dataclass
 
 import numpy as np
 
-from app.units import Units, rounded
-from app.words import FEET, SIGNS, STATES, Note, graver, percent
-from solver.answer.findings import EnergyFinding, Findings, SetFinding, StressFinding
+from app.units import Units
+from app.words import SIGNS, STATES, Note, blows, graver, percent
+from solver.answer.findings import EnergyFinding, Findings, StressFinding
 from solver.answer.result import Residual, Result
 from solver.convergence import MeshCheck
 
@@ -40,9 +40,9 @@ def locked_in(residual: Residual, units: Units) -> Note | None:
     index = int(np.argmax(np.abs(residual.force)))
     force, place = float(residual.force[index]), float(residual.position[index])
     word = "compression" if force < 0 else "tension"
-    blows = len(residual.set_per_blow)
+    count = len(residual.set_per_blow)
     return Note(
-        f"After {blows} blows {units.show(abs(force), 'force')} of {word} stays locked in at "
+        f"After {count} blows {units.show(abs(force), 'force')} of {word} stays locked in at "
         f"{units.show(place, 'length')}.",
         position=place,
     )
@@ -52,7 +52,7 @@ def in_brief(findings: Findings, units: Units) -> tuple[str, ...]:
     """The details of each line of the verdict in so few words that they fit in one line of a narrow panel."""
     found = [_stress(findings.compression, units), _stress(findings.tension, units)]
     if findings.set is not None:
-        found.append(_set(findings.set, units))
+        found.append(blows(findings.set, units))
     if findings.energy is not None:
         found.append(_energy(findings.energy))
     found += [_stress(one, units) for one in graver(findings.striking)]
@@ -133,26 +133,19 @@ def _blows(result: Result, units: Units) -> Iterator[Note]:
 
 
 def _stress(of: StressFinding, units: Units) -> str:
-    if of.first is not None:
-        before = f"second blow; before it {units.show(of.first.value, 'stress')}"
-        return f"{SIGNS[of.state]} {before}" + (
-            "" if of.first.share is None else f", {percent(of.first.share)}"
-        )
     if of.worst is None:
         state = f"{SIGNS['no limit']} {STATES['no limit']}"
-        return f"{state} · {units.show(of.peak.position, 'length')}"
+        return f"{state} · {_second_blow(of, units) or units.show(of.peak.position, 'length')}"
     share = "" if of.worst.share is None else f", {percent(of.worst.share)}"
     word = of.state
+    if of.first is not None:
+        return f"{SIGNS[of.state]} {word}{share} · {_second_blow(of, units)}"
     where = units.show(of.worst.position, "length")
     return f"{SIGNS[of.state]} {word}{share} · {where}, {units.show(of.worst.time, 'time')}"
 
 
-def _set(of: SetFinding, units: Units) -> str:
-    per, name = (0.3048, "foot") if units.unit("length") in FEET else (0.25, "0.25 m")
-    if not of.blows_per_metre:
-        return "the toe does not stay down"
-    blows = of.blows_per_metre * per
-    return f"{rounded(blows, 2 if blows < 10 else 3)} blows per {name}"
+def _second_blow(of: StressFinding, units: Units) -> str:
+    return "" if of.first is None else f"second blow; before it {units.show(of.first.value, 'stress')}"
 
 
 def _energy(of: EnergyFinding) -> str:

@@ -37,6 +37,8 @@ LOAD_CAUTION = "Diesel and vibratory hammers are not modelled."
 
 #: Units of length in which blows are counted for each foot.
 FEET = ("ft", "in", "yd")
+#: More blows for each 0.25 m or foot than this are as good as no set (a choice of this program).
+UNCOUNTED = 1000
 #: Stresses below this share of the larger peak are rounding, and are told as none at all.
 NOTHING = 1e-9
 
@@ -193,15 +195,19 @@ def _state(stress: StressAt) -> str:
     return f"{SIGNS[stress.state]} {STATES[stress.state]}, {percent(stress.share)}"
 
 
-def _set(finding: SetFinding, units: Units) -> Line:
+def blows(finding: SetFinding, units: Units) -> str:
+    """ "54 blows per 0.25 m", or per foot; more than a person would count are not counted."""
     per, name = (0.3048, "foot") if units.unit("length") in FEET else (0.25, "0.25 m")
-    moved = f"toe moved {units.show(finding.toe_largest, 'small_length')}"
-    blows = finding.blows_per_metre
-    detail = (
-        f"{rounded(blows * per, 2 if blows * per < 10 else 3)} blows per {name} · {moved}"
-        if blows
-        else (f"the toe does not stay down · {moved}")
-    )
+    if finding.blows_per_metre is None:
+        return "the toe does not stay down"
+    counted = finding.blows_per_metre * per
+    if counted > UNCOUNTED:
+        return f"practically none, over {UNCOUNTED} blows per {name}"
+    return f"{rounded(counted, 2 if counted < 10 else 3)} blows per {name}"
+
+
+def _set(finding: SetFinding, units: Units) -> Line:
+    detail = f"{blows(finding, units)} · toe moved {units.show(finding.toe_largest, 'small_length')}"
     figure = units.show(finding.value, "small_length")
     return Line(figure, "set per blow", detail, None, finding.time, finding.position)
 

@@ -2,10 +2,12 @@
 
 from __future__ import annotations
 
+from dataclasses import replace
 from typing import get_args
 
 import pytest
 
+from app.run_words import in_brief
 from app.standing import time_left
 from app.starting_points import driven_pile, rod_or_bar
 from app.terms import TERMS
@@ -202,3 +204,22 @@ def test_a_rod_that_strikes_comes_into_the_verdict_once_it_nears_its_limit():
         "which strikes, sees up to 50.0 MPa" in plain(n.text)
         for n in notes(findings(striking=(grave, calm)), CASE, METRIC)
     )
+
+
+def test_a_peak_after_a_second_blow_shows_the_peak_before_it():
+    late = replace(
+        stress("tension", 6.66e6, limit=6.5e6),
+        struck_again=0.171,
+        first=StressAt(3.53e6, 3.5, 0.17, "Upper", 6.5e6),
+    )
+    line = verdict(findings(tension=late), METRIC)[1]
+    assert "after a second blow, 171 ms; before it 3.53 MPa (54 %) at 3.50 m, 170 ms" in plain(line.detail)
+    assert (
+        plain(in_brief(findings(tension=late), METRIC)[1])
+        == "✕ over, 102 % · second blow; before it 3.53 MPa"
+    )
+
+
+def test_a_set_of_next_to_nothing_is_not_counted_in_blows():
+    line = verdict(findings(set=SetFinding(7e-6, 0.8e-3, 3e-3, 0.2, 24.0)), METRIC)[2]
+    assert plain(line.detail).startswith("practically none, over 1000 blows per 0.25 m · toe moved")
