@@ -16,14 +16,15 @@ from solver.answer.store import Store
 from solver.errors import SolveError
 from solver.model.derived import shaft_resistance
 from solver.model.load import History, Pulse
-from solver.numerics.arrays import Frames
+from solver.numerics.arrays import Frames, Rest
 from solver.numerics.assemble import extremes_of, gauge_readings, records_of
-from solver.numerics.balance import LEDGER, SLIP, balance
+from solver.numerics.balance import LEDGER, balance
 from solver.numerics.chain import Chain
 from solver.numerics.equilibrium import State
 from solver.numerics.links import link_forces
 from solver.numerics.march import march
 from solver.numerics.pulses import end_time, step_forces, step_velocities
+from solver.numerics.resting import LOOKS
 from solver.watch import refuse_bad_state
 
 Array = NDArray[np.float64]
@@ -32,12 +33,7 @@ Array = NDArray[np.float64]
 CHUNK = 8_000_000
 #: Most element-steps of a run; more would take hours and is refused with a word.
 MOST_WORK = 2e12
-#: Share of the largest velocity below which the member counts as nearly at rest (and below which it may ring on in
-#: ground that slips no more), and for how many chunks of such runs it must: what still moves is settled statically.
-STILL = 0.03
-RINGING = 0.2
-STILL_CHUNKS = 8
-#: Frames kept for the pictures; above twice as many every second one is dropped.
+#: Fewest frames kept for the pictures of a run with so many steps; at most there are twice as many.
 FRAMES = 1024
 #: Columns of the pictures along the member.
 COLUMNS = 800
@@ -64,39 +60,36 @@ class March:
         self.extremes = extremes_of(chain)
         self.sums = np.zeros(8)
         self.flags = np.zeros(len(state.rod.blocks), dtype=np.int64)
-        self.steps, self.stride = 0, 1
-        self.still, self.slipped = 0, 0.0
+        self.steps, self.residual = 0, 0.0
         self.start_row = self._start_row()
         self.planned = self._planned_steps()
+        self.stride = 2 ** max(0, int(np.floor(np.log2(max(1, self.planned / FRAMES)))))
+        self.ends = self._ends()
         links = np.flatnonzero(chain.axial > 0)
         shown = np.unique(np.linspace(0, len(links) - 1, min(COLUMNS, len(links))).round().astype(int))
         self.columns = links[shown]
-        self.readings = gauge_readings(chain)
+        rows = (self.planned - 1) // self.stride + 1
+        self.records = records_of(chain, gauge_readings(chain), rows, self.columns, self.flags)
         self.rest_forces = self._rest_forces()
         self.gauges = Store(5 * len(chain.case.gauges), self.planned)
         self.ram = Store(3 if chain.train else 0, self.planned)
-        self.frames: list[Frames] = []
         self.events: list[NDArray[np.int64]] = []
 
     def run(self, progress: Callable[[Progress], None] | None, cancel: Callable[[], bool] | None) -> bool:
         """March to the end; returns whether it was stopped before."""
         per_chunk = max(64, CHUNK // self.chain.nodes)
-        if self.chain.case.run.duration is None:
-            # looked at several times while a wave passes once, so that a moment of stillness is not taken for rest
-            per_chunk = min(per_chunk, max(64, self.chain.nodes // 2))
-        told, checked = time.perf_counter(), 0
+        if self.ends.every:
+            per_chunk = max(per_chunk // self.ends.every, 1) * self.ends.every
+        told = time.perf_counter()
         while self.steps < self.planned:
-            self._chunk(self._aligned(min(per_chunk, self.planned - self.steps)))
-            ended = self.steps >= self.planned or self._came_to_rest()
-            stopped = not ended and cancel is not None and cancel()
-            tells = progress is not None and time.perf_counter() - told > 0.02
-            # short chunks need no check each; nothing is shown or returned without one
-            if ended or stopped or tells or (self.steps - checked) * self.chain.nodes >= CHUNK / 4:
-                refuse_bad_state(self)
-                checked = self.steps
-            if ended or stopped:
-                return stopped
-            if tells and progress is not None:
+            rested = self._chunk(min(per_chunk, self.planned - self.steps))
+            # nothing is shown or returned without a look at it
+            self.residual = refuse_bad_state(self)
+            if rested or self.steps >= self.planned:
+                return False
+            if cancel is not None and cancel():
+                return True
+            if progress is not None and time.perf_counter() - told > 0.02:
                 told = time.perf_counter()
                 progress(self.progress())
         return False
@@ -112,7 +105,8 @@ class March:
             stride=self.stride,
             gauges=self.gauges.read(),
             ram=self.ram.read(),
-            frames=self._all_frames(),
+            frames=self.frames(),
+            residual=self.residual,
             events=np.concatenate(self.events),
             start_row=self.start_row,
             rest=self.rest,
@@ -124,9 +118,10 @@ class March:
         )
         return gather(blow, finished=not stopped, seconds=time.perf_counter() - self.began)
 
-    def ledger_rows(self) -> Array:
-        """Rows of the ledger so far, shape (frames, parts)."""
-        return np.concatenate([f.ledger for f in self.frames])
+    def frames(self) -> Frames:
+        """Lines of the pictures and of the ledger so far; later ones do not change them."""
+        rows, r = (self.steps - 1) // self.stride + 1, self.records
+        return Frames(r.stress[:rows], r.velocity[:rows], r.displacement[:rows], r.ledger[:rows])
 
     def _planned_steps(self) -> int:
         """Steps of the run; where it ends by itself, the most that it may take."""
@@ -138,8 +133,19 @@ class March:
                 f"This run would take {steps:.3g} steps of {chain.nodes} nodes, more than can be solved in hours. "
                 "Shorten the duration, or give longer elements."
             )
-        self.stride = 2 ** max(0, int(np.floor(np.log2(max(1, steps / FRAMES)))))
         return steps
+
+    def _ends(self) -> Rest:
+        """Looked at several times while a wave passes once, so that a moment of stillness is not taken for rest."""
+        case, nodes = self.chain.case, self.chain.nodes
+        looks = min(max(64, CHUNK // nodes), max(64, nodes // 2)) if case.run.duration is None else 0
+        return Rest(
+            every=max(looks // self.stride, 1) * self.stride if looks else 0,
+            load_end=_load_end(self.chain),
+            grounded=case.ground is not None,
+            still=np.zeros(1, dtype=np.int64),
+            slipped=np.zeros(1),
+        )
 
     def _start_row(self) -> Array:
         """The ledger just before the first step: the same balance, on the half step before it."""
@@ -158,33 +164,12 @@ class March:
         link_forces(
             rod._replace(state=rod.state.copy()), self.rest, np.zeros_like(self.rest), force, self.chain.dt
         )
-        node, weights = self.readings
+        node, weights = self.records.node, self.records.weights
         share, left, right, constant = (weights[:, :, i] for i in (0, 1, 2, 4))
         # a weight of a link that is not there is 0
         last = len(force) - 1
         reading = left * force[np.maximum(node - 1, 0)] + right * force[np.minimum(node, last)] + constant
         return (share * reading).sum(axis=1)
-
-    def _aligned(self, count: int) -> int:
-        """A whole number of frames, but for the last chunk."""
-        self._thin()
-        whole = max(count // self.stride, 1) * self.stride
-        return min(whole, self.planned - self.steps)
-
-    def _thin(self) -> None:
-        while sum(len(f.ledger) for f in self.frames) > 2 * FRAMES and self.steps % (2 * self.stride) == 0:
-            f = self._all_frames()
-            self.frames = [Frames(f.force[::2], f.velocity[::2], f.displacement[::2], f.ledger[::2])]
-            self.stride *= 2
-
-    def _all_frames(self) -> Frames:
-        kept = self.frames
-        return Frames(
-            np.concatenate([f.force for f in kept]),
-            np.concatenate([f.velocity for f in kept]),
-            np.concatenate([f.displacement for f in kept]),
-            self.ledger_rows(),
-        )
 
     def _load(self, count: int) -> Array:
         load, dt = self.chain.case.load, self.chain.dt
@@ -194,35 +179,22 @@ class March:
             return step_forces(load, self.steps, count, dt)
         return step_velocities(load, self.steps, count, dt)
 
-    def _chunk(self, count: int) -> None:
-        s, chain = self.state, self.chain
-        records = records_of(chain, self.readings, count, self.stride, self.columns, self.flags)
-        march(
-            s.rod, s.shaft, s.bounds, s.motion, self.extremes, records, self.sums, self._load(count),
-            self.steps, count, self.stride, chain.dt, 0.0,
+    def _chunk(self, count: int) -> bool:
+        """March at most so many steps; returns whether the run came to rest."""
+        s, chain, first = self.state, self.chain, self.steps
+        (gauges, gauge_column), (ram, ram_column) = self.gauges.room(count), self.ram.room(count)
+        since = np.array([first - gauge_column, first - ram_column])
+        records = self.records._replace(gauges=gauges, ram=ram, since=since)
+        records.event_count[0] = 0
+        done = march(
+            s.rod, s.shaft, s.bounds, s.motion, self.extremes, records, self.ends, self.sums, self._load(count),
+            first, count, self.stride, chain.dt, 0.0,
         )  # fmt: skip
-        parts = (records.force, records.velocity, records.displacement, records.acceleration, records.strain)
-        self.gauges.append(np.stack(parts, axis=1).reshape(-1, count))
-        self.ram.append(records.ram)
-        self.frames.append(
-            Frames(records.frame_force, records.frame_velocity, records.frame_displacement, records.ledger)
-        )
+        self.gauges.take(done)
+        self.ram.take(done)
         self.events.append(records.events[: records.event_count[0]].copy())
-        self.steps += count
-
-    def _came_to_rest(self) -> bool:
-        """Whether a run without a set duration may end: its load is over and the member moves no more."""
-        if self.chain.case.run.duration is not None or self.steps * self.chain.dt < _load_end(self.chain):
-            return False
-        head = self.chain.head
-        fastest = float(np.max(self.extremes.speed[head:]))
-        moving = float(np.max(np.abs(self.state.motion.v[head:])))
-        slipped, self.slipped = self.sums[SLIP] - self.slipped, float(self.sums[SLIP])
-        # a member that rings in ground which slips no more adds nothing to its set: the rest of it is statics
-        ringing = self.chain.case.ground is not None and slipped <= 1e-9 * self.sums[SLIP]
-        quiet = moving < STILL * fastest or (ringing and moving < RINGING * fastest)
-        self.still = self.still + 1 if quiet else 0
-        return self.still >= STILL_CHUNKS
+        self.steps += done
+        return bool(self.ends.still[0] >= LOOKS)
 
     def progress(self) -> Progress:
         """How far the run is."""

@@ -10,7 +10,7 @@ from numpy.typing import NDArray
 from solver.errors import SolveError
 from solver.model.project import Case
 from solver.model.surroundings import Resistance
-from solver.numerics.arrays import Extremes
+from solver.numerics.arrays import Extremes, Frames
 from solver.numerics.balance import growing_share, moving_share, residual_of
 from solver.numerics.chain import Chain, Stretch, segments_of
 from solver.numerics.equilibrium import State
@@ -34,8 +34,8 @@ class Watched(Protocol):
     steps: int
     stride: int
 
-    def ledger_rows(self) -> NDArray[np.float64]:
-        """Rows of the ledger so far, shape (frames, parts)."""
+    def frames(self) -> Frames:
+        """Pictures and ledger so far."""
         ...
 
 
@@ -100,8 +100,11 @@ def _refuse_with_inertia(case: Case) -> None:
             raise SolveError(f"Lateral inertia needs Poisson's ratio of '{material.name}'.")
 
 
-def refuse_bad_state(march: Watched) -> None:
-    """Raise `SolveError` where the state is no answer: not finite, turned inside out, or with energy from nothing."""
+def refuse_bad_state(march: Watched) -> float:
+    """Raise `SolveError` where the state is no answer: not finite, turned inside out, or with energy from nothing.
+
+    Returns the share of the energy that does not close.
+    """
     chain, motion = march.chain, march.state.motion
     seconds = march.steps * chain.dt
     bad = ~np.isfinite(motion.u) | ~np.isfinite(motion.v)
@@ -113,7 +116,7 @@ def refuse_bad_state(march: Watched) -> None:
         )
     for part in chain.stretches:
         _refuse_inside_out(march, part)
-    rows = march.ledger_rows()
+    rows = march.frames().ledger
     share, frame = residual_of(march.start_row, rows)
     if share > REFUSED:
         place = chain.position[int(np.argmax(np.abs(motion.v)))]
@@ -133,6 +136,7 @@ def refuse_bad_state(march: Watched) -> None:
             f"A wave of two elements' length stands in this run (by {frame * march.stride * chain.dt * 1000:.4g} ms to "
             f"{grown:.0%} of the energy), which no mesh can carry, so it is not shown. Another element length may help."
         )
+    return share
 
 
 def _refuse_inside_out(march: Watched, part: Stretch) -> None:

@@ -16,7 +16,7 @@ Array = NDArray[np.float64]
 
 @dataclass(frozen=True, eq=False)
 class Blow:
-    """Everything one march recorded; see `solver.run.March`."""
+    """Everything one march recorded; see `solver.marching.March`."""
 
     chain: Chain
     state: State
@@ -27,6 +27,7 @@ class Blow:
     gauges: Array
     ram: Array
     frames: Frames
+    residual: float
     events: NDArray[np.int64]
     start_row: Array
     rest: Array

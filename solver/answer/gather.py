@@ -2,8 +2,6 @@
 
 from __future__ import annotations
 
-from typing import Any
-
 import numpy as np
 from numpy.typing import NDArray
 
@@ -25,7 +23,7 @@ from solver.answer.result import (
 from solver.answer.told import remarks_of
 from solver.numerics.arrays import Extremes
 from solver.numerics.assemble import gauge_link
-from solver.numerics.balance import LEDGER, residual_of
+from solver.numerics.balance import LEDGER
 
 Array = NDArray[np.float64]
 
@@ -37,8 +35,6 @@ def gather(blow: Blow, finished: bool, seconds: float) -> Result:
     envelope = _envelope(blow, ext, blow.member_links)
     striking = np.flatnonzero(chain.axial[: chain.head] > 0)
     again = len(ext.second) > 0 and ext.second[2] > 0
-    residual, _ = residual_of(blow.start_row, blow.frames.ledger)
-    ledger = _ledger(blow, residual)
     at_rest = chain.case.run.duration is None and blow.steps < blow.planned
     has_ground = chain.case.ground is not None
     toe_set = _set(blow) if has_ground else None
@@ -54,7 +50,7 @@ def gather(blow: Blow, finished: bool, seconds: float) -> Result:
         gauges=_gauges(blow),
         envelope=envelope,
         fields=_fields(blow),
-        ledger=ledger,
+        ledger=_ledger(blow),
         peak_compression=_peak(-envelope.lowest_stress, envelope.position, envelope.lowest_stress_time),
         peak_tension=_peak(envelope.highest_stress, envelope.position, envelope.highest_stress_time),
         set=toe_set,
@@ -62,7 +58,7 @@ def gather(blow: Blow, finished: bool, seconds: float) -> Result:
         head_rebound=None if head_set is None else head_travel - head_set,
         max_toe_displacement=float(blow.extremes.travel[-1] - blow.rest[-1]),
         events=events_of(blow),
-        remarks=remarks_of(blow, residual, at_rest, finished),
+        remarks=remarks_of(blow, blow.residual, at_rest, finished),
         solve_seconds=seconds,
         finished=finished,
         at_rest=at_rest,
@@ -139,37 +135,37 @@ def _yield_reach(blow: Blow) -> Array:
 
 def _fields(blow: Blow) -> Fields:
     chain, links = blow.chain, blow.columns
-    force, velocity, displacement, _ = blow.frames
-    frames = len(force)
-    reach = _yield_reach(blow)[links].astype(np.float32)
-    force = np.clip(force, -reach, reach)
+    stress, velocity, displacement, _ = blow.frames
+    reach = _yield_reach(blow)[links].astype(np.float32) / chain.area[links].astype(np.float32)
+    if np.isfinite(reach).any():
+        stress = np.clip(stress, -reach, reach)
     edges = np.append(chain.position[links], chain.position[links[-1] + 1])
     return Fields(
-        time=read_only(np.arange(frames) * blow.stride * chain.dt),
+        time=read_only(np.arange(len(stress)) * blow.stride * chain.dt),
         position=read_only((chain.position[links] + chain.position[links + 1]) / 2),
         edges=read_only(edges),
         area=read_only(chain.area[links]),
         impedance=read_only(chain.impedance[links]),
-        stress=_single(force / chain.area[links].astype(np.float32)),
+        stress=_single(stress),
         velocity=_single(velocity),
         displacement=_single(displacement),
     )
 
 
-def _single(values: NDArray[Any]) -> Single:
-    values = np.ascontiguousarray(values, dtype=np.float32)
+def _single(values: Single) -> Single:
+    values = values[:]
     values.flags.writeable = False
     return values
 
 
-def _ledger(blow: Blow, residual: float) -> Ledger:
+def _ledger(blow: Blow) -> Ledger:
     rows = np.vstack([blow.start_row, blow.frames.ledger])
     stride, dt = blow.stride, blow.chain.dt
     time = np.concatenate(([-0.5 * dt], (np.arange(len(rows) - 1) * stride + 0.5) * dt))
     parts = {name: read_only(rows[:, i]) for i, name in enumerate(LEDGER)}
     start = float(blow.start_row[: LEDGER.index("work_of_gravity")].sum())
     parts["initial_energy"] = read_only(np.full(len(rows), start))
-    return Ledger(read_only(time), parts, residual)
+    return Ledger(read_only(time), parts, blow.residual)
 
 
 def _peak(values: Array, position: Array, time: Array) -> Peak:

@@ -25,22 +25,26 @@ class Store:
         self.rows, self.columns, self.filled = rows, columns, 0
         self._file: IO[bytes] | None = None
         self._array: Array | None = None
+        self._block = np.empty((rows, 0))
         if rows * columns > most_in_memory:
             self._file = tempfile.TemporaryFile(prefix="striketrace-")  # noqa: SIM115 - lives as long as its readers
             self._file.truncate(rows * columns * 8)
         else:
             self._array = np.empty((rows, columns))
 
-    def append(self, block: Array) -> None:
-        """Add columns, shape (rows, n)."""
-        n = block.shape[1]
+    def room(self, n: int) -> tuple[Array, int]:
+        """Where the next `n` columns are to be written: an array of all rows, and the first of its columns."""
         if self._array is not None:
-            self._array[:, self.filled : self.filled + n] = block
-        else:
-            assert self._file is not None
-            for row, values in enumerate(block):
+            return self._array, self.filled
+        self._block = np.empty((self.rows, n))
+        return self._block, 0
+
+    def take(self, n: int) -> None:
+        """Keep `n` columns that were written into the room given last."""
+        if self._file is not None:
+            for row, values in enumerate(self._block[:, :n]):
                 self._file.seek((row * self.columns + self.filled) * 8)
-                self._file.write(np.ascontiguousarray(values).data)
+                self._file.write(values.data)
             self._file.flush()
         self.filled += n
 

@@ -14,11 +14,11 @@ Singles = NDArray[np.float32]
 LINE = 64
 
 
-def aligned(values: Array) -> Array:
-    """A copy that begins on a line of cache: elsewhere every wide vector straddles two lines, which takes half as long
-    again."""
-    room = np.empty(values.size + LINE // 8)
-    first = -room.ctypes.data % LINE // 8
+def aligned(values: Array, ahead: int = 0) -> Array:
+    """A copy that begins on a line of cache, after `ahead` values (0 or 1): elsewhere every wide vector straddles two
+    lines, which takes half as long again."""
+    room = np.empty(values.size + 2 * LINE // 8)
+    first = -room.ctypes.data % LINE // 8 + ahead * (LINE // 8 - 1)
     copy = room[first : first + values.size].reshape(values.shape)
     copy[:] = values
     return copy
@@ -79,13 +79,19 @@ class Bounds(NamedTuple):
 
 
 class Motion(NamedTuple):
-    """State of all nodes: displacement, velocity of the last half step, of the coming one; force of each link."""
+    """State of all nodes: displacement, velocity of the last half step, of the coming one. `pulls`: force of each link,
+    and a 0 before the first and after the last, so that every node lies between two."""
 
     u: Array
     v: Array
     w: Array
-    force: Array
+    pulls: Array
     rest: Array
+
+    @property
+    def force(self) -> Array:
+        """Force of each link, N."""
+        return self.pulls[1:-1]
 
 
 class Extremes(NamedTuple):
@@ -109,30 +115,41 @@ class Extremes(NamedTuple):
 class Frames(NamedTuple):
     """Lines of the pictures, shape (frames, columns), and of the ledger, shape (frames, parts)."""
 
-    force: Singles
+    stress: Singles
     velocity: Singles
     displacement: Singles
     ledger: Array
 
 
 class Records(NamedTuple):
-    """What a chunk records. Gauges: two readings each, `node` shape (g, 2), `weights` (g, 2, 6) = share, left, right,
-    mass, constant, share of the left strain. `force` ... (g, steps). Frames: `columns` (links), every `stride`
-    steps."""
+    """What a march records. Gauges: two readings each, `node` shape (g, 2), `weights` (g, 2, 7) = share, left, right,
+    mass, constant, 1/length of the left and right link. `gauges` (5 g, steps): force, velocity, displacement,
+    acceleration, strain of each in turn; `ram` (3, steps); `since`: the steps that their first columns are for.
+    Frames of the whole run: `columns` (links) with their `area`, every `stride` steps."""
 
     node: Ints
     weights: Array
-    force: Array
-    velocity: Array
-    displacement: Array
-    acceleration: Array
-    strain: Array
-    columns: Ints
-    frame_force: Singles
-    frame_velocity: Singles
-    frame_displacement: Singles
-    ledger: Array
+    gauges: Array
     ram: Array
+    since: Ints
+    columns: Ints
+    area: Singles
+    stress: Singles
+    velocity: Singles
+    displacement: Singles
+    ledger: Array
     events: Ints
     event_count: Ints
     flags: Ints
+
+
+class Rest(NamedTuple):
+    """When a run that ends by itself may end, looked at every so many steps (`every`, 0: never). `load_end`: time (s)
+    after which the load is over; `grounded`: whether ground holds the member; `still` and `slipped`: looks in a row at
+    which it was nearly at rest, and the energy (J) that slip had taken at the last look."""
+
+    every: int
+    load_end: float
+    grounded: bool
+    still: Ints
+    slipped: Array

@@ -170,8 +170,8 @@ def motion_of(chain: Chain) -> Motion:
     """At rest but for what strikes. A free fall has half a step to go before the first half-step velocity."""
     n = chain.nodes
     velocity = chain.velocity
-    still, slack = np.zeros(n), np.zeros(n - 1)
-    return Motion(*(aligned(a) for a in (still, velocity, velocity, slack, still)))
+    still, pulls = np.zeros(n), aligned(np.zeros(n + 1), ahead=1)
+    return Motion(aligned(still), aligned(velocity), aligned(velocity), pulls, aligned(still))
 
 
 def extremes_of(chain: Chain) -> Extremes:
@@ -274,30 +274,28 @@ def _reading(chain: Chain, side: str, node: int) -> tuple[float, ...]:
 def records_of(
     chain: Chain,
     readings: tuple[NDArray[np.int64], Array],
-    steps: int,
-    stride: int,
+    rows: int,
     columns: NDArray[np.int64],
     flags: NDArray[np.int64],
 ) -> Records:
-    """Room for what a chunk of `steps` steps records; `readings` as `gauge_readings` gives them."""
+    """Room for what a march records in `rows` frames, and for the events of a chunk; gauges and ram get theirs chunk by
+    chunk. `readings` as `gauge_readings` gives them."""
     nodes, weights = readings
-    g, frames = len(nodes), (steps - 1) // stride + 1
-    pictures = (frames, len(columns))
+    # in one piece: the system's store of free memory then keeps it for the next case, whose pages are not new again
+    stress, velocity, displacement = np.empty((3, rows, len(columns)), dtype=np.float32)
     return Records(
         node=nodes,
         weights=weights,
-        force=np.empty((g, steps)),
-        velocity=np.empty((g, steps)),
-        displacement=np.empty((g, steps)),
-        acceleration=np.empty((g, steps)),
-        strain=np.empty((g, steps)),
+        gauges=np.empty((5 * len(nodes), 0)),
+        ram=np.empty((3 if chain.train else 0, 0)),
+        since=np.zeros(2, dtype=np.int64),
         columns=columns,
-        frame_force=np.empty(pictures, dtype=np.float32),
-        frame_velocity=np.empty(pictures, dtype=np.float32),
-        frame_displacement=np.empty(pictures, dtype=np.float32),
-        ledger=np.empty((frames, len(LEDGER) + 1)),
-        ram=np.empty((3 if chain.train else 0, steps)),
-        events=np.zeros((4096, 3), dtype=np.int64),
+        area=chain.area[columns].astype(np.float32),
+        stress=stress,
+        velocity=velocity,
+        displacement=displacement,
+        ledger=np.empty((rows, len(LEDGER) + 1)),
+        events=np.empty((4096, 3), dtype=np.int64),
         event_count=np.zeros(1, dtype=np.int64),
         flags=flags,
     )

@@ -2,14 +2,9 @@
 
 from solver.numerics.compiled import kernel, part_of_step
 from solver.numerics.laws import brittle_tension, elastic, elastic_plastic, large_strain, viscoelastic
-from solver.numerics.records import EVENT_LEFT_ELASTIC, highest, lowest, remember
 
 #: Laws by the number that a block carries; a new law gets a line here and a branch in `link_forces` and `energies`.
 ELASTIC, VISCOELASTIC, ELASTIC_PLASTIC, BRITTLE, LARGE_STRAIN = range(5)
-
-
-#: Links that are gone through at once: what one short loop has read or written, the next finds in the nearest cache.
-BLOCK = 512
 
 
 @part_of_step
@@ -34,21 +29,6 @@ def link_forces(rod, u, v, force, dt):
         left = law_forces(rod.blocks[b, 0], rod, u, v, force, rod.blocks[b, 1], rod.blocks[b, 2], dt)
         found = left if left >= 0 else found
     return found
-
-
-@part_of_step
-def forces_and_extremes(rod, ext, u, v, force, dt, flags, note, step):
-    """The same with the envelopes of force; the first link of a block that leaves the elastic range is noted."""
-    at = float(step)
-    for b in range(len(rod.blocks)):
-        for start in range(rod.blocks[b, 1], rod.blocks[b, 2], BLOCK):
-            stop = min(start + BLOCK, rod.blocks[b, 2])
-            left = law_forces(rod.blocks[b, 0], rod, u, v, force, start, stop, dt)
-            if left >= 0 and flags[b] == 0:
-                flags[b] = 1
-                remember(note, EVENT_LEFT_ELASTIC, left, step)
-            lowest(force[start:stop], ext.low[start:stop], ext.low_step[start:stop], at)
-            highest(force[start:stop], ext.high[start:stop], ext.high_step[start:stop], at)
 
 
 @part_of_step

@@ -10,30 +10,18 @@ import numpy as np
 from solver.numerics import contact, shaft, toe, train
 from solver.numerics.balance import DAMPING, DASHPOTS, IMPACT, PULL, SLIP, WORK, balance
 from solver.numerics.compiled import kernel, part_of_step
-from solver.numerics.links import forces_and_extremes
 from solver.numerics.records import (
     EVENT_IMPACT,
     EVENT_SEPARATION,
     EVENT_TOE_LIFT,
     keep_first_blow,
-    move,
     read_gauges,
+    read_train,
     remember,
     take_frame,
 )
-
-
-@part_of_step
-def new_velocities(push, weight, gain, v, w, force):
-    """w = gain v + (dt/m)(forces): all nodes at once."""
-    last = len(v) - 1
-    w[0] = gain * v[0] + push[0] * (force[0] + weight[0])
-    # slices, as in the laws: no index can wrap around
-    out, old, p, g = w[1:last], v[1:last], push[1:last], weight[1:last]
-    above, below = force[: last - 1], force[1:last]
-    for i in range(len(out)):
-        out[i] = gain * old[i] + p[i] * (below[i] - above[i] + g[i])
-    w[last] = gain * v[last] + push[last] * (weight[last] - force[last - 1])
+from solver.numerics.resting import came_to_rest
+from solver.numerics.sweep import move_on, sweep
 
 
 @kernel
@@ -175,32 +163,39 @@ def train_step(bounds, push, u, v, w, sums, dt, note, step):
         remember(note, EVENT_SEPARATION, bounds.train_links[0], step)
 
 
+@part_of_step
+def let_go(push, sums, w, head):
+    """What held the struck end over the last step still acts with its half in the step in which it lets go, N."""
+    half = 0.5 * sums[PULL]
+    w[head] += push[head] * half
+    return half
+
+
 @kernel
-def march(rod, ground, bounds, motion, ext, rec, sums, load, first, count, stride, dt, drag):
-    """March `count` steps from step number `first`. `load`: force on the struck end per step (N), or its velocity
-    where it is driven. `drag` (1/s) damps every node in proportion to its mass (0 but for settling). Changes its
-    arrays in place.
+def march(rod, ground, bounds, motion, ext, rec, ends, sums, load, first, count, stride, dt, drag):
+    """March at most `count` steps from step number `first`; returns how many, fewer where a run that `ends` by itself
+    came to rest. `load`: force on the struck end per step (N), or its velocity where it is driven. `drag` (1/s) damps
+    every node in proportion to its mass (0 but for settling). Changes its arrays in place.
     """
-    u, v, w, force, rest = motion.u, motion.v, motion.w, motion.force, motion.rest
+    u, v, w, rest = motion.u, motion.v, motion.w, motion.rest
     note = (rec.events, rec.event_count)
     gain = (1.0 - 0.5 * drag * dt) / (1.0 + 0.5 * drag * dt)
-    push, weight = rod.push, rod.weight
-    head, last = rod.driven[0], len(u) - 1
+    push, head, last = rod.push, rod.driven[0], len(u) - 1
+    force = motion.pulls[1 : last + 1]
     # what a case does not have must cost nothing at every step
     inert, special, gauges = len(rod.inertia) > 0, len(rod.special) > 0, len(rec.node) > 0
     shafts = len(ground.r) + len(ground.power_nodes) + len(ground.radiation_nodes) > 0
     toes, jointed, walled = len(bounds.toe_par) > 0, len(bounds.joints) > 0, bounds.wall[0] < np.inf
     rams, train_heard, strikes = len(bounds.train_links) > 0, len(rec.ram) > 0, len(ext.second) > 0
-    for n in range(count):
-        step = first + n
+    done, waiting = 0, False
+    while done < count:
+        step, pull = first + done, load[done]
         driven = step < rod.driven[1]
-        forces_and_extremes(rod, ext, u, v, force, dt, rec.flags, note, step)
+        sweep(rod, ext, motion, u, v, w, gain, dt, rec.flags, note, step, waiting)
         if inert:
-            inertia_velocities(rod, v, w, force, load[n], driven, u, dt, step)
-        else:
-            new_velocities(push, weight, gain, v, w, force)
-            if not driven:
-                w[head] += push[head] * load[n]
+            inertia_velocities(rod, v, w, force, pull, driven, u, dt, step)
+        elif not driven:
+            w[head] += push[head] * pull
         if step == 0 and not inert:
             for i in range(len(rod.opening)):
                 w[i] += push[i] * rod.opening[i]
@@ -210,16 +205,12 @@ def march(rod, ground, bounds, motion, ext, rec, sums, load, first, count, strid
             shaft_nodes(ground, push, v, w, sums, dt)
         if toes:
             toe_node(bounds, push, u, v, w, sums, dt, note, step)
-        pull = load[n]
         if step == rod.driven[1] and step > 0:
-            # what held the struck end over the last step still acts with its half in the step in which it lets go
-            let_go = 0.5 * sums[PULL]
-            pull += let_go
-            w[head] += push[head] * let_go
+            pull += let_go(push, sums, w, head)
         if driven:
             # the force that makes the struck end follow, whatever else acts on it
-            pull = (load[n] - w[head]) / push[head] if not inert else driving_force(rod, u, v, w, force, dt)
-            w[head] = load[n]
+            pull = (pull - w[head]) / push[head] if not inert else driving_force(rod, u, v, w, force, dt)
+            w[head] = load[done]
         if rod.fixed_end:
             w[last] = 0.0
         if jointed:
@@ -239,15 +230,21 @@ def march(rod, ground, bounds, motion, ext, rec, sums, load, first, count, strid
                 sums[IMPACT] -= rod.opening[i] * 0.5 * (v[i] + w[i]) * dt
         sums[WORK] += pull * 0.5 * (v[head] + w[head]) * dt
         if gauges:
-            read_gauges(rec, u, v, w, force, rest, dt, n)
+            read_gauges(rec, u, v, w, force, rest, dt, step)
         if train_heard:
-            rec.ram[0, n] = bounds.train_force[0]
-            rec.ram[1, n] = 0.5 * (v[bounds.train_links[0]] + w[bounds.train_links[0]])
-            rec.ram[2, n] = 0.5 * (v[head] + w[head])
+            read_train(rec, bounds, v, w, head, step)
         if step % stride == 0:
-            take_frame(rec, u, v, w, force, rest, n // stride)
-            balance(rec.ledger[n // stride], rod, ground, bounds, motion.rest, u, v, w, force, sums, dt)
-        move(ext, u, v, w, dt)
+            take_frame(rec, u, v, w, force, rest, step // stride)
+            balance(rec.ledger[step // stride], rod, ground, bounds, rest, u, v, w, force, sums, dt)
+        done, waiting = done + 1, True
         v, w = w, v
+        if ends.every > 0 and (step + 1) % ends.every == 0:
+            move_on(ext, u, w, v, dt)
+            waiting = False
+            if came_to_rest(ends, head, ext.speed, v, sums, (step + 1) * dt):
+                break
+    if waiting:
+        move_on(ext, u, w, v, dt)
     for i in range(len(v)):
         motion.v[i] = v[i]
+    return done

@@ -1,6 +1,8 @@
 """What a march writes down: events, envelopes, gauges and frames."""
 
-from solver.numerics.compiled import kernel, part_of_step
+import numpy as np
+
+from solver.numerics.compiled import apart, kernel, part_of_step
 
 #: Kinds of event in `Records.events`, rows of kind, place (link or node), step.
 (
@@ -45,62 +47,34 @@ def keep_first_blow(ext, bounds, step):
     ext.second[0] = step
 
 
-#: Nodes that are gone through at once: what one short loop has read, the next finds in the nearest cache.
-BLOCK = 512
-
-
-@part_of_step
-def move(ext, u, v, w, dt):
-    """Extremes of velocity and displacement per node; the displacements then move on to the next step.
-
-    One short loop per extreme, values read before any is written: so the loops run in vector instructions.
-    """
-    for start in range(0, len(u), BLOCK):
-        here = slice(start, start + BLOCK)
-        fastest(v[here], w[here], ext.speed[here])
-        farthest(u[here], w[here], ext.travel[here], dt)
-
-
-@part_of_step
-def lowest(force, low, low_step, at):
-    """Later rounding does not count as a new extreme, so that the first of equal peaks is the one that is told."""
+@apart
+def extremes(force, low, low_step, high, high_step, at):
+    """Envelopes of force. Later rounding does not count as a new extreme, so that the first of equal peaks is the one
+    that is told. Values are read before any is written: so the loop runs in vector instructions."""
     for i in range(len(force)):
-        f, least, when = force[i], low[i], low_step[i]
+        f, least, when, most, then = force[i], low[i], low_step[i], high[i], high_step[i]
         lower = f < least - 1e-10 * abs(least)
+        higher = f > most + 1e-10 * abs(most)
         low_step[i] = at if lower else when
         low[i] = f if lower else least
-
-
-@part_of_step
-def highest(force, high, high_step, at):
-    """As `lowest`."""
-    for i in range(len(force)):
-        f, most, when = force[i], high[i], high_step[i]
-        higher = f > most + 1e-10 * abs(most)
-        high_step[i] = at if higher else when
+        high_step[i] = at if higher else then
         high[i] = f if higher else most
 
 
-@part_of_step
-def fastest(v, w, speed):
-    """Largest velocity so far."""
-    for i in range(len(speed)):
-        mean, most = 0.5 * (v[i] + w[i]), speed[i]
+@apart
+def move(u, v, w, speed, travel, dt):
+    """Largest velocity and displacement so far; then displacements of the next step."""
+    for i in range(len(u)):
+        mean, most, now, far = 0.5 * (v[i] + w[i]), speed[i], u[i], travel[i]
         speed[i] = mean if mean > most else most
-
-
-@part_of_step
-def farthest(u, w, travel, dt):
-    """Largest displacement so far; then those of the next step."""
-    for i in range(len(travel)):
-        now, most = u[i], travel[i]
-        travel[i] = now if now > most else most
+        travel[i] = now if now > far else far
         u[i] = now + dt * w[i]
 
 
 @part_of_step
-def read_gauges(rec, u, v, w, force, rest, dt, column):
+def read_gauges(rec, u, v, w, force, rest, dt, step):
     """Each gauge: two readings blended by their share."""
+    column = step - rec.since[0]
     for g in range(len(rec.node)):
         f, speed, moved, acc, strain = 0.0, 0.0, 0.0, 0.0, 0.0
         for r in range(2):
@@ -122,11 +96,20 @@ def read_gauges(rec, u, v, w, force, rest, dt, column):
             speed += share * 0.5 * (v[i] + w[i])
             moved += share * (u[i] - rest[i])
             acc += share * a
-        rec.force[g, column] = f
-        rec.velocity[g, column] = speed
-        rec.displacement[g, column] = moved
-        rec.acceleration[g, column] = acc
-        rec.strain[g, column] = strain
+        rec.gauges[5 * g, column] = f
+        rec.gauges[5 * g + 1, column] = speed
+        rec.gauges[5 * g + 2, column] = moved
+        rec.gauges[5 * g + 3, column] = acc
+        rec.gauges[5 * g + 4, column] = strain
+
+
+@part_of_step
+def read_train(rec, bounds, v, w, head, step):
+    """Force on the ram, its velocity and that of the struck end."""
+    column, ram = step - rec.since[1], bounds.train_links[0]
+    rec.ram[0, column] = bounds.train_force[0]
+    rec.ram[1, column] = 0.5 * (v[ram] + w[ram])
+    rec.ram[2, column] = 0.5 * (v[head] + w[head])
 
 
 @part_of_step
@@ -134,6 +117,6 @@ def take_frame(rec, u, v, w, force, rest, row):
     """One line of the pictures: values in the middle of each shown link."""
     for c in range(len(rec.columns)):
         i = rec.columns[c]
-        rec.frame_force[row, c] = force[i]
-        rec.frame_velocity[row, c] = 0.25 * (v[i] + w[i] + v[i + 1] + w[i + 1])
-        rec.frame_displacement[row, c] = 0.5 * (u[i] - rest[i] + u[i + 1] - rest[i + 1])
+        rec.stress[row, c] = np.float32(force[i]) / rec.area[c]
+        rec.velocity[row, c] = 0.25 * (v[i] + w[i] + v[i + 1] + w[i + 1])
+        rec.displacement[row, c] = 0.5 * (u[i] - rest[i] + u[i + 1] - rest[i + 1])

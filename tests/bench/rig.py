@@ -10,7 +10,7 @@ import numpy as np
 from solver import Case
 from solver.marching import COLUMNS, FRAMES
 from solver.model.load import Pulse
-from solver.numerics.arrays import aligned
+from solver.numerics.arrays import Motion, Rest, aligned
 from solver.numerics.assemble import bounds_of, extremes_of, gauge_readings, motion_of, records_of, rod_of
 from solver.numerics.chain import build_chain
 from solver.numerics.equilibrium import State, bring_to_rest
@@ -34,9 +34,12 @@ class Rig:
         links = np.flatnonzero(self.chain.axial > 0)
         shown = np.unique(np.linspace(0, len(links) - 1, min(COLUMNS, len(links))).round().astype(int))
         self.flags = np.zeros(len(self.fresh.rod.blocks), dtype=np.int64)
-        self.records = records_of(
-            self.chain, gauge_readings(self.chain), steps, self.stride, links[shown], self.flags
+        readings, rows = gauge_readings(self.chain), (steps - 1) // self.stride + 1
+        self.records = records_of(self.chain, readings, rows, links[shown], self.flags)
+        self.records = self.records._replace(
+            gauges=np.ones((len(self.records.gauges), steps)), ram=np.ones((len(self.records.ram), steps))
         )
+        self.ends = Rest(0, 0.0, False, np.zeros(1, dtype=np.int64), np.zeros(1))
         self.load = self._load()
         self.reset()
 
@@ -62,8 +65,8 @@ class Rig:
         s = self.state
         began = clock()
         march(
-            s.rod, s.shaft, s.bounds, s.motion, self.extremes, self.records, self.sums, self.load,
-            0, self.steps, self.stride, self.chain.dt, 0.0,
+            s.rod, s.shaft, s.bounds, s.motion, self.extremes, self.records, self.ends, self.sums,
+            self.load, 0, self.steps, self.stride, self.chain.dt, 0.0,
         )  # fmt: skip
         return clock() - began
 
@@ -77,8 +80,10 @@ class Rig:
 
 def _anew(fresh: State) -> State:
     """A copy whose arrays begin on lines of cache as those of the program do."""
-    groups = (fresh.rod, fresh.shaft, fresh.bounds, fresh.motion)
-    return State(*(group._make(_copied(one) for one in group) for group in groups))
+    groups = (fresh.rod, fresh.shaft, fresh.bounds)
+    u, v, w, pulls, rest = fresh.motion
+    motion = Motion(aligned(u), aligned(v), aligned(w), aligned(pulls, ahead=1), aligned(rest))
+    return State(*(group._make(_copied(one) for one in group) for group in groups), motion)
 
 
 def _copied(one: object) -> object:

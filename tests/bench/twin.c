@@ -9,10 +9,10 @@ typedef double *restrict arr;
 struct twin {
     int64_t nodes, steps, stride, head, columns, shaft_first, shaft_nodes, gauges, parts;
     double dt;
-    arr u, v, w, force, rest, stiff, push, mass, weight, load;
+    arr u, v, w, pulls, rest, stiff, push, mass, weight, load;
     arr low, low_step, high, high_step, speed, travel, ledger, sums;
     int64_t *restrict column;
-    float *restrict frame_force, *restrict frame_velocity, *restrict frame_moved;
+    float *restrict area, *restrict frame_stress, *restrict frame_velocity, *restrict frame_moved;
     arr r, par, toe_par, toe_state, train_par, train_state, train_force, ram;
     int64_t *restrict gauge_node;
     arr gauge_weight, gauge;
@@ -25,11 +25,10 @@ static void forces(int64_t links, arr u, arr stiff, arr force) {
         force[i] = stiff[i] * (u[i + 1] - u[i]);
 }
 
-static void velocities(int64_t n, arr push, arr weight, arr v, arr w, arr force) {
-    w[0] = v[0] + push[0] * (force[0] + weight[0]);
-    for (int64_t i = 1; i < n - 1; i++)
-        w[i] = v[i] + push[i] * (force[i] - force[i - 1] + weight[i]);
-    w[n - 1] = v[n - 1] + push[n - 1] * (weight[n - 1] - force[n - 2]);
+/* Node i lies between pulls i and i + 1: a link of no force stands before the first node and after the last. */
+static void velocities(int64_t n, arr push, arr weight, arr v, arr w, arr pulls) {
+    for (int64_t i = 0; i < n; i++)
+        w[i] = v[i] + push[i] * (pulls[i + 1] - pulls[i] + weight[i]);
 }
 
 static void extremes(int64_t links, double at, arr force, arr low, arr low_step, arr high, arr high_step) {
@@ -52,15 +51,31 @@ static void move(int64_t n, double dt, arr u, arr v, arr w, arr speed, arr trave
     }
 }
 
+enum { BLOCK = 256 };
+
+/* Block by block, as solver/numerics/sweep.py does it. */
+static void sweep(const struct twin *t, double *v, double *w, double at, int waiting) {
+    int64_t links = t->nodes - 1;
+    double *force = t->pulls + 1;
+    for (int64_t a = 0; a < links; a += BLOCK) {
+        int64_t b = a + BLOCK < links ? a + BLOCK : links, ahead = a ? a + 1 : 0, known = b < links ? b : b + 1;
+        if (waiting)
+            move(b + 1 - ahead, t->dt, t->u + ahead, w + ahead, v + ahead, t->speed + ahead, t->travel + ahead);
+        forces(b - a, t->u + a, t->stiff + a, force + a);
+        extremes(b - a, at, force + a, t->low + a, t->low_step + a, t->high + a, t->high_step + a);
+        velocities(known - a, t->push + a, t->weight + a, v + a, w + a, t->pulls + a);
+    }
+}
+
 static void record(const struct twin *t, double *row, int64_t frame, arr v, arr w, int piled) {
     int64_t n = t->nodes;
     double dt = t->dt, kinetic = 0, before = 0, gravity = 0, stored = 0, soil = 0, cushion = 0, taken = 0;
-    arr u = t->u, force = t->force, rest = t->rest, mass = t->mass, weight = t->weight, stiff = t->stiff;
-    float *ff = t->frame_force + frame * t->columns, *fv = t->frame_velocity + frame * t->columns,
+    arr u = t->u, force = t->pulls + 1, rest = t->rest, mass = t->mass, weight = t->weight, stiff = t->stiff;
+    float *fs = t->frame_stress + frame * t->columns, *fv = t->frame_velocity + frame * t->columns,
           *fu = t->frame_moved + frame * t->columns;
     for (int64_t c = 0; c < t->columns; c++) {
         int64_t i = t->column[c];
-        ff[c] = (float)force[i];
+        fs[c] = (float)force[i] / t->area[c];
         fv[c] = (float)(0.25 * (v[i] + w[i] + v[i + 1] + w[i + 1]));
         fu[c] = (float)(0.5 * (u[i] - rest[i] + u[i + 1] - rest[i + 1]));
     }
@@ -100,21 +115,19 @@ static void record(const struct twin *t, double *row, int64_t frame, arr v, arr 
 
 void linear(const struct twin *t) {
     int64_t n = t->nodes, head = t->head;
-    arr v = t->v, w = t->w;
+    double *v = t->v, *w = t->w;
     for (int64_t step = 0; step < t->steps; step++) {
         double pull = t->load[step];
-        forces(n - 1, t->u, t->stiff, t->force);
-        velocities(n, t->push, t->weight, v, w, t->force);
+        sweep(t, v, w, step, step > 0);
         w[head] += t->push[head] * pull;
         t->sums[WORK] += pull * 0.5 * (v[head] + w[head]) * t->dt;
         if (step % t->stride == 0)
             record(t, t->ledger + t->parts * (step / t->stride), step / t->stride, v, w, 0);
-        extremes(n - 1, step, t->force, t->low, t->low_step, t->high, t->high_step);
-        move(n, t->dt, t->u, v, w, t->speed, t->travel);
         double *swap = v;
         v = w;
         w = swap;
     }
+    move(n, t->dt, t->u, w, v, t->speed, t->travel);
 }
 
 static void shaft(const struct twin *t, arr v, arr w) {
@@ -260,7 +273,7 @@ found:
 
 static void gauges(const struct twin *t, int64_t step, arr v, arr w) {
     double dt = t->dt;
-    arr u = t->u, force = t->force, rest = t->rest;
+    arr u = t->u, force = t->pulls + 1, rest = t->rest;
     for (int64_t g = 0; g < t->gauges; g++) {
         double f = 0, speed = 0, moved = 0, acc = 0, strain = 0;
         for (int r = 0; r < 2; r++) {
@@ -285,16 +298,15 @@ static void gauges(const struct twin *t, int64_t step, arr v, arr w) {
         }
         double values[5] = {f, speed, moved, acc, strain};
         for (int q = 0; q < 5; q++)
-            t->gauge[(q * t->gauges + g) * t->steps + step] = values[q];
+            t->gauge[(5 * g + q) * t->steps + step] = values[q];
     }
 }
 
 void pile(const struct twin *t) {
     int64_t n = t->nodes, head = t->head;
-    arr v = t->v, w = t->w;
+    double *v = t->v, *w = t->w;
     for (int64_t step = 0; step < t->steps; step++) {
-        forces(n - 1, t->u, t->stiff, t->force);
-        velocities(n, t->push, t->weight, v, w, t->force);
+        sweep(t, v, w, step, step > 0);
         shaft(t, v, w);
         toe(t, v, w);
         train(t, v, w);
@@ -304,10 +316,9 @@ void pile(const struct twin *t) {
         t->ram[2 * t->steps + step] = 0.5 * (v[head] + w[head]);
         if (step % t->stride == 0)
             record(t, t->ledger + t->parts * (step / t->stride), step / t->stride, v, w, 1);
-        extremes(n - 1, step, t->force, t->low, t->low_step, t->high, t->high_step);
-        move(n, t->dt, t->u, v, w, t->speed, t->travel);
         double *swap = v;
         v = w;
         w = swap;
     }
+    move(n, t->dt, t->u, w, v, t->speed, t->travel);
 }

@@ -136,11 +136,12 @@ class _KernelTime:
     def __init__(self, kernel: Any) -> None:
         self._kernel, self._lock, self.seconds = kernel, Lock(), 0.0
 
-    def __call__(self, *arguments: Any) -> None:
+    def __call__(self, *arguments: Any) -> Any:
         began = time.thread_time()
-        self._kernel(*arguments)
+        answer = self._kernel(*arguments)
         with self._lock:
             self.seconds += time.thread_time() - began
+        return answer
 
 
 def many(short: bool) -> Iterator[Row]:

@@ -1,9 +1,9 @@
 """Linear elastic: N = (EA/L) (u2 - u1). Hooke's law."""
 
-from solver.numerics.compiled import kernel
+from solver.numerics.compiled import apart, kernel
 
 
-@kernel
+@apart
 def force(u, v, stiff, par, state, force, start, stop, dt):
     # slices let the compiler see that no index can wrap around, and so use vector instructions
     near, far, k, out = u[start:stop], u[start + 1 : stop + 1], stiff[start:stop], force[start:stop]
