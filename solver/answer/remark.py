@@ -11,6 +11,7 @@ RemarkKind = Literal[
     "times_unfit",
     "few_elements",
     "large_strain",
+    "mass_at_contact",
     "cracked",
     "stopped",
     "not_at_rest",
@@ -56,6 +57,11 @@ def sentence(of: Remark, show: Show = in_si) -> str:
             return (
                 f"The plastic strain reaches {of.value:.0%} at {show(of.place, 'length')}, beyond a law of small "
                 "strains: read the shortening of the whole, not the strain there."
+            )
+        case "mass_at_contact":
+            return (
+                f"A lumped mass touches at {show(of.place, 'length')}: it bounces without loss, so read forces there "
+                "as means over its bounces, or give it as a short segment."
             )
         case "cracked":
             return (

@@ -6,6 +6,7 @@ import numpy as np
 
 from solver.answer.blow import Blow
 from solver.answer.remark import Remark
+from solver.numerics.chain import Chain
 from solver.numerics.compiled import cache_problem
 from solver.numerics.ground import bands_of
 from solver.numerics.mesh import MISMATCH
@@ -33,6 +34,7 @@ def remarks_of(blow: Blow, residual: float, at_rest: bool, finished: bool) -> tu
     strain, place = _largest_plastic_strain(blow)
     if strain > SMALL_STRAIN:
         told.append(Remark("large_strain", strain, place))
+    told += [Remark("mass_at_contact", place=place) for place in _masses_at_contacts(chain)]
     for part in chain.stretches:
         if (
             part.material.law.kind == "brittle_tension"
@@ -57,6 +59,15 @@ def remarks_of(blow: Blow, residual: float, at_rest: bool, finished: bool) -> tu
     if cache_problem:
         told.append(Remark("not_cached", name=cache_problem))
     return tuple(told)
+
+
+def _masses_at_contacts(chain: Chain) -> list[float]:
+    """Places (m) of attached masses that meet another face without a cushion between."""
+    faces = {node for joint in chain.joints for node in (joint.link, joint.link + 1)}
+    faces |= {node for t in chain.train if t.cushion is None for node in (t.link, t.link + 1)}
+    if chain.wall_gap < np.inf:
+        faces.add(chain.nodes - 1)
+    return sorted({float(chain.position[node]) for node in faces.intersection(chain.extra_masses)})
 
 
 def _largest_plastic_strain(blow: Blow) -> tuple[float, float]:

@@ -161,7 +161,11 @@ def test_every_remark_of_the_solver_has_its_sentence_in_the_units_shown(kind):
     plain, shown = sentence(remark), warning(remark, US)
     assert plain.endswith(".")
     assert shown.endswith(".")
-    assert ("9.144 m" in plain) == ("30.0\u00a0ft" in shown) == (kind in ("large_strain", "layers_end"))
+    assert (
+        ("9.144 m" in plain)
+        == ("30.0\u00a0ft" in shown)
+        == (kind in ("large_strain", "layers_end", "mass_at_contact"))
+    )
     assert ("500 ms" in plain) == ("500\u00a0ms" in shown) == (kind in ("not_at_rest", "ram_returns"))
 
 

@@ -117,3 +117,21 @@ def test_a_rod_that_strikes_is_held_against_its_own_limits(kind: str) -> None:
     assert compression.worst.share == pytest.approx(1.2, rel=1e-9)
     assert -1.0 < compression.worst.position < 0.0
     assert tension.state == "within"
+
+
+def test_a_lumped_mass_that_touches_is_told() -> None:
+    """At a wall and under a cap; a mass anywhere else needs no word."""
+    wall = {"kind": "wall", "gap": 0.0}
+    push = pulse("half_sine", 1e-3)
+    drop = {"kind": "drop", "ram_mass": 1e3, "impact_velocity": 1.0, "cap_mass": 200.0}
+    drop["cushion"] = {"stiffness": 1e9, "restitution": 0.8}
+    for load, place, far_end, told in (
+        (push, 10.0, wall, [10.0]),
+        (push, 5.0, wall, []),
+        (push, 10.0, "free", []),
+        (drop, 0.0, "free", [0.0]),
+        ({**drop, "pile_cushion": drop["cushion"]}, 0.0, "free", []),
+    ):
+        mass = {"position": place, "kind": "mass", "value": 50.0}
+        run = solved(load, far_end=far_end, attachments=[mass], duration=1e-3, dx=0.2)
+        assert [r.place for r in run.remarks if r.kind == "mass_at_contact"] == told
