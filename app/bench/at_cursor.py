@@ -1,4 +1,4 @@
-"""What every gauge reads at the cursor's time, and the quantity at the cursor's place."""
+"""What every gauge reads at the cursor's time, the quantity at its place, and what lies between the two cursors."""
 
 from __future__ import annotations
 
@@ -8,8 +8,9 @@ from PySide6.QtCore import QRectF, QSize, Qt
 from PySide6.QtGui import QColor, QFontMetricsF, QMouseEvent, QPainter, QResizeEvent
 from PySide6.QtWidgets import QScrollArea, QWidget
 
-from app.bench.field_values import DIMENSIONS, gauge_value, screen_sign, value_at
-from app.bench.pictures.lettering import LEFT, RIGHT, fitted, put
+from app.bench.field_values import DIMENSIONS, gauge_value, largest_of, screen_sign, settled, value_at
+from app.bench.pictures.cursor import between
+from app.bench.pictures.lettering import LEFT, RIGHT, fitted, put, width_of
 from app.bench.pictures.picture import Picture, Table
 from app.document import Document
 from app.look.fonts import font
@@ -17,9 +18,11 @@ from app.look.palette import palette
 from app.look.spacing import GAP, SPACE
 from app.sight import Sight
 from app.solving import Solution
+from solver.model.project import Gauge
 
 #: What is read at a gauge, two in a line, and the dimension of each: the units tell them apart.
 READ = (("stress", "stress"), ("force", "force"), ("velocity", "velocity"), ("displacement", "small_length"))
+LEFT_EDGE = 8.0
 
 
 class AtCursor(QScrollArea):
@@ -42,6 +45,7 @@ class _Readings(Picture):
         super().__init__(document, sight, solution)
         self.setAccessibleName("At the cursor")
         document.changed.connect(self._fit)
+        sight.changed.connect(self._fit)
         self._fit()
 
     def line(self) -> float:
@@ -53,16 +57,17 @@ class _Readings(Picture):
 
     def two_columns(self) -> bool:
         """Whether two readings have room side by side: in large type on a small screen they have not."""
-        metrics = QFontMetricsF(self.font())
-        return metrics.horizontalAdvance("−0000 MPa −0000 kN ") <= self.right() - 8
+        return width_of("−0000 MPa −0000 kN ", self.font()) <= self.right() - LEFT_EDGE
 
     def right(self) -> float:
         """Where the second column of readings ends: not far from the first, however wide the panel."""
         return min(self.width() - 12.0, 13 * self.line())
 
     def top(self) -> float:
-        """Where the first gauge begins: under the heading and the reading at the cursor's place."""
-        return 3.9 * self.line()
+        """Where the first gauge begins: under the heading, the reading at the cursor's place, and the second cursor."""
+        pinned = self.sight.pinned
+        rows = 0 if pinned is None else 4 + (pinned[1] is not None) + (self._speed() != "")
+        return (3.9 + rows) * self.line() + (SPACE if pinned is not None else 0)
 
     def sizeHint(self) -> QSize:
         return QSize(120, round(self.top() + len(self.case.gauges) * self.block()))
@@ -75,62 +80,88 @@ class _Readings(Picture):
         self._fit()
 
     def _fit(self) -> None:
-        self.setMinimumHeight(self.sizeHint().height())
+        height = self.sizeHint().height()
+        if self.minimumHeight() != height:
+            self.setMinimumHeight(height)
 
     def moving_key(self) -> tuple[Any, ...]:
-        return (self.sight.time, self.sight.place, self.sight.quantity, self.sight.selection)
+        return (*super().moving_key(), self.sight.quantity, self.sight.selection)
 
     def draw_resting(self, painter: QPainter) -> None:
         painter.setFont(font("strong"))
-        put(painter, 8, 0.8 * self.line(), "At the cursor", palette().ink)
+        put(painter, LEFT_EDGE, 0.8 * self.line(), "At the cursor", palette().ink)
         painter.setFont(self.font())
 
     def draw_moving(self, painter: QPainter) -> None:
-        colours, units, sight = palette(), self.units, self.sight
-        line, right = self.line(), self.right()
+        sight, y = self.sight, 2.1 * self.line()
         painter.setFont(self.font())
-        self._draw_place(painter, 2.1 * line, right)
-        result = self.result
+        self._draw_reading(painter, y, sight.time, sight.place)
+        if sight.pinned is not None:
+            self._draw_second(painter, y + 1.9 * self.line() + GAP / 2, *sight.pinned)
         for index, gauge in enumerate(self.case.gauges):
-            top = self.top() + index * self.block()
-            if sight.selection == f"gauges/{index}":
-                box = QRectF(4, top - GAP / 2, self.width() - 8, self.block() - GAP)
-                painter.fillRect(box, QColor(colours.accent_soft))
-            y = top + line / 2
-            place = units.show(gauge.position, "length")
-            place_width = QFontMetricsF(painter.font()).horizontalAdvance(place)
-            painter.setFont(font("strong"))
-            put(
-                painter,
-                8,
-                y,
-                fitted(gauge.name, painter.font(), right - place_width - 16),
-                colours.gauge(index),
-            )
-            painter.setFont(self.font())
-            put(painter, right, y, place, colours.soft_ink, RIGHT)
-            record = result.gauges.get(gauge.name) if result is not None else None
-            if record is None:
-                continue
-            for number, (quantity, dimension) in enumerate(READ):
-                value = screen_sign(quantity, units) * gauge_value(record, quantity, sight.time)
-                beside = number % 2 == 1 and self.two_columns()
-                at, align = (right, RIGHT) if beside else (8.0, LEFT)
-                y += 0 if beside else line
-                put(painter, at, y, units.show(value, dimension), colours.ink, align)
+            self._draw_gauge(painter, index, gauge)
 
-    def _draw_place(self, painter: QPainter, y: float, right: float) -> None:
-        """The moment; and the place with the quantity there, where the cursor has one."""
-        colours, units, sight = palette(), self.units, self.sight
-        put(painter, 8, y, units.show(sight.time, "time"), colours.soft_ink)
-        if sight.place is None:
+    def _draw_reading(self, painter: QPainter, y: float, time: float, place: float | None) -> float:
+        """The moment; and the place with the quantity there, where there is one. Gives the middle of the next row."""
+        colours, units, quantity = palette(), self.units, self.sight.quantity
+        self._row(painter, y, units.show(time, "time"), "" if place is None else units.show(place, "length"))
+        value = value_at(self.result, quantity, time, place) if self.result and place is not None else None
+        if self.result is not None and value is not None:
+            value = settled(value, largest_of(self.result, quantity))
+            shown = units.show(screen_sign(quantity, units) * value, DIMENSIONS[quantity])
+            self._row(painter, y + self.line(), quantity, shown, colours.ink)
+        return y + (1 if place is None else 2) * self.line()
+
+    def _draw_second(self, painter: QPainter, y: float, time: float, place: float | None) -> None:
+        """The pinned cursor, and what lies between the two."""
+        units, sight, line = self.units, self.sight, self.line()
+        self._heading(painter, y, "Second cursor")
+        y = self._draw_reading(painter, y + line, time, place)
+        self._heading(painter, y, "Between them")
+        apart, *way = between(units, sight.time, sight.place, (time, place))
+        self._row(painter, y + line, apart, way[0] if way else "", palette().ink, palette().ink)
+        if self._speed():
+            self._row(painter, y + 2 * line, "speed", self._speed(), palette().ink)
+
+    def _speed(self) -> str:
+        """What goes with the time and the way between the two cursors, "" where they have not both."""
+        pinned = self.sight.pinned
+        words = () if pinned is None else between(self.units, self.sight.time, self.sight.place, pinned)
+        return words[2] if len(words) > 2 else ""
+
+    def _heading(self, painter: QPainter, y: float, words: str) -> None:
+        painter.setFont(font("strong"))
+        put(painter, LEFT_EDGE, y, words, palette().soft_ink)
+        painter.setFont(self.font())
+
+    def _row(
+        self, painter: QPainter, y: float, first: str, second: str, hue: str = "", first_hue: str = ""
+    ) -> None:
+        soft = palette().soft_ink
+        put(painter, LEFT_EDGE, y, first, first_hue or soft)
+        put(painter, self.right(), y, second, hue or soft, RIGHT)
+
+    def _draw_gauge(self, painter: QPainter, index: int, gauge: Gauge) -> None:
+        colours, units, line, right = palette(), self.units, self.line(), self.right()
+        top = self.top() + index * self.block()
+        if f"gauges/{index}" in (self.sight.selection, *self.sight.also):
+            box = QRectF(4, top - GAP / 2, self.width() - 8, self.block() - GAP)
+            painter.fillRect(box, QColor(colours.accent_soft))
+        y, place = top + line / 2, units.show(gauge.position, "length")
+        painter.setFont(font("strong"))
+        room = right - width_of(place, self.font()) - 16
+        put(painter, LEFT_EDGE, y, fitted(gauge.name, painter.font(), room), colours.gauge(index))
+        painter.setFont(self.font())
+        put(painter, right, y, place, colours.soft_ink, RIGHT)
+        record = self.result.gauges.get(gauge.name) if self.result is not None else None
+        if record is None:
             return
-        put(painter, right, y, units.show(sight.place, "length"), colours.soft_ink, RIGHT)
-        value = value_at(self.result, sight.quantity, sight.time, sight.place) if self.result else None
-        if value is not None:
-            shown = units.show(screen_sign(sight.quantity, units) * value, DIMENSIONS[sight.quantity])
-            put(painter, 8, y + self.line(), sight.quantity, colours.soft_ink)
-            put(painter, right, y + self.line(), shown, colours.ink, RIGHT)
+        for number, (quantity, dimension) in enumerate(READ):
+            value = screen_sign(quantity, units) * gauge_value(record, quantity, self.sight.time)
+            beside = number % 2 == 1 and self.two_columns()
+            at, align = (right, RIGHT) if beside else (LEFT_EDGE, LEFT)
+            y += 0 if beside else line
+            put(painter, at, y, units.show(value, dimension), colours.ink, align)
 
     def mousePressEvent(self, event: QMouseEvent) -> None:
         index = int((event.position().y() - self.top()) // self.block())

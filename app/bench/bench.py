@@ -9,7 +9,7 @@ from __future__ import annotations
 from collections.abc import Sequence
 
 from PySide6.QtCore import QSize, Qt, Signal
-from PySide6.QtGui import QColor, QKeyEvent, QKeySequence, QPainter, QPaintEvent, QShortcut
+from PySide6.QtGui import QColor, QFontMetricsF, QKeyEvent, QKeySequence, QPainter, QPaintEvent, QShortcut
 from PySide6.QtWidgets import QAbstractButton, QApplication, QComboBox, QVBoxLayout, QWidget
 
 from app.bench.at_cursor import AtCursor
@@ -22,6 +22,7 @@ from app.bench.time_bar import TimeBar
 from app.bench.xt_diagram import XtDiagram
 from app.document import Document
 from app.laid_over import LaidOver
+from app.look.fonts import font
 from app.look.palette import palette
 from app.sight import Sight
 from app.solving import Solution
@@ -49,8 +50,9 @@ class Bench(QWidget):
         self.findings = FindingsPanel(document, sight, solution, laid_over=self.laid_over)
         self.time_bar = TimeBar(document, sight, solution)
         self._sight = sight
-        for picture, size in ((self.member, 150), (self.xt, 280), (self.profile, 170)):
-            picture.setMinimumSize(QSize(size, 160))
+        line = QFontMetricsF(font()).height()
+        for picture, size in ((self.member, max(150, 8 * line)), (self.xt, 280), (self.profile, 170)):
+            picture.setMinimumSize(QSize(round(size), 160))
         self.grid = CrossGrid(
             [[self.member, self.xt, self.profile], [self.at_cursor, self.strips, self.findings]],
             COLUMNS,

@@ -9,32 +9,25 @@ from itertools import pairwise
 from typing import Any
 
 import numpy as np
-from PySide6.QtCore import QLineF, QPointF, QRectF, Qt
-from PySide6.QtGui import QColor, QFontMetricsF, QPainter, QPainterPath, QPen, QRegion
+from PySide6.QtCore import QLineF, QRectF, Qt
+from PySide6.QtGui import QFontMetricsF, QPainter, QPainterPath, QPen, QRegion
 from PySide6.QtWidgets import QMenu
 
-from app.bench.field_values import (
-    DIMENSIONS,
-    Extremes,
-    along_member,
-    area_at,
-    extremes_of,
-    limit_lines,
-    screen_sign,
-)
+from app.bench.envelopes import Scale, draw_extremes, draw_over, hues_of, is_free
+from app.bench.field_values import DIMENSIONS, along_member, extremes_of, limit_lines, screen_sign
+from app.bench.limits import Limit, draw_limits, limits_of
 from app.bench.member.glyphs import pen
 from app.bench.member.locked_in import draw_locked_in, table_of, unit_of
 from app.bench.pictures.axes import Axis, Margins, margins_of
 from app.bench.pictures.axis_drawing import distance_ticks, horizontal_ticks, in_units
 from app.bench.pictures.cursor import draw_pinned_place, draw_place
 from app.bench.pictures.curves import polygon
-from app.bench.pictures.lettering import CENTRE, put, put_on
+from app.bench.pictures.lettering import put
 from app.bench.pictures.line_styles import over_pen
 from app.bench.pictures.picture import Picture, Table
 from app.laid_over import LaidOver, Over
 from app.look.fonts import font
 from app.look.palette import palette
-from app.units import rounded
 from solver import Result
 from solver.answer.result import Residual
 
@@ -101,30 +94,20 @@ class Profile(Picture):
         one = float(self.units.number(1.0, self.dimension, self._largest()))
         return one * screen_sign(self.sight.quantity, self.units)
 
-    def limits(self) -> list[tuple[str, float, float, float]]:
-        """Limits as (sign, from (m), to (m), value in SI with tension positive), of stress, or of force at its area."""
-        quantity = self.sight.quantity
-        if quantity not in ("stress", "force") or self.result is None:
+    def limits(self) -> list[tuple[Limit, float]]:
+        """Limits of each segment's material, each with its value as shown."""
+        if self.result is None:
             return []
-        lines = limit_lines(self.case)
-        if quantity == "stress":
-            return [(line.sign, line.start, line.end, line.stress) for line in lines]
-        edges = self.result.fields.edges
-        pairs: list[tuple[str, float, float, float]] = []
-        for line in lines:
-            for top, bottom in pairwise(edges):
-                start, end = max(top, line.start), min(bottom, line.end)
-                if end > start:
-                    area = float(area_at(self.result, np.array([(start + end) / 2]))[0])
-                    pairs.append((line.sign, float(start), float(end), line.stress * area))
-        return pairs
+        factor = self.factor()
+        return [
+            (limit, limit.value * factor) for limit in limits_of(self.case, self.result, self.sight.quantity)
+        ]
 
     def value_axis(self) -> Axis:
         """Values to the right, in the unit shown; room for the whole run and for limits that are not far off."""
         plot, factor = self.plot(), self.factor()
         reach = self._largest() * abs(factor)
-        near = [abs(v * factor) for _, _, _, v in self.limits() if abs(v * factor) <= FAR_LIMIT * reach]
-        values = [v * factor for _, _, _, v in self.limits() if abs(v * factor) in near]
+        values = [shown for _, shown in self.limits() if abs(shown) <= FAR_LIMIT * reach]
         for result in self._all_results() if self.result is not None else ():
             found = extremes_of(result, self.sight.quantity)
             for ends in (found.lowest, found.highest):
@@ -152,9 +135,7 @@ class Profile(Picture):
             painter.setPen(pen(palette().grid))
             painter.drawLine(QLineF(values.at(0), plot.top(), values.at(0), plot.bottom()))
         if self.result is not None:
-            self._draw_extremes(painter, plot, distance, values)
-            self._draw_others(painter, plot, distance, values)
-            self._draw_limits(painter, plot, distance, values)
+            self._draw_whole_run(painter, plot, distance, values)
         painter.restore()
         horizontal_ticks(painter, values, plot.bottom(), self.result is not None)
 
@@ -195,7 +176,7 @@ class Profile(Picture):
         painter.setFont(self.font())
         metrics, room = QFontMetricsF(self.font()), self.width() - x - 6
         choices = (f"{unit} at {moment}", f"{unit}, {moment}", unit)
-        words = next((w for w in choices if metrics.horizontalAdvance(w) <= room), unit)
+        words = next((w for w in choices if metrics.horizontalAdvance(w) <= room), "")
         put(painter, x, 0.5 * self.margins().header, words, palette().soft_ink)
 
     def _draw_now(self, painter: QPainter, distance: Axis) -> None:
@@ -224,106 +205,19 @@ class Profile(Picture):
             path.addPolygon(polygon(np.asarray(values.pixel(ends)), np.asarray(distance.pixel(places))))
         painter.drawPath(path)
 
-    def _draw_others(self, painter: QPainter, plot: QRectF, distance: Axis, values: Axis) -> None:
-        """Extremes of the cases laid over this one, each with its name where its larger curve leaves room."""
-        factor, colours, metrics = self.factor(), palette(), QFontMetricsF(painter.font())
-        hues = self._hues()
-        for one in self._others():
-            assert one.result is not None
-            found = extremes_of(one.result, self.sight.quantity)
-            y = np.asarray(distance.pixel(found.position))
-            for ends, hue in ((found.lowest, hues[0]), (found.highest, hues[1])):
-                painter.setPen(over_pen(hue, one.number))
-                painter.drawPolyline(polygon(np.asarray(values.pixel(ends * factor)), y))
-            compressive = -np.min(found.lowest, initial=0) >= np.max(found.highest, initial=0)
-            ends = found.lowest if compressive else found.highest
-            row = int((0.3 + 0.17 * one.number) * (len(ends) - 1))
-            name = metrics.elidedText(one.name, Qt.TextElideMode.ElideRight, plot.width() * 0.6)
-            width = metrics.horizontalAdvance(name)
-            x = values.at(float(ends[row]) * factor) - width / 2
-            x = min(max(x, plot.left() + 8), plot.right() - width - 2)
-            put_on(painter, x, float(y[row]), name, hues[0 if compressive else 1], colours.paper)
+    def _draw_whole_run(self, painter: QPainter, plot: QRectF, distance: Axis, values: Axis) -> None:
+        """Extremes of this case and of those laid over it, and the limits off all of them."""
+        quantity = self.sight.quantity
+        scale = Scale(plot, distance, values, self.factor(), hues_of(quantity))
+        found = [extremes_of(result, quantity) for result in self._all_results()]
+        draw_extremes(painter, scale, found[0])
+        for one, extremes in zip(self._others(), found[1:], strict=True):
+            draw_over(painter, scale, extremes, one.name, one.number)
 
-    def _hues(self) -> tuple[str, str]:
-        """Colours of the lowest and of the highest."""
-        colours = palette()
-        if self.sight.quantity in ("stress", "force"):
-            return colours.compression, colours.tension
-        return colours.backward, colours.forward
+        def free(box: QRectF) -> bool:
+            return is_free(box, scale, found)
 
-    def _draw_extremes(self, painter: QPainter, plot: QRectF, distance: Axis, values: Axis) -> None:
-        factor, result = self.factor(), self.result
-        assert result is not None
-        found = extremes_of(result, self.sight.quantity)
-        if not len(found.position):
-            return
-        low_hue, high_hue = self._hues()
-        for ends, hue, pick in ((found.lowest, low_hue, np.argmin), (found.highest, high_hue, np.argmax)):
-            x, y = np.asarray(values.pixel(ends * factor)), np.asarray(distance.pixel(found.position))
-            painter.setPen(pen(hue, 1.2))
-            painter.setBrush(Qt.BrushStyle.NoBrush)
-            painter.drawPolyline(polygon(x, y))
-            peak = int(pick(ends))
-            painter.setPen(Qt.PenStyle.NoPen)
-            painter.setBrush(QColor(hue))
-            if abs(ends[peak]) > 0:
-                painter.drawEllipse(QPointF(x[peak], y[peak]), 3.2, 3.2)
-        self._name_extremes(painter, plot, distance, values, found)
-
-    def _name_extremes(
-        self, painter: QPainter, plot: QRectF, distance: Axis, values: Axis, found: Extremes
-    ) -> None:
-        """ "whole run" at the foot of the larger of the two curves."""
-        factor = self.factor()
-        compressive = -np.min(found.lowest) >= np.max(found.highest)
-        ends = found.lowest if compressive else found.highest
-        colours, hues = palette(), self._hues()
-        half = QFontMetricsF(painter.font()).horizontalAdvance("whole run") / 2 + 2
-        x = min(max(values.at(float(ends[-1]) * factor), plot.left() + half), plot.right() - half)
-        line = QFontMetricsF(painter.font()).height()
-        y = min(float(distance.at(float(found.position[-1]))) + 0.7 * line, plot.bottom() - 0.6 * line)
-        put_on(painter, x, y, "whole run", hues[0 if compressive else 1], colours.paper, CENTRE)
-
-    def _draw_limits(self, painter: QPainter, plot: QRectF, distance: Axis, values: Axis) -> None:
-        """Stepped lines where the limits lie inside the picture; an arrow and the number where they lie beyond it."""
-        factor = self.factor()
-        before: dict[str, float] = {}
-        named: dict[tuple[str, float], tuple[float, str, float, bool]] = {}
-        for sign, start, end, value in self.limits():
-            x, top, bottom = values.at(value * factor), distance.at(start), distance.at(end)
-            inside = values.low <= value * factor <= values.high
-            painter.setPen(pen(palette().ink, 1.0, Qt.PenStyle.DashLine))
-            if inside:
-                painter.drawLine(QLineF(x, top, x, bottom))
-                if sign in before:
-                    painter.drawLine(QLineF(before[sign], top, x, top))
-                before[sign] = x
-            # along a taper the limit of a force changes at every column: its first value is named
-            key = (sign, 0.0 if self.sight.quantity == "force" else value)
-            text = f"limit {rounded(abs(value * factor))}"
-            named.setdefault(key, (x if inside else np.nan, text, top, value * factor > 0))
-        self._name_limits(painter, plot, list(named.values()))
-
-    def _name_limits(
-        self, painter: QPainter, plot: QRectF, labels: list[tuple[float, str, float, bool]]
-    ) -> None:
-        """Beside its line, inwards first, in the first row where it covers no other."""
-        metrics = QFontMetricsF(painter.font())
-        taken: list[QRectF] = []
-        for x, text, top, rightwards in labels:
-            if np.isnan(x):
-                text = f"{text} →" if rightwards else f"← {text}"
-                sides = [(plot.right() - 2, True)] if rightwards else [(plot.left() + 8, False)]
-            else:
-                sides = [(x - 4, True), (x + 4, False)] if rightwards else [(x + 4, False), (x - 4, True)]
-            width, line = metrics.horizontalAdvance(text), metrics.height()
-            for row, (at, leftwards) in ((r, s) for r in range(6) for s in sides):
-                y = max(top, plot.top()) + (0.75 + row) * line
-                box = QRectF(at - width if leftwards else at, y - line / 2, width, line)
-                if plot.contains(box) and not any(box.intersects(other) for other in taken):
-                    taken.append(box)
-                    put_on(painter, box.left(), y, text, palette().ink, palette().paper)
-                    break
+        draw_limits(painter, plot, distance, values, self.limits(), quantity, free)
 
     def table(self) -> Table | None:
         """Distance, the extremes of the whole run, and the quantity now, in the units and sign of the screen."""

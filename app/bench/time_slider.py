@@ -16,6 +16,7 @@ KNOB, RISE = 14, 4
 class TimeSlider(QSlider):
     def __init__(self) -> None:
         super().__init__(Qt.Orientation.Horizontal)
+        self.setMinimumHeight(KNOB + 2 * RISE)
         self._shown = (0.0, 1.0)
 
     def show_part(self, low: float, high: float) -> None:
@@ -33,7 +34,7 @@ class TimeSlider(QSlider):
             return
         room = self.width() - KNOB
         left, right = (KNOB / 2 + share * room for share in self._shown)
-        y = self.height() / 2 + KNOB / 2 + 1.5
+        y = self.height() - 1.5
         painter = QPainter(self)
         painter.setPen(pen(palette().accent, 2.0))
         painter.drawLine(QLineF(left, y, right, y))

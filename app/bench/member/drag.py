@@ -2,14 +2,24 @@
 
 from __future__ import annotations
 
+from collections.abc import Sequence
 from itertools import count
 
 from PySide6.QtCore import QPointF
 
-from app.bench.member.handles import DROP_PER_PIXEL, DROP_STEP, Handle, change_to, told
+from app.bench.member.handles import (
+    DROP_PER_PIXEL,
+    DROP_STEP,
+    Handle,
+    change_to,
+    gauges_along,
+    handles_of,
+    told,
+    within_all,
+)
 from app.bench.pictures.axes import Axis, tidy_step
 from app.document import Document
-from app.units import units_of
+from app.units import Units, units_of
 
 #: Pixels that the pointer must move before a press becomes a drag.
 DEAD = 3.0
@@ -19,11 +29,15 @@ _numbers = count(1)
 class MemberDrag:
     """One drag of one handle, from the press on. `told`: what it does, empty while nothing has moved.
 
-    Places are reckoned on the axis as it was at the press: the axis may change with what is dragged.
+    Places are reckoned on the axis as it was at the press: the axis may change with what is dragged. Of several gauges
+    that are selected (`chosen`) all go along, as far as each of them can.
     """
 
-    def __init__(self, document: Document, handle: Handle, axis: Axis, at: QPointF) -> None:
+    def __init__(
+        self, document: Document, handle: Handle, axis: Axis, at: QPointF, chosen: Sequence[str] = ()
+    ) -> None:
         self.handle, self.told = handle, ""
+        self._along = gauges_along(document.case, handle, chosen)
         self._document, self._axis, self._from = document, axis, at
         self._case, self._case_index = document.case, document.case_index
         self._steps_before = document.undo_stack.index()
@@ -35,11 +49,12 @@ class MemberDrag:
         down = to.y() - self._from.y()
         if not self.told and abs(down) < DEAD:
             return False
-        wanted = self._snapped(self._wanted(down), free)
-        place = min(max(wanted, self.handle.low), self.handle.high)
+        place = self._snapped(self._wanted(down), free)
+        place = min(max(place, self.handle.low), self.handle.high)
+        place = within_all(place, self.handle, self._along)
         if place != self._place or not self.told:
             self._place = place
-            self.told = told(self.handle, place, self._case, units_of(self._document.project))
+            self.told = told(self.handle, place, self._case, units_of(self._document.project), self._along)
             self._edit()
         return True
 
@@ -56,7 +71,7 @@ class MemberDrag:
             self._edit()
 
     def _edit(self) -> None:
-        change = change_to(self.handle, self._place, self._case, self._case_index)
+        change = change_to(self.handle, self._place, self._case_index, self._along)
         self._document.edit_tree(self.told, change, merge=self._merge)
 
     def _wanted(self, down: float) -> float:
@@ -67,7 +82,30 @@ class MemberDrag:
     def _snapped(self, place: float, free: bool) -> float:
         if free:
             return place
-        one = float(units_of(self._document.project).number(1.0, "length"))
-        span = (self._axis.high - self._axis.low) * one
-        step = DROP_STEP if self.handle.kind == "drop" else tidy_step(span, int(self._axis.length)) / one
+        step = step_of(self.handle, self._axis, units_of(self._document.project))
         return round(place / step) * step
+
+
+def step_of(handle: Handle, axis: Axis, units: Units) -> float:
+    """The tidy step (m) of a drag: of the unit shown, and about a pixel high."""
+    one = float(units.number(1.0, "length"))
+    span = (axis.high - axis.low) * one
+    return DROP_STEP if handle.kind == "drop" else tidy_step(span, int(axis.length)) / one
+
+
+def nudge(document: Document, chosen: Sequence[str], way: int, axis: Axis) -> bool:
+    """Move what is selected by one tidy step, down the member (`way` 1) or up; False where it cannot be moved. The ram
+    goes the other way: up is higher."""
+    handle = next((h for h in handles_of(document.case) if h.pointer == chosen[0]), None)
+    if handle is None:
+        return False
+    along, units = gauges_along(document.case, handle, chosen), units_of(document.project)
+    way = -way if handle.kind == "drop" else way
+    step = step_of(handle, axis, units)
+    place = round(handle.place / step + way) * step
+    place = within_all(min(max(place, handle.low), handle.high), handle, along)
+    if place != handle.place:
+        words = told(handle, place, document.case, units, along)
+        change = change_to(handle, place, document.case_index, along)
+        document.edit_tree(words, change, merge=f"nudge {','.join(chosen)}")
+    return True

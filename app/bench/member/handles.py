@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable, Iterator
+from collections.abc import Callable, Iterator, Sequence
 from dataclasses import dataclass
 from itertools import accumulate
 from typing import Any, Literal
@@ -82,14 +82,30 @@ def _drop(case: Case) -> Iterator[Handle]:
         yield Handle("drop", 0, "load", height, DROP_STEP, 100.0)
 
 
-def change_to(handle: Handle, place: float, case: Case, at: int) -> Change:
+def gauges_along(case: Case, handle: Handle, chosen: Sequence[str]) -> tuple[Handle, ...]:
+    """The other gauges that are selected where a gauge is dragged: they go along."""
+    if handle.kind != "gauge":
+        return ()
+    others = (other for other in _gauges(case) if other.pointer in chosen)
+    return tuple(other for other in others if other.index != handle.index)
+
+
+def within_all(place: float, handle: Handle, along: Sequence[Handle]) -> float:
+    """A place (m) for the handle at which those that go along stay within their bounds too."""
+    low = max([handle.low, *(handle.place + one.low - one.place for one in along)])
+    high = min([handle.high, *(handle.place + one.high - one.place for one in along)])
+    return min(max(place, low), high)
+
+
+def change_to(handle: Handle, place: float, at: int, along: Sequence[Handle] = ()) -> Change:
     """The edit of the project's tree that puts a handle at a place (m); `at` is the number of the case."""
 
     def change(tree: dict[str, Any]) -> None:
         mine = tree["cases"][at]
         if handle.kind == "gauge":
-            gauge = mine["gauges"][handle.index]
-            gauge["position"] = tidy(abs(place))
+            for one in (handle, *along):
+                where = one.place + place - handle.place if one is not handle else place
+                mine["gauges"][one.index]["position"] = tidy(abs(where))
         elif handle.kind == "drop":
             mine["load"]["drop_height"] = tidy(place)
         elif handle.kind == "surface":
@@ -119,9 +135,12 @@ def tidy(value: float) -> float:
     return float(f"{value:.9g}")
 
 
-def told(handle: Handle, place: float, case: Case, units: Units) -> str:
+def told(handle: Handle, place: float, case: Case, units: Units, along: Sequence[Handle] = ()) -> str:
     """What a drag does, as the name of the step of undo: "Move gauge Head to 1.40 m"."""
     shown = units.show(abs(place), "length")
+    if along:
+        by, way = units.show(abs(place - handle.place), "length"), "down" if place > handle.place else "up"
+        return f"Move {len(along) + 1} gauges {way} by {by}, {case.gauges[handle.index].name} to {shown}"
     if handle.kind == "gauge":
         return f"Move gauge {case.gauges[handle.index].name} to {shown}"
     if handle.kind == "drop":

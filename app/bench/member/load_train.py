@@ -10,7 +10,7 @@ from PySide6.QtCore import QLineF, QPointF, QRectF, Qt
 from PySide6.QtGui import QColor, QFontMetricsF, QPainter, QPolygonF
 
 from app.bench.member.glyphs import arrow_down, outline, pen, pulse_shape
-from app.bench.pictures.lettering import RIGHT, fitted, put
+from app.bench.pictures.lettering import RIGHT, fitted, put, width_of
 from app.look.palette import palette
 from app.units import Units
 from solver import Case
@@ -55,9 +55,10 @@ def blocks_of(
 
 
 def draw_drop(
-    painter: QPainter, case: Case, units: Units, blocks: list[Block], right: float, struck: float
+    painter: QPainter, case: Case, units: Units, blocks: list[Block], plot: QRectF, struck: float
 ) -> None:
-    """The blocks, the arrow of the fall, and the ram's mass and height in words where there is room."""
+    """The blocks, the arrow of the fall, and the ram's mass and height in words where there is room: right of the
+    arrow, else left of the ram out to the panel's edge; of the two, the height."""
     colours, load = palette(), case.load
     assert isinstance(load, Drop)
     fills = {"ram": colours.bars[0], "cap": colours.bars[1], "cushion": colours.cushion}
@@ -71,15 +72,22 @@ def draw_drop(
     landing = min((b.box.top() for b in blocks if b.kind != "ram"), default=struck)
     x = ram.right() + 6
     arrow_down(painter, x, ram.top() + 2, landing, 5, colours.soft_ink)
-    lines = [units.show(load.ram_mass, "mass"), strength_text(load, units)]
     metrics = QFontMetricsF(painter.font())
-    needed = max(metrics.horizontalAdvance(text) for text in lines)
-    beside = x + 5 + needed <= right or ram.left() - 8 < needed  # right of the arrow, else left of the ram
+    lines = [units.show(load.ram_mass, "mass"), strength_text(load, units)]
+    needed = max(width_of(text, painter.font()) for text in lines)
+    beside = x + 5 + needed <= plot.right() + 4
+    if not beside:
+        # the number of the struck end stands left of it
+        room = struck - 0.5 * metrics.height() - plot.top()
+        lines = lines[-max(int(room / metrics.height()), 1) :]
+        needed = max(width_of(text, painter.font()) for text in lines)
+    if not beside and needed > ram.left() - 8:
+        return
     for row, text in enumerate(lines):
-        y = ram.top() + (row + 0.5) * metrics.height()
         if beside:
-            put(painter, x + 5, y, fitted(text, painter.font(), right - x - 5), colours.soft_ink)
+            put(painter, x + 5, ram.top() + (row + 0.5) * metrics.height(), text, colours.soft_ink)
         else:
+            y = max(ram.top(), plot.top()) + (row + 0.5) * metrics.height()
             put(painter, ram.left() - 6, y, text, colours.soft_ink, RIGHT)
 
 

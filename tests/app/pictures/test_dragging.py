@@ -9,7 +9,7 @@ from app.bench.member.handles import handles_of
 
 
 def spot(member, place, side):
-    return QPoint(round(member.centre() + side), round(member.distance_axis().at(place)))
+    return QPoint(round(member.scene().centre + side), round(member.distance_axis().at(place)))
 
 
 def drag(qtbot, member, start, end, keys=Qt.KeyboardModifier.NoModifier, release=True):
@@ -63,7 +63,7 @@ def test_escape_takes_a_drag_back(open_bench, pile, qtbot):
     the = open_bench(pile)
     member = the.bench.member
     drag(qtbot, member, spot(member, 16.0, 0), spot(member, 10.0, 0), release=False)
-    assert the.document.case.member.segments[0].length < 11
+    qtbot.waitUntil(lambda: the.document.case.member.segments[0].length < 11)  # a step waits for its picture
     qtbot.keyClick(member, Qt.Key.Key_Escape)
     assert the.document.project == pile.project
     assert not the.document.undo_stack.canUndo()
@@ -90,7 +90,7 @@ def test_the_ground_surface_and_the_far_end_are_dragged(open_bench, pile, qtbot)
 def test_the_ram_is_lifted(open_bench, pile, qtbot):
     the = open_bench(pile)
     member = the.bench.member
-    ram = next(b.box for b in member._blocks(member.pieces()) if b.kind == "ram").center().toPoint()
+    ram = next(b.box for b in member.scene().blocks if b.kind == "ram").center().toPoint()
     drag(qtbot, member, ram, ram - QPoint(0, 30))
     assert the.document.case.load.drop_height == pytest.approx(1.5)
 
@@ -105,6 +105,42 @@ def test_nothing_is_dragged_past_what_it_belongs_to(open_bench, pile, qtbot):
     drag(qtbot, member, spot(member, 24.0, 0), spot(member, 2.0, 0))  # the toe stops below its lowest gauge
     assert the.document.case.member.length == pytest.approx(23.2)
     assert refused == []
+
+
+def test_of_several_gauges_that_are_selected_all_go_along(open_bench, pile, qtbot):
+    """The toe gauge has 0.8 m to the end of the pile: no further goes the other."""
+    the = open_bench(pile)
+    member = the.bench.member
+    the.sight.set(selection="gauges/1")
+    the.sight.set(also=("gauges/0",))
+    head, toe = spot(member, 1.2, -45), spot(member, 1.7, -45)
+    drag(qtbot, member, head, toe)
+    first, second = (g.position for g in the.document.case.gauges)
+    assert first > 1.3
+    assert second - first == pytest.approx(22.0, abs=1e-9)
+    assert the.document.undo_stack.undoText().startswith("Move 2 gauges down by")
+    drag(qtbot, member, spot(member, first, -45), spot(member, 15.0, -45))
+    assert [g.position for g in the.document.case.gauges] == pytest.approx([2.0, 24.0])
+    the.document.undo_stack.undo()
+    the.document.undo_stack.undo()
+    assert the.document.project == pile.project
+    assert the.sight.also == ("gauges/0",)
+
+
+def test_control_and_an_arrow_move_what_is_selected_by_a_tidy_step(open_bench, pile, qtbot):
+    the = open_bench(pile)
+    member = the.bench.member
+    the.sight.set(selection="gauges/0")
+    for _ in range(3):
+        qtbot.keyClick(member, Qt.Key.Key_Down, Qt.KeyboardModifier.ControlModifier)
+    position = the.document.case.gauges[0].position
+    assert position > 1.2
+    assert position == pytest.approx(round(position, 1), abs=1e-9)
+    the.document.undo_stack.undo()  # a burst is one step
+    assert the.document.project == pile.project
+    the.sight.set(selection="load")
+    qtbot.keyClick(member, Qt.Key.Key_Up, Qt.KeyboardModifier.ControlModifier)
+    assert the.document.case.load.drop_height == pytest.approx(1.25)
 
 
 def test_a_click_without_a_drag_changes_nothing(open_bench, pile, qtbot):

@@ -13,7 +13,7 @@ LEFT, CONTROL = Qt.MouseButton.LeftButton, Qt.KeyboardModifier.ControlModifier
 
 
 def spot(member, place, side=0):
-    return QPoint(round(member.centre() + side), round(member.distance_axis().at(place)))
+    return QPoint(round(member.scene().centre + side), round(member.distance_axis().at(place)))
 
 
 def menu_at(member, place, side=0):
@@ -69,7 +69,7 @@ def test_control_and_a_click_choose_several_and_they_go_together(open_bench, pil
 def test_the_menu_of_the_ground_offers_what_its_row_does(open_bench, pile):
     the = open_bench(pile)
     member = the.bench.member
-    menu = menu_at(member, 14.0, member.width() - member.centre() - 12)
+    menu = menu_at(member, 14.0, member.width() - member.scene().centre - 12)
     assert the.sight.selection == "ground/layers/0"
     choose(menu, "Duplicate")
     assert [layer.name for layer in the.document.case.ground.layers] == ["Dense sand", "Dense sand 2"]

@@ -77,7 +77,7 @@ def test_the_profile_moves_the_place_and_leaves_the_time(open_bench, pile, qtbot
 def test_a_click_on_the_member_selects_the_part(open_bench, pile, qtbot, place, side, pointer):
     the = open_bench(pile)
     member = the.bench.member
-    spot = QPoint(round(member.centre() + side), at(member, place=place).y())
+    spot = QPoint(round(member.scene().centre + side), at(member, place=place).y())
     qtbot.mouseClick(member, Qt.MouseButton.LeftButton, pos=spot)
     assert the.sight.selection == pointer
 
@@ -86,7 +86,7 @@ def test_every_part_of_the_load_train_can_be_selected(open_bench, pile, qtbot):
     the = open_bench(pile)
     member = the.bench.member
     found = []
-    for block in member._blocks(member.pieces()):
+    for block in member.scene().blocks:
         qtbot.mouseClick(member, Qt.MouseButton.LeftButton, pos=block.box.center().toPoint())
         found.append(the.sight.selection)
     assert found == ["load/cap_mass", "load/cushion", "load"]

@@ -1,0 +1,104 @@
+"""Extremes of the whole run along the member, drawn on the profile: this case's, and those of cases laid over it."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+import numpy as np
+from PySide6.QtCore import QPointF, QRectF, Qt
+from PySide6.QtGui import QColor, QFontMetricsF, QPainter
+
+from app.bench.field_values import Extremes
+from app.bench.member.glyphs import pen
+from app.bench.pictures.axes import Axis
+from app.bench.pictures.curves import polygon
+from app.bench.pictures.lettering import fitted, put_on, width_of
+from app.bench.pictures.line_styles import over_pen
+from app.look.palette import palette
+from app.sight import ShownQuantity
+
+
+@dataclass(frozen=True)
+class Scale:
+    """Where values lie on the profile: its plot, both axes, the factor from SI to what is shown, and the colours of the
+    lowest and of the highest."""
+
+    plot: QRectF
+    distance: Axis
+    values: Axis
+    factor: float
+    hues: tuple[str, str]
+
+    def x(self, values_si: np.ndarray) -> np.ndarray:
+        return np.asarray(self.values.pixel(values_si * self.factor))
+
+    def y(self, places: np.ndarray) -> np.ndarray:
+        return np.asarray(self.distance.pixel(places))
+
+
+def hues_of(quantity: ShownQuantity) -> tuple[str, str]:
+    """Colours of the lowest and of the highest."""
+    colours = palette()
+    if quantity in ("stress", "force"):
+        return colours.compression, colours.tension
+    return colours.backward, colours.forward
+
+
+def draw_extremes(painter: QPainter, scale: Scale, found: Extremes) -> None:
+    """Both curves, a dot at the peak of each, and "whole run" at the foot of the larger one."""
+    if not len(found.position):
+        return
+    y = scale.y(found.position)
+    for ends, hue, pick in zip(
+        (found.lowest, found.highest), scale.hues, (np.argmin, np.argmax), strict=True
+    ):
+        x = scale.x(ends)
+        painter.setPen(pen(hue, 1.2))
+        painter.setBrush(Qt.BrushStyle.NoBrush)
+        painter.drawPolyline(polygon(x, y))
+        peak = int(pick(ends))
+        if abs(ends[peak]) > 0:
+            painter.setPen(Qt.PenStyle.NoPen)
+            painter.setBrush(QColor(hue))
+            painter.drawEllipse(QPointF(x[peak], y[peak]), 3.2, 3.2)
+    ends, hue = _larger(found, scale)
+    width, line = width_of("whole run", painter.font()), QFontMetricsF(painter.font()).height()
+    left = _between(float(scale.x(ends[-1:])[0]) - width / 2, width, scale.plot)
+    below = min(float(y[-1]) + 0.7 * line, scale.plot.bottom() - 0.6 * line)
+    put_on(painter, left, below, "whole run", hue, palette().paper)
+
+
+def draw_over(painter: QPainter, scale: Scale, found: Extremes, name: str, number: int) -> None:
+    """Those of a case laid over, with its name on the larger curve."""
+    y = scale.y(found.position)
+    for ends, hue in zip((found.lowest, found.highest), scale.hues, strict=True):
+        painter.setPen(over_pen(hue, number))
+        painter.drawPolyline(polygon(scale.x(ends), y))
+    ends, hue = _larger(found, scale)
+    row = int((0.3 + 0.17 * number) * (len(ends) - 1))
+    name = fitted(name, painter.font(), scale.plot.width() * 0.6)
+    width = width_of(name, painter.font())
+    left = _between(float(scale.x(ends[row : row + 1])[0]) - width / 2, width, scale.plot)
+    put_on(painter, left, float(y[row]), name, hue, palette().paper)
+
+
+def is_free(box: QRectF, scale: Scale, envelopes: list[Extremes]) -> bool:
+    """Whether no curve of any of them, and nothing between its lowest and its highest, comes into a box."""
+    for found in envelopes:
+        y = scale.y(found.position)
+        first, last = np.searchsorted(y, (box.top() - 2, box.bottom() + 2))
+        if last <= first:
+            continue
+        x = np.concatenate((scale.x(found.lowest[first:last]), scale.x(found.highest[first:last])))
+        if x.min() < box.right() + 3 and x.max() > box.left() - 3:
+            return False
+    return True
+
+
+def _larger(found: Extremes, scale: Scale) -> tuple[np.ndarray, str]:
+    compressive = -np.min(found.lowest, initial=0) >= np.max(found.highest, initial=0)
+    return (found.lowest, scale.hues[0]) if compressive else (found.highest, scale.hues[1])
+
+
+def _between(left: float, width: float, plot: QRectF) -> float:
+    return min(max(left, plot.left() + 8), plot.right() - width - 2)
