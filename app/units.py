@@ -112,23 +112,23 @@ class Units:
         factor = self._factor(self.unit(dimension, near), dimension)
         return np.asarray(value_si) / factor if isinstance(value_si, np.ndarray) else value_si / factor
 
-    def text(self, value_si: float, dimension: str, near: float | None = None) -> str:
+    def text(self, value_si: float, dimension: str, near: float | None = None, typed: bool = True) -> str:
         """Number alone, for a field: as `plain`, with zeros up to three digits where it has a unit."""
         number = float(self.number(value_si, dimension, near))
-        written = self.plain(value_si, dimension, near)
+        written = self.plain(value_si, dimension, near, typed)
         wanted = _decimals(number, 3) if isfinite(number) else 0
         has = len(written.partition(".")[2])
         if isfinite(number) and "e" not in written and has < wanted and number != 0 and dimension != "none":
             written = f"{number:.{wanted}f}"
         return written
 
-    def plain(self, value_si: float, dimension: str, near: float | None = None) -> str:
-        """Number alone, with the digits that somebody has typed, up to seven; four of one that nobody has typed in
-        this unit, such as 16.4042 for 5 m in ft. Reads back with `parse`."""
+    def plain(self, value_si: float, dimension: str, near: float | None = None, typed: bool = True) -> str:
+        """Number alone, with the digits that somebody has typed, up to seven; four of one that nobody has typed (or
+        not in this unit, such as 16.4042 for 5 m in ft). Reads back with `parse`."""
         number = float(self.number(value_si, dimension, near))
         if not isfinite(number):
             return "–"
-        typed = isclose(float(f"{number:.8e}"), number, rel_tol=1e-12)
+        typed = typed and isclose(float(f"{number:.8e}"), number, rel_tol=1e-12)
         return _plain(number, 7 if typed else 4)
 
     def show(self, value_si: float, dimension: str, digits: int = 3) -> str:

@@ -12,13 +12,13 @@ from PySide6.QtWidgets import (
     QHBoxLayout,
     QInputDialog,
     QMenu,
-    QPushButton,
     QScrollArea,
     QToolButton,
     QWidget,
 )
 
 from app.document import Document
+from app.frame.case_chip import CaseChip
 from app.laid_over import fill_over_menu
 from app.look import icon
 from app.look.spacing import GAP, ROW
@@ -30,6 +30,8 @@ Tree = dict[str, Any]
 ELIDE = Qt.TextElideMode.ElideRight
 #: Pixels of a case's button around its words, and to which the one looked at is cut where all else is cut.
 ROUND_TEXT, LEAST_CHIP = 22, 90
+#: Pixels by which a text may be wider than told without being elided: its advance is a fraction, rounded.
+SPARE = 2
 
 
 class CaseRow(QWidget):
@@ -39,7 +41,7 @@ class CaseRow(QWidget):
         super().__init__(parent)
         self._document, self._sight = document, sight
         self._names: list[str] = []
-        self._buttons: list[QPushButton] = []
+        self._buttons: list[CaseChip] = []
         self._scroll = QScrollArea(self)
         self._scroll.setFrameShape(QFrame.Shape.NoFrame)
         self._scroll.setWidgetResizable(True)
@@ -54,6 +56,9 @@ class CaseRow(QWidget):
         self._row.setSpacing(GAP)
         self._row.addStretch(1)
         self._scroll.setWidget(inside)
+        self._mark = QFrame(inside)
+        self._mark.setProperty("role", "mark")
+        self._mark.hide()
         self._all = self._quiet_button("All cases", "fold")
         self._all.setPopupMode(QToolButton.ToolButtonPopupMode.InstantPopup)
         menu = QMenu(self._all)
@@ -92,6 +97,7 @@ class CaseRow(QWidget):
     def _follow(self) -> None:
         names = [case.name for case in self._document.project.cases]
         if names != self._names:
+            self._follow_names(names)
             self._names = names
             self._rebuild()
         for index, button in enumerate(self._buttons):
@@ -131,7 +137,9 @@ class CaseRow(QWidget):
             room, first = room - widths[first - 1], first - 1
         for index, button in enumerate(self._buttons):
             button.setVisible(first <= index < last)
-            text = widths[index] - ROUND_TEXT - GAP + (min(room, 0) if index == at and not fits else 0)
+            text = (
+                widths[index] - ROUND_TEXT - GAP + SPARE + (min(room, 0) if index == at and not fits else 0)
+            )
             button.setText(self.fontMetrics().elidedText(_short(self._names[index]), ELIDE, text))
         self._all.setVisible(not fits and len(widths) > 1)
         self._scroll.setMaximumWidth(sum(widths[first:last]) + GAP)
@@ -143,16 +151,47 @@ class CaseRow(QWidget):
             button.deleteLater()
         self._buttons = []
         for index, name in enumerate(self._names):
-            button = QPushButton(_short(name), self._scroll.widget())
-            button.setProperty("role", "chip")
-            button.setCheckable(True)
-            button.setAccessibleName(f"Case {name}")
-            button.setToolTip(f"{name}\nRight-click to rename, copy, move or remove it")
+            button = CaseChip(name, self._scroll.widget())
+            button.dragged.connect(self._mark_place)
+            button.dropped.connect(lambda x, i=index: self._move_to(i, self._place_at(x)))
+            button.shifted.connect(lambda by, i=index: self._move_to(i, i + by + (by > 0)))
             button.clicked.connect(lambda _on=False, i=index: self._choose(i))
             button.setContextMenuPolicy(Qt.ContextMenuPolicy.CustomContextMenu)
             button.customContextMenuRequested.connect(lambda at, i=index: self._menu(i, at))
             self._row.insertWidget(index, button)
             self._buttons.append(button)
+
+    def _place_at(self, x: int) -> int:
+        """Before which case something let go at this x comes to stand."""
+        shown = [i for i, button in enumerate(self._buttons) if not button.isHidden()]
+        return next((i for i in shown if x < self._buttons[i].geometry().center().x()), shown[-1] + 1)
+
+    def _mark_place(self, x: int | None) -> None:
+        """A stroke where what is dragged would come to stand."""
+        self._mark.setVisible(x is not None)
+        if x is not None:
+            place = self._place_at(x)
+            before = self._buttons[place - 1].geometry().right() if place else -GAP
+            self._mark.setGeometry(before + 1 + GAP // 2, 2, 2, self._scroll.viewport().height() - 4)
+            self._mark.raise_()
+
+    def _move_to(self, index: int, place: int) -> None:
+        """Put a case before another one, or at the end."""
+        to = place - 1 if place > index else place
+        if not 0 <= to < len(self._names):
+            return
+        self._document.choose_case(index)
+        if to != index and move_case(self._document, to - index):
+            self._buttons[to].setFocus()
+
+    def _follow_names(self, names: list[str]) -> None:
+        """A case that is laid over another one and gets a new name stays laid over it."""
+        renamed = [(old, new) for old, new in zip(self._names, names, strict=False) if old != new]
+        if self._sight is not None and len(names) == len(self._names) and len(renamed) == 1:
+            ((old, new),) = renamed
+            over = self._sight.laid_over
+            if old in over:
+                self._sight.set(laid_over=tuple(new if name == old else name for name in over))
 
     def _choose(self, index: int) -> None:
         self._document.choose_case(index)

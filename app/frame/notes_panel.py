@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from PySide6.QtCore import QEvent, QTimer, Signal
+from PySide6.QtCore import QEvent, Qt, QTimer, Signal
 from PySide6.QtGui import QFocusEvent, QResizeEvent
 from PySide6.QtWidgets import QFrame, QHBoxLayout, QPlainTextEdit, QToolButton, QWidget
 
@@ -27,6 +27,7 @@ class NotesField(QPlainTextEdit):
         self.setPlaceholderText("Notes on this project")
         self.setAccessibleName("Notes on this project")
         self.setTabChangesFocus(True)
+        self.setHorizontalScrollBarPolicy(Qt.ScrollBarPolicy.ScrollBarAlwaysOff)  # lines are wrapped
         self._pause = QTimer(self, singleShot=True, interval=PAUSE)
         self._pause.timeout.connect(self.commit)
         self.textChanged.connect(self._typed)
@@ -60,8 +61,10 @@ class NotesField(QPlainTextEdit):
             self.setPlainText(notes)
 
     def _fit(self) -> None:
-        lines = min(max(round(self.document().size().height()), FEWEST), MOST)
-        self.setFixedHeight(lines * self.fontMetrics().lineSpacing() + FRAME)
+        all_lines = round(self.document().size().height())
+        lines = min(max(all_lines, FEWEST), MOST)
+        below = 0 if all_lines > lines else FRAME // 2  # no sliver of the next line
+        self.setFixedHeight(lines * self.fontMetrics().lineSpacing() + FRAME // 2 + below)
 
 
 class NotesPanel(QFrame):

@@ -3,8 +3,18 @@
 from __future__ import annotations
 
 from PySide6.QtCore import QEvent, Qt
-from PySide6.QtGui import QAction, QKeyEvent
-from PySide6.QtWidgets import QHBoxLayout, QLineEdit, QPushButton, QSizePolicy, QToolButton, QWidget
+from PySide6.QtGui import QAction, QKeyEvent, QPaintEvent
+from PySide6.QtWidgets import (
+    QHBoxLayout,
+    QLineEdit,
+    QPushButton,
+    QSizePolicy,
+    QStyle,
+    QStyleOptionFrame,
+    QStylePainter,
+    QToolButton,
+    QWidget,
+)
 
 from app.document import Document
 from app.frame.case_row import CaseRow
@@ -32,6 +42,21 @@ class TitleField(QLineEdit):
         self.editingFinished.connect(self._commit)
         document.changed.connect(self._follow)
         self._follow()
+
+    def paintEvent(self, event: QPaintEvent) -> None:
+        """While nothing is typed, a title that is too long ends in dots instead of being cut."""
+        room = self.rect().adjusted(SPACE, 0, -SPACE, 0)
+        shown = self.fontMetrics().elidedText(self.text(), Qt.TextElideMode.ElideRight, room.width())
+        if self.hasFocus() or shown == self.text():
+            super().paintEvent(event)
+            return
+        option = QStyleOptionFrame()
+        self.initStyleOption(option)
+        painter = QStylePainter(self)
+        with painter:
+            painter.drawPrimitive(QStyle.PrimitiveElement.PE_PanelLineEdit, option)
+            painter.setPen(self.palette().text().color())
+            painter.drawText(room, Qt.AlignmentFlag.AlignVCenter | Qt.AlignmentFlag.AlignLeft, shown)
 
     def keyPressEvent(self, event: QKeyEvent) -> None:
         if event.key() == Qt.Key.Key_Escape:

@@ -3,7 +3,8 @@
 A widget says what it is by the property `role`, set before it is shown:
 labels "title", "strong", "figure", "soft", "small", "problem"; frames "paper" (a panel), "row"; buttons "chip" (one of
 several that can be switched on), "quiet" (no frame until pointed at), "main" (the one action of a choice), "link",
-"choice" (a name and a sentence); line edits "title"; frames "notice" and "popup"; widgets "clear".
+"choice" (a name and a sentence); line edits "title"; frames "notice", "popup" and "mark" (where what is dragged will
+stand); widgets "clear".
 """
 
 from __future__ import annotations
@@ -70,6 +71,7 @@ QPushButton[role="link"] {{ background: transparent; border: none; color: {accen
     text-decoration: underline; padding: 2px; }}
 QPushButton[role="link"]:focus {{ border: 2px solid {accent}; padding: 0; }}
 QPushButton[role="choice"] {{ text-align: left; padding: {space}px {wide}px; min-height: 40px; }}
+QFrame[role="mark"] {{ background: {accent}; border: none; }}
 QPushButton[role="choice"]:focus {{ padding: {space_focus}px {wide_focus}px; }}
 QPushButton::menu-indicator, QToolButton::menu-indicator {{ image: none; width: 0; }}
 

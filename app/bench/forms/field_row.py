@@ -13,6 +13,7 @@ from app.bench.forms.kinds import NO_SOURCE
 from app.bench.forms.spec import Spec
 from app.document import Document
 from app.explaining import explain
+from app.look.fonts import USUAL_LINE
 from app.look.spacing import FIELD, GAP
 from app.units import Units
 
@@ -32,6 +33,7 @@ class FieldRow(QWidget):
         self.document = document
         self._editor: QWidget = self
         self.spec = spec
+        self._typical = False
         self._grid = QGridLayout(self)
         self._grid.setContentsMargins(0, 0, 0, 0)
         self._grid.setHorizontalSpacing(GAP + 2)
@@ -53,7 +55,8 @@ class FieldRow(QWidget):
             Qt.TextInteractionFlag.LinksAccessibleByKeyboard | Qt.TextInteractionFlag.LinksAccessibleByMouse
         )
         self._mark.linkActivated.connect(lambda _link: confirm_mark(self.document, self.spec))
-        self._grid.addWidget(self._mark, 2, 1, 1, 2)
+        begins = 0 if metrics.height() > 1.2 * USUAL_LINE else 1  # in large type it needs the whole row
+        self._grid.addWidget(self._mark, 2, begins, 1, 3 - begins)
 
     def put_editor(self, editor: QWidget) -> None:
         """Place the editor, name it for those who hear the screen, and lead the label to it."""
@@ -108,7 +111,7 @@ class FieldRow(QWidget):
         raise NotImplementedError
 
     def _show_mark(self, mark: dict[str, str] | None) -> None:
-        typical = mark is not None and mark["state"] == "typical"
+        self._typical = typical = mark is not None and mark["state"] == "typical"
         self._mark.setVisible(typical)
         if typical and mark is not None:
             begun = mark["source"] == NO_SOURCE

@@ -142,7 +142,9 @@ class NumberRow(FieldRow):
         value = self.spec.value
         if value is None:
             return ""
-        return str(int(value)) if self.spec.whole else self._units.text(value, self.spec.dimension, value)
+        if self.spec.whole:
+            return str(int(value))
+        return self._units.text(value, self.spec.dimension, value, typed=not self._typical)
 
     def _given_text(self) -> str:
         entry = self.document.rejected.get(self.document.full_pointer(self.spec.pointer))
