@@ -3,12 +3,13 @@
 from __future__ import annotations
 
 from collections.abc import Iterator
+from functools import cache
 
 from pydantic import BaseModel
 
 from solver.errors import SolveError
 from solver.model.project import Case
-from solver.model.quantity import quantity_of
+from solver.model.quantity import Quantity, quantity_of
 
 #: Any quantity in SI units that a member, its load or its ground has lies between these by many powers of ten.
 LEAST, MOST = 1e-30, 1e30
@@ -34,10 +35,16 @@ def _named(case: Case) -> set[str]:
     return {*(segment.material for segment in segments), *(fill for fill in fills if fill)}
 
 
+@cache
+def _declared(model: type[BaseModel]) -> tuple[tuple[str, Quantity | None], ...]:
+    """Fields of a model with their quantities: looked up once, for every solve asks for them."""
+    return tuple((key, quantity_of(model, key)) for key in model.model_fields)
+
+
 def _numbers(part: BaseModel, where: str) -> Iterator[tuple[str, str, float, str]]:
     """Every quantity of a part and of what is in it: the part in words, the quantity's label, value and SI unit."""
-    for key in type(part).model_fields:
-        value, quantity = getattr(part, key), quantity_of(type(part), key)
+    for key, quantity in _declared(type(part)):
+        value = getattr(part, key)
         if quantity is not None and isinstance(value, float):
             yield where or "case", quantity.label, value, quantity.unit
         entries = value if isinstance(value, tuple) else (value,)

@@ -6,7 +6,7 @@ from dataclasses import dataclass
 
 import numpy as np
 from numpy.typing import NDArray
-from scipy.linalg import LinAlgError, solveh_banded
+from scipy.linalg.lapack import dptsv
 
 from solver.errors import SolveError
 from solver.numerics.arrays import Bounds, Motion, Rod, Shaft
@@ -157,16 +157,16 @@ def _refuse_unheld(chain: Chain, weight: float, soil: _Soil) -> None:
 
 def _static_displacements(chain: Chain, state: State, weight: Array, soil: _Soil) -> Array:
     """Newton's method on the nodes below the struck end; closed joints move as one, a wall at the far end holds."""
-    head, n = chain.head, chain.nodes
-    closed = {j.link for j in chain.joints if j.link >= head}
-    dof = np.zeros(n, dtype=np.int64)
-    for i in range(head + 1, n):
-        dof[i] = dof[i - 1] + (0 if i - 1 in closed else 1)
-    count = int(dof[-1]) + 1
+    head, n, stiff = chain.head, chain.nodes, state.rod.stiff
+    # the first node of each group that moves as one, and which group each node is of
+    opened = np.ones(n - head, dtype=bool)
+    opened[[j.link + 1 - head for j in chain.joints if j.link >= head]] = False
+    first, group = np.flatnonzero(opened), np.cumsum(opened) - 1
+    between = stiff[head + first[1:] - 1]
     held = chain.fixed_end or chain.wall_gap == 0
-    u, force = np.zeros(n), np.zeros(n - 1)
+    u, still, force = np.zeros(n), np.zeros(n), np.zeros(n - 1)
     for _ in range(200):
-        if link_forces(state.rod, u, np.zeros(n), force, chain.dt) >= 0:
+        if link_forces(state.rod, u, still, force, chain.dt) >= 0:
             raise SolveError(
                 "The member leaves its elastic range under its own weight: see the material's law."
             )
@@ -174,27 +174,20 @@ def _static_displacements(chain: Chain, state: State, weight: Array, soil: _Soil
         pull = weight - resist - chain.spring * u
         pull[:-1] += force
         pull[1:] -= force
-        band = np.zeros((2, count))
-        np.add.at(band[1], dof[head:], (slope + chain.spring)[head:])
-        links = np.arange(head, n - 1)
-        links = links[dof[links] != dof[links + 1]]
-        k = state.rod.stiff[links]
-        np.add.at(band[1], dof[links], k)
-        np.add.at(band[1], dof[links + 1], k)
-        band[0, dof[links + 1]] -= k
+        diagonal = np.add.reduceat((slope + chain.spring)[head:], first)
+        diagonal[:-1] += between
+        diagonal[1:] += between
         if held:
-            band[1, -1] += 1e6 * float(state.rod.stiff.max())
+            diagonal[-1] += 1e6 * float(stiff.max())
         # a slope of nearly nothing keeps a wholly slipping trial solvable; the balance itself stays exact
-        band[1] += 1e-12 * float(state.rod.stiff.max())
-        total = np.zeros(count)
-        np.add.at(total, dof[head:], pull[head:])
+        diagonal += 1e-12 * float(stiff.max())
+        total = np.add.reduceat(pull[head:], first)
         if held:
             total[-1] = 0.0
-        try:
-            change = solveh_banded(band, total)
-        except LinAlgError:
+        change, singular = dptsv(diagonal, -between, total)[2:]
+        if singular:
             break
-        u[head:] += change[dof[head:]]
+        u[head:] += change[group]
         if np.max(np.abs(change)) <= 1e-15 + 1e-13 * np.max(np.abs(u)):
             return u
     raise SolveError(

@@ -6,11 +6,11 @@ only one; Newton's method finds it, halving a step that would lead away.
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from typing import NamedTuple
 
 import numpy as np
 from numpy.typing import NDArray
-from scipy.linalg import LinAlgError, solveh_banded
+from scipy.linalg.lapack import dptsv
 
 from solver.numerics.chain import Chain
 from solver.numerics.equilibrium import State
@@ -31,18 +31,16 @@ def settle(chain: Chain, state: State) -> bool:
         return False
     rest = _Rest(chain, state)
     u = state.motion.u.copy()
+    at = rest.unbalanced(u)
     for _ in range(200):
-        out, slopes = rest.unbalanced(u)
-        try:
-            change = solveh_banded(rest.band(slopes), out[chain.head :])
-        except LinAlgError:
+        change, singular = dptsv(*rest.tangent(at), at.out[chain.head :])[2:]
+        largest = np.max(np.abs(change))
+        if singular or not largest <= float(chain.position[-1]):
             return False
-        if not np.isfinite(change).all() or np.max(np.abs(change)) > float(chain.position[-1]):
-            return False
-        if np.max(np.abs(change)) < STILL:
+        if largest < STILL:
             rest.take(u)
             return True
-        u = rest.nearer(u, change, float(np.linalg.norm(out)))
+        u, at = rest.nearer(u, change, at)
     return False
 
 
@@ -53,8 +51,7 @@ def _held(chain: Chain, state: State) -> bool:
     return bool(sides > 0 or chain.gravity > 0 or chain.fixed_end)
 
 
-@dataclass
-class _Springs:
+class _Springs(NamedTuple):
     """Springs with sliders on nodes: resistance `at` displacements `origin` (N), stiffness, and bounds either side."""
 
     node: NDArray[np.int64]
@@ -71,6 +68,14 @@ class _Springs:
         return np.clip(trial, self.low, self.high), np.where(inside, self.stiff, 0.0)
 
 
+class _Balance(NamedTuple):
+    """Force left over on every node (N), slopes (N/m) of nodes to ground and of links."""
+
+    out: Array
+    grounded: Array
+    links: Array
+
+
 class _Rest:
     """The balance of one state: forces on nodes at given displacements."""
 
@@ -80,15 +85,17 @@ class _Rest:
         if len(chain.train) == 2:
             self.weight[chain.head] += self.weight[chain.head - 1]
         self.weight[: chain.head] = 0.0
-        self.springs = _springs_of(chain, state)
+        self.groups = _springs_of(chain, state)
+        self.springs = _Springs(*(np.concatenate(parts) for parts in zip(*self.groups, strict=True)))
+        self.still = np.zeros(chain.nodes)
         self.faces = FACES * float(state.rod.stiff.max())
         self.joints = [(j, link) for j, link in enumerate(chain.joints) if link.link >= chain.head]
 
-    def unbalanced(self, u: Array) -> tuple[Array, tuple[Array, Array]]:
-        """Force left over on every node (N), and slopes (N/m) of nodes to ground and of links."""
+    def unbalanced(self, u: Array) -> _Balance:
+        """The balance at displacements `u`."""
         chain, rod = self.chain, self.state.rod._replace(state=self.state.rod.state.copy())
         force = np.zeros_like(self.state.motion.force)
-        link_forces(rod, u, np.zeros_like(u), force, chain.dt)
+        link_forces(rod, u, self.still, force, chain.dt)
         grounded, links = chain.spring.copy(), rod.stiff.copy()
         for _, joint in self.joints:
             gap = u[joint.link + 1] - u[joint.link] + joint.gap
@@ -98,10 +105,9 @@ class _Rest:
         out = self.weight - chain.spring * u
         out[:-1] += force
         out[1:] -= force
-        for spring in self.springs:
-            resist, slope = spring.resist(u)
-            np.subtract.at(out, spring.node, resist)
-            np.add.at(grounded, spring.node, slope)
+        resist, slope = self.springs.resist(u)
+        np.subtract.at(out, self.springs.node, resist)
+        np.add.at(grounded, self.springs.node, slope)
         if chain.wall_gap < np.inf:
             over = max(u[-1] - self.state.bounds.wall[0], 0.0)
             out[-1] -= self.faces * over
@@ -109,28 +115,29 @@ class _Rest:
         if chain.fixed_end:
             out[-1] = 0.0
             grounded[-1] += self.faces
-        return out, (grounded, links)
+        return _Balance(out, grounded, links)
 
-    def band(self, slopes: tuple[Array, Array]) -> Array:
-        """The tangent as a symmetric band, with next to nothing added so that a wholly slipping trial can be solved."""
+    def tangent(self, at: _Balance) -> tuple[Array, Array]:
+        """Its diagonal and what stands beside it, with next to nothing added so that a wholly slipping trial can be
+        solved."""
         head = self.chain.head
-        grounded, links = slopes[0][head:], slopes[1][head:]
-        band = np.zeros((2, len(grounded)))
-        band[1] = grounded + 1e-9 * float(self.state.rod.stiff.max()) / len(grounded)
-        band[1, :-1] += links
-        band[1, 1:] += links
-        band[0, 1:] = -links
-        return band
+        grounded, links = at.grounded[head:], at.links[head:]
+        diagonal = grounded + 1e-9 * float(self.state.rod.stiff.max()) / len(grounded)
+        diagonal[:-1] += links
+        diagonal[1:] += links
+        return diagonal, -links
 
-    def nearer(self, u: Array, change: Array, before: float) -> Array:
+    def nearer(self, u: Array, change: Array, at: _Balance) -> tuple[Array, _Balance]:
         """The whole step, or a part of it that leaves less out of balance."""
+        before = float(np.linalg.norm(at.out))
         trial = u
         for share in (1.0, 0.5, 0.25, 0.125):
             trial = u.copy()
             trial[self.chain.head :] += share * change
-            if float(np.linalg.norm(self.unbalanced(trial)[0])) < before:
-                return trial
-        return trial
+            at = self.unbalanced(trial)
+            if float(np.linalg.norm(at.out)) < before:
+                break
+        return trial, at
 
     def take(self, u: Array) -> None:
         """Write the rest into the state: displacements, materials, ground, joints."""
@@ -139,14 +146,14 @@ class _Rest:
         link_forces(state.rod, u, still, state.motion.force, chain.dt)
         state.motion.u[:] = u
         s, bounds = state.shaft, state.bounds
-        plain, power, radiation = (spring.resist(u)[0] for spring in self.springs[:3])
+        plain, power, radiation = (spring.resist(u)[0] for spring in self.groups[:3])
         s.r[:] = plain
         s.power[0] = power
         s.radiation[0] = np.divide(
             radiation, s.radiation[2], out=np.zeros_like(radiation), where=s.radiation[2] > 0
         )
         if len(bounds.toe_par):
-            _take_toe(bounds.toe_par, bounds.toe_state, float(u[-1]), float(self.springs[3].resist(u)[0][0]))
+            _take_toe(bounds.toe_par, bounds.toe_state, float(u[-1]), float(self.groups[3].resist(u)[0][0]))
         for j, joint in self.joints:
             gap = u[joint.link + 1] - u[joint.link] + joint.gap
             over = min(gap, 0.0) + max(gap - joint.slack, 0.0)
