@@ -6,6 +6,7 @@ import re
 from collections.abc import Callable
 from dataclasses import dataclass
 
+from app.bench.forms import element_length
 from app.limit_words import limit_lines
 from app.units import Units
 from app.words import LOAD_CAUTION, caution
@@ -42,6 +43,8 @@ def caution_lines(case: Case, units: Units, pointer: str) -> Lines:
     found = [caution(c, units) for c in cautions_of(case) if c.pointer in (pointer, also)]
     if pointer == "load" and isinstance(case.load, Drop):
         found.append(LOAD_CAUTION)
+    if pointer == "run":
+        found += element_length.remarks(case, units)
     return found
 
 
