@@ -18,8 +18,9 @@ def remarks(case: Case, units: Units) -> list[str]:
     found = []
     short = min((part for part in parts if part[0] < longest), default=None)
     if short:
+        length, name = units.show(short[0], "length"), short[1]
         found.append(
-            f"The element length is longer than {short[1]} ({units.show(short[0], 'length')}), which is then a single element: "
+            f"The element length is longer than {name} ({length}), which is then a single element: "
             "echoes inside it are not seen."
         )
     layers = case.ground.layers if case.ground else ()
