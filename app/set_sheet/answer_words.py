@@ -9,7 +9,7 @@ from solver.studies import Cell
 from solver.studies.plan import at_value
 from solver.studies.questions import ShownResistance
 from solver.studies.safe_blow import SafeBlow
-from solver.studies.uncertainty import Bands
+from solver.studies.uncertainty import Bands, Sampled
 
 
 def safe_words(answer: SafeBlow, cell: Cell, units: Units) -> str:
@@ -53,23 +53,48 @@ def shown_words(answer: ShownResistance, units: Units) -> str:
     return f"{lead} {below} to {above}{middle} (each to {percent(answer.tolerance)})."
 
 
-def bands_words(bands: Bands, resistance: float, units: Units) -> str:
-    """What the samples say at the resistance nearest to the one asked for, and what matters most."""
-    row = int(abs(bands.resistances - resistance).argmin())
-    low, middle, high = (units.show(max(float(v), 0.0), "small_length") for v in bands.set[row])
-    parts = [
-        f"At {force_text(float(bands.resistances[row]), units)} the set lies between {low} and {high} "
-        f"in eight of ten samples, {middle} in the middle ({bands.samples} samples)."
-    ]
-    if bands.over is None:
-        parts.append("No limit is given, so no probability can be told.")
-    else:
-        parts.append(f"A limit is passed in {percent(float(bands.over[row]))} of the samples.")
-    ranked = [f"{one.label} ({rounded(one.on_set, 2)})" for one in bands.influences[:3]]
+def sampled_words(sampled: Sampled, units: Units) -> str:
+    """What the samples say at the point that was asked for, and what matters most."""
+    bands, parts = sampled.asked, []
+    if bands is not None:
+        at = f"At {force_text(float(bands.resistances[0]), units)} with {level_text(bands.level, units)}"
+        parts.append(f"{at}, eight of ten of {bands.each} samples give {_ranges(bands, 0, units)}.")
+        parts.append(_passed(bands, 0))
+    ranked = [f"{one.label} ({rounded(one.on_set, 2)})" for one in sampled.influences[:3]]
     parts.append(f"What matters most for the set (rank correlation): {', '.join(ranked)}.")
-    if bands.influences:
-        most = max(bands.influences, key=lambda one: abs(one.on_stress))
-        parts.append(f"For the stresses: {most.label} ({rounded(most.on_stress, 2)}).")
-    if bands.failed:
-        parts.append(f"{bands.failed} samples could not be solved.")
+    stress = sorted(sampled.influences, key=lambda one: -abs(one.on_stress))[:2]
+    parts.append(
+        f"For the stresses: {', '.join(f'{one.label} ({rounded(one.on_stress, 2)})' for one in stress)}."
+    )
+    if sampled.failed:
+        parts.append(f"{sampled.failed} samples could not be solved.")
     return " ".join(parts)
+
+
+def bands_at(sampled: Sampled, cell: Cell, units: Units) -> str:
+    """What the samples say at one point of the sheet; "" where it was not sampled."""
+    bands = sampled.of(cell.level)
+    rows = [] if bands is None else [i for i, r in enumerate(bands.resistances) if r == cell.resistance]
+    if bands is None or not rows:
+        return ""
+    return (
+        f"Eight of ten of {bands.each} samples: {_ranges(bands, rows[0], units)}. {_passed(bands, rows[0])}"
+    )
+
+
+def _ranges(bands: Bands, row: int, units: Units) -> str:
+    found = []
+    for name, values, dimension in (
+        ("a set of", bands.set[row], "small_length"),
+        ("compression", bands.compression[row], "stress"),
+        ("tension", bands.tension[row], "stress"),
+    ):
+        low, middle, high = (units.show(max(float(v), 0.0), dimension) for v in values)
+        found.append(f"{name} {low} to {high} (middle {middle})")
+    return ", ".join(found)
+
+
+def _passed(bands: Bands, row: int) -> str:
+    if bands.over is None:
+        return "No limit is given, so no probability can be told."
+    return f"A limit is passed with a probability of {percent(float(bands.over[row]))}."

@@ -10,11 +10,12 @@ from PySide6.QtWidgets import QSizePolicy, QWidget
 
 from app.look.fonts import base_size, font
 from app.look.palette import Palette, palette
-from app.set_sheet.chart import chart, frame_of
-from app.set_sheet.scene import Area, Level, Line, Mark, Scene, Words, outline_of
+from app.set_sheet.chart import chart
+from app.set_sheet.frame import Frame, frame_of
+from app.set_sheet.scene import Area, Letters, Level, Line, Mark, Scene, Words, outline_of
 from app.units import Units
 from solver.studies import Cell, Sheet
-from solver.studies.uncertainty import Bands
+from solver.studies.uncertainty import Sampled
 
 
 class ChartView(QWidget):
@@ -28,25 +29,47 @@ class ChartView(QWidget):
         self.setMinimumSize(QSize(560, 320))
         self.setSizePolicy(QSizePolicy.Policy.Expanding, QSizePolicy.Policy.Expanding)
         self.setAccessibleName("Set, stresses and energy over the total resistance")
-        self._shown: tuple[Sheet, Units, str, Bands | None] | None = None
+        self._shown: tuple[Sheet, Units, str, Sampled | None] | None = None
         self._pale = False
         self._cell: Cell | None = None
+        self._made: tuple[tuple[object, ...], Scene, Frame] | None = None
+        self._changes = 0
 
     def show_sheet(
-        self, sheet: Sheet | None, units: Units, per: str, bands: Bands | None, pale: bool
+        self, sheet: Sheet | None, units: Units, per: str, sampled: Sampled | None, pale: bool
     ) -> None:
         """What to show; `pale` while it belongs to an older input."""
-        shown = None if sheet is None else (sheet, units, per, bands)
-        if shown != self._shown or pale != self._pale:
+        before, shown = self._shown, None if sheet is None else (sheet, units, per, sampled)
+        same = before is shown or (
+            before is not None
+            and shown is not None
+            and all(one is other for one, other in zip(before, shown, strict=True))
+        )
+        if not same or pale != self._pale:
             self._shown, self._pale = shown, pale
+            self._changes += 1
             self.update()
 
     def scene(self) -> Scene:
         """What is painted at the present size."""
-        if self._shown is None:
-            return []
-        sheet, units, per, bands = self._shown
-        return chart(sheet, units, per, float(self.width()), float(self.height()), measure, bands)
+        return self._picture()[0] if self._shown is not None else []
+
+    def frame(self) -> Frame:
+        """Where it lies. Only while there is a sheet."""
+        return self._picture()[1]
+
+    def _picture(self) -> tuple[Scene, Frame]:
+        """Made once for what is shown: the pointer moves more often than anything else changes."""
+        assert self._shown is not None
+        sheet, units, per, sampled = self._shown
+        line = self._cell.line if self._cell is not None else 0
+        size = float(self.width()), float(self.height())
+        key = (self._changes, line, size, base_size())
+        if self._made is None or self._made[0] != key:
+            letters = letters_here()
+            made = chart(sheet, units, per, *size, letters, sampled, line)
+            self._made = key, made, frame_of(sheet, units, *size, letters, sampled)
+        return self._made[1], self._made[2]
 
     def paintEvent(self, event: QPaintEvent) -> None:
         colours = palette()
@@ -61,8 +84,7 @@ class ChartView(QWidget):
     def _paint_pointed(self, painter: QPainter, colours: Palette) -> None:
         if self._cell is None or self._shown is None:
             return
-        sheet, units, _per, bands = self._shown
-        frame = frame_of(sheet, units, float(self.width()), float(self.height()), bands)
+        frame = self.frame()
         y = frame.resistance.at(self._cell.resistance)
         painter.setPen(QPen(QColor(colours.accent), 1.0))
         painter.drawLine(QPointF(frame.set.start, y), QPointF(frame.energy.stop, y))
@@ -79,9 +101,8 @@ class ChartView(QWidget):
     def _nearest(self, at: QPointF) -> Cell | None:
         if self._shown is None:
             return None
-        sheet, units, _per, bands = self._shown
-        frame = frame_of(sheet, units, float(self.width()), float(self.height()), bands)
-        cells = [c for c in sheet.cells if c.set is not None]
+        frame = self.frame()
+        cells = [c for c in self._shown[0].cells if c.set is not None]
         if not cells:
             return None
         row = min({c.resistance for c in cells}, key=lambda r: abs(frame.resistance.at(r) - at.y()))
@@ -89,10 +110,15 @@ class ChartView(QWidget):
         return min(same, key=lambda c: abs(frame.set.at(max(c.set or 0.0, 0.0)) - at.x()))
 
     def _point(self, cell: Cell | None) -> None:
-        if cell != self._cell:
+        if cell is not self._cell:
             self._cell = cell
             self.pointed.emit(cell)
             self.update()
+
+
+def letters_here() -> Letters:
+    """The letters of the screen."""
+    return Letters(measure, _metrics("small", base_size()).height())
 
 
 def measure(text: str, level: Level) -> float:
@@ -153,7 +179,8 @@ def _words(painter: QPainter, words: Words, colour: QColor) -> None:
         painter.save()
         painter.translate(x, y)
         painter.rotate(-90)
-        painter.drawText(QRectF(shift, -12, width + 2, 18), Qt.AlignmentFlag.AlignVCenter, words.text)
+        half = _metrics(words.level, base_size()).height() / 2
+        painter.drawText(QRectF(shift, -half, width + 2, 2 * half), Qt.AlignmentFlag.AlignVCenter, words.text)
         painter.restore()
     else:
         painter.drawText(QPointF(x + shift, y), words.text)

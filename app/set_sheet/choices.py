@@ -10,7 +10,7 @@ from PySide6.QtWidgets import QComboBox, QHBoxLayout, QLabel, QPushButton, QScro
 from app.document import Document
 from app.look.fonts import widened
 from app.look.spacing import GAP, SPACE, WIDE
-from app.set_sheet.answer_words import bands_words, safe_words, shown_words
+from app.set_sheet.answer_words import safe_words, sampled_words, shown_words
 from app.set_sheet.depth_choices import DepthChoices
 from app.set_sheet.fields import NumbersField
 from app.set_sheet.numbers_to_vary import numbers_to_vary
@@ -188,14 +188,13 @@ class Choices(QScrollArea):
         asked = solution.settings.measured_set is not None
         shown = shown_words(answers.shown, units) if answers.shown else "…" if asking and asked else ""
         _say(self.shown, shown)
-        bands, done = solution.bands, solution.samples_done
+        sampled, done = solution.sampled, solution.samples_done
         self.work_out.setText("Work out" if done is None else "Stop")
         self.work_out.setEnabled(solution.plan is not None)
         if done is not None:
             _say(self.samples_told, f"{done} samples are solved …")
-        elif bands is not None and solution.plan is not None:
-            asked_for = solution.settings.asked_resistance or solution.plan.own_total
-            _say(self.samples_told, bands_words(bands, asked_for, units))
+        elif sampled is not None:
+            _say(self.samples_told, sampled_words(sampled, units))
         else:
             _say(
                 self.samples_told,

@@ -8,7 +8,7 @@ from contextlib import nullcontext
 from dataclasses import dataclass
 from pathlib import Path
 
-from app.set_sheet.answer_words import bands_words, safe_words
+from app.set_sheet.answer_words import safe_words, sampled_words
 from app.set_sheet.files import Answers, sheet_csv, sheet_json
 from app.set_sheet.printed import Page, page_pdf
 from app.set_sheet.words import criterion, told_in, unit_of
@@ -81,24 +81,25 @@ def _solved(
         level = at_value(level, settings.asked_value)
     resistance = settings.asked_resistance or plan.own_total
     stop_at, safe = point(plan, resistance, level), safe_blow(plan, resistance, solver=solver)
-    bands = None
+    found = None
     if choices.samples is not None:
-        bands = sampled(
+        found = sampled(
             plan,
             settings.unknown_inputs(case),
+            asked=(resistance, level),
             samples=choices.samples,
             seed=settings.seed,
             solver=solver,
             progress=_progress(choices.samples, "samples") if shown else None,
         )
-    return sheet, Answers(stop_at, safe, bands)
+    return sheet, Answers(stop_at, safe, found)
 
 
 def _write(project: Project, sheet: Sheet, answers: Answers, settings: SheetSettings, out: Path) -> list[str]:
     """Write the three files; returns the sentences of the answers."""
     units = units_of(project)
     told = sentences(answers, units)
-    page = Page(sheet, project.title, units, told[0], tuple(told[1:]), settings.per, answers.bands)
+    page = Page(sheet, project.title, units, told[0], tuple(told[1:]), settings.per, answers.sampled)
     out.mkdir(parents=True, exist_ok=True)
     (out / "sheet.csv").write_text(sheet_csv(sheet, project.title), encoding="utf-8", newline="\n")
     words = told[0].replace(NO_BREAK, " ")
@@ -115,8 +116,8 @@ def sentences(answers: Answers, units: Units) -> list[str]:
     found = [criterion(answers.stop_at, units)]
     if answers.safe is not None:
         found.append(safe_words(answers.safe, answers.stop_at, units))
-    if answers.bands is not None:
-        found.append(bands_words(answers.bands, answers.stop_at.resistance, units))
+    if answers.sampled is not None:
+        found.append(sampled_words(answers.sampled, units))
     return found
 
 

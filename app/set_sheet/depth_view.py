@@ -12,9 +12,9 @@ from PySide6.QtWidgets import QWidget
 from app.aside import Aside, Cancel
 from app.document import Document
 from app.look.palette import palette
-from app.set_sheet.chart import case_limits
 from app.set_sheet.chart_view import measure, paint
 from app.set_sheet.depth_chart import depth_chart, depth_summary
+from app.set_sheet.frame import case_limits
 from app.set_sheet.scene import Scene
 from app.set_sheet.sheet_solution import SETTLE, WORKERS
 from app.set_sheet.words import told_in

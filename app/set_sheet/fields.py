@@ -8,6 +8,7 @@ from collections.abc import Sequence
 from PySide6.QtCore import Signal
 from PySide6.QtWidgets import QHBoxLayout, QLabel, QLineEdit, QVBoxLayout, QWidget
 
+from app.look.fonts import widened
 from app.look.spacing import GAP
 from app.units import UnitError, Units
 
@@ -27,11 +28,11 @@ class NumbersField(QWidget):
         self.field = QLineEdit()
         self.field.setAccessibleName(label)
         self.field.setToolTip(tells)
-        self.field.setFixedWidth(124 if most > 1 else 96)
+        self.field.setFixedWidth(widened(124 if most > 1 else 96))
         self.label.setBuddy(self.field)
         self.unit = QLabel()
         self.unit.setProperty("role", "soft")
-        self.unit.setFixedWidth(34)
+        self.unit.setFixedWidth(widened(34))
         self.problem = QLabel()
         self.problem.setProperty("role", "problem")
         self.problem.setWordWrap(True)
@@ -58,7 +59,7 @@ class NumbersField(QWidget):
         self.unit.setText(units.unit(dimension))
         self.unit.setVisible(dimension != "none")
         text = self._text(values or ())
-        pale = self._text(usual)
+        pale = self._text(usual, typed=False)
         if self.field.placeholderText() != pale:
             self.field.setPlaceholderText(pale)
         if not self.field.hasFocus() and self.field.text() != text and not self.problem.isVisibleTo(self):
@@ -68,8 +69,8 @@ class NumbersField(QWidget):
         """Say under the field what is wrong with what was entered."""
         self._tell(sentence)
 
-    def _text(self, values: Sequence[float]) -> str:
-        return "  ".join(self._units.plain(v, self._dimension) for v in values)
+    def _text(self, values: Sequence[float], typed: bool = True) -> str:
+        return "  ".join(self._units.plain(value, self._dimension, typed=typed) for value in values)
 
     def _enter(self) -> None:
         text = self.field.text().strip()

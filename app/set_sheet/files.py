@@ -13,7 +13,7 @@ from app.words import LIMIT_CAUTION, MODEL_CAUTION
 from solver.answer.findings import StressFinding
 from solver.studies import Cell, Sheet
 from solver.studies.safe_blow import SafeBlow
-from solver.studies.uncertainty import Bands
+from solver.studies.uncertainty import Bands, Sampled
 
 HEAD = (
     "total_resistance_N",
@@ -87,7 +87,7 @@ class Answers:
 
     stop_at: Cell | None = None
     safe: SafeBlow | None = None
-    bands: Bands | None = None
+    sampled: Sampled | None = None
 
 
 def sheet_json(sheet: Sheet, title: str, answers: Answers, criterion: str) -> str:
@@ -120,8 +120,8 @@ def sheet_json(sheet: Sheet, title: str, answers: Answers, criterion: str) -> st
             "passed_above_only_after_the_ram_struck_again": safe.passed.again_only if safe.passed else None,
             "tolerance": safe.tolerance,
         }
-    if answers.bands is not None:
-        tree["not_known"] = _bands(answers.bands)
+    if answers.sampled is not None:
+        tree["not_known"] = _sampled(answers.sampled)
     return json.dumps(tree, indent=2, ensure_ascii=False) + "\n"
 
 
@@ -130,20 +130,28 @@ def _point(cell: Cell) -> dict[str, Any]:
     return dict(zip(HEAD, _row(cell), strict=True)) | told
 
 
+def _sampled(sampled: Sampled) -> dict[str, Any]:
+    return {
+        "samples": sampled.samples,
+        "failed": sampled.failed,
+        "seed": sampled.seed,
+        "asked": None if sampled.asked is None else _bands(sampled.asked),
+        "lines": [_bands(bands) for bands in sampled.lines],
+        "rank_correlation": [
+            {"input": one.label, "with_set": one.on_set, "with_stress": one.on_stress}
+            for one in sampled.influences
+        ],
+    }
+
+
 def _bands(bands: Bands) -> dict[str, Any]:
     """Quantiles are of 10, 50 and 90 %."""
     return {
-        "samples": bands.samples,
-        "failed": bands.failed,
-        "seed": bands.seed,
         "value": bands.level.value,
+        "samples_each": bands.each,
         "resistances_N": bands.resistances.tolist(),
         "set_m": bands.set.tolist(),
         "peak_compression_Pa": bands.compression.tolist(),
         "peak_tension_Pa": bands.tension.tolist(),
         "share_of_samples_over_a_limit": None if bands.over is None else bands.over.tolist(),
-        "rank_correlation": [
-            {"input": one.label, "with_set": one.on_set, "with_stress": one.on_stress}
-            for one in bands.influences
-        ],
     }

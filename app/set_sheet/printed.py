@@ -16,11 +16,11 @@ from app.report.lettering import BOLD, REGULAR, printable, register_fonts
 from app.set_sheet.chart import chart
 from app.set_sheet.page_words import assumed, cautions, member_words
 from app.set_sheet.rig_table import sets_to_read, shown_at
-from app.set_sheet.scene import Area, Level, Line, Mark, Measure, Scene, Words, outline_of
+from app.set_sheet.scene import Area, Letters, Level, Line, Mark, Scene, Words, outline_of
 from app.set_sheet.words import PER, force_text, level_text, per_of, varied_text
 from app.units import Units, rounded
 from solver.studies import Sheet
-from solver.studies.uncertainty import Bands
+from solver.studies.uncertainty import Sampled
 
 MARGIN = 42.0
 SIZES: dict[Level, tuple[str, float]] = {
@@ -42,7 +42,7 @@ class Page:
     criterion: str
     answers: tuple[str, ...]
     per: str | None = None
-    bands: Bands | None = None
+    sampled: Sampled | None = None
 
 
 def page_pdf(page: Page) -> bytes:
@@ -111,7 +111,7 @@ class _Writer:
         scale = self.room / PICTURE[0]
         page = self.page
         scene = chart(
-            page.sheet, page.units, per_of(page.units, page.per), *PICTURE, _measure(scale), page.bands
+            page.sheet, page.units, per_of(page.units, page.per), *PICTURE, _letters(scale), page.sampled
         )
         self.canvas.saveState()
         self.canvas.translate(MARGIN, self.y)
@@ -173,12 +173,12 @@ class _Writer:
             self.canvas.drawString(MARGIN, before - 7.4 * 1.25, "·")
 
 
-def _measure(scale: float) -> Measure:
+def _letters(scale: float) -> Letters:
     def width(text: str, level: Level) -> float:
         face, size = SIZES[level]
         return float(stringWidth(printable(text, face == BOLD), face, size)) / scale
 
-    return width
+    return Letters(width, 1.25 * SIZES["small"][1] / scale)
 
 
 def draw(canvas: Canvas, scene: Scene, colours: Palette, letters: float) -> None:

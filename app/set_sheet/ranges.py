@@ -8,6 +8,7 @@ from typing import Any
 from PySide6.QtCore import Signal
 from PySide6.QtWidgets import QComboBox, QLabel, QVBoxLayout, QWidget
 
+from app.look.fonts import widened
 from app.look.spacing import GAP
 from app.set_sheet.fields import NumbersField
 from app.units import Units
@@ -38,7 +39,7 @@ class Ranges(QWidget):
             row = NumbersField(
                 entry.label, "Two factors, 1 = as the case says; empty = the usual range.", most=2
             )
-            row.field.setFixedWidth(96)
+            row.field.setFixedWidth(widened(96))
             row.entered.connect(lambda values, what=what: self._enter(what, values))
             self.rows[what] = row
             column.addWidget(row)

@@ -39,13 +39,13 @@ class Saving(QObject):
         assert sheet is not None
         found = self._solution.answers
         told = (
-            sentences(Answers(found.stop_at, found.safe, self._solution.bands), units)
+            sentences(Answers(found.stop_at, found.safe, self._solution.sampled), units)
             if found.stop_at
             else [""]
         )
-        per, bands = self._solution.settings.per, self._solution.bands
+        per, sampled = self._solution.settings.per, self._solution.sampled
         return page_pdf(
-            Page(sheet, self._document.project.title, units, told[0], tuple(told[1:]), per, bands)
+            Page(sheet, self._document.project.title, units, told[0], tuple(told[1:]), per, sampled)
         )
 
     def table(self) -> bytes:

@@ -14,12 +14,12 @@ from app.document import Document
 from app.set_sheet.words import told_in, unit_of
 from app.units import units_of
 from solver import Case
-from solver.studies import Cell, Plan, Sheet, StudyError, cells_of
+from solver.studies import Cell, Level, Plan, Sheet, StudyError, cells_of
 from solver.studies.plan import at_value
 from solver.studies.questions import Cancelled, ShownResistance, point, shown_by
 from solver.studies.safe_blow import SafeBlow, safe_blow
 from solver.studies.settings import SheetSettings, settings_of
-from solver.studies.uncertainty import FEWEST, Bands, sampled
+from solver.studies.uncertainty import FEWEST, Sampled, sampled
 
 #: What a sheet belongs to; the units, because ranges that the program chooses are round in them.
 Key = tuple[Case, SheetSettings, str]
@@ -42,7 +42,7 @@ class Answers:
 
 
 class SheetSolution(QObject):
-    """`sheet` (partial while it fills), `answers` and `bands` belong to `plan`; `state` and `message` say how they
+    """`sheet` (partial while it fills), `answers` and `sampled` belong to `plan`; `state` and `message` say how they
     stand to the document. Works only between `look(True)` and `look(False)`."""
 
     changed = Signal()
@@ -54,8 +54,10 @@ class SheetSolution(QObject):
         self._key: Key | None = None
         self.plan: Plan | None = None
         self.cells: dict[tuple[int, int], Cell] = {}
+        self._sheet: Sheet | None = None
         self.answers = Answers()
-        self.bands: Bands | None = None
+        self.sampled: Sampled | None = None
+        self._sampled_for: tuple[object, ...] = ()
         self.samples_done: int | None = None
         self._asked: tuple[object, ...] | None = None
         self.state: State = "waiting"
@@ -78,10 +80,17 @@ class SheetSolution(QObject):
 
     @property
     def sheet(self) -> Sheet | None:
+        """What is solved so far; the same object as long as nothing more is."""
         if self.plan is None:
             return None
-        ordered = sorted(self.cells.items(), key=lambda item: item[0])
-        return Sheet(self.plan, tuple(cell for _place, cell in ordered))
+        if (
+            self._sheet is None
+            or self._sheet.plan is not self.plan
+            or len(self._sheet.cells) != len(self.cells)
+        ):
+            ordered = sorted(self.cells.items(), key=lambda item: item[0])
+            self._sheet = Sheet(self.plan, tuple(cell for _place, cell in ordered))
+        return self._sheet
 
     @property
     def fraction(self) -> float:
@@ -128,8 +137,9 @@ class SheetSolution(QObject):
         plan, settings = self.plan, self.settings
         if plan is None:
             return
-        self.samples_done, self._asked = 0, _sampling(settings)
+        self.samples_done, self._asked, self._sampled_for = 0, _sampling(settings), _lines_of(plan)
         unknowns, samples, seed = settings.unknown_inputs(plan.case), settings.samples, settings.seed
+        asked = asked_point(plan, settings)
 
         def work(cancel: Cancel) -> Iterator[Any]:
             told = 0
@@ -140,11 +150,18 @@ class SheetSolution(QObject):
                     told = done
                     self._samples.tell(done)
 
-            bands = sampled(
-                plan, unknowns, samples=samples, seed=seed, progress=progress, cancel=cancel, workers=WORKERS
+            found = sampled(
+                plan,
+                unknowns,
+                asked=asked,
+                samples=samples,
+                seed=seed,
+                progress=progress,
+                cancel=cancel,
+                workers=WORKERS,
             )
-            if bands is not None:
-                yield bands
+            if found is not None:
+                yield found
 
         self._samples.start(work)
         self.changed.emit()
@@ -175,7 +192,7 @@ class SheetSolution(QObject):
         """Drop the bands, or stop the samples, that were asked for with other ranges."""
         asked = _sampling(settings)
         if self._asked is not None and asked != self._asked:
-            self._asked, self.bands = None, None
+            self._asked, self.sampled = None, None
             self.stop_samples()
 
     def _refuse(self, sentence: str) -> None:
@@ -210,8 +227,8 @@ class SheetSolution(QObject):
             same = self.plan is not None and self.plan.case == found.case
             self.plan, self.cells = found, {}
             self.answers = Answers()
-            if not same or (self.bands is not None and self.bands.level != found.levels[0]):
-                self.bands = None
+            if not same or self._sampled_for != _lines_of(found):
+                self.sampled = None
         elif isinstance(found, Cell):
             self.cells[found.line, found.row] = found
             if not self._showing.isActive():
@@ -230,8 +247,8 @@ class SheetSolution(QObject):
         self.changed.emit()
 
     def _take_samples(self, found: object) -> None:
-        if isinstance(found, Bands):
-            self.bands = found
+        if isinstance(found, Sampled):
+            self.sampled = found
         elif isinstance(found, int):
             self.samples_done = found
         self.changed.emit()
@@ -240,6 +257,18 @@ class SheetSolution(QObject):
         self.samples_done = None
         self.message = sentence
         self.changed.emit()
+
+
+def asked_point(plan: Plan, settings: SheetSettings) -> tuple[float, Level]:
+    """The resistance (N) and the blow that are asked for; those of the case where nothing is."""
+    level = plan.own_level
+    if settings.asked_value is not None:
+        level = at_value(level, settings.asked_value)
+    return settings.asked_resistance or plan.own_total, level
+
+
+def _lines_of(plan: Plan) -> tuple[object, ...]:
+    return plan.levels, plan.resistances, plan.vary
 
 
 def _sampling(settings: SheetSettings) -> tuple[object, ...]:
@@ -255,10 +284,7 @@ def _same(one: Key, other: Key) -> bool:
 
 def _answers(plan: Plan, settings: SheetSettings, cancel: Cancel) -> Iterator[Answers]:
     """The questions one after the other, each answer as soon as it is found."""
-    level = plan.own_level
-    if settings.asked_value is not None:
-        level = at_value(level, settings.asked_value)
-    resistance = settings.asked_resistance or plan.own_total
+    resistance, level = asked_point(plan, settings)
     try:
         stop_at = point(plan, resistance, level, cancel)
         yield Answers(None, stop_at)

@@ -9,6 +9,7 @@ from math import floor, log10
 from app.units import NO_BREAK, Units, rounded
 from app.words import percent
 from solver.studies import Cell, Level, Sheet, StudyError
+from solver.studies.depth import REFUSAL
 
 #: What blows are counted for, m.
 PER = {"0.25 m": 0.25, "m": 1.0, "ft": 0.3048}
@@ -76,9 +77,13 @@ def over_lines(cells: tuple[Cell, ...] | list[Cell], units: Units) -> tuple[str,
         return None
     sign, stress = max((c.worst for c in over if c.worst is not None), key=lambda pair: pair[1].share or 0.0)
     low, high = over[0].resistance, over[-1].resistance
+    later = " after the ram struck again" if all(c.again_only for c in over) else ""
     top = force_text(high, units)
     at = top if low == high else f"{force_text(low, units).split(NO_BREAK)[0]} to {top}"
-    return f"{sign} limit passed at", f"{at}, in {stress.segment} {units.show(stress.position, 'length')}"
+    return (
+        f"{sign} limit passed{later} at",
+        f"{at}, in {stress.segment} {units.show(stress.position, 'length')}",
+    )
 
 
 def reading(cell: Cell, per: str, units: Units) -> str:
@@ -111,13 +116,28 @@ def criterion(cell: Cell, units: Units) -> str:
     if not cell.moves:
         return f"With a {blow} the member practically does not move at {resistance}: no set shows it."
     measured = units.show(cell.set or 0.0, "small_length", 2)
+    if cell.over and cell.again_only:
+        return (
+            f"Judge before driving with a {blow}: at {resistance} a limit is passed, but only after the ram has struck "
+            f"again (the set would be {measured})."
+        )
     if cell.over:
         return f"Do not drive with a {blow}: a limit is passed at {resistance} (the set would be {measured})."
-    return f"Stop when the mean set of the last 10 blows is {measured} or less with a {blow}: that shows {resistance}."
+    refuses = ""
+    if cell.set is not None and cell.set < REFUSAL:
+        least = units.show(REFUSAL, "small_length", 2)
+        refuses = f" Less than {least} a blow is usually called refusal: check it by other means."
+    return (
+        f"Stop when the mean set of the last 10 blows is {measured} or less with a {blow}: that shows {resistance}."
+        f"{refuses}"
+    )
 
 
 def summary(sheet: Sheet, units: Units) -> str:
     """One line on the lines of the sheet: which keep within the limits."""
+    if sheet.complete and not any(c.over for c in sheet.cells):
+        known = any(c.share is not None for c in sheet.cells)
+        return "✓ within limits on all lines" if known else "no limit given"
     parts = []
     for index, level in enumerate(sheet.plan.levels):
         cells = sheet.line(index)

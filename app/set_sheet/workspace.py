@@ -119,7 +119,7 @@ class SetSheet(QWidget):
         per = per_of(units, solution.settings.per)
         sheet = solution.sheet
         refused = solution.state == "refused"
-        self.chart.show_sheet(sheet, units, per, solution.bands, refused)
+        self.chart.show_sheet(sheet, units, per, solution.sampled, refused)
         solving = solution.state == "solving"
         words = {
             "waiting": "",

@@ -86,10 +86,10 @@ def test_samples_are_told_in_the_files(tmp_path: Path) -> None:
     assert main(["sheet", str(file), "--out", str(tmp_path), "--samples", "60", "--quiet"]) == 0
     told = json.loads((tmp_path / "sheet.json").read_text(encoding="utf-8"))["not_known"]
     assert told["samples"] == 60
-    assert len(told["set_m"]) == 10
+    assert len(told["lines"][0]["set_m"]) == 10
     document = pypdfium2.PdfDocument(str(tmp_path / "sheet.pdf"))
     assert len(document) == 1
-    assert "in eight of ten samples" in " ".join(document[0].get_textpage().get_text_bounded().split())
+    assert "eight of ten of" in " ".join(document[0].get_textpage().get_text_bounded().split())
 
 
 def test_long_page_stays_one_page_in_other_units(tmp_path: Path) -> None:

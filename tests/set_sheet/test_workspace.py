@@ -9,10 +9,8 @@ from PySide6.QtWidgets import QFileDialog, QLabel
 from pytestqt.qtbot import QtBot
 
 from app.document import Document
-from app.set_sheet.chart import frame_of
 from app.set_sheet.scene import Line, Mark, Scene, Words
 from app.set_sheet.workspace import SetSheet
-from app.units import units_of
 from app.words import MODEL_CAUTION
 from solver import project_from_tree, solve
 from tests.set_sheet.test_page_and_command import project
@@ -70,8 +68,7 @@ def test_what_the_numbers_are_stands_beside_them(shown: SetSheet) -> None:
 def test_lines_are_broken_exactly_where_a_limit_is_passed(shown: SetSheet) -> None:
     sheet = shown.solution.sheet
     assert sheet is not None
-    units = units_of(shown._document.project)
-    frame = frame_of(sheet, units, float(shown.chart.width()), float(shown.chart.height()))
+    frame = shown.chart.frame()
     scene = shown.chart.scene()
     heights = {round(frame.resistance.at(c.resistance), 6) for c in sheet.cells}
     lines = [
@@ -140,9 +137,7 @@ def test_point_nearest_to_the_pointer_is_read_out(shown: SetSheet) -> None:
     sheet = shown.solution.sheet
     assert sheet is not None
     cell = sheet.line(1)[4]
-    frame = frame_of(
-        sheet, units_of(shown._document.project), float(shown.chart.width()), float(shown.chart.height())
-    )
+    frame = shown.chart.frame()
     at = QPointF(frame.set.at(cell.set or 0.0) + 1, frame.resistance.at(cell.resistance) - 2)
     assert shown.chart._nearest(at) == cell
     shown.chart.pointed.emit(cell)
@@ -169,9 +164,9 @@ def test_what_is_not_known_gives_bands_and_can_be_stopped(shown: SetSheet, qtbot
     qtbot.mouseClick(choices.work_out, Qt.MouseButton.LeftButton)
     assert choices.work_out.text() == "Work out"
     qtbot.mouseClick(choices.work_out, Qt.MouseButton.LeftButton)
-    qtbot.waitUntil(lambda: shown.solution.bands is not None, timeout=PATIENCE)
-    qtbot.waitUntil(lambda: "eight of ten samples" in choices.samples_told.text(), timeout=PATIENCE)
-    assert "A limit is passed in" in choices.samples_told.text()
+    qtbot.waitUntil(lambda: shown.solution.sampled is not None, timeout=PATIENCE)
+    qtbot.waitUntil(lambda: "eight of ten of" in choices.samples_told.text(), timeout=PATIENCE)
+    assert "A limit is passed with a probability of" in choices.samples_told.text()
 
 
 def test_down_to_depth_follows_a_factor_on_the_ground(shown: SetSheet, qtbot: QtBot) -> None:

@@ -52,7 +52,7 @@ def test_worker_that_dies_loses_nothing_and_repeats_nothing() -> None:
     here = sampled(plan, unknowns, samples=50)
     assert there is not None
     assert here is not None
-    assert np.array_equal(there.set, here.set)
+    assert np.array_equal(there.lines[0].set, here.lines[0].set)
 
 
 def test_without_a_cluster_it_is_said_what_is_missing() -> None:

@@ -42,14 +42,16 @@ def test_bands_repeat_with_the_seed_whatever_the_number_of_workers() -> None:
     two = sampled(plan, unknowns, samples=60, seed=5, workers=3)
     assert one is not None
     assert two is not None
-    assert np.array_equal(one.set, two.set)
+    assert np.array_equal(one.lines[0].set, two.lines[0].set)
     assert one.influences == two.influences
-    assert (one.set[:, 0] < one.set[:, 1]).all()
-    assert (one.set[:, 1] < one.set[:, 2]).all()
-    assert one.set[1, 2] < one.set[0, 0]  # twice the resistance moves less, whatever is unknown here
+    assert (one.lines[0].set[:, 0] < one.lines[0].set[:, 1]).all()
+    assert (one.lines[0].set[:, 1] < one.lines[0].set[:, 2]).all()
+    assert (
+        one.lines[0].set[1, 2] < one.lines[0].set[0, 0]
+    )  # twice the resistance moves less, whatever is unknown here
     other = sampled(plan, unknowns, samples=60, seed=6)
     assert other is not None
-    assert not np.array_equal(one.set, other.set)
+    assert not np.array_equal(one.lines[0].set, other.lines[0].set)
 
 
 def test_what_matters_most_is_what_was_made_to() -> None:
@@ -57,7 +59,7 @@ def test_what_matters_most_is_what_was_made_to() -> None:
     wide = (Unknown(what="efficiency", low=0.5, high=1.2), Unknown(what="damping", low=0.99, high=1.01))
     bands = sampled(plan, wide, samples=60)
     assert bands is not None
-    assert bands.over is None
+    assert bands.lines[0].over is None
     assert bands.influences[0].label == "energy of the blow"
     assert bands.influences[0].on_set > 0.95
     assert abs(bands.influences[1].on_set) < 0.5
@@ -68,13 +70,13 @@ def test_probability_counts_the_samples_beyond_the_limit() -> None:
     plan = plan_of(pile(elements=20, limit=1e6), [0.8e6])
     bands = sampled(plan, unknowns, samples=50)
     assert bands is not None
-    assert bands.over is not None
-    assert bands.over[0] == 1.0
-    middle = plan_of(pile(elements=20, limit=float(bands.compression[0, 1])), [0.8e6])
+    assert bands.lines[0].over is not None
+    assert bands.lines[0].over[0] == 1.0
+    middle = plan_of(pile(elements=20, limit=float(bands.lines[0].compression[0, 1])), [0.8e6])
     half = sampled(middle, unknowns, samples=50)
     assert half is not None
-    assert half.over is not None
-    assert half.over[0] == pytest.approx(0.5, abs=0.03)
+    assert half.lines[0].over is not None
+    assert half.lines[0].over[0] == pytest.approx(0.5, abs=0.03)
 
 
 def test_ranges_that_fit_no_case_are_refused_with_a_sentence() -> None:
