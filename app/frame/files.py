@@ -6,39 +6,55 @@ from collections.abc import Callable
 from datetime import datetime
 from functools import partial
 from pathlib import Path
-from typing import TYPE_CHECKING
+from typing import Protocol
 
 from PySide6.QtCore import QMimeData
-from PySide6.QtWidgets import QFileDialog, QMessageBox
+from PySide6.QtWidgets import QFileDialog, QMessageBox, QWidget
 
 from app.differences import differences
 from app.disk import write_whole
-from app.document import DocumentError
+from app.document import Document, DocumentError
 from app.export import folder_names, gauge_csv
+from app.frame.notices import Notices
 from app.frame.panels_told import offer_starting_points
-from app.frame.recovery import Kept, discard
+from app.frame.recovery import Autosave, Kept, discard
+from app.settings import Settings
+from app.solving import Solution
 from app.starting_points import StartingPoint
 from app.units import unknown_units
 from solver import Project, ProjectError, load_project, project_from_tree
-
-if TYPE_CHECKING:
-    from app.frame.window import Window
 
 ENDING = ".strike"
 FILTER = f"Striketrace projects (*{ENDING})"
 
 
-class Files:
-    """The file side of one window."""
+class Around(Protocol):
+    """What the window has that files need."""
 
-    def __init__(self, window: Window) -> None:
-        self._window = window
+    document: Document
+    solution: Solution
+    settings: Settings
+    notices: Notices
+    autosave: Autosave
+
+    def commit_typing(self) -> None:
+        """Hand over what stands in a field and has not been entered yet."""
+
+    def begin_looking(self) -> None:
+        """Look at a project anew."""
+
+
+class Files:
+    """The file side of one window; `parent` is what its dialogs belong to."""
+
+    def __init__(self, window: Around, parent: QWidget) -> None:
+        self._window, self._parent = window, parent
 
     # -- beginning with a project -----------------------------------------------------------------------------------
 
     def ask_new(self) -> None:
         """Offer the starting points."""
-        offer_starting_points(self._window, self.new_from)
+        offer_starting_points(self._parent, self.new_from)
 
     def new_from(self, point: StartingPoint) -> bool:
         """Begin with a starting point, once the work at hand is safe."""
@@ -46,7 +62,7 @@ class Files:
 
     def ask_open(self) -> bool:
         """Ask for a file and open it."""
-        name, _ = QFileDialog.getOpenFileName(self._window, "Open a project", self._folder(), FILTER)
+        name, _ = QFileDialog.getOpenFileName(self._parent, "Open a project", self._folder(), FILTER)
         return bool(name) and self.open_path(Path(name))
 
     def open_path(self, path: Path) -> bool:
@@ -122,7 +138,7 @@ class Files:
         ask = QMessageBox.StandardButton
         title = window.document.project.title or "This project"
         answer = QMessageBox.question(
-            window,
+            self._parent,
             "Unsaved changes",
             f"'{title}' has changes that are not saved. Save them first?",
             ask.Save | ask.Discard | ask.Cancel,
@@ -164,7 +180,7 @@ class Files:
         window.commit_typing()
         title = folder_names([window.document.project.title or "project"])[0]
         start = window.document.path or Path(self._folder()) / f"{title}{ENDING}"
-        name, _ = QFileDialog.getSaveFileName(window, "Save the project", str(start), FILTER)
+        name, _ = QFileDialog.getSaveFileName(self._parent, "Save the project", str(start), FILTER)
         if not name:
             return False
         path = Path(name)
@@ -219,7 +235,7 @@ class Files:
         window = self._window
         name = f"{folder_names([window.document.case.name])[0]}-gauges.csv"
         asked, _ = QFileDialog.getSaveFileName(
-            window, "Save the gauge records", str(Path(self._folder()) / name), "CSV (*.csv)"
+            self._parent, "Save the gauge records", str(Path(self._folder()) / name), "CSV (*.csv)"
         )
         return bool(asked) and self.save_records(Path(asked))
 

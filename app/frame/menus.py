@@ -4,18 +4,20 @@ from __future__ import annotations
 
 from collections.abc import Callable
 from functools import partial
-from typing import TYPE_CHECKING, Any
+from pathlib import Path
+from typing import Any, Protocol
 
 from PySide6.QtGui import QAction, QActionGroup, QKeySequence
-from PySide6.QtWidgets import QMenu, QMenuBar
+from PySide6.QtWidgets import QMenu, QMenuBar, QWidget
 
+from app.bench.bench import Bench
 from app.demo_files import demo_paths
+from app.document import Document
 from app.frame.case_row import fill_case_menu
 from app.frame.top_bar import turn_sign
 from app.look.theme import Choice
-
-if TYPE_CHECKING:
-    from app.frame.window import Window
+from app.settings import Settings
+from app.sight import Sight
 
 Key = QKeySequence.StandardKey
 LOOKS: dict[Choice, str] = {"system": "As the system", "light": "Light", "dark": "Dark"}
@@ -29,16 +31,44 @@ PANELS: dict[tuple[bool, int], str] = {
 }
 
 
+class Around(Protocol):
+    """What the window has and does that the menus reach."""
+
+    document: Document
+    sight: Sight
+    settings: Settings
+    bench: Bench
+
+    def ask_new(self) -> None: ...
+    def ask_open(self) -> None: ...
+    def open_path(self, path: Path) -> bool: ...
+    def open_demo(self, path: Path) -> bool: ...
+    def save(self) -> bool: ...
+    def ask_save_as(self) -> bool: ...
+    def ask_records(self) -> bool: ...
+    def choose_records(self) -> None: ...
+    def close(self) -> bool: ...
+    def show_notes(self, on: bool) -> None: ...
+    def show_outline(self, on: bool) -> None: ...
+    def turn_full_screen(self) -> None: ...
+    def choose_look(self, choice: Choice) -> None: ...
+    def tell_first_steps(self) -> None: ...
+    def show_limits(self) -> None: ...
+    def show_terms(self) -> None: ...
+    def explain_at_hand(self) -> None: ...
+    def show_about(self) -> None: ...
+
+
 class Menus:
     """Holds the actions that change with the document; `bar` is the bar with all menus."""
 
-    def __init__(self, window: Window) -> None:
-        self._window = window
-        self.bar = QMenuBar(window)
+    def __init__(self, window: Around, parent: QWidget) -> None:
+        self._window, self._parent = window, parent
+        self.bar = QMenuBar(parent)
         self.save = self._action("Save", window.save, Key.Save)
-        self.undo = window.document.undo_stack.createUndoAction(window, "Undo")
+        self.undo = window.document.undo_stack.createUndoAction(parent, "Undo")
         self.undo.setShortcut(Key.Undo)
-        self.redo = window.document.undo_stack.createRedoAction(window, "Redo")
+        self.redo = window.document.undo_stack.createRedoAction(parent, "Redo")
         usual, also = QKeySequence.keyBindings(Key.Redo), QKeySequence("Ctrl+Y")
         self.redo.setShortcuts(usual if also in usual else [*usual, also])  # one given twice does nothing
         self.records = self._action("Save gauge records…", window.ask_records, QKeySequence("Ctrl+E"))
@@ -47,7 +77,7 @@ class Menus:
         )
         self.notes = self._action("Notes", window.show_notes, QKeySequence("Ctrl+Shift+N"), checkable=True)
         self.outline = self._action("Outline", window.show_outline, QKeySequence("F9"), checkable=True)
-        self.looks = QActionGroup(window)
+        self.looks = QActionGroup(parent)
         self._file()
         self._edit()
         self._case()
@@ -66,14 +96,14 @@ class Menus:
         key: QKeySequence | QKeySequence.StandardKey | None = None,
         checkable: bool = False,
     ) -> QAction:
-        action = QAction(text, self._window, checkable=checkable)
+        action = QAction(text, self._parent, checkable=checkable)
         if key is not None:
             action.setShortcut(key)
         if checkable:
             action.triggered.connect(do)
         else:
             action.triggered.connect(lambda _checked=False: do())
-        self._window.addAction(action)
+        self._parent.addAction(action)
         return action
 
     def _file(self) -> None:
@@ -120,7 +150,7 @@ class Menus:
 
         def fill() -> None:
             menu.clear()
-            fill_case_menu(menu, document, window, window.sight)
+            fill_case_menu(menu, document, self._parent, window.sight)
             menu.addSeparator()
             menu.addAction(following)
             menu.addAction(previous)

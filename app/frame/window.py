@@ -53,8 +53,8 @@ class Window(QMainWindow):
         self.solution = Solution(self.document, solve, self)
         self.autosave = Autosave(self.document, settings.recovery_folder, self)
         self.notices = Notices(self)
-        self.files = Files(self)
-        self.menus = Menus(self)
+        self.files = Files(self, self)
+        self.menus = Menus(self, self)
         self._unseen = True
         self._compose()
         self._connect()
