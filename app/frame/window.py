@@ -45,6 +45,8 @@ FIRST_STEPS = "first_steps"
 class Window(QMainWindow):
     """One project in one window. Everything it remembers between starts is in `settings`."""
 
+    bench: Bench
+
     def __init__(self, settings: Settings, project: Project, solve: Solve | None = None) -> None:
         super().__init__()
         self.settings = settings
