@@ -7,6 +7,7 @@ from collections.abc import Iterator, Sequence
 from dataclasses import dataclass
 from typing import Any
 
+from app.names import with_kind
 from app.tree import copied
 from app.units import Units
 from solver import Problem
@@ -69,8 +70,7 @@ def _on(case: Tree, rod: str) -> Iterator[tuple[Tree, str]]:
     """What has a place on a rod, with what it is called."""
     for gauge in case.get("gauges") or []:
         if (gauge.get("on") or "member") == rod:
-            name = str(gauge["name"])
-            yield gauge, name if name.casefold().startswith("gauge") else f"gauge {name}"
+            yield gauge, with_kind("gauge", str(gauge["name"]))
     if rod == "member":
         for attachment in case["member"].get("attachments") or []:
             yield attachment, f"the {attachment['kind']}"

@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterator, Sequence
 from dataclasses import dataclass
 
+from app.names import with_kind
 from app.units import Units, rounded
 from solver.answer.cautions import Caution
 from solver.answer.findings import (
@@ -228,7 +229,14 @@ def _energy(finding: EnergyFinding, units: Units) -> Line:
         energy = units.show(finding.drop_energy, "energy")
         parts.append(f"{percent(finding.value / finding.drop_energy)} of the drop energy, {energy}")
     figure = units.show(finding.value, "energy")
-    return Line(figure, f"past gauge {finding.gauge}", "\n".join(parts), None, finding.time, finding.position)
+    return Line(
+        figure,
+        f"past {with_kind('gauge', finding.gauge)}",
+        "\n".join(parts),
+        None,
+        finding.time,
+        finding.position,
+    )
 
 
 def _happenings(all_of_them: tuple[Happening, ...], case: Case, units: Units) -> Iterator[Note]:
@@ -272,7 +280,7 @@ def caution(of: Caution, units: Units) -> str:
     """One caution on the description of a case."""
     if of.kind == "gauge_near_end":
         return (
-            f"Gauge {of.name} is nearer than 1.5 diameters ({units.show(of.bound, 'length')}) to the struck end: "
+            f"{with_kind('Gauge', of.name)} is nearer than 1.5 diameters ({units.show(of.bound, 'length')}) to the struck end: "
             "the blow has not spread over the section there."
         )
     if of.kind == "short_pulse":

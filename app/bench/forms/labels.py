@@ -6,6 +6,7 @@ import re
 from typing import Any
 
 from app.bench.forms.spec import Spec
+from app.names import with_kind
 from app.tree import value_at
 
 #: Parts that are no entries of lists, by the end of their pointer.
@@ -50,7 +51,6 @@ def part_called(tree: dict[str, Any], pointer: str) -> str:
         name, kind = value.get("name"), entry.group(2)[:-1]
         if name is None:
             return f"the {value.get('kind', kind)}"
-        told_by_name = kind == "segment" or str(name).casefold().startswith(kind)
-        return str(name) if told_by_name else f"{kind} {name}"
+        return str(name) if kind == "segment" else with_kind(kind, str(name))
     inside = re.sub(r"^/cases/\d+/", "", pointer)
     return next((name for end, name in PARTS if inside == end or inside.startswith(end + "/")), "the case")

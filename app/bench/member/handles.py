@@ -7,6 +7,7 @@ from dataclasses import dataclass
 from itertools import accumulate
 from typing import Any, Literal
 
+from app.names import with_kind
 from app.units import Units
 from solver import Case
 
@@ -142,7 +143,7 @@ def told(handle: Handle, place: float, case: Case, units: Units, along: Sequence
         by, way = units.show(abs(place - handle.place), "length"), "down" if place > handle.place else "up"
         return f"Move {len(along) + 1} gauges {way} by {by}, {case.gauges[handle.index].name} to {shown}"
     if handle.kind == "gauge":
-        return f"Move gauge {case.gauges[handle.index].name} to {shown}"
+        return f"Move {with_kind('gauge', case.gauges[handle.index].name)} to {shown}"
     if handle.kind == "drop":
         return f"Drop height {shown}"
     if handle.kind == "surface":

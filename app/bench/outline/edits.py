@@ -15,6 +15,7 @@ from app.bench.forms.begun import mark_begun
 from app.bench.forms.kinds import NEW_PARTS, filled
 from app.bench.forms.spec import Context, Tree
 from app.bench.forms.use_part import free_name
+from app.names import with_kind
 from app.provenance import forget, rearrange
 from app.tree import copied, value_at
 from solver.model import derived
@@ -175,8 +176,7 @@ def called(context: Context, list_pointer: str, index: int) -> str:
     word = word_for(list_pointer)
     if "name" not in entry:
         return str(entry["kind"])
-    told_by_name = word == "segment" or entry["name"].casefold().startswith(word)
-    return str(entry["name"]) if told_by_name else f"{word} {entry['name']}"
+    return str(entry["name"]) if word == "segment" else with_kind(word, str(entry["name"]))
 
 
 def entries_of(context: Context, list_pointer: str) -> list[Any]:
