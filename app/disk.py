@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import errno
 import os
 import tempfile
 from dataclasses import dataclass
@@ -43,6 +44,19 @@ def write_whole(path: Path, content: str | bytes) -> None:
     except BaseException:
         Path(name).unlink(missing_ok=True)
         raise
+
+
+def why_not(error: OSError, path: Path) -> str:
+    """Why a file could not be written, for the end of a sentence, with what to do about it."""
+    if error.errno in (errno.ENOSPC, getattr(errno, "EDQUOT", errno.ENOSPC)):
+        return "the disk is full"
+    if isinstance(error, PermissionError):
+        if path.exists() and os.access(path.parent, os.W_OK):
+            return "it is open in another program, or protected: close it there, or choose another name"
+        return f"nothing may be written to the folder {path.parent}"
+    if isinstance(error, FileNotFoundError):
+        return f"there is no folder {path.parent}"
+    return error.strerror or str(error)
 
 
 def _usual_permissions(name: str) -> None:

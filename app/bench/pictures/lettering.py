@@ -7,13 +7,15 @@ from functools import lru_cache
 
 import numpy as np
 from PySide6.QtCore import QPointF, QRectF, Qt
-from PySide6.QtGui import QColor, QFont, QFontMetricsF, QPainter
+from PySide6.QtGui import QColor, QFont, QFontMetricsF, QPaintEngine, QPainter, QPainterPath, QPen
 
 LEFT = Qt.AlignmentFlag.AlignLeft | Qt.AlignmentFlag.AlignVCenter
 RIGHT = Qt.AlignmentFlag.AlignRight | Qt.AlignmentFlag.AlignVCenter
 CENTRE = Qt.AlignmentFlag.AlignCenter
 #: Where the copies of a word stand that make its rim, pixels.
 RIM = ((-2, 0), (2, 0), (0, -2), (0, 2), (-1.4, -1.4), (1.4, -1.4), (-1.4, 1.4), (1.4, 1.4))
+#: Files in which text is text: nine copies of a word would be read nine times.
+WRITTEN = (QPaintEngine.Type.Pdf, QPaintEngine.Type.SVG)
 
 
 def put(
@@ -46,11 +48,17 @@ def put_on(
     left = x - width if align & Qt.AlignmentFlag.AlignRight else x
     if align & Qt.AlignmentFlag.AlignHCenter:
         left = x - width / 2
-    # eight copies around it: a stroked outline of the letters looks the same and took ten times as long
-    painter.setPen(QColor(ground))
     base = y - metrics.height() / 2 + metrics.ascent()
-    for across, up in RIM:
-        painter.drawText(QPointF(left + across, base + up), text)
+    if painter.paintEngine().type() in WRITTEN:
+        path = QPainterPath()
+        path.addText(QPointF(left, base), painter.font(), text)
+        rim = QPen(QColor(ground), 4.0)
+        rim.setJoinStyle(Qt.PenJoinStyle.RoundJoin)
+        painter.strokePath(path, rim)
+    else:  # eight copies around it: a stroked outline of the letters looks the same and took ten times as long
+        painter.setPen(QColor(ground))
+        for across, up in RIM:
+            painter.drawText(QPointF(left + across, base + up), text)
     put(painter, x, y, text, colour, align)
 
 

@@ -1,43 +1,86 @@
-"""A picture as a file: its numbers as CSV, itself as PNG or SVG. Reached by the context menu of every picture."""
+"""A picture of the Bench as a file: its numbers as CSV, itself with all its axes. Reached by its context menu."""
 
 from __future__ import annotations
 
 import csv
-from collections.abc import Callable
 from io import StringIO
 from itertools import zip_longest
 from pathlib import Path
 
-from PySide6.QtCore import QBuffer, QByteArray, QIODevice, QSaveFile, QSize
-from PySide6.QtGui import QColor, QImage, QPainter
-from PySide6.QtSvg import QSvgGenerator
+from PySide6.QtCore import QRectF
+from PySide6.QtGui import QColor, QFontMetricsF, QPainter
 from PySide6.QtWidgets import QFileDialog, QMenu, QMessageBox
 
+from app.bench.pictures.axis_drawing import distance_ticks, horizontal_ticks, in_units
 from app.bench.pictures.layers import Layered, Table
+from app.bench.pictures.lettering import CENTRE, put
+from app.disk import why_not, write_whole
 from app.look.palette import palette
-
-#: Pixels of a saved PNG for each pixel on the screen, so that it can be printed.
-PNG_SCALE = 2
+from app.picture_dialog import KEPT, PictureDialog
+from app.picture_files import Drawing, choices_from_tree, copy_picture
+from app.settings import user_settings
 
 
 def add_export_actions(menu: QMenu, picture: Layered) -> None:
-    """Three actions that save what the picture shows."""
-    numbers = menu.addAction("Save the numbers as CSV…", lambda: _ask(picture, "csv"))
+    """What can be done with what the picture shows."""
+    numbers = menu.addAction("Save the numbers as CSV…", lambda: _ask_for_csv(picture))
     numbers.setEnabled(picture.table() is not None)
-    menu.addAction("Save the picture as PNG…", lambda: _ask(picture, "png"))
-    menu.addAction("Save the picture as SVG…", lambda: _ask(picture, "svg"))
+    menu.addAction(
+        "Save the picture…", lambda: PictureDialog(drawing_of(picture), user_settings(), picture).exec()
+    )
+    menu.addAction("Copy the picture", lambda: _copy(picture))
 
 
-def save(picture: Layered, path: Path) -> None:
-    """Write the picture in the format that the name's ending says. Raises `OSError` with a sentence."""
-    table = picture.table()
-    if path.suffix == ".csv":
-        data = csv_of(table).encode() if table else b""
-    else:
-        data = svg_of(picture) if path.suffix == ".svg" else png_of(picture)
-    file = QSaveFile(str(path))
-    if not (file.open(QIODevice.OpenModeFlag.WriteOnly) and file.write(data) == len(data) and file.commit()):
-        raise OSError(f"{path} could not be written: {file.errorString()}.")
+def drawing_of(picture: Layered) -> Drawing:
+    """The picture with the axes that it shares with its neighbours on the screen, so that it can stand alone."""
+    line = QFontMetricsF(picture.font()).height()
+    over = _missing(picture)
+    left = 3.8 * line if "distance" in over else 0.0
+    below = max(2.9 * line - picture.margins().bottom, 0.0) if "time" in over else 0.0
+    name = f"{' '.join(picture.case.name.split())} {picture.accessibleName().lower()}"
+
+    def paint(painter: QPainter) -> None:
+        painter.fillRect(
+            QRectF(0, 0, picture.width() + left, picture.height() + below), QColor(palette().paper)
+        )
+        painter.translate(left, 0)
+        picture.paint_whole(painter)
+        _draw_axes(painter, picture, over)
+
+    return Drawing(name, picture.width() + left, picture.height() + below, paint)
+
+
+def _missing(picture: Layered) -> set[str]:
+    """The axes whose numbers stand at a neighbour: of time at the lowest strip, of distance at the member."""
+    from app.bench.member.drawing import MemberDrawing  # it is a picture itself
+
+    found = set()
+    if picture.has_time and not getattr(picture, "last", False):
+        found.add("time")
+    if picture.has_distance and not isinstance(picture, MemberDrawing):
+        found.add("distance")
+    return found
+
+
+def _draw_axes(painter: QPainter, picture: Layered, which: set[str]) -> None:
+    plot, units = picture.plot(), picture.units
+    line = QFontMetricsF(painter.font()).height()
+    if "time" in which:
+        time = picture.time_axis()
+        span = time.high - time.low
+        horizontal_ticks(painter, in_units(time, float(units.number(1.0, "time", span))), plot.bottom(), True)
+        words = f"Time, {units.unit('time', span)}"
+        put(painter, plot.center().x(), plot.bottom() + 2.0 * line, words, palette().soft_ink, CENTRE)
+    if "distance" in which:
+        metres = float(units.number(1.0, "length"))
+        least = -sum(s.length for s in picture.case.ram_segments)
+        distance_ticks(painter, in_units(picture.distance_axis(), metres), plot.left(), True, least * metres)
+        words = f"Distance, {units.unit('length')}"
+        painter.save()
+        painter.translate(plot.left() - 3.9 * line, plot.center().y())
+        painter.rotate(-90)
+        put(painter, 0.0, 0.0, words, palette().soft_ink, CENTRE)
+        painter.restore()
 
 
 def csv_of(table: Table) -> str:
@@ -50,47 +93,22 @@ def csv_of(table: Table) -> str:
     return text.getvalue()
 
 
-def png_of(picture: Layered) -> bytes:
-    image = QImage(picture.size() * PNG_SCALE, QImage.Format.Format_RGB32)
-    image.setDevicePixelRatio(PNG_SCALE)
-    image.fill(QColor(palette().paper))
-    painter = QPainter(image)
-    picture.paint_whole(painter)
-    painter.end()
-    # the stubs want bytes for the format, the call itself wants text
-    return _through_buffer(lambda buffer: image.save(buffer, "PNG"))  # type: ignore[call-overload]
-
-
-def svg_of(picture: Layered) -> bytes:
-    def write(buffer: QBuffer) -> None:
-        generator = QSvgGenerator()
-        generator.setOutputDevice(buffer)
-        generator.setSize(QSize(picture.width(), picture.height()))
-        generator.setViewBox(picture.rect())
-        generator.setTitle(picture.accessibleName())
-        painter = QPainter(generator)
-        picture.paint_whole(painter)
-        painter.end()
-
-    return _through_buffer(write)
-
-
-def _through_buffer(write: Callable[[QBuffer], object]) -> bytes:
-    data = QByteArray()
-    buffer = QBuffer(data)
-    buffer.open(QIODevice.OpenModeFlag.WriteOnly)
-    write(buffer)
-    buffer.close()
-    return bytes(data.data())
-
-
-def _ask(picture: Layered, ending: str) -> None:
-    name = f"{picture.case.name} {picture.accessibleName().lower()}.{ending}"
-    safe = "".join(c if c.isalnum() or c in " .-_" else "_" for c in name)
-    chosen, _ = QFileDialog.getSaveFileName(picture, f"Save as {ending.upper()}", safe, f"*.{ending}")
-    if not chosen:
-        return
+def _copy(picture: Layered) -> None:
     try:
-        save(picture, Path(chosen).with_suffix(f".{ending}"))
+        copy_picture(drawing_of(picture), choices_from_tree(user_settings().kept(KEPT)))
+    except ValueError as error:
+        QMessageBox.warning(picture, "Not copied", str(error))
+
+
+def _ask_for_csv(picture: Layered) -> None:
+    table = picture.table()
+    name = f"{picture.case.name} {picture.accessibleName().lower()}.csv"
+    safe = "".join(c if c.isalnum() or c in " .-_" else "_" for c in name)
+    chosen, _ = QFileDialog.getSaveFileName(picture, "Save the numbers", safe, "CSV (*.csv)")
+    if not chosen or table is None:
+        return
+    path = Path(chosen).with_suffix(".csv")
+    try:
+        write_whole(path, csv_of(table))
     except OSError as error:
-        QMessageBox.warning(picture, "Not saved", str(error))
+        QMessageBox.warning(picture, "Not saved", f"{path.name} was not saved: {why_not(error, path)}.")
