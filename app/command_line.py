@@ -6,6 +6,7 @@ import argparse
 import sys
 from collections.abc import Sequence
 from dataclasses import replace
+from errno import ENOSPC
 from math import isfinite
 from pathlib import Path
 
@@ -56,6 +57,12 @@ def main(argv: Sequence[str]) -> int:
     except BrokenPipeError:  # whoever read the output has gone
         sys.stderr.close()
         return FAILED
+    except OSError as error:
+        if error.errno != ENOSPC:
+            raise
+        return _say(
+            "What there is to say cannot be written: the disk behind standard output is full.", FAILED
+        )
 
 
 def _window_parser() -> argparse.ArgumentParser:

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import os
 import sys
 from collections.abc import Callable
 from dataclasses import dataclass
@@ -19,7 +20,12 @@ SOLVED, FAILED, UNUSABLE = 0, 1, 2
 
 
 def _print(text: str) -> None:
-    print(text, flush=True)
+    """Say it. Results are what was asked for: a reader who has gone, or a disk that is full, must not stop them."""
+    try:
+        print(text, flush=True)
+    except OSError:
+        with open(os.devnull, "w") as nowhere:
+            os.dup2(nowhere.fileno(), sys.stdout.fileno())
 
 
 @dataclass(frozen=True)
@@ -87,7 +93,7 @@ def _with_length(case: Case, length: float | None) -> Case:
 
 def _progress(case: Case, choices: Choices) -> Callable[[Any], None] | None:
     """Percents on standard error, for a person who waits at a terminal."""
-    if choices.tell is None or not sys.stderr.isatty():
+    if choices.tell is None or sys.stderr is None or not sys.stderr.isatty():
         return None
 
     def show(step: Any) -> None:

@@ -6,6 +6,7 @@ import csv
 import json
 import subprocess
 import sys
+from errno import ENOSPC, EPIPE
 from io import StringIO
 
 import numpy as np
@@ -274,6 +275,36 @@ def test_results_that_cannot_be_written_give_1(file, tmp_path, capsys):
     assert main(["solve", str(file), "--out", str(tmp_path / "o"), "--quiet"]) == 1
     assert "cannot be written" in capsys.readouterr().err
     assert (tmp_path / "o" / "drop-1-2-m-2" / "summary.json").exists()
+
+
+class Gone:
+    """A standard output whose reader has gone, or whose disk is full."""
+
+    def __init__(self, file, fault):
+        self.fileno, self.fault = file.fileno, fault
+
+    def write(self, text):
+        raise OSError(self.fault, "gone")
+
+    def flush(self):
+        pass
+
+
+@pytest.mark.parametrize("fault", [ENOSPC, EPIPE])
+def test_results_are_written_though_nobody_listens(file, tmp_path, monkeypatch, fault):
+    with (tmp_path / "words").open("w") as words:
+        monkeypatch.setattr(sys, "stdout", Gone(words, fault))
+        monkeypatch.setattr(sys, "stderr", None)  # as where a service has closed it
+        status = main(["solve", str(file), "--out", str(tmp_path / "out")])
+    assert status == 0
+    assert len(list((tmp_path / "out").glob("*/summary.json"))) == 2
+
+
+def test_a_full_disk_behind_standard_output_is_told(file, tmp_path, monkeypatch, capsys):
+    with (tmp_path / "words").open("w") as words:
+        monkeypatch.setattr(sys, "stdout", Gone(words, ENOSPC))
+        assert main(["check", str(file)]) == 1
+    assert "disk" in capsys.readouterr().err
 
 
 def test_check_looks_at_every_file(file, tmp_path, capsys):
