@@ -114,7 +114,9 @@ class FindingRow(QAbstractButton):
         painter.setFont(font("body"))
         urgent = self.told.state in ("near", "over") or self.told.detail.startswith("✕")
         painter.setPen(QColor(colours.ink if urgent else colours.soft_ink))
-        painter.drawText(self._detail_box(self.width(), head), _WRAPPED, self._detail())
+        box = self._detail_box(self.width(), head)
+        words = in_parts(self._detail(), QFontMetricsF(painter.font()), self.width() - 2 * SPACE)
+        painter.drawText(box, _WRAPPED, words)
 
     def _paint_head(self, painter: QPainter, head: float) -> None:
         """The figure, and its name beside it or, where that is too narrow, under it."""
@@ -142,7 +144,17 @@ class FindingRow(QAbstractButton):
     def _detail_box(self, width: int, top: float, detail: str | None = None) -> QRectF:
         metrics = QFontMetricsF(font("body"))
         room = QRectF(SPACE, top, max(width - 2 * SPACE, 20), 10_000)
-        return metrics.boundingRect(room, _WRAPPED, self._detail() if detail is None else detail)
+        words = self._detail() if detail is None else detail
+        return metrics.boundingRect(room, _WRAPPED, in_parts(words, metrics, room.width()))
+
+
+def in_parts(detail: str, metrics: QFontMetricsF, width: float) -> str:
+    """A detail that does not fit into a line is broken between its parts ("within the limit · where and when")."""
+    lines = []
+    for line in detail.split("\n"):
+        fits = metrics.horizontalAdvance(line) <= width
+        lines.append(line if fits else line.replace(" · ", "\n"))
+    return "\n".join(lines)
 
 
 _WRAPPED = int(Qt.TextFlag.TextWordWrap | Qt.AlignmentFlag.AlignLeft | Qt.AlignmentFlag.AlignTop)

@@ -47,46 +47,41 @@ class FindingsPanel(QFrame):
         self._answered = False
         self.setMinimumWidth(170)
         self.setAccessibleName("Findings")
+        self._verdict_rows, self._note_rows = QVBoxLayout(), QVBoxLayout()
+        self._scroll = self._make_scroll()
         outer = QVBoxLayout(self)
         outer.setContentsMargins(0, GAP, 0, GAP)
         outer.setSpacing(0)
-        heading = QLabel("Findings")
-        heading.setProperty("role", "strong")
-        heading.setContentsMargins(SPACE, 0, SPACE, GAP)
-        outer.addWidget(heading)
-        self._scroll = scroll = QScrollArea()
+        outer.addWidget(_heading())
+        outer.addWidget(self._scroll, 1)
+        outer.addWidget(_caution())
+        self.mesh.said.connect(lambda: self._show_answer(True))
+        self._scroll.verticalScrollBar().rangeChanged.connect(lambda: self._show_answer(self._answered))
+        for source in (document, solution, *(() if laid_over is None else (laid_over,))):
+            source.changed.connect(self._look_again)
+        self._look_again()
+
+    def _make_scroll(self) -> QScrollArea:
+        """The verdict, the differences to cases laid over, the notes and the check of the mesh, one under the other."""
+        inside = QWidget()
+        column = QVBoxLayout(inside)
+        column.setContentsMargins(0, 0, 0, 0)
+        column.setSpacing(2)
+        for rows in (self._verdict_rows, self._note_rows):
+            rows.setSpacing(2)
+        column.addLayout(self._verdict_rows)
+        column.addWidget(self.differences)
+        column.addLayout(self._note_rows)
+        column.addWidget(self.mesh)
+        column.addStretch(1)
+        scroll = QScrollArea()
         scroll.setAccessibleName("Findings")
         scroll.setWidgetResizable(True)
         scroll.setHorizontalScrollBarPolicy(Qt.ScrollBarPolicy.ScrollBarAlwaysOff)
-        self._inside = QWidget()
-        inside = QVBoxLayout(self._inside)
-        inside.setContentsMargins(0, 0, 0, 0)
-        inside.setSpacing(2)
-        self._verdict_rows, self._note_rows = QVBoxLayout(), QVBoxLayout()
-        for rows in (self._verdict_rows, self._note_rows):
-            rows.setSpacing(2)
-        inside.addLayout(self._verdict_rows)
-        inside.addWidget(self.differences)
-        inside.addLayout(self._note_rows)
-        inside.addWidget(self.mesh)
-        inside.addStretch(1)
-        scroll.setWidget(self._inside)
-        self._inside.setAutoFillBackground(False)
+        scroll.setWidget(inside)
+        inside.setAutoFillBackground(False)
         scroll.viewport().setAutoFillBackground(False)
-        outer.addWidget(scroll, 1)
-        caution = QLabel(words.MODEL_CAUTION)
-        caution.setProperty("role", "small")
-        caution.setWordWrap(True)
-        caution.setToolTip(f"{words.AXIAL_CAUTION} {words.LIMIT_CAUTION}")
-        caution.setContentsMargins(SPACE, GAP, SPACE, 0)
-        outer.addWidget(caution)
-        self.mesh.said.connect(lambda: self._show_answer(True))
-        scroll.verticalScrollBar().rangeChanged.connect(lambda: self._show_answer(self._answered))
-        for source in (document, solution):
-            source.changed.connect(self._look_again)
-        if laid_over is not None:
-            laid_over.changed.connect(self._look_again)
-        self._look_again()
+        return scroll
 
     def rows(self) -> list[FindingRow]:
         """The findings as they stand, from top to bottom."""
@@ -175,6 +170,22 @@ class FindingsPanel(QFrame):
             row.setEnabled(stands or content.stands)
         for number, row in enumerate(rows):
             row.setVisible(number < len(told))
+
+
+def _heading() -> QLabel:
+    heading = QLabel("Findings")
+    heading.setProperty("role", "strong")
+    heading.setContentsMargins(SPACE, 0, SPACE, GAP)
+    return heading
+
+
+def _caution() -> QLabel:
+    caution = QLabel(words.MODEL_CAUTION)
+    caution.setProperty("role", "small")
+    caution.setWordWrap(True)
+    caution.setToolTip(f"{words.AXIAL_CAUTION} {words.LIMIT_CAUTION}")
+    caution.setContentsMargins(SPACE, GAP, SPACE, 0)
+    return caution
 
 
 def _verdict(result: Result, units: Units) -> Iterator[Told]:

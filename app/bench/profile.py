@@ -48,7 +48,7 @@ class Profile(Picture):
 
     def margins(self) -> Margins:
         shared = margins_of(self.font())
-        return replace(shared, gutter=14.0, right=14.0)
+        return replace(shared, gutter=shared.gutter if self.lacks_numbers("distance") else 14.0, right=14.0)
 
     def described(self) -> tuple[Any, ...]:
         return (*super().described(), tuple(limit_lines(self.case)))
@@ -124,7 +124,9 @@ class Profile(Picture):
         self._draw_heading(painter, plot)
         least = -sum(s.length for s in self.case.ram_segments)
         metres = float(self.units.number(1.0, "length"))
-        distance_ticks(painter, in_units(distance, metres), plot.left(), False, least * metres)
+        bare = self.lacks_numbers("distance")
+        distance_ticks(painter, in_units(distance, metres), plot.left(), bare, least * metres)
+        self.name_axes(painter)
         residual = self.residual()
         if residual is not None:
             draw_locked_in(painter, plot, distance, residual, self.units)

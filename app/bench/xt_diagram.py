@@ -17,6 +17,7 @@ from app.bench.pictures.arrival_drawing import draw_lines, draw_pointed, lines_n
 from app.bench.pictures.arrival_lines import Line, all_named, arrivals_shown, lines_of
 from app.bench.pictures.axes import Axis
 from app.bench.pictures.axis_drawing import crisp, distance_ticks, horizontal_ticks, in_units
+from app.bench.pictures.colour_scale import draw_scale
 from app.bench.pictures.colouring import columns_under, entries_of, image_of, scale_top, table_of
 from app.bench.pictures.cursor import (
     between,
@@ -26,24 +27,16 @@ from app.bench.pictures.cursor import (
     draw_pinned_place,
     draw_place,
 )
-from app.bench.pictures.lettering import RIGHT, put
+from app.bench.pictures.lettering import put
 from app.bench.pictures.picture import Picture, Table
 from app.look.fonts import font
 from app.look.palette import palette
-from app.units import rounded
 
 HEADINGS = {
     "stress": "Stress through time",
     "force": "Force through time",
     "velocity": "Velocity through time",
     "displacement": "Displacement through time",
-}
-#: What the two ends of the scale mean, most negative in the solver's sign first.
-ENDS = {
-    "stress": ("compression", "tension"),
-    "force": ("compression", "tension"),
-    "velocity": ("↑ to the struck end", "↓ to the far end"),
-    "displacement": ("↑ to the struck end", "↓ to the far end"),
 }
 ARRIVALS_TIP = (
     "Where the front of the blow is expected, from lengths and wave speeds alone: straight lines down the member and, "
@@ -160,11 +153,13 @@ class XtDiagram(Picture):
         painter.restore()
         least = -sum(s.length for s in self.case.ram_segments)
         metres = float(self.units.number(1.0, "length"))
-        distance_ticks(painter, in_units(distance, metres), plot.left(), False, least * metres)
+        bare = self.lacks_numbers("distance") and level_of(self.case) is None
+        distance_ticks(painter, in_units(distance, metres), plot.left(), bare, least * metres)
         draw_levels(painter, self.case, self.units, distance, plot)
-        near = time.high - time.low
+        near, bare = time.high - time.low, self.lacks_numbers("time")
         seconds = float(self.units.number(1.0, "time", near))
-        horizontal_ticks(painter, in_units(time, seconds), plot.bottom(), False)
+        horizontal_ticks(painter, in_units(time, seconds), plot.bottom(), bare)
+        self.name_axes(painter, self.units.unit("time", near))
 
     def moving_region(self) -> QRegion:
         """The two lines of the cursor, each a few pixels wide; everywhere while there is more to show."""
@@ -272,38 +267,17 @@ class XtDiagram(Picture):
                 painter.drawLine(QLineF(plot.left(), y, plot.right(), y))
 
     def _draw_heading(self, painter: QPainter, plot: QRectF) -> None:
-        colours, quantity, units = palette(), self.sight.quantity, self.units
-        y = 0.5 * self.margins().header
+        quantity, y = self.sight.quantity, 0.5 * self.margins().header
         painter.setFont(font("strong"))
-        put(painter, plot.left(), y, HEADINGS[quantity], colours.ink)
-        shown = not self.switch.isHidden()
-        end = float(self.switch.geometry().right()) if shown else self._heading_end() + 6 + 1.2 * y
+        put(painter, plot.left(), y, HEADINGS[quantity], palette().ink)
+        last = self._choice if self.switch.isHidden() else self.switch
+        end = float(last.geometry().right())
         painter.setFont(self.font())
-        metrics = QFontMetricsF(painter.font())
         word = self.greyed() or {"solving": "", "stopped": "stopped early"}.get(self.solution.state, "")
         if word:
             painter.save()
             painter.setOpacity(1.0)
-            end = put(painter, end + 6, y, word, colours.ink).right()
+            end = put(painter, end + 6, y, word, palette().ink).right()
             painter.restore()
-        if self.result is None:
-            return
-        top, dimension = scale_top(self.result, quantity, units), DIMENSIONS[quantity]
-        signed = quantity in ("stress", "force")
-        # The end that the project calls positive stands on the right, as it does in the profile.
-        flip = signed and units.sign < 0
-        names = ENDS[quantity][::-1] if flip else ENDS[quantity]
-        number = rounded(float(units.number(top, dimension, top)))
-        right_text = f"{number} {units.unit(dimension, top)} {names[1]}"
-        x = plot.right()
-        room = x - end - 16
-        left_over = room - metrics.horizontalAdvance(right_text + names[0] + number) - 24
-        bar = min(max(left_over, 40.0), 6 * metrics.height())
-        if left_over < bar:  # a narrow picture keeps the numbers and lets the words go
-            names = ("−", "") if signed else ("↑", "↓")
-            right_text = f"{number} {units.unit(dimension, top)} {names[1]}".strip()
-        x = put(painter, x, y, right_text, colours.soft_ink, RIGHT).left() - 6
-        height = 0.55 * metrics.height()
-        table = table_of(quantity, colours)[None, :: -1 if flip else 1]
-        painter.drawImage(QRectF(x - bar, y - height / 2, bar, height), image_of(table))
-        put(painter, x - bar - 6, y, f"{names[0]} {number}".strip(), colours.soft_ink, RIGHT)
+        if self.result is not None:
+            draw_scale(painter, end + 12, plot.right(), y, self.result, quantity, self.units)

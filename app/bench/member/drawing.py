@@ -53,6 +53,7 @@ PATIENCE = 120
 
 class MemberDrawing(Picture):
     has_distance = True
+    numbers = "distance"
 
     def __init__(self, *args: Any, **named: Any) -> None:
         super().__init__(*args, **named)

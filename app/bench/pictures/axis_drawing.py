@@ -27,15 +27,11 @@ def distance_ticks(painter: QPainter, axis: Axis, x: float, numbered: bool, leas
     painter.setPen(pen(palette().line))
     top = max(axis.at(least), axis.start)
     painter.drawLine(QLineF(x, top, x, axis.start + axis.length))
-    for value in ticks(axis.low, axis.high, 5 * most):
-        if value >= least - 1e-9 * step:
-            painter.drawLine(QLineF(x, axis.at(value), x + SHORT, axis.at(value)))
-    for value, text in zip(values, tick_texts(values), strict=True):
-        y = axis.at(value)
-        painter.setPen(pen(palette().line))
-        painter.drawLine(QLineF(x, y, x + LONG, y))
-        if numbered:
-            put(painter, x - 6, y, text, palette().soft_ink, RIGHT)
+    parts = [v for v in ticks(axis.low, axis.high, 5 * most) if v >= least - 1e-9 * step]
+    painter.drawLines([QLineF(x, axis.at(v), x + SHORT, axis.at(v)) for v in parts])
+    painter.drawLines([QLineF(x, axis.at(v), x + LONG, axis.at(v)) for v in values])
+    for value, text in zip(values, tick_texts(values), strict=True) if numbered else ():
+        put(painter, x - 6, axis.at(value), text, palette().soft_ink, RIGHT)
 
 
 def horizontal_ticks(
@@ -51,22 +47,14 @@ def horizontal_ticks(
     up = -1 if inwards else 1
     painter.setPen(pen(palette().line))
     painter.drawLine(QLineF(axis.start, y, axis.start + axis.length, y))
-    for value in ticks(min(axis.low, axis.high), max(axis.low, axis.high), 5 * most):
-        painter.drawLine(QLineF(axis.at(value), y, axis.at(value), y + up * SHORT))
-    for value, text in zip(values, tick_texts(values), strict=True):
-        x = axis.at(value)
-        painter.setPen(pen(palette().line))
-        painter.drawLine(QLineF(x, y, x, y + up * LONG))
-        if numbered:
-            half = metrics.horizontalAdvance(text) / 2
-            put(
-                painter,
-                min(x, axis.start + axis.length + half),
-                y + 0.75 * metrics.height(),
-                text,
-                palette().soft_ink,
-                CENTRE,
-            )
+    for size, marks in (
+        (SHORT, ticks(min(axis.low, axis.high), max(axis.low, axis.high), 5 * most)),
+        (LONG, values),
+    ):
+        painter.drawLines([QLineF(axis.at(v), y, axis.at(v), y + up * size) for v in marks])
+    below = y + 0.75 * metrics.height()
+    for value, text in zip(values, tick_texts(values), strict=True) if numbered else ():
+        put(painter, axis.at(value), below, text, palette().soft_ink, CENTRE)
 
 
 def value_ticks(painter: QPainter, axis: Axis, plot: QRectF) -> None:

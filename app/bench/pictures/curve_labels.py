@@ -14,6 +14,8 @@ Array = NDArray[np.float64]
 
 #: Pixels between the places that are tried.
 STEP = 4.0
+#: Further away than any pixel: where a curve is not.
+FAR = 1e9
 
 
 @dataclass(frozen=True, eq=False)
@@ -32,17 +34,46 @@ class Wanted:
     width: float
 
 
+class Heights:
+    """Curves on one grid of pixels across a plot: what a box would cover is looked up for all of them at once."""
+
+    def __init__(self, curves: Sequence[Drawn], plot: QRectF) -> None:
+        self.grid = np.arange(plot.left() + 4, plot.right() - 4, STEP)
+        self.rows = np.array([_row(c, self.grid) for c in curves]).reshape(len(curves), len(self.grid))
+        self.there = np.isfinite(self.rows)
+        self.least = np.where(self.there, self.rows, FAR)
+        self.most = np.where(self.there, self.rows, -FAR)
+
+    def through(self, box: QRectF) -> int:
+        """How many curves run through a box."""
+        first, last = self._columns(box)
+        if last <= first:
+            return 0
+        least, most = self.least[:, first:last].min(axis=1), self.most[:, first:last].max(axis=1)
+        return int(np.count_nonzero((least < box.bottom()) & (most > box.top())))
+
+    def reaches(self, curve: int, box: QRectF, away: float) -> bool:
+        """Whether a curve comes nearer than that to a box, above or below it."""
+        first, last = self._columns(box)
+        if last <= first:
+            return False
+        least, most = self.least[curve, first:last].min(), self.most[curve, first:last].max()
+        return bool(least < box.bottom() + away and most > box.top() - away)
+
+    def _columns(self, box: QRectF) -> tuple[int, int]:
+        first, last = np.searchsorted(self.grid, (box.left(), box.right()))
+        return int(first), int(last)
+
+
 def place_labels(
-    curves: Sequence[Drawn], wanted: Sequence[Wanted], plot: QRectF, height: float, off: Sequence[QRectF] = ()
+    heights: Heights, wanted: Sequence[Wanted], plot: QRectF, height: float, off: Sequence[QRectF] = ()
 ) -> list[QRectF | None]:
     """A box for each name; `None` where none is free. In turn each takes the cheapest place left: off all curves and
     off the boxes `off`, where its own curve lies away from the others."""
-    grid = np.arange(plot.left() + 4, plot.right() - 4, STEP)
-    rows = np.array([_row(c, grid) for c in curves]).reshape(len(curves), len(grid))
     taken: list[QRectF] = list(off)
     placed: list[QRectF | None] = []
     for name in wanted:
-        box = _cheapest(rows, name, grid, plot, height, taken)
+        box = _cheapest(heights, name, plot, height, taken)
         placed.append(box)
         if box is not None:
             taken.append(box)
@@ -50,29 +81,11 @@ def place_labels(
 
 
 def crosses(curve: Drawn, box: QRectF) -> bool:
-    """Whether a curve runs through a box."""
-    heights = _over(curve, box)
+    """Whether a curve runs through a box, wherever its points lie."""
+    inside = (curve.x >= box.left()) & (curve.x <= box.right())
+    ends = np.interp((box.left(), box.right()), curve.x, curve.y) if len(curve.x) else np.zeros(0)
+    heights = np.concatenate((curve.y[inside], ends))
     return bool(len(heights) and heights.min() < box.bottom() and heights.max() > box.top())
-
-
-def crossings(curves: Sequence[Drawn], box: QRectF) -> int:
-    """How many curves run through a box."""
-    return sum(crosses(curve, box) for curve in curves)
-
-
-def reaches(curve: Drawn, box: QRectF, away: float) -> bool:
-    """Whether a curve comes nearer than that to a box, above or below it."""
-    heights = _over(curve, box)
-    return bool(len(heights) and heights.min() < box.bottom() + away and heights.max() > box.top() - away)
-
-
-def _over(curve: Drawn, box: QRectF) -> Array:
-    """Heights of a curve over the width of a box, none where it does not reach."""
-    if not len(curve.x) or curve.x[0] > box.right() or curve.x[-1] < box.left():
-        return np.zeros(0)
-    first, last = np.searchsorted(curve.x, (box.left(), box.right()))
-    ends = np.interp((box.left(), box.right()), curve.x, curve.y)
-    return np.concatenate((curve.y[first:last], ends))
 
 
 def _row(curve: Drawn, grid: Array) -> Array:
@@ -83,15 +96,15 @@ def _row(curve: Drawn, grid: Array) -> Array:
 
 
 def _cheapest(
-    rows: Array, name: Wanted, grid: Array, plot: QRectF, height: float, taken: Sequence[QRectF]
+    heights: Heights, name: Wanted, plot: QRectF, height: float, taken: Sequence[QRectF]
 ) -> QRectF | None:
+    rows, grid, there = heights.rows, heights.grid, heights.there
     span = int(np.ceil(name.width / STEP)) + 1
     if len(grid) < span:
         return None
     # the lowest and the highest of each curve over the width of the name, shape (curves, places)
-    there = np.isfinite(rows)
-    tops = sliding_window_view(np.where(there, rows, 1e9), span, axis=1).min(axis=2)
-    bottoms = sliding_window_view(np.where(there, rows, -1e9), span, axis=1).max(axis=2)
+    tops = sliding_window_view(heights.least, span, axis=1).min(axis=2)
+    bottoms = sliding_window_view(heights.most, span, axis=1).max(axis=2)
     middles = rows[:, span // 2 : span // 2 + tops.shape[1]]
     own = middles[name.curve]
     others = np.arange(len(rows)) != name.curve

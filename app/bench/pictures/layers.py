@@ -13,10 +13,11 @@ from typing import Any
 
 import numpy as np
 from PySide6.QtCore import QEvent, QRectF, Qt
-from PySide6.QtGui import QColor, QFocusEvent, QPainter, QPaintEvent, QPen, QPixmap, QRegion
+from PySide6.QtGui import QColor, QFocusEvent, QFontMetricsF, QPainter, QPaintEvent, QPen, QPixmap, QRegion
 from PySide6.QtWidgets import QWidget
 
 from app.bench.pictures.axes import Axis, Margins, inside, margins_of, whole_distance
+from app.bench.pictures.lettering import RIGHT, put
 from app.bench.pictures.time_shown import shown_time
 from app.document import Document
 from app.look.palette import palette
@@ -48,12 +49,15 @@ class Layered(QWidget):
 
     has_time = False
     has_distance = False
+    #: The axis whose numbers it carries for all pictures: "time" or "distance".
+    numbers = ""
 
     def __init__(
         self, document: Document, sight: Sight, solution: Solution, parent: QWidget | None = None
     ) -> None:
         super().__init__(parent)
         self.document, self.sight, self.solution = document, sight, solution
+        self._leaves = False
         self._kept = QPixmap()
         self._kept_key: tuple[Any, ...] | None = None
         self._shown_moving: tuple[Any, ...] | None = None
@@ -124,6 +128,23 @@ class Layered(QWidget):
         plot = self.plot()
         return Axis(low, high, plot.left(), plot.width())
 
+    def lacks_numbers(self, axis: str) -> bool:
+        """Whether no picture in sight carries the numbers of its axis: it has all the room, or is on its way to a
+        file."""
+        if self.numbers == axis:
+            return False
+        others = () if self._leaves else self.window().findChildren(Layered)
+        return not any(other.numbers == axis and other.isVisible() for other in others)
+
+    def name_axes(self, painter: QPainter, of_time: str = "") -> None:
+        """The units of axes whose numbers it carries only now: left of the first number, and above it."""
+        plot, line = self.plot(), QFontMetricsF(painter.font()).height()
+        x, soft = plot.left() - 6, palette().soft_ink
+        if of_time and self.lacks_numbers("time"):
+            put(painter, x, plot.bottom() + 0.75 * line, of_time, soft, RIGHT)
+        if self.lacks_numbers("distance"):
+            put(painter, x, plot.top() + 0.5 * line, self.units.unit("length"), soft, RIGHT)
+
     def greyed(self) -> str:
         """Why the picture does not belong to what is entered, in a few words; empty where it does."""
         if self.document.rejected:
@@ -160,11 +181,13 @@ class Layered(QWidget):
 
     def paint_whole(self, painter: QPainter) -> None:
         """Both layers onto any painter, for export."""
+        self._leaves = True
         painter.setRenderHint(QPainter.RenderHint.Antialiasing)
         painter.setFont(self.font())
         painter.fillRect(self.rect(), QColor(palette().paper))
         self.draw_resting(painter)
         self.draw_moving(painter)
+        self._leaves = False
 
     def _painted_resting(self) -> QPixmap:
         ratio = self.devicePixelRatioF()

@@ -9,7 +9,7 @@ import numpy as np
 from PySide6.QtCore import QRectF
 from PySide6.QtGui import QFontMetricsF, QPainter
 
-from app.bench.pictures.curve_labels import Drawn, Wanted, crossings, place_labels, reaches
+from app.bench.pictures.curve_labels import Drawn, Heights, Wanted, crosses, place_labels
 from app.bench.pictures.lettering import put_on, width_of
 from app.bench.strips.contents import Content
 from app.look.palette import palette
@@ -51,7 +51,7 @@ class Names:
         boxes = self._placed(names, widths, curves, plot, height, taken)
         for name, box in zip(names, boxes, strict=True):
             # what names an area and finds no free place in it is left out; it would strike through a curve
-            if box is not None and not (name.of_area and crossings(drawn[:2], box)):
+            if box is not None and not (name.of_area and any(crosses(curve, box) for curve in drawn[:2])):
                 put_on(painter, box.left(), box.center().y(), name.words, name.hue, palette().paper)
 
     def _placed(
@@ -63,18 +63,18 @@ class Names:
         height: float,
         taken: Sequence[QRectF],
     ) -> list[QRectF | None]:
-        of = (names, widths, plot, height, tuple(taken))
-        if of != self._of or not self._stand(names, curves, height):
+        of, heights = (names, widths, plot, height, tuple(taken)), Heights(curves, plot)
+        if of != self._of or not self._stand(names, heights, height):
             wanted = [Wanted(name.curve, width) for name, width in zip(names, widths, strict=True)]
             self._of = of
-            self._boxes = place_labels(curves, wanted, plot, height, taken)
-            self._crossed = [0 if box is None else crossings(curves, box) for box in self._boxes]
+            self._boxes = place_labels(heights, wanted, plot, height, taken)
+            self._crossed = [0 if box is None else heights.through(box) for box in self._boxes]
         return self._boxes
 
-    def _stand(self, names: list[Name], curves: list[Drawn], height: float) -> bool:
+    def _stand(self, names: list[Name], curves: Heights, height: float) -> bool:
         """Whether every name is still beside its curve, with no more curves through it than when it was put there."""
         return all(
-            box is None or (crossings(curves, box) <= crossed and reaches(curves[name.curve], box, height))
+            box is None or (curves.through(box) <= crossed and curves.reaches(name.curve, box, height))
             for name, box, crossed in zip(names, self._boxes, self._crossed, strict=True)
         )
 

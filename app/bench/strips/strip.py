@@ -59,6 +59,7 @@ class Strip(Picture):
     ) -> None:
         super().__init__(document, sight, solution, parent)
         self.name, self.last, self._laid_over = name, last, laid_over
+        self.numbers = "time" if last else ""
         self.setAccessibleName(f"{CHIPS[self.kind]} through time")
         self.setCursor(Qt.CursorShape.CrossCursor)
         self.setMouseTracking(True)

@@ -11,7 +11,7 @@ from hypothesis import strategies as st
 from PySide6.QtCore import QRectF
 
 from app.bench.pictures.axes import Axis, inside, tick_texts, ticks
-from app.bench.pictures.curve_labels import Drawn, Wanted, crosses, place_labels
+from app.bench.pictures.curve_labels import Drawn, Heights, Wanted, crosses, place_labels
 from app.bench.pictures.curves import polygon, thinned
 from app.bench.pictures.lettering import spread
 from app.bench.strips.strip import Strip
@@ -78,7 +78,7 @@ def test_names_stand_on_their_curves_and_not_on_each_other():
     x = np.linspace(0, 600, 1200)
     curves = [Drawn(x, 60 + 40 * np.sin(x / 40 + k)) for k in range(3)]
     plot = QRectF(0, 0, 600, 120)
-    boxes = place_labels(curves, [Wanted(k, 50.0) for k in range(3)], plot, 15.0)
+    boxes = place_labels(Heights(curves, plot), [Wanted(k, 50.0) for k in range(3)], plot, 15.0)
     assert all(box is not None for box in boxes)
     for k, box in enumerate(boxes):
         assert plot.contains(box)

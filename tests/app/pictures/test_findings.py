@@ -143,5 +143,8 @@ def test_findings_can_be_reached_and_pressed_by_keyboard(open_bench, pile, qtbot
 
 
 def test_a_stopped_run_says_what_it_is(pile):
-    first = solve(pile.project.cases[0], cancel=lambda: True)
+    case = pile.project.cases[0]
+    long = case.model_copy(update={"run": case.run.model_copy(update={"duration": 1.0})})
+    first = solve(long, cancel=lambda: True)
+    assert first.duration < 1.0
     assert not findings_of(first).quality.finished
