@@ -2,8 +2,8 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator
 from functools import cache
+from typing import Any
 
 from pydantic import BaseModel
 
@@ -11,6 +11,8 @@ from solver.errors import SolveError
 from solver.model.project import Case
 from solver.model.quantity import Quantity, quantity_of
 
+#: From a part to one within it: the field, whether it holds several, and the part.
+Way = tuple[tuple[str, bool, BaseModel], ...]
 #: Any quantity in SI units that a member, its load or its ground has lies between these by many powers of ten.
 LEAST, MOST = 1e-30, 1e30
 
@@ -20,10 +22,11 @@ def refuse_beyond_measure(case: Case) -> None:
     used = {name: material for name, material in case.materials.items() if name in _named(case)}
     parts = [("", case), *((f"material '{name}'", material) for name, material in used.items())]
     for start, part in parts:
-        for where, label, value, unit in _numbers(part, start):
+        for way, quantity, value in _numbers(part, ()):
             if value and not LEAST <= abs(value) <= MOST:
+                where = _in_words(start, way)
                 raise SolveError(
-                    f"{where[:1].upper()}{where[1:]}: {label} {value:.3g} {unit}".rstrip()
+                    f"{where[:1].upper()}{where[1:]}: {quantity.label} {value:.3g} {quantity.unit}".rstrip()
                     + f" is beyond all measure ({LEAST:g} to {MOST:g}). Check the number and its unit."
                 )
 
@@ -36,25 +39,49 @@ def _named(case: Case) -> set[str]:
 
 
 @cache
-def _declared(model: type[BaseModel]) -> tuple[tuple[str, Quantity | None], ...]:
-    """Fields of a model with their quantities: looked up once, for every solve asks for them."""
-    return tuple((key, quantity_of(model, key)) for key in model.model_fields)
+def _declared(model: type[BaseModel]) -> tuple[dict[str, Quantity], list[str]]:
+    """Fields of a model that are quantities, and those that may hold other parts. Every solve asks for all numbers of
+    its case, so this is looked up once."""
+    quantities, parts = {}, []
+    for key, info in model.model_fields.items():
+        if (quantity := quantity_of(model, key)) is not None:
+            quantities[key] = quantity
+        elif _may_hold_parts(info.annotation):
+            parts.append(key)
+    return quantities, parts
 
 
-def _numbers(part: BaseModel, where: str) -> Iterator[tuple[str, str, float, str]]:
-    """Every quantity of a part and of what is in it: the part in words, the quantity's label, value and SI unit."""
-    for key, quantity in _declared(type(part)):
-        value = getattr(part, key)
-        if quantity is not None and isinstance(value, float):
-            yield where or "case", quantity.label, value, quantity.unit
-        entries = value if isinstance(value, tuple) else (value,)
-        for entry in entries:
+def _may_hold_parts(annotation: Any) -> bool:
+    inner = getattr(annotation, "__args__", ())
+    return (isinstance(annotation, type) and issubclass(annotation, BaseModel)) or any(
+        map(_may_hold_parts, inner)
+    )
+
+
+def _numbers(part: BaseModel, way: Way) -> list[tuple[Way, Quantity, float]]:
+    """Every quantity of a part and of what is in it, and the way to it."""
+    quantities, parts = _declared(type(part))
+    values = part.__dict__
+    found = [
+        (way, quantity, value)
+        for key, quantity in quantities.items()
+        if isinstance(value := values[key], float)
+    ]
+    for key in parts:
+        value = values[key]
+        several = isinstance(value, tuple)
+        for entry in value if several else (value,):
             if isinstance(entry, BaseModel):
-                name = getattr(entry, "name", "")
-                word = (
-                    key.removesuffix("s").replace("_", " ")
-                    if isinstance(value, tuple)
-                    else key.replace("_", " ")
-                )
-                inner = f"{word} '{name}'" if name else word
-                yield from _numbers(entry, f"{where}, {inner}" if where and not name else inner)
+                found += _numbers(entry, (*way, (key, several, entry)))
+    return found
+
+
+def _in_words(start: str, way: Way) -> str:
+    """The part at the end of a way; one with a name needs no more than it."""
+    where = start
+    for key, several, entry in way:
+        word = (key.removesuffix("s") if several else key).replace("_", " ")
+        name = getattr(entry, "name", "")
+        inner = f"{word} '{name}'" if name else word
+        where = f"{where}, {inner}" if where and not name else inner
+    return where or "case"

@@ -65,9 +65,7 @@ class March:
         self.planned = self._planned_steps()
         self.stride = 2 ** max(0, int(np.floor(np.log2(max(1, self.planned / FRAMES)))))
         self.ends = self._ends()
-        links = np.flatnonzero(chain.axial > 0)
-        shown = np.unique(np.linspace(0, len(links) - 1, min(COLUMNS, len(links))).round().astype(int))
-        self.columns = links[shown]
+        self.columns = shown_links(chain)
         rows = (self.planned - 1) // self.stride + 1
         self.records = records_of(chain, gauge_readings(chain), rows, self.columns, self.flags)
         self.rest_forces = self._rest_forces()
@@ -201,6 +199,14 @@ class March:
         done = self.base + self.share * self.steps / self.planned
         elapsed = time.perf_counter() - self.began
         return Progress(done, elapsed * (1 - done) / done, lambda: self.result(True, False, None))
+
+
+def shown_links(chain: Chain) -> NDArray[np.int64]:
+    """Links that the pictures show."""
+    links = np.flatnonzero(chain.axial > 0)
+    if len(links) <= COLUMNS:
+        return links
+    return links[np.linspace(0, len(links) - 1, COLUMNS).round().astype(int)]
 
 
 def _longest(chain: Chain) -> float:

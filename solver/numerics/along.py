@@ -18,7 +18,12 @@ def profile_along(
 
     A taper is linear in its dimensions, so areas are quadratic in the fraction: three sections fix them.
     """
-    first, last = segment.section, segment.end_section or segment.section
+    if segment.end_section is None:
+        ones = np.ones_like(fraction)
+        axial_of_all, mass_of_all = _uniform(segment, materials)
+        young = materials[segment.material].young_modulus
+        return axial_of_all * ones, mass_of_all * ones, axial_of_all / young * ones
+    first, last = segment.section, segment.end_section
     ends = first.model_dump(), last.model_dump()
     middle = type(first)(
         **{k: (v + ends[1][k]) / 2 if isinstance(v, float) else v for k, v in ends[0].items()}
@@ -31,13 +36,20 @@ def profile_along(
         fill = materials[first.fill]
         fills = np.array([s.fill_area for s in (first, middle, last)])  # type: ignore[union-attr]
         axial, mass = axial + fill.young_modulus * fills, mass + fill.density * fills
-    if segment.end_section is None:
-        ones = np.ones_like(fraction)
-        return axial[0] * ones, mass[0] * ones, axial[0] / material.young_modulus * ones
     lagrange = [_parabola(at, i, fraction) for i in range(3)]
     axial_at = sum(a * w for a, w in zip(axial, lagrange, strict=True))
     mass_at = sum(a * w for a, w in zip(mass, lagrange, strict=True))
     return axial_at, mass_at, axial_at / material.young_modulus
+
+
+def _uniform(segment: Segment, materials: dict[str, Material]) -> tuple[float, float]:
+    """EA and mass per length of a segment without a taper."""
+    section, material = segment.section, materials[segment.material]
+    axial, mass = material.young_modulus * section.area, material.density * section.area
+    if section.shape == "filled_pipe":
+        fill = materials[section.fill]
+        axial, mass = axial + fill.young_modulus * section.fill_area, mass + fill.density * section.fill_area
+    return axial, mass
 
 
 def _parabola(at: Array, i: int, x: Array) -> Array:

@@ -114,20 +114,21 @@ def _add(chain: Chain, ground: Ground, band: Band, table: Array) -> None:
         # a bonded boundary shares its node, a joint has two at one place: positions are right either way
         middle = (left + right) / 2
         nodes = np.arange(stretch.start, stretch.stop)
-        for a, b, node in ((left, middle, nodes), (middle, right, nodes + 1)):
-            low, high = np.clip(a, band.top, band.bottom), np.clip(b, band.top, band.bottom)
-            touched = high > low
-            if not touched.any():
-                continue
-            low, high = low[touched], high[touched]
-            at = _receivers(chain, stretch.start, stretch.stop, node[touched])
-            points = np.array([low, (low + high) / 2, high])
-            width = _rubbing(chain, ground, stretch.segment, points, left[0], right[-1])
-            line = band.unit(points) * (width if band.per_area else 1.0)
-            strength = (high - low) * (line[0] + 4 * line[1] + line[2]) / 6
-            area = (high - low) * (width[0] + 4 * width[1] + width[2]) / 6
-            for row, amount in enumerate(_amounts(band.law, strength, high - low, area)):
-                np.add.at(table[row], at, amount)
+        # upper halves of all elements, then the lower ones
+        low = np.concatenate([left, middle]).clip(band.top, band.bottom)
+        high = np.concatenate([middle, right]).clip(band.top, band.bottom)
+        touched = np.flatnonzero(high > low)
+        if not len(touched):
+            continue
+        low, high = low[touched], high[touched]
+        at = _receivers(chain, stretch.start, stretch.stop, np.concatenate([nodes, nodes + 1])[touched])
+        points = np.array([low, (low + high) / 2, high])
+        width = _rubbing(chain, ground, stretch.segment, points, left[0], right[-1])
+        line = band.unit(points) * (width if band.per_area else 1.0)
+        strength = (high - low) * (line[0] + 4 * line[1] + line[2]) / 6
+        area = (high - low) * (width[0] + 4 * width[1] + width[2]) / 6
+        for row, amount in enumerate(_amounts(band.law, strength, high - low, area)):
+            np.add.at(table[row], at, amount)
 
 
 def _receivers(chain: Chain, start: int, stop: int, node: NDArray[np.int64]) -> NDArray[np.int64]:

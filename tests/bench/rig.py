@@ -8,7 +8,7 @@ from collections.abc import Callable
 import numpy as np
 
 from solver import Case
-from solver.marching import COLUMNS, FRAMES
+from solver.marching import FRAMES, shown_links
 from solver.model.load import Pulse
 from solver.numerics.arrays import Motion, Rest, aligned
 from solver.numerics.assemble import bounds_of, extremes_of, gauge_readings, motion_of, records_of, rod_of
@@ -31,11 +31,9 @@ class Rig:
         )
         bring_to_rest(self.chain, self.fresh)
         self.stride = 2 ** max(0, int(np.floor(np.log2(max(1, planned / FRAMES)))))
-        links = np.flatnonzero(self.chain.axial > 0)
-        shown = np.unique(np.linspace(0, len(links) - 1, min(COLUMNS, len(links))).round().astype(int))
         self.flags = np.zeros(len(self.fresh.rod.blocks), dtype=np.int64)
         readings, rows = gauge_readings(self.chain), (steps - 1) // self.stride + 1
-        self.records = records_of(self.chain, readings, rows, links[shown], self.flags)
+        self.records = records_of(self.chain, readings, rows, shown_links(self.chain), self.flags)
         self.records = self.records._replace(
             gauges=np.ones((len(self.records.gauges), steps)), ram=np.ones((len(self.records.ram), steps))
         )
