@@ -57,7 +57,6 @@ class Layered(QWidget):
     ) -> None:
         super().__init__(parent)
         self.document, self.sight, self.solution = document, sight, solution
-        self._leaves = False
         self._kept = QPixmap()
         self._kept_key: tuple[Any, ...] | None = None
         self._shown_moving: tuple[Any, ...] | None = None
@@ -129,12 +128,11 @@ class Layered(QWidget):
         return Axis(low, high, plot.left(), plot.width())
 
     def lacks_numbers(self, axis: str) -> bool:
-        """Whether no picture in sight carries the numbers of its axis: it has all the room, or is on its way to a
-        file."""
-        if self.numbers == axis:
-            return False
-        others = () if self._leaves else self.window().findChildren(Layered)
-        return not any(other.numbers == axis and other.isVisible() for other in others)
+        """Whether no picture in sight carries the numbers of its axis: it has all the room, say."""
+        others = self.window().findChildren(Layered)
+        return self.numbers != axis and not any(
+            other.numbers == axis and other.isVisible() for other in others
+        )
 
     def name_axes(self, painter: QPainter, of_time: str = "") -> None:
         """The units of axes whose numbers it carries only now: left of the first number, and above it."""
@@ -181,13 +179,11 @@ class Layered(QWidget):
 
     def paint_whole(self, painter: QPainter) -> None:
         """Both layers onto any painter, for export."""
-        self._leaves = True
         painter.setRenderHint(QPainter.RenderHint.Antialiasing)
         painter.setFont(self.font())
         painter.fillRect(self.rect(), QColor(palette().paper))
         self.draw_resting(painter)
         self.draw_moving(painter)
-        self._leaves = False
 
     def _painted_resting(self) -> QPixmap:
         ratio = self.devicePixelRatioF()

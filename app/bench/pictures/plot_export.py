@@ -52,14 +52,8 @@ def drawing_of(picture: Layered) -> Drawing:
 
 def _missing(picture: Layered) -> set[str]:
     """The axes whose numbers stand at a neighbour: of time at the lowest strip, of distance at the member."""
-    from app.bench.member.drawing import MemberDrawing  # it is a picture itself
-
-    found = set()
-    if picture.has_time and not getattr(picture, "last", False):
-        found.add("time")
-    if picture.has_distance and not isinstance(picture, MemberDrawing):
-        found.add("distance")
-    return found
+    has = {"time": picture.has_time, "distance": picture.has_distance}
+    return {axis for axis in has if has[axis] and picture.numbers != axis and not picture.lacks_numbers(axis)}
 
 
 def _draw_axes(painter: QPainter, picture: Layered, which: set[str]) -> None:
