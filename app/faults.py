@@ -30,6 +30,8 @@ def sentence_for(pointer: str, problems: Sequence[Problem], tree: Any, units: Un
     here = [p for p in problems if p.pointer == pointer or pointer.startswith(p.pointer + "/")]
     problem = (here or list(problems))[0]
     text = _in_units(TWICE.sub(r"'\2", GIVEN.sub("", problem.sentence)), units)
+    if "both called" in text:  # which tells its place itself
+        return f"{text[:1].upper()}{text[1:]}. Give one of them another name."
     advice = ""
     if not here and problem.pointer:
         text = f"{place_in_words(problem.pointer, tree)}: {text}"

@@ -280,8 +280,8 @@ def caution(of: Caution, units: Units) -> str:
     """One caution on the description of a case."""
     if of.kind == "gauge_near_end":
         return (
-            f"{with_kind('Gauge', of.name)} is nearer than 1.5 diameters ({units.show(of.bound, 'length')}) to the struck end: "
-            "the blow has not spread over the section there."
+            f"{with_kind('Gauge', of.name)} is nearer than 1.5 diameters ({units.show(of.bound, 'length')}) "
+            "to the struck end: the blow has not spread over the section there."
         )
     if of.kind == "short_pulse":
         return (

@@ -6,7 +6,7 @@ import re
 from collections.abc import Callable
 from dataclasses import dataclass
 
-from app.bench.forms import element_length
+from app.bench.forms.remarks import remarks
 from app.limit_words import limit_lines
 from app.units import Units
 from app.words import LOAD_CAUTION, caution
@@ -40,11 +40,19 @@ def derived_lines(project: Project, case: Case, units: Units, pointer: str) -> L
 def caution_lines(case: Case, units: Units, pointer: str) -> Lines:
     """Cautions that the part itself gives reason for."""
     also = {"far_end": "ground/toe", "ground": "ground/shaft_total"}.get(pointer, pointer)
-    found = [caution(c, units) for c in cautions_of(case) if c.pointer in (pointer, also)]
+    material = (
+        list(case.materials)[int(pointer.rpartition("/")[2])]
+        if pointer.startswith("/mat") and pointer[-1].isdecimal()
+        else None
+    )
+    found = [
+        caution(c, units)
+        for c in cautions_of(case)
+        if c.pointer in (pointer, also) or (c.name == material and c.kind in ("wave_speed", "static_modulus"))
+    ]
     if pointer == "load" and isinstance(case.load, Drop):
         found.append(LOAD_CAUTION)
-    if pointer == "run":
-        found += element_length.remarks(case, units)
+    found += remarks(case, units, pointer)
     return found
 
 

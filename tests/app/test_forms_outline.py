@@ -195,6 +195,20 @@ def test_a_segment_too_short_for_the_ground_says_so_and_what_helps(desk) -> None
     assert "not valid" in at.button("Pile").accessibleName()
 
 
+def test_a_share_typed_in_hundredths_is_told_how_to_be_written(desk) -> None:
+    at = desk(driven_pile())
+    assert problem_of(at.type_into("Efficiency", "80")) == "✕ Must be at most 1. 80 of a hundred is 0.8 or '80 %'."
+
+
+def test_the_last_segment_says_why_it_stays(desk, qtbot) -> None:
+    at = desk(driven_pile())
+    at.select("member/segments/0")
+    assert "keeps at least one segment" in at.outline.doing.buttons["remove"].toolTip()
+    with qtbot.waitSignal(at.document.refused) as told:
+        qtbot.keyClick(at.button("Pile"), Qt.Key.Key_Delete)
+    assert told.args == ["Not done: remove Pile. A rod keeps at least one segment: add another one first."]
+
+
 def test_escape_gives_the_project_s_number_back(desk, qtbot) -> None:
     at = desk(driven_pile())
     row = at.type_into("Drop height", "x")

@@ -18,7 +18,13 @@ def breach_of(spec: NumberSpec, value: float | None, units: Units) -> str | None
         ("at most", bounds.at_most, bounds.at_most is not None and value > bounds.at_most),
     ):
         if broken and bound is not None:
-            return f"Must be {word} {f'{bound:g}' if spec.whole else _beside(bound, value, spec, units)}."
+            sentence = f"Must be {word} {f'{bound:g}' if spec.whole else _beside(bound, value, spec, units)}."
+            percent = spec.dimension == "none" and bound == 1 and 5 <= value <= 100
+            return (
+                f"{sentence} {value:g} of a hundred is {value / 100:g} or '{value:g} %'."
+                if percent
+                else sentence
+            )
     return None
 
 

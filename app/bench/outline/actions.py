@@ -62,6 +62,8 @@ class Actions(QWidget):
         for name, button in self.buttons.items():
             button.setVisible(entry and (name != "split" or can_split(row)))
             button.setEnabled(name in able)
+        words = next(f"{words}  ({key})" for name, _, words, key in ACTIONS if name == "remove")
+        self.buttons["remove"].setToolTip(self.parts.why_kept(row) or words)
         self.add_button.setVisible(bool(row.adds_to))
         if row.adds_to:
             self.add_button.setText(f"+ Add {edits.word_for(row.adds_to)}")

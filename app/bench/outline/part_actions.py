@@ -66,6 +66,14 @@ class PartActions:
         keeps_one = row.list_pointer.endswith(("segments", "materials"))
         return found + (["remove"] if count > len(chosen) or not keeps_one else [])
 
+    def why_kept(self, row: Row) -> str:
+        """Why an entry cannot be removed, "" where it can."""
+        if row.index < 0 or "remove" in self.able(row):
+            return ""
+        word = edits.word_for(row.list_pointer)
+        holder = "A project" if word == "material" else "A rod"
+        return f"{holder} keeps at least one {word}: add another one first."
+
     def fill(self, menu: QMenu, row: Row) -> None:
         """Put the actions of a row into a menu."""
         able, several = self.able(row), len(self.chosen(row)) if row.index >= 0 else 1
@@ -84,6 +92,8 @@ class PartActions:
     def do(self, name: str, row: Row) -> bool:
         """Do an action by its name, where it can be done."""
         if name not in self.able(row):
+            if name == "remove" and self.why_kept(row):
+                self._document.refused.emit(f"Not done: remove {row.name}. {self.why_kept(row)}")
             return False
         return self.take(self._edit(name, row))
 
