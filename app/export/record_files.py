@@ -6,7 +6,7 @@ from collections.abc import Callable, Sequence
 from datetime import datetime
 from pathlib import Path
 
-from app.disk import write_whole
+from app.disk import why_not, write_whole
 from app.export.case_folder import folder_names
 from app.export.fingerprint import input_hash
 from app.export.record_choices import ENDINGS, Format, RecordChoices
@@ -36,6 +36,14 @@ def record_names(project: Project, case: str, choices: RecordChoices) -> list[st
     return [f"{folder}-records{ENDINGS[kind]}" for kind in choices.formats]
 
 
+class NotWritten(OSError):
+    """A file that could not be written; its text is a sentence that names it and says why."""
+
+
+def _left_behind(written: Sequence[Path]) -> str:
+    return f" Written before it: {', '.join(path.name for path in written)}." if written else ""
+
+
 def write_records(
     project: Project,
     results: Sequence[Result],
@@ -45,20 +53,29 @@ def write_records(
 ) -> list[Path]:
     """Write the records of every result; returns the files.
 
-    Raises `OSError` for what cannot be written, and `ValueError` with a sentence for choices that cannot be fulfilled;
-    nothing is written before every case has been found possible.
+    Raises `NotWritten` for what cannot be written, and `ValueError` with a sentence for choices that cannot be
+    fulfilled; nothing is written before every case has been found possible.
     """
     origin = origin_of(project, date)
     for result in results:
         if result.gauges:
             record_table(result, origin, choices)
-    folder.mkdir(parents=True, exist_ok=True)
-    written = []
+    try:
+        folder.mkdir(parents=True, exist_ok=True)
+    except OSError as error:
+        raise NotWritten(f"The folder {folder} cannot be made: {why_not(error, folder)}.") from error
+    written: list[Path] = []
     for result in results:
         if not result.gauges:
             continue
         table = record_table(result, origin, choices)
         for kind, name in zip(choices.formats, record_names(project, result.case.name, choices), strict=True):
-            write_whole(folder / name, WRITERS[kind](table, choices))
-            written.append(folder / name)
+            path = folder / name
+            try:
+                write_whole(path, WRITERS[kind](table, choices))
+            except OSError as error:
+                raise NotWritten(
+                    f"{name} was not written: {why_not(error, path)}.{_left_behind(written)}"
+                ) from error
+            written.append(path)
     return written

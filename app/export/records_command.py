@@ -7,6 +7,7 @@ from collections.abc import Callable
 from datetime import datetime
 from pathlib import Path
 
+from app.disk import why_not
 from app.export.record_choices import RecordChoices
 from app.usable_project import load_usable
 from solver import Case, Project, ProjectError, Result
@@ -28,7 +29,7 @@ def write_records_of(
     try:
         out.mkdir(parents=True, exist_ok=True)
     except OSError as error:
-        return _complain(f"The folder {out} cannot be made: {error.strerror or error}.", UNUSABLE)
+        return _complain(f"The folder {out} cannot be made: {why_not(error, out)}.", UNUSABLE)
     status = DONE
     for case in project.cases:
         if choices.cases is None or case.name in choices.cases:
@@ -73,8 +74,7 @@ def _one(
     except ValueError as error:
         return _complain(f"The records of case '{case.name}' cannot be written: {error}", FAILED)
     except OSError as error:
-        reason = error.strerror or str(error)
-        return _complain(f"The records of case '{case.name}' cannot be written to {out}: {reason}.", FAILED)
+        return _complain(f"The records of case '{case.name}' cannot be written to {out}. {error}", FAILED)
     except MemoryError:
         return _complain(f"Case '{case.name}' needs more memory than there is: use longer elements.", FAILED)
     return DONE

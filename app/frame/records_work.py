@@ -77,8 +77,7 @@ class RecordsWork(QObject):
         except (SolveError, ValueError) as error:
             self.ended.emit(f"Case '{name}': {error}", False)
         except OSError as error:
-            reason = error.strerror or str(error)
-            self.ended.emit(f"The records of '{name}' cannot be written to {folder}: {reason}.", False)
+            self.ended.emit(f"The records of '{name}' cannot be written to {folder}. {error}", False)
         except Exception as error:
             logging.getLogger(__name__).exception("The records could not be made")
             self.ended.emit(f"The records of '{name}' failed ({type(error).__name__}: {error}).", False)

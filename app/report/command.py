@@ -7,6 +7,7 @@ import sys
 from datetime import datetime
 from pathlib import Path
 
+from app.disk import why_not
 from app.export.records_options import date_of, positive
 from app.units import NO_BREAK, units_of
 from app.usable_project import load_usable
@@ -79,7 +80,7 @@ def run_report(given: argparse.Namespace) -> int:
             write_figures(report, given.figures, date, given.dpi)
             write_animations(cases, units_of(project), given.figures)
     except OSError as error:
-        return _complain(f"The report cannot be written to {given.out}: {error.strerror or error}.", FAILED)
+        return _complain(f"The report cannot be written to {given.out}: {why_not(error, given.out)}.", FAILED)
     except MemoryError:
         return _complain("The report needs more memory than there is: use longer elements.", FAILED)
     status = DONE

@@ -187,7 +187,7 @@ def test_a_file_that_cannot_be_written_leaves_the_old_one(tmp_path, bar, monkeyp
     (old,) = write_records(project, [result], RecordChoices(), tmp_path, DATE)
     before = old.read_bytes()
     monkeypatch.setattr("os.fsync", lambda _: (_ for _ in ()).throw(OSError(28, "No space left on device")))
-    with pytest.raises(OSError, match="No space left"):
+    with pytest.raises(OSError, match="the disk is full"):
         write_records(project, [result], RecordChoices(digits=3), tmp_path, DATE)
     assert old.read_bytes() == before
     assert [p.name for p in tmp_path.iterdir()] == [old.name]

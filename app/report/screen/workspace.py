@@ -8,6 +8,7 @@ from PySide6.QtCore import Signal
 from PySide6.QtGui import QHideEvent, QShowEvent
 from PySide6.QtWidgets import QFileDialog, QFrame, QHBoxLayout, QLabel, QPushButton, QVBoxLayout, QWidget
 
+from app.disk import why_not
 from app.document import Document
 from app.export import folder_names
 from app.look.spacing import GAP, SPACE
@@ -115,7 +116,7 @@ class ReportSpace(QWidget):
         try:
             write_report(self.work.report, path, self.work.date)
         except OSError as error:
-            self.told.emit(f"The report cannot be written to {path}: {error.strerror or error}.", "over")
+            self.told.emit(f"The report cannot be written to {path}: {why_not(error, path)}.", "over")
             return False
         self.told.emit(f"The report is in {path}.", "tell")
         return True
@@ -137,7 +138,7 @@ class ReportSpace(QWidget):
             written = write_figures(self.work.report, folder, self.work.date)
             written += write_animations(self.work.cases, units_of(self._document.project), folder)
         except OSError as error:
-            self.told.emit(f"The figures cannot be written to {folder}: {error.strerror or error}.", "over")
+            self.told.emit(f"The figures cannot be written to {folder}: {why_not(error, folder)}.", "over")
             return False
         self.told.emit(f"{len(written)} files of figures are in {folder}.", "tell")
         return True
