@@ -111,7 +111,7 @@ def rod_or_bar() -> Tree:
         "load": {
             "kind": "striker",
             "velocity": 10.0,
-            "segments": [{"name": "Striker", "length": 0.3, "material": "steel", "section": thick}],
+            "segments": [{"name": "Striker rod", "length": 0.3, "material": "steel", "section": thick}],
         },
         "far_end": {"kind": "free"},
         "ground": None,

@@ -73,13 +73,15 @@ ALIASES = {
 MASSES = ("mass", "density")
 POWERS = {"²": "**2", "³": "**3", "⁴": "**4"}
 NUMBER = re.compile(r"[-+−]?(?:\d[\d\s',. \u202f\u2009]*|[.,]\d+)(?:[eE][-+−]?\d+)?")
+#: "3/4", "1 1/2" and "1-1/2", as inches are written.
+FRACTION = re.compile(r"([-+−]?)(?:(\d+)[\s\u00a0-]+)?(\d{1,4})/(\d{1,4})(?![\d.,])")
 PLAIN_UNIT = re.compile(r"[A-Za-zµμε°%‰'\"′″_0-9/*·⋅^().\s²³⁴-]*")
 
 
 def value_of(text: str, dimension: str, unit: str) -> float:
     """Number in SI of what was typed; `unit` is taken where the text has none.
 
-    "12.5", "40 ft", "1,5", "2e3 kN" and "5 ft 6 in" are understood. Raises `UnitError` with a sentence.
+    "12.5", "40 ft", "1,5", "2e3 kN", "5 ft 6 in" and "1 1/2 in" are understood. Raises `UnitError` with a sentence.
     """
     wanted = text.strip()
     if not wanted:
@@ -90,16 +92,18 @@ def value_of(text: str, dimension: str, unit: str) -> float:
     sign = 1
     first = True
     while rest:
-        found = NUMBER.match(rest)
+        fraction, found = FRACTION.match(rest), NUMBER.match(rest)
         if not found:
             raise UnitError(f"'{wanted}' is no number, or no number with its unit{_example(dimension)}.")
         digits, after = found.group().rstrip(), rest[found.end() :]
         digits, after = _feet_mark(digits, after)
-        following = re.search(r"(?<=[A-Za-z'\"′″])\s*(?=\d)(?!\d*\s*(?:[/*)]|$))", after)
+        if fraction:
+            after = rest[fraction.end() :]
+        following = re.search(r"(?<=[A-Za-z'\"′″])\s*(?=\d)(?!\d*\s*(?:/(?!\d)|[*)]|$))", after)
         own, rest = (after[: following.start()], after[following.end() :]) if following else (after, "")
         if not first and not own.strip():
             raise UnitError(f"'{wanted}' has a second number without a unit.")
-        number = _number(digits, wanted)
+        number = _of_fraction(fraction, wanted) if fraction else _number(digits, wanted)
         if first and number.is_signed():
             sign, number = -1, abs(number)
         total += number * factor_of(own.strip() or unit, dimension)
@@ -108,6 +112,14 @@ def value_of(text: str, dimension: str, unit: str) -> float:
     if not isfinite(value):
         raise UnitError(f"'{wanted}' is too large a number.")
     return value + 0.0
+
+
+def _of_fraction(found: re.Match[str], wanted: str) -> Decimal:
+    sign, whole, above, below = found.groups()
+    if int(below) == 0:
+        raise UnitError(f"'{wanted}' divides by 0.")
+    size = Decimal(whole or 0) + Decimal(above) / Decimal(below)
+    return -size if sign in ("-", "−") else size
 
 
 def _feet_mark(digits: str, after: str) -> tuple[str, str]:

@@ -83,7 +83,7 @@ def test_what_engineers_type_is_understood(text, dimension, si):
         ("3 __import__", "length", "not a unit"),
         ("3..4", "length", "no number"),
         ("--3", "length", "no number"),
-        ("1/3", "length", "not a unit"),
+        ("1/x", "length", "not a unit"),
         ("3 kg", "none", "it is a pure number"),
         ("9" * 500, "length", "too long"),
     ],
@@ -123,6 +123,21 @@ def test_what_was_typed_with_up_to_seven_digits_is_shown_with_all_of_them(digits
     units = Units(system)
     value = units.parse(f"{digits}e{power}", dimension)
     assert isclose(units.parse(units.text(value, dimension), dimension), value, rel_tol=1e-12)
+
+
+@pytest.mark.parametrize(
+    ("text", "inches"),
+    [
+        ("3/4", 0.75),
+        ('3/4"', 0.75),
+        ("1 1/2", 1.5),
+        ("1-1/2 in", 1.5),
+        ("5 ft 6 1/2 in", 66.5),
+        ("-1/2", -0.5),
+    ],
+)
+def test_fractions_of_an_inch_are_understood(text, inches):
+    assert Units("us").parse(text, "small_length") == pytest.approx(inches * 0.0254, rel=1e-15)
 
 
 def test_what_comes_from_another_unit_is_shown_with_four_digits():

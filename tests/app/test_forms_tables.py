@@ -18,7 +18,7 @@ from app.bench.tables.pasted import cells_of
 from app.bench.tables.tables import Tables
 from app.document import Document
 from app.sight import Sight
-from app.starting_points import driven_pile, slender_rod_by_echo
+from app.starting_points import driven_pile, rod_or_bar, slender_rod_by_echo
 from solver import project_from_tree
 
 Tree = dict[str, Any]
@@ -125,6 +125,23 @@ def test_headings_of_a_pasted_sheet_make_no_row_and_their_units_hold(desk) -> No
     assert at.case.ground.layers[0].unit_resistance == pytest.approx(47880.26, rel=1e-6)  # 1000 lbf/ft²
 
 
+def test_headings_name_their_columns_wherever_the_block_is_put(desk) -> None:
+    at = desk(rod_or_bar(), "gauges")  # between name and position these have "On"
+    at.paste_at(0, "Name", "Name\tPosition (in)\nA\t36\nB\t60\n")
+    assert [(g.name, g.on) for g in at.case.gauges] == [("A", "member"), ("B", "member")]
+    assert [g.position for g in at.case.gauges] == pytest.approx([0.9144, 1.524])
+
+
+def test_headings_that_the_table_does_not_have_are_refused_as_a_whole(desk) -> None:
+    at = desk(rod_or_bar(), "gauges")
+    before = at.document.project
+    at.paste_at(0, "Name", "Gauge\tDistance [ft]\nA\t3\nB\t5\n")
+    assert at.document.project == before
+    assert not at.document.rejected
+    assert "no column 'Gauge'" in at.tables.note.text()
+    assert "Name, On, Position" in at.tables.note.text()
+
+
 def test_a_first_row_that_is_not_the_headings_of_its_columns_stays(desk) -> None:
     at = desk(driven_pile(), "ground/layers")
     at.paste_at(0, "Name", "Thickness\t2\nName\t3\n")
@@ -136,6 +153,9 @@ def test_cells_that_make_no_sense_say_why_and_the_others_are_taken(desk) -> None
     at.paste_at(0, "Position", "2\nnowhere\n18\n")
     assert [g.position for g in at.case.gauges] == [2.0, 10.0, 18.0]
     assert at.text(1, "Position") == "✕ nowhere"
+    assert at.tables.note.text().startswith(
+        "✕ One cell was not taken. Position, row 2: 'nowhere' is no number"
+    )
     at.go_to(1, "Position")
     assert "no number" in at.tables.note.text()
     at.type_at(1, "Position", "11")

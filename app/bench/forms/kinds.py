@@ -37,7 +37,7 @@ ROD = {
     "section": {"shape": "solid_round", "diameter": 0.02},
 }
 RAM_ROD = {
-    "name": "Ram",
+    "name": "Ram rod",
     "length": 1.5,
     "material": MATERIAL,
     "section": {"shape": "solid_round", "diameter": 0.6},
@@ -65,7 +65,7 @@ KINDS: dict[tuple[type[BaseModel], str], dict[str, Kind]] = {
         ),
         "striker": Kind(
             "Striker rod",
-            {"kind": "striker", "velocity": 10.0, "segments": [ROD | {"name": "Striker"}]},
+            {"kind": "striker", "velocity": 10.0, "segments": [ROD | {"name": "Striker rod"}]},
             "A rod thrown against the struck end.",
         ),
         "pulse": Kind("Pulse", {"kind": "pulse", **PULSE}, "A force or velocity in closed form."),

@@ -16,6 +16,7 @@ from app.bench.forms.spec import CheckSpec, ChoiceSpec, Context, NumberSpec, Spe
 from app.bench.forms.use_part import free_name
 from app.bench.outline.edits import called, entries_of, word_for
 from app.bench.tables.content import Content, content_of, value_from
+from app.bench.tables.pasted import Block
 from app.document import Document
 from app.provenance import forget_changed
 from app.tree import copied, value_at
@@ -41,13 +42,13 @@ class Fault:
     sentence: str
 
 
-def block_cells(block: Sequence[Sequence[str]], row: int, column: int, columns: int) -> list[Cell]:
-    """The cells of a pasted block whose corner is at a row and column; what lies beyond the last column is left out."""
+def block_cells(block: Block, row: int, columns: int) -> list[Cell]:
+    """The cells of a pasted block from a row on; what lies beyond the last column is left out."""
     return [
-        Cell(row + i, column + j, text)
-        for i, line in enumerate(block)
-        for j, text in enumerate(line)
-        if column + j < columns
+        Cell(row + i, column, text)
+        for i, line in enumerate(block.rows)
+        for column, text in zip(block.columns, line, strict=False)
+        if column < columns
     ]
 
 

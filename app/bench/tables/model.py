@@ -80,6 +80,20 @@ class TableModel(QAbstractTableModel):
         spec = self._content.spec_at(row, column)
         return self._document.rejected.get(self._document.full_pointer(spec.pointer)) if spec else None
 
+    def faults_told(self) -> str:
+        """How many cells were not taken, and why the first was not; "" where there are none."""
+        wrong = [
+            (row, column, problem.sentence)
+            for row in range(len(self._content.rows))
+            for column in range(len(self._content.columns))
+            if (problem := self.problem_at(row, column))
+        ]
+        if not wrong:
+            return ""
+        row, column, sentence = wrong[0]
+        count = "One cell was" if len(wrong) == 1 else f"{len(wrong)} cells were"
+        return f"{count} not taken. {self._content.columns[column].heading}, row {row + 1}: {sentence}"
+
     def spec_at(self, index: Index) -> Spec | None:
         """The field of a cell."""
         return self._content.spec_at(index.row(), index.column()) if index.isValid() else None

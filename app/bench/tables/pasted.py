@@ -4,26 +4,57 @@ from __future__ import annotations
 
 import re
 from collections.abc import Sequence
+from dataclasses import dataclass
 from itertools import zip_longest
 
+#: A heading, with its unit behind it: "Length", "Length (ft)", "Length [ft]", "Length, ft".
+TITLE = re.compile(r"([^(\[,]+?)\s*(?:[(\[,]\s*(.*?)\s*[)\]]?)?")
 
-def without_headings(block: list[list[str]], headings: Sequence[str]) -> list[list[str]]:
-    """The block without a first row that repeats the headings of its columns, as in "Length" or "Length (ft)".
+
+@dataclass(frozen=True)
+class Block:
+    """Rows of cells, and the column of the table that each cell of a row goes to."""
+
+    rows: list[list[str]]
+    columns: list[int]
+
+
+def placed(rows: list[list[str]], headings: Sequence[str], column: int) -> Block:
+    """A block whose corner is at a column; one whose first row repeats headings, as in "Length" or "Length (ft)", goes
+    under those without that row, wherever its corner is.
 
     A unit in such a heading goes to the numbers under it, which would otherwise be taken in the column's own unit.
+    Raises `ValueError` with a sentence where the first row is one of headings that the table does not have.
     """
-    if len(block) < 2:
-        return block
-    units: list[str] = []
-    for cell, heading in zip(block[0], headings, strict=False):
-        title = re.fullmatch(r"([^(\[,]+?)\s*(?:[(\[,]\s*(.*?)\s*[)\]]?)?", cell)
-        if title is None or title[1].casefold() != heading.casefold():
-            return block
-        units.append(title[2] or "")
-    return [
-        [_with_unit(cell, unit) for cell, unit in zip_longest(line, units, fillvalue="")]
-        for line in block[1:]
-    ]
+    width = max((len(row) for row in rows), default=0)
+    beside = Block(rows, list(range(column, column + width)))
+    if len(rows) < 2:
+        return beside
+    known = [heading.casefold() for heading in headings]
+    titles = [TITLE.fullmatch(cell) for cell in rows[0]]
+    names = [title[1].casefold() if title else "" for title in titles]
+    if names and all(name in known for name in names) and len(set(names)) == len(names):
+        units = [title[2] or "" if title else "" for title in titles]
+        under = [[_with_unit(c, u) for c, u in zip_longest(row, units, fillvalue="")] for row in rows[1:]]
+        return Block(under, [known.index(name) for name in names])
+    if _are_headings(rows):
+        strange = [cell for cell, name in zip(rows[0], names, strict=True) if name not in known]
+        raise ValueError(
+            f"The first row looks like headings, but the table has no column '{strange[0]}'. "
+            f"Its columns are {', '.join(headings)}: use their names, or paste without the first row."
+            if strange
+            else "The first row names a column twice."
+        )
+    return beside
+
+
+def _are_headings(rows: list[list[str]]) -> bool:
+    """Whether the first row has words alone, and the second a number under one of them."""
+    first, second = rows[0], rows[1]
+    words_alone = not any(char.isdigit() for cell in first for char in re.sub(r"[(\[].*", "", cell))
+    return words_alone and any(
+        a and re.match(r"[-+−]?[.,]?\d", b) for a, b in zip(first, second, strict=False)
+    )
 
 
 def _with_unit(cell: str, unit: str) -> str:

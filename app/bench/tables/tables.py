@@ -21,7 +21,7 @@ from app.bench.outline import edits
 from app.bench.tables.cells import CellEditors
 from app.bench.tables.edits import Cell, block_cells
 from app.bench.tables.model import TableModel
-from app.bench.tables.pasted import cells_of, without_headings
+from app.bench.tables.pasted import cells_of, placed
 from app.document import Document
 from app.look import icon
 from app.look.spacing import FIELD, GAP, SPACE
@@ -162,7 +162,7 @@ class Tables(QWidget):
         index = self.view.currentIndex()
         problem = self.model.problem_at(index.row(), index.column()) if index.isValid() else None
         spec = self.model.spec_at(index)
-        wrong = self.model.refusal or (problem.sentence if problem else "")
+        wrong = self.model.refusal or (problem.sentence if problem else self.model.faults_told())
         role = "problem" if wrong else "small"
         if self.note.property("role") != role:
             self.note.setProperty("role", role)
@@ -192,15 +192,21 @@ class Tables(QWidget):
     def paste(self) -> None:
         """The block on the clipboard, its corner at the current cell; one value fills all selected cells."""
         current = self.view.currentIndex()
-        headings = [column.heading for column in self.model.content.columns[max(current.column(), 0) :]]
-        block = without_headings(cells_of(QGuiApplication.clipboard().text()), headings)
-        if not block or not current.isValid():
+        rows = cells_of(QGuiApplication.clipboard().text())
+        if not rows or not current.isValid():
+            return
+        headings = [column.heading for column in self.model.content.columns]
+        try:
+            block = placed(rows, headings, current.column())
+        except ValueError as error:
+            self.model.refusal = f"Nothing was pasted. {error}"
+            self._tell()
             return
         chosen = self.view.selectionModel().selectedIndexes()
-        if len(block) == 1 and len(block[0]) == 1 and len(chosen) > 1:
-            cells = [Cell(i.row(), i.column(), block[0][0]) for i in chosen]
+        if len(rows) == 1 and len(rows[0]) == 1 and len(chosen) > 1:
+            cells = [Cell(i.row(), i.column(), rows[0][0]) for i in chosen]
         else:
-            cells = block_cells(block, current.row(), current.column(), self.model.columnCount())
+            cells = block_cells(block, current.row(), self.model.columnCount())
         word = edits.word_for(self.model.content.list_pointer)
         self.model.fill(cells, f"Paste {len(cells)} cells into the {word}s")
         self._tell()
