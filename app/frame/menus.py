@@ -179,7 +179,7 @@ class Menus:
         menu.addAction(self._action("Full screen", window.turn_full_screen, QKeySequence("Shift+F11")))
         menu.addSeparator()
         for choice, words in LOOKS.items():
-            action = self._action(words, partial(self._choose_look, choice), checkable=True)
+            action = self._look_action(words, choice)
             action.setData(choice)
             self.looks.addAction(action)
             menu.addAction(action)
@@ -190,9 +190,12 @@ class Menus:
 
         return self._action(words, fold, checkable=True)
 
-    def _choose_look(self, choice: Choice, on: bool) -> None:
-        if on:
-            self._window.choose_look(choice)
+    def _look_action(self, words: str, choice: Choice) -> QAction:
+        def choose(on: bool) -> None:  # not a partial: Qt would call that without its argument
+            if on:
+                self._window.choose_look(choice)
+
+        return self._action(words, choose, checkable=True)
 
     def _help(self) -> None:
         menu: QMenu = self.bar.addMenu("&Help")

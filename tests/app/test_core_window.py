@@ -347,10 +347,11 @@ def test_notes_are_typed_in_place(window, qtbot):
 
 
 def test_light_and_dark_are_chosen_and_remembered(window, tmp_path):
-    window.choose_look("dark")
+    looks = {action.data(): action for action in window.menus.looks.actions()}
+    looks["dark"].trigger()
     assert palette().dark
     assert Settings(tmp_path / "settings").look == "dark"
-    window.choose_look("light")
+    looks["light"].trigger()
     assert not palette().dark
 
 
