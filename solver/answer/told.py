@@ -35,13 +35,9 @@ def remarks_of(blow: Blow, residual: float, at_rest: bool, finished: bool) -> tu
     if strain > SMALL_STRAIN:
         told.append(Remark("large_strain", strain, place))
     told += [Remark("mass_at_contact", place=place) for place in _masses_at_contacts(chain)]
-    for part in chain.stretches:
-        if (
-            part.material.law.kind == "brittle_tension"
-            and blow.state.rod.state[0, part.start : part.stop].any()
-        ):
-            told.append(Remark("cracked", name=part.segment.name))
-            break
+    crumbled = _crumbled(blow)
+    if crumbled:
+        told.append(Remark("crumbled", crumbled[0][0], name=crumbled[0][1]))
     if not finished:
         told.append(Remark("stopped"))
     elif case.run.duration is None and not at_rest:
@@ -59,6 +55,18 @@ def remarks_of(blow: Blow, residual: float, at_rest: bool, finished: bool) -> tu
     if cache_problem:
         told.append(Remark("not_cached", name=cache_problem))
     return tuple(told)
+
+
+def _crumbled(blow: Blow) -> list[tuple[float, str]]:
+    """How many elements of a segment came off alone, between two cracks, and the segment; the most first."""
+    count: dict[str, int] = {}
+    before = None
+    for joint, (strength, *_) in zip(blow.chain.joints, blow.state.bounds.joint_bond, strict=True):
+        cracked = joint if joint.strength and strength <= 0 else None
+        if cracked and before and cracked.link - before.link == 2:
+            count[joint.segment] = count.get(joint.segment, 0) + 1
+        before = cracked
+    return sorted(((float(n), name) for name, n in count.items()), reverse=True)
 
 
 def _masses_at_contacts(chain: Chain) -> list[float]:
@@ -83,15 +91,27 @@ def _largest_plastic_strain(blow: Blow) -> tuple[float, float]:
 
 
 def _ram_returns(blow: Blow) -> float | None:
-    """Time at which a rigid ram that gravity brings back will strike again, s; `None` where none is in the air."""
-    chain, motion = blow.chain, blow.state.motion
-    if not chain.train or chain.gravity == 0.0 or blow.state.bounds.train_state[0, 2] > 0.0:
+    """Time at which a ram that gravity brings back, with its cap or without, will strike again, s; `None` where none is
+    in the air.
+
+    From the bottom up: what carries no force in the face or cushion below it flies, and falls on the first that stands.
+    """
+    chain, at, v = blow.chain, blow.at_end, blow.state.motion.v
+    if not chain.train or chain.gravity == 0.0:
         return None
-    a = chain.train[0].link
-    gap = float(blow.at_end[a + 1] - blow.at_end[a])
-    rising = float(motion.v[a + 1] - motion.v[a]) if not blow.settled else -float(motion.v[a])
-    falls = rising**2 / 2 + chain.gravity * gap
-    if gap <= 0.0 or falls < SECOND_BLOW * float(chain.velocity[a]) ** 2 / 2:
+    floor, energy, flight = chain.head, 0.0, None
+    for number, link in reversed(list(enumerate(chain.train))):
+        node = link.link
+        if blow.state.bounds.train_state[number, 2] > 0.0:
+            floor = node
+            continue
+        gap = max(float(at[floor] - at[node]), 0.0)
+        still = blow.settled and floor == chain.head
+        rising = -float(v[node]) if still else float(v[floor] - v[node])
+        mass = float(np.sum(chain.mass[: node + 1])) if number == 0 else float(chain.mass[node])
+        energy += mass * (rising**2 / 2 + chain.gravity * gap)
+        flight = (rising + np.sqrt(rising**2 + 2 * chain.gravity * gap)) / chain.gravity
+    first = float(np.sum(chain.mass[: chain.head] * chain.velocity[: chain.head] ** 2)) / 2
+    if flight is None or energy < SECOND_BLOW * first:
         return None
-    flight = (rising + np.sqrt(max(rising**2 + 2 * chain.gravity * gap, 0.0))) / chain.gravity
     return float((blow.steps - 1) * chain.dt + flight)

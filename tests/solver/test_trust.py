@@ -87,6 +87,33 @@ def test_a_peak_after_a_second_blow_says_so_and_what_it_was_before() -> None:
     assert told.tension.first is not None, "this case shows nothing"
 
 
+def test_a_ram_that_flies_up_with_its_cap_is_told() -> None:
+    """A stiff pile in firm ground throws both up. Free flight tells when the ram strikes again, but for the set of the
+    cushion and the tremor of the head: within a tenth of the flight."""
+    drop = {
+        "kind": "drop",
+        "ram_mass": 12e3,
+        "impact_velocity": 4.0,
+        "cap_mass": 1200.0,
+        "cushion": {"stiffness": 2.5e8, "restitution": 0.4},
+    }
+    shaft = {"resistance": 6e6, "distribution": "uniform", "quake": 0.0025, "damping": 0.6}
+    ground = {
+        "surface": 0.5,
+        "shaft_total": shaft,
+        "toe": {"resistance": 2e6, "quake": 0.005, "damping": 0.2},
+    }
+    pile = part(10.0, area=0.08)
+    ends, longer = (
+        solved(drop, pile, far_end="ground", ground=ground, gravity=True, duration=d, dx=0.1)
+        for d in (0.06, 0.6)
+    )
+    assert all(event.kind != "impact" for event in ends.events[1:])
+    returns = [remark.value for remark in ends.remarks if remark.kind == "ram_returns"]
+    again = [event.time for event in longer.events if event.kind == "impact"][1]
+    assert returns == [pytest.approx(again, rel=0.1)]
+
+
 def test_faces_that_part_and_touch_while_the_wave_runs_are_one_blow() -> None:
     """Ram, stiff cushion, cap: they chatter within the passage of the wave; the ram has not fallen again."""
     drop = {
