@@ -21,6 +21,7 @@ TWICE = re.compile(r"\b(gauge) '(gauge\b)", re.IGNORECASE)
 ADVICE = (
     (re.compile(r"/gauges/\d+/position"), "Move or remove the gauge first."),
     (re.compile(r"/attachments/\d+/position"), "Move or remove the attachment first."),
+    (re.compile(r"/(material|fill)$"), "Give that part another material first."),
     (re.compile(r"/ground/surface"), "Give the ground surface a smaller distance first."),
 )
 

@@ -128,7 +128,7 @@ class Units:
         number = float(self.number(value_si, dimension, near))
         if not isfinite(number):
             return "–"
-        typed = typed and isclose(float(f"{number:.8e}"), number, rel_tol=1e-12)
+        typed = typed and isclose(float(f"{number:.6e}"), number, rel_tol=1e-12)
         return _plain(number, 7 if typed else 4)
 
     def show(self, value_si: float, dimension: str, digits: int = 3) -> str:

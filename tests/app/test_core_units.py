@@ -146,6 +146,7 @@ def test_what_comes_from_another_unit_is_shown_with_four_digits():
     assert METRIC_UNITS.text(METRIC_UNITS.parse("45 ksi", "modulus"), "modulus", 310e6) == "310.3"
     assert METRIC_UNITS.unit("modulus", 310e6) == "MPa"
     assert METRIC_UNITS.text(12.34567, "length") == "12.34567"
+    assert METRIC_UNITS.text(METRIC_UNITS.parse("5 lb", "mass"), "mass", 2.3) == "2.268"
 
 
 @given(value=st.floats(-1e15, 1e15), dimension=st.sampled_from(sorted(SI_UNITS)))

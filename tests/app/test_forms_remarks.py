@@ -36,11 +36,13 @@ def test_a_run_that_ends_too_early_and_slips_of_a_unit_are_told_where_they_are_t
     case["load"]["drop_height"] = 1000.0
     case["member"]["segments"][0]["section"]["wall"] = 0.0125e-3
     case["ground"]["toe"]["quake"] = 2.5
+    case["member"]["attachments"] = [{"position": 1.0, "kind": "mass", "value": 5000.0}]
     tree["materials"][0]["density"] = 7.85
     assert "ends before a wave has passed" in lines_of(tree, "run")[0]
     assert lines_of(tree, "load/cushion") == ["Area 0.200 cm² is unusually small: check its unit."]
     assert "Drop height 1000 m is unusually large: check its unit." in lines_of(tree, "load")
     assert "Wall 0.0125 mm is unusually small: check its unit." in lines_of(tree, "member/segments/0")
+    assert lines_of(tree, "member/attachments/0") != []
     assert lines_of(tree, "far_end")[-1].startswith("Quake 2500 mm is unusually large")
     assert any("density" in line.casefold() for line in lines_of(tree, "/materials/0"))
 

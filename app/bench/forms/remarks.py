@@ -37,6 +37,8 @@ def remarks(case: Case, units: Units, pointer: str) -> list[str]:
     """Sentences on the part at a pointer that is relative to the case."""
     if pointer == "run":
         return [*_elements(case, units), *_duration(case, units)]
+    if pointer.startswith("member/attachments/"):
+        return list(_attachment(case, units, int(pointer.rpartition("/")[2])))
     return [line for part in _parts(case, pointer) for line in _slips(part, units)]
 
 
@@ -67,6 +69,13 @@ def _slips(part: BaseModel, units: Units) -> Iterator[str]:
             continue
         shown, word = units.show(value, quantity.dimension), "small" if value < bounds[0] else "large"
         yield f"{quantity.label} {shown} is unusually {word}: check its unit."
+
+
+def _attachment(case: Case, units: Units, index: int) -> Iterator[str]:
+    attachment = case.member.attachments[index]
+    whole = sum(derived.segment_mass(segment, case.materials) for segment in case.member.segments)
+    if attachment.kind == "mass" and attachment.value > whole:
+        yield f"Heavier than the whole member of {units.show(whole, 'mass')}: check its unit."
 
 
 def _elements(case: Case, units: Units) -> Iterator[str]:
