@@ -77,7 +77,8 @@ def _gauges(blow: Blow) -> dict[str, GaugeRecord]:
     for g, gauge in enumerate(chain.case.gauges):
         link = gauge_link(chain, gauge)
         force, velocity, displacement, acceleration, strain = blow.gauges[5 * g : 5 * g + 5]
-        elastic = blow.law_at(link) == "elastic"
+        # with lateral inertia a section holds more than its strain tells
+        elastic = blow.law_at(link) == "elastic" and not chain.case.member.lateral_inertia
         found[gauge.name] = GaugeRecord(
             name=gauge.name,
             position=gauge.position,

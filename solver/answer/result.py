@@ -71,7 +71,8 @@ class GaugeRecord:
     `force` (N), `stress` (Pa), `strain`: tension positive, with the static part at rest before the blow where
     gravity acts. `velocity` (m/s), `displacement` (m, from the position of rest before the blow) and
     `acceleration` (m/s2): positive towards the far end. `impedance` is Z = A sqrt(E rho) at the gauge, N·s/m;
-    `rest_force` is the static force before the blow, N; `axial_stiffness` EA (N), `None` where it is not constant.
+    `rest_force` is the static force before the blow, N; `axial_stiffness` EA (N), `None` where force is not EA times
+    strain: other laws, and lateral inertia, with which a bulging section holds a part of the force.
     Long records lie in a temporary file and are read where they are looked at.
     """
 
@@ -101,7 +102,7 @@ class GaugeRecord:
 
     @cached_property
     def strain(self) -> Array:
-        """Force over EA where the material is linear elastic, else the mean strain of the elements at the gauge."""
+        """Force over EA where that is so (see `axial_stiffness`), else the mean strain of the elements at the gauge."""
         return (
             self.element_strain
             if self.axial_stiffness is None

@@ -14,6 +14,7 @@ from solver.numerics.records import (
     EVENT_IMPACT,
     EVENT_SEPARATION,
     EVENT_TOE_LIFT,
+    extremes,
     keep_first_blow,
     read_gauges,
     read_train,
@@ -59,6 +60,15 @@ def inertia_velocities(rod, v, w, force, load, driven, u, dt, step):
         w[i] = w[i] / rod.pivot[i] - rod.carry[i] * w[i + 1]
     for i in range(last + 1):
         w[i] += v[i]
+
+
+@kernel
+def section_forces(rod, ext, v, w, force, dt, step):
+    """Love's rod: what passes through a section is N = E A u_x + rho A (nu r_p)^2 u_xtt, the natural boundary term of
+    his equation: a loaded end reads its load, and the work of N closes with the energies."""
+    for i in range(len(force)):
+        force[i] += rod.inertia[i] * ((w[i + 1] - v[i + 1]) - (w[i] - v[i])) / dt
+    extremes(force, ext.low, ext.low_step, ext.high, ext.high_step, float(step))
 
 
 @kernel
@@ -229,13 +239,16 @@ def march(rod, ground, bounds, motion, ext, rec, ends, sums, load, first, count,
             for i in range(len(rod.opening)):
                 sums[IMPACT] -= rod.opening[i] * 0.5 * (v[i] + w[i]) * dt
         sums[WORK] += pull * 0.5 * (v[head] + w[head]) * dt
+        if step % stride == 0:
+            balance(rec.ledger[step // stride], rod, ground, bounds, rest, u, v, w, force, sums, dt)
+        if inert:
+            section_forces(rod, ext, v, w, force, dt, step)
         if gauges:
             read_gauges(rec, u, v, w, force, rest, dt, step)
         if train_heard:
             read_train(rec, bounds, v, w, head, step)
         if step % stride == 0:
             take_frame(rec, u, v, w, force, rest, step // stride)
-            balance(rec.ledger[step // stride], rod, ground, bounds, rest, u, v, w, force, sums, dt)
         done, waiting = done + 1, True
         v, w = w, v
         if ends.every > 0 and (step + 1) % ends.every == 0:

@@ -18,7 +18,7 @@ def sweep(rod, ext, motion, u, v, w, gain, dt, flags, note, step, waiting):
     """Displacements (where those of the step before are `waiting`), forces with their envelopes, velocities `w`; the
     first link of a block of one law that leaves the elastic range is noted."""
     pulls, links, at = motion.pulls, len(u) - 1, float(step)
-    force = pulls[1 : links + 1]
+    force, inert = pulls[1 : links + 1], len(rod.inertia) > 0
     for b in range(len(rod.blocks)):
         law, end = rod.blocks[b, 0], rod.blocks[b, 2]
         for start in range(rod.blocks[b, 1], end, BLOCK):
@@ -32,7 +32,10 @@ def sweep(rod, ext, motion, u, v, w, gain, dt, flags, note, step, waiting):
                 flags[b] = 1
                 remember(note, EVENT_LEFT_ELASTIC, left, step)
             here = slice(start, stop)
-            extremes(force[here], ext.low[here], ext.low_step[here], ext.high[here], ext.high_step[here], at)
+            if not inert:  # Love's rod: what passes through a section is known after the velocities
+                extremes(
+                    force[here], ext.low[here], ext.low_step[here], ext.high[here], ext.high_step[here], at
+                )
             known = slice(start, stop if stop < links else stop + 1)
             around = pulls[start : known.stop + 1]
             velocities(rod.push[known], rod.weight[known], gain, v[known], w[known], around)

@@ -197,7 +197,10 @@ def test_a_segment_too_short_for_the_ground_says_so_and_what_helps(desk) -> None
 
 def test_a_share_typed_in_hundredths_is_told_how_to_be_written(desk) -> None:
     at = desk(driven_pile())
-    assert problem_of(at.type_into("Efficiency", "80")) == "✕ Must be at most 1. 80 of a hundred is 0.8 or '80 %'."
+    assert (
+        problem_of(at.type_into("Efficiency", "80"))
+        == "✕ Must be at most 1. 80 of a hundred is 0.8 or '80 %'."
+    )
 
 
 def test_the_last_segment_says_why_it_stays(desk, qtbot) -> None:
