@@ -141,6 +141,9 @@ def _window(arguments: argparse.Namespace) -> int:
     reason = explain_no_display()
     if reason:
         return _say(reason, NO_WINDOW)
+    from solver.warm_up import begin_beside
+
+    begin_beside()
     from app.frame.main_loop import run_window
 
     return run_window(arguments.file, signals)

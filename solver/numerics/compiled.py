@@ -44,6 +44,8 @@ def _cache_folder() -> tuple[Path | None, str | None]:
 
 
 _folder, cache_problem = _cache_folder()
+#: Whether kernels were kept in the folder when this process began.
+were_kept = _folder is not None and any(_folder.iterdir())
 if _folder is not None:
     numba.config.CACHE_DIR = str(_folder)  # type: ignore[attr-defined]
 

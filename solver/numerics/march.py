@@ -197,7 +197,8 @@ def march(rod, ground, bounds, motion, ext, rec, ends, sums, load, first, count,
     shafts = len(ground.r) + len(ground.power_nodes) + len(ground.radiation_nodes) > 0
     toes, jointed, walled = len(bounds.toe_par) > 0, len(bounds.joints) > 0, bounds.wall[0] < np.inf
     rams, train_heard, strikes = len(bounds.train_links) > 0, len(rec.ram) > 0, len(ext.second) > 0
-    done, waiting = 0, False
+    done = 0
+    waiting = done > 0
     while done < count:
         step, pull = first + done, load[done]
         driven = step < rod.driven[1]
