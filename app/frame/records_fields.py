@@ -96,6 +96,26 @@ class RecordsFields(QScrollArea):
         self.commas.setChecked(kept.decimal_comma)
         self.mark = QCheckBox("Byte order mark for spreadsheets")
         self.mark.setChecked(kept.byte_order_mark)
+        for widget, meaning in (
+            (self.cases, "The cases whose records are saved, each to its own file."),
+            (self.gauges, "The gauges whose records are saved."),
+            (self.columns, "What is written of each gauge, beside the time."),
+            (self.units, "The units of all columns; each heading names its own."),
+            (self.sign, "What forces, stresses, strains and waves are positive in."),
+            (
+                self.rate,
+                "Samples in each millisecond, with a filter before; empty for every step of the solver.",
+            ),
+            (self.start, "The first moment that is written; empty for the blow."),
+            (self.end, "The last moment that is written; empty for the end of the run."),
+            (self.zero, "The moment that is written as time 0; empty for the blow."),
+            (self.digits, "Digits of each number, 1 to 17; empty for all that count."),
+            (self.commas, "As spreadsheets of many countries expect it."),
+            (self.mark, "Three bytes at the head of a CSV by which some spreadsheets know UTF-8."),
+            *((box, "A kind of file that is written.") for box in self.formats.values()),
+        ):
+            widget.setToolTip(meaning)
+        self.setAccessibleName("Choices of the records")
         self._compose()
         self._connect()
 

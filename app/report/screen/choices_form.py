@@ -36,6 +36,15 @@ from app.report.choices import (
 )
 from app.report.screen.ordered_list import OrderedList
 
+#: What the choices are for.
+MEANINGS = {
+    "Paper": "Size of the pages of the PDF.",
+    "Dates": "How dates are written.",
+    "Section of the own paragraph": "The section that begins with a paragraph of your own.",
+    "Own paragraph": "A paragraph of your own, at the head of the section chosen above.",
+    "Logo": "A picture for the title page, by its name beside the project's file.",
+}
+
 
 class _OwnWords(QPlainTextEdit):
     """Takes a paragraph; hands it over when it is left."""
@@ -100,8 +109,11 @@ class ChoicesForm(QScrollArea):
         )
         for widget, name in named:
             widget.setAccessibleName(name)
+            widget.setToolTip(MEANINGS[name])
         for key, field in self.particulars.items():
             field.setAccessibleName(PARTICULARS[key])
+            field.setToolTip("Stands on the title page, where it is given.")
+        self.commas.setToolTip("Numbers are written as 12,5 instead of 12.5.")
 
     def _compose(self) -> None:
         inside = QWidget()
