@@ -102,10 +102,6 @@ class RecordsFields(QScrollArea):
             (self.columns, "What is written of each gauge, beside the time."),
             (self.units, "The units of all columns; each heading names its own."),
             (self.sign, "What forces, stresses, strains and waves are positive in."),
-            (
-                self.rate,
-                "Samples in each millisecond, with a filter before; empty for every step of the solver.",
-            ),
             (self.start, "The first moment that is written; empty for the blow."),
             (self.end, "The last moment that is written; empty for the end of the run."),
             (self.zero, "The moment that is written as time 0; empty for the blow."),
