@@ -2,14 +2,49 @@
 
 from __future__ import annotations
 
-from app.set_sheet.words import force_text, level_below, level_text, varied_text
+from typing import NamedTuple
+
+from app.set_sheet.depth_words import limit_passed_words, refusal_words
+from app.set_sheet.files import Answers
+from app.set_sheet.words import (
+    beside_criterion,
+    criterion,
+    force_text,
+    level_below,
+    level_text,
+    on_the_way,
+    varied_text,
+)
 from app.units import Units, rounded
 from app.words import percent
-from solver.studies import Cell
+from solver.studies import Cell, Sheet
 from solver.studies.plan import at_value
 from solver.studies.questions import ShownResistance
 from solver.studies.safe_blow import SafeBlow
 from solver.studies.uncertainty import Bands, Sampled
+
+
+class Told(NamedTuple):
+    """All that the answers say: when to stop, what is needed beside that, and what else was found out."""
+
+    criterion: str
+    beside: tuple[str, ...] = ()
+    further: tuple[str, ...] = ()
+
+
+def told_of(answers: Answers, sheet: Sheet, units: Units) -> Told:
+    if answers.stop_at is None:
+        return Told("")
+    beside = [beside_criterion(answers.stop_at, units), on_the_way(sheet, answers.stop_at, units)]
+    if answers.safe is not None:
+        beside.append(safe_words(answers.safe, answers.stop_at, units))
+    further = [sampled_words(answers.sampled, units)] if answers.sampled is not None else []
+    if answers.depths is not None:
+        words = f"{refusal_words(answers.depths, units)}; {limit_passed_words(answers.depths, units)}"
+        further.append(f"Down to depth: {words}.")
+    elif answers.no_depths:
+        further.append(f"Down to depth: {answers.no_depths}")
+    return Told(criterion(answers.stop_at, units), tuple(words for words in beside if words), tuple(further))
 
 
 def safe_words(answer: SafeBlow, cell: Cell, units: Units) -> str:
@@ -33,8 +68,15 @@ def safe_words(answer: SafeBlow, cell: Cell, units: Units) -> str:
     above = " Above it a limit is passed only after the ram has struck again." if later else ""
     return (
         f"Up to a {what} of {level_below(answer.level, units)} every stress stays within its limit at {at} "
-        f"(to {percent(answer.tolerance)}).{above}{smaller}"
+        f"(to {percent(answer.tolerance)}).{_stop_with_it(answer, cell, units)}{above}{smaller}"
     )
+
+
+def _stop_with_it(answer: SafeBlow, asked: Cell, units: Units) -> str:
+    """Where the blow that was asked about is too hard: what set to stop at with the largest admissible one."""
+    if not asked.over or answer.cell is None or answer.cell.set is None or not answer.cell.moves:
+        return ""
+    return f" With it, stop at a mean set of {units.show(answer.cell.set, 'small_length', 2)} or less."
 
 
 def shown_words(answer: ShownResistance, units: Units) -> str:
@@ -97,4 +139,7 @@ def _ranges(bands: Bands, row: int, units: Units) -> str:
 def _passed(bands: Bands, row: int) -> str:
     if bands.over is None:
         return "No limit is given, so no probability can be told."
-    return f"A limit is passed with a probability of {percent(float(bands.over[row]))}."
+    over = float(bands.over[row])
+    if over in (0.0, 1.0):
+        return f"A limit is passed in {'none' if over == 0 else 'all'} of these samples."
+    return f"A limit is passed with a probability of {percent(over)}."

@@ -17,7 +17,7 @@ from app.set_sheet.scales import Scale, root_ticks, ticks
 from app.set_sheet.scene import Anchor, Area, Letters, Line, Mark, Scene, Words, fitted
 from app.set_sheet.words import PER
 from app.units import Units
-from solver.studies import Cell, Sheet
+from solver.studies import NO_SET, Cell, Sheet
 from solver.studies.uncertainty import Bands, Sampled
 
 BROKEN = (5.0, 3.5)
@@ -128,9 +128,9 @@ def limit_words(
     told = [units.show(value, "stress") for value in limits]
     beyond = [not scale.low <= side * value <= scale.high for value in limits]
     words = " and ".join(f"{text} (beyond)" if out else text for text, out in zip(told, beyond, strict=True))
-    texts = (
-        [f"{sign}, limit {words}", f"{sign}, {words}", sign] if told else [f"{sign}, no limit given", sign]
-    )
+    plain = " and ".join(told)
+    texts = [f"{sign}, limit {words}", f"{sign}, limit {plain}", f"{sign}, {plain}", f"limit {plain}"]
+    texts = texts if told else [f"{sign}, no limit given", f"{sign}, no limit", sign]
     anchor: Anchor = "right" if side > 0 else "left"
     at = (scale.stop if side > 0 else scale.start, y)
     scene.append(Words(at, fitted(texts, scale.stop - scale.start, letters), sign, "small", anchor))
@@ -152,7 +152,7 @@ def _bands(scene: Scene, frame: Frame, bands: Bands, units: Units) -> None:
     """From 10 to 90 % of the samples, and their middle as a pale line, in each panel that is sampled."""
     push = 1.0 if units.compression_positive else -1.0
     for scale, values, ink in (
-        (frame.set, np.maximum(bands.set, 0.0), "line"),
+        (frame.set, np.where(bands.set < NO_SET, 0.0, bands.set), "line"),
         (frame.stress, push * bands.compression, "compression"),
         (frame.stress, -push * bands.tension, "tension"),
     ):

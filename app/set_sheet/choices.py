@@ -5,6 +5,7 @@ from __future__ import annotations
 from typing import Any
 
 from PySide6.QtCore import Qt
+from PySide6.QtGui import QShowEvent
 from PySide6.QtWidgets import QComboBox, QHBoxLayout, QLabel, QPushButton, QScrollArea, QVBoxLayout, QWidget
 
 from app.document import Document
@@ -16,7 +17,7 @@ from app.set_sheet.fields import NumbersField
 from app.set_sheet.numbers_to_vary import numbers_to_vary
 from app.set_sheet.ranges import Ranges
 from app.set_sheet.sheet_solution import SheetSolution
-from app.set_sheet.words import PER, criterion, per_of
+from app.set_sheet.words import PER, beside_criterion, criterion, per_of
 from app.units import Units, units_of
 from solver.studies import resistance_of
 from solver.studies.plan import blow_pointer
@@ -48,7 +49,8 @@ class Choices(QScrollArea):
         self.per = _list("What blows are counted for", [(p, f"Blows per {p}") for p in PER])
         self.resistance = NumbersField("Resistance to reach", "Empty = that of the case.")
         self.value = NumbersField("with", "The blow to drive with; empty = that of the case.")
-        self.safe, self.stop_at, self.shown, self.samples_told = (_sentence() for _ in range(4))
+        self.safe, self.stop_at, self.beside, self.shown, self.samples_told = (_sentence() for _ in range(5))
+        self.stop_at.setProperty("role", "strong")
         self.measured = NumbersField("Measured set", "Mean set of the last blows, measured on site.")
         self.error = NumbersField("± reading error", "How far the mean set may be off.")
         self.samples = _list("How many samples", [(n, f"{n} samples") for n in SAMPLES])
@@ -72,7 +74,7 @@ class Choices(QScrollArea):
         run.addWidget(self.work_out)
         for title, parts in (
             ("What is varied", (self.lowest, self.highest, self.vary, self.pointer, self.values, self.per)),
-            ("What set to stop at", (self.resistance, self.value, self.stop_at, self.safe)),
+            ("What set to stop at", (self.resistance, self.value, self.stop_at, self.beside, self.safe)),
             ("What a measured set shows", (self.measured, self.error, self.shown)),
             ("Down to depth", (self.to_depth,)),
             ("What is not known", (self.ranges, run, self.samples_told)),
@@ -140,8 +142,14 @@ class Choices(QScrollArea):
 
     # -- following ----------------------------------------------------------------------------------------------------
 
+    def showEvent(self, event: QShowEvent) -> None:
+        super().showEvent(event)
+        self.follow()
+
     def follow(self) -> None:
         """Show what the project and the answers say; a field that is being typed in is left alone."""
+        if not self.isVisible():
+            return
         case, settings, plan = self._document.case, self._solution.settings, self._solution.plan
         units = units_of(self._document.project)
         ends = (plan.resistances[:1], plan.resistances[-1:]) if plan else ((), ())
@@ -181,6 +189,7 @@ class Choices(QScrollArea):
         solution, answers = self._solution, self._solution.answers
         asking = solution.state in ("solving", "answering")
         _say(self.stop_at, criterion(answers.stop_at, units) if answers.stop_at else "…" if asking else "")
+        _say(self.beside, beside_criterion(answers.stop_at, units) if answers.stop_at else "")
         safe = ""
         if answers.safe is not None and answers.stop_at is not None:
             safe = safe_words(answers.safe, answers.stop_at, units)

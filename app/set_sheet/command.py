@@ -8,10 +8,11 @@ from contextlib import nullcontext
 from dataclasses import dataclass
 from pathlib import Path
 
-from app.set_sheet.answer_words import safe_words, sampled_words
+from app.set_sheet.answer_words import told_of
+from app.set_sheet.depth_files import depth_csv
 from app.set_sheet.files import Answers, sheet_csv, sheet_json
 from app.set_sheet.printed import Page, page_pdf
-from app.set_sheet.words import criterion, told_in, unit_of
+from app.set_sheet.words import told_in, unit_of
 from app.units import NO_BREAK, Units, units_of
 from app.usable_project import load_usable
 from solver import Case, Project, ProjectError, SolveError
@@ -20,7 +21,7 @@ from solver.studies.cluster import on_cluster
 from solver.studies.plan import at_value
 from solver.studies.questions import point
 from solver.studies.safe_blow import safe_blow
-from solver.studies.settings import SheetSettings, settings_of
+from solver.studies.settings import DepthSettings, SheetSettings, depth_settings_of, settings_of
 from solver.studies.sheet import Solver
 from solver.studies.uncertainty import sampled
 
@@ -51,13 +52,13 @@ def write_sheet(path: Path, out: Path, choices: Choices) -> int:
             f"{path}: /cases: there is no case named '{choices.case}' (there are: {known})", UNUSABLE
         )
     try:
-        settings = settings_of(project)
+        settings, depth = settings_of(project), depth_settings_of(project)
     except StudyError as error:
         return _complain(f"{path}: {error}", UNUSABLE)
     try:
         on_machines = on_cluster(choices.cluster) if choices.cluster is not None else nullcontext()
         with told_in(units_of(project)), on_machines as solver:
-            sheet, answers = _solved(case, settings, choices, units_of(project), solver)
+            sheet, answers = _solved(case, settings, depth, choices, units_of(project), solver)
     except (StudyError, SolveError) as error:
         return _complain(f"The set sheet of case '{case.name}' cannot be made: {error}", FAILED)
     try:
@@ -70,7 +71,12 @@ def write_sheet(path: Path, out: Path, choices: Choices) -> int:
 
 
 def _solved(
-    case: Case, settings: SheetSettings, choices: Choices, units: Units, solver: Solver | None
+    case: Case,
+    settings: SheetSettings,
+    depth: DepthSettings,
+    choices: Choices,
+    units: Units,
+    solver: Solver | None,
 ) -> tuple[Sheet, Answers]:
     plan = settings.plan(case, unit_of(units))
     shown = not choices.quiet and sys.stderr.isatty()
@@ -92,33 +98,30 @@ def _solved(
             solver=solver,
             progress=_progress(choices.samples, "samples") if shown else None,
         )
-    return sheet, Answers(stop_at, safe, found)
+    depths, problem = None, ""
+    try:
+        depths = depth.study(case, solver=solver)
+    except StudyError as error:  # the sheet stands without it
+        problem = error.told(units.show)
+    return sheet, Answers(stop_at, safe, found, depths, problem)
 
 
 def _write(project: Project, sheet: Sheet, answers: Answers, settings: SheetSettings, out: Path) -> list[str]:
     """Write the three files; returns the sentences of the answers."""
     units = units_of(project)
-    told = sentences(answers, units)
-    page = Page(sheet, project.title, units, told[0], tuple(told[1:]), settings.per, answers.sampled)
+    told = told_of(answers, sheet, units)
+    page = Page(sheet, project.title, units, told, settings.per, answers.sampled, answers.depths)
     out.mkdir(parents=True, exist_ok=True)
     (out / "sheet.csv").write_text(sheet_csv(sheet, project.title), encoding="utf-8", newline="\n")
-    words = told[0].replace(NO_BREAK, " ")
+    words = told.criterion.replace(NO_BREAK, " ")
     (out / "sheet.json").write_text(
         sheet_json(sheet, project.title, answers, words), encoding="utf-8", newline="\n"
     )
+    if answers.depths is not None:
+        table = depth_csv(answers.depths, sheet.plan.case, project.title)
+        (out / "depth.csv").write_text(table, encoding="utf-8", newline="\n")
     (out / "sheet.pdf").write_bytes(page_pdf(page))
-    return told
-
-
-def sentences(answers: Answers, units: Units) -> list[str]:
-    """What the answers say: the criterion first."""
-    assert answers.stop_at is not None
-    found = [criterion(answers.stop_at, units)]
-    if answers.safe is not None:
-        found.append(safe_words(answers.safe, answers.stop_at, units))
-    if answers.sampled is not None:
-        found.append(sampled_words(answers.sampled, units))
-    return found
+    return [told.criterion, *told.beside, *told.further]
 
 
 def _progress(total: int, what: str) -> Callable[[int], None]:

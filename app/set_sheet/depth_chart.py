@@ -1,233 +1,282 @@
-"""The picture of a study of depths: depth downwards as on the member drawing, layers behind, a panel for each thing."""
+"""The picture of a study of depths: the member in its ground, and on the same axis what a blow does at each depth."""
 
 from __future__ import annotations
 
-from collections.abc import Callable
+from collections.abc import Callable, Sequence
+from dataclasses import dataclass
 from itertools import pairwise
 
+from app.set_sheet.chart import BROKEN, DOTTED, limit_words
+from app.set_sheet.frame import Rows, case_limits, numbers_below, panel, rows_of, spans_of
 from app.set_sheet.scales import Scale, number, root_ticks, ticks
-from app.set_sheet.scene import Anchor, Area, Line, Mark, Measure, Scene, Words
-from app.set_sheet.words import force_text
-from app.units import Units
+from app.set_sheet.scene import (
+    Anchor,
+    Area,
+    Letters,
+    Line,
+    Mark,
+    Scene,
+    Words,
+    box_of,
+    fitted,
+    overlap,
+    touches,
+)
+from app.units import NO_BREAK, Units
+from solver import Case
 from solver.studies.depth import REFUSAL, DepthPoint, Depths
 
-LEFT, RIGHT, GAP = 62.0, 16.0, 26.0
-TOP, BOTTOM = 62.0, 46.0
-BROKEN = (5.0, 3.5)
-SHARES = (0.28, 0.24, 0.28, 0.20)
+#: Panels: the member, resistances, set, stresses, time.
+SHARES = (0.17, 0.23, 0.2, 0.24, 0.16)
+#: Of what stands above the ground so much is drawn, as a share of the deepest penetration.
+ABOVE = 0.22
+#: Half of the member's width in the drawing.
+HALF = 6.0
 
 Across = Callable[[DepthPoint], float | None]
 
 
+@dataclass(frozen=True)
+class DepthFrame:
+    """Where the panels lie; `down` holds depths below the surface of the ground (m)."""
+
+    down: Scale
+    spans: list[tuple[float, float]]
+    rows: Rows
+    letters: Letters
+
+
+def depth_frame(
+    depths: Depths, case: Case, units: Units, width: float, height: float, letters: Letters
+) -> DepthFrame:
+    rows = rows_of(height, letters)
+    surface = case.ground.surface if case.ground else 0.0
+    deepest = max([p.penetration for p in depths.points] + [case.member.length - surface])
+    above = min(surface, ABOVE * deepest) + 0.02 * deepest
+    widest = max(letters.width(number(v), "small") for v in (units.number(deepest, "length") // 1, 88))
+    left = 1.2 * letters.line + 16 + widest
+    return DepthFrame(
+        Scale(-above, deepest * 1.04, rows.top, rows.foot), spans_of(left, width, SHARES), rows, letters
+    )
+
+
 def depth_chart(
-    depths: Depths,
-    layers: tuple[tuple[str, float, float], ...],
-    limits: dict[str, list[float]],
-    units: Units,
-    width: float,
-    height: float,
-    measure: Measure,
+    depths: Depths, case: Case, units: Units, width: float, height: float, letters: Letters
 ) -> Scene:
-    """Everything to draw. `layers`: name, top and bottom as depths below the surface of the ground (m)."""
+    """Everything to draw, back to front."""
+    frame = depth_frame(depths, case, units, width, height, letters)
     points = [p for p in depths.points if p.cell.set is not None]
-    deepest = max(p.penetration for p in depths.points)
-    down = Scale(0.0, deepest * 1.04, TOP, height - BOTTOM)
-    room = width - LEFT - RIGHT - 3 * GAP
-    starts = [LEFT + room * sum(SHARES[:i]) + GAP * i for i in range(4)]
-    spans = [(start, start + room * share) for start, share in zip(starts, SHARES, strict=True)]
     scene: Scene = []
-    _ground(scene, down, spans, layers, units, measure)
-    if not points:
-        return scene
-    _resistance(scene, down, spans[0], points, units)
-    _set(scene, down, spans[1], points, units)
-    _stress(scene, down, spans[2], points, limits, units)
-    _time(scene, down, spans[3], depths, units)
-    _named(scene, down, spans, depths, units)
+    _ground(scene, frame, case)
+    _axis(scene, frame, units)
+    at_surface = frame.down.at(0.0)
+    scene.append(
+        Line(((frame.spans[0][0], at_surface), (frame.spans[-1][1], at_surface)), "ground_line", 1.2)
+    )
+    _member(scene, frame, case)
+    if points:
+        _resistance(scene, frame, points, units)
+        _set(scene, frame, points, units)
+        _stress(scene, frame, points, case, units)
+        _time(scene, frame, depths)
+        _named(scene, frame, depths, units)
     return scene
 
 
-def _ground(
-    scene: Scene,
-    down: Scale,
-    spans: list[tuple[float, float]],
-    layers: tuple[tuple[str, float, float], ...],
-    units: Units,
-    measure: Measure,
-) -> None:
-    left, right = spans[0][0], spans[-1][1]
-    for index, (_name, top, bottom) in enumerate(layers):
-        y0, y1 = down.at(top), down.at(min(bottom, down.high))
-        if top < down.high and index % 2 == 0:
-            scene.append(Area(((left, y0), (right, y0), (right, y1), (left, y1)), "grid", 0.28))
+def _axis(scene: Scene, frame: DepthFrame, units: Units) -> None:
+    down, rows = frame.down, frame.rows
     one = 1 / units.number(1.0, "length")
-    for value in ticks(0.0, down.high / one, 9):
+    most = max(2, int((rows.foot - rows.top) / (1.8 * frame.letters.line)))
+    for value in ticks(0.0, down.high / one, min(most, 9)):
         y = down.at(value * one)
-        for start, stop in spans:
+        for start, stop in frame.spans[1:]:
             scene.append(Line(((start, y), (stop, y)), "grid"))
-        scene.append(Words((LEFT - 7, y + 4), number(value), "soft_ink", anchor="right"))
-    middle = (down.start + down.stop) / 2
-    scene.append(
-        Words((14, middle), f"Penetration, {units.unit('length')}", "ink", "small", "middle", turned=True)
-    )
-    for name, top, bottom in layers:
-        if top < down.high:
-            room = down.at(min(bottom, down.high)) - down.at(top)
-            if room > 14:
-                x = spans[0][1] - 4
-                scene.append(Words((x, down.at(top) + 13), name, "ground_line", "small", "right"))
+        at = (frame.spans[0][0] - 7, y + 0.28 * frame.letters.line)
+        scene.append(Words(at, number(value), "soft_ink", anchor="right"))
+    at = (0.6 * frame.letters.line + 2, (rows.top + rows.foot) / 2)
+    words = f"Below the ground surface, {units.unit('length')}"
+    scene.append(Words(at, words, "ink", "small", "middle", turned=True))
 
 
-def _panel(scene: Scene, down: Scale, scale: Scale, title: str, below: str) -> None:
-    scene.append(Line(((scale.start, down.stop), (scale.stop, down.stop)), "line"))
-    scene.append(Line(((scale.start, down.start), (scale.start, down.stop)), "line"))
-    scene.append(Words((scale.start, 16), title, "ink", "strong"))
-    middle = (scale.start + scale.stop) / 2
-    scene.append(Words((middle, down.stop + 38), below, "soft_ink", "small", "middle"))
+def _ground(scene: Scene, frame: DepthFrame, case: Case) -> None:
+    """Layers behind all panels, their names beside the member."""
+    down, letters = frame.down, frame.letters
+    left, right = frame.spans[0][0], frame.spans[-1][1]
+    name_at = left + 2 * HALF + 15
+    for index, (name, top, bottom) in enumerate(layers_of(case)):
+        if top >= down.high:
+            break
+        y0, y1 = down.at(top), down.at(min(bottom, down.high))
+        if index % 2 == 0:
+            scene.append(Area(((left, y0), (right, y0), (right, y1), (left, y1)), "grid", 0.28))
+        if y1 - y0 > 1.2 * letters.line:
+            text = fitted((name,), frame.spans[0][1] - name_at, letters)
+            scene.append(Words((name_at, y0 + letters.line), text, "ground_line"))
 
 
-def _grid(scene: Scene, down: Scale, scale: Scale, values: list[float], one: float) -> None:
-    taken = -1e9
-    for value in values:
-        x = scale.at(value * one)
-        scene.append(Line(((x, down.start), (x, down.stop)), "grid"))
-        if x - taken > 24:
-            scene.append(Words((x, down.stop + 16), number(value), "soft_ink", anchor="middle"))
-            taken = x
+def _member(scene: Scene, frame: DepthFrame, case: Case) -> None:
+    """As deep as the case has it; what stands far above the ground is cut off, with a sign that it goes on."""
+    down, start = frame.down, frame.spans[0][0]
+    surface = case.ground.surface if case.ground else 0.0
+    x, y = start + HALF + 10, -surface
+    for segment in case.member.segments:
+        top, bottom = max(y, down.low), y + segment.length
+        if bottom > down.low:
+            corners = [(x - HALF, down.at(top)), (x + HALF, down.at(top))]
+            corners += [(x + HALF, down.at(bottom)), (x - HALF, down.at(bottom))]
+            scene.append(Area(tuple(corners), "line", 0.45))
+            scene.append(Line((*corners, corners[0]), "soft_ink"))
+        y = bottom
+    if -surface < down.low:
+        cut = down.at(down.low)
+        scene.append(Line(((x - HALF - 4, cut + 5), (x + HALF + 4, cut - 1)), "soft_ink", 1.4))
+        scene.append(Line(((x - HALF - 4, cut + 9), (x + HALF + 4, cut + 3)), "soft_ink", 1.4))
+    title = fitted(("Member",), frame.spans[0][1] - start + 20, frame.letters, "strong")
+    scene.append(Words((start, frame.rows.title), title, "ink", "strong"))
 
 
-def _curve(scene: Scene, down: Scale, points: list[DepthPoint], across: Across, ink: str, shape: int) -> None:
-    placed = [(p, (x, down.at(p.penetration))) for p in points if (x := across(p)) is not None]
+def layers_of(case: Case) -> tuple[tuple[str, float, float], ...]:
+    """Name, top and bottom of each layer as depths below the surface of the ground, m."""
+    found, top = [], 0.0
+    for layer in case.ground.layers if case.ground else ():
+        found.append((layer.name, top, top + layer.thickness))
+        top += layer.thickness
+    return tuple(found)
+
+
+def _curve(
+    scene: Scene, frame: DepthFrame, points: Sequence[DepthPoint], across: Across, ink: str, shape: int = 0
+) -> None:
+    placed = [(p, (x, frame.down.at(p.penetration))) for p in points if (x := across(p)) is not None]
     for (a, first), (b, second) in pairwise(placed):
         scene.append(Line((first, second), ink, 1.6, BROKEN if a.cell.over or b.cell.over else ()))
     for point, at in placed:
         scene.append(Mark(at, shape, ink, filled=point.cell.moves, size=3.0))
 
 
-def _resistance(
-    scene: Scene, down: Scale, span: tuple[float, float], points: list[DepthPoint], units: Units
-) -> None:
-    scale = Scale(0.0, max(p.shaft + p.toe for p in points) * 1.1, *span)
-    _panel(scene, down, scale, "Resistance while driving", units.unit("force"))
-    one = 1 / units.number(1.0, "force")
-    _grid(scene, down, scale, ticks(0.0, scale.high / one, 4), one)
-    _curve(scene, down, points, lambda p: scale.at(p.shaft), "soft_ink", 1)
-    _curve(scene, down, points, lambda p: scale.at(p.shaft + p.toe), "ink", 0)
-    first = points[0]
-    y = down.start - 8
-    scene.append(Words((scale.at(first.shaft), y), "shaft", "soft_ink", "small", "left"))
-    scene.append(Words((span[1], y), "with the toe", "ink", "small", "right"))
-
-
-def _set(
-    scene: Scene, down: Scale, span: tuple[float, float], points: list[DepthPoint], units: Units
-) -> None:
-    largest = max([p.cell.set or 0.0 for p in points] + [0.002])
-    scale = Scale(0.0, largest * 1.08, *span, root=True)
-    unit = units.unit("small_length")
-    _panel(scene, down, scale, "Set per blow", f"{unit} (scale of square roots)")
-    one = 1 / units.number(1.0, "small_length")
-    _grid(scene, down, scale, root_ticks(scale.high / one), one)
-    x = scale.at(REFUSAL)
-    scene.append(Line(((x, down.start), (x, down.stop)), "ink", 1.0, (1.5, 2.5)))
-    scene.append(Words((x, down.start - 8), "refusal", "ink", "small"))
-    _curve(
-        scene, down, points, lambda p: scale.at(p.cell.set if p.cell.set and p.cell.moves else 0.0), "ink", 0
+def _resistance(scene: Scene, frame: DepthFrame, points: Sequence[DepthPoint], units: Units) -> None:
+    scale = Scale(0.0, max(p.shaft + p.toe for p in points) * 1.1, *frame.spans[1])
+    panel(
+        scene,
+        frame.rows,
+        scale,
+        "Resistance",
+        (f"{units.unit('force')} while driving", units.unit("force")),
+        frame.letters,
     )
+    one = 1 / units.number(1.0, "force")
+    numbers_below(scene, frame.rows, scale, ticks(0.0, scale.high / one, 4), one, frame.letters)
+    parts: tuple[tuple[str, Across, str], ...] = (
+        ("shaft", lambda p: scale.at(p.shaft), "soft_ink"),
+        ("toe", lambda p: scale.at(p.toe), "soft_ink"),
+        ("together", lambda p: scale.at(p.shaft + p.toe), "ink"),
+    )
+    x, y = scale.start, frame.rows.first
+    for index, (name, across, ink) in enumerate(parts):
+        shape = (1, 2, 0)[index]
+        _curve(scene, frame, points, across, ink, shape)
+        width = frame.letters.width(name, "small") + 14
+        if x + width > scale.stop + 8 and x > scale.start:
+            x, y = scale.start, frame.rows.second
+        scene.append(Mark((x + 4, y - 0.28 * frame.letters.line), shape, ink, size=3.0))
+        scene.append(Words((x + 11, y), name, ink))
+        x += width + 8
 
 
-def _stress(
-    scene: Scene,
-    down: Scale,
-    span: tuple[float, float],
-    points: list[DepthPoint],
-    limits: dict[str, list[float]],
-    units: Units,
-) -> None:
-    push = 1.0 if units.compression_positive else -1.0
+def _set(scene: Scene, frame: DepthFrame, points: Sequence[DepthPoint], units: Units) -> None:
+    largest = max([p.cell.set or 0.0 for p in points] + [0.002])
+    scale = Scale(0.0, largest * 1.08, *frame.spans[2], root=True)
+    unit, one = units.unit("small_length"), 1 / units.number(1.0, "small_length")
+    captions = (f"{unit} (scale of square roots)", f"{unit}, square roots", unit)
+    panel(scene, frame.rows, scale, "Set per blow", captions, frame.letters)
+    numbers_below(scene, frame.rows, scale, root_ticks(scale.high / one), one, frame.letters)
+    x = scale.at(REFUSAL)
+    if x < scale.stop:
+        scene.append(Line(((x, frame.rows.foot), (x, frame.rows.top)), "ink", 1.0, DOTTED))
+    words = f"refusal below {units.show(REFUSAL, 'small_length', 2)}"
+    text = fitted((words, "refusal"), scale.stop - scale.start + 12, frame.letters)
+    scene.append(Words((scale.start, frame.rows.second), text, "soft_ink"))
+    at_set: Across = lambda p: scale.at(p.cell.set if p.cell.set and p.cell.moves else 0.0)  # noqa: E731
+    _curve(scene, frame, points, at_set, "ink")
+
+
+def _stress(scene: Scene, frame: DepthFrame, points: Sequence[DepthPoint], case: Case, units: Units) -> None:
+    push, limits = (1 if units.compression_positive else -1), case_limits(case)
     most = {
         "compression": max(p.cell.compression.peak.value for p in points if p.cell.compression),
         "tension": max(p.cell.tension.peak.value for p in points if p.cell.tension),
     }
     most["tension"] = max(most["tension"], 0.12 * most["compression"])
     reach = {s: max([v, *(x for x in limits[s] if x < 1.8 * v)]) * 1.1 for s, v in most.items()}
-    low, high = (
-        (-reach["tension"], reach["compression"]) if push > 0 else (-reach["compression"], reach["tension"])
+    first, second = ("tension", "compression") if push > 0 else ("compression", "tension")
+    scale = Scale(-reach[first], reach[second], *frame.spans[3])
+    unit, one = units.unit("stress"), 1 / units.number(1.0, "stress")
+    panel(
+        scene,
+        frame.rows,
+        scale,
+        "Peak stresses",
+        (f"{unit}, {second} positive", f"{unit}, {second} +", unit),
+        frame.letters,
     )
-    scale = Scale(low, high, *span)
-    positive = "compression" if push > 0 else "tension"
-    _panel(scene, down, scale, "Peak stresses", f"{units.unit('stress')}, {positive} positive")
-    one = 1 / units.number(1.0, "stress")
-    _grid(scene, down, scale, ticks(low / one, high / one, 5), one)
-    for sign, side in (("compression", push), ("tension", -push)):
-        anchor: Anchor = "right" if side > 0 else "left"
-        edge = scale.stop if side > 0 else scale.start
-        beyond = [v for v in limits[sign] if not low <= side * v <= high]
-        words = f"{sign}, limit {units.show(beyond[0], 'stress')}" if beyond else sign
-        words = words if limits[sign] else f"{sign}, no limit"
-        scene.append(Words((edge, down.start - 24), words, sign, "small", anchor))
+    numbers_below(scene, frame.rows, scale, ticks(scale.low / one, scale.high / one, 5), one, frame.letters)
+    for sign, side, y in (("compression", push, frame.rows.first), ("tension", -push, frame.rows.second)):
+        limit_words(scene, scale, sign, limits[sign], side, y, frame.letters, units)
         for value in limits[sign]:
-            if value not in beyond:
+            if scale.low <= side * value <= scale.high:
                 x = scale.at(side * value)
-                scene.append(Line(((x, down.start), (x, down.stop)), sign, 1.0, (1.5, 2.5)))
-                scene.append(
-                    Words((x, down.start - 8), f"limit {units.show(value, 'stress')}", sign, "small", anchor)
-                )
-    _curve(scene, down, points, lambda p: _peak(p, "compression", scale, push), "compression", 0)
-    _curve(scene, down, points, lambda p: _peak(p, "tension", scale, -push), "tension", 0)
+                scene.append(Line(((x, frame.rows.foot), (x, frame.rows.top)), sign, 1.0, DOTTED))
+        _curve(scene, frame, points, _peak(sign, scale, side), sign)
 
 
-def _peak(point: DepthPoint, sign: str, scale: Scale, side: float) -> float | None:
-    finding = point.cell.compression if sign == "compression" else point.cell.tension
-    return None if finding is None else scale.at(side * finding.peak.value)
+def _peak(sign: str, scale: Scale, side: int) -> Across:
+    def across(point: DepthPoint) -> float | None:
+        finding = point.cell.compression if sign == "compression" else point.cell.tension
+        return None if finding is None else scale.at(side * finding.peak.value)
+
+    return across
 
 
-def _time(scene: Scene, down: Scale, span: tuple[float, float], depths: Depths, units: Units) -> None:
-    known = [(p, s) for p, s in zip(depths.points, depths.seconds, strict=True) if s < float("inf")]
-    scale = Scale(0.0, max([s / 60 for _p, s in known] + [0.1]) * 1.1, *span)
-    _panel(scene, down, scale, "Driving time", "minutes from the first depth")
-    _grid(scene, down, scale, ticks(0.0, scale.high, 3), 1.0)
-    at = {p.penetration: scale.at(s / 60) for p, s in known}
-    _curve(scene, down, [p for p, _s in known], lambda p: at[p.penetration], "ink", 0)
+def _time(scene: Scene, frame: DepthFrame, depths: Depths) -> None:
+    known = {
+        p.penetration: s / 60 for p, s in zip(depths.points, depths.seconds, strict=True) if s < float("inf")
+    }
+    scale = Scale(0.0, max([*known.values(), 0.1]) * 1.1, *frame.spans[4])
+    panel(
+        scene, frame.rows, scale, "Driving time", ("minutes from the first depth", "minutes"), frame.letters
+    )
+    numbers_below(scene, frame.rows, scale, ticks(0.0, scale.high, 3), 1.0, frame.letters)
+    points = [p for p in depths.points if p.penetration in known and p.cell.set is not None]
+    _curve(scene, frame, points, lambda p: scale.at(known[p.penetration]), "ink")
 
 
-def _named(scene: Scene, down: Scale, spans: list[tuple[float, float]], depths: Depths, units: Units) -> None:
-    """The first depth where the member refuses, and where a limit is passed."""
-    for point, span, words in (
-        (depths.first_refusal, spans[1], "refuses from"),
-        (depths.first_over, spans[2], "✕ limit passed from"),
+def _named(scene: Scene, frame: DepthFrame, depths: Depths, units: Units) -> None:
+    """The first depth where the member refuses, and where a limit is passed, written where no curve runs."""
+    for point, (start, stop), words in (
+        (depths.first_refusal, frame.spans[2], "refuses from"),
+        (depths.first_over, frame.spans[3], "✕ limit passed from"),
     ):
-        if point is not None:
-            y = down.at(point.penetration)
-            scene.append(Line(((span[0], y), (span[1], y)), "over", 1.2))
-            text = f"{words} {units.show(point.penetration, 'length')}"
-            scene.append(Words((span[1] - 4, y - 5), text, "over", "small", "right"))
-
-
-def depth_summary(depths: Depths, units: Units) -> str:
-    """One line below the picture."""
-    last = depths.points[-1]
-    parts = [f"At {units.show(last.penetration, 'length')}: {force_text(last.shaft + last.toe, units)}"]
-    blows, seconds = depths.blows[-1], depths.seconds[-1]
-    first = units.show(depths.points[0].penetration, "length")
-    if blows < float("inf"):
-        parts.append(f"{blows:.0f} blows and {seconds / 60:.0f} minutes from {first} on")
-    refusal, over = depths.first_refusal, depths.first_over
-    if refusal is None:
-        parts.append("the member does not refuse on the way")
-    else:
-        parts.append(
-            f"refuses at {units.show(refusal.penetration, 'length')} (set below {units.show(REFUSAL, 'small_length')})"
+        if point is None:
+            continue
+        y = frame.down.at(point.penetration)
+        scene.append(Line(((start, y), (stop, y)), "over", 1.2))
+        depth = units.show(point.penetration, "length")
+        below = y + 0.9 * frame.letters.line
+        sides: tuple[tuple[float, Anchor], ...] = ((stop - 3, "right"), (start + 3, "left"))
+        candidates = [
+            Words((x, at), text, "over", "small", anchor)
+            for text in (f"{words} {depth}", f"✕ {depth}", f"✕ {depth.split(NO_BREAK)[0]}")
+            for x, anchor in sides
+            for at in (y - 4, below)
+        ]
+        inside = [w for w in candidates if frame.letters.width(w.text, "small") < stop - start - 6]
+        scene.append(
+            next((w for w in inside if _clear(scene, w, frame)), inside[-1] if inside else candidates[-1])
         )
-    if over is not None and over.cell.worst is not None:
-        sign, stress = over.cell.worst
-        place = f"{stress.segment} at {units.show(stress.position, 'length')}"
-        parts.append(f"✕ {sign} limit passed from {units.show(over.penetration, 'length')} on, in {place}")
-    elif any(p.cell.share is not None for p in depths.points):
-        parts.append("✓ within limits all the way")
-    else:
-        parts.append("no limit given")
-    failed = [p for p in depths.points if p.cell.problem]
-    if failed:
-        parts.append(f"not solved at {units.show(failed[0].penetration, 'length')}: {failed[0].cell.problem}")
-    return " · ".join(parts)
+
+
+def _clear(scene: Scene, words: Words, frame: DepthFrame) -> bool:
+    box = box_of(words, frame.letters)
+    curves = [i for i in scene if isinstance(i, Line) and (i.width == 1.6 or i.dash == DOTTED)]
+    others = [box_of(i, frame.letters) for i in scene if isinstance(i, Words)]
+    return not any(touches(box, one) for one in curves) and not any(overlap(box, one) for one in others)

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from typing import Any
 
+from PySide6.QtGui import QShowEvent
 from PySide6.QtWidgets import QLabel, QVBoxLayout, QWidget
 
 from app.document import Document
@@ -25,6 +26,7 @@ class DepthChoices(QWidget):
     def __init__(self, document: Document, parent: QWidget | None = None) -> None:
         super().__init__(parent)
         self._document = document
+        self._half: tuple[tuple[float, ...], tuple[float, ...]] | None = None
         self.penetrations = NumbersField("Depths", "Penetrations; empty = twelve even steps.", most=200)
         self.pace = NumbersField("Blows a minute", "For the driving time; empty = 40.")
         self.penetrations.entered.connect(lambda given: self._set("penetrations", list(given) or None))
@@ -35,13 +37,23 @@ class DepthChoices(QWidget):
         self._column = QVBoxLayout(self)
         self._column.setContentsMargins(0, 0, 0, 0)
         self._column.setSpacing(GAP)
-        for widget in (self.penetrations, self.pace, lead):
+        self.toe_depths = NumbersField("Toe changes at", "Depths; empty = the toe as in the case.", most=20)
+        self.toe_values = NumbersField("to", "Toe resistances at these depths, linear between them.", most=20)
+        self.toe_depths.entered.connect(lambda given: self._set_toe(given, None))
+        self.toe_values.entered.connect(lambda given: self._set_toe(None, given))
+        for widget in (self.penetrations, self.pace, self.toe_depths, self.toe_values, lead):
             self._column.addWidget(widget)
         document.changed.connect(self.follow)
         self.follow()
 
+    def showEvent(self, event: QShowEvent) -> None:
+        super().showEvent(event)
+        self.follow()
+
     def follow(self) -> None:
         """Show what the project says, with a row for each layer of the case at hand."""
+        if not self.isVisible():
+            return
         case, units, settings = self._document.case, units_of(self._document.project), self._settings()
         names = layer_names(case)
         if names != list(self.factors):
@@ -52,6 +64,14 @@ class DepthChoices(QWidget):
         self.pace.show_values(
             None if pace == DepthSettings().blows_per_minute else (pace,), (40.0,), "none", units
         )
+        toe = case.ground is not None and case.ground.toe is not None and case.far_end.kind == "ground"
+        depths, values = _columns(settings.toe_at) if settings.toe_at else (None, None)
+        own = [case.ground.toe.resistance] if toe and case.ground and case.ground.toe else []
+        if not self._half:
+            self.toe_depths.show_values(depths, (), "length", units)
+            self.toe_values.show_values(values, own, "force", units)
+        self.toe_depths.setVisible(toe)
+        self.toe_values.setVisible(toe)
         for name, row in self.factors.items():
             factor = settings.factors.get(name)
             row.show_values(None if factor is None else (factor,), (1.0,), "none", Units())
@@ -80,6 +100,20 @@ class DepthChoices(QWidget):
         factors = {**self._settings().factors, name: value}
         self._set("factors", {k: v for k, v in factors.items() if v is not None} or None)
 
+    def _set_toe(self, depths: tuple[float, ...] | None, values: tuple[float, ...] | None) -> None:
+        """One of the two rows is new; they go into the project together, once they have as many numbers."""
+        kept = self._half or _columns(self._settings().toe_at)
+        depths, values = kept[0] if depths is None else depths, kept[1] if values is None else values
+        self._half = None
+        if depths and values and len(depths) == len(values):
+            self._set("toe_at", [list(pair) for pair in zip(depths, values, strict=True)])
+        elif not depths and not values:
+            self._set("toe_at", None)
+        else:
+            self._half = (depths, values)
+            fewer = self.toe_values if len(values) < len(depths) else self.toe_depths
+            fewer.refuse(f"{len(depths)} depths need as many resistances; {len(values)} are given.")
+
     def _set(self, key: str, value: Any) -> None:
         def change(tree: dict[str, Any]) -> None:
             studies = tree.get("studies") or {}
@@ -89,6 +123,10 @@ class DepthChoices(QWidget):
             tree["studies"] = ({**others, "depth": kept} if kept else others) or None
 
         self._document.edit_tree("Change the study of depths", change)
+
+
+def _columns(pairs: tuple[tuple[float, float], ...]) -> tuple[tuple[float, ...], tuple[float, ...]]:
+    return tuple(depth for depth, _value in pairs), tuple(value for _depth, value in pairs)
 
 
 def layer_names(case: Case) -> list[str]:

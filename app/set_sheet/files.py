@@ -9,9 +9,11 @@ from dataclasses import dataclass
 from typing import Any
 
 from app import __version__
+from app.set_sheet.depth_files import depth_tree
 from app.words import LIMIT_CAUTION, MODEL_CAUTION
 from solver.answer.findings import StressFinding
 from solver.studies import Cell, Sheet
+from solver.studies.depth import Depths
 from solver.studies.safe_blow import SafeBlow
 from solver.studies.uncertainty import Bands, Sampled
 
@@ -83,11 +85,14 @@ def _one_line(text: str) -> str:
 
 @dataclass(frozen=True)
 class Answers:
-    """To the questions of the settings: the point to stop at, the largest blow, and the samples where asked for."""
+    """To the questions of the settings: the point to stop at, the largest blow, the samples where asked for, and the
+    study of depths, or why there is none."""
 
     stop_at: Cell | None = None
     safe: SafeBlow | None = None
     sampled: Sampled | None = None
+    depths: Depths | None = None
+    no_depths: str = ""
 
 
 def sheet_json(sheet: Sheet, title: str, answers: Answers, criterion: str) -> str:
@@ -122,6 +127,8 @@ def sheet_json(sheet: Sheet, title: str, answers: Answers, criterion: str) -> st
         }
     if answers.sampled is not None:
         tree["not_known"] = _sampled(answers.sampled)
+    if answers.depths is not None:
+        tree["depth"] = depth_tree(answers.depths)
     return json.dumps(tree, indent=2, ensure_ascii=False) + "\n"
 
 

@@ -17,7 +17,7 @@ def label_lines(scene: Scene, frame: Frame, sheet: Sheet, units: Units) -> None:
     for words in _names(frame, sheet, units):
         scene.append(words)
         taken.append(box_of(words, frame.letters))
-    lines = [i for i in scene if isinstance(i, Line) and i.ink == "ink"]
+    lines = [i for i in scene if isinstance(i, Line) and (i.ink == "ink" or i.dash)]
     marks = [i for i in scene if isinstance(i, Mark)]
     for candidates in (*_breaches(frame, sheet, units), _still(frame, sheet)):
         for words in candidates:
@@ -32,7 +32,7 @@ def _free(box: Box, frame: Frame, lines: list[Line], marks: list[Mark], taken: l
     inside = (
         frame.set.start < box[0]
         and box[2] < frame.set.stop
-        and frame.rows.top < box[1] < box[3] < frame.rows.foot
+        and frame.rows.top + 2 < box[1] < box[3] < frame.rows.foot
     )
     return (
         inside

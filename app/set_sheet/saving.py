@@ -10,6 +10,9 @@ from PySide6.QtWidgets import QFileDialog, QWidget
 
 from app.document import Document
 from app.export import folder_names
+from app.set_sheet.answer_words import told_of
+from app.set_sheet.depth_files import depth_csv
+from app.set_sheet.depth_solution import DepthSolution
 from app.set_sheet.files import Answers, sheet_csv
 from app.set_sheet.sheet_solution import SheetSolution
 from app.units import units_of
@@ -20,9 +23,11 @@ class Saving(QObject):
 
     told = Signal(str, str)
 
-    def __init__(self, document: Document, solution: SheetSolution, parent: QWidget) -> None:
+    def __init__(
+        self, document: Document, solution: SheetSolution, depth: DepthSolution, parent: QWidget
+    ) -> None:
         super().__init__(parent)
-        self._document, self._solution, self._window = document, solution, parent
+        self._document, self._solution, self._depth, self._window = document, solution, depth, parent
 
     def ask_page(self) -> bool:
         return self._ask("Save the page for the rig", "sheet.pdf", "PDF (*.pdf)", self.page)
@@ -32,27 +37,28 @@ class Saving(QObject):
 
     def page(self) -> bytes:
         """The page of what is on the screen."""
-        from app.set_sheet.command import sentences  # with what prints, which takes its time to be read
-        from app.set_sheet.printed import Page, page_pdf
+        from app.set_sheet.printed import Page, page_pdf  # with what prints, which takes its time to be read
 
         sheet, units = self._solution.sheet, units_of(self._document.project)
         assert sheet is not None
-        found = self._solution.answers
-        told = (
-            sentences(Answers(found.stop_at, found.safe, self._solution.sampled), units)
-            if found.stop_at
-            else [""]
-        )
-        per, sampled = self._solution.settings.per, self._solution.sampled
-        return page_pdf(
-            Page(sheet, self._document.project.title, units, told[0], tuple(told[1:]), per, sampled)
-        )
+        found, sampled, depths = self._solution.answers, self._solution.sampled, self._depth.fresh
+        answers = Answers(found.stop_at, found.safe, sampled, depths, self._depth.problem)
+        title, per = self._document.project.title, self._solution.settings.per
+        return page_pdf(Page(sheet, title, units, told_of(answers, sheet, units), per, sampled, depths))
 
     def table(self) -> bytes:
         """The table of what is on the screen, in SI units."""
         sheet = self._solution.sheet
         assert sheet is not None
         return sheet_csv(sheet, self._document.project.title).encode("utf-8")
+
+    def ask_depths(self) -> bool:
+        return self._ask("Save the table over depth", "depth.csv", "CSV (*.csv)", self.depths)
+
+    def depths(self) -> bytes:
+        """The table over depth of what is on the screen, in SI units."""
+        assert self._depth.depths is not None
+        return depth_csv(self._depth.depths, self._depth.case, self._document.project.title).encode("utf-8")
 
     def _ask(self, title: str, name: str, kinds: str, made: Callable[[], bytes]) -> bool:
         folder = self._document.folder or Path.home()

@@ -107,7 +107,8 @@ class SheetSolution(QObject):
             return SheetSettings()
 
     def look(self, on: bool) -> None:
-        """Whether the sheet is on the screen; it is solved only then."""
+        """Whether the sheet is on the screen. What is under way when it goes is finished, unless the project
+        changes."""
         self._looked = on
         if on:
             self._follow()
@@ -174,19 +175,32 @@ class SheetSolution(QObject):
             self.changed.emit()
 
     def _follow(self) -> None:
-        if self._looked:
-            try:
-                project = self._document.project
-                key = (self._document.case, settings_of(project), units_of(project).system)
-            except StudyError as error:
-                self._refuse(str(error))
-                return
-            self._forget_samples_of_others(key[1])
-            if self._key is None or not _same(key, self._key):
-                self.state, self.message = "solving", ""
-                self._timer.start()
-            self._key = key
+        if not self._looked:
+            self._let_go()
+            return
+        try:
+            project = self._document.project
+            key = (self._document.case, settings_of(project), units_of(project).system)
+        except StudyError as error:
+            self._refuse(str(error))
+            return
+        self._forget_samples_of_others(key[1])
+        if self._key is None or not _same(key, self._key):
+            self._aside.drop()
+            self.state, self.message = "solving", ""
+            self._timer.start()
+        self._key = key
         self.changed.emit()
+
+    def _let_go(self) -> None:
+        """An edit that nobody watches from here: end what is under way, and begin again when the sheet is looked at."""
+        if self.state in ("solving", "answering"):
+            self._timer.stop()
+            self._aside.drop()
+            self._key, self.state = None, "waiting"
+        if self.samples_done is not None:
+            self._samples.drop()
+            self.samples_done = None
 
     def _forget_samples_of_others(self, settings: SheetSettings) -> None:
         """Drop the bands, or stop the samples, that were asked for with other ranges."""

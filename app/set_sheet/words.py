@@ -123,14 +123,28 @@ def criterion(cell: Cell, units: Units) -> str:
         )
     if cell.over:
         return f"Do not drive with a {blow}: a limit is passed at {resistance} (the set would be {measured})."
-    refuses = ""
-    if cell.set is not None and cell.set < REFUSAL:
-        least = units.show(REFUSAL, "small_length", 2)
-        refuses = f" Less than {least} a blow is usually called refusal: check it by other means."
-    return (
-        f"Stop when the mean set of the last 10 blows is {measured} or less with a {blow}: that shows {resistance}."
-        f"{refuses}"
-    )
+    return f"Stop when the mean set of the last 10 blows is {measured} or less with a {blow}: that shows {resistance}."
+
+
+def beside_criterion(cell: Cell, units: Units) -> str:
+    """What the person at the rig needs with the criterion; "" where there is nothing to stop at."""
+    if cell.set is None or not cell.moves or cell.over:
+        return ""
+    ten = f"10 blows then move the member by {units.show(10 * cell.set, 'small_length', 2)} or less."
+    if cell.set >= REFUSAL:
+        return ten
+    least = units.show(REFUSAL, "small_length", 2)
+    return f"{ten} Less than {least} a blow is usually called refusal: check it by other means."
+
+
+def on_the_way(sheet: Sheet, cell: Cell, units: Units) -> str:
+    """Where the blow that is driven with passes a limit before the resistance is reached; "" where it does not."""
+    lines = [index for index, level in enumerate(sheet.plan.levels) if level == cell.level]
+    before = [c for index in lines for c in sheet.line(index) if c.resistance < cell.resistance]
+    over = over_lines(before, units)
+    if over is None or cell.over:
+        return ""
+    return f"On the way there this blow passes a limit: {over[0]} {over[1]}. Drive with less there."
 
 
 def summary(sheet: Sheet, units: Units) -> str:

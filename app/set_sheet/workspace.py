@@ -18,15 +18,19 @@ from PySide6.QtWidgets import (
 
 from app.document import Document
 from app.look.spacing import GAP, SPACE
+from app.set_sheet.answer_words import bands_at
 from app.set_sheet.chart_view import ChartView
 from app.set_sheet.choices import Choices
+from app.set_sheet.depth_solution import DepthSolution
 from app.set_sheet.depth_view import DepthView
+from app.set_sheet.depth_words import depth_reading, depth_summary
 from app.set_sheet.saving import Saving
 from app.set_sheet.sheet_solution import SheetSolution
-from app.set_sheet.words import per_of, reading, summary
-from app.units import units_of
+from app.set_sheet.words import level_text, per_of, reading, summary
+from app.units import Units, units_of
 from app.words import LIMIT_CAUTION, MODEL_CAUTION
 from solver.studies import Cell
+from solver.studies.depth import DepthPoint
 
 NAME = "Set sheet"
 
@@ -39,6 +43,7 @@ class SetSheet(QWidget):
         self._document = document
         self.solution = SheetSolution(document, self)
         self._cell: Cell | None = None
+        self._depth_point: DepthPoint | None = None
         self.choices = Choices(document, self.solution, self)
         self.chart = ChartView(self)
         self.told = QLabel()
@@ -49,7 +54,8 @@ class SetSheet(QWidget):
         self.state = QLabel()
         self.over_resistance, self.over_depth = _chip("Over resistance"), _chip("Down to depth")
         self.over_resistance.setChecked(True)
-        self.to_depth = DepthView(document, self.follow, self)
+        self.by_depth = DepthSolution(document, self)
+        self.to_depth = DepthView(self.by_depth, self)
         self.progress = QProgressBar()
         self.progress.setTextVisible(False)
         self.progress.setRange(0, 1000)
@@ -57,12 +63,14 @@ class SetSheet(QWidget):
         self.stop = QPushButton("Stop")
         self.print_page = QPushButton("Page for the rig …")
         self.export = QPushButton("Table as CSV …")
-        self.saving = Saving(document, self.solution, self)
+        self.saving = Saving(document, self.solution, self.by_depth, self)
         self._compose()
         self.chart.pointed.connect(self._point)
         self.stop.clicked.connect(self._stop_or_go_on)
         self.print_page.clicked.connect(self.saving.ask_page)
-        self.export.clicked.connect(self.saving.ask_table)
+        self.export.clicked.connect(self._ask_table)
+        self.to_depth.pointed.connect(self._point_depth)
+        self.by_depth.changed.connect(self.follow)
         document.changed.connect(self.follow)
         self.solution.changed.connect(self.follow)
         self.follow()
@@ -101,7 +109,7 @@ class SetSheet(QWidget):
 
     def close_down(self) -> bool:
         """End the threads; False where one did not end in time."""
-        depth_ended = self.to_depth.close_down()
+        depth_ended = self.by_depth.close()
         return self.solution.close() and depth_ended
 
     def showEvent(self, event: QShowEvent) -> None:
@@ -113,7 +121,9 @@ class SetSheet(QWidget):
         super().hideEvent(event)
 
     def follow(self) -> None:
-        """Show what the solution says."""
+        """Show what the solution says; nothing while nobody sees it."""
+        if not self.isVisible():
+            return
         solution = self.solution
         units = units_of(self._document.project)
         per = per_of(units, solution.settings.per)
@@ -136,19 +146,53 @@ class SetSheet(QWidget):
         self.progress.setValue(round(1000 * solution.fraction))
         self.stop.setVisible(solving or solution.state in ("answering", "stopped"))
         _say(self.stop, "Solve" if solution.state == "stopped" else "Stop")
+        if self.over_depth.isChecked() or solution.state == "fresh":
+            self.by_depth.solve()
         ready = sheet is not None and sheet.complete and not refused
-        self.print_page.setEnabled(ready)
-        self.export.setEnabled(ready)
-        if self.over_depth.isChecked():
-            _say(self.told, self.to_depth.text)
-        elif self._cell is not None:
-            _say(self.told, reading(self._cell, per, units))
-        else:
-            _say(self.told, summary(sheet, units) if sheet is not None and sheet.cells else "")
+        self.print_page.setEnabled(ready and (self.by_depth.fresh is not None or bool(self.by_depth.problem)))
+        self.export.setEnabled(self.by_depth.fresh is not None if self.over_depth.isChecked() else ready)
+        self.to_depth.follow(units)
+        _say(
+            self.told,
+            self._depth_words(per, units) if self.over_depth.isChecked() else self._words(per, units),
+        )
+
+    def _words(self, per: str, units: Units) -> str:
+        sheet, sampled = self.solution.sheet, self.solution.sampled
+        if self._cell is not None:
+            bands = bands_at(sampled, self._cell, units) if sampled else ""
+            return "\n".join([reading(self._cell, per, units), *([bands] if bands else [])])
+        if sheet is None or not sheet.cells:
+            return ""
+        shaded = (
+            f"\nShaded: eight of ten samples with {level_text(sheet.plan.levels[0], units)}."
+            if sampled
+            else ""
+        )
+        return summary(sheet, units) + shaded
+
+    def _depth_words(self, per: str, units: Units) -> str:
+        if self.by_depth.problem:
+            return f"✕ {self.by_depth.problem}"
+        if self.by_depth.depths is None:
+            return "Solving …"
+        if self._depth_point is not None:
+            return depth_reading(self._depth_point, per, units)
+        return depth_summary(self.by_depth.depths, units)
 
     def _choose_picture(self) -> None:
         self.pictures.setCurrentWidget(self.to_depth if self.over_depth.isChecked() else self.chart)
         self.follow()
+
+    def _point_depth(self, point: DepthPoint | None) -> None:
+        self._depth_point = point
+        self.follow()
+
+    def _ask_table(self) -> None:
+        if self.over_depth.isChecked():
+            self.saving.ask_depths()
+        else:
+            self.saving.ask_table()
 
     def _point(self, cell: Cell | None) -> None:
         self._cell = cell

@@ -106,8 +106,8 @@ def sampled(
     workers: int | None = None,
     solver: Solver | None = None,
 ) -> Sampled | None:
-    """Solve `samples` variants, evenly over the lines and resistances of the plan; of these a tenth, or 50 where that
-    is more, at the resistance (N) and level that are `asked` for.
+    """Solve `samples` variants, evenly over the lines and resistances of the plan; of these a tenth, or up to 50,
+    at the resistance (N) and level that are `asked` for.
 
     `None` when `cancel` answered True. Raises `StudyError` where a range does not fit the case.
     """
@@ -132,7 +132,7 @@ def sampled(
 
 
 def _spots(plan: Plan, asked: tuple[float, Level] | None, samples: int) -> list[_Spot]:
-    extra = 0 if asked is None else max(FEWEST, samples // 10)
+    extra = 0 if asked is None else max(samples // 10, min(FEWEST, samples // 2))
     rows = len(plan.resistances)
     each = max(1, (samples - extra) // (rows * len(plan.levels)))
     spots = [

@@ -12,7 +12,7 @@ from app.set_sheet.rig_table import sets_to_read, shown_at
 from solver import project_to_text
 from solver.model.project import Project
 from solver.studies import plan_of, solve_sheet
-from solver.studies.settings import SheetSettings
+from solver.studies.settings import DepthSettings, SheetSettings
 from tests.studies.piles import pile
 
 
@@ -54,9 +54,9 @@ def test_csv_and_json_hold_the_sheet(written: Path) -> None:
     assert tree["largest_blow"]["outcome"] == "found"
 
 
-def test_page_is_one_page_with_the_sentence_and_the_table(written: Path) -> None:
+def test_first_page_has_the_sentence_and_the_table(written: Path) -> None:
     document = pypdfium2.PdfDocument(str(written / "sheet.pdf"))
-    assert len(document) == 1
+    assert len(document) == 2
     text = " ".join(document[0].get_textpage().get_text_bounded().split())
     for words in (
         "Set sheet: Pile",
@@ -71,12 +71,32 @@ def test_page_is_one_page_with_the_sentence_and_the_table(written: Path) -> None
         assert words in text, words
 
 
+def test_page_csv_and_json_tell_of_depth(written: Path) -> None:
+    lines = (written / "depth.csv").read_text(encoding="utf-8").splitlines()
+    rows = list(csv.DictReader(line for line in lines if not line.startswith("#")))
+    told = json.loads((written / "sheet.json").read_text(encoding="utf-8"))["depth"]
+    alone = DepthSettings().study(pile(elements=24))
+    assert alone is not None
+    for row, point, cell in zip(rows, told["points"], alone.points, strict=True):
+        assert float(row["penetration_m"]) == point["penetration_m"] == cell.penetration
+        assert float(row["toe_resistance_N"]) == point["toe_resistance_N"] == cell.toe
+        assert float(row["set_m"]) == point["set_m"] == cell.cell.set
+        assert (row["refuses"] == "true") == cell.refuses
+    first = alone.first_over
+    assert told["first_limit_passed_m"] == (None if first is None else first.penetration)
+    document = pypdfium2.PdfDocument(str(written / "sheet.pdf"))
+    text = " ".join(document[1].get_textpage().get_text_bounded().split())
+    for words in ("Down to depth: Pile", "Below the ground surface, m", "Blows so far", "Driving time"):
+        assert words in text, words
+    assert ("refuses from" in text) == (alone.first_refusal is not None)
+
+
 def test_the_same_input_gives_the_same_bytes(tmp_path: Path) -> None:
     file = tmp_path / "pile.strike"
     file.write_text(project_to_text(project()), encoding="utf-8")
     for folder in ("one", "two"):
         assert main(["sheet", str(file), "--out", str(tmp_path / folder), "--quiet"]) == 0
-    for name in ("sheet.csv", "sheet.json", "sheet.pdf"):
+    for name in ("sheet.csv", "sheet.json", "sheet.pdf", "depth.csv"):
         assert (tmp_path / "one" / name).read_bytes() == (tmp_path / "two" / name).read_bytes()
 
 
@@ -88,19 +108,22 @@ def test_samples_are_told_in_the_files(tmp_path: Path) -> None:
     assert told["samples"] == 60
     assert len(told["lines"][0]["set_m"]) == 10
     document = pypdfium2.PdfDocument(str(tmp_path / "sheet.pdf"))
-    assert len(document) == 1
     assert "eight of ten of" in " ".join(document[0].get_textpage().get_text_bounded().split())
 
 
-def test_long_page_stays_one_page_in_other_units(tmp_path: Path) -> None:
+def test_long_sheet_stays_on_its_page_in_other_units(tmp_path: Path) -> None:
     studies = {"set_sheet": {"values": [0.25, 0.5, 1.0, 1.5], "per": "ft", "count": 20}}
     file = tmp_path / "pile.strike"
     file.write_text(project_to_text(project(None, studies, "us")), encoding="utf-8")
     assert main(["sheet", str(file), "--out", str(tmp_path / "out"), "--quiet"]) == 0
     document = pypdfium2.PdfDocument(str(tmp_path / "out" / "sheet.pdf"))
     text = " ".join(document[0].get_textpage().get_text_bounded().split())
-    assert len(document) == 1
+    assert len(document) == 2
     assert "Blows per ft" in text
+    assert "1 of 2" in text
+    page = document[0].get_textpage()
+    bottoms = [page.get_rect(i)[1] for i in range(page.count_rects())]
+    assert sum(bottom < 34 for bottom in bottoms) == 2  # the foot of the page: version and number
     assert "whether it survives is not judged" in text
 
 

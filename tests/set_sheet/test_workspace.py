@@ -82,8 +82,10 @@ def test_lines_are_broken_exactly_where_a_limit_is_passed(shown: SetSheet) -> No
     assert sum(bool(line.dash) for line in lines) == 4 * over  # set, compression, tension, energy
     assert len(lines) == 4 * 27
     assert sum(isinstance(i, Mark) for i in scene) == 4 * 30
-    named = [t for t in texts(scene) if "limit passed at" in t]
-    assert len(named) == sum(any(c.over for c in sheet.line(n)) for n in range(3))
+    passed = sum(any(c.over for c in sheet.line(n)) for n in range(3))
+    named = [t for t in texts(scene) if t.startswith("✕")]
+    assert 0 < len(named) <= passed  # where a place is free of lines
+    assert shown.told.text().count("limit passed at") == passed
 
 
 def test_typed_range_and_values_solve_again_and_can_be_undone(shown: SetSheet, qtbot: QtBot) -> None:
@@ -166,13 +168,13 @@ def test_what_is_not_known_gives_bands_and_can_be_stopped(shown: SetSheet, qtbot
     qtbot.mouseClick(choices.work_out, Qt.MouseButton.LeftButton)
     qtbot.waitUntil(lambda: shown.solution.sampled is not None, timeout=PATIENCE)
     qtbot.waitUntil(lambda: "eight of ten of" in choices.samples_told.text(), timeout=PATIENCE)
-    assert "A limit is passed with a probability of" in choices.samples_told.text()
+    assert "A limit is passed" in choices.samples_told.text()
 
 
 def test_down_to_depth_follows_a_factor_on_the_ground(shown: SetSheet, qtbot: QtBot) -> None:
     qtbot.mouseClick(shown.over_depth, Qt.MouseButton.LeftButton)
-    qtbot.waitUntil(lambda: shown.to_depth.depths is not None, timeout=PATIENCE)
-    before = shown.to_depth.depths
+    qtbot.waitUntil(lambda: shown.by_depth.depths is not None, timeout=PATIENCE)
+    before = shown.by_depth.depths
     assert before is not None
     assert len(before.points) == 12
     assert shown.told.text().startswith("At 10.0\u00a0m: 800\u00a0kN")
@@ -180,9 +182,9 @@ def test_down_to_depth_follows_a_factor_on_the_ground(shown: SetSheet, qtbot: Qt
     type_into(qtbot, shown.choices.to_depth.factors["shaft"].field, "0.5")
     type_into(qtbot, shown.choices.to_depth.penetrations.field, "5 10")
     qtbot.waitUntil(
-        lambda: shown.to_depth.depths is not None and len(shown.to_depth.depths.points) == 2, timeout=PATIENCE
+        lambda: shown.by_depth.depths is not None and len(shown.by_depth.depths.points) == 2, timeout=PATIENCE
     )
-    depths = shown.to_depth.depths
+    depths = shown.by_depth.depths
     assert depths is not None
     assert [(p.shaft, p.toe) for p in depths.points] == [(100e3, 400e3), (200e3, 400e3)]
     qtbot.waitUntil(lambda: shown.told.text().startswith("At 10.0\u00a0m: 600\u00a0kN"), timeout=PATIENCE)
@@ -210,6 +212,7 @@ def test_stop_keeps_what_is_there_and_solves_on(shown: SetSheet, qtbot: QtBot) -
 def test_page_and_table_are_saved_where_asked(
     shown: SetSheet, qtbot: QtBot, tmp_path: Path, monkeypatch: pytest.MonkeyPatch
 ) -> None:
+    qtbot.waitUntil(shown.print_page.isEnabled, timeout=PATIENCE)  # once depths are studied too
     for button, name, begins in (
         (shown.print_page, "page.pdf", b"%PDF"),
         (shown.export, "table.csv", b"# Set sheet"),
