@@ -66,7 +66,7 @@ class _Readings(Picture):
     def top(self) -> float:
         """Where the first gauge begins: under the heading, the reading at the cursor's place, and the second cursor."""
         pinned = self.sight.pinned
-        rows = 0 if pinned is None else 4 + (pinned[1] is not None) + (self._speed() != "")
+        rows = 0 if pinned is None else 4 + (pinned[1] is not None) + (self.speed() != "")
         return (3.9 + rows) * self.line() + (SPACE if pinned is not None else 0)
 
     def sizeHint(self) -> QSize:
@@ -120,10 +120,10 @@ class _Readings(Picture):
         self._heading(painter, y, "Between them")
         apart, *way = between(units, sight.time, sight.place, (time, place))
         self._row(painter, y + line, apart, way[0] if way else "", palette().ink, palette().ink)
-        if self._speed():
-            self._row(painter, y + 2 * line, "speed", self._speed(), palette().ink)
+        if self.speed():
+            self._row(painter, y + 2 * line, "speed", self.speed(), palette().ink)
 
-    def _speed(self) -> str:
+    def speed(self) -> str:
         """What goes with the time and the way between the two cursors, "" where they have not both."""
         pinned = self.sight.pinned
         words = () if pinned is None else between(self.units, self.sight.time, self.sight.place, pinned)

@@ -86,7 +86,7 @@ def is_free(box: QRectF, scale: Scale, envelopes: list[Extremes]) -> bool:
     """Whether no curve of any of them, and nothing between its lowest and its highest, comes into a box."""
     for found in envelopes:
         y = scale.y(found.position)
-        first, last = np.searchsorted(y, (box.top() - 2, box.bottom() + 2))
+        first, last = np.searchsorted(y, (box.top() - 1, box.bottom() + 1))
         if last <= first:
             continue
         x = np.concatenate((scale.x(found.lowest[first:last]), scale.x(found.highest[first:last])))

@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Callable, Iterator
 from dataclasses import dataclass
 from itertools import pairwise
+from math import isclose
 
 import numpy as np
 from PySide6.QtCore import QLineF, QRectF, Qt
@@ -38,13 +39,23 @@ def limits_of(case: Case, result: Result, quantity: ShownQuantity) -> list[Limit
     lines = limit_lines(case) if quantity in ("stress", "force") else []
     if quantity == "stress":
         return [Limit(line.sign, line.start, line.end, line.stress) for line in lines]
-    found = []
+    found: list[Limit] = []
     for line in lines:
         for top, bottom in pairwise(result.fields.edges):
             start, end = max(top, line.start), min(bottom, line.end)
             if end > start:
                 area = float(area_at(result, np.array([(start + end) / 2]))[0])
-                found.append(Limit(line.sign, float(start), float(end), line.stress * area))
+                before = found[-1] if found else None
+                value = line.stress * area
+                if (
+                    before
+                    and before.sign == line.sign
+                    and before.end == start
+                    and isclose(before.value, value)
+                ):
+                    start = before.start
+                    found.pop()
+                found.append(Limit(line.sign, float(start), float(end), value))
     return found
 
 
@@ -56,8 +67,9 @@ def draw_limits(
     limits: list[tuple[Limit, float]],
     quantity: ShownQuantity,
     free: Callable[[QRectF], bool],
-) -> None:
-    """Each limit with its value as shown: stepped lines, and the numbers where they lie `free` of the curves."""
+) -> list[QRectF]:
+    """Each limit with its value as shown: stepped lines, and the numbers where they lie `free` of the curves. Gives the
+    boxes of the numbers."""
     before: dict[str, float] = {}
     named: dict[tuple[str, float], _Label] = {}
     painter.setPen(pen(palette().ink, 1.0, Qt.PenStyle.DashLine))
@@ -81,6 +93,7 @@ def draw_limits(
         if box is not None:
             taken.append(box)
             put_on(painter, box.left(), box.center().y(), label.text, palette().ink, palette().paper)
+    return taken
 
 
 @dataclass(frozen=True)
@@ -114,9 +127,10 @@ def _boxes(label: _Label, plot: QRectF, painter: QPainter) -> Iterator[QRectF]:
     width, line = width_of(label.text, painter.font()), QFontMetricsF(painter.font()).height()
     at_edge = plot.right() - 2 - width if label.rightwards else plot.left() + 8
     if label.at_top:
-        left = at_edge if label.x is None else label.x - width / 2
-        left = min(max(left, plot.left() + 2), plot.right() - width - 1)
-        yield QRectF(left, label.top - line - 2, width, line)
+        x = at_edge + width / 2 if label.x is None else label.x
+        for left in (x - width / 2, x - width + 4, x - 4):
+            left = min(max(left, plot.left() + 2), plot.right() - width - 1)
+            yield QRectF(left, label.top - line - 4, width, line)
     if label.x is None:
         sides = [at_edge]
     else:

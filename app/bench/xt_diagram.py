@@ -47,6 +47,7 @@ ARRIVALS_TIP = (
 class XtDiagram(Picture):
     has_time = True
     has_distance = True
+    turn = 0
 
     def __init__(self, *args: Any, **named: Any) -> None:
         super().__init__(*args, **named)

@@ -41,14 +41,15 @@ from app.bench.pictures.axis_drawing import distance_ticks, in_units
 from app.bench.pictures.cursor import draw_pinned_place, draw_place
 from app.bench.pictures.lettering import put
 from app.bench.pictures.picture import Picture
+from app.bench.pictures.turns import turns
 from app.look.fonts import font
 from app.look.palette import palette
 from solver.model.load import Drop, History, Pulse
 
 DRAG_TIP = "Drag it, in tidy steps or with Control freely. Esc takes it back."
-#: A drag waits so long, ms, for the picture of its last step before it takes the next: edits that nobody gets to see
+#: A drag waits so long, ms, for the pictures of its last step before it takes the next: edits that nobody gets to see
 #: would only slow the pictures down.
-PATIENCE = 120
+PATIENCE = 250
 
 
 class MemberDrawing(Picture):
@@ -70,6 +71,7 @@ class MemberDrawing(Picture):
         self._later.setSingleShot(True)
         self._later.timeout.connect(self._follow)
         self.solution.changed.connect(self._follow)
+        turns().done.connect(self._follow)
 
     def margins(self) -> Margins:
         """Left only what the numbers of the distance need; above and below as all pictures in the row."""
@@ -193,11 +195,11 @@ class MemberDrawing(Picture):
         self.look_again()
 
     def _follow(self) -> None:
-        """Take the drag to where the mouse is, once the picture of the step before is there."""
+        """Take the drag to where the mouse is, once the pictures of the step before are there."""
         since = (monotonic() - self._edited_at) * 1e3
         if self._drag is None or self._wanted is None:
             return
-        if self.solution.state == "solving" and since < PATIENCE:
+        if (self.solution.state == "solving" or turns().busy) and since < PATIENCE:
             self._later.start(PATIENCE)
         else:
             self._take_wanted()

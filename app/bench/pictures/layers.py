@@ -19,6 +19,7 @@ from PySide6.QtWidgets import QWidget
 from app.bench.pictures.axes import Axis, Margins, inside, margins_of, whole_distance
 from app.bench.pictures.lettering import RIGHT, put
 from app.bench.pictures.time_shown import shown_time
+from app.bench.pictures.turns import turns
 from app.document import Document
 from app.look.palette import palette
 from app.look.spacing import RADIUS
@@ -51,6 +52,8 @@ class Layered(QWidget):
     has_distance = False
     #: The axis whose numbers it carries for all pictures: "time" or "distance".
     numbers = ""
+    #: When a new result comes, it is painted after the pictures with a lower number.
+    turn = 2
 
     def __init__(
         self, document: Document, sight: Sight, solution: Solution, parent: QWidget | None = None
@@ -59,6 +62,7 @@ class Layered(QWidget):
         self.document, self.sight, self.solution = document, sight, solution
         self._kept = QPixmap()
         self._kept_key: tuple[Any, ...] | None = None
+        self._kept_result: Result | None = None
         self._shown_moving: tuple[Any, ...] | None = None
         self._shown_region = QRegion()
         self.setAttribute(Qt.WidgetAttribute.WA_OpaquePaintEvent)
@@ -156,14 +160,17 @@ class Layered(QWidget):
         if not self.isVisible():
             return
         if self._whole_key() != self._kept_key:
-            self.update()
+            if self.result is self._kept_result or self.result is None:
+                self.update()
+            else:
+                turns().take(self, self.turn)
         elif self.moving_key() != self._shown_moving:
             self.update(self._shown_region.united(self.moving_region()))
 
     def paintEvent(self, event: QPaintEvent) -> None:
         key = self._whole_key()
         if key != self._kept_key:
-            self._kept, self._kept_key = self._painted_resting(), key
+            self._kept, self._kept_key, self._kept_result = self._painted_resting(), key, self.result
         painter = QPainter(self)
         painter.drawPixmap(0, 0, self._kept)
         painter.setRenderHint(QPainter.RenderHint.Antialiasing)

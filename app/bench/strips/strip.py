@@ -46,6 +46,7 @@ class Strip(Picture):
     numbers of the time axis."""
 
     has_time = True
+    turn = 1
 
     def __init__(
         self,

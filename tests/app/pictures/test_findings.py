@@ -6,6 +6,8 @@ import numpy as np
 import pytest
 from PySide6.QtCore import Qt
 
+from app.bench import limits as limits_drawing
+from app.bench import profile as profile_drawing
 from app.bench.field_values import extremes_of, limit_lines, value_at
 from app.bench.findings_panel import facts_of
 from app.bench.strips.contents import content_of
@@ -140,6 +142,41 @@ def test_findings_can_be_reached_and_pressed_by_keyboard(open_bench, pile, qtbot
     row.setFocus()
     qtbot.keyClick(row, Qt.Key.Key_Space)
     assert the.sight.place == facts_of(pile.result).tension.peak.position
+
+
+def test_a_limit_is_named_where_no_curve_runs_through_it(open_bench, two_materials, monkeypatch):
+    """Two segments with different limits, in tension and compression, of stress and of force."""
+    named = []
+
+    def watched(painter, plot, distance, values, limits, quantity, free):
+        boxes = limits_drawing.draw_limits(painter, plot, distance, values, limits, quantity, free)
+        named.extend((box, free(box), plot) for box in boxes)
+        return boxes
+
+    monkeypatch.setattr(profile_drawing, "draw_limits", watched)
+    the = open_bench(two_materials)
+    for quantity in ("force", "stress"):  # each another picture than the one before
+        named.clear()
+        the.sight.set(quantity=quantity)
+        the.bench.profile.grab()
+        assert len(named) >= 2
+        for number, (box, free, plot) in enumerate(named):
+            assert free
+            assert plot.contains(box)
+            assert not any(box.intersects(other) for other, _, _ in named[number + 1 :])
+
+
+def test_what_lies_between_two_cursors_is_read_at_the_cursor(open_bench, pile):
+    the = open_bench(pile)
+    readings = the.bench.at_cursor.readings
+    top = readings.top()
+    the.sight.set(time=0.004, place=18.0)
+    assert readings.speed() == ""
+    the.sight.set(pinned=(0.002, 8.0))
+    assert readings.speed().replace("\xa0", " ") == "5000 m/s ↓"  # 10 m in 2 ms
+    assert readings.top() > top + 4 * readings.line()  # the gauges give way
+    the.sight.set(pinned=(0.002, None))
+    assert readings.speed() == ""
 
 
 def test_a_stopped_run_says_what_it_is(pile):
