@@ -33,12 +33,6 @@ class Arrival:
     times: Array
     positions: Array
 
-    def returns_at(self, place: float) -> float | None:
-        """Time (s) at which the last upward stretch of the path passes a place (m); `None` where it does not."""
-        if not 0 <= place <= self.position:
-            return None
-        return float(np.interp(place, self.positions[-2:][::-1], self.times[-2:][::-1]))
-
 
 def travel_time_to(case: Case, position: float) -> float:
     """Time of a wave from the struck end to a distance (m) along the member, s: the integral of dx/c."""
@@ -49,6 +43,13 @@ def travel_time_to(case: Case, position: float) -> float:
             elapsed += part * segment_time(segment, case.materials)
         passed += segment.length
     return elapsed
+
+
+def returns_at(case: Case, arrival: Arrival, place: float) -> float | None:
+    """Time (s) at which the last upward stretch of the path passes a place (m); `None` where it does not."""
+    if not 0 <= place <= arrival.position:
+        return None
+    return float(arrival.times[-1]) - travel_time_to(case, place)
 
 
 def reflectors_of(case: Case) -> list[tuple[Reflector, float]]:
@@ -76,7 +77,12 @@ def reflectors_of(case: Case) -> list[tuple[Reflector, float]]:
 
 
 def arrivals(case: Case, passages: int = 2) -> tuple[Arrival, ...]:
-    """Fronts of the blow that turn back at each reflector and at the struck end again, `passages` times each."""
+    """Fronts of the blow that turn back at each reflector and at the struck end again, `passages` times each.
+
+    None where nothing strikes: a member that flies has its first front at what it meets.
+    """
+    if case.load.kind == "none":
+        return ()
     start = case.load.start if isinstance(case.load, Pulse) else 0.0
     if isinstance(case.load, History):
         start = float(case.load.samples.times[0])

@@ -7,6 +7,7 @@ from math import pi, sqrt
 import pytest
 
 from solver import Case, project_from_tree
+from solver.answer.waves import arrivals, returns_at
 from solver.model import derived
 
 STEEL = {"name": "steel", "young_modulus": 210e9, "density": 7850.0}
@@ -161,3 +162,29 @@ def test_a_cushion_gives_back_the_square_of_its_restitution() -> None:
 
 
 CUSHION = {"stiffness": 1e9, "restitution": 0.8}
+
+
+LAYERED = {
+    "segments": [
+        {"name": "steel", "length": 12.0, "material": "steel", "section": PIPE},
+        {"name": "grout", "length": 12.0, "material": "grout", "section": PIPE},
+    ]
+}
+
+
+@pytest.mark.parametrize("place", [1.2, 12.0, 18.0])
+def test_a_front_comes_back_past_a_gauge_with_the_speed_of_each_segment(place: float) -> None:
+    """From the far end of steel (c = 5172 m/s) over grout (3536 m/s): both ways whole, less the way above the gauge."""
+    steel, grout = sqrt(210e9 / 7850), sqrt(30e9 / 2400)
+    case = case_of(member=LAYERED)
+    front = next(a for a in arrivals(case) if a.kind == "far_end")
+    above = min(place, 12.0) / steel + max(place - 12.0, 0.0) / grout
+    assert returns_at(case, front, place) == pytest.approx(2 * (12 / steel + 12 / grout) - above)
+    step = next(a for a in arrivals(case) if a.kind == "step")
+    assert (returns_at(case, step, place) is None) == (place > 12.0)
+
+
+def test_a_member_that_flies_has_no_front_from_its_struck_end() -> None:
+    """Its first wave comes from the wall: a line from the struck end at time 0 would be where nothing is."""
+    flies = case_of(load={"kind": "none"}, far_end={"kind": "wall"}, run={"initial_velocity": 3.0})
+    assert arrivals(flies) == ()

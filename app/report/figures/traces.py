@@ -13,7 +13,7 @@ from app.report.figures.scales import Array, bounds_of
 from app.report.lettering import fitted
 from app.units import Units
 from solver import GaugeRecord, Result
-from solver.answer.waves import arrivals
+from solver.answer.waves import arrivals, returns_at
 
 HEIGHT = 190.0
 #: Of the plots that share a page with the x-t diagram.
@@ -63,7 +63,7 @@ def force_pair(result: Result, gauge: GaugeRecord, units: Units) -> Figure:
     plot.curve(time, moved, PRINT.gauge(0), 1.0, SECOND)
     if gauge.on == "member":
         for arrival in arrivals(result.case, passages=1):
-            when = arrival.returns_at(gauge.position)
+            when = returns_at(result.case, arrival, gauge.position)
             if when is not None and arrival.kind in ("toe", "far_end") and when < gauge.time[-1]:
                 at = units.number(when, "time", float(gauge.time[-1]))
                 plot.upright(at, PRINT.line)
