@@ -47,6 +47,7 @@ def tell(parent: QWidget, title: str, text: str) -> QDialog:
     label.setFixedWidth(WIDTH)
     label.setTextInteractionFlags(Qt.TextInteractionFlag.TextSelectableByMouse)
     area = QScrollArea(dialog)
+    area.setAccessibleName(title)
     area.setWidget(label)
     label.adjustSize()
     area.setMinimumSize(WIDTH + 16, min(label.height() + 4, HIGHEST))

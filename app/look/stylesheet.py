@@ -32,6 +32,8 @@ QLabel[role="soft"] {{ color: {soft_ink}; }}
 QLabel[role="small"] {{ color: {soft_ink}; font-size: {small}pt; }}
 QLabel[role="problem"] {{ color: {over}; font-size: {small}pt; }}
 
+QAbstractScrollArea {{ border: 1px solid transparent; }}
+QAbstractScrollArea:focus {{ border: 1px solid {accent}; }}
 QLineEdit, QComboBox, QSpinBox, QPlainTextEdit, QTextEdit {{
     background: {raised}; border: 1px solid {edge}; border-radius: {radius}px;
     padding: 0 {inner}px; min-height: {field}px;
@@ -63,6 +65,7 @@ QPushButton:disabled, QToolButton:disabled {{ color: {line}; background: {paper}
 QPushButton[role="chip"]:checked, QToolButton[role="chip"]:checked {{
     background: {chosen}; color: {on_chosen}; border-color: {chosen}; }}
 QPushButton[role="main"] {{ background: {accent}; color: {on_accent}; border-color: {accent}; font-weight: 600; }}
+QPushButton[role="main"]:focus {{ border: 2px solid {ink}; }}
 QPushButton[role="main"]:hover {{ background: {chosen}; color: {on_chosen}; }}
 QPushButton[role="quiet"], QToolButton[role="quiet"] {{ background: transparent; border: 1px solid transparent; }}
 QPushButton[role="quiet"]:hover, QToolButton[role="quiet"]:hover {{ background: {pressed}; }}
@@ -70,12 +73,15 @@ QPushButton[role="quiet"]:focus, QToolButton[role="quiet"]:focus {{ border: 2px 
 QPushButton[role="link"] {{ background: transparent; border: none; color: {accent}; text-align: left;
     text-decoration: underline; padding: 2px; }}
 QPushButton[role="link"]:focus {{ border: 2px solid {accent}; padding: 0; }}
+QPushButton[role="link"][level="small"] {{ font-size: {small}pt; min-height: 0; padding: 1px 3px; }}
+QPushButton[role="link"][level="small"]:focus {{ padding: 0 1px; }}
 QPushButton[role="choice"] {{ text-align: left; padding: {space}px {wide}px; min-height: 40px; }}
 QFrame[role="mark"] {{ background: {accent}; border: none; }}
 QPushButton[role="choice"]:focus {{ padding: {space_focus}px {wide_focus}px; }}
 QPushButton::menu-indicator, QToolButton::menu-indicator {{ image: none; width: 0; }}
 
-QCheckBox:focus, QRadioButton:focus {{ outline: 2px solid {accent}; }}
+QCheckBox, QRadioButton {{ border: 1px solid transparent; border-radius: {radius}px; padding: 1px 2px; }}
+QCheckBox:focus, QRadioButton:focus {{ border: 1px solid {accent}; background: {accent_soft}; }}
 QMenuBar {{ background: {window}; padding: 0 {gap}px; }}
 QMenuBar::item {{ padding: {gap}px {space}px; border-radius: {radius}px; background: transparent; }}
 QMenuBar::item:selected {{ background: {pressed}; }}
@@ -85,7 +91,8 @@ QMenu::item:selected {{ background: {accent_soft}; color: {ink}; }}
 QMenu::item:disabled {{ color: {line}; }}
 QMenu::separator {{ height: 1px; background: {grid}; margin: {gap}px {space}px; }}
 
-QScrollArea {{ border: none; background: transparent; }}
+QScrollArea {{ border: 1px solid transparent; background: transparent; }}
+QScrollArea:focus {{ border: 1px solid {accent}; border-radius: {radius}px; }}
 QScrollBar:vertical {{ background: transparent; width: 10px; margin: 0; }}
 QScrollBar:horizontal {{ background: transparent; height: 10px; margin: 0; }}
 QScrollBar::handle {{ background: {edge}; border-radius: 3px; min-height: 28px; min-width: 28px; margin: 2px; }}
@@ -98,8 +105,11 @@ QSplitter::handle:hover {{ background: {accent}; }}
 QTableView {{ background: {paper}; alternate-background-color: {window}; gridline-color: {grid};
     border: 1px solid {edge}; selection-background-color: {accent_soft}; selection-color: {ink}; }}
 QTableView:focus {{ border: 2px solid {accent}; }}
+QHeaderView {{ background: {window}; border: none; }}
+QTableCornerButton::section {{ background: {window}; border: none; }}
 QHeaderView::section {{ background: {window}; color: {soft_ink}; border: none; padding: {gap}px {space}px; }}
 QListView {{ background: {paper}; border: 1px solid {edge}; border-radius: {radius}px; outline: none; }}
+QListView:focus {{ border: 1px solid {accent}; background: {raised}; }}
 QListView::item {{ padding: {gap}px {space}px; border-radius: {radius}px; color: {ink}; }}
 QListView::item:selected {{ background: {accent_soft}; color: {ink}; }}
 QProgressBar {{ background: {pressed}; border: none; border-radius: 2px; max-height: 4px; min-height: 4px; }}

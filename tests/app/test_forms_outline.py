@@ -306,7 +306,7 @@ def test_a_typical_value_is_confirmed_or_edited_away(desk) -> None:
     at.select("ground/layers/0")
     quake, damping = at.row("Quake", NumberRow), at.row("Damping factor", NumberRow)
     assert not quake._mark.isHidden()
-    quake._mark.linkActivated.emit("confirm")
+    quake._mark.confirm.click()
     assert at.document.project.provenance["/cases/0/ground/layers/0/quake"].state == "confirmed"
     assert quake._mark.isHidden()
     at.type_into("Damping factor", "0.3")

@@ -6,7 +6,7 @@ from typing import Any
 
 from PySide6.QtCore import Qt
 from PySide6.QtGui import QContextMenuEvent
-from PySide6.QtWidgets import QGridLayout, QLabel, QMenu, QSizePolicy, QWidget
+from PySide6.QtWidgets import QGridLayout, QHBoxLayout, QLabel, QMenu, QPushButton, QSizePolicy, QWidget
 
 from app.bench.forms.commit import confirm_mark
 from app.bench.forms.kinds import NO_SOURCE
@@ -48,13 +48,8 @@ class FieldRow(QWidget):
         self._grid.setColumnStretch(1, 1)
         self._problem = _note_label(self, "problem")
         self._grid.addWidget(self._problem, 1, 0, 1, 3)
-        self._mark = _note_label(self, "small")
-        self._mark.setTextFormat(Qt.TextFormat.RichText)
-        self._mark.setWordWrap(False)
-        self._mark.setTextInteractionFlags(
-            Qt.TextInteractionFlag.LinksAccessibleByKeyboard | Qt.TextInteractionFlag.LinksAccessibleByMouse
-        )
-        self._mark.linkActivated.connect(lambda _link: confirm_mark(self.document, self.spec))
+        self._mark = MarkLine(self)
+        self._mark.confirm.clicked.connect(lambda: confirm_mark(self.document, self.spec))
         begins = 0 if metrics.height() > 1.2 * USUAL_LINE else 1  # in large type it needs the whole row
         self._grid.addWidget(self._mark, 2, begins, 1, 3 - begins)
 
@@ -84,10 +79,9 @@ class FieldRow(QWidget):
     @property
     def stops(self) -> list[QWidget]:
         """What the Tab key stops at, in order: the editor, what is beside it, the mark."""
-        inside = [
-            w for w in self.findChildren(QWidget) if w is not self._mark and w.window() is self.window()
-        ]
-        return [w for w in (*inside, self._mark) if w.focusPolicy() & Qt.FocusPolicy.TabFocus]
+        last = self._mark.confirm
+        inside = [w for w in self.findChildren(QWidget) if w is not last and w.window() is self.window()]
+        return [w for w in (*inside, last) if w.focusPolicy() & Qt.FocusPolicy.TabFocus]
 
     def put_beside(self, widget: QWidget) -> None:
         """Place what stands behind the editor: a unit, a button."""
@@ -117,9 +111,35 @@ class FieldRow(QWidget):
             begun = mark["source"] == NO_SOURCE
             word = "starting value" if begun else "typical value"
             where = "a number to begin with, of no source" if begun else f"from {mark['source']}"
-            self._mark.setText(f'{word} · <a href="confirm">Confirm</a>')
-            self._mark.setToolTip(f"A {word}, {where}. Type your own, or confirm it once you stand by it.")
-            self._mark.setAccessibleName(f"{self.spec.label}: {word}, {where}")
+            tells = f"A {word}, {where}. Type your own, or confirm it once you stand by it."
+            self._mark.tell(word, tells, f"Confirm {self.spec.label}: {word}, {where}")
+
+
+class MarkLine(QWidget):
+    """ "typical value · Confirm", hidden where there is nothing to confirm."""
+
+    def __init__(self, parent: QWidget) -> None:
+        super().__init__(parent)
+        self.words = QLabel(self)
+        self.words.setProperty("role", "small")
+        self.confirm = QPushButton("Confirm", self)
+        self.confirm.setProperty("role", "link")
+        self.confirm.setProperty("level", "small")
+        self.confirm.setCursor(Qt.CursorShape.PointingHandCursor)
+        row = QHBoxLayout(self)
+        row.setContentsMargins(0, 0, 0, 0)
+        row.setSpacing(0)
+        row.addWidget(self.words)
+        row.addWidget(self.confirm)
+        row.addStretch(1)
+        self.hide()
+
+    def tell(self, word: str, tells: str, name: str) -> None:
+        """Show a word, what it means, and the name of the button for those who hear it."""
+        self.words.setText(f"{word} ·")
+        for widget in (self.words, self.confirm):
+            widget.setToolTip(tells)
+        self.confirm.setAccessibleName(name)
 
 
 def _note_label(parent: QWidget, role: str) -> QLabel:

@@ -14,6 +14,7 @@ from app.bench.forms.choosers_ground import OF_GROUND
 from app.bench.forms.choosers_load import OF_LOAD
 from app.bench.forms.choosers_member import OF_MEMBER
 from app.bench.forms.kinds import words_of
+from app.bench.forms.meanings import OF_CHOICES, OF_FIELDS, meaning_of
 from app.bench.forms.more_fields import INSTEAD, MORE, ONLY_IF
 from app.bench.forms.spec import CheckSpec, ChoiceSpec, Context, NumberSpec, Option, Spec, TextSpec, Tree
 from app.bench.forms.use_part import name_material
@@ -46,7 +47,11 @@ def field_specs(
         return INSTEAD[(model, name)](context, pointer)
     value = (value_at(context.tree, pointer) or {}).get(name)
     chooser = _chooser(model, name)
-    found: list[Spec] = [_choice_spec(context, chooser, pointer, name)] if chooser else []
+    found: list[Spec] = (
+        [_choice_spec(context, chooser, pointer, name, meaning_of(OF_CHOICES, model, name))]
+        if chooser
+        else []
+    )
     if value is None and (chooser or declared.in_table(declared.WHERE_GIVEN, model, name)):
         return found
     if isinstance(value, dict):
@@ -73,6 +78,7 @@ def _own_spec(
     if quantity is not None and not isinstance(value, list):
         return _number_spec(context, model, pointer, name, quantity, value, ending)
     label, tells = declared.WORDS.get((model, name), (name.replace("_", " ").capitalize(), ""))
+    tells = tells or meaning_of(OF_FIELDS, model, name)
     if (model, name) in NAMES_A_MATERIAL:
         options = tuple(Option(material, material) for material in context.material_names)
         return ChoiceSpec(
@@ -121,7 +127,7 @@ def _number_spec(
     return NumberSpec(
         f"{pointer}/{name}",
         label + ending,
-        quantity.tells,
+        quantity.tells or meaning_of(OF_FIELDS, model, name),
         quantity.source,
         value=value,
         dimension=dimension,
@@ -137,12 +143,12 @@ def _chooser(model: type[BaseModel], name: str) -> Chooser | None:
     return None
 
 
-def _choice_spec(context: Context, chooser: Chooser, pointer: str, name: str) -> ChoiceSpec:
+def _choice_spec(context: Context, chooser: Chooser, pointer: str, name: str, meaning: str) -> ChoiceSpec:
     parent = value_at(context.tree, pointer)
     return ChoiceSpec(
         f"{pointer}/{name}#kind",
         chooser.label,
-        chooser.tells,
+        chooser.tells or meaning,
         value=chooser.key_of(parent),
         options=chooser.options,
         change=_changing(context, chooser, pointer),

@@ -7,6 +7,7 @@ from collections.abc import Callable
 from pydantic import BaseModel
 
 from app.bench.forms.limit_rows import limit_rows
+from app.bench.forms.meanings import OF_FIELDS
 from app.bench.forms.spec import ChoiceSpec, Context, NumberSpec, Option, PointsSpec, Spec, TextSpec, Tree
 from app.provenance import forget
 from app.tree import value_at
@@ -190,7 +191,7 @@ def _material_name(context: Context, pointer: str) -> list[Spec]:
         for case in tree["cases"]:
             _rename(case, old, name)
 
-    return [TextSpec(f"{pointer}/name", "Name", "", value=old, write=write)]
+    return [TextSpec(f"{pointer}/name", "Name", OF_FIELDS[(Material, "name")], value=old, write=write)]
 
 
 def _rename(node: object, old: str, new: str) -> None:

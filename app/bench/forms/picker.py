@@ -54,7 +54,13 @@ class PartPicker(QFrame):
         self.search = QLineEdit(self)
         self.search.setPlaceholderText("Search name, figure or source")
         self.search.setAccessibleName(f"Search {TITLES[kind].lower()}")
+        self.search.setToolTip(
+            "Words that an entry's name, figures or source begin with. Enter takes the first."
+        )
         self.list = QListWidget(self)
+        self.list.setToolTip(
+            "Typical values with their sources. Enter or a click takes one into the project."
+        )
         self.list.setAccessibleName(TITLES[kind])
         self.list.setWordWrap(True)
         self.list.setHorizontalScrollBarPolicy(Qt.ScrollBarPolicy.ScrollBarAlwaysOff)

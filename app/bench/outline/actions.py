@@ -67,6 +67,7 @@ class Actions(QWidget):
         self.add_button.setVisible(bool(row.adds_to))
         if row.adds_to:
             self.add_button.setText(f"+ Add {edits.word_for(row.adds_to)}")
+            self.add_button.setToolTip("Puts one behind the last, with values to begin with.")
         self.setVisible(entry or bool(row.adds_to))
 
     def menu(self, row: Row, parent: QWidget) -> QMenu:

@@ -98,6 +98,9 @@ class Outline(QWidget):
         self.area.setFocusPolicy(Qt.FocusPolicy.NoFocus)
         self.table_link = QPushButton(self)
         self.table_link.setProperty("role", "link")
+        self.table_link.setToolTip(
+            "Opens them all below, for typing in columns and pasting from a spreadsheet."
+        )
         self.table_link.setCursor(Qt.CursorShape.PointingHandCursor)
         self.table_link.clicked.connect(lambda: self.table_wanted.emit(self._table()[1]))
         foot = QHBoxLayout()

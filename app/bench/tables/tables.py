@@ -82,6 +82,7 @@ class Tables(QWidget):
             tab = QPushButton(words, self)
             tab.setCheckable(True)
             tab.setProperty("role", "chip")
+            tab.setToolTip(f"The table of all {words.lower()}.")
             tab.clicked.connect(lambda _on=False, p=pointer: self.open_table(p))
             group.addButton(tab)
             head.addWidget(tab)
@@ -260,6 +261,10 @@ class TableView(QTableView):
         super().__init__(drawer)
         self._drawer = drawer
         self.setAccessibleName("Table")
+        self.setToolTip(
+            "Type, or paste a block from a spreadsheet; Enter goes on downwards, Escape closes the table."
+        )
+        self.setTabKeyNavigation(False)  # Tab goes on to the buttons; arrows and Enter move in the table
         self.setItemDelegate(CellEditors(self))
         self.setEditTriggers(
             QTableView.EditTrigger.AnyKeyPressed

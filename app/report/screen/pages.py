@@ -27,7 +27,7 @@ class Pages(QAbstractScrollArea):
     def __init__(self, parent: QWidget | None = None) -> None:
         super().__init__(parent)
         self.setAccessibleName("Pages of the report")
-        self.setFrameShape(QAbstractScrollArea.Shape.NoFrame)
+        self.setFrameShape(QAbstractScrollArea.Shape.StyledPanel)  # the look draws it, where it has the focus
         self.setFocusPolicy(Qt.FocusPolicy.StrongFocus)
         self._document: PdfDocument | None = None
         self._sizes: list[tuple[float, float]] = []
