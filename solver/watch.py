@@ -12,8 +12,9 @@ from solver.model.project import Case
 from solver.model.surroundings import Resistance
 from solver.numerics.arrays import Extremes, Frames
 from solver.numerics.balance import growing_share, moving_share, residual_of
-from solver.numerics.chain import Chain, Stretch, segments_of
+from solver.numerics.chain import Chain, segments_of
 from solver.numerics.equilibrium import State
+from solver.numerics.laying import Stretch
 from solver.numerics.stability import SMALLEST_STRETCH
 
 #: Share of the energy that a wave of two elements' length may grow to; short pulses alone stay below it.
@@ -150,7 +151,7 @@ def _refuse_inside_out(march: Watched, part: Stretch) -> None:
         stretch = 1 + np.diff(march.state.motion.u)[at] / chain.length[at]
         bad, step, advice = stretch < SMALLEST_STRETCH, march.steps, "a thicker or stiffer pad"
     else:
-        bad = march.extremes.low[at] <= -chain.axial[at]
+        bad = (march.extremes.low[at] <= -chain.axial[at]) & (chain.axial[at] > 0)
         step = march.extremes.low_step[at][int(np.argmax(bad))]
         advice = "a lower load, or a material law that yields"
     if bad.any():

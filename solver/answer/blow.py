@@ -8,8 +8,9 @@ import numpy as np
 from numpy.typing import NDArray
 
 from solver.numerics.arrays import Extremes, Frames
-from solver.numerics.chain import Chain, Stretch
+from solver.numerics.chain import Chain
 from solver.numerics.equilibrium import State
+from solver.numerics.laying import Stretch
 
 Array = NDArray[np.float64]
 

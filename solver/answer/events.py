@@ -9,6 +9,7 @@ from solver.answer.blow import Blow
 from solver.answer.result import Event, EventKind
 from solver.numerics.chain import Chain
 from solver.numerics.records import (
+    EVENT_CRACK,
     EVENT_IMPACT,
     EVENT_JOINT_CLOSED,
     EVENT_JOINT_OPENED,
@@ -22,6 +23,7 @@ EVENT_NAMES: dict[int, EventKind] = {
     EVENT_IMPACT: "impact",
     EVENT_SEPARATION: "separation",
     EVENT_LEFT_ELASTIC: "first_yield",
+    EVENT_CRACK: "crack",
     EVENT_JOINT_OPENED: "joint_opened",
     EVENT_JOINT_CLOSED: "joint_closed",
     EVENT_WALL: "wall_contact",
@@ -32,17 +34,20 @@ FLICKER = 3
 
 
 def events_of(blow: Blow) -> tuple[Event, ...]:
-    """All events in order of time."""
+    """All events in order of time; of cracks the first of each segment."""
     chain = blow.chain
     kept = _without_flicker(blow.events)
-    found = []
+    found, cracked = [], set()
     for kind, place, step in kept:
         name = EVENT_NAMES[kind]
         striker = chain.case.load.kind == "striker" and place == chain.head - 1
         if striker and name in ("joint_closed", "joint_opened"):
             name = "impact" if name == "joint_closed" else "separation"
-        if name == "first_yield" and blow.law_at(place) == "brittle_tension":
-            name = "crack"
+        if name == "crack":
+            segment = next(joint.segment for joint in chain.joints if joint.link == place)
+            if segment in cracked:
+                continue
+            cracked.add(segment)
         found.append(Event(name, _event_position(chain, kind, place), step * chain.dt))
     return tuple(sorted(found, key=lambda e: e.time))
 

@@ -209,10 +209,8 @@ def _residual(blow: Blow) -> Residual | None:
 
 def _crack_openings(blow: Blow) -> dict[str, float]:
     """Largest opening of a crack per brittle segment that cracked, m."""
-    openings = {}
-    for stretch in blow.chain.member_stretches:
-        if stretch.material.law.kind == "brittle_tension":
-            at = slice(stretch.start, stretch.stop)
-            if blow.state.rod.state[0, at].any():
-                openings[stretch.segment.name] = float(blow.state.rod.state[1, at].max())
+    bond, openings = blow.state.bounds.joint_bond, dict[str, float]()
+    for joint, (strength, opened, _) in zip(blow.chain.joints, bond, strict=True):
+        if joint.strength and strength <= 0:
+            openings[joint.segment] = max(openings.get(joint.segment, 0.0), float(opened))
     return openings

@@ -12,7 +12,7 @@ RemarkKind = Literal[
     "few_elements",
     "large_strain",
     "mass_at_contact",
-    "cracked",
+    "crumbled",
     "stopped",
     "not_at_rest",
     "ram_returns",
@@ -63,10 +63,10 @@ def sentence(of: Remark, show: Show = in_si) -> str:
                 f"A lumped mass touches at {show(of.place, 'length')}: it bounces without loss, so read forces there "
                 "as means over its bounces, or give it as a short segment."
             )
-        case "cracked":
+        case "crumbled":
             return (
-                f"'{of.name}' cracked in a single step, which leaves a ripple in single elements: from then on "
-                "read its gauges, openings and the place and time of the crack rather than peak stresses."
+                f"'{of.name}' crumbled: {of.value:.0f} of its elements came off alone. What breaks so small depends on "
+                "the mesh, so read its gauges and the place and time of the first crack rather than stresses after it."
             )
         case "stopped":
             return "This run was stopped early: it tells what happened so far."

@@ -63,12 +63,15 @@ class Shaft(NamedTuple):
 
 class Bounds(NamedTuple):
     """Toe, joints, wall, train. `joints`: link per joint; `joint_par`: gap, slack; `joint_force`: force of the
-    last step."""
+    last half step. `joint_trial`: see `contact.touch_ahead`; `joint_bond`: strength (N) while they hold (0: cracked, or
+    never bonded), the largest opening since (m; -1 where it was never bonded), force of the last step (N)."""
 
     toe_par: Array
     toe_state: Array
     joints: Ints
     joint_par: Array
+    joint_trial: Array
+    joint_bond: Array
     joint_force: Array
     wall: Array
     train_links: Ints

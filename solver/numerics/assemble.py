@@ -11,9 +11,10 @@ from solver.model.load import History, Pulse
 from solver.model.project import Gauge
 from solver.numerics.arrays import Bounds, Extremes, Motion, Records, Rod, aligned
 from solver.numerics.balance import LEDGER
-from solver.numerics.chain import Chain, Stretch
+from solver.numerics.chain import Chain
 from solver.numerics.ground import toe_of
-from solver.numerics.links import BRITTLE, ELASTIC, ELASTIC_PLASTIC, LARGE_STRAIN, VISCOELASTIC
+from solver.numerics.laying import Stretch
+from solver.numerics.links import ELASTIC, ELASTIC_PLASTIC, LARGE_STRAIN, VISCOELASTIC
 from solver.numerics.pulses import end_time
 
 Array = NDArray[np.float64]
@@ -23,7 +24,8 @@ LAW_NUMBERS = {
     "elastic": ELASTIC,
     "viscoelastic": VISCOELASTIC,
     "elastic_plastic": ELASTIC_PLASTIC,
-    "brittle_tension": BRITTLE,
+    # what cracks are the joints between its elements
+    "brittle_tension": ELASTIC,
     "large_strain": LARGE_STRAIN,
 }
 
@@ -74,9 +76,9 @@ def _blocks(chain: Chain) -> NDArray[np.int64]:
     for stretch in chain.stretches:
         laws[stretch.start : stretch.stop] = LAW_NUMBERS[stretch.material.law.kind]
     edges = {0, len(laws), *(np.flatnonzero(np.diff(laws)) + 1).tolist()}
-    # the first yield or crack of each segment is told, so such segments are blocks of their own
+    # the first yield of each segment is told, so such segments are blocks of their own
     for stretch in chain.stretches:
-        if stretch.material.law.kind in ("elastic_plastic", "brittle_tension"):
+        if stretch.material.law.kind == "elastic_plastic":
             edges |= {stretch.start, stretch.stop}
     return np.array([(laws[a], a, b) for a, b in pairwise(sorted(edges))], dtype=np.int64)
 
@@ -93,8 +95,6 @@ def _law_parameters(chain: Chain, stretch: Stretch, par: Array) -> None:
         par[0, at] = law.yield_stress * area
         par[1, at] = plastic * area / length
         par[2, at] = 1.0 if law.hardening == "kinematic" else 0.0
-    elif law.kind == "brittle_tension":
-        par[0, at] = law.tensile_strength * area
     elif law.kind == "large_strain":
         par[0, at] = material.young_modulus / 3 * area
         par[1, at] = length
@@ -146,6 +146,10 @@ def bounds_of(chain: Chain) -> Bounds:
         toe_state=state,
         joints=np.array([j.link for j in chain.joints], dtype=np.int64),
         joint_par=np.array([(j.gap, j.slack) for j in chain.joints], dtype=float).reshape(-1, 2),
+        joint_bond=np.array([(j.strength, 0.0 if j.strength else -1.0, 0.0) for j in chain.joints]).reshape(
+            -1, 3
+        ),
+        joint_trial=np.zeros(len(chain.joints)),
         joint_force=np.zeros(len(chain.joints)),
         wall=np.array([chain.wall_gap, 0.0]),
         train_links=np.array([t.link for t in chain.train], dtype=np.int64),

@@ -14,10 +14,10 @@ from numpy.typing import NDArray
 from solver.errors import SolveError
 from solver.model.derived import travel_time
 from solver.model.load import GRAVITY, Cushion, Drop, Striker
-from solver.model.material import Material
 from solver.model.member import Segment
 from solver.model.project import Case
-from solver.numerics.along import equal_transit, profile_along
+from solver.numerics.along import profile_along
+from solver.numerics.laying import JointLink, Laid, Stretch
 from solver.numerics.mesh import FEWEST, MOST, SegmentSteps, Steps, choose_steps
 from solver.numerics.stability import stiffening_of
 
@@ -31,26 +31,6 @@ FEWEST_IN_STRIKER = 10
 MOST_ASKED = 1_000_000
 #: Courant number below which a segment is too short for the mesh of the others.
 WORST_COURANT = 0.2
-
-
-@dataclass(frozen=True)
-class Stretch:
-    """One segment as elements: links `start` to `stop` (exclusive) of the chain."""
-
-    segment: Segment
-    material: Material
-    start: int
-    stop: int
-
-
-@dataclass(frozen=True)
-class JointLink:
-    """A joint between two nodes `link` and `link + 1`. `slack` is infinite where no tension is ever carried."""
-
-    link: int
-    gap: float
-    slack: float
-    position: float
 
 
 @dataclass(frozen=True)
@@ -178,70 +158,13 @@ def _wanted(case: Case, total: float) -> int:
     return min(wanted, MOST)
 
 
-class _Builder:
-    """Lays nodes and links one after the other."""
-
-    def __init__(self, case: Case) -> None:
-        self.materials = case.materials
-        self.position: list[Array] = []
-        self.mass: list[Array] = []
-        self.links: list[tuple[Array, Array, Array, Array]] = []
-        self.stretches: list[Stretch] = []
-        self.count = 0
-
-    def lump(self, mass: float, position: float) -> None:
-        self._join()
-        self.position.append(np.array([position]))
-        self.mass.append(np.array([mass]))
-        self.count += 1
-
-    def rod(self, segments: tuple[Segment, ...], counts: tuple[int, ...], start: float) -> list[JointLink]:
-        joints = []
-        at = start
-        for i, (segment, n) in enumerate(zip(segments, counts, strict=True)):
-            joint = segment.joint_above
-            bonded = i > 0 and joint.kind == "bonded"
-            if not bonded:
-                self._join()
-                if i > 0:
-                    gap = joint.gap if joint.kind == "contact" else 0.0
-                    slack = joint.slack if joint.kind == "slack_splice" else np.inf
-                    joints.append(JointLink(self.count - 1, gap, slack, at))
-                self.position.append(np.array([at]))
-                self.mass.append(np.zeros(1))
-                self.count += 1
-            self._elements(segment, n, at)
-            at += segment.length
-        return joints
-
-    def _elements(self, segment: Segment, n: int, at: float) -> None:
-        edges = equal_transit(segment, self.materials, n)
-        dx = segment.length * np.diff(edges) if segment.end_section else np.full(n, segment.length / n)
-        axial, line_mass, area = profile_along(segment, self.materials, (edges[1:] + edges[:-1]) / 2)
-        half = line_mass * dx / 2
-        self.mass[-1][-1] += half[0]
-        nodes = half.copy()
-        nodes[:-1] += half[1:]
-        self.position.append(at + segment.length * edges[1:])
-        self.mass.append(nodes)
-        self.links.append((axial, dx, area, line_mass))
-        first = self.count - 1
-        self.stretches.append(Stretch(segment, self.materials[segment.material], first, first + n))
-        self.count += n
-
-    def _join(self) -> None:
-        """A link without an element, before the next node."""
-        if self.count:
-            self.links.append((np.zeros(1), np.ones(1), np.ones(1), np.zeros(1)))
-
-
 def build_chain(case: Case, element_length: float | None = None) -> Chain:
     """Discretise a case; `element_length` (m) overrides the program's choice."""
     given = element_length or case.run.element_length
     steps = steps_of(case, given)
     _refuse_tiny(case, steps, given is not None)
     load, rod = case.load, case.ram_segments
-    laid = _Builder(case)
+    laid = Laid(case.materials)
     joints: list[JointLink] = []
     if rod:
         joints += laid.rod(rod, steps.counts[: len(rod)], -sum(s.length for s in rod))
@@ -296,7 +219,7 @@ def _in_series(first: Cushion | None, second: Cushion) -> Cushion:
 def _finished(
     case: Case,
     steps: Steps,
-    laid: _Builder,
+    laid: Laid,
     joints: tuple[JointLink, ...],
     train: tuple[TrainLink, ...],
     head: int,

@@ -222,12 +222,15 @@ def _press_joints(chain: Chain, state: State, pull: Array) -> None:
             continue
         above = force[joint.link - 1] if joint.link > chain.head else 0.0
         pressed = float(pull[joint.link] - above)
-        if pressed < -1e-9 * max(1.0, float(np.abs(pull).sum())):
+        if pressed < -joint.strength - 1e-9 * max(1.0, float(np.abs(pull).sum())):
             raise SolveError(
                 f"With gravity on, the joint at {joint.position:.4g} m would hang in tension before the blow, which it "
                 "does not carry. Give the ground below it more resistance, bond the joint, or turn gravity off."
+                if not joint.strength
+                else f"With gravity on, the member would crack at {joint.position:.4g} m under its own weight: see its "
+                "material's strength, or turn gravity off."
             )
-        bounds.joint_force[j] = max(pressed, 0.0)
+        bounds.joint_force[j] = bounds.joint_bond[j, 2] = max(pressed, -joint.strength)
     if chain.wall_gap == 0:
         bounds.wall[1] = max(float(pull[-1] - force[-1]), 0.0)
 

@@ -1,10 +1,10 @@
 """Forces and energies of all links, block by block, each by its law."""
 
 from solver.numerics.compiled import kernel, part_of_step
-from solver.numerics.laws import brittle_tension, elastic, elastic_plastic, large_strain, viscoelastic
+from solver.numerics.laws import elastic, elastic_plastic, large_strain, viscoelastic
 
 #: Laws by the number that a block carries; a new law gets a line here and a branch in `link_forces` and `energies`.
-ELASTIC, VISCOELASTIC, ELASTIC_PLASTIC, BRITTLE, LARGE_STRAIN = range(5)
+ELASTIC, VISCOELASTIC, ELASTIC_PLASTIC, LARGE_STRAIN = range(4)
 
 
 @part_of_step
@@ -16,8 +16,6 @@ def law_forces(law, rod, u, v, force, start, stop, dt):
         return viscoelastic.force(u, v, rod.stiff, rod.par, rod.state, force, start, stop, dt)
     if law == ELASTIC_PLASTIC:
         return elastic_plastic.force(u, v, rod.stiff, rod.par, rod.state, force, start, stop, dt)
-    if law == BRITTLE:
-        return brittle_tension.force(u, v, rod.stiff, rod.par, rod.state, force, start, stop, dt)
     return large_strain.force(u, v, rod.stiff, rod.par, rod.state, force, start, stop, dt)
 
 
@@ -45,10 +43,6 @@ def stored_in_blocks(rod, u, v, force, dt):
             d = 0.0
         elif law == ELASTIC_PLASTIC:
             s, d = elastic_plastic.stored_and_lost(
-                u, v, rod.stiff, rod.par, rod.state, force, start, stop, dt
-            )
-        elif law == BRITTLE:
-            s, d = brittle_tension.stored_and_lost(
                 u, v, rod.stiff, rod.par, rod.state, force, start, stop, dt
             )
         else:

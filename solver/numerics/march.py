@@ -213,6 +213,8 @@ def march(rod, ground, bounds, motion, ext, rec, ends, sums, load, first, count,
         if special:
             special_nodes(rod, u, v, w, drag, gain, step)
         if shafts:
+            if jointed:
+                contact.touch_ahead(bounds, push, u, w, dt)
             shaft_nodes(ground, push, v, w, sums, dt)
         if toes:
             toe_node(bounds, push, u, v, w, sums, dt, note, step)

@@ -13,7 +13,8 @@ from solver.numerics.compiled import apart, kernel, part_of_step
     EVENT_JOINT_CLOSED,
     EVENT_WALL,
     EVENT_TOE_LIFT,
-) = range(7)
+    EVENT_CRACK,
+) = range(8)
 
 
 @kernel

@@ -14,6 +14,7 @@ from scipy.linalg.lapack import dptsv
 
 from solver.numerics.chain import Chain
 from solver.numerics.equilibrium import State
+from solver.numerics.laying import JointLink
 from solver.numerics.links import link_forces
 from solver.numerics.toe import RADIATION
 
@@ -33,7 +34,7 @@ def settle(chain: Chain, state: State) -> bool:
     u = state.motion.u.copy()
     at = rest.unbalanced(u)
     for _ in range(200):
-        change, singular = dptsv(*rest.tangent(at), at.out[chain.head :])[2:]
+        change, singular = dptsv(*rest.tangent(at), at.out)[2:]
         largest = np.max(np.abs(change))
         if singular or not largest <= float(chain.position[-1]):
             return False
@@ -69,8 +70,10 @@ class _Springs(NamedTuple):
 
 
 class _Balance(NamedTuple):
-    """Force left over on every node (N), slopes (N/m) of nodes to ground and of links."""
+    """Force left over on every node and on every group of nodes that move as one (N), slopes (N/m) of nodes to ground
+    and of links."""
 
+    nodes: Array
     out: Array
     grounded: Array
     links: Array
@@ -90,6 +93,11 @@ class _Rest:
         self.still = np.zeros(chain.nodes)
         self.faces = FACES * float(state.rod.stiff.max())
         self.joints = [(j, link) for j, link in enumerate(chain.joints) if link.link >= chain.head]
+        # nodes that a bond holds together move as one; the first of each such group, and the group of every node
+        self.bonds = [j for j, _ in self.joints if state.bounds.joint_bond[j, 0] > 0]
+        begins = np.ones(chain.nodes - chain.head, dtype=bool)
+        begins[[chain.joints[j].link + 1 - chain.head for j in self.bonds]] = False
+        self.first, self.group = np.flatnonzero(begins), np.cumsum(begins) - 1
 
     def unbalanced(self, u: Array) -> _Balance:
         """The balance at displacements `u`."""
@@ -97,9 +105,8 @@ class _Rest:
         force = np.zeros_like(self.state.motion.force)
         link_forces(rod, u, self.still, force, chain.dt)
         grounded, links = chain.spring.copy(), rod.stiff.copy()
-        for _, joint in self.joints:
-            gap = u[joint.link + 1] - u[joint.link] + joint.gap
-            over = min(gap, 0.0) + max(gap - joint.slack, 0.0)
+        for j, joint in self.joints:
+            over = self.over(u, j, joint)
             force[joint.link] = self.faces * over
             links[joint.link] = self.faces if over != 0.0 else 0.0
         out = self.weight - chain.spring * u
@@ -115,14 +122,22 @@ class _Rest:
         if chain.fixed_end:
             out[-1] = 0.0
             grounded[-1] += self.faces
-        return _Balance(out, grounded, links)
+        return _Balance(out, np.add.reduceat(out[chain.head :], self.first), grounded, links)
+
+    def over(self, u: Array, j: int, joint: JointLink) -> float:
+        """How far joint number `j` is pressed together (below 0) or pulled beyond its slack, m."""
+        gap = float(u[joint.link + 1] - u[joint.link]) + joint.gap
+        if self.state.bounds.joint_bond[j, 0] > 0:
+            return 0.0
+        return min(gap, 0.0) + max(gap - joint.slack, 0.0)
 
     def tangent(self, at: _Balance) -> tuple[Array, Array]:
         """Its diagonal and what stands beside it, with next to nothing added so that a wholly slipping trial can be
         solved."""
         head = self.chain.head
-        grounded, links = at.grounded[head:], at.links[head:]
-        diagonal = grounded + 1e-9 * float(self.state.rod.stiff.max()) / len(grounded)
+        links = at.links[head + self.first[1:] - 1]
+        diagonal = np.add.reduceat(at.grounded[head:], self.first)
+        diagonal += 1e-9 * float(self.state.rod.stiff.max()) / len(diagonal)
         diagonal[:-1] += links
         diagonal[1:] += links
         return diagonal, -links
@@ -133,7 +148,7 @@ class _Rest:
         trial = u
         for share in (1.0, 0.5, 0.25, 0.125):
             trial = u.copy()
-            trial[self.chain.head :] += share * change
+            trial[self.chain.head :] += share * change[self.group]
             at = self.unbalanced(trial)
             if float(np.linalg.norm(at.out)) < before:
                 break
@@ -142,7 +157,7 @@ class _Rest:
     def take(self, u: Array) -> None:
         """Write the rest into the state: displacements, materials, ground, joints."""
         chain, state = self.chain, self.state
-        still = np.zeros_like(u)
+        still, nodes = np.zeros_like(u), self.unbalanced(u).nodes
         link_forces(state.rod, u, still, state.motion.force, chain.dt)
         state.motion.u[:] = u
         s, bounds = state.shaft, state.bounds
@@ -155,9 +170,9 @@ class _Rest:
         if len(bounds.toe_par):
             _take_toe(bounds.toe_par, bounds.toe_state, float(u[-1]), float(self.groups[3].resist(u)[0][0]))
         for j, joint in self.joints:
-            gap = u[joint.link + 1] - u[joint.link] + joint.gap
-            over = min(gap, 0.0) + max(gap - joint.slack, 0.0)
-            bounds.joint_force[j] = -self.faces * over
+            bounds.joint_force[j] = -self.faces * self.over(u, j, joint)
+        for j in self.bonds:
+            bounds.joint_force[j] = bounds.joint_bond[j, 2] = nodes[chain.joints[j].link]
 
 
 def _springs_of(chain: Chain, state: State) -> list[_Springs]:

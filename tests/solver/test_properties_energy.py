@@ -143,7 +143,7 @@ def test_what_is_not_there_loses_nothing(tree: Tree) -> None:
     text, final = str(tree), result.ledger.final
     scale = largest_energy(result)
     has = {
-        "plastic": "elastic_plastic" in text or "brittle_tension" in text,
+        "plastic": "elastic_plastic" in text,
         "viscous": "viscoelastic" in text,
         "cushion_loss": "restitution" in text,
         "ground_static_loss": case["ground"] is not None,
