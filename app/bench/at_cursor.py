@@ -2,13 +2,14 @@
 
 from __future__ import annotations
 
+from math import floor, log10
 from typing import Any
 
 from PySide6.QtCore import QRectF, QSize, Qt
 from PySide6.QtGui import QColor, QFontMetricsF, QMouseEvent, QPainter, QResizeEvent
 from PySide6.QtWidgets import QScrollArea, QWidget
 
-from app.bench.field_values import DIMENSIONS, gauge_value, largest_of, screen_sign, settled, value_at
+from app.bench.field_values import DIMENSIONS, gauge_value, largest_in, largest_of, screen_sign, value_at
 from app.bench.pictures.cursor import between
 from app.bench.pictures.lettering import LEFT, RIGHT, fitted, put, width_of
 from app.bench.pictures.picture import Picture, Table
@@ -18,11 +19,28 @@ from app.look.palette import palette
 from app.look.spacing import GAP, SPACE
 from app.sight import Sight
 from app.solving import Solution
+from app.units import MINUS, NARROW_SPACE, NO_BREAK, Units
 from solver.model.project import Gauge
 
 #: What is read at a gauge, two in a line, and the dimension of each: the units tell them apart.
 READ = (("stress", "stress"), ("force", "force"), ("velocity", "velocity"), ("displacement", "small_length"))
 LEFT_EDGE = 8.0
+#: Digits of the largest value of a run that are shown, and decimals at most.
+DIGITS, DECIMALS = 4, 4
+
+
+def reading(units: Units, value: float, dimension: str, largest: float) -> str:
+    """A value (SI) in the unit and with the decimals that suit the largest of the run (SI): while time runs on the
+    digits keep their places, and what is nothing beside the largest reads as 0."""
+    unit = units.unit(dimension, largest)
+    top = abs(float(units.number(largest, dimension, largest)))
+    decimals = min(max(DIGITS - 1 - floor(log10(top)), 0), DECIMALS) if top > 0 else 0
+    text = f"{float(units.number(value, dimension, largest)):,.{decimals}f}"
+    if not text.strip("-0.,"):
+        text = "0"
+    elif abs(top) < 1e4:
+        text = text.replace(",", "")
+    return f"{text.replace('-', MINUS).replace(',', NARROW_SPACE)}{NO_BREAK}{unit}"
 
 
 class AtCursor(QScrollArea):
@@ -107,8 +125,8 @@ class _Readings(Picture):
         self._row(painter, y, units.show(time, "time"), "" if place is None else units.show(place, "length"))
         value = value_at(self.result, quantity, time, place) if self.result and place is not None else None
         if self.result is not None and value is not None:
-            value = settled(value, largest_of(self.result, quantity))
-            shown = units.show(screen_sign(quantity, units) * value, DIMENSIONS[quantity])
+            value *= screen_sign(quantity, units)
+            shown = reading(units, value, DIMENSIONS[quantity], largest_of(self.result, quantity))
             self._row(painter, y + self.line(), quantity, shown, colours.ink)
         return y + (1 if place is None else 2) * self.line()
 
@@ -161,7 +179,8 @@ class _Readings(Picture):
             beside = number % 2 == 1 and self.two_columns()
             at, align = (right, RIGHT) if beside else (LEFT_EDGE, LEFT)
             y += 0 if beside else line
-            put(painter, at, y, units.show(value, dimension), colours.ink, align)
+            text = reading(units, value, dimension, largest_in(record, quantity))
+            put(painter, at, y, text, colours.ink, align)
 
     def mousePressEvent(self, event: QMouseEvent) -> None:
         index = int((event.position().y() - self.top()) // self.block())

@@ -18,8 +18,6 @@ from solver import Case, GaugeRecord, Result
 
 Array = NDArray[np.float64]
 
-#: Share of the largest value of a record below which a reading is nothing.
-NOTHING = 1e-4
 #: Quantities whose sign the project chooses; the others point towards the far end whatever it chooses.
 SIGNED = ("stress", "force", "strain")
 DIMENSIONS: dict[str, str] = {
@@ -74,23 +72,14 @@ def value_at(result: Result, quantity: ShownQuantity, time: float, place: float)
 
 
 def gauge_value(gauge: GaugeRecord, quantity: str, time: float) -> float:
-    """A quantity of a gauge's record at a time (s), linear between steps, and 0 where it is nothing beside the record's
-    largest."""
-    if not len(gauge.time):
-        return 0.0
-    value = float(np.interp(time, gauge.time, getattr(gauge, quantity)))
-    return settled(value, _largest_in(gauge, quantity))
+    """A quantity of a gauge's record at a time (s), linear between steps."""
+    return float(np.interp(time, gauge.time, getattr(gauge, quantity))) if len(gauge.time) else 0.0
 
 
 @lru_cache(maxsize=128)
-def _largest_in(gauge: GaugeRecord, quantity: str) -> float:
+def largest_in(gauge: GaugeRecord, quantity: str) -> float:
+    """Largest magnitude of a quantity in a gauge's record."""
     return float(np.max(np.abs(getattr(gauge, quantity)), initial=0.0))
-
-
-def settled(value: float, largest: float) -> float:
-    """The value, and 0 below 1e-4 of the largest: what is read then is the ringing of the mesh, in digits that mean
-    nothing."""
-    return value if abs(value) >= NOTHING * largest else 0.0
 
 
 @dataclass(frozen=True, eq=False)

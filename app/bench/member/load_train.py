@@ -10,7 +10,7 @@ from PySide6.QtCore import QLineF, QPointF, QRectF, Qt
 from PySide6.QtGui import QColor, QFontMetricsF, QPainter, QPolygonF
 
 from app.bench.member.glyphs import arrow_down, outline, pen, pulse_shape
-from app.bench.pictures.lettering import RIGHT, fitted, put, width_of
+from app.bench.pictures.lettering import RIGHT, put, width_of
 from app.look.palette import palette
 from app.units import Units
 from solver import Case
@@ -118,13 +118,8 @@ def draw_pulse(
     if isinstance(load, Pulse):
         dimension = "force" if load.quantity == "force" else "velocity"
         text = units.show(abs(load.peak), dimension)
-        put(
-            painter,
-            box.left(),
-            box.top() - 0.55 * line,
-            fitted(text, painter.font(), right - box.left()),
-            colours.soft_ink,
-        )
+        left = min(box.left(), right - width_of(text, painter.font()))
+        put(painter, left, box.top() - 0.55 * line, text, colours.soft_ink)
     painter.setPen(pen(colours.line))
     painter.drawLine(QLineF(box.bottomLeft(), box.bottomRight()))
     return QRectF(QPointF(centre - 8, box.top()), box.bottomRight())

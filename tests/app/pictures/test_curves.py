@@ -10,11 +10,13 @@ from hypothesis import given
 from hypothesis import strategies as st
 from PySide6.QtCore import QRectF
 
+from app.bench.at_cursor import reading
 from app.bench.pictures.axes import Axis, inside, tick_texts, ticks
 from app.bench.pictures.curve_labels import Drawn, Heights, Wanted, crosses, place_labels
 from app.bench.pictures.curves import polygon, thinned
 from app.bench.pictures.lettering import spread
 from app.bench.strips.strip import Strip
+from app.units import Units
 
 
 @given(
@@ -120,3 +122,17 @@ def test_a_box_is_crossed_by_a_curve_through_it_even_without_a_point_in_it():
     assert crosses(slope, QRectF(40, 40, 20, 20))
     assert not crosses(slope, QRectF(40, 0, 20, 20))
     assert not crosses(Drawn(np.zeros(0), np.zeros(0)), QRectF(0, 0, 10, 10))
+
+
+def test_a_reading_keeps_its_decimals_while_time_runs_on():
+    """Units and decimals are those of the largest value of the run: 6012 kN, 14.70 mm, 0.0222 m/s."""
+    units = Units()
+    for value, dimension, largest, shown in (
+        (2.855e6, "force", 6.012e6, "2855 kN"),
+        (70.0, "force", 6.012e6, "0 kN"),
+        (4.17e-9, "small_length", 14.7e-3, "0 mm"),
+        (-9.984e-3, "small_length", 14.7e-3, "−9.98 mm"),
+        (-2.77e-3, "velocity", 22.2e-3, "−0.0028 m/s"),
+        (0.0, "stress", 0.0, "0 MPa"),
+    ):
+        assert reading(units, value, dimension, largest).replace("\xa0", " ") == shown
