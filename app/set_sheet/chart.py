@@ -77,7 +77,7 @@ def _set_axis(scene: Scene, frame: Frame, units: Units, per: str) -> None:
     scale, rows, letters, unit = frame.set, frame.rows, frame.letters, units.unit("small_length")
     one = 1 / units.number(1.0, "small_length")
     captions = (f"{unit} (scale of square roots)", f"{unit}, square roots", unit)
-    panel(scene, rows, scale, "Set per blow", captions, letters)
+    panel(scene, rows, scale, ("Set per blow", "Set"), captions, letters)
     numbers_below(scene, rows, scale, root_ticks(scale.high / one), one, letters)
     scene.append(Line(((scale.start, rows.top), (scale.stop, rows.top)), "line"))
     scene.append(Words((scale.stop, rows.first), f"blows per {per}", "soft_ink", "small", "right"))
@@ -99,7 +99,7 @@ def _stress_axis(scene: Scene, frame: Frame, sheet: Sheet, units: Units) -> None
         scene,
         rows,
         scale,
-        "Peak stresses",
+        ("Peak stresses", "Stresses"),
         (f"{unit}, {positive} positive", f"{unit}, {positive} +", unit),
         letters,
     )
@@ -140,7 +140,7 @@ def _energy_axis(scene: Scene, frame: Frame, sheet: Sheet, units: Units) -> None
     scale, rows, letters = frame.energy, frame.rows, frame.letters
     one = 1 / units.number(1.0, "energy")
     gauge = next((c.energy.gauge for c in sheet.cells if c.energy), None)
-    panel(scene, rows, scale, "Energy", (units.unit("energy"),), letters)
+    panel(scene, rows, scale, ("Energy",), (units.unit("energy"),), letters)
     if sheet.cells:
         words = (f"past gauge {gauge}", f"past {gauge}") if gauge else ("no gauge on the member", "no gauge")
         text = fitted(words, scale.stop - scale.start + 10, letters)

@@ -109,9 +109,22 @@ def _ground(scene: Scene, frame: DepthFrame, case: Case) -> None:
         y0, y1 = down.at(top), down.at(min(bottom, down.high))
         if index % 2 == 0:
             scene.append(Area(((left, y0), (right, y0), (right, y1), (left, y1)), "grid", 0.28))
-        if y1 - y0 > 1.2 * letters.line:
-            text = fitted((name,), frame.spans[0][1] - name_at, letters)
-            scene.append(Words((name_at, y0 + letters.line), text, "ground_line"))
+        for number_of_line, text in enumerate(_wrapped(name, frame.spans[0][1] - name_at, letters), start=1):
+            y = y0 + number_of_line * letters.line
+            if y + 0.25 * letters.line < y1:
+                scene.append(Words((name_at, y), text, "ground_line"))
+
+
+def _wrapped(name: str, room: float, letters: Letters) -> list[str]:
+    """A name in lines that fit, cut only within a word that is too long."""
+    lines: list[str] = []
+    for word in name.split():
+        longer = f"{lines[-1]} {word}" if lines else word
+        if lines and letters.width(longer, "small") <= room:
+            lines[-1] = longer
+        else:
+            lines.append(word)
+    return [fitted((line,), room, letters) for line in lines]
 
 
 def _member(scene: Scene, frame: DepthFrame, case: Case) -> None:
@@ -160,7 +173,7 @@ def _resistance(scene: Scene, frame: DepthFrame, points: Sequence[DepthPoint], u
         scene,
         frame.rows,
         scale,
-        "Resistance",
+        ("Resistance",),
         (f"{units.unit('force')} while driving", units.unit("force")),
         frame.letters,
     )
@@ -188,7 +201,7 @@ def _set(scene: Scene, frame: DepthFrame, points: Sequence[DepthPoint], units: U
     scale = Scale(0.0, largest * 1.08, *frame.spans[2], root=True)
     unit, one = units.unit("small_length"), 1 / units.number(1.0, "small_length")
     captions = (f"{unit} (scale of square roots)", f"{unit}, square roots", unit)
-    panel(scene, frame.rows, scale, "Set per blow", captions, frame.letters)
+    panel(scene, frame.rows, scale, ("Set per blow", "Set"), captions, frame.letters)
     numbers_below(scene, frame.rows, scale, root_ticks(scale.high / one), one, frame.letters)
     x = scale.at(REFUSAL)
     if x < scale.stop:
@@ -215,7 +228,7 @@ def _stress(scene: Scene, frame: DepthFrame, points: Sequence[DepthPoint], case:
         scene,
         frame.rows,
         scale,
-        "Peak stresses",
+        ("Peak stresses", "Stresses"),
         (f"{unit}, {second} positive", f"{unit}, {second} +", unit),
         frame.letters,
     )
@@ -243,7 +256,12 @@ def _time(scene: Scene, frame: DepthFrame, depths: Depths) -> None:
     }
     scale = Scale(0.0, max([*known.values(), 0.1]) * 1.1, *frame.spans[4])
     panel(
-        scene, frame.rows, scale, "Driving time", ("minutes from the first depth", "minutes"), frame.letters
+        scene,
+        frame.rows,
+        scale,
+        ("Driving time", "Time"),
+        ("minutes from the first depth", "minutes"),
+        frame.letters,
     )
     numbers_below(scene, frame.rows, scale, ticks(0.0, scale.high, 3), 1.0, frame.letters)
     points = [p for p in depths.points if p.penetration in known and p.cell.set is not None]

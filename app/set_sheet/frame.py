@@ -132,15 +132,14 @@ def resistance_axis(scene: Scene, frame: Frame, units: Units) -> None:
 
 
 def panel(
-    scene: Scene, rows: Rows, scale: Scale, title: str, captions: Sequence[str], letters: Letters
+    scene: Scene, rows: Rows, scale: Scale, titles: Sequence[str], captions: Sequence[str], letters: Letters
 ) -> None:
-    """Frame, title and caption of one panel; of the captions the first that fits."""
+    """Frame, title and caption of one panel; of each the first that fits."""
     room = scale.stop - scale.start
     for x, y in ((scale.stop, rows.foot), (scale.start, rows.top)):
         scene.append(Line(((scale.start, rows.foot), (x, y)), "line"))
-    scene.append(
-        Words((scale.start, rows.title), fitted((title,), room + GAP - 4, letters, "strong"), "ink", "strong")
-    )
+    title = fitted(titles, room + RIGHT - 2, letters, "strong")
+    scene.append(Words((scale.start, rows.title), title, "ink", "strong"))
     text = fitted(captions, room + GAP - 4, letters)
     scene.append(Words(((scale.start + scale.stop) / 2, rows.caption), text, "soft_ink", "small", "middle"))
 

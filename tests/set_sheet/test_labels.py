@@ -5,10 +5,12 @@ from itertools import combinations
 import pytest
 
 from app.set_sheet.chart import chart
+from app.set_sheet.depth_chart import depth_chart
 from app.set_sheet.scene import Letters, Line, Scene, Words, box_of, fitted, overlap, touches
 from app.units import Units
 from solver.studies import Sheet, plan_of, solve_sheet
-from tests.studies.piles import pile
+from solver.studies.settings import DepthSettings
+from tests.studies.piles import layer, pile
 
 US = Units("us")
 METRIC = Units(compression_positive=True)
@@ -42,6 +44,25 @@ def test_no_word_stands_on_another(sheet: Sheet, units: Units, size: str, width:
         assert top >= 0, text
         assert right <= width, text
         assert bottom <= height, text
+
+
+@pytest.mark.parametrize("units", [METRIC, US], ids=["metric", "us"])
+@pytest.mark.parametrize("size", LETTERS)
+@pytest.mark.parametrize(("width", "height"), [(920, 600), (790, 540)])
+def test_no_word_of_the_depths_stands_on_another(units: Units, size: str, width: int, height: int) -> None:
+    layers = [layer("Soft clay with shells", 3.0, 20e3), layer("Dense sand", 20.0, 400e3)]
+    case = pile(elements=24, limit=150e6, layers=layers)
+    depths = DepthSettings().study(case)
+    assert depths is not None
+    assert depths.first_refusal is not None
+    assert depths.first_over is not None
+    scene = depth_chart(depths, case, units, width, height, letters(size))
+    words = [(item.text, box_of(item, letters(size))) for item in scene if isinstance(item, Words)]
+    for (text, box), (other, its) in combinations(words, 2):
+        assert not overlap(box, its), (text, other)
+    assert all(
+        0 <= left and 0 <= top and right <= width and low <= height for _t, (left, top, right, low) in words
+    )
 
 
 @pytest.mark.parametrize("size", LETTERS)
