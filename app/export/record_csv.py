@@ -6,6 +6,8 @@ import csv
 import io
 from collections.abc import Callable, Iterable, Iterator
 
+import numpy as np
+
 from app.export.plain_text import harmless, harmless_comment
 from app.export.record_choices import RecordChoices
 from app.export.record_table import RecordTable
@@ -34,14 +36,24 @@ def rows(table: RecordTable, choices: RecordChoices, most: int | None = None) ->
     writer = csv.writer(stream, delimiter=separator, lineterminator="\r\n")
     writer.writerow([harmless(column.heading) for column in table.columns])
     yield stream.getvalue()
-    written = [_numbers(column.values[:most], choices) for column in table.columns]
+    time, *others = (column.values[:most] for column in table.columns)
+    written = [_numbers(time, choices, _digits_of_time(time, choices.digits))]
+    written += [_numbers(values, choices, choices.digits) for values in others]
     for row in zip(*written, strict=True):
         yield separator.join(row) + "\r\n"
 
 
-def _numbers(values: Array, choices: RecordChoices) -> Iterable[str]:
+def _digits_of_time(time: Array, digits: int | None) -> int | None:
+    """As many as tell two samples apart to a thousandth of a step, however few are asked for."""
+    if digits is None or len(time) < 2:
+        return digits
+    steps = float(np.max(np.abs(time))) / float(time[1] - time[0])
+    return max(digits, int(np.ceil(np.log10(steps))) + 3)
+
+
+def _numbers(values: Array, choices: RecordChoices, digits: int | None) -> Iterable[str]:
     write: Callable[[float], str] = repr
-    if choices.digits is not None:
-        write = f"%.{choices.digits}g".__mod__
+    if digits is not None:
+        write = f"%.{digits}g".__mod__
     texts = map(write, values.tolist())
     return (text.replace(".", ",") for text in texts) if choices.decimal_comma else texts

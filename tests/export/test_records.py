@@ -61,6 +61,14 @@ def test_sign_units_and_digits_are_as_chosen_and_said(bar):
     assert "kip" in next(line for line in data.decode().splitlines() if line.startswith("# units"))
 
 
+def test_few_digits_leave_the_samples_apart(bar):
+    """Two digits of each quantity; time keeps as many as a thousandth of a step needs."""
+    found = read_csv(record_csv(*table_of(bar, digits=2)))
+    near = bar[1].gauges["Near"]
+    assert found["time_s"].to_numpy() == pytest.approx(near.time, abs=1e-3 * near.time_step)
+    assert found["Near.force_N"].to_numpy() == pytest.approx(near.force, rel=0.06)
+
+
 def test_waves_keep_their_meaning_in_either_sign(bar):
     """A wave is a force: with its sign turned, down = (F + Z v)/2 and up = (F - Z v)/2, and their sum is F."""
     found = read_csv(record_csv(*table_of(bar, compression_positive=True)))
