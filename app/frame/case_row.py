@@ -106,7 +106,7 @@ class CaseRow(QWidget):
 
     def wanted(self) -> int:
         """Pixels at which all cases are shown."""
-        return sum(self._widths()) + GAP + self._add.sizeHint().width()
+        return sum(self._widths()) + 2 * GAP + self._add.sizeHint().width()
 
     def least(self) -> int:
         """Pixels for the case looked at, the list of all, and the button for another."""
@@ -142,7 +142,7 @@ class CaseRow(QWidget):
             )
             button.setText(self.fontMetrics().elidedText(_short(self._names[index]), ELIDE, text))
         self._all.setVisible(not fits and len(widths) > 1)
-        self._scroll.setMaximumWidth(sum(widths[first:last]) + GAP)
+        self._scroll.setMaximumWidth(sum(widths[first:last]) + 2 * GAP)
 
     def _rebuild(self) -> None:
         for button in self._buttons:

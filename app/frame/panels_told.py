@@ -69,7 +69,7 @@ def offer_starting_points(parent: QWidget, begin: Callable[[Any], object]) -> QD
         button = QPushButton(f"{point.name}\n{point.tells}", dialog)
         button.setProperty("role", "choice")
         button.setAccessibleName(point.name)
-        button.setMinimumWidth(460)
+        button.setMinimumWidth(max(460, button.fontMetrics().horizontalAdvance(point.tells) + 6 * SPACE))
         button.clicked.connect(lambda _on=False, p=point: (dialog.close(), begin(p)))
         column.addWidget(button)
     dialog.show()

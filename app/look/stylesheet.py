@@ -15,6 +15,8 @@ from app.look.fonts import LEVELS
 from app.look.palette import Palette
 from app.look.spacing import FIELD, GAP, RADIUS, SPACE
 
+#: Height of a line of text, px, for each point of its size.
+LINE = 1.85
 HERE = Path(__file__).resolve().parent
 SHEET = """
 QWidget {{ color: {ink}; }}
@@ -125,6 +127,9 @@ def stylesheet(palette: Palette, base_size: float) -> str:
     """The stylesheet of the whole program; `base_size` is the point size of body text."""
     sizes = {level: round(base_size * scale, 1) for level, (scale, _weight) in LEVELS.items()}
     inner = SPACE - 2
+    line = round(
+        base_size * LINE
+    )  # a height that is given is the least: large type must not be squeezed into it
     return SHEET.format(
         **{name: value for name, value in vars(palette).items() if isinstance(value, str)},
         **{name: sizes[name] for name in ("title", "figure", "small")},
@@ -137,7 +142,7 @@ def stylesheet(palette: Palette, base_size: float) -> str:
         radius=RADIUS,
         inner=inner,
         inner_focus=inner - 1,
-        field=FIELD - 2,
-        field_focus=FIELD - 4,
-        button=FIELD - 4,
+        field=max(FIELD - 2, line),
+        field_focus=max(FIELD - 2, line) - 2,
+        button=max(FIELD - 4, line),
     )
