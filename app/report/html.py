@@ -10,6 +10,7 @@ from app.report.blocks import Block, Bullets, Heading, Listing, Paragraph, Pictu
 from app.report.figures.svg import clean, svg_of
 
 STYLE = f"""
+:root {{ color-scheme: light; }}
 body {{ font-family: "DejaVu Sans", Verdana, sans-serif; font-size: 10pt; line-height: 1.45; color: {PRINT.ink};
   background: {PRINT.paper}; max-width: 52rem; margin: 2rem auto; padding: 0 1rem; }}
 h1 {{ font-size: 20pt; }} h2 {{ font-size: 15pt; margin-top: 2.2em; border-bottom: 1px solid {PRINT.edge}; }}
@@ -26,8 +27,9 @@ pre {{ font-size: 7.5pt; white-space: pre-wrap; overflow-wrap: anywhere; backgro
 footer {{ margin-top: 3em; font-size: 8.5pt; color: {PRINT.soft_ink}; }}
 .particulars td:first-child {{ width: 9rem; color: {PRINT.soft_ink}; }}
 @media print {{ h2, h3, h4, caption {{ break-after: avoid; }} tr, figure {{ break-inside: avoid; }}
-  thead {{ display: table-header-group; }} }}
-@page {{ size: PAPER; }}
+  thead {{ display: table-header-group; }} body {{ max-width: none; margin: 0; padding: 0; }}
+  a {{ color: inherit; text-decoration: none; }} p, li {{ orphans: 2; widows: 2; }} }}
+@page {{ size: PAPER; margin: 16mm 20mm; }}
 """
 
 
@@ -48,10 +50,11 @@ def html_of(report: Report) -> str:
     )
     body = "".join(_section(section, number) for number, section in enumerate(report.sections, 1))
     return (
-        f'<!DOCTYPE html>\n<html lang="en"><head><meta charset="utf-8"><title>{title}</title>'
+        f'<!DOCTYPE html>\n<html lang="en"><head><meta charset="utf-8">'
+        f'<meta name="viewport" content="width=device-width"><title>{title}</title>'
         f"<style>{STYLE.replace('PAPER', report.paper)}</style></head><body>{logo}"
         f'<h1 dir="auto">{title}</h1><p>{_text(front.subtitle)}</p><table class="particulars"><tbody>{rows}</tbody>'
-        f'</table>{verdict}<p class="caution">{_text(front.caution)}</p><ol>{contents}</ol>{body}'
+        f"</table>{verdict}<p>{_text(front.caution)}</p><ol>{contents}</ol>{body}"
         f'<footer dir="auto">{_text(report.footer)}</footer></body></html>\n'
     )
 

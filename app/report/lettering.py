@@ -8,10 +8,14 @@ import unicodedata
 from functools import lru_cache
 from pathlib import Path
 
+from reportlab import rl_config
 from reportlab.pdfbase import pdfmetrics
 from reportlab.pdfbase.ttfonts import TTFont
 
 from app.report.reading_order import on_paper, turns
+
+#: Streams of a PDF as bytes, not as letters that stand for bytes: a fifth smaller, and a quarter of the time saved.
+rl_config.useA85 = 0
 
 REGULAR, BOLD = "ReportText", "ReportStrong"
 FILES = {REGULAR: "DejaVuSans.ttf", BOLD: "DejaVuSans-Bold.ttf"}

@@ -64,6 +64,11 @@ class _Pages(BaseDocTemplate):
         frame = Frame(MARGIN, HIGH, self.width, self.height, 0, 0, 0, 0)
         self.addPageTemplates([PageTemplate("plain", [frame], onPage=self._furnish)])
 
+    @property
+    def only_counts(self) -> bool:
+        """In the first pass nobody knows how many pages there are: it is never the last, and needs no figures."""
+        return self._pages == 0
+
     def _furnish(self, canvas: Canvas, _document: Any) -> None:
         if canvas.getPageNumber() == 1:
             set_date(canvas, self._date)

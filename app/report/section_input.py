@@ -146,7 +146,9 @@ def _ground(case: Case, units: Units) -> Iterator[Block]:
     if case.ground is None:
         yield Paragraph("There is no ground in this case.")
         return
-    surface = f"The ground surface lies {exact(case.ground.surface, 'length', units)} from the struck end."
+    depth = case.member.length - case.ground.surface
+    surface = f"The ground surface lies {exact(case.ground.surface, 'length', units)} from the struck end"
+    surface += f"; the member stands {exact(depth, 'length', units)} in the ground." if depth > 0 else "."
     if case.ground.inner_share:
         surface += (
             f" {100 * case.ground.inner_share:g} % of the unit resistance acts inside open pipes as well."
