@@ -9,7 +9,7 @@ from PySide6.QtCore import QRectF, QSize, Qt
 from PySide6.QtGui import QColor, QFontMetricsF, QMouseEvent, QPainter, QResizeEvent
 from PySide6.QtWidgets import QScrollArea, QWidget
 
-from app.bench.field_values import DIMENSIONS, gauge_value, largest_in, largest_of, screen_sign, value_at
+from app.bench.field_values import DIMENSIONS, gauge_value, largest_of, largest_read, screen_sign, value_at
 from app.bench.pictures.cursor import between
 from app.bench.pictures.lettering import LEFT, RIGHT, fitted, put, width_of
 from app.bench.pictures.picture import Picture, Table
@@ -172,14 +172,14 @@ class _Readings(Picture):
         painter.setFont(self.font())
         put(painter, right, y, place, colours.soft_ink, RIGHT)
         record = self.result.gauges.get(gauge.name) if self.result is not None else None
-        if record is None:
+        if self.result is None or record is None:
             return
         for number, (quantity, dimension) in enumerate(READ):
             value = screen_sign(quantity, units) * gauge_value(record, quantity, self.sight.time)
             beside = number % 2 == 1 and self.two_columns()
             at, align = (right, RIGHT) if beside else (LEFT_EDGE, LEFT)
             y += 0 if beside else line
-            text = reading(units, value, dimension, largest_in(record, quantity))
+            text = reading(units, value, dimension, largest_read(self.result, quantity))
             put(painter, at, y, text, colours.ink, align)
 
     def mousePressEvent(self, event: QMouseEvent) -> None:

@@ -17,6 +17,9 @@ from app.bench.pictures.line_styles import over_pen
 from app.look.palette import palette
 from app.sight import ShownQuantity
 
+#: Places along the member where the name of a case laid over is tried.
+PLACES = 12
+
 
 @dataclass(frozen=True)
 class Scale:
@@ -68,18 +71,28 @@ def draw_extremes(painter: QPainter, scale: Scale, found: Extremes) -> None:
     put_on(painter, left, below, "whole run", hue, palette().paper)
 
 
-def draw_over(painter: QPainter, scale: Scale, found: Extremes, name: str, number: int) -> None:
-    """Those of a case laid over, with its name on the larger curve."""
+def draw_over(
+    painter: QPainter, scale: Scale, found: Extremes, name: str, number: int, all_of_them: list[Extremes]
+) -> None:
+    """Those of a case laid over, with its name beside the larger curve where no curve of any runs through it."""
     y = scale.y(found.position)
     for ends, hue in zip((found.lowest, found.highest), scale.hues, strict=True):
         painter.setPen(over_pen(hue, number))
         painter.drawPolyline(polygon(scale.x(ends), y))
     ends, hue = _larger(found, scale)
-    row = int((0.3 + 0.17 * number) * (len(ends) - 1))
     name = fitted(name, painter.font(), scale.plot.width() * 0.6)
-    width = width_of(name, painter.font())
-    left = _between(float(scale.x(ends[row : row + 1])[0]) - width / 2, width, scale.plot)
-    put_on(painter, left, float(y[row]), name, hue, palette().paper)
+    width, line = width_of(name, painter.font()), QFontMetricsF(painter.font()).height()
+    curves = [(scale.y(e.position), scale.x(ends)) for e in all_of_them for ends in (e.lowest, e.highest)]
+    boxes = [
+        QRectF(left, float(y[row]) - line / 2, width, line)
+        for row in np.linspace(0, len(ends) - 1, PLACES + 2).astype(int)[1:-1]
+        for left in (float(scale.x(ends)[row]) + 6, float(scale.x(ends)[row]) - 6 - width)
+    ]
+    usual = boxes[2 * (3 + 2 * number)]
+    inside = [box for box in boxes if scale.plot.contains(box)]
+    inside.sort(key=lambda box: (_crossed(box, curves), abs(box.top() - usual.top())))
+    box = next(iter(inside), usual)
+    put_on(painter, box.left(), box.center().y(), name, hue, palette().paper)
 
 
 def is_free(box: QRectF, scale: Scale, envelopes: list[Extremes]) -> bool:
@@ -93,6 +106,13 @@ def is_free(box: QRectF, scale: Scale, envelopes: list[Extremes]) -> bool:
         if x.min() < box.right() + 3 and x.max() > box.left() - 3:
             return False
     return True
+
+
+def _crossed(box: QRectF, curves: list[tuple[np.ndarray, np.ndarray]]) -> int:
+    """How many curves, as heights and places across, run through a box."""
+    rows = np.linspace(box.top() - 1, box.bottom() + 1, 5)
+    across = (np.interp(rows, y, x) for y, x in curves)
+    return sum(bool(x.min() < box.right() + 2 and x.max() > box.left() - 2) for x in across)
 
 
 def _larger(found: Extremes, scale: Scale) -> tuple[np.ndarray, str]:

@@ -76,10 +76,11 @@ def gauge_value(gauge: GaugeRecord, quantity: str, time: float) -> float:
     return float(np.interp(time, gauge.time, getattr(gauge, quantity))) if len(gauge.time) else 0.0
 
 
-@lru_cache(maxsize=128)
-def largest_in(gauge: GaugeRecord, quantity: str) -> float:
-    """Largest magnitude of a quantity in a gauge's record."""
-    return float(np.max(np.abs(getattr(gauge, quantity)), initial=0.0))
+@lru_cache(maxsize=16)
+def largest_read(result: Result, quantity: str) -> float:
+    """Largest magnitude of a quantity in the records of all gauges."""
+    records = (getattr(gauge, quantity) for gauge in result.gauges.values())
+    return max((float(np.max(np.abs(record), initial=0.0)) for record in records), default=0.0)
 
 
 @dataclass(frozen=True, eq=False)

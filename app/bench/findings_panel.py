@@ -6,6 +6,7 @@ The facts are the solver's (`findings_of`), the sentences those of `app.words`; 
 from __future__ import annotations
 
 from collections.abc import Iterator
+from dataclasses import replace
 from functools import lru_cache
 from typing import Any
 
@@ -130,12 +131,13 @@ class FindingsPanel(QFrame):
         result, units = self._solution.result, units_of(self._document.project)
         stands = not self._document.rejected and self._solution.state not in ("stale", "refused")
         over = () if self._laid_over is None else self._laid_over.shown
-        shown = (result, units, stands, self._solution.message, over)
+        under_way = result is not None and not result.finished and self._solution.state == "solving"
+        shown = (result, units, stands, self._solution.message, over, under_way)
         if shown == self._shown:
             return
         self._shown, self._answered = shown, False
         verdict = list(_verdict(result, units)) if result is not None else []
-        notes = list(_notes(result, units)) if result is not None else []
+        notes = list(_notes(result, units, under_way)) if result is not None else []
         if self._solution.state == "refused" and self._solution.message:
             verdict.insert(0, Told(detail=f"✕ {self._solution.message}", stands=True))
         self._show(self._verdict, self._verdict_rows, verdict, stands)
@@ -196,8 +198,13 @@ def _verdict(result: Result, units: Units) -> Iterator[Told]:
         yield Told(line.figure, line.name, line.detail, line.state, leads, brief=short)
 
 
-def _notes(result: Result, units: Units) -> Iterator[Told]:
+def _notes(result: Result, units: Units, under_way: bool) -> Iterator[Told]:
     facts = facts_of(result)
+    if under_way:  # it has not been stopped, it has not ended yet
+        facts = replace(facts, quality=replace(facts.quality, finished=True))
+        yield Told(
+            detail=f"Being solved: told here is what happened until {units.show(result.duration, 'time')}."
+        )
     for note in (*words.notes(facts, result.case, units), *run_words.of_the_run(result, units)):
         yield Told(detail=note.text, leads=_leads(note.time, note.position, note.pointer))
     locked = run_words.locked_in(result.residual, units) if result.residual is not None else None

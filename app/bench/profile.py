@@ -214,7 +214,7 @@ class Profile(Picture):
         found = [extremes_of(result, quantity) for result in self._all_results()]
         draw_extremes(painter, scale, found[0])
         for one, extremes in zip(self._others(), found[1:], strict=True):
-            draw_over(painter, scale, extremes, one.name, one.number)
+            draw_over(painter, scale, extremes, one.name, one.number, found)
 
         def free(box: QRectF) -> bool:
             return is_free(box, scale, found)

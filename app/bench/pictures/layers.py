@@ -143,7 +143,7 @@ class Layered(QWidget):
         plot, line = self.plot(), QFontMetricsF(painter.font()).height()
         x, soft = plot.left() - 6, palette().soft_ink
         if of_time and self.lacks_numbers("time"):
-            put(painter, x, plot.bottom() + 0.75 * line, of_time, soft, RIGHT)
+            put(painter, x - 8, plot.bottom() + 0.75 * line, of_time, soft, RIGHT)
         if self.lacks_numbers("distance"):
             put(painter, x, plot.top() + 0.5 * line, self.units.unit("length"), soft, RIGHT)
 
