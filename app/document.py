@@ -8,7 +8,7 @@ from pathlib import Path
 from time import monotonic
 from typing import Any
 
-from PySide6.QtCore import QIODevice, QObject, QSaveFile, Signal
+from PySide6.QtCore import QIODevice, QObject, QSaveFile, QThread, Signal
 from PySide6.QtGui import QUndoCommand, QUndoStack
 
 from app import tree as trees
@@ -20,6 +20,9 @@ from solver import Case, Project, ProjectError, load_project, project_from_tree,
 
 #: Edits with the same `merge` key become one step of undo while no longer than this lies between them, s.
 BURST = 2.0
+#: Pauses before a file that could not be replaced is tried again, ms: on Windows virus scanners and programs that
+#: carry files to a cloud hold a file for a moment after each writing.
+AGAIN = (60, 150)
 
 
 class DocumentError(Exception):
@@ -338,13 +341,17 @@ def _not_done(label: str, sentence: str) -> str:
 
 
 def _write(path: Path, text: str) -> None:
-    file = QSaveFile(str(path))
     data = text.encode(
         "utf-8", errors="backslashreplace"
     )  # half of a surrogate pair: the escape that JSON has for it
-    done = file.open(QIODevice.OpenModeFlag.WriteOnly) and file.write(data) == len(data) and file.commit()
-    if not done:
+    reason = ""
+    for pause in (*AGAIN, 0):
+        file = QSaveFile(str(path))
+        if file.open(QIODevice.OpenModeFlag.WriteOnly) and file.write(data) == len(data) and file.commit():
+            return
         reason = file.errorString().strip().rstrip(".")
-        raise DocumentError(
-            f"'{path.name}' could not be saved in {path.parent}: {reason}. Your work is kept here; save it elsewhere."
-        )
+        if path.exists():
+            QThread.msleep(pause)
+    raise DocumentError(
+        f"'{path.name}' could not be saved in {path.parent}: {reason}. Your work is kept here; save it elsewhere."
+    )

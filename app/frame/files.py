@@ -183,8 +183,22 @@ class Files:
         name, _ = QFileDialog.getSaveFileName(self._parent, "Save the project", str(start), FILTER)
         if not name:
             return False
-        path = Path(name)
-        return self.save_to(path if path.suffix else path.with_suffix(ENDING))
+        typed = Path(name)
+        if typed.suffix.casefold() == ENDING:
+            return self.save_to(typed)
+        path = typed.with_name(typed.name + ENDING)  # which the system's dialog has not asked about
+        if path.exists() and path != window.document.path:
+            window.notices.show_notice(
+                "saving",
+                f"'{path.name}' is in {path.parent} already, and was not replaced.",
+                "near",
+                [
+                    ("Save over it", partial(self.save_to, path)),
+                    ("Save under another name…", self.ask_save_as),
+                ],
+            )
+            return False
+        return self.save_to(path)
 
     def save_to(self, path: Path) -> bool:
         """Save to a file and tell where that does not work."""

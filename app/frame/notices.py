@@ -65,13 +65,13 @@ class Notices(QWidget):
             strip.deleteLater()
         self.setVisible(bool(self._strips))
 
-    def changeEvent(self, event: QEvent) -> None:
-        """Draw signs and icons anew in another palette."""
-        if event.type() == QEvent.Type.PaletteChange:
+    def event(self, event: QEvent) -> bool:
+        """Draw signs and icons anew in another palette, and on a screen of another scale."""
+        if event.type() in (QEvent.Type.PaletteChange, QEvent.Type.DevicePixelRatioChange):
             for key, shown in list(self._shown.items()):
                 self.drop(key)
                 self.show_notice(key, *shown)
-        super().changeEvent(event)
+        return super().event(event)
 
     def text_of(self, key: str) -> str | None:
         """What the strip with this key says."""

@@ -61,7 +61,7 @@ class Autosave(QObject):
                 self.keep_now()  # so many events wait that the timer does not get its turn
 
     def keep_now(self) -> None:
-        """Write what is not saved. Where the disk refuses, says so once and goes on trying at each edit."""
+        """Write what is not saved. Where the disk refuses, says so once and goes on trying."""
         self._timer.stop()
         document = self._document
         if not document.dirty or document.project is self._written:
@@ -83,6 +83,7 @@ class Autosave(QObject):
                 self.failed.emit(
                     f"Unsaved work cannot be kept in {self._place.parent}: {error}. Save it yourself."
                 )
+            self._timer.start()  # a virus scanner or a network drive may let go of it soon
             return
         self._written, self._told = document.project, False
 

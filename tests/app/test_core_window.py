@@ -199,8 +199,7 @@ def test_saving_and_opening(window, tmp_path, monkeypatch):
     monkeypatch.setattr(QFileDialog, "getSaveFileName", lambda *_args: (str(path), ""))
     window.document.edit("Title", "/title", "Saved")
     assert window.save()  # it has no file yet, so it asks
-    file = tmp_path / "pile nr. 1"
-    file = file if file.exists() else file.with_suffix(".strike")
+    file = tmp_path / "pile nr. 1.strike"
     assert load_project(file).title == "Saved"
     assert not window.isWindowModified()
     assert window.settings.recent[0] == window.document.path
