@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections.abc import Callable
 from dataclasses import dataclass
 
 import numpy as np
@@ -165,15 +166,24 @@ def _static_displacements(chain: Chain, state: State, weight: Array, soil: _Soil
     between = stiff[head + first[1:] - 1]
     held = chain.fixed_end or chain.wall_gap == 0
     u, still, force = np.zeros(n), np.zeros(n), np.zeros(n - 1)
-    for _ in range(200):
-        if link_forces(state.rod, u, still, force, chain.dt) >= 0:
-            raise SolveError(
-                "The member leaves its elastic range under its own weight: see the material's law."
-            )
+
+    # trials may lie far beyond the balance, and leave no trace
+    elastic = state.rod._replace(state=state.rod.state.copy())
+
+    def pull_at(u: Array) -> tuple[Array, Array]:
+        elastic.state[:] = state.rod.state
+        link_forces(elastic, u, still, force, chain.dt)
         resist, slope = soil.force_and_slope(u)
         pull = weight - resist - chain.spring * u
         pull[:-1] += force
         pull[1:] -= force
+        total = np.add.reduceat(pull[head:], first)
+        if held:
+            total[-1] = 0.0
+        return total, slope
+
+    total, slope = pull_at(u)
+    for _ in range(200):
         diagonal = np.add.reduceat((slope + chain.spring)[head:], first)
         diagonal[:-1] += between
         diagonal[1:] += between
@@ -181,18 +191,38 @@ def _static_displacements(chain: Chain, state: State, weight: Array, soil: _Soil
             diagonal[-1] += 1e6 * float(stiff.max())
         # a slope of nearly nothing keeps a wholly slipping trial solvable; the balance itself stays exact
         diagonal += 1e-12 * float(stiff.max())
-        total = np.add.reduceat(pull[head:], first)
-        if held:
-            total[-1] = 0.0
         change, singular = dptsv(diagonal, -between, total)[2:]
         if singular:
             break
-        u[head:] += change[group]
+        step = np.append(still[:head], change[group])
+        drive = float(total @ change)
+        total, slope = pull_at(u + step)
+        if float(total @ change) < -drive / 2:
+            # far beyond the balance, as where ground that gives way meets ground that does not
+            step *= _turning_share(pull_at, u, step, change)
+            total, slope = pull_at(u + step)
+        u += step
         if np.max(np.abs(change)) <= 1e-15 + 1e-13 * np.max(np.abs(u)):
+            if link_forces(state.rod, u, still, force, chain.dt) >= 0:
+                raise SolveError(
+                    "The member leaves its elastic range under its own weight: see the material's law."
+                )
             return u
     raise SolveError(
         "No rest of the member before the blow was found under gravity: its ground gives way under its weight."
     )
+
+
+def _turning_share(
+    pull_at: Callable[[Array], tuple[Array, Array]], u: Array, step: Array, change: Array
+) -> float:
+    """Share of a step, below 1, at which what drives it changes its sign; it only falls along the step."""
+    low, high = 0.0, 1.0
+    for _ in range(100):
+        middle = (low + high) / 2
+        drives = float(pull_at(u + middle * step)[0] @ change) > 0
+        low, high = (middle, high) if drives else (low, middle)
+    return high
 
 
 def _lay_train(chain: Chain, state: State, u: Array, cap_weight: float) -> None:

@@ -358,3 +358,21 @@ def test_lateral_inertia_with_a_member_that_moves_into_what_holds_it(kind: str) 
         duration=0.01,
     )
     assert result.ledger.residual < 1e-10
+
+
+def test_a_pile_that_sinks_onto_its_toe_before_the_blow() -> None:
+    """Its shaft holds 2 kN, its toe 5 mm below it 136 kN: it slips down by the gap and then rests on the toe, which
+    takes the rest of the 7.8 kN of its weight. The blow starts from there.
+    """
+    ground = {
+        "surface": 0.0,
+        "shaft_total": {"resistance": 2e3, "distribution": "uniform", "quake": 0.0025, "damping": 0.1},
+        "toe": {"resistance": 136e3, "quake": 0.0025, "damping": 0.3, "gap": 0.005},
+    }
+    load = pulse("half_sine", 0.001, 1e3, start=0.001)
+    result = solved(
+        load, far_end="ground", ground=ground, gravity=True, gauges={"toe": LENGTH}, duration=0.003
+    )
+    weight = 8000 * AREA * LENGTH * GRAVITY
+    assert -result.gauges["toe"].rest_force == pytest.approx(weight - 2e3, rel=2e-3)
+    assert np.abs(result.gauges["toe"].velocity[result.gauges["toe"].time < 0.002]).max() < 1e-9
