@@ -25,6 +25,7 @@ from app.export.record_table import record_table
 from app.frame.notices import Notices
 from app.frame.records_fields import RecordsFields
 from app.frame.records_work import RecordsWork
+from app.look.fonts import base_size, widened
 from app.look.spacing import GAP, SPACE
 from app.settings import Settings
 from app.solving import Solution
@@ -41,7 +42,7 @@ class RecordsDialog(QDialog):
         super().__init__(parent)
         self.setAttribute(Qt.WidgetAttribute.WA_DeleteOnClose)
         self.setWindowTitle("Gauge records")
-        self.resize(1080, 680)
+        self.resize(min(widened(1080), 1240), 700)
         self._document, self._solution, self._settings = document, solution, settings
         self._notices: Notices | None = None
         self.work = RecordsWork(self)
@@ -49,7 +50,10 @@ class RecordsDialog(QDialog):
         self.preview = QPlainTextEdit(self)
         self.preview.setReadOnly(True)
         self.preview.setLineWrapMode(QPlainTextEdit.LineWrapMode.NoWrap)
-        self.preview.setFont(QFontDatabase.systemFont(QFontDatabase.SystemFont.FixedFont))
+        letters = QFontDatabase.systemFont(QFontDatabase.SystemFont.FixedFont)
+        letters.setPointSizeF(base_size())
+        self.preview.setFont(letters)
+        self.preview.setToolTip("The head of the file, as it would be written now.")
         self.preview.setAccessibleName("Preview of the file")
         self.state = QLabel(self)
         self.state.setWordWrap(True)
@@ -70,6 +74,7 @@ class RecordsDialog(QDialog):
         """Show it; where the records are is said in the window."""
         self._notices = notices
         self.show()
+        self.fields.cases.setFocus()
 
     def _compose(self) -> None:
         right = QVBoxLayout()

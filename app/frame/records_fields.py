@@ -22,12 +22,34 @@ from PySide6.QtWidgets import (
 
 from app.document import Document
 from app.export.record_choices import COLUMNS, ENDINGS, RecordChoices
+from app.look.fonts import widened
 from app.look.spacing import GAP, SPACE
 from app.units import UnitError, Units, units_of
 from solver import Case
 
 UNITS = {"si": "SI (N, Pa, m)", "project": "As on the screen", "metric": "Metric", "us": "US"}
 FORMATS = {"csv": "CSV", "xlsx": "XLSX", "hdf5": "HDF5"}
+#: What each choice means, for its tooltip and for "What is this?".
+TELLS = {
+    "Units": "SI for further computation, or those of the screen. The file names them in every heading.",
+    "Sign": "Which of compression and tension is positive in force, stress, strain and waves. The file says it.",
+    "Samples, kHz": "Empty: every step of the solver. With a rate, a filter against aliasing comes first, and the file "
+    "names it.",
+    "From": "Beginning of the window, after the blow; with a unit of its own if you like (2 ms).",
+    "To": "End of the window, after the blow.",
+    "Time zero": "The moment that the file calls 0.",
+    "Digits": "Digits that count, 1 to 17. Empty: as many as read back to the same number.",
+    "CSV": "Text, one row a sample; the lines that begin with # say what it is.",
+    "XLSX": "A workbook: numbers on one sheet, what they are on another. Numbers have 16 digits.",
+    "HDF5": "An open format for measurement series, read by Python, MATLAB and others; exact.",
+    "Decimal comma, semicolon between columns": "As spreadsheets in many languages want it.",
+    "Byte order mark for spreadsheets": "Three bytes that tell a spreadsheet that the text is UTF-8.",
+}
+TICKS = {
+    "Cases": "Each case goes into a file of its own; it is solved first if it has to be.",
+    "Gauges": "Gauges whose records are written.",
+    "Columns": "What is written of each gauge, beside the time.",
+}
 KEY = Qt.ItemDataRole.UserRole
 
 
@@ -44,7 +66,9 @@ class _Ticks(QListWidget):
             item.setFlags(item.flags() | Qt.ItemFlag.ItemIsUserCheckable)
             on = chosen is None or key in chosen
             item.setCheckState(Qt.CheckState.Checked if on else Qt.CheckState.Unchecked)
-        self.setMaximumHeight(24 * min(max(self.count(), 1), 6) + 8)
+        self.setToolTip(TICKS.get(name, ""))
+        row = max(self.sizeHintForRow(0), 17)
+        self.setFixedHeight(row * min(max(self.count(), 1), 6) + 10)
 
     def ticked(self) -> tuple[str, ...]:
         items = [self.item(row) for row in range(self.count())]
@@ -65,7 +89,8 @@ class RecordsFields(QScrollArea):
         self._document = document
         self.setWidgetResizable(True)
         self.setFrameShape(QFrame.Shape.NoFrame)
-        self.setFixedWidth(330)
+        self.setFixedWidth(widened(330))
+        self.setFocusPolicy(Qt.FocusPolicy.NoFocus)  # what lies in it can be reached one by one
         project = document.project
         gauges = dict.fromkeys(g.name for case in project.cases for g in case.gauges)
         self.cases = _Ticks(((c.name, c.name) for c in project.cases), [document.case.name], "Cases")
@@ -214,8 +239,13 @@ class RecordsFields(QScrollArea):
         )
         for word, field in named:
             field.setAccessibleName(word)
-            form.addRow(word, field)
-        self.rate.setToolTip("With a rate, an anti-alias filter is put before it and named in the file")
+            field.setToolTip(TELLS[word])
+            label = QLabel(word)
+            label.setBuddy(field)
+            label.setToolTip(TELLS[word])
+            form.addRow(label, field)
+        for box in (*self.formats.values(), self.commas, self.mark):
+            box.setToolTip(TELLS[box.text()])
 
     def _connect(self) -> None:
         for ticks in (self.cases, self.gauges, self.columns):

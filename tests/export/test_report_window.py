@@ -115,6 +115,30 @@ def test_all_cases_are_written_where_they_are_ticked(dialog, qtbot, tmp_path):
     assert {p.name for p in tmp_path.glob("*.csv")} == {"pulse-records.csv", "pulse-2-records.csv"}
 
 
+def test_every_choice_says_what_it_means(dialog):
+    fields = dialog.fields
+    choices = (
+        fields.cases,
+        fields.gauges,
+        fields.columns,
+        fields.units,
+        fields.sign,
+        fields.rate,
+        fields.start,
+    )
+    for field in (*choices, fields.end, fields.zero, fields.digits, fields.commas, fields.mark):
+        assert len(field.toolTip()) > 10
+        assert field.accessibleName() or field.text()
+
+
+def test_a_logo_beside_the_project_is_kept_by_its_name(space, document, tmp_path):
+    space.form.take_logo(tmp_path / "logo.png")
+    assert space.form.choices.logo == str(tmp_path / "logo.png")
+    document.save_as(tmp_path / "bar.strike")
+    space.form.take_logo(tmp_path / "pictures" / "logo.png")
+    assert space.form.choices.logo == "pictures/logo.png"
+
+
 def test_what_makes_no_sense_is_said_and_cannot_be_saved(dialog, qtbot):
     qtbot.keyClicks(dialog.fields.rate, "fast")
     qtbot.waitUntil(lambda: "Sampling: 'fast' is no number." in dialog.state.text())

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from dataclasses import replace
 from datetime import datetime
+from pathlib import Path
 from typing import Any
 
 from PySide6.QtCore import Qt
@@ -11,11 +12,14 @@ from PySide6.QtGui import QFocusEvent
 from PySide6.QtWidgets import (
     QCheckBox,
     QComboBox,
+    QFileDialog,
     QFormLayout,
     QFrame,
+    QHBoxLayout,
     QLabel,
     QLineEdit,
     QPlainTextEdit,
+    QPushButton,
     QScrollArea,
     QVBoxLayout,
     QWidget,
@@ -76,6 +80,9 @@ class ChoicesForm(QScrollArea):
         self.particulars = {key: QLineEdit(self) for key in PARTICULARS}
         self.logo = QLineEdit(self)
         self.logo.setPlaceholderText("PNG or JPEG, beside the project")
+        self.choose = QPushButton("Choose…", self)
+        self.choose.setAccessibleName("Choose a logo")
+        self.choose.setToolTip("A PNG or JPEG file for the title page; kept by its name, not copied.")
         self.paper = QComboBox(self)
         self.paper.addItems(["A4", "Letter"])
         self.dates = QComboBox(self)
@@ -133,7 +140,11 @@ class ChoicesForm(QScrollArea):
         form.setSpacing(GAP)
         for key, field in self.particulars.items():
             form.addRow(PARTICULARS[key], field)
-        form.addRow("Logo", self.logo)
+        logo = QHBoxLayout()
+        logo.setSpacing(GAP)
+        logo.addWidget(self.logo, 1)
+        logo.addWidget(self.choose)
+        form.addRow("Logo", logo)
         column.addLayout(form)
         part("Sections")
         column.addWidget(self.sections)
@@ -156,6 +167,7 @@ class ChoicesForm(QScrollArea):
     def _connect(self) -> None:
         for key, field in self.particulars.items():
             field.editingFinished.connect(lambda key=key: self._take_particular(key))
+        self.choose.clicked.connect(self._choose_logo)
         self.logo.editingFinished.connect(lambda: self._change("the logo", logo=self.logo.text().strip()))
         self.sections.chosen_changed.connect(
             lambda: self._change("the sections", sections=self.sections.chosen)
@@ -167,6 +179,19 @@ class ChoicesForm(QScrollArea):
         self.mesh_check.clicked.connect(lambda on: self._change("the mesh check", mesh_check=on))
         self.opens.activated.connect(lambda _i: self.follow())
         self._document.changed.connect(self.follow)
+
+    def _choose_logo(self) -> None:
+        start = self._document.folder or Path.home()
+        chosen, _ = QFileDialog.getOpenFileName(self, "Logo", str(start), "Pictures (*.png *.jpg *.jpeg)")
+        if chosen:
+            self.take_logo(Path(chosen))
+
+    def take_logo(self, path: Path) -> None:
+        """The picture, by its name beside the project where it lies there."""
+        folder = self._document.folder
+        inside = folder is not None and path.is_relative_to(folder)
+        name = path.relative_to(folder).as_posix() if inside and folder else str(path)
+        self._change("the logo", logo=name)
 
     def take_words(self) -> None:
         """Hand over the own paragraph, where it has changed."""
