@@ -76,7 +76,7 @@ def broken(text: str, size: float, room: float) -> list[str]:
     pieces, start, wide = [], 0, 0.0
     for at, letter in enumerate(text):
         step = _letter_width(letter, size)
-        if wide + step > room and at > start:
+        if wide + step > room and at > start and letter != " ":  # a blank at the head of a line would be lost
             pieces.append(text[start:at])
             start, wide = at, 0.0
         wide += step

@@ -28,7 +28,7 @@ from app.report.pdf import pdf_of
 from app.report.solve_cases import solve_cases
 from app.units import units_of
 from app.words import verdict
-from solver import project_from_tree, project_to_text, solve
+from solver import parse_project, project_from_tree, project_to_text, solve
 from solver.answer.findings import findings_of
 from tests.export.conftest import UNLUCKY, bar_tree
 
@@ -161,6 +161,20 @@ def test_no_heading_stands_alone_at_the_foot_of_a_page(plain, plain_pages):
         lines = [line.strip() for line in text.splitlines() if line.strip()]
         body = [line for line in lines if "Striketrace 0" not in line and not line.startswith("page ")]
         assert body[-1] not in titles
+
+
+def test_the_input_read_from_the_appendix_of_the_pdf_is_the_project():
+    """What a reader copies out of the PDF, its page ends taken away and its broken lines joined."""
+    tree = bar_tree(title=UNLUCKY)
+    tree["notes"] = "long line, with blanks in it; " * 40 + UNLUCKY
+    project = project_from_tree(tree)
+    pages = pages_of(pdf_of(report_of(tree), DATE))
+    first = next(n for n, text in enumerate(pages) if "The input" in text and "goes on in the next" in text)
+    lines = [line for text in pages[first:] for line in re.split(r"\r?\n", text)]
+    lines = [line for line in lines if not re.search(r"page \d+ of \d+", line) and "Striketrace 0" not in line]
+    text = "\n".join(lines).replace("↩\n", "")
+    text = text[text.index('{\n"format"') if '{\n"format"' in text else text.index("{") :]
+    assert parse_project(text[: text.rindex("}") + 1]) == project
 
 
 def test_decimal_commas_change_numbers_and_no_names():
