@@ -13,7 +13,7 @@ from app.report.blocks import Block, Bullets, Heading, Listing, Paragraph, Table
 from app.report.described import exact
 from app.report.input_text import input_text
 from app.report.outcome import Material, Solved
-from app.report.verdict import typical_lines
+from app.report.verdict import short_name, typical_lines
 from app.units import Units
 from app.words import (
     AXIAL_CAUTION,
@@ -98,7 +98,7 @@ def _runs(cases: list[Solved], units: Units) -> Table:
         ends = "at rest" if run.at_rest else "still moves"
         rows.append(
             (
-                one.case.name,
+                short_name(one.case.name),
                 str(run.elements),
                 f"{run.steps} of {units.show(run.time_step, 'time')}",
                 f"{run.courant_worst:.4f}",
@@ -126,7 +126,7 @@ def _meshes(cases: list[Solved], units: Units) -> Table:
         for change in one.mesh.changes:
             word, dimension = FIGURES.get(change.figure, (change.figure.replace("_", " "), "none"))
             shown = units.show(change.value, dimension), units.show(change.finer, dimension)
-            rows.append((one.case.name, word, *shown, _change(change.share)))
+            rows.append((short_name(one.case.name), word, *shown, _change(change.share)))
     head = ("Case", "Figure", "As solved", "Finer", "Change")
     return Table(head, tuple(rows), (0.3, 0.24, 0.15, 0.15, 0.16), "Check on elements half as long")
 

@@ -6,6 +6,7 @@ from collections.abc import Iterator
 
 from app.report.blocks import Block, Paragraph, Table
 from app.report.outcome import Material, Solved
+from app.report.verdict import short_name
 from app.units import Units
 from app.words import Line, verdict
 
@@ -33,7 +34,9 @@ def _verdicts(cases: list[Solved], units: Units) -> Table:
         columns.append(("set per blow", "Set per blow"))
     if any(line.name.startswith("past gauge") for lines in found.values() for line in lines):
         columns.append(("past gauge", "Energy past the first gauge"))
-    rows = tuple((name, *(_cell(lines, key) for key, _ in columns)) for name, lines in found.items())
+    rows = tuple(
+        (short_name(name), *(_cell(lines, key) for key, _ in columns)) for name, lines in found.items()
+    )
     wide = {"set per blow": 0.85, "past gauge": 1.05}
     weights = [0.75, *(wide.get(key, 1.2) for key, _ in columns)]
     shares = tuple(weight / sum(weights) for weight in weights)

@@ -20,11 +20,11 @@ MOST_NAMES, NAME = 4, 60
 def verdict_lines(project: Project, cases: Sequence[Solved]) -> tuple[str, ...]:
     """Sentences with their signs, the worst first."""
     found: dict[State, list[str]] = {}
-    refused = [_short(one.case.name) for one in cases if one.findings is None]
+    refused = [short_name(one.case.name) for one in cases if one.findings is None]
     for one in cases:
         if one.findings is not None:
             state, told = _state_of(one.findings)
-            found.setdefault(state, []).append(f"{_short(one.case.name)}{told}")
+            found.setdefault(state, []).append(f"{short_name(one.case.name)}{told}")
     lines = []
     if refused:
         lines.append(f"! Not computed: {_listed(refused)}.")
@@ -91,6 +91,7 @@ def _listed(names: list[str]) -> str:
     return "; ".join(shown)
 
 
-def _short(name: str) -> str:
+def short_name(name: str) -> str:
+    """In one line, and cut where it is very long; the heading of the case tells all of it."""
     name = " ".join(name.split())
     return name if len(name) <= NAME else name[: NAME - 1] + "…"

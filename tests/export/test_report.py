@@ -171,7 +171,9 @@ def test_the_input_read_from_the_appendix_of_the_pdf_is_the_project():
     pages = pages_of(pdf_of(report_of(tree), DATE))
     first = next(n for n, text in enumerate(pages) if "The input" in text and "goes on in the next" in text)
     lines = [line for text in pages[first:] for line in re.split(r"\r?\n", text)]
-    lines = [line for line in lines if not re.search(r"page \d+ of \d+", line) and "Striketrace 0" not in line]
+    lines = [
+        line for line in lines if not re.search(r"page \d+ of \d+", line) and "Striketrace 0" not in line
+    ]
     text = "\n".join(lines).replace("↩\n", "")
     text = text[text.index('{\n"format"') if '{\n"format"' in text else text.index("{") :]
     assert parse_project(text[: text.rindex("}") + 1]) == project
