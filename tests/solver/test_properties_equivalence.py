@@ -99,6 +99,15 @@ def test_a_splice_without_slack_is_a_bond(rod: dict[str, Any]) -> None:
 
 
 @given(rods_to_cut(("elastic",)))
+def test_a_material_that_is_never_pulled_to_its_strength_is_elastic(rod: dict[str, Any]) -> None:
+    """Its elements are tied by joints that could crack, at boundaries too: 1e-9."""
+    law = {"kind": "brittle_tension"}
+    strong = [m | {"law": law | {"tensile_strength": m["young_modulus"]}} for m in rod["known"]]
+    found = solved(rod | {"known": strong}, rod["parts"])
+    assert_same(found, solved(rod, rod["parts"]), rod["load"]["peak"])
+
+
+@given(rods_to_cut(("elastic",)))
 def test_a_joint_without_gap_under_compression_is_none(rod: dict[str, Any]) -> None:
     """Uniform rod, matched end: only compression ever passes, so contact faces never part. 1e-9 of the peak."""
     rod = rod | {"parts": rod["parts"][:1], "which": 0, "end": {"kind": "matched"}}

@@ -9,7 +9,7 @@ from copy import deepcopy
 import numpy as np
 from hypothesis import given
 
-from solver import GaugeRecord, Result, SolveError, solve
+from solver import GaugeRecord, Result, SolveError, first_blow, solve
 from tests.solver.comparing import assert_close
 from tests.solver.strategies import Tree, case_in, project_trees
 
@@ -98,6 +98,9 @@ def test_peaks_pictures_and_events_agree_with_the_envelope(tree: Tree) -> None:
             at = int(np.argmin(np.abs(e.position - peak.position)))
             assert values[at] >= peak.value * (1 - 1e-8)
             assert times[at] == peak.time
+    for whole, first in zip((result.peak_compression, result.peak_tension), first_blow(result), strict=True):
+        assert first.peak.value <= whole.value
+        assert result.struck_again is not None or first.peak.value == whole.value
     assert len(e.position) == result.elements
     assert np.all(np.diff(e.position) > 0)
     assert np.all(np.diff(f.time) > 0)
