@@ -15,6 +15,7 @@ RemarkKind = Literal[
     "crumbled",
     "stopped",
     "not_at_rest",
+    "still_giving",
     "ram_returns",
     "layers_end",
     "no_rest",
@@ -74,6 +75,11 @@ def sentence(of: Remark, show: Show = in_si) -> str:
             return (
                 "The member does not come to rest by itself; the run was ended after "
                 f"{show(of.value, 'time')}."
+            )
+        case "still_giving":
+            return (
+                f"The ground still gave way when the run ended at {show(of.value, 'time')}: the set is not the last "
+                "word. Give a longer duration, or leave it out to run until at rest."
             )
         case "ram_returns":
             return (

@@ -6,6 +6,8 @@ import numpy as np
 
 from solver.answer.blow import Blow
 from solver.answer.remark import Remark
+from solver.answer.waves import travel_time_to
+from solver.numerics.balance import LEDGER
 from solver.numerics.chain import Chain
 from solver.numerics.compiled import cache_problem
 from solver.numerics.ground import bands_of
@@ -17,6 +19,9 @@ SECOND_BLOW = 0.1
 FEW = 100
 #: Plastic strain above which a law of small strains is said to be left.
 SMALL_STRAIN = 0.1
+#: Share of the ground's loss by slip in the last passage of the wave, and of the set in the toe's largest movement,
+#: above which the ground is said to give way still.
+STILL_GIVING = 0.1
 #: Share of the energy that may fail to close before it is told.
 TOLD = 0.01
 
@@ -42,6 +47,8 @@ def remarks_of(blow: Blow, residual: float, at_rest: bool, finished: bool) -> tu
         told.append(Remark("stopped"))
     elif case.run.duration is None and not at_rest:
         told.append(Remark("not_at_rest", (blow.steps - 1) * chain.dt))
+    elif _still_giving(blow):
+        told.append(Remark("still_giving", (blow.steps - 1) * chain.dt))
     returns = _ram_returns(blow)
     if finished and returns is not None:
         told.append(Remark("ram_returns", returns))
@@ -88,6 +95,22 @@ def _largest_plastic_strain(blow: Blow) -> tuple[float, float]:
             if strain.max() > largest:
                 largest, place = float(strain.max()), float(blow.chain.position[at][np.argmax(strain)])
     return largest, place
+
+
+def _still_giving(blow: Blow) -> bool:
+    """Whether the ground still gave way as a run of given duration ended, so that its set is not the last: within the
+    last passage of the wave there and back, or before there was one. Not where the toe springs back all the way."""
+    case = blow.chain.case
+    if case.ground is None or case.run.duration is None:
+        return False
+    passage = 2 * travel_time_to(case, case.member.length)
+    slipped = blow.frames.ledger[:, LEDGER.index("ground_static_loss")]
+    time = np.arange(len(slipped)) * blow.stride * blow.chain.dt
+    if time[-1] < passage:
+        return True
+    late = slipped[-1] - np.interp(time[-1] - passage, time, slipped)
+    toe_largest = float(blow.extremes.travel[-1] - blow.rest[-1])
+    return bool(late > STILL_GIVING * slipped[-1] and abs(blow.sets[-1]) > STILL_GIVING * toe_largest)
 
 
 def _ram_returns(blow: Blow) -> float | None:

@@ -114,6 +114,17 @@ def test_a_ram_that_flies_up_with_its_cap_is_told() -> None:
     assert returns == [pytest.approx(again, rel=0.1)]
 
 
+@pytest.mark.parametrize(("passages", "told"), [(0.5, True), (1.5, True), (20.0, False)])
+def test_a_set_that_is_read_too_early_is_told(passages: float, told: bool) -> None:
+    """A pile of 10 m, 2L/c = 4 ms, under a pulse of 8 ms: until it is over, the ground gives way."""
+    shaft = {"resistance": 3e5, "distribution": "uniform", "quake": 0.0025, "damping": 0.2}
+    toe = {"resistance": 2e5, "quake": 0.0025, "damping": 0.4}
+    ground = {"surface": 1.0, "shaft_total": shaft, "toe": toe}
+    load, pile, duration = pulse("half_sine", 8e-3), part(10.0), passages * 4e-3
+    run = solved(load, pile, far_end="ground", ground=ground, gravity=True, duration=duration, dx=0.1)
+    assert ("still_giving" in {remark.kind for remark in run.remarks}) == told
+
+
 def test_faces_that_part_and_touch_while_the_wave_runs_are_one_blow() -> None:
     """Ram, stiff cushion, cap: they chatter within the passage of the wave; the ram has not fallen again."""
     drop = {
