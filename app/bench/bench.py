@@ -59,6 +59,7 @@ class Bench(QWidget):
             ROWS,
         )
         self.grid.title_clicked.connect(self.turn_alone)
+        self.grid.folding_changed.connect(self._tell_bare)
         whole = QVBoxLayout(self)
         whole.setContentsMargins(0, 0, 0, 0)
         whole.setSpacing(0)
@@ -81,7 +82,15 @@ class Bench(QWidget):
         elif panel is None:
             panel = self._panel_looked_at()
         self.grid.show_alone(panel)
+        self._tell_bare()
         self.alone_changed.emit(panel is not None)
+
+    def _tell_bare(self) -> None:
+        """The member carries the numbers of distance for all pictures, and the lowest strip those of time."""
+        carriers = {"distance": self.member, "time": self.strips}
+        bare = frozenset(axis for axis, carrier in carriers.items() if carrier.isHidden())
+        for picture in (self.xt, self.profile):
+            picture.set_bare(bare)
 
     def _panel_looked_at(self) -> QWidget:
         panels = (self.member, self.xt, self.profile, self.at_cursor, self.strips, self.findings)

@@ -90,8 +90,8 @@ def draw_over(
     ]
     usual = boxes[2 * (3 + 2 * number)]
     inside = [box for box in boxes if scale.plot.contains(box)]
-    inside.sort(key=lambda box: (_crossed(box, curves), abs(box.top() - usual.top())))
-    box = next(iter(inside), usual)
+    inside.sort(key=lambda box: abs(box.top() - usual.top()))
+    box = next((box for box in inside if not _crossed(box, curves)), usual)
     put_on(painter, box.left(), box.center().y(), name, hue, palette().paper)
 
 
@@ -108,11 +108,11 @@ def is_free(box: QRectF, scale: Scale, envelopes: list[Extremes]) -> bool:
     return True
 
 
-def _crossed(box: QRectF, curves: list[tuple[np.ndarray, np.ndarray]]) -> int:
-    """How many curves, as heights and places across, run through a box."""
+def _crossed(box: QRectF, curves: list[tuple[np.ndarray, np.ndarray]]) -> bool:
+    """Whether any of the curves, as heights and places across, runs through a box."""
     rows = np.linspace(box.top() - 1, box.bottom() + 1, 5)
     across = (np.interp(rows, y, x) for y, x in curves)
-    return sum(bool(x.min() < box.right() + 2 and x.max() > box.left() - 2) for x in across)
+    return any(x.min() < box.right() + 2 and x.max() > box.left() - 2 for x in across)
 
 
 def _larger(found: Extremes, scale: Scale) -> tuple[np.ndarray, str]:

@@ -60,6 +60,7 @@ class Layered(QWidget):
     ) -> None:
         super().__init__(parent)
         self.document, self.sight, self.solution = document, sight, solution
+        self._bare: frozenset[str] = frozenset()
         self._kept = QPixmap()
         self._kept_key: tuple[Any, ...] | None = None
         self._kept_result: Result | None = None
@@ -133,10 +134,13 @@ class Layered(QWidget):
 
     def lacks_numbers(self, axis: str) -> bool:
         """Whether no picture in sight carries the numbers of its axis: it has all the room, say."""
-        others = self.window().findChildren(Layered)
-        return self.numbers != axis and not any(
-            other.numbers == axis and other.isVisible() for other in others
-        )
+        return axis in self._bare and self.numbers != axis
+
+    def set_bare(self, axes: frozenset[str]) -> None:
+        """Tell it the axes whose numbers no picture beside it carries now."""
+        if axes != self._bare:
+            self._bare = axes
+            self.update()
 
     def name_axes(self, painter: QPainter, of_time: str = "") -> None:
         """The units of axes whose numbers it carries only now: left of the first number, and above it."""
@@ -210,7 +214,7 @@ class Layered(QWidget):
         sight, ratio = self.sight, self.devicePixelRatioF()
         looks = (self.size(), ratio, self.font(), palette(), self.units, self.greyed())
         shared = (self.result, sight.time_range, sight.distance_range, self.described())
-        return (*looks, *shared, *self.resting_key())
+        return (*looks, self._bare, *shared, *self.resting_key())
 
     def changeEvent(self, event: QEvent) -> None:
         super().changeEvent(event)
