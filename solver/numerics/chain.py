@@ -14,6 +14,7 @@ from numpy.typing import NDArray
 from solver.errors import SolveError
 from solver.model.derived import travel_time
 from solver.model.load import GRAVITY, Cushion, Drop, Striker
+from solver.model.material import Material
 from solver.model.member import Segment
 from solver.model.project import Case
 from solver.numerics.along import profile_along
@@ -23,7 +24,8 @@ from solver.numerics.stability import stiffening_of
 
 Array = NDArray[np.float64]
 
-#: Most elements that a stiff cushion asks for; a stiffer one is nearly none: see `assemble.stiffest_cushion`.
+#: Most elements that a stiff cushion or spring asks for; a stiffer cushion is nearly none: see
+#: `assemble.stiffest_cushion`, a stiffer spring nearly a fixed end.
 MOST_FOR_CUSHION = 4000
 #: Fewest elements of a rod that strikes.
 FEWEST_IN_STRIKER = 10
@@ -134,28 +136,58 @@ def _time_to(case: Case, times: list[SegmentSteps], position: float) -> float:
 
 
 def _wanted(case: Case, total: float) -> int:
-    """Elements along the member: fine enough for the pulse, and for a mass that strikes without a cushion."""
+    """Elements along the member: fine enough for the pulse, for what strikes, and for stiff springs in its way."""
     load = case.load
     yields = any(case.material(s.material).law.kind == "elastic_plastic" for s in segments_of(case)[0])
     # the energy of a yield that sets in at once closes in proportion to the step
     wanted = 1000 if yields else FEWEST
     if load.kind == "pulse" and load.shape != "decay":
         wanted = max(wanted, int(np.ceil(40 * total / load.duration)))
-    if isinstance(load, Drop) and load.ram_mass is not None:
-        axial, mass, _ = profile_along(case.member.segments[0], case.materials, np.zeros(1))
-        impedance = float(np.sqrt(axial * mass)[0])
-        # Z dt under 0.1 % of a mass without a cushion, whose front is smeared over the first node; a cushion either
-        # rises over some steps, k dt <= 0.3 Z, or under a mass like that within one, k dt <= 2 Z
-        finest = 1000 * impedance * total / load.ram_mass
-        stiff = [c.loading_stiffness for c in (load.cushion, load.pile_cushion) if c is not None]
-        if stiff:
-            steps = max(stiff) * total / impedance
-            finest = min(max(steps / 2, min(steps / 0.3, finest)), MOST_FOR_CUSHION)
-        wanted = max(wanted, int(np.ceil(finest)))
+    finest = max(_finest_for_ram(case, total), _finest_for_springs(case, total))
+    wanted = max(wanted, int(np.ceil(finest)))
     strikes = [travel_time(s, case.materials) for s in case.ram_segments]
     if strikes:
         wanted = max(wanted, int(np.ceil(FEWEST_IN_STRIKER * total / sum(strikes))))
     return min(wanted, MOST)
+
+
+def _finest_for_ram(case: Case, total: float) -> float:
+    """Elements that a rigid ram asks for.
+
+    Z dt under 0.1 % of a mass without a cushion, whose front is smeared over the first node; a cushion either rises
+    over some steps, k dt <= 0.3 Z, or under a mass like that within one, k dt <= 2 Z.
+    """
+    load = case.load
+    if not isinstance(load, Drop) or load.ram_mass is None:
+        return 0.0
+    impedance = _least_impedance(case.member.segments[:1], case.materials)
+    finest = 1000 * impedance * total / load.ram_mass
+    stiff = [c.loading_stiffness for c in (load.cushion, load.pile_cushion) if c is not None]
+    if not stiff:
+        return finest
+    steps = max(stiff) * total / impedance
+    return min(max(steps / 2, min(steps / 0.3, finest)), MOST_FOR_CUSHION)
+
+
+def _finest_for_springs(case: Case, total: float) -> float:
+    """Elements that springs to fixed ground ask for: where a front meets one, k dt <= 2 Z, or single elements ring."""
+    load, fronts = case.load, ("rectangle", "trapezoid", "decay")
+    smooth = load.kind == "drop" or (load.kind == "pulse" and load.shape not in fronts)
+    if smooth and not case.run.initial_velocity:
+        return 0.0
+    stiff = [a.value for a in case.member.attachments if a.kind == "spring"]
+    stiff += [case.far_end.stiffness] if case.far_end.kind == "spring" else []
+    impedance = _least_impedance(case.member.segments, case.materials)
+    return min(max(stiff, default=0.0) * total / (2 * impedance), MOST_FOR_CUSHION)
+
+
+def _least_impedance(segments: tuple[Segment, ...], materials: dict[str, Material]) -> float:
+    """Smallest impedance at the ends of segments, N·s/m."""
+    found = []
+    for segment in segments:
+        axial, mass, _ = profile_along(segment, materials, np.array([0.0, 1.0]))
+        found.append(float(np.sqrt(axial * mass).min()))
+    return min(found)
 
 
 def build_chain(case: Case, element_length: float | None = None) -> Chain:
