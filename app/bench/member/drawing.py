@@ -46,7 +46,10 @@ from app.look.fonts import font
 from app.look.palette import palette
 from solver.model.load import Drop, History, Pulse
 
-DRAG_TIP = "Drag it, in tidy steps or with Control freely. Esc takes it back."
+DRAG_TIP = (
+    "Drag it, in tidy steps or with Control freely. Esc takes it back. "
+    "By keyboard: Control with an arrow key moves what is selected."
+)
 #: A drag waits so long, ms, for the pictures of its last step before it takes the next: edits that nobody gets to see
 #: would only slow the pictures down.
 PATIENCE = 250
