@@ -78,11 +78,14 @@ def read_history(name: str, folder: Path | None) -> Samples:
                 point = _numbers(row)
                 if len(point) != 2:
                     raise ValueError(
-                        f"line {number} of the history file '{name}' needs two numbers, time in s and value"
+                        f"line {number} of the history file '{name}' needs two numbers, time in s and value, with a "
+                        "comma between them and a point before decimals"
                     )
                 times.append(point[0])
                 values.append(point[1])
-    except (OSError, UnicodeDecodeError, csv.Error) as error:
+    except UnicodeDecodeError:
+        raise ValueError(f"the history file '{name}' is not UTF-8 text: save it in UTF-8") from None
+    except (OSError, csv.Error) as error:
         reason = getattr(error, "strerror", None) or str(error)
         raise ValueError(f"the history file '{name}' cannot be read: {reason}") from None
     try:

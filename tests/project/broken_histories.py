@@ -54,7 +54,7 @@ BROKEN_HISTORIES = [
     _file(
         "file of letters", b"t,F\n0,0\n1e-5,high\n", "line 3 of the history file 'push.csv' needs two numbers"
     ),
-    _file("semicolons", b"t;F\n0;0\n1;1\n", "line 2 of the history file 'push.csv' needs two numbers"),
+    _file("semicolons", b"t;F\n0;0\n1;1\n", "a comma between them and a point before decimals"),
     _file(
         "three columns", b"t,F,n\n0,0,1\n1,1,1\n", "line 2 of the history file 'push.csv' needs two numbers"
     ),
@@ -66,5 +66,7 @@ BROKEN_HISTORIES = [
     _file(
         "back in time", b"t,F\n1e-5,0\n0,1\n", "in the history file 'push.csv': time must not run backwards"
     ),
-    _file("no text at all", b"t,F\n\xff\xfe\x00,1\n", "the history file 'push.csv' cannot be read"),
+    _file(
+        "no text at all", b"t,F\n\xff\xfe\x00,1\n", "the history file 'push.csv' is not UTF-8 text: save it"
+    ),
 ]
