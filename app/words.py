@@ -298,6 +298,12 @@ def caution(of: Caution, units: Units) -> str:
             f"The {of.name} of {units.show(of.value, 'stiffness')} is stiffer than a plate of the member's own section "
             "1 mm thick, and acts as none: check its unit, or leave it out."
         )
+    if of.kind == "stiff_spring":
+        return (
+            f"The {of.name}, {units.show(of.value, 'stiffness')}, is stiffer than a plate of the member's own section "
+            "1 mm thick: check its unit. Where a sudden front meets it single elements ring, so read gauges there, or "
+            "fix the end."
+        )
     if of.kind == "heavy_ram":
         return (
             f"The {of.name} of {units.show(of.value, 'mass')} is heavier than any, the largest of which have "

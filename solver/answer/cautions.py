@@ -10,6 +10,7 @@ import numpy as np
 
 from solver.model.load import Drop, Pulse
 from solver.model.material import Material
+from solver.model.member import Segment
 from solver.model.project import Case
 from solver.model.surroundings import Resistance
 from solver.numerics.along import profile_along
@@ -21,6 +22,7 @@ CautionKind = Literal[
     "static_modulus",
     "damping_unit",
     "stiff_cushion",
+    "stiff_spring",
     "heavy_ram",
 ]
 Suspect = Literal["", "density", "modulus"]
@@ -40,8 +42,8 @@ USUAL_SPEEDS = (500.0, 13000.0)
 #: what lies outside them is the likely slip behind an unusual wave speed.
 USUAL_DENSITY = (100.0, 23_000.0)
 USUAL_MODULUS = (1e6, 1.2e12)
-#: A cushion stiffer than a plate of the member's own section and material this thick (m) is none (a choice of this
-#: program: cushions are some centimetres of softer stuff).
+#: A cushion stiffer than a plate of the member's own section and material this thick (m) is none, and a spring a fixed
+#: place (a choice of this program: cushions are some centimetres of softer stuff).
 STIFF_PLATE = 0.001
 #: No ram is heavier (kg; common practice: the largest are of some hundred tonnes).
 HEAVIEST_RAM = 500e3
@@ -56,8 +58,8 @@ class Caution:
     """One caution: `pointer` is the place in the case, `value` what was found and `bound` what it is held against.
 
     SI units: metres for `gauge_near_end` and `short_pulse`, m/s for `wave_speed` and `static_modulus`, s/m for
-    `damping_unit`, N/m for `stiff_cushion`, kg for `heavy_ram`. `suspect` names the number that is likely to be wrong
-    where it can be told, and `given` is its value.
+    `damping_unit`, N/m for `stiff_cushion` and `stiff_spring`, kg for `heavy_ram`. `suspect` names the number that is
+    likely to be wrong where it can be told, and `given` is its value.
     """
 
     kind: CautionKind
@@ -71,7 +73,7 @@ class Caution:
 
 def cautions_of(case: Case) -> tuple[Caution, ...]:
     """All cautions of a case that knows its materials."""
-    found = (_gauges, _pulse, _speeds, _concrete, _train, _damping)
+    found = (_gauges, _pulse, _speeds, _concrete, _train, _springs, _damping)
     return tuple(caution for kind in found for caution in kind(case))
 
 
@@ -141,15 +143,34 @@ def _train(case: Case) -> Iterator[Caution]:
         return
     if load.ram_mass is not None and load.ram_mass > HEAVIEST_RAM:
         yield Caution("heavy_ram", "load", "ram", load.ram_mass, HEAVIEST_RAM)
-    head = case.member.segments[0]
-    axial, _, _ = profile_along(head, case.materials, np.zeros(1))
-    bound = float(axial[0]) / STIFF_PLATE
+    bound = _plate(case, case.member.segments[0])
     for key, name, cushion in (
         ("cushion", "cushion", load.cushion),
         ("pile_cushion", "pile cushion", load.pile_cushion),
     ):
         if cushion is not None and cushion.loading_stiffness > bound:
             yield Caution("stiff_cushion", f"load/{key}", name, cushion.loading_stiffness, bound)
+
+
+def _springs(case: Case) -> Iterator[Caution]:
+    """Springs to fixed ground that are as good as fixed."""
+    given = [
+        (f"member/attachments/{i}", "attached spring", one.value)
+        for i, one in enumerate(case.member.attachments)
+        if one.kind == "spring"
+    ]
+    if case.far_end.kind == "spring":
+        given.append(("far_end", "spring at the far end", case.far_end.stiffness))
+    bound = _plate(case, case.member.segments[-1])
+    for pointer, name, stiffness in given:
+        if stiffness > bound:
+            yield Caution("stiff_spring", pointer, name, stiffness, bound)
+
+
+def _plate(case: Case, segment: Segment) -> float:
+    """Stiffness of a plate of the segment's own section and material, `STIFF_PLATE` thick, N/m."""
+    axial, _, _ = profile_along(segment, case.materials, np.zeros(1))
+    return float(axial[0]) / STIFF_PLATE
 
 
 def _damping(case: Case) -> Iterator[Caution]:

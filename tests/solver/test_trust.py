@@ -50,6 +50,13 @@ def test_steel_needs_no_word_on_its_wave_speed() -> None:
     assert "wave_speed" not in {one.kind for one in cautions_of(run.case)}
 
 
+def test_a_spring_as_good_as_fixed_is_told() -> None:
+    spring = {"position": 5.0, "kind": "spring", "value": 1e14}
+    far_end = {"kind": "spring", "stiffness": 1e13}
+    told = cautions_of(case_of(pulse("half_sine", 1e-3), far_end=far_end, attachments=[spring]))
+    assert [one.pointer for one in told if one.kind == "stiff_spring"] == ["member/attachments/0", "far_end"]
+
+
 def bounced(duration: float) -> Result:
     """A 2 t ram from 5 cm on a lively cushion: it is thrown up, and falls again 0.1 s later on a pile that rings."""
     cushion = {"stiffness": 2e9, "restitution": 0.95}
