@@ -24,9 +24,9 @@ Rows = Callable[[Context, str], list[Spec]]
 
 #: Ways to tell a material, by the two of its three figures that are given.
 MATERIAL_WAYS = (
-    Option("modulus_density", "modulus, density"),
-    Option("speed_density", "wave speed, density", "The modulus follows: E = density x speed²."),
-    Option("modulus_speed", "modulus, wave speed", "The density follows: E / speed²."),
+    Option("modulus_density", "E, density", "The wave speed follows: c = √(E / density)."),
+    Option("speed_density", "speed, density", "The modulus follows: E = density x speed²."),
+    Option("modulus_speed", "E, speed", "The density follows: E / speed²."),
 )
 
 
@@ -172,7 +172,7 @@ def _material_rows(context: Context, pointer: str) -> list[Spec]:
     way = ChoiceSpec(
         f"{pointer}#way",
         "Given by",
-        "Any two of modulus, density and wave speed; the third follows, E = density x speed².",
+        "Any two of Young's modulus E, density and wave speed; the third follows, E = density x speed².",
         value=context.material_way,
         options=MATERIAL_WAYS,
         pick="material",
