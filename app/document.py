@@ -7,6 +7,7 @@ from dataclasses import dataclass
 from pathlib import Path
 from time import monotonic
 from typing import Any
+from weakref import ref
 
 from PySide6.QtCore import QIODevice, QObject, QSaveFile, QThread, Signal
 from PySide6.QtGui import QUndoCommand, QUndoStack
@@ -312,7 +313,10 @@ class _Edit(QUndoCommand):
         self, document: Document, label: str, before: Project, after: Project, merge: str | None
     ) -> None:
         super().__init__(label)
-        self._document, self._before, self._after, self._merge = document, before, after, merge
+        self._document = ref(
+            document
+        )  # a circle through Qt's own objects is taken apart in an order that may crash
+        self._before, self._after, self._merge = before, after, merge
         self._time = monotonic()
         self._done_once = False
 
@@ -329,11 +333,16 @@ class _Edit(QUndoCommand):
         return True
 
     def redo(self) -> None:
-        self._document._show(self._after, keep_rejected=not self._done_once)
+        self._show(self._after, keep_rejected=not self._done_once)
         self._done_once = True
 
     def undo(self) -> None:
-        self._document._show(self._before, keep_rejected=False)
+        self._show(self._before, keep_rejected=False)
+
+    def _show(self, project: Project, keep_rejected: bool) -> None:
+        document = self._document()
+        if document is not None:
+            document._show(project, keep_rejected)
 
 
 def _not_done(label: str, sentence: str) -> str:
