@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections.abc import Callable
 from pathlib import Path
 
 from PySide6.QtCore import Qt
@@ -13,6 +14,8 @@ from PySide6.QtWidgets import (
     QFormLayout,
     QHBoxLayout,
     QLabel,
+    QMenu,
+    QMessageBox,
     QPushButton,
     QSpinBox,
     QVBoxLayout,
@@ -31,7 +34,7 @@ from app.picture_files import (
     copy_picture,
     picture_file,
 )
-from app.settings import Settings
+from app.settings import Settings, user_settings
 
 KEPT = "picture"
 TELLS = {
@@ -157,3 +160,16 @@ def _whole_number(bounds: tuple[float, float], step: int, unit: str, value: floa
     box.setValue(round(value))
     box.setButtonSymbols(QSpinBox.ButtonSymbols.NoButtons)
     return box
+
+
+def add_picture_actions(menu: QMenu, drawing: Callable[[], Drawing], parent: QWidget) -> None:
+    """Saving and copying; the drawing is made when one of them is chosen."""
+
+    def copy() -> None:
+        try:
+            copy_picture(drawing(), choices_from_tree(user_settings().kept(KEPT)))
+        except ValueError as error:
+            QMessageBox.warning(parent, "Not copied", str(error))
+
+    menu.addAction("Save the picture…", lambda: PictureDialog(drawing(), user_settings(), parent).exec())
+    menu.addAction("Copy the picture", copy)

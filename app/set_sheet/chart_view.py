@@ -5,11 +5,23 @@ from __future__ import annotations
 from functools import lru_cache
 
 from PySide6.QtCore import QPointF, QRectF, QSize, Qt, Signal
-from PySide6.QtGui import QColor, QFont, QFontMetricsF, QMouseEvent, QPainter, QPaintEvent, QPen, QPolygonF
-from PySide6.QtWidgets import QSizePolicy, QWidget
+from PySide6.QtGui import (
+    QColor,
+    QContextMenuEvent,
+    QFont,
+    QFontMetricsF,
+    QMouseEvent,
+    QPainter,
+    QPaintEvent,
+    QPen,
+    QPolygonF,
+)
+from PySide6.QtWidgets import QMenu, QSizePolicy, QWidget
 
 from app.look.fonts import base_size, font
 from app.look.palette import Palette, palette
+from app.picture_dialog import add_picture_actions
+from app.picture_files import Drawing
 from app.set_sheet.chart import chart
 from app.set_sheet.frame import Frame, frame_of
 from app.set_sheet.scene import Area, Letters, Level, Line, Mark, Scene, Words, outline_of
@@ -91,6 +103,24 @@ class ChartView(QWidget):
         x = frame.set.at(max(self._cell.set or 0.0, 0.0) if self._cell.moves else 0.0)
         painter.setPen(QPen(QColor(colours.accent), 2.0))
         painter.drawEllipse(QPointF(x, y), 7, 7)
+
+    def contextMenuEvent(self, event: QContextMenuEvent) -> None:
+        if self._shown is None:
+            return
+        menu = QMenu(self)
+        menu.setAttribute(Qt.WidgetAttribute.WA_DeleteOnClose)
+        add_picture_actions(menu, self.drawing, self)
+        menu.popup(event.globalPos())
+
+    def drawing(self) -> Drawing:
+        """The chart as a picture of its own, without what the pointer shows."""
+
+        def on(painter: QPainter) -> None:
+            painter.fillRect(self.rect(), QColor(palette().paper))
+            painter.setRenderHint(QPainter.RenderHint.Antialiasing)
+            paint(painter, self.scene(), palette())
+
+        return Drawing(self.accessibleName(), self.width(), self.height(), on)
 
     def mouseMoveEvent(self, event: QMouseEvent) -> None:
         self._point(self._nearest(event.position()))

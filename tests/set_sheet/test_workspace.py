@@ -3,12 +3,14 @@
 from collections.abc import Iterator
 from pathlib import Path
 
+import pypdfium2
 import pytest
 from PySide6.QtCore import QPointF, Qt
 from PySide6.QtWidgets import QFileDialog, QLabel
 from pytestqt.qtbot import QtBot
 
 from app.document import Document
+from app.picture_files import PictureChoices, picture_file
 from app.set_sheet.scene import Line, Mark, Scene, Words
 from app.set_sheet.workspace import SetSheet
 from app.words import MODEL_CAUTION
@@ -231,3 +233,11 @@ def type_into(qtbot: QtBot, field, text: str) -> None:
     qtbot.keyClicks(field, text)
     qtbot.keyClick(field, Qt.Key.Key_Return)
     field.clearFocus()
+
+
+def test_the_chart_is_saved_as_a_picture_with_text(shown: SetSheet) -> None:
+    document = pypdfium2.PdfDocument(picture_file(shown.chart.drawing(), PictureChoices("pdf")))
+    text = document[0].get_textpage().get_text_range()
+    document.close()
+    drawn = texts(shown.chart.scene())
+    assert sum(words in text for words in drawn) > 0.8 * len(drawn)

@@ -16,19 +16,15 @@ from app.bench.pictures.layers import Layered, Table
 from app.bench.pictures.lettering import CENTRE, put
 from app.disk import why_not, write_whole
 from app.look.palette import palette
-from app.picture_dialog import KEPT, PictureDialog
-from app.picture_files import Drawing, choices_from_tree, copy_picture
-from app.settings import user_settings
+from app.picture_dialog import add_picture_actions
+from app.picture_files import Drawing
 
 
 def add_export_actions(menu: QMenu, picture: Layered) -> None:
     """What can be done with what the picture shows."""
     numbers = menu.addAction("Save the numbers as CSV…", lambda: _ask_for_csv(picture))
     numbers.setEnabled(picture.table() is not None)
-    menu.addAction(
-        "Save the picture…", lambda: PictureDialog(drawing_of(picture), user_settings(), picture).exec()
-    )
-    menu.addAction("Copy the picture", lambda: _copy(picture))
+    add_picture_actions(menu, lambda: drawing_of(picture), picture)
 
 
 def drawing_of(picture: Layered) -> Drawing:
@@ -85,13 +81,6 @@ def csv_of(table: Table) -> str:
     for row in zip_longest(*(column.tolist() for column in table.columns), fillvalue=""):
         writer.writerow([repr(v) if isinstance(v, float) else v for v in row])
     return text.getvalue()
-
-
-def _copy(picture: Layered) -> None:
-    try:
-        copy_picture(drawing_of(picture), choices_from_tree(user_settings().kept(KEPT)))
-    except ValueError as error:
-        QMessageBox.warning(picture, "Not copied", str(error))
 
 
 def _ask_for_csv(picture: Layered) -> None:
