@@ -61,7 +61,7 @@ class UnitsMenu(QMenu):
             below = self.addMenu(f"{word}\t{units.unit(dimension)}")
             self._below.append(below)
             usual = SYSTEMS[units.system][dimension][0]
-            as_system = f"As {SYSTEM_WORDS[units.system]}: {usual}"
+            as_system = f"As {_inside(units.system)} units have it: {usual}"
             self._choice(
                 below, as_system, dimension not in own, partial(choose_unit, document, dimension, None)
             )
@@ -70,7 +70,7 @@ class UnitsMenu(QMenu):
                 chosen = own.get(dimension) == unit
                 self._choice(below, unit, chosen, partial(choose_unit, document, dimension, unit))
         self.addSeparator()
-        back = self.addAction(f"All quantities as {SYSTEM_WORDS[units.system]}")
+        back = self.addAction(f"All quantities in {_inside(units.system)} units")
         back.triggered.connect(lambda _on=False: choose_one_system(document))
         back.setEnabled(bool(own))
 
@@ -83,7 +83,7 @@ class UnitsMenu(QMenu):
 
 def choose_units(document: Document, system: str) -> None:
     """Show metric or US units; units chosen for single quantities stay."""
-    _show(document, f"Show {SYSTEM_WORDS[system]} units", {**_shown(document), "system": system})
+    _show(document, f"Show {_inside(system)} units", {**_shown(document), "system": system})
 
 
 def choose_unit(document: Document, dimension: str, unit: str | None) -> None:
@@ -98,7 +98,12 @@ def choose_unit(document: Document, dimension: str, unit: str | None) -> None:
 def choose_one_system(document: Document) -> None:
     """Show every quantity in the unit that its system has for it."""
     system = units_of(document.project).system
-    _show(document, f"Show all quantities in {SYSTEM_WORDS[system]} units", {"system": system})
+    _show(document, f"Show all quantities in {_inside(system)} units", {"system": system})
+
+
+def _inside(system: str) -> str:
+    """The word for a system inside a sentence."""
+    return SYSTEM_WORDS[system].replace("Metric", "metric")
 
 
 def _shown(document: Document) -> dict[str, str]:

@@ -51,9 +51,9 @@ def test_one_quantity_has_a_unit_of_its_own_and_goes_back(document, menu, tmp_pa
     assert units.show(163e6, "stress") == "163\u00a0MPa"
     trigger(menu, "US")
     assert document.project.display_units == {"system": "us", "force": "MN", "length": "ft"}
-    trigger(menu, "Force", "As US: kip")
+    trigger(menu, "Force", "As US units have it: kip")
     assert document.project.display_units == {"system": "us", "length": "ft"}
-    trigger(menu, "All quantities as US")
+    trigger(menu, "All quantities in US units")
     assert document.project.display_units == "us"
 
 
@@ -75,7 +75,7 @@ def test_blows_are_counted_in_the_unit_of_lengths(document, menu):
     """A set of s m/blow is 0.3048/s blows for each foot and 0.25/s for each 0.25 m, whatever the system is called."""
     found = findings_of(solve(document.case))
     counted = []
-    for unit in ("As Metric: m", "ft"):
+    for unit in ("As metric units have it: m", "ft"):
         trigger(menu, "Length", unit)
         line = next(
             line for line in verdict(found, units_of(document.project)) if line.name == "set per blow"
