@@ -143,7 +143,7 @@ def _own_rows(pointer: str, sign: str, limits: Tree) -> list[Spec]:
         value=parts["value"],
         dimension="stress",
         bounds=Bounds(above=0.0),
-        empty="by expression" if by_expression else "no limit given",
+        empty="by rule" if by_expression else "no limit given",
         write=lambda tree, value: put(tree, value=value),
     )
     if limit is None:
