@@ -50,13 +50,21 @@ class Rod(NamedTuple):
 
 
 class Shaft(NamedTuple):
-    """Shaft arrays: plain laws from node `first` on; power law and radiation on listed nodes."""
+    """Shaft arrays: plain laws from node `first` on; power law and radiation on listed nodes.
+
+    Columns of `power`: static resistance and strength (N), stiffness (N/m), its inverse, J Ru, exponent, damping at the
+    last half step (N); scales of the root with and without spring, and two inverses (`ready_power`). `pieces`:
+    polynomials of that root, for one exponent after the other; `kept_at`: the piece with which a node's begin, -1 where
+    they are not kept.
+    """
 
     first: int
     r: Array
     par: Array
     power_nodes: Ints
     power: Array
+    kept_at: Ints
+    pieces: Array
     radiation_nodes: Ints
     radiation: Array
 

@@ -54,7 +54,7 @@ def balance(row, rod, ground, bounds, rest, u, v, w, force, sums, dt):
     for j in range(len(ground.r)):
         soil += 0.5 * ground.r[j] * ground.r[j] * ground.par[2, j]
     for j in range(len(ground.power_nodes)):
-        soil += 0.5 * ground.power[0, j] * ground.power[0, j] * ground.power[3, j]
+        soil += 0.5 * ground.power[j, 0] * ground.power[j, 0] * ground.power[j, 3]
     for j in range(len(ground.radiation_nodes)):
         soil += 0.5 * ground.radiation[2, j] * ground.radiation[0, j] * ground.radiation[0, j]
     if len(bounds.toe_par) and bounds.toe_par[2] > 0.0:

@@ -52,8 +52,8 @@ def _soil_of(chain: Chain, state: State) -> _Soil:
     at = slice(s.first, s.first + len(s.r))
     stiff[at] += s.par[1]
     strength[at] += s.par[0]
-    stiff[s.power_nodes] += s.power[2]
-    strength[s.power_nodes] += s.power[1]
+    stiff[s.power_nodes] += s.power[:, 2]
+    strength[s.power_nodes] += s.power[:, 1]
     stiff[s.radiation_nodes] += s.radiation[2]
     strength[s.radiation_nodes] += s.radiation[1]
     low = -strength
@@ -91,7 +91,7 @@ def bring_to_rest(chain: Chain, state: State) -> None:
     s, r = state.shaft, soil.force_and_slope(u)[0]
     _press_joints(chain, state, weight - r - chain.spring * u)
     s.r[:] = np.clip(s.par[1] * u[s.first : s.first + len(s.r)], -s.par[0], s.par[0])
-    s.power[0] = np.clip(s.power[2] * u[s.power_nodes], -s.power[1], s.power[1])
+    s.power[:, 0] = np.clip(s.power[:, 2] * u[s.power_nodes], -s.power[:, 1], s.power[:, 1])
     q = s.radiation
     q[0] = np.clip(u[s.radiation_nodes], -q[1] / q[2], q[1] / q[2])
     _lay_toe(state.bounds, float(u[-1]), float(r[-1]))
@@ -128,9 +128,11 @@ def step_ground_back(chain: Chain, state: State) -> None:
     before = s.r.copy()
     s.r[:] = np.clip(s.r - s.par[1] * back[plain], -s.par[0], s.par[0])
     opening[plain] -= (before - s.r) / 2
-    before = s.power[0].copy()
-    s.power[0] = np.clip(s.power[0] - s.power[2] * back[s.power_nodes], -s.power[1], s.power[1])
-    np.subtract.at(opening, s.power_nodes, (before - s.power[0]) / 2)
+    before = s.power[:, 0].copy()
+    s.power[:, 0] = np.clip(
+        s.power[:, 0] - s.power[:, 2] * back[s.power_nodes], -s.power[:, 1], s.power[:, 1]
+    )
+    np.subtract.at(opening, s.power_nodes, (before - s.power[:, 0]) / 2)
     s.radiation[0] -= back[s.radiation_nodes]
     np.subtract.at(opening, s.radiation_nodes, s.radiation[2] * back[s.radiation_nodes] / 2)
     if opening.any():

@@ -16,6 +16,7 @@ from solver.model.member import Segment
 from solver.model.surroundings import Ground, Resistance, Toe
 from solver.numerics.arrays import Shaft
 from solver.numerics.chain import Chain
+from solver.numerics.power_root import pieces_for
 from solver.numerics.toe import POWER, RADIATION, SMITH, VISCOUS
 
 Array = NDArray[np.float64]
@@ -73,6 +74,8 @@ def shaft_of(chain: Chain) -> Shaft:
     first, stop = (int(touched[0]), int(touched[-1]) + 1) if len(touched) else (head, head)
     rows = plain[:, first:stop]
     smith = tables["smith"][:, first:stop]
+    power = _power_rows(tables["power"])
+    kept_at, pieces = pieces_for(power[:, 5])
     return Shaft(
         first=first,
         r=np.zeros(stop - first),
@@ -86,7 +89,9 @@ def shaft_of(chain: Chain) -> Shaft:
             ]
         ),
         power_nodes=np.flatnonzero(tables["power"][0]),
-        power=_power_rows(tables["power"]),
+        power=power,
+        kept_at=kept_at,
+        pieces=pieces,
         radiation_nodes=np.flatnonzero(tables["radiation"][0]),
         radiation=_radiation_rows(tables["radiation"]),
     )
@@ -98,7 +103,8 @@ def _inverse(k: Array) -> Array:
 
 def _power_rows(table: Array) -> Array:
     t = table[:, np.flatnonzero(table[0])]
-    return np.array([np.zeros_like(t[0]), t[0], t[1], _inverse(t[1]), t[2], t[3] / t[0]])
+    zero = np.zeros_like(t[0])
+    return np.stack([zero, t[0], t[1], _inverse(t[1]), t[2], t[3] / t[0], *5 * [zero]], axis=1)
 
 
 def _radiation_rows(table: Array) -> Array:

@@ -116,9 +116,8 @@ def shaft_nodes(ground, push, v, w, sums, dt):
         sums[SLIP] += slip
         sums[DAMPING] += damped
     if len(ground.power_nodes):
-        p = ground.power
         slip, damped, turned = shaft.power(
-            ground.power_nodes, v, w, push, p[0], p[1], p[2], p[3], p[4], p[5], dt
+            ground.power_nodes, ground.kept_at, ground.pieces, v, w, push, ground.power, dt
         )
         sums[IMPACT] += turned
         sums[SLIP] += slip
@@ -197,6 +196,7 @@ def march(rod, ground, bounds, motion, ext, rec, ends, sums, load, first, count,
     shafts = len(ground.r) + len(ground.power_nodes) + len(ground.radiation_nodes) > 0
     toes, jointed, walled = len(bounds.toe_par) > 0, len(bounds.joints) > 0, bounds.wall[0] < np.inf
     rams, train_heard, strikes = len(bounds.train_links) > 0, len(rec.ram) > 0, len(ext.second) > 0
+    shaft.ready_power(ground.power_nodes, v, push, ground.power, dt, first)
     done = 0
     waiting = done > 0
     while done < count:

@@ -48,7 +48,7 @@ def settle(chain: Chain, state: State) -> bool:
 def _held(chain: Chain, state: State) -> bool:
     """Whether anything holds the member: a toe alone, without gravity, pushes it off and leaves it anywhere."""
     s = state.shaft
-    sides = s.par[0].sum() + s.power[1].sum() + s.radiation[1].sum() + chain.spring.sum()
+    sides = s.par[0].sum() + s.power[:, 1].sum() + s.radiation[1].sum() + chain.spring.sum()
     return bool(sides > 0 or chain.gravity > 0 or chain.fixed_end)
 
 
@@ -163,7 +163,7 @@ class _Rest:
         s, bounds = state.shaft, state.bounds
         plain, power, radiation = (spring.resist(u)[0] for spring in self.groups[:3])
         s.r[:] = plain
-        s.power[0] = power
+        s.power[:, 0] = power
         s.radiation[0] = np.divide(
             radiation, s.radiation[2], out=np.zeros_like(radiation), where=s.radiation[2] > 0
         )
@@ -182,7 +182,7 @@ def _springs_of(chain: Chain, state: State) -> list[_Springs]:
     found = []
     for node, r, stiff, strength in (
         (plain, s.r, s.par[1], s.par[0]),
-        (s.power_nodes, s.power[0], s.power[2], s.power[1]),
+        (s.power_nodes, s.power[:, 0], s.power[:, 2], s.power[:, 1]),
         (s.radiation_nodes, s.radiation[0] * s.radiation[2], s.radiation[2], s.radiation[1]),
     ):
         now = np.clip(r + stiff * ahead[node], -strength, strength)

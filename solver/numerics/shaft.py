@@ -5,7 +5,8 @@ w the mean of the two half-step velocities, `p` = dt/m and R clamped to its stre
 equation per branch, so that the step is bounded by the rod alone and a linear spring keeps its energy.
 """
 
-from solver.numerics.compiled import kernel
+from solver.numerics.compiled import apart, kernel
+from solver.numerics.power_root import speed_by_pieces
 
 
 @kernel
@@ -44,58 +45,54 @@ def plain(first, v, w, push, r, par, dt):
 
 
 @kernel
-def power_speed(a, b, exponent, rest):
-    """Root w of a w + b |w|^N sign(w) = rest, a > 0, b >= 0, 0 < N <= 1.
-
-    With y = |w|^N the left side is a y^(1/N) + b y, convex and rising, so Newton's steps fall onto the root from
-    above.
-    """
-    goal = abs(rest)
-    if goal == 0.0:
-        return 0.0
-    inverse = 1.0 / exponent
-    # both bounds lie above the root
-    y = min(goal / b if b > 0.0 else 1e300, (goal / a) ** exponent)
-    for _ in range(50):
-        lead = a * y ** (inverse - 1.0)
-        change = (lead * y + b * y - goal) / (inverse * lead + b)
-        y -= change
-        if change <= 1e-13 * y:
-            break
-    size = (goal - b * y) / a
-    return size if rest > 0.0 else -size
+def ready_power(nodes, v, push, table, dt, first):
+    """What the power law keeps of each node: scales of its root, with and without its spring, and before the first step
+    the damping at the velocities of now. `table`: see `Shaft`."""
+    for j in range(len(nodes)):
+        i = nodes[j]
+        half, b, n = 0.5 * push[i], table[j, 4], table[j, 5]
+        linear = 1.0 + 0.5 * half * table[j, 2] * dt
+        table[j, 9], table[j, 10] = 1.0 / linear, 1.0 / half
+        if b > 0.0 and n < 1.0:
+            table[j, 7] = (linear / (half * b)) ** (1.0 / (1.0 - n)) / linear
+            table[j, 8] = (1.0 / (half * b)) ** (1.0 / (1.0 - n))
+        if first == 0:
+            table[j, 6] = b * abs(v[i]) ** n * (1.0 if v[i] > 0.0 else -1.0) if v[i] != 0.0 else 0.0
 
 
-@kernel
-def power(nodes, v, w, push, r, strength, stiff, flexible, factor, exponent, dt):
-    """Power law Rd = J Ru |v|^N sign(v) (Gibson and Coyle 1968, from memory); `factor` = J Ru, arrays per listed node.
+@apart
+def power(nodes, kept_at, pieces, v, w, push, table, dt):
+    """Power law Rd = J Ru |v|^N sign(v) (Gibson and Coyle 1968, from memory). `table`, `kept_at`, `pieces`: see
+    `Shaft`.
 
-    The damping too acts with the mean of its values at both half steps. Returns the energies lost by slip and damping,
-    and what the damping exchanges where the motion turns within a step, J.
+    The damping too acts with the mean of its values at both half steps; its new value is what the balance of the half
+    step leaves for it. Returns the energies lost by slip and damping, and what the damping exchanges where the motion
+    turns within a step, J.
     """
     slip_loss = 0.0
     damping_loss = 0.0
     exchanged = 0.0
     for j in range(len(nodes)):
-        i = nodes[j]
-        half = 0.5 * push[i]
-        old, top, b, n = r[j], strength[j], factor[j], exponent[j]
-        k = stiff[j] * dt
-        before = b * abs(v[i]) ** n * (1.0 if v[i] > 0.0 else -1.0) if v[i] != 0.0 else 0.0
+        i, node = nodes[j], table[j]
+        half, k = 0.5 * push[i], node[2] * dt
+        old, top, before, speed = node[0], node[1], node[6], v[i]
+        b, linear = half * node[4], 1.0 + 0.5 * half * k
         goal = w[i] - half * (old + before)
-        new_w = power_speed(1.0 + 0.5 * half * k, half * b, n, goal - half * (old + 0.5 * k * v[i]))
-        new = old + 0.5 * k * (v[i] + new_w)
+        left = goal - half * (old + 0.5 * k * speed)
+        new_w = speed_by_pieces(linear, node[9], b, node[5], left, node[7], pieces, kept_at[j])
+        new = old + 0.5 * k * (speed + new_w)
         if abs(new) > top:
             new = top if new > 0.0 else -top
-            new_w = power_speed(1.0, half * b, n, goal - half * new)
-        after = b * abs(new_w) ** n * (1.0 if new_w > 0.0 else -1.0) if new_w != 0.0 else 0.0
-        moved = 0.5 * dt * (v[i] + new_w)
+            linear, left = 1.0, goal - half * new
+            new_w = speed_by_pieces(1.0, 1.0, b, node[5], left, node[8], pieces, kept_at[j])
+        after = (left - linear * new_w) * node[10]
+        moved = 0.5 * dt * (speed + new_w)
         damped = 0.5 * (before + after) * moved
         damping_loss += max(damped, 0.0)
         exchanged += min(damped, 0.0)
-        slip_loss += top * abs(moved - (new - old) * flexible[j])
+        slip_loss += top * abs(moved - (new - old) * node[3])
         w[i] = new_w
-        r[j] = new
+        node[0], node[6] = new, after
     return slip_loss, damping_loss, exchanged
 
 

@@ -10,7 +10,7 @@ in s/m; for radiation the dashpot in N·s/m), [4] exponent. Law numbers are inte
 import numpy as np
 
 from solver.numerics.compiled import kernel
-from solver.numerics.shaft import power_speed
+from solver.numerics.power_root import power_speed
 
 SMITH, VISCOUS, POWER, RADIATION = 0, 1, 2, 3
 
