@@ -51,7 +51,7 @@ class Bench(QWidget):
         self.time_bar = TimeBar(document, sight, solution)
         self._sight = sight
         line = QFontMetricsF(font()).height()
-        for picture, size in ((self.member, max(150, 9 * line)), (self.xt, 280), (self.profile, 170)):
+        for picture, size in ((self.member, max(150, 10 * line)), (self.xt, 280), (self.profile, 170)):
             picture.setMinimumSize(QSize(round(size), 160))
         self.grid = CrossGrid(
             [[self.member, self.xt, self.profile], [self.at_cursor, self.strips, self.findings]],

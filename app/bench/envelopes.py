@@ -48,7 +48,7 @@ def hues_of(quantity: ShownQuantity) -> tuple[str, str]:
 
 
 def draw_extremes(painter: QPainter, scale: Scale, found: Extremes) -> None:
-    """Both curves, a dot at the peak of each, and "whole run" at the foot of the larger one."""
+    """Both curves, and a dot at the peak of each."""
     if not len(found.position):
         return
     y = scale.y(found.position)
@@ -64,6 +64,14 @@ def draw_extremes(painter: QPainter, scale: Scale, found: Extremes) -> None:
             painter.setPen(Qt.PenStyle.NoPen)
             painter.setBrush(QColor(hue))
             painter.drawEllipse(QPointF(x[peak], y[peak]), 3.2, 3.2)
+    painter.setBrush(Qt.BrushStyle.NoBrush)
+
+
+def name_extremes(painter: QPainter, scale: Scale, found: Extremes) -> None:
+    """ "whole run" at the foot of the larger curve."""
+    if not len(found.position):
+        return
+    y = scale.y(found.position[-1:])
     ends, hue = _larger(found, scale)
     width, line = width_of("whole run", painter.font()), QFontMetricsF(painter.font()).height()
     left = _between(float(scale.x(ends[-1:])[0]) - width / 2, width, scale.plot)

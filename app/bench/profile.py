@@ -13,7 +13,7 @@ from PySide6.QtCore import QLineF, QRectF, Qt
 from PySide6.QtGui import QFontMetricsF, QPainter, QPainterPath, QPen, QRegion
 from PySide6.QtWidgets import QMenu
 
-from app.bench.envelopes import Scale, draw_extremes, draw_over, hues_of, is_free
+from app.bench.envelopes import Scale, draw_extremes, draw_over, hues_of, is_free, name_extremes
 from app.bench.field_values import DIMENSIONS, along_member, extremes_of, limit_lines, screen_sign
 from app.bench.limits import Limit, draw_limits, limits_of
 from app.bench.member.glyphs import pen
@@ -220,6 +220,9 @@ class Profile(Picture):
             return is_free(box, scale, found)
 
         draw_limits(painter, plot, distance, values, self.limits(), quantity, free)
+        name_extremes(
+            painter, scale, found[0]
+        )  # over the lines of limits, where there is no room beside them
 
     def table(self) -> Table | None:
         """Distance, the extremes of the whole run, and the quantity now, in the units and sign of the screen."""

@@ -14,7 +14,10 @@ from app.bench.pictures.lettering import RIGHT, put, width_of
 from app.look.palette import palette
 from app.units import Units
 from solver import Case
-from solver.model.load import Drop, History, Pulse
+from solver.model.load import Drop, History, Load, Pulse
+
+#: Pixels below which the shape of a pulse cannot be seen.
+LEAST_SHAPE = 14.0
 
 
 @dataclass(frozen=True)
@@ -102,27 +105,35 @@ def strength_text(load: Drop, units: Units) -> str:
 
 def draw_pulse(
     painter: QPainter, case: Case, units: Units, centre: float, struck: float, top: float, right: float
-) -> QRectF:
-    """An arrow onto the struck end with the shape of the pulse beside it. Gives the box that selects it."""
+) -> None:
+    """An arrow onto the struck end, with the shape of the pulse beside it where it is high enough to be seen, and its
+    peak."""
     colours, load = palette(), case.load
     line = QFontMetricsF(painter.font()).height()
     height = min(struck - top - line, 2.4 * line)
+    shaped = height >= LEAST_SHAPE
+    height = height if shaped else max(struck - top - 2, 8.0)
     arrow_down(painter, centre, struck - height, struck - 1, 7, colours.ink)
     box = QRectF(centre + 10, struck - height, max(min(right - centre - 16, 3 * line), 8.0), height - 4)
+    if shaped:
+        _draw_shape(painter, load, box)
+    if isinstance(load, Pulse):
+        text = units.show(abs(load.peak), load.quantity)
+        left = min(box.left(), right - width_of(text, painter.font()))
+        y = box.top() - 0.55 * line if shaped else struck - height / 2 - 2
+        put(painter, left, y, text, colours.soft_ink)
+
+
+def _draw_shape(painter: QPainter, load: Load, box: QRectF) -> None:
+    colours = palette()
     painter.setBrush(Qt.BrushStyle.NoBrush)
     painter.setPen(pen(colours.ink, 1.2))
     if isinstance(load, Pulse):
         painter.drawPath(outline(pulse_shape(load.shape, *_ends(load)), box))
     elif isinstance(load, History):
         painter.drawPolyline(QPolygonF(list(_history(load, box))))
-    if isinstance(load, Pulse):
-        dimension = "force" if load.quantity == "force" else "velocity"
-        text = units.show(abs(load.peak), dimension)
-        left = min(box.left(), right - width_of(text, painter.font()))
-        put(painter, left, box.top() - 0.55 * line, text, colours.soft_ink)
     painter.setPen(pen(colours.line))
     painter.drawLine(QLineF(box.bottomLeft(), box.bottomRight()))
-    return QRectF(QPointF(centre - 8, box.top()), box.bottomRight())
 
 
 def _ends(load: Pulse) -> tuple[float, float]:

@@ -23,7 +23,7 @@ ENDS = {
     "displacement": (("↑ to the struck end", "↓ to the far end"), ("↑", "↓")),
 }
 #: Least length of the bar, pixels, and its usual one in lines of text; gap around it.
-SHORT, USUAL, GAP = 40.0, 6.0, 6.0
+SHORT, USUAL, GAP = 30.0, 6.0, 6.0
 
 
 def draw_scale(

@@ -23,6 +23,7 @@ class StripChips(QWidget):
     def __init__(self, document: Document, sight: Sight, parent: QWidget | None = None) -> None:
         super().__init__(parent)
         self._document, self._sight = document, sight
+        self._long = dict(CHIPS)
         self._chips = {kind: self._make_chip(kind) for kind in STRIPS}
         self._gauge_menus = {kind: self._make_gauge_menu(kind) for kind in OF_ONE_GAUGE}
         self._over = self._make_menu("Lay over ▾", "Draw other cases of the project over this one.")
@@ -30,6 +31,7 @@ class StripChips(QWidget):
         over_menu = self._over.menu()
         over_menu.aboutToShow.connect(lambda: fill_over_menu(over_menu, document, sight))
         self._more = self._make_menu("More ▾", "Strips for which there is no room in this row.")
+        self._more.setAccessibleName("More strips")
         menu = self._more.menu()
         menu.aboutToShow.connect(lambda: self._fill_more(menu))
         for source in (document, sight):
@@ -112,9 +114,7 @@ class StripChips(QWidget):
             name = next((s for s in wanted if kind_of(s) == kind), kind)
             gauge = gauge_of(name, case) if kind in OF_ONE_GAUGE else None
             shown = any(kind_of(s) == kind for s in wanted)
-            text = f"{CHIPS[kind]}, {gauge}" if gauge and shown else CHIPS[kind]
-            if chip.text() != text:
-                chip.setText(text)
+            self._long[kind] = f"{CHIPS[kind]}, {gauge}" if gauge and shown else CHIPS[kind]
             chip.setChecked(shown)
         count = sum(c.name in self._sight.laid_over for c in self._document.project.cases if c is not case)
         over = f"Laid over: {count} ▾" if count else "Lay over ▾"
@@ -123,8 +123,17 @@ class StripChips(QWidget):
         self._lay_out()
 
     def _lay_out(self) -> None:
-        """From the left edge of the plots on where all fit, else from the panel's; shown strips first."""
-        several = len(self._document.case.gauges) > 1
+        """From the left edge of the plots on where all fit, else from the panel's; shown strips first, and where not
+        even those fit, without gauges."""
+        shown = [self._long[kind] for kind, chip in self._chips.items() if chip.isChecked()]
+        needed = sum(self.fontMetrics().horizontalAdvance(text) + 6 * GAP for text in shown)
+        short = needed + 2 * self._over.sizeHint().width() + self._more.sizeHint().width() > self.width()
+        for kind, chip in self._chips.items():
+            text = CHIPS[kind] if short else self._long[kind]
+            if chip.text() != text:
+                chip.setText(text)
+        self._more.setText("▾" if short else "More ▾")
+        several = len(self._document.case.gauges) > 1 and not short
         parts: dict[str, list[tuple[QToolButton, int]]] = {}
         for kind, chip in self._chips.items():
             parts[kind] = [(chip, chip.sizeHint().width())]
