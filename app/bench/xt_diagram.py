@@ -27,7 +27,7 @@ from app.bench.pictures.cursor import (
     draw_pinned_place,
     draw_place,
 )
-from app.bench.pictures.lettering import put
+from app.bench.pictures.lettering import WRITTEN, put
 from app.bench.pictures.picture import Picture, Table
 from app.look.fonts import font
 from app.look.palette import palette
@@ -42,6 +42,8 @@ ARRIVALS_TIP = (
     "Where the front of the blow is expected, from lengths and wave speeds alone: straight lines down the member and, "
     "where it meets a step, a joint, the ground or the far end, back up. Point at a line to read its name."
 )
+#: Pixels of the field in a file with text as text, for each pixel of the screen: about 300 to an inch on paper.
+FINER = 3.0
 
 
 class XtDiagram(Picture):
@@ -234,7 +236,8 @@ class XtDiagram(Picture):
         box = QRectF(plot.left(), plot.top(), time.at(last) - plot.left(), plot.height())
         if box.width() < 1:
             return
-        ratio = painter.device().devicePixelRatioF()
+        in_file = painter.paintEngine().type() in WRITTEN  # a file is looked at more closely than a screen
+        ratio = FINER if in_file else painter.device().devicePixelRatioF()
         image = self._field_image(
             Axis(time.low, last, 0, round(box.width() * ratio)),
             Axis(distance.low, distance.high, 0, round(box.height() * ratio)),
