@@ -67,6 +67,13 @@ def draw_extremes(painter: QPainter, scale: Scale, found: Extremes) -> None:
     painter.setBrush(Qt.BrushStyle.NoBrush)
 
 
+def draw_striking(painter: QPainter, scale: Scale, found: Extremes) -> None:
+    """Those of a rod that strikes, above the member's."""
+    for ends, hue in zip((found.lowest, found.highest), scale.hues, strict=True):
+        painter.setPen(pen(hue, 1.2))
+        painter.drawPolyline(polygon(scale.x(ends), scale.y(found.position)))
+
+
 def name_extremes(painter: QPainter, scale: Scale, found: Extremes) -> None:
     """ "whole run" at the foot of the larger curve."""
     if not len(found.position):

@@ -5,8 +5,10 @@ Values stay in SI with tension positive; the screen's units and sign are put on 
 
 from __future__ import annotations
 
+from collections.abc import Iterator, Sequence
 from dataclasses import dataclass
 from functools import lru_cache
+from itertools import accumulate
 from typing import Literal
 
 import numpy as np
@@ -15,6 +17,7 @@ from numpy.typing import NDArray
 from app.sight import ShownQuantity
 from app.units import Units
 from solver import Case, GaugeRecord, Result
+from solver.model.member import Segment
 
 Array = NDArray[np.float64]
 
@@ -110,6 +113,15 @@ def extremes_of(result: Result, quantity: ShownQuantity) -> Extremes:
     return Extremes(place, np.min(values, axis=0).astype(float), top)
 
 
+def striking_extremes(result: Result, quantity: ShownQuantity) -> Extremes | None:
+    """Of stress and force in a rod that strikes, at its negative places; `None` where there is none."""
+    envelope = result.striking_envelope
+    if envelope is None or quantity not in ("stress", "force"):
+        return None
+    area = 1.0 if quantity == "stress" else area_at(result, envelope.position)
+    return Extremes(envelope.position, envelope.lowest_stress * area, envelope.highest_stress * area)
+
+
 def area_at(result: Result, position: Array) -> Array:
     """Area of the section (m2) at places (m), from the columns of the fields."""
     fields = result.fields
@@ -128,21 +140,27 @@ class LimitLine:
 
 
 def limit_lines(case: Case) -> list[LimitLine]:
-    """Limits along the member, those of neighbours joined where they are equal. The findings use the same numbers."""
+    """Limits along the rod that strikes, if any, and the member, those of neighbours joined where they are equal. The
+    findings use the same numbers."""
     found: list[LimitLine] = []
     signs: tuple[tuple[Literal["compression", "tension"], float], ...] = (
         ("compression", -1.0),
         ("tension", 1.0),
     )
     for sign, factor in signs:
-        start = 0.0
-        for segment in case.member.segments:
+        for start, end, segment in (*_placed(case.ram_segments, above=True), *_placed(case.member.segments)):
             limit = case.material(segment.material).limits.value(sign)
-            end = start + segment.length
             before = found[-1] if found and found[-1].sign == sign else None
             if limit is not None and before and before.stress == factor * limit and before.end == start:
                 found[-1] = LimitLine(sign, before.start, end, before.stress)
             elif limit is not None:
                 found.append(LimitLine(sign, start, end, factor * limit))
-            start = end
     return found
+
+
+def _placed(segments: Sequence[Segment], above: bool = False) -> Iterator[tuple[float, float, Segment]]:
+    """Segments with where each begins and ends (m), from the struck end on, or `above` it down to it."""
+    ends = [0.0, *accumulate(segment.length for segment in segments)]
+    first = -ends[-1] if above else 0.0
+    for segment, start, end in zip(segments, ends, ends[1:], strict=False):
+        yield first + start, first + end, segment

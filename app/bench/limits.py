@@ -84,7 +84,7 @@ def draw_limits(
         # along a taper the limit of a force changes at every column: its first value is named
         key = (limit.sign, 0.0 if quantity == "force" else limit.value)
         label = _Label(
-            f"limit {rounded(abs(shown))}", x if inside else None, top, shown > 0, limit.start == 0
+            f"limit {rounded(abs(shown))}", x if inside else None, top, shown > 0, limit.start <= 0
         )
         named.setdefault(key, label)
     taken: list[QRectF] = []

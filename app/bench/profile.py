@@ -13,8 +13,23 @@ from PySide6.QtCore import QLineF, QRectF, Qt
 from PySide6.QtGui import QFontMetricsF, QPainter, QPainterPath, QPen, QRegion
 from PySide6.QtWidgets import QMenu
 
-from app.bench.envelopes import Scale, draw_extremes, draw_over, hues_of, is_free, name_extremes
-from app.bench.field_values import DIMENSIONS, along_member, extremes_of, limit_lines, screen_sign
+from app.bench.envelopes import (
+    Scale,
+    draw_extremes,
+    draw_over,
+    draw_striking,
+    hues_of,
+    is_free,
+    name_extremes,
+)
+from app.bench.field_values import (
+    DIMENSIONS,
+    along_member,
+    extremes_of,
+    limit_lines,
+    screen_sign,
+    striking_extremes,
+)
 from app.bench.limits import Limit, draw_limits, limits_of
 from app.bench.member.glyphs import pen
 from app.bench.member.locked_in import draw_locked_in, table_of, unit_of
@@ -109,10 +124,13 @@ class Profile(Picture):
         reach = self._largest() * abs(factor)
         values = [shown for _, shown in self.limits() if abs(shown) <= FAR_LIMIT * reach]
         for result in self._all_results() if self.result is not None else ():
-            found = extremes_of(result, self.sight.quantity)
-            for ends in (found.lowest, found.highest):
-                if len(ends):
-                    values += [float(np.min(ends)) * factor, float(np.max(ends)) * factor]
+            quantity = self.sight.quantity
+            for found in (extremes_of(result, quantity), striking_extremes(result, quantity)):
+                for ends in () if found is None else (found.lowest, found.highest):
+                    values += [
+                        float(np.min(ends, initial=0)) * factor,
+                        float(np.max(ends, initial=0)) * factor,
+                    ]
         low, high = min([*values, 0.0]), max([*values, 0.0])
         span = (high - low) or 1.0
         return Axis(low - 0.08 * span, high + 0.08 * span, plot.left(), plot.width())
@@ -213,11 +231,14 @@ class Profile(Picture):
         scale = Scale(plot, distance, values, self.factor(), hues_of(quantity))
         found = [extremes_of(result, quantity) for result in self._all_results()]
         draw_extremes(painter, scale, found[0])
+        rod = None if self.result is None else striking_extremes(self.result, quantity)
+        if rod is not None:
+            draw_striking(painter, scale, rod)
         for one, extremes in zip(self._others(), found[1:], strict=True):
             draw_over(painter, scale, extremes, one.name, one.number, found)
 
         def free(box: QRectF) -> bool:
-            return is_free(box, scale, found)
+            return is_free(box, scale, found if rod is None else [*found, rod])
 
         draw_limits(painter, plot, distance, values, self.limits(), quantity, free)
         name_extremes(

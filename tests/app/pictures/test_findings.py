@@ -2,13 +2,15 @@
 
 from __future__ import annotations
 
+from types import SimpleNamespace
+
 import numpy as np
 import pytest
 from PySide6.QtCore import Qt
 
 from app.bench import limits as limits_drawing
 from app.bench import profile as profile_drawing
-from app.bench.field_values import extremes_of, limit_lines, value_at
+from app.bench.field_values import extremes_of, limit_lines, striking_extremes, value_at
 from app.bench.findings_panel import facts_of
 from app.bench.strips.contents import content_of
 from app.units import units_of
@@ -164,6 +166,33 @@ def test_a_limit_is_named_where_no_curve_runs_through_it(open_bench, two_materia
             assert free
             assert plot.contains(box)
             assert not any(box.intersects(other) for other, _, _ in named[number + 1 :])
+
+
+def test_a_rod_that_strikes_has_its_extremes_and_its_limit_above_the_struck_end(open_bench):
+    """A steel striker of 0.4 m on a bar alike at 12 m/s: both get rho c v/2, the striker until the wave comes back."""
+    section = {"shape": "solid_round", "diameter": 0.02}
+    case = {
+        "name": "Striker",
+        "member": {"segments": [{"name": "Bar", "length": 3.0, "material": "steel", "section": section}]},
+        "load": {
+            "kind": "striker",
+            "velocity": 12.0,
+            "segments": [{"name": "Rod", "length": 0.4, "material": "steel", "section": section}],
+        },
+        "far_end": {"kind": "free"},
+        "run": {"duration": 0.0005},
+    }
+    project = project_of(case)
+    solved = SimpleNamespace(project=project, result=solve(project.cases[0]))
+    found = striking_extremes(solved.result, "stress")
+    assert found.position.max() < 0
+    expected = np.sqrt(210e9 * 7850) * 12 / 2
+    assert -found.lowest.min() == pytest.approx(expected, rel=1e-6)
+    assert -found.lowest.min() == facts_of(solved.result).striking[0].peak.value
+    the = open_bench(solved)
+    limits = [limit for limit, _ in the.bench.profile.limits() if limit.sign == "compression"]
+    assert [(limit.start, limit.end) for limit in limits] == [(-0.4, 3.0)]
+    assert not the.bench.profile.grab().isNull()
 
 
 def test_what_lies_between_two_cursors_is_read_at_the_cursor(open_bench, pile):
