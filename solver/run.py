@@ -85,7 +85,7 @@ def _next_blow(chain: Chain, old: State) -> State:
     state = State(rod_of(chain), old.shaft, fresh.bounds, fresh.motion)
     state.rod.state[:] = old.rod.state
     state.bounds.toe_state[:] = old.bounds.toe_state
-    state.bounds.joint_bond[:] = old.bounds.joint_bond
+    state.bounds.joint_bond[:3] = old.bounds.joint_bond[:3]
     below = [j for j, joint in enumerate(chain.joints) if joint.link >= chain.head]
     state.bounds.joint_force[below] = old.bounds.joint_force[below]
     state.motion.u[:] = u

@@ -9,7 +9,6 @@ from solver.answer.blow import Blow
 from solver.answer.result import Event, EventKind
 from solver.numerics.chain import Chain
 from solver.numerics.records import (
-    EVENT_CRACK,
     EVENT_IMPACT,
     EVENT_JOINT_CLOSED,
     EVENT_JOINT_OPENED,
@@ -23,7 +22,6 @@ EVENT_NAMES: dict[int, EventKind] = {
     EVENT_IMPACT: "impact",
     EVENT_SEPARATION: "separation",
     EVENT_LEFT_ELASTIC: "first_yield",
-    EVENT_CRACK: "crack",
     EVENT_JOINT_OPENED: "joint_opened",
     EVENT_JOINT_CLOSED: "joint_closed",
     EVENT_WALL: "wall_contact",
@@ -37,19 +35,25 @@ def events_of(blow: Blow) -> tuple[Event, ...]:
     """All events in order of time; of cracks the first of each segment."""
     chain = blow.chain
     kept = _without_flicker(blow.events)
-    found, cracked = [], set()
+    found = _first_cracks(blow)
     for kind, place, step in kept:
         name = EVENT_NAMES[kind]
         striker = chain.case.load.kind == "striker" and place == chain.head - 1
         if striker and name in ("joint_closed", "joint_opened"):
             name = "impact" if name == "joint_closed" else "separation"
-        if name == "crack":
-            segment = next(joint.segment for joint in chain.joints if joint.link == place)
-            if segment in cracked:
-                continue
-            cracked.add(segment)
         found.append(Event(name, _event_position(chain, kind, place), step * chain.dt))
     return tuple(sorted(found, key=lambda e: e.time))
+
+
+def _first_cracks(blow: Blow) -> list[Event]:
+    """The first crack of each segment."""
+    chain, first = blow.chain, dict[str, Event]()
+    steps = blow.state.bounds.joint_bond[3]
+    for j in np.argsort(steps, kind="stable"):
+        joint = chain.joints[j]
+        if joint.strength and steps[j] >= 0 and joint.segment not in first:
+            first[joint.segment] = Event("crack", joint.position, float(steps[j] * chain.dt))
+    return list(first.values())
 
 
 def _event_position(chain: Chain, kind: int, place: int) -> float:

@@ -210,7 +210,7 @@ def _residual(blow: Blow) -> Residual | None:
 def _crack_openings(blow: Blow) -> dict[str, float]:
     """Largest opening of a crack per brittle segment that cracked, m."""
     bond, openings = blow.state.bounds.joint_bond, dict[str, float]()
-    for joint, (strength, opened, _) in zip(blow.chain.joints, bond, strict=True):
+    for joint, strength, opened in zip(blow.chain.joints, bond[0], bond[1], strict=True):
         if joint.strength and strength <= 0:
             openings[joint.segment] = max(openings.get(joint.segment, 0.0), float(opened))
     return openings

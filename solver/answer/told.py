@@ -68,7 +68,7 @@ def _crumbled(blow: Blow) -> list[tuple[float, str]]:
     """How many elements of a segment came off alone, between two cracks, and the segment; the most first."""
     count: dict[str, int] = {}
     before = None
-    for joint, (strength, *_) in zip(blow.chain.joints, blow.state.bounds.joint_bond, strict=True):
+    for joint, strength in zip(blow.chain.joints, blow.state.bounds.joint_bond[0], strict=True):
         cracked = joint if joint.strength and strength <= 0 else None
         if cracked and before and cracked.link - before.link == 2:
             count[joint.segment] = count.get(joint.segment, 0) + 1

@@ -71,8 +71,9 @@ class Shaft(NamedTuple):
 
 class Bounds(NamedTuple):
     """Toe, joints, wall, train. `joints`: link per joint; `joint_par`: gap, slack; `joint_force`: force of the
-    last half step. `joint_trial`: see `contact.touch_ahead`; `joint_bond`: strength (N) while they hold (0: cracked, or
-    never bonded), the largest opening since (m; -1 where it was never bonded), force of the last step (N)."""
+    last half step; `joint_trial`: see `contact.touch_ahead`. `faces`: the joints that only touch,
+    `bonds`: runs of those that may crack; `joint_bond` of these, shape (5, joints): strength (N; 0: cracked), largest
+    opening (m), force of the last step (N), the step in which it cracked (-1: not in this blow), `ease` (N/m)."""
 
     toe_par: Array
     toe_state: Array
@@ -80,6 +81,8 @@ class Bounds(NamedTuple):
     joint_par: Array
     joint_trial: Array
     joint_bond: Array
+    faces: Ints
+    bonds: Ints
     joint_force: Array
     wall: Array
     train_links: Ints

@@ -146,9 +146,9 @@ def bounds_of(chain: Chain) -> Bounds:
         toe_state=state,
         joints=np.array([j.link for j in chain.joints], dtype=np.int64),
         joint_par=np.array([(j.gap, j.slack) for j in chain.joints], dtype=float).reshape(-1, 2),
-        joint_bond=np.array([(j.strength, 0.0 if j.strength else -1.0, 0.0) for j in chain.joints]).reshape(
-            -1, 3
-        ),
+        joint_bond=_bonds_of(chain),
+        faces=np.array([i for i, j in enumerate(chain.joints) if not j.strength], dtype=np.int64),
+        bonds=_runs_of_bonds(chain),
         joint_trial=np.zeros(len(chain.joints)),
         joint_force=np.zeros(len(chain.joints)),
         wall=np.array([chain.wall_gap, 0.0]),
@@ -158,6 +158,32 @@ def bounds_of(chain: Chain) -> Bounds:
         train_state=train_state,
         train_force=np.zeros(2),
     )
+
+
+def _bonds_of(chain: Chain) -> Array:
+    """Rows of `Bounds.joint_bond` of bonds that hold; their `ease` closes a gap at the next step, N/m."""
+    rows = np.zeros((5, len(chain.joints)))
+    rows[3] = -1.0
+    if not any(j.strength for j in chain.joints):
+        return rows
+    links = np.array([j.link for j in chain.joints], dtype=np.int64)
+    push = rod_of(chain).push
+    rows[0] = [j.strength for j in chain.joints]
+    rows[4] = 1 / (chain.dt * (push[links] + push[links + 1]))
+    return rows
+
+
+def _runs_of_bonds(chain: Chain) -> NDArray[np.int64]:
+    """Bonds that follow each other every second node: first joint, stop, first node of each run, shape (runs, 3)."""
+    runs: list[list[int]] = []
+    for i, joint in enumerate(chain.joints):
+        if not joint.strength:
+            continue
+        if runs and runs[-1][1] == i and runs[-1][2] + 2 * (i - runs[-1][0]) == joint.link:
+            runs[-1][1] = i + 1
+        else:
+            runs.append([i, i + 1, joint.link])
+    return np.array(runs, dtype=np.int64).reshape(-1, 3)
 
 
 def stiffest_cushion(chain: Chain, link: int) -> float:

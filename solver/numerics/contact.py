@@ -5,8 +5,8 @@ faces that part still feel half of what held them, and no wave of two steps' len
 stiffness and no smaller step.
 """
 
-from solver.numerics.compiled import part_of_step
-from solver.numerics.records import EVENT_CRACK, EVENT_JOINT_CLOSED, EVENT_JOINT_OPENED, EVENT_WALL, remember
+from solver.numerics.compiled import apart, part_of_step
+from solver.numerics.records import EVENT_JOINT_CLOSED, EVENT_JOINT_OPENED, EVENT_WALL, remember
 
 #: Share of its strength by which a bond may be short of it and still cracks: pulled by the very strength, it shall not
 #: hang on the last digit.
@@ -15,64 +15,116 @@ ROUNDING = 1e-9
 
 @part_of_step
 def force_between(bounds, j, push, u, w, dt):
-    """Force that presses the faces of joint `j` in this step, that of the coming half step, and whether it cracks.
-
-    A bond is kept closed, which takes the force between its two elements; the coming half step's lies between it and
-    what it would be if it went on as since the step before. Where that one pulls by the strength, the joint cracks: now
-    only the half acts that the last half step still held.
-    """
-    a, before, bond = bounds.joints[j], bounds.joint_force[j], bounds.joint_bond[j, 0]
+    """Force that presses the faces of joint `j` in this step, and that of the coming half step."""
+    a, before = bounds.joints[j], bounds.joint_force[j]
     yielding = push[a] + push[a + 1]
-    gap = u[a + 1] - u[a] + dt * (w[a + 1] - w[a])
-    if bond > 0.0:
-        force = -gap / (dt * yielding)
-        ahead, goes_on = 2.0 * force - before, 2.0 * force - bounds.joint_bond[j, 2]
-        held = min(max(ahead, min(force, goes_on)), max(force, goes_on))
-        if -held >= bond * (1.0 - ROUNDING):
-            return 0.5 * before, 0.0, True
-        return force, ahead, False
-    gap += bounds.joint_par[j, 0] + 0.5 * dt * yielding * before
+    gap = u[a + 1] - u[a] + bounds.joint_par[j, 0] + dt * (w[a + 1] - w[a] + 0.5 * yielding * before)
     over = gap if gap < 0.0 else max(gap - bounds.joint_par[j, 1], 0.0)
     ahead = -2.0 * over / (dt * yielding)
-    return 0.5 * (before + ahead), ahead, False
+    return 0.5 * (before + ahead), ahead
 
 
 @part_of_step
-def touch_ahead(bounds, push, u, w, dt):
+def bond_force(gap, ease, before, last, strength):
+    """The same for a joint that may crack, and its strength from now on. `gap`: without any force at the next step, m;
+    `ease` turns a gap into the force that closes it, N/m.
+
+    While it holds it is kept closed, which takes the force between its two elements; the coming half step's lies
+    between it and what it would be if it went on as since the step before. Where that one pulls by the strength, it
+    cracks: now only the half acts that the last half step still held. A crack touches like any faces.
+    """
+    force = -gap * ease
+    ahead, goes_on = 2.0 * force - before, 2.0 * force - last
+    low, high = (force, goes_on) if force < goes_on else (goes_on, force)
+    held = low if ahead < low else (high if ahead > high else ahead)
+    cracks = -held >= strength * (1.0 - ROUNDING)
+    sound, touches = strength > 0.0, ahead > 0.0
+    pressed = 0.5 * (before + ahead) if touches else 0.5 * before
+    # chosen without branches, so that the loop over all bonds runs in vector instructions
+    new = force if sound and not cracks else (0.5 * before if sound else pressed)
+    coming = (0.0 if cracks else ahead) if sound else (ahead if touches else 0.0)
+    return new, coming, strength if sound and not cracks else 0.0
+
+
+@apart
+def try_bonds(ease, before, strength, last, trial, push, u, w, dt):
+    """A run of bonds, the first between the first two nodes, acts for a trial."""
+    for i in range(len(ease)):
+        a, b = 2 * i, 2 * i + 1
+        gap = u[b] - u[a] + dt * (w[b] - w[a])
+        force, _, _ = bond_force(gap, ease[i], before[i], last[i], strength[i])
+        w[a], w[b] = w[a] - push[a] * force, w[b] + push[b] * force
+        trial[i] = force
+
+
+@apart
+def hold_bonds(ease, before, strength, opened, last, cracked, trial, push, u, v, w, dt, step):
+    """A run of bonds, the first between the first two nodes, acts for good; returns the energy exchanged, J."""
+    exchanged = 0.0
+    for i in range(len(ease)):
+        a, b = 2 * i, 2 * i + 1
+        near, far, was, now = push[a], push[b], strength[i], u[b] - u[a]
+        w1, w2 = w[a] + near * trial[i], w[b] - far * trial[i]
+        force, ahead, left = bond_force(now + dt * (w2 - w1), ease[i], before[i], last[i], was)
+        w1, w2 = w1 - near * force, w2 + far * force
+        w[a], w[b], trial[i] = w1, w2, 0.0
+        before[i], last[i], strength[i] = ahead, force, left
+        cracked[i] = step if was > left else cracked[i]
+        opened[i] = now if left == 0.0 and now > opened[i] else opened[i]
+        exchanged += 0.5 * dt * force * (v[a] - v[b] + w1 - w2)
+    return exchanged
+
+
+@part_of_step
+def bonds(bounds, push, u, v, w, dt, step, for_trial):
+    """All joints that may crack, run by run; returns the energy exchanged, J."""
+    exchanged, bond = 0.0, bounds.joint_bond
+    for r in range(len(bounds.bonds)):
+        j, end, a = bounds.bonds[r, 0], bounds.bonds[r, 1], bounds.bonds[r, 2]
+        at, here = slice(j, end), slice(a, a + 2 * (end - j))
+        ease, before, strength, last = bond[4, at], bounds.joint_force[at], bond[0, at], bond[2, at]
+        trial = bounds.joint_trial[at]
+        if for_trial:
+            try_bonds(ease, before, strength, last, trial, push[here], u[here], w[here], dt)
+        else:
+            exchanged += hold_bonds(
+                ease, before, strength, bond[1, at], last, bond[3, at], trial, push[here], u[here], v[here], w[here],
+                dt, step,
+            )  # fmt: skip
+    return exchanged
+
+
+@part_of_step
+def touch_ahead(bounds, push, u, v, w, dt, step):
     """Let the joints act for a trial, so that the ground along the shaft meets velocities that are nearly the new ones;
     `joints` takes it back."""
-    for j in range(len(bounds.joints)):
+    for k in range(len(bounds.faces)):
+        j = bounds.faces[k]
         a = bounds.joints[j]
-        force, _, _ = force_between(bounds, j, push, u, w, dt)
+        force, _ = force_between(bounds, j, push, u, w, dt)
         w[a] -= push[a] * force
         w[a + 1] += push[a + 1] * force
         bounds.joint_trial[j] = force
+    bonds(bounds, push, u, v, w, dt, step, True)
 
 
 @part_of_step
 def joints(bounds, push, u, v, w, dt, note, step):
     """Correct the new velocities of joints that touch, hold or pull in this step; returns the energy exchanged, J."""
-    exchanged = 0.0
-    for j in range(len(bounds.joints)):
+    exchanged = bonds(bounds, push, u, v, w, dt, step, False)
+    for k in range(len(bounds.faces)):
+        j = bounds.faces[k]
         a, before, trial = bounds.joints[j], bounds.joint_force[j], bounds.joint_trial[j]
         w[a] += push[a] * trial
         w[a + 1] -= push[a + 1] * trial
         bounds.joint_trial[j] = 0.0
-        force, ahead, cracks = force_between(bounds, j, push, u, w, dt)
+        force, ahead = force_between(bounds, j, push, u, w, dt)
         rel = v[a] - v[a + 1]
         w[a] -= push[a] * force
         w[a + 1] += push[a + 1] * force
         exchanged += 0.5 * dt * force * (rel + w[a] - w[a + 1])
         bounds.joint_force[j] = ahead
-        if bounds.joint_bond[j, 1] >= 0.0:
-            # a crack is told once, and how far it opened
-            bounds.joint_bond[j, 2] = force
-            if cracks:
-                bounds.joint_bond[j, 0] = 0.0
-                remember(note, EVENT_CRACK, a, step)
-            elif bounds.joint_bond[j, 0] <= 0.0:
-                bounds.joint_bond[j, 1] = max(bounds.joint_bond[j, 1], u[a + 1] - u[a])
-        elif ahead != 0.0 and before == 0.0:
+        if ahead != 0.0 and before == 0.0:
             remember(note, EVENT_JOINT_CLOSED, a, step)
         elif ahead == 0.0 and before != 0.0:
             remember(note, EVENT_JOINT_OPENED, a, step)

@@ -262,7 +262,7 @@ def _press_joints(chain: Chain, state: State, pull: Array) -> None:
                 else f"With gravity on, the member would crack at {joint.position:.4g} m under its own weight: see its "
                 "material's strength, or turn gravity off."
             )
-        bounds.joint_force[j] = bounds.joint_bond[j, 2] = max(pressed, -joint.strength)
+        bounds.joint_force[j] = bounds.joint_bond[2, j] = max(pressed, -joint.strength)
     if chain.wall_gap == 0:
         bounds.wall[1] = max(float(pull[-1] - force[-1]), 0.0)
 

@@ -214,7 +214,7 @@ def march(rod, ground, bounds, motion, ext, rec, ends, sums, load, first, count,
             special_nodes(rod, u, v, w, drag, gain, step)
         if shafts:
             if jointed:
-                contact.touch_ahead(bounds, push, u, w, dt)
+                contact.touch_ahead(bounds, push, u, v, w, dt, step)
             shaft_nodes(ground, push, v, w, sums, dt)
         if toes:
             toe_node(bounds, push, u, v, w, sums, dt, note, step)

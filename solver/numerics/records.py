@@ -13,8 +13,7 @@ from solver.numerics.compiled import apart, kernel, part_of_step
     EVENT_JOINT_CLOSED,
     EVENT_WALL,
     EVENT_TOE_LIFT,
-    EVENT_CRACK,
-) = range(8)
+) = range(7)
 
 
 @kernel

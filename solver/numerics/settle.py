@@ -94,7 +94,7 @@ class _Rest:
         self.faces = FACES * float(state.rod.stiff.max())
         self.joints = [(j, link) for j, link in enumerate(chain.joints) if link.link >= chain.head]
         # nodes that a bond holds together move as one; the first of each such group, and the group of every node
-        self.bonds = [j for j, _ in self.joints if state.bounds.joint_bond[j, 0] > 0]
+        self.bonds = [j for j, _ in self.joints if state.bounds.joint_bond[0, j] > 0]
         begins = np.ones(chain.nodes - chain.head, dtype=bool)
         begins[[chain.joints[j].link + 1 - chain.head for j in self.bonds]] = False
         self.first, self.group = np.flatnonzero(begins), np.cumsum(begins) - 1
@@ -127,7 +127,7 @@ class _Rest:
     def over(self, u: Array, j: int, joint: JointLink) -> float:
         """How far joint number `j` is pressed together (below 0) or pulled beyond its slack, m."""
         gap = float(u[joint.link + 1] - u[joint.link]) + joint.gap
-        if self.state.bounds.joint_bond[j, 0] > 0:
+        if self.state.bounds.joint_bond[0, j] > 0:
             return 0.0
         return min(gap, 0.0) + max(gap - joint.slack, 0.0)
 
@@ -172,7 +172,7 @@ class _Rest:
         for j, joint in self.joints:
             bounds.joint_force[j] = -self.faces * self.over(u, j, joint)
         for j in self.bonds:
-            bounds.joint_force[j] = bounds.joint_bond[j, 2] = nodes[chain.joints[j].link]
+            bounds.joint_force[j] = bounds.joint_bond[2, j] = nodes[chain.joints[j].link]
 
 
 def _springs_of(chain: Chain, state: State) -> list[_Springs]:
