@@ -14,9 +14,8 @@ from app.settings import Settings
 
 
 @pytest.fixture
-def bench(open_bench, pile):
-    the = open_bench(pile)
-    yield the.bench
+def the(open_bench, pile):
+    return open_bench(pile)
 
 
 def words_of(pdf: bytes) -> str:
@@ -30,8 +29,8 @@ def pictures_of(bench):
     return bench.member, bench.xt, bench.profile, *bench.strips.shown()
 
 
-def test_a_png_has_the_pixels_of_its_size_and_says_its_resolution(bench):
-    for picture in pictures_of(bench):
+def test_a_png_has_the_pixels_of_its_size_and_says_its_resolution(the):
+    for picture in pictures_of(the.bench):
         drawing = drawing_of(picture)
         choices = PictureChoices("png", dpi=200)
         image = QImage.fromData(picture_file(drawing, choices))
@@ -41,8 +40,8 @@ def test_a_png_has_the_pixels_of_its_size_and_says_its_resolution(bench):
         assert image.pixelColor(2, image.height() - 3).name() == PRINT.paper
 
 
-def test_the_x_t_diagram_alone_has_its_axes_its_scale_and_text_that_can_be_read(bench):
-    drawing = drawing_of(bench.xt)
+def test_the_x_t_diagram_alone_has_its_axes_its_scale_and_text_that_can_be_read(the):
+    drawing = drawing_of(the.bench.xt)
     text = words_of(picture_file(drawing, PictureChoices("pdf")))
     for words in ("Stress through time", "Time, ms", "Distance, m", "compression", "tension"):
         assert words in text
@@ -51,16 +50,16 @@ def test_the_x_t_diagram_alone_has_its_axes_its_scale_and_text_that_can_be_read(
     assert f'width="{PictureChoices().width_of(drawing):.0f}' in svg
 
 
-def test_a_word_with_a_rim_is_written_once(bench):
-    text = words_of(picture_file(drawing_of(bench.member), PictureChoices("pdf")))
+def test_a_word_with_a_rim_is_written_once(the):
+    text = words_of(picture_file(drawing_of(the.bench.member), PictureChoices("pdf")))
     assert text.count("Head") == 1
 
 
-def test_the_screen_keeps_its_look_and_print_has_its_own(bench, qapp):
+def test_the_screen_keeps_its_look_and_print_has_its_own(the, qapp):
     qapp.setProperty("striketrace_look", "dark")
     try:
         papers = [
-            QImage.fromData(picture_file(drawing_of(bench.xt), PictureChoices(print_colours=on)))
+            QImage.fromData(picture_file(drawing_of(the.bench.xt), PictureChoices(print_colours=on)))
             for on in (True, False)
         ]
     finally:
@@ -69,9 +68,9 @@ def test_the_screen_keeps_its_look_and_print_has_its_own(bench, qapp):
     assert papers[1].pixelColor(1, 1).lightness() < 60
 
 
-def test_the_dialog_keeps_its_choices_and_tells_why_a_file_was_not_saved(bench, qtbot, tmp_path, monkeypatch):
+def test_the_dialog_keeps_its_choices_and_tells_why_a_file_was_not_saved(the, qtbot, tmp_path, monkeypatch):
     settings = Settings(tmp_path / "settings")
-    dialog = PictureDialog(drawing_of(bench.xt), settings)
+    dialog = PictureDialog(drawing_of(the.bench.xt), settings)
     qtbot.addWidget(dialog)
     dialog.dpi.setValue(96)
     dialog.width_mm.setValue(120)
@@ -82,7 +81,7 @@ def test_the_dialog_keeps_its_choices_and_tells_why_a_file_was_not_saved(bench, 
     dialog.copy_it()
     assert QGuiApplication.clipboard().image().width() == pytest.approx(120 / MM_PER_INCH * 96, abs=1)
 
-    again = PictureDialog(drawing_of(bench.xt), settings)
+    again = PictureDialog(drawing_of(the.bench.xt), settings)
     qtbot.addWidget(again)
     assert (again.dpi.value(), again.width_mm.value()) == (96, 120)
 
@@ -96,6 +95,6 @@ def test_the_dialog_keeps_its_choices_and_tells_why_a_file_was_not_saved(bench, 
     assert sorted(tmp_path.iterdir()) == before
 
 
-def test_a_picture_that_would_be_too_large_is_refused_in_a_sentence(bench):
+def test_a_picture_that_would_be_too_large_is_refused_in_a_sentence(the):
     with pytest.raises(ValueError, match="are too many"):
-        picture_file(drawing_of(bench.xt), PictureChoices(scale=10.0, dpi=1200))
+        picture_file(drawing_of(the.bench.xt), PictureChoices(scale=10.0, dpi=1200))
