@@ -16,6 +16,7 @@ struct twin {
     arr r, par, toe_par, toe_state, train_par, train_state, train_force, ram;
     int64_t *restrict gauge_node;
     arr gauge_weight, gauge;
+    int64_t *restrict second;
 };
 
 enum { WORK, DASHPOTS, SLIP, DAMPING, IMPACT };
@@ -71,14 +72,23 @@ static void record(const struct twin *t, double *row, int64_t frame, arr v, arr 
     int64_t n = t->nodes;
     double dt = t->dt, kinetic = 0, before = 0, gravity = 0, stored = 0, soil = 0, cushion = 0, taken = 0;
     arr u = t->u, force = t->pulls + 1, rest = t->rest, mass = t->mass, weight = t->weight, stiff = t->stiff;
-    float *fs = t->frame_stress + frame * t->columns, *fv = t->frame_velocity + frame * t->columns,
-          *fu = t->frame_moved + frame * t->columns;
-    for (int64_t c = 0; c < t->columns; c++) {
-        int64_t i = t->column[c];
-        fs[c] = (float)force[i] / t->area[c];
-        fv[c] = (float)(0.25 * (v[i] + w[i] + v[i + 1] + w[i + 1]));
-        fu[c] = (float)(0.5 * (u[i] - rest[i] + u[i + 1] - rest[i + 1]));
-    }
+    float *restrict fs = t->frame_stress + frame * t->columns, *restrict fv = t->frame_velocity + frame * t->columns,
+          *restrict fu = t->frame_moved + frame * t->columns;
+    int64_t first = t->column[0], columns = t->columns;
+    if (t->column[columns - 1] - first == columns - 1) {
+        for (int64_t c = 0, i = first; c < columns; c++)
+            fs[c] = (float)force[i + c] / t->area[c];
+        for (int64_t c = 0, i = first; c < columns; c++)
+            fv[c] = (float)(0.25 * (v[i + c] + w[i + c] + v[i + c + 1] + w[i + c + 1]));
+        for (int64_t c = 0, i = first; c < columns; c++)
+            fu[c] = (float)(0.5 * (u[i + c] - rest[i + c] + u[i + c + 1] - rest[i + c + 1]));
+    } else
+        for (int64_t c = 0; c < columns; c++) {
+            int64_t i = t->column[c];
+            fs[c] = (float)force[i] / t->area[c];
+            fv[c] = (float)(0.25 * (v[i] + w[i] + v[i + 1] + w[i + 1]));
+            fu[c] = (float)(0.5 * (u[i] - rest[i] + u[i + 1] - rest[i + 1]));
+        }
     for (int64_t i = 0; i < n; i++) {
         kinetic += mass[i] * w[i] * w[i];
         before += mass[i] * v[i] * v[i];
@@ -310,6 +320,12 @@ void pile(const struct twin *t) {
         shaft(t, v, w);
         toe(t, v, w);
         train(t, v, w);
+        /* a second blow, after which the envelopes of the first would be kept, does not come in this case */
+        if (t->train_force[0] > 0) {
+            if (t->second[2] == 0 && step - t->second[0] > t->second[1])
+                t->second[2] = step;
+            t->second[0] = step;
+        }
         gauges(t, step, v, w);
         t->ram[step] = t->train_force[0];
         t->ram[t->steps + step] = 0.5 * (v[0] + w[0]);

@@ -29,7 +29,7 @@ POINTERS = (
     "low", "low_step", "high", "high_step", "speed", "travel", "ledger", "sums", "column",
     "area", "frame_stress", "frame_velocity", "frame_moved",
     "r", "par", "toe_par", "toe_state", "train_par", "train_state", "train_force", "ram",
-    "gauge_node", "gauge_weight", "gauge",
+    "gauge_node", "gauge_weight", "gauge", "second",
 )  # fmt: skip
 
 
@@ -104,6 +104,7 @@ class Twin:
             "gauge_node": records.node,
             "gauge_weight": records.weights,
             "gauge": self.gauge,
+            "second": rig.extremes.second,
         }
         assert all(a.flags.c_contiguous for a in self.arrays.values())
         whole = (rig.chain.nodes, steps, rig.stride, rig.chain.head, len(records.columns))
