@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import errno
+import hashlib
 import os
 import tempfile
 from dataclasses import dataclass
@@ -11,19 +12,18 @@ from pathlib import Path
 
 @dataclass(frozen=True)
 class DiskState:
-    """Enough of a file's entry to notice a change: time of the last change in ns and size; both 0 for no file."""
+    """Enough of a file to notice a change: a hash of its content, empty for no file. Not its time, which programs that
+    copy and synchronise folders change where nothing else has."""
 
-    changed: int = 0
-    size: int = 0
+    digest: str = ""
 
 
 def disk_state(path: Path) -> DiskState:
-    """The state of a file now; a file that cannot be reached counts as none."""
+    """The state of a file now; a file that cannot be read counts as none."""
     try:
-        entry = path.stat()
+        return DiskState(hashlib.sha256(path.read_bytes()).hexdigest())
     except OSError:
         return DiskState()
-    return DiskState(entry.st_mtime_ns, entry.st_size)
 
 
 def write_whole(path: Path, content: str | bytes) -> None:

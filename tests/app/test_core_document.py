@@ -159,6 +159,7 @@ def test_a_file_that_is_not_valid_leaves_the_project_at_hand(document, tmp_path)
 def test_a_file_changed_by_another_program_is_noticed(document, tmp_path):
     path = tmp_path / "x.strike"
     document.save_as(path)
+    path.write_bytes(path.read_bytes())  # as programs do that synchronise folders
     assert not document.changed_on_disk()
     path.write_text(path.read_text() + "\n")
     assert document.changed_on_disk()
