@@ -18,7 +18,7 @@ from tests.solver.strategies import Tree, case_in, project_trees
 def on_nodes(case: Case) -> float:
     """Sum of the static strengths on all nodes, N, whatever the law there."""
     shaft = shaft_of(build_chain(case))
-    return float(shaft.par[0].sum() + shaft.power[1].sum() + shaft.radiation[1].sum())
+    return float(shaft.par[0].sum() + shaft.power[:, 1].sum() + shaft.radiation[1].sum())
 
 
 def test_layers_over_two_segments_take_the_perimeter_of_each() -> None:
