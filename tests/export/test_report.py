@@ -219,7 +219,7 @@ def test_dates_are_english_whatever_the_system_speaks():
 def test_thinned_curves_keep_their_peaks():
     x = np.linspace(0, 1, 100_001)
     y = np.sin(50 * x)
-    y[33_333] = 9.0
+    y[33_444] = 9.0  # within a stretch, not at one of its ends, which are kept in any case
     seen_x, seen_y = thinned(x, y)
     assert len(seen_x) <= 1000
     assert seen_y.max() == 9.0
