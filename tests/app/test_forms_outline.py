@@ -76,6 +76,7 @@ def desk(qtbot) -> Callable[[Tree], Desk]:
         window.show()
         qtbot.waitExposed(window)
         window.activateWindow()
+        qtbot.waitUntil(window.isActiveWindow)
         return Desk(document, sight, outline, qtbot, window)
 
     return make
