@@ -1,7 +1,7 @@
 """Rest after the blow: the member alone in static balance with its ground as the blow left it, its ram gone.
 
 Elastic springs with sliders, links and closed joints all resist the more the more they are moved, so the balance is the
-only one; Newton's method finds it, halving a step that would lead away.
+only one; Newton's method finds it, with a part of a step that would lead far beyond it.
 """
 
 from __future__ import annotations
@@ -35,13 +35,15 @@ def settle(chain: Chain, state: State) -> bool:
     at = rest.unbalanced(u)
     for _ in range(200):
         change, singular = dptsv(*rest.tangent(at), at.out)[2:]
-        largest = np.max(np.abs(change))
-        if singular or not largest <= float(chain.position[-1]):
+        if singular or not np.isfinite(change).all():
             return False
-        if largest < STILL:
+        if np.max(np.abs(change)) < STILL:
             rest.take(u)
             return True
+        before = u
         u, at = rest.nearer(u, change, at)
+        if np.max(np.abs(u - before)) > float(chain.position[-1]):
+            return False
     return False
 
 
@@ -143,16 +145,20 @@ class _Rest:
         return diagonal, -links
 
     def nearer(self, u: Array, change: Array, at: _Balance) -> tuple[Array, _Balance]:
-        """The whole step, or a part of it that leaves less out of balance."""
-        before = float(np.linalg.norm(at.out))
-        trial = u
-        for share in (1.0, 0.5, 0.25, 0.125):
-            trial = u.copy()
-            trial[self.chain.head :] += share * change[self.group]
-            at = self.unbalanced(trial)
-            if float(np.linalg.norm(at.out)) < before:
+        """The whole step; or, where it goes far beyond the balance, the part at whose end nothing drives it on."""
+        step = np.append(np.zeros(self.chain.head), change[self.group])
+        drive, low, high = float(at.out @ change), 0.0, 1.0
+        at = self.unbalanced(u + step)
+        if float(at.out @ change) >= -drive / 2:
+            return u + step, at
+        for _ in range(60):
+            middle = (low + high) / 2
+            at = self.unbalanced(u + middle * step)
+            ahead = float(at.out @ change)
+            if abs(ahead) <= drive / 2:
                 break
-        return trial, at
+            low, high = (middle, high) if ahead > 0 else (low, middle)
+        return u + middle * step, at
 
     def take(self, u: Array) -> None:
         """Write the rest into the state: displacements, materials, ground, joints."""

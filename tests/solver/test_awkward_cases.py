@@ -376,3 +376,20 @@ def test_a_pile_that_sinks_onto_its_toe_before_the_blow() -> None:
     weight = 8000 * AREA * LENGTH * GRAVITY
     assert -result.gauges["toe"].rest_force == pytest.approx(weight - 2e3, rel=2e-3)
     assert np.abs(result.gauges["toe"].velocity[result.gauges["toe"].time < 0.002]).max() < 1e-9
+
+
+def test_a_pile_driven_in_ground_of_which_only_the_toe_holds_comes_to_rest() -> None:
+    """Shaft of 2 kN under a weight of 7.8 kN: after the blow it slips as a whole until the toe takes the rest. Its set is
+    the largest movement of the toe less its quake, but for the 4 % of the toe's strength that carry the weight.
+    """
+    shaft = {"resistance": 2e3, "distribution": "uniform", "quake": 0.0025, "damping": 0.1}
+    ground = {
+        "surface": 0.0,
+        "shaft_total": shaft,
+        "toe": {"resistance": 136e3, "quake": 0.0025, "damping": 0.3},
+    }
+    drop = {"kind": "drop", "ram_mass": 200.0, "impact_velocity": 4.5}
+    drop["cushion"] = {"stiffness": 1e8, "restitution": 0.5}
+    result = solved(drop, far_end="ground", ground=ground, gravity=True)
+    assert "no_rest" not in {remark.kind for remark in result.remarks}
+    assert result.set == pytest.approx(result.max_toe_displacement - 0.0025, rel=0.05)
