@@ -104,7 +104,12 @@ def faults(root: QWidget) -> list[str]:
             found.append(f"{told(widget)} does not say what it is for")
         if not reached_with(reached, widget):
             found.append(f"Tab does not come to {told(widget)}")
+    looked_at = set()
     for widget, other in zip(widgets, [*widgets[1:], widgets[0]], strict=True):
+        kind = type(widget), widget.property("role"), widget.property("level")
+        if kind in looked_at:  # the look is the same for all of a kind
+            continue
+        looked_at.add(kind)
         other.setFocus(Qt.FocusReason.TabFocusReason)
         without = widget.grab().toImage()
         widget.setFocus(Qt.FocusReason.TabFocusReason)
@@ -132,22 +137,22 @@ def test_the_pictures_the_top_bar_and_the_tables(window):
     assert found + faults(window.tables) == []
 
 
-@pytest.mark.parametrize("number", [1, 2])
-def test_the_other_workspaces(window, number, qtbot):
-    window.workspaces.show_number(number)
-    workspace = window.workspaces.currentWidget()
-    qtbot.waitUntil(lambda: len(takers(workspace)) > 4)
-    assert faults(workspace) == []
+def test_the_other_workspaces(window, qtbot):
+    for number in (1, 2):
+        window.workspaces.show_number(number)
+        workspace = window.workspaces.currentWidget()
+        qtbot.waitUntil(lambda shown=workspace: len(takers(shown)) > 4)
+        assert faults(workspace) == []
 
 
-@pytest.mark.parametrize("opens", ["ask_new", "choose_records", "show_terms", "show_limits", "show_about"])
-def test_small_windows(window, opens, qtbot):
-    getattr(window, opens)()
-    dialog = next(w for w in QApplication.topLevelWidgets() if isinstance(w, QDialog) and w.isVisible())
-    dialog.activateWindow()
-    qtbot.waitUntil(dialog.isActiveWindow)
-    assert [f for f in faults(dialog) if "Preview" not in f] == []  # what can only be read
-    dialog.close()
+def test_small_windows(window, qtbot):
+    for opens in ("ask_new", "choose_records", "show_terms", "show_limits", "show_about"):
+        getattr(window, opens)()
+        dialog = next(w for w in QApplication.topLevelWidgets() if isinstance(w, QDialog) and w.isVisible())
+        dialog.activateWindow()
+        qtbot.waitUntil(dialog.isActiveWindow)
+        assert [f for f in faults(dialog) if "Preview" not in f] == []  # what can only be read
+        dialog.close()
 
 
 def test_the_parts_library(window):
