@@ -379,8 +379,8 @@ def test_a_pile_that_sinks_onto_its_toe_before_the_blow() -> None:
 
 
 def test_a_pile_driven_in_ground_of_which_only_the_toe_holds_comes_to_rest() -> None:
-    """Shaft of 2 kN under a weight of 7.8 kN: after the blow it slips as a whole until the toe takes the rest. Its set is
-    the largest movement of the toe less its quake, but for the 4 % of the toe's strength that carry the weight.
+    """Shaft of 2 kN under a weight of 7.8 kN: after the blow it slips as a whole until the toe takes the rest. Its set
+    is the largest movement of the toe less its quake, but for the 4 % of the toe's strength that carry the weight.
     """
     shaft = {"resistance": 2e3, "distribution": "uniform", "quake": 0.0025, "damping": 0.1}
     ground = {
