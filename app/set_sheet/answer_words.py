@@ -38,7 +38,9 @@ def told_of(answers: Answers, sheet: Sheet, units: Units) -> Told:
     beside = [beside_criterion(answers.stop_at, units), on_the_way(sheet, answers.stop_at, units)]
     if answers.safe is not None:
         beside.append(safe_words(answers.safe, answers.stop_at, units))
-    further = [sampled_words(answers.sampled, units)] if answers.sampled is not None else []
+    further = [shown_words(answers.shown, units)] if answers.shown is not None else []
+    if answers.sampled is not None:
+        further.append(sampled_words(answers.sampled, units))
     if answers.depths is not None:
         words = f"{refusal_words(answers.depths, units)}; {limit_passed_words(answers.depths, units)}"
         further.append(f"Down to depth: {words}.")

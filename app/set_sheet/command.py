@@ -19,7 +19,7 @@ from solver import Case, Project, ProjectError, SolveError
 from solver.studies import Sheet, StudyError, solve_sheet
 from solver.studies.cluster import on_cluster
 from solver.studies.plan import at_value
-from solver.studies.questions import point
+from solver.studies.questions import point, shown_by
 from solver.studies.safe_blow import safe_blow
 from solver.studies.settings import DepthSettings, SheetSettings, depth_settings_of, settings_of
 from solver.studies.sheet import Solver
@@ -103,7 +103,10 @@ def _solved(
         depths = depth.study(case, solver=solver)
     except StudyError as error:  # the sheet stands without it
         problem = error.told(units.show)
-    return sheet, Answers(stop_at, safe, found, depths, problem)
+    shown = None
+    if settings.measured_set is not None:
+        shown = shown_by(plan, level, settings.measured_set, settings.reading_error)
+    return sheet, Answers(stop_at, safe, found, depths, problem, shown)
 
 
 def _write(project: Project, sheet: Sheet, answers: Answers, settings: SheetSettings, out: Path) -> list[str]:

@@ -14,6 +14,7 @@ from app.words import LIMIT_CAUTION, MODEL_CAUTION
 from solver.answer.findings import StressFinding
 from solver.studies import Cell, Sheet
 from solver.studies.depth import Depths
+from solver.studies.questions import ShownResistance
 from solver.studies.safe_blow import SafeBlow
 from solver.studies.uncertainty import Bands, Sampled
 
@@ -85,14 +86,15 @@ def _one_line(text: str) -> str:
 
 @dataclass(frozen=True)
 class Answers:
-    """To the questions of the settings: the point to stop at, the largest blow, the samples where asked for, and the
-    study of depths, or why there is none."""
+    """To the questions of the settings: the point to stop at, the largest blow, the samples where asked for, the study
+    of depths, or why there is none, and what a measured set shows."""
 
     stop_at: Cell | None = None
     safe: SafeBlow | None = None
     sampled: Sampled | None = None
     depths: Depths | None = None
     no_depths: str = ""
+    shown: ShownResistance | None = None
 
 
 def sheet_json(sheet: Sheet, title: str, answers: Answers, criterion: str) -> str:
@@ -125,6 +127,8 @@ def sheet_json(sheet: Sheet, title: str, answers: Answers, criterion: str) -> st
             "passed_above_only_after_the_ram_struck_again": safe.passed.again_only if safe.passed else None,
             "tolerance": safe.tolerance,
         }
+    if answers.shown is not None:
+        tree["measured_set"] = _shown(answers.shown)
     if answers.sampled is not None:
         tree["not_known"] = _sampled(answers.sampled)
     if answers.depths is not None:
@@ -135,6 +139,18 @@ def sheet_json(sheet: Sheet, title: str, answers: Answers, criterion: str) -> st
 def _point(cell: Cell) -> dict[str, Any]:
     told = {"at_rest": cell.at_rest, "passed_only_after_ram_struck_again": cell.again_only}
     return dict(zip(HEAD, _row(cell), strict=True)) | told
+
+
+def _shown(shown: ShownResistance) -> dict[str, Any]:
+    return {
+        "set_m": shown.measured,
+        "reading_error_m": shown.error,
+        "value": shown.level.value,
+        "total_resistance_N": {"least": shown.at_least, "middle": shown.middle, "most": shown.at_most},
+        "looked_from_N": shown.lowest,
+        "looked_to_N": shown.highest,
+        "tolerance": shown.tolerance,
+    }
 
 
 def _sampled(sampled: Sampled) -> dict[str, Any]:

@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from threading import Thread
+
 from PySide6.QtCore import Qt
 from PySide6.QtGui import QHideEvent, QShowEvent
 from PySide6.QtWidgets import (
@@ -35,12 +37,19 @@ from solver.studies.depth import DepthPoint
 NAME = "Set sheet"
 
 
+def read_ahead() -> None:
+    """Read what finds roots. Parts of it hold Python's lock for a tenth of a second, which nobody feels while the
+    window opens, and everybody would when the sheet is first looked at."""
+    import scipy.optimize  # noqa: F401
+
+
 class SetSheet(QWidget):
     """Solves only while it is shown; `close_down` ends its threads."""
 
     def __init__(self, document: Document, parent: QWidget | None = None) -> None:
         super().__init__(parent)
         self._document = document
+        Thread(target=read_ahead, name="read ahead", daemon=True).start()
         self.solution = SheetSolution(document, self)
         self._cell: Cell | None = None
         self._depth_point: DepthPoint | None = None

@@ -111,6 +111,19 @@ def test_samples_are_told_in_the_files(tmp_path: Path) -> None:
     assert "eight of ten of" in " ".join(document[0].get_textpage().get_text_bounded().split())
 
 
+def test_a_measured_set_is_told_with_its_band(tmp_path: Path) -> None:
+    file = tmp_path / "pile.strike"
+    studies = {"set_sheet": {"measured_set": 0.006, "reading_error": 0.001}}
+    file.write_text(project_to_text(project(studies=studies)), encoding="utf-8")
+    assert main(["sheet", str(file), "--out", str(tmp_path), "--quiet"]) == 0
+    band = json.loads((tmp_path / "sheet.json").read_text(encoding="utf-8"))["measured_set"][
+        "total_resistance_N"
+    ]
+    assert band["least"] < band["middle"] < band["most"]
+    document = pypdfium2.PdfDocument(str(tmp_path / "sheet.pdf"))
+    assert "A mean set of 6.00" in " ".join(document[0].get_textpage().get_text_bounded().split())
+
+
 def test_long_sheet_stays_on_its_page_in_other_units(tmp_path: Path) -> None:
     studies = {"set_sheet": {"values": [0.25, 0.5, 1.0, 1.5], "per": "ft", "count": 20}}
     file = tmp_path / "pile.strike"
