@@ -8,7 +8,7 @@ from dataclasses import replace
 import numpy as np
 import pytest
 
-from app.export import gauge_csv
+from app.export import envelope_csv, gauge_csv
 from solver.answer.remark import Remark
 
 
@@ -45,3 +45,14 @@ def test_what_a_reader_must_know_stands_above_the_numbers(bar):
     told = replace(plain, case=heavy, finished=False, remarks=(Remark("energy_open", 0.02),))
     block = read(gauge_csv(told, "Bar"))[0]
     assert all(word in block for word in words)
+
+
+@pytest.mark.parametrize(("compression", "sign"), [(False, 1), (True, -1)])
+def test_the_envelope_keeps_its_columns_in_either_sign(bar, compression, sign):
+    """The lowest stays the most compressive and the highest the most tensile; motion has no sign to turn."""
+    envelope = bar[1].envelope
+    _, columns = read(envelope_csv(bar[1], compression_positive=compression))
+    assert columns["lowest_stress_Pa"] == pytest.approx(sign * envelope.lowest_stress, rel=1e-15)
+    assert columns["highest_stress_Pa"] == pytest.approx(sign * envelope.highest_stress, rel=1e-15)
+    assert columns["max_velocity_m_s"] == pytest.approx(envelope.max_velocity, rel=1e-15)
+    assert columns["max_displacement_m"] == pytest.approx(envelope.max_displacement, rel=1e-15)

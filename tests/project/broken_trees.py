@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from solver.model.project import VERSION
 from tests.project.changes import MISSING, broken
 
 RADIATION = {"kind": "radiation", "shear_modulus": 1e7, "soil_density": 1800.0, "poisson_ratio": 0.3}
@@ -122,6 +123,8 @@ STRANGE = "is not known here; possible are '"
 CHOICES = [
     broken("/format", "another", "this is no Striketrace project"),
     broken("/version", 99, "version 99 was made by a newer version of Striketrace"),
+    broken("/version", VERSION + 1, f"version {VERSION + 1} was made by a newer version of Striketrace"),
+    broken("/version", True, "must be a whole number from 1 on"),
     broken("/version", 0, "must be a whole number from 1 on"),
     broken("/version", "1", "must be a whole number from 1 on"),
     broken("/display_units", "imperial", "must be 'metric' or 'us', not 'imperial'"),
