@@ -33,6 +33,7 @@ ROWS = {
     "edit_to_picture": "window",
     "stall": "window",
     "playback": "window",
+    "dragging": "dragging",
     "start": "starting",
 }
 SHORT = ("linear_vs_c", "full_vs_c", "vs_numpy", "laws")
