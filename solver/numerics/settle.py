@@ -147,7 +147,7 @@ class _Rest:
     def nearer(self, u: Array, change: Array, at: _Balance) -> tuple[Array, _Balance]:
         """The whole step; or, where it goes far beyond the balance, the part at whose end nothing drives it on."""
         step = np.append(np.zeros(self.chain.head), change[self.group])
-        drive, low, high = float(at.out @ change), 0.0, 1.0
+        drive, low, middle, high = float(at.out @ change), 0.0, 1.0, 1.0
         at = self.unbalanced(u + step)
         if float(at.out @ change) >= -drive / 2:
             return u + step, at
