@@ -155,6 +155,8 @@ def summary(sheet: Sheet, units: Units) -> str:
     parts = []
     for index, level in enumerate(sheet.plan.levels):
         cells = sheet.line(index)
+        if not cells:
+            continue  # nothing is known of it yet
         over = over_lines(cells, units)
         known = any(c.share is not None for c in cells)
         state = "no limit given" if not known else "✓ within limits"

@@ -116,7 +116,10 @@ def test_edit_on_the_bench_solves_the_sheet_again_only_while_it_is_seen(
 ) -> None:
     before = shown.solution.sheet
     shown.hide()
+    told: list[bool] = []
+    shown.solution.changed.connect(lambda: told.append(True))
     shown._document.edit("Heavier ram", "load/ram_mass", 5000.0)
+    assert not told
     assert shown.solution.sheet == before
     shown.show()
     qtbot.waitUntil(
