@@ -30,24 +30,25 @@ def _source_key() -> str:
 def _cache_folder() -> tuple[Path | None, str | None]:
     """The folder for compiled kernels, or a sentence that says why there is none."""
     base = os.environ.get("STRIKETRACE_CACHE") or platformdirs.user_cache_dir("striketrace", False)
-    folder = Path(base) / f"kernels-{_source_key()}"
+    place = Path(base) / f"kernels-{_source_key()}"
     try:
-        folder.mkdir(parents=True, exist_ok=True)
-        with tempfile.TemporaryFile(dir=folder):
+        place.mkdir(parents=True, exist_ok=True)
+        with tempfile.TemporaryFile(dir=place):
             pass
     except OSError as error:
         return None, (
-            f"The folder for compiled kernels ({folder}) cannot be written ({error.strerror or error}): "
+            f"The folder for compiled kernels ({place}) cannot be written ({error.strerror or error}): "
             "they are compiled again at each start, which takes some seconds."
         )
-    return folder, None
+    return place, None
 
 
-_folder, cache_problem = _cache_folder()
+#: Where kernels are kept, or the sentence why they are not.
+folder, cache_problem = _cache_folder()
 #: Whether kernels were kept in the folder when this process began.
-were_kept = _folder is not None and any(_folder.iterdir())
-if _folder is not None:
-    numba.config.CACHE_DIR = str(_folder)  # type: ignore[attr-defined]
+were_kept = folder is not None and any(folder.iterdir())
+if folder is not None:
+    numba.config.CACHE_DIR = str(folder)  # type: ignore[attr-defined]
 
 # numba knows this flag of a function but lets no decorator set it
 CPUTargetOptions.noalias = TargetOptions.Mapping("noalias")
@@ -63,7 +64,7 @@ def kernel(function: Any) -> Any:
     field of a group of arrays would cost more than the arithmetic.
     """
     return njit(  # type: ignore[call-overload]
-        nogil=True, cache=_folder is not None, error_model="numpy", fastmath=LOOSE_SUMS, _nrt=False
+        nogil=True, cache=folder is not None, error_model="numpy", fastmath=LOOSE_SUMS, _nrt=False
     )(function)
 
 
@@ -71,7 +72,7 @@ def part_of_step(function: Any, **more: Any) -> Any:
     """Compile a function into whatever calls it: handing over groups of arrays at every step would cost too much."""
     return njit(  # type: ignore[call-overload]
         nogil=True,
-        cache=_folder is not None,
+        cache=folder is not None,
         error_model="numpy",
         fastmath=LOOSE_SUMS,
         _nrt=False,

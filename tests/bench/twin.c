@@ -52,7 +52,7 @@ static void move(int64_t n, double dt, arr u, arr v, arr w, arr speed, arr trave
     }
 }
 
-enum { BLOCK = 256 };
+enum { BLOCK = 416 };
 
 /* Block by block, as solver/numerics/sweep.py does it. */
 static void sweep(const struct twin *t, double *v, double *w, double at, int waiting) {
