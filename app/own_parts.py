@@ -6,7 +6,7 @@ import json
 from pathlib import Path
 from typing import Any, get_args
 
-from app.bench.parts_library import Part, PartKind
+from app.parts_library import Part, PartKind
 from app.tree import copied, value_at
 
 FILE = "own_parts.json"

@@ -9,7 +9,7 @@ from collections.abc import Callable
 from dataclasses import dataclass
 from typing import Any
 
-from app.bench.parts_library import part_named
+from app.parts_library import part_named
 from app.provenance import mark_typical
 
 Tree = dict[str, Any]

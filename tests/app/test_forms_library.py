@@ -12,9 +12,9 @@ from app.bench.forms.part_forms import form_of
 from app.bench.forms.spec import ChoiceSpec, Context
 from app.bench.forms.use_part import use_part
 from app.bench.outline.edits import add
-from app.bench.parts_library import LIBRARY, parts_of_kind
 from app.document import Document
 from app.own_parts import FILE, forget_part, keep_part, own_parts, part_from
+from app.parts_library import LIBRARY, parts_of_kind
 from app.starting_points import STARTING_POINTS, driven_pile, new_tree
 from app.tree import value_at, with_values
 from solver import project_from_tree

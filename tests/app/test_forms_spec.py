@@ -10,7 +10,7 @@ from app.bench.forms.fields import CHOOSERS, model_specs
 from app.bench.forms.part_forms import form_of
 from app.bench.forms.spec import ChoiceSpec, Context, NumberSpec, Spec, TextSpec
 from app.bench.forms.use_part import use_part
-from app.bench.parts_library import part_named
+from app.parts_library import part_named
 from app.starting_points import driven_pile, rod_or_bar, slender_rod_by_echo
 from app.tree import copied, value_at
 from solver import Case, ProjectError, project_from_tree

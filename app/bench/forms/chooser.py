@@ -9,7 +9,7 @@ from pydantic import BaseModel
 
 from app.bench.forms.kinds import KINDS, filled
 from app.bench.forms.spec import Context, Option, Tree
-from app.bench.parts_library import PartKind
+from app.parts_library import PartKind
 
 
 @dataclass(frozen=True)

@@ -11,7 +11,7 @@ from typing import Any
 
 from pydantic import BaseModel
 
-from app.bench.parts_library import part_named
+from app.parts_library import part_named
 from solver.model.load import Pulse
 from solver.model.material import Material
 from solver.model.member import Member, Segment

@@ -18,10 +18,10 @@ from PySide6.QtWidgets import (
 )
 
 from app.bench.forms.use_part import use_part
-from app.bench.parts_library import Part, PartKind, parts_of_kind
 from app.document import Document
 from app.look.spacing import GAP, SPACE
 from app.own_parts import forget_part, keep_part, own_parts, part_from
+from app.parts_library import Part, PartKind, parts_of_kind
 from app.settings import user_settings
 
 TITLES: dict[PartKind, str] = {

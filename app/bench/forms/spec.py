@@ -6,7 +6,7 @@ from collections.abc import Callable
 from dataclasses import dataclass, field
 from typing import Any
 
-from app.bench.parts_library import PartKind
+from app.parts_library import PartKind
 from solver import Case
 from solver.model.quantity import Bounds
 

@@ -5,7 +5,7 @@ from __future__ import annotations
 from typing import Any
 
 from app.bench.forms.kinds import NO_SOURCE, SIZE
-from app.bench.parts_library import Part
+from app.parts_library import Part
 from app.provenance import confirm, forget, forget_missing, mark_typical
 from app.tree import copied, value_at
 
