@@ -133,16 +133,16 @@ def shaft_nodes(ground, push, v, w, sums, dt):
 def toe_node(bounds, push, u, v, w, sums, dt, note, step):
     """Resistance under the toe."""
     last = len(u) - 1
-    free, half = 0.5 * (v[last] + w[last]), 0.5 * push[last]
-    pressed = bounds.toe_state[4 if bounds.toe_par[0] != toe.RADIATION else 1] > 0.0
+    pressed = bounds.toe_state[4] > 0.0
     if bounds.toe_par[0] == toe.RADIATION:
-        mean, slip, damped = toe.radiating(bounds.toe_par, bounds.toe_state, free, half, u[last], v[last], dt)
-        w[last] = 2.0 * mean - v[last]
+        w[last], slip, damped, exchanged = toe.radiating(
+            bounds.toe_par, bounds.toe_state, w[last], push[last], u[last], v[last], dt
+        )
     else:
         w[last], slip, damped, exchanged = toe.quasi_static(
             bounds.toe_par, bounds.toe_state, w[last], push[last], u[last], v[last], dt
         )
-        sums[IMPACT] += exchanged
+    sums[IMPACT] += exchanged
     sums[SLIP] += slip
     sums[DAMPING] += damped
     if pressed and bounds.toe_state[3] == 0.0:

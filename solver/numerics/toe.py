@@ -73,34 +73,32 @@ def _speed(a, b, exponent, rest):
 
 
 @kernel
-def radiating(par, state, free, half, u, v, dt):
-    """Spring and dashpot of a half-space (Lysmer and Richart 1966, from memory), a slider of strength Ru, no
-    tension."""
-    top, k, c, s, plastic = par[1], par[2], par[3], state[2], state[0]
-    before = u - 0.5 * dt * v
-    gap = before - plastic - s
-    lifted = gap < -1e-12
-    mean = free
-    if not lifted:
-        mean = (free - half * k * s) / (1.0 + half * (0.5 * k * dt + c))
-    resist = k * (s + 0.5 * dt * mean) + c * mean if not lifted else 0.0
-    slip = 0.0
-    if lifted or resist < 0.0:
-        resist = 0.0
-        mean = free
-        moved = -k * s / (0.5 * k + c / dt)
-        if before + dt * mean - plastic > s + moved:
-            # the toe has caught up with the soil within this step: it lies on it at its end
-            moved = before + dt * mean - plastic - s
-    elif resist > top:
-        resist = top
-        mean = free - half * top
-        moved = (top - k * s) / (0.5 * k + c / dt)
-        slip = dt * mean - moved
-        state[0] = plastic + slip
-    else:
-        moved = dt * mean
-    state[2] = s + moved
-    state[1] = resist
-    state[3] = 1.0 if resist > 0.0 else 0.0
-    return mean, top * slip, c * moved * moved / dt
+def radiating(par, state, free, push, u, v, dt):
+    """Spring and dashpot of a half-space (Lysmer and Richart 1966, from memory) with a slider of strength Ru, no
+    tension; a law of the half step, taken and returned as `quasi_static` does.
+
+    The soil goes with the toe that touches it; under a toe that slips it bears Ru, under none it comes back free.
+    """
+    top, k, c, s, plastic, before = par[1], par[2], par[3], state[2], state[0], state[4]
+    half = 0.5 * push
+    goal = free - half * before
+    w, acts, slip = goal, 0.0, 0.0
+    moved = -k * s / (0.5 * k + c / dt)
+    if u + 0.5 * dt * goal - plastic > s + moved:
+        w = (goal - half * k * (u - plastic)) / (1.0 + half * (0.5 * k * dt + c))
+        there = u + 0.5 * dt * w - plastic
+        acts, moved = k * there + c * w, there - s
+        if acts > top:
+            acts, w = top, goal - half * top
+            moved = (top - k * s) / (0.5 * k + c / dt)
+            slip = max(u + 0.5 * dt * w - plastic - s - moved, 0.0)
+            state[0] = plastic + slip
+        elif acts <= 0.0:
+            acts, w = 0.0, goal
+            moved = -k * s / (0.5 * k + c / dt)
+    state[2], state[1], state[4] = s + moved, acts, acts
+    state[3] = 1.0 if acts > 0.0 else 0.0
+    damped = c * moved * moved / dt
+    work = 0.25 * dt * (before + acts) * (v + w)
+    exchanged = work - top * slip - damped - k * (s + 0.5 * moved) * moved
+    return w, top * slip, damped, exchanged
