@@ -51,10 +51,6 @@ class Settings:
     def _set_recent(self, paths: Sequence[Path]) -> None:
         self._stored.setValue("recent", [str(p) for p in paths[:MOST_RECENT]])
 
-    @property
-    def started_before(self) -> bool:
-        return self.flag("started")
-
     def flag(self, name: str, usual: bool = False) -> bool:
         """Whether something has been switched on, or done once."""
         return str(self._stored.value(f"flags/{name}", usual)).casefold() == "true"

@@ -139,7 +139,7 @@ class Profile(Picture):
 
     def draw_resting(self, painter: QPainter) -> None:
         plot, distance, values = self.plot(), self.distance_axis(), self.value_axis()
-        self._draw_heading(painter, plot)
+        self._draw_heading(painter)
         least = -sum(s.length for s in self.case.ram_segments)
         metres = float(self.units.number(1.0, "length"))
         bare = self.lacks_numbers("distance")
@@ -174,7 +174,7 @@ class Profile(Picture):
             self._draw_now(painter, distance)
         painter.restore()
 
-    def _draw_heading(self, painter: QPainter, plot: QRectF) -> None:
+    def _draw_heading(self, painter: QPainter) -> None:
         y = 0.5 * self.margins().header
         painter.setFont(font("strong"))
         put(painter, 8, y, self._title(), palette().ink)

@@ -78,9 +78,9 @@ class Window(QMainWindow):
             self.document, self.solution, icons, None if own_menus else self.menus.bar, self, self.sight
         )
         self.notes = NotesPanel(self.document, self)
-        self.outline = Outline(self.document, self.sight, self.solution, self)
+        self.outline = Outline(self.document, self.sight, self)
         self.bench = Bench(self.document, self.sight, self.solution, self)
-        self.tables = Tables(self.document, self.sight, self.solution, self)
+        self.tables = Tables(self.document, self.sight, self)
         self.outline.table_wanted.connect(self.tables.open_table)
         self.split = QSplitter(Qt.Orientation.Horizontal, self)
         self.split.setHandleWidth(SPACE)

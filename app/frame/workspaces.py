@@ -41,8 +41,3 @@ class Workspaces(QStackedWidget):
         """Show the workspace with a number, from 0 on."""
         self._group.button(number).setChecked(True)
         self.setCurrentIndex(number)
-
-    def show_named(self, name: str) -> None:
-        """Show a workspace by its name. Raises `ValueError` for a name that there is not."""
-        names = [button.text() for button in self._group.buttons()]
-        self.show_number(names.index(name))

@@ -70,7 +70,7 @@ def desk(qtbot) -> Callable[[Tree], Desk]:
         document, sight = Document(project_from_tree(tree)), Sight()
         window = QWidget()
         window.resize(286, 800)
-        outline = Outline(document, sight, None, window)
+        outline = Outline(document, sight, window)
         outline.setGeometry(window.rect())
         qtbot.addWidget(window)
         window.show()

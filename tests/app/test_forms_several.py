@@ -30,7 +30,7 @@ class Desk:
         self.qtbot, self.document, self.sight = qtbot, Document(project_from_tree(tree)), Sight()
         self.window = QWidget()
         self.window.resize(286, 900)
-        self.outline = Outline(self.document, self.sight, None, self.window)
+        self.outline = Outline(self.document, self.sight, self.window)
         self.outline.setGeometry(self.window.rect())
         qtbot.addWidget(self.window)
         self.window.show()

@@ -70,7 +70,7 @@ def desk(qtbot) -> Callable[[Tree, str], Desk]:
         document, sight = Document(project_from_tree(tree)), Sight()
         window = QWidget()
         window.resize(1100, 260)
-        tables = Tables(document, sight, None, window)
+        tables = Tables(document, sight, window)
         tables.setGeometry(window.rect())
         qtbot.addWidget(window)
         window.show()

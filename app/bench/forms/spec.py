@@ -25,10 +25,6 @@ class Context:
     material_way: str = "modulus_density"
 
     @property
-    def case_tree(self) -> Tree:
-        return self.tree["cases"][int(self.at.rsplit("/", 1)[1])]
-
-    @property
     def material_names(self) -> list[str]:
         return [material["name"] for material in self.tree["materials"]]
 

@@ -29,7 +29,6 @@ from app.bench.outline.several import extended, reaching, toggled
 from app.document import Document
 from app.look.spacing import GAP, SPACE
 from app.sight import Sight
-from app.solving import Solution
 from app.units import units_of
 
 #: The table that goes with a selection, by how the selection begins; segments for all others.
@@ -41,9 +40,7 @@ class Outline(QWidget):
 
     table_wanted = Signal(str)
 
-    def __init__(
-        self, document: Document, sight: Sight, solution: Solution, parent: QWidget | None = None
-    ) -> None:
+    def __init__(self, document: Document, sight: Sight, parent: QWidget | None = None) -> None:
         super().__init__(parent)
         self._document, self._sight = document, sight
         self._material_way = "modulus_density"

@@ -47,8 +47,3 @@ def polygon(x: Array, y: Array) -> QPolygonF:
     points[:, 0] = x[:count]
     points[:, 1] = y[:count]
     return shape
-
-
-def stairs(edges: Array, values: Array) -> tuple[Array, Array]:
-    """A value per stretch as a stepped line: edges of shape (n + 1,) and values (n,) to two arrays of shape (2 n,)."""
-    return np.repeat(edges, 2)[1:-1], np.repeat(values, 2)

@@ -26,7 +26,6 @@ from app.document import Document
 from app.look import icon
 from app.look.spacing import FIELD, GAP, SPACE
 from app.sight import Sight
-from app.solving import Solution
 
 #: Lists of the case that have a table, and the words on their tabs.
 LISTS = (
@@ -45,9 +44,7 @@ LEAST_ROWS, MOST_ROWS = 3, 7
 class Tables(QWidget):
     """Hidden until a table is asked for with `open_table`."""
 
-    def __init__(
-        self, document: Document, sight: Sight, solution: Solution, parent: QWidget | None = None
-    ) -> None:
+    def __init__(self, document: Document, sight: Sight, parent: QWidget | None = None) -> None:
         super().__init__(parent)
         self._document, self._sight = document, sight
         self.setProperty("role", "paper")

@@ -68,7 +68,7 @@ def member_figure(case: Case, units: Units) -> Figure:
     _load(case, units, marks)
     _gauges(case, units, at, marks)
     _far_end(case, marks)
-    _distances(length, units, at, marks)
+    _distances(length, units, marks)
     return Figure("The member, what strikes it and what holds it", WIDTH, HEIGHT, tuple(marks))
 
 
@@ -170,7 +170,7 @@ def _far_end(case: Case, marks: list[Mark]) -> None:
     marks.append(Text(CENTRE, BOTTOM + 13, words, PRINT.ink, SMALL, "middle"))
 
 
-def _distances(length: float, units: Units, at: Place, marks: list[Mark]) -> None:
+def _distances(length: float, units: Units, marks: list[Mark]) -> None:
     scale = Scale(0.0, float(units.number(length, "length")), TOP, BOTTOM)
     x, ticks = CENTRE + WIDEST + 34, scale.ticks(10)
     marks.append(line([(x, TOP), (x, BOTTOM)], PRINT.line, 0.6))
