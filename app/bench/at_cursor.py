@@ -20,6 +20,7 @@ from app.look.spacing import GAP, SPACE
 from app.sight import Sight
 from app.solving import Solution
 from app.units import MINUS, NARROW_SPACE, NO_BREAK, Units
+from solver.model.derived import place_of
 from solver.model.project import Gauge
 
 #: What is read at a gauge, two in a line, and the dimension of each: the units tell them apart.
@@ -187,8 +188,7 @@ class _Readings(Picture):
         gauges = self.case.gauges
         if event.position().y() >= self.top() and 0 <= index < len(gauges):
             gauge = gauges[index]
-            place = gauge.position if gauge.on == "member" else -gauge.position
-            self.sight.set(selection=f"gauges/{index}", place=place)
+            self.sight.set(selection=f"gauges/{index}", place=place_of(self.case, gauge))
 
     def table(self) -> Table | None:
         """The readings at the cursor have no curve to save; the strips' numbers do."""

@@ -31,6 +31,7 @@ from app.bench.pictures.lettering import WRITTEN, put
 from app.bench.pictures.picture import Picture, Table
 from app.look.fonts import font
 from app.look.palette import palette
+from solver.model.derived import place_of
 
 HEADINGS = {
     "stress": "Stress through time",
@@ -265,7 +266,7 @@ class XtDiagram(Picture):
 
     def _draw_gauge_lines(self, painter: QPainter, plot: QRectF, distance: Axis) -> None:
         for index, gauge in enumerate(self.case.gauges):
-            y = crisp(distance.at(gauge.position if gauge.on == "member" else -gauge.position))
+            y = crisp(distance.at(place_of(self.case, gauge)))
             if plot.top() <= y <= plot.bottom():
                 painter.setPen(pen(palette().gauge(index), 1.0, Qt.PenStyle.DashLine))
                 painter.drawLine(QLineF(plot.left(), y, plot.right(), y))

@@ -244,5 +244,11 @@ def gauge_table(case: Case, units: Units) -> Table:
         rows.append(
             (gauge.name, f"the {gauge.on}", exact(gauge.position, "length", units), gauge.side, to_end)
         )
-    head = ("Gauge", "On", "Distance from the struck end", "Side of a jump", "To the far end and back")
+    head = (
+        "Gauge",
+        "On",
+        "Position, from the end where its rod begins",
+        "Side of a jump",
+        "To the far end and back",
+    )
     return Table(head, tuple(rows), (0.28, 0.14, 0.24, 0.14, 0.2), "Gauges")

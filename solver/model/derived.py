@@ -12,11 +12,21 @@ from typing import Literal
 from solver.model.load import GRAVITY, Cushion, Drop
 from solver.model.material import Material
 from solver.model.member import Segment
-from solver.model.project import Case
+from solver.model.project import Case, Gauge
 from solver.model.section import AnySection
 from solver.model.surroundings import Ground
 
 Materials = Mapping[str, Material]
+
+
+def far_face(case: Case) -> float:
+    """Where the rod that strikes ends away from the member, m (0 or less): its struck face lies on the member at 0."""
+    return -sum(s.length for s in case.ram_segments)
+
+
+def place_of(case: Case, gauge: Gauge) -> float:
+    """Place of a gauge along the axis of the member, m. On a rod that strikes, its position runs from the far face."""
+    return gauge.position if gauge.on == "member" else far_face(case) + gauge.position
 
 
 def section_at(segment: Segment, share: float) -> AnySection:

@@ -21,7 +21,12 @@ class Gauge(Described):
     """A place where force and motion are read."""
 
     name: Name
-    position: Annotated[NotNegative, Quantity("length", "Position", "Distance from the struck end.")]
+    position: Annotated[
+        NotNegative,
+        Quantity(
+            "length", "Position", "Distance from the struck end; on a rod that strikes, from its far face."
+        ),
+    ]
     side: Literal["near", "far"] = "near"
     on: Literal["member", "ram", "striker"] = "member"
 

@@ -9,6 +9,8 @@ import pytest
 from solver import Case, project_from_tree
 from solver.answer.waves import arrivals, returns_at
 from solver.model import derived
+from solver.numerics.assemble import gauge_readings
+from solver.numerics.chain import build_chain
 
 STEEL = {"name": "steel", "young_modulus": 210e9, "density": 7850.0}
 GROUT = {"name": "grout", "young_modulus": 30e9, "density": 2400.0}
@@ -188,3 +190,19 @@ def test_a_member_that_flies_has_no_front_from_its_struck_end() -> None:
     """Its first wave comes from the wall: a line from the struck end at time 0 would be where nothing is."""
     flies = case_of(load={"kind": "none"}, far_end={"kind": "wall"}, run={"initial_velocity": 3.0})
     assert arrivals(flies) == ()
+
+
+def test_a_gauge_on_a_rod_that_strikes_is_read_from_its_far_face() -> None:
+    """A striker of 0.3 m and 0.1 m touches the member at 0: its gauge at 0.1 m lies at -0.3 m, and is read there."""
+    parts = [
+        {"name": name, "length": length, "material": "steel", "section": PIPE}
+        for name, length in (("S", 0.3), ("T", 0.1))
+    ]
+    load = {"kind": "striker", "velocity": 5.0, "segments": parts}
+    gauges = [{"name": "rear", "position": 0.1, "on": "striker"}, {"name": "head", "position": 1.0}]
+    case = case_of(load=load, gauges=gauges)
+    places = [derived.place_of(case, gauge) for gauge in case.gauges]
+    assert places == pytest.approx([-0.3, 1.0])
+    chain = build_chain(case)
+    read = [chain.position[gauge_readings(chain)[0][g, 0]] for g in (0, 1)]
+    assert read == pytest.approx(places, abs=1e-9)

@@ -10,6 +10,7 @@ from typing import Any, Literal
 from app.names import with_kind
 from app.units import Units
 from solver import Case
+from solver.model.derived import far_face, place_of
 
 HandleKind = Literal["gauge", "segment", "surface", "layer", "drop"]
 Change = Callable[[dict[str, Any]], None]
@@ -38,12 +39,9 @@ def handles_of(case: Case) -> list[Handle]:
 
 
 def _gauges(case: Case) -> Iterator[Handle]:
-    above = -sum(s.length for s in case.ram_segments)
     for index, gauge in enumerate(case.gauges):
-        on_member = gauge.on == "member"
-        low, high = (0.0, case.member.length) if on_member else (above, 0.0)
-        place = gauge.position if on_member else -gauge.position
-        yield Handle("gauge", index, f"gauges/{index}", place, low, high)
+        low, high = (0.0, case.member.length) if gauge.on == "member" else (far_face(case), 0.0)
+        yield Handle("gauge", index, f"gauges/{index}", place_of(case, gauge), low, high)
 
 
 def _boundaries(case: Case) -> Iterator[Handle]:
@@ -106,7 +104,7 @@ def change_to(handle: Handle, place: float, at: int, along: Sequence[Handle] = (
         if handle.kind == "gauge":
             for one in (handle, *along):
                 where = one.place + place - handle.place if one is not handle else place
-                mine["gauges"][one.index]["position"] = tidy(abs(where))
+                mine["gauges"][one.index]["position"] = tidy(where - one.low)
         elif handle.kind == "drop":
             mine["load"]["drop_height"] = tidy(place)
         elif handle.kind == "surface":
@@ -138,7 +136,8 @@ def tidy(value: float) -> float:
 
 def told(handle: Handle, place: float, case: Case, units: Units, along: Sequence[Handle] = ()) -> str:
     """What a drag does, as the name of the step of undo: "Move gauge Head to 1.40 m"."""
-    shown = units.show(abs(place), "length")
+    # a gauge is told from where its own rod begins
+    shown = units.show(place - handle.low if handle.kind == "gauge" else abs(place), "length")
     if along:
         by, way = units.show(abs(place - handle.place), "length"), "down" if place > handle.place else "up"
         return f"Move {len(along) + 1} gauges {way} by {by}, {case.gauges[handle.index].name} to {shown}"

@@ -15,6 +15,7 @@ from app.bench.pictures.axes import Axis
 from app.bench.pictures.axis_drawing import crisp
 from app.bench.pictures.lettering import spread, width_of
 from solver import Case
+from solver.model.derived import place_of
 from solver.model.load import Drop
 
 #: Where the member's middle stands where there is room, as a share of the plot's width: gauges' names left of it,
@@ -103,7 +104,7 @@ def scene_of(case: Case, plot: QRectF, axis: Axis, font: QFont) -> Scene:
     pieces = pieces_of(case, plot.width(), line / 16)
     bands = tuple(ground_bands(case, axis.high))
     centre = _centre(case, bands, plot, pieces.widest, font)
-    places = [g.position if g.on == "member" else -g.position for g in case.gauges]
+    places = [place_of(case, g) for g in case.gauges]
     rows = spread([axis.at(p) for p in places], line, plot.top(), plot.bottom())
     blocks: list[Block] = []
     if isinstance(case.load, Drop):

@@ -35,6 +35,22 @@ def test_a_boundary_moves_between_the_ends_of_its_two_segments(drop):
     assert (boundary.place, boundary.low, boundary.high) == pytest.approx((6.0, 0.01, 9.99))
 
 
+def test_a_gauge_on_a_striker_is_dragged_where_it_is_read():
+    """A striker of 0.4 m, its gauge 0.1 m from the far face: at -0.3 m, and dragged to -0.05 m it stands at 0.35 m."""
+    tree = valid_tree()
+    case = tree["cases"][0]
+    case["load"] = {
+        "kind": "striker",
+        "velocity": 5.0,
+        "segments": [case["member"]["segments"][0] | {"length": 0.4}],
+    }
+    case["gauges"] = [{"name": "Rear", "position": 0.1, "on": "striker"}]
+    rear = handle(project_from_tree(tree).cases[0], "gauges/0")
+    assert (rear.place, rear.low, rear.high) == pytest.approx((-0.3, -0.4, 0.0))
+    change_to(rear, -0.05, 0)(tree)
+    assert case["gauges"][0]["position"] == pytest.approx(0.35)
+
+
 def test_the_foot_of_a_layer_is_dragged_from_the_ground_surface_on(drop):
     """Clay from 2 m to 7 m, its foot dragged to 5 m: 3 m of clay, and the sand still ends at 11 m."""
     tree = valid_tree()
