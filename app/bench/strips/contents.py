@@ -9,6 +9,7 @@ import numpy as np
 from numpy.typing import NDArray
 from PySide6.QtCore import Qt
 
+from app.energies import energies_by_word
 from app.laid_over import Over
 from app.look.palette import palette
 from app.units import Units
@@ -29,18 +30,6 @@ CHIPS = {
 }
 #: Strips of one gauge.
 OF_ONE_GAUGE = ("force_pair", "waves")
-#: Parts of the energy under one word each; parts of the ledger that are named nowhere here are lost in joints.
-ENERGY = {
-    "put in": ("work_of_load", "work_of_gravity", "initial_energy"),
-    "motion": ("kinetic",),
-    "elastic": ("elastic_member", "elastic_ground", "elastic_cushion", "elastic_springs"),
-    "lost in the ground": ("ground_static_loss", "ground_damping_loss"),
-    "lost in the cushion": ("cushion_loss",),
-    "lost in the member": ("plastic", "viscous", "impact_loss"),
-    "absorbed at the ends": ("absorbed_by_dashpots",),
-}
-#: A part of the energy smaller than this share of all that was put in gets no curve.
-SMALL_SHARE = 0.01
 #: Share of its largest value from which on a wave counts as being at its top.
 FLAT = 0.995
 
@@ -177,23 +166,15 @@ def _of_all_gauges(quantity: str, dimension: str, signed: bool) -> Callable[[Res
 
 
 def _energy(result: Result, units: Units) -> Content:
-    ledger = result.ledger
-    sums = {
-        word: np.sum([ledger.parts[p] for p in parts if p in ledger.parts], axis=0)
-        for word, parts in ENERGY.items()
-        if any(p in ledger.parts for p in parts)
-    }
-    largest = max((float(np.max(np.abs(v))) for v in sums.values()), default=0.0)
     curves = [
         Curve(
             word,
             palette().ink if word == "put in" else palette().soft_ink,
-            ledger.time,
+            result.ledger.time,
             values,
             SOLID if word in ("put in", "motion", "elastic") else DASHED,
         )
-        for word, values in sums.items()
-        if len(values) and float(np.max(np.abs(values))) > SMALL_SHARE * largest
+        for word, values in energies_by_word(result.ledger).items()
     ]
     first = next((g for g in result.gauges.values() if g.on == "member"), None)
     if first is not None:

@@ -6,6 +6,7 @@ from collections.abc import Sequence
 
 import numpy as np
 
+from app.energies import energies_by_word
 from app.look.colours import PRINT
 from app.report.figures.marks import Anchor, Figure, Mark, Text
 from app.report.figures.plot import SMALL, WIDTH, legend, plot_in
@@ -24,17 +25,6 @@ MOST_CURVES = 6
 #: Kinds of line beside the hue, so that curves are told apart in print without colour.
 DASHES: tuple[tuple[float, ...], ...] = ((), (6, 2), (2, 1.5), (8, 2, 2, 2), (4, 1, 1, 1), (10, 3))
 SIGNED = ("force", "stress")
-#: Parts of the ledger under one word each; the same words as on the screen.
-ENERGY = {
-    "put in": ("work_of_load", "work_of_gravity", "initial_energy"),
-    "motion": ("kinetic",),
-    "elastic": ("elastic_member", "elastic_ground", "elastic_cushion", "elastic_springs"),
-    "lost in the ground": ("ground_static_loss", "ground_damping_loss"),
-    "lost in the cushion": ("cushion_loss",),
-    "lost in the member": ("plastic", "viscous", "impact_loss"),
-    "absorbed at the ends": ("absorbed_by_dashpots",),
-}
-SMALL_SHARE = 0.01
 
 
 def largest(*values: Array) -> float:
@@ -106,16 +96,10 @@ def gauge_traces(
 
 def energy_over_time(result: Result, units: Units) -> Figure:
     """Where the energy is at each time: put in, in motion, stored, lost."""
-    ledger = result.ledger
-    sums = {
-        word: np.sum([ledger.parts[p] for p in parts if p in ledger.parts], axis=0)
-        for word, parts in ENERGY.items()
-        if any(p in ledger.parts for p in parts)
-    }
-    near = largest(*sums.values())
-    kept = {word: values for word, values in sums.items() if largest(values) > SMALL_SHARE * near}
-    shown = {word: units.number(values, "energy", near) for word, values in kept.items()}
-    time, unit = _time(ledger.time, units)
+    energies = energies_by_word(result.ledger)
+    near = largest(*energies.values())
+    shown = {word: units.number(values, "energy", near) for word, values in energies.items()}
+    time, unit = _time(result.ledger.time, units)
     labels = (f"Time, {unit}", f"Energy, {units.unit('energy', near)}")
     plot = plot_in((0, time[-1]), bounds_of(*shown.values()), WIDTH, 0, LOWER, labels)
     entries = []
