@@ -1,4 +1,4 @@
-"""Rows that show a value in another way than the file holds it: elevations, wave speed, shares, names."""
+"""Rows that show a value in another way than the file holds it: elevations, shares, names."""
 
 from __future__ import annotations
 
@@ -7,13 +7,14 @@ from collections.abc import Callable
 from pydantic import BaseModel
 
 from app.bench.forms.limit_rows import limit_rows
+from app.bench.forms.material_rows import material_rows
 from app.bench.forms.meanings import OF_FIELDS
-from app.bench.forms.spec import ChoiceSpec, Context, NumberSpec, Option, PointsSpec, Spec, TextSpec, Tree
+from app.bench.forms.spec import Context, NumberSpec, PointsSpec, Spec, TextSpec, Tree
 from app.provenance import forget
 from app.tree import value_at
 from solver.model import derived
 from solver.model.load import History, Pulse
-from solver.model.material import Material, material_from_any_two
+from solver.model.material import Material
 from solver.model.member import Attachment, Member, Segment
 from solver.model.project import Gauge
 from solver.model.quantity import Bounds
@@ -21,13 +22,6 @@ from solver.model.section import FilledPipe
 from solver.model.surroundings import Ground, ShaftTotal
 
 Rows = Callable[[Context, str], list[Spec]]
-
-#: Ways to tell a material, by the two of its three figures that are given.
-MATERIAL_WAYS = (
-    Option("modulus_density", "E, density", "The wave speed follows: c = √(E / density)."),
-    Option("speed_density", "speed, density", "The modulus follows: E = density x speed²."),
-    Option("modulus_speed", "E, speed", "The density follows: E / speed²."),
-)
 
 
 def _position_rows(field: str) -> Rows:
@@ -113,76 +107,6 @@ def _total_rows(context: Context, pointer: str) -> list[Spec]:
     ]
 
 
-def _material_rows(context: Context, pointer: str) -> list[Spec]:
-    given = value_at(context.tree, pointer)
-    speed = Material.model_validate(given).wave_speed
-
-    def put(tree: Tree, **two: float | None) -> None:
-        material = value_at(tree, pointer)
-        material["young_modulus"], material["density"] = material_from_any_two(**two)
-
-    def write_modulus(tree: Tree, value: float | None) -> None:
-        if context.material_way == "modulus_speed":
-            put(tree, young_modulus=value, wave_speed=speed)
-        else:
-            value_at(tree, pointer)["young_modulus"] = value
-
-    def write_density(tree: Tree, value: float | None) -> None:
-        if context.material_way == "speed_density":
-            put(tree, density=value, wave_speed=speed)
-        else:
-            value_at(tree, pointer)["density"] = value
-
-    def write_speed(tree: Tree, value: float | None) -> None:
-        if context.material_way == "modulus_speed":
-            put(tree, young_modulus=value_at(tree, pointer)["young_modulus"], wave_speed=value)
-        else:
-            put(tree, density=value_at(tree, pointer)["density"], wave_speed=value)
-
-    above_zero = Bounds(above=0.0)
-    rows = {
-        "speed": NumberSpec(
-            f"{pointer}/wave_speed",
-            "Wave speed",
-            "Measured speed of a wave in a thin rod, c = √(E / density).",
-            value=speed,
-            dimension="velocity",
-            bounds=above_zero,
-            write=write_speed,
-        ),
-        "modulus": NumberSpec(
-            f"{pointer}/young_modulus",
-            "Young's modulus",
-            "Slope of stress over strain; use the dynamic value for concrete under a blow.",
-            value=given["young_modulus"],
-            dimension="modulus",
-            bounds=above_zero,
-            write=write_modulus,
-        ),
-        "density": NumberSpec(
-            f"{pointer}/density",
-            "Density",
-            "Mass per volume.",
-            value=given["density"],
-            dimension="density",
-            bounds=above_zero,
-            write=write_density,
-        ),
-    }
-    way = ChoiceSpec(
-        f"{pointer}#way",
-        "Given by",
-        "Any two of Young's modulus E, density and wave speed; the third follows, E = density x speed².",
-        value=context.material_way,
-        options=MATERIAL_WAYS,
-        pick="material",
-        pick_at=pointer,
-        view="material_way",
-    )
-    first, second = context.material_way.split("_")
-    return [way, rows[first], rows[second]]
-
-
 def _material_name(context: Context, pointer: str) -> list[Spec]:
     old = value_at(context.tree, f"{pointer}/name")
 
@@ -240,7 +164,7 @@ ONLY_IF: dict[tuple[type[BaseModel], str], Callable[[Context, str], bool]] = {
 #: Rows in place of a field's own.
 INSTEAD: dict[tuple[type[BaseModel], str], Rows] = {
     (Material, "name"): _material_name,
-    (Material, "young_modulus"): _material_rows,
+    (Material, "young_modulus"): material_rows,
     (Material, "limits"): limit_rows,
     (History, "times"): _points,
     (Member, "segments"): lambda context, pointer: [],
