@@ -8,6 +8,7 @@ from contextlib import nullcontext
 from dataclasses import dataclass
 from pathlib import Path
 
+from app.disk import why_not, write_whole
 from app.set_sheet.answer_words import told_of
 from app.set_sheet.depth_files import depth_csv
 from app.set_sheet.files import Answers, sheet_csv, sheet_json
@@ -23,7 +24,7 @@ from solver.studies.questions import point, shown_by
 from solver.studies.safe_blow import safe_blow
 from solver.studies.settings import DepthSettings, SheetSettings, depth_settings_of, settings_of
 from solver.studies.sheet import Solver
-from solver.studies.uncertainty import sampled
+from solver.studies.uncertainty import refuse_number_of_samples, sampled
 
 SOLVED, FAILED, UNUSABLE = 0, 1, 2
 
@@ -53,6 +54,8 @@ def write_sheet(path: Path, out: Path, choices: Choices) -> int:
         )
     try:
         settings, depth = settings_of(project), depth_settings_of(project)
+        if choices.samples is not None:
+            refuse_number_of_samples(choices.samples)
     except StudyError as error:
         return _complain(f"{path}: {error}", UNUSABLE)
     try:
@@ -62,9 +65,13 @@ def write_sheet(path: Path, out: Path, choices: Choices) -> int:
     except (StudyError, SolveError) as error:
         return _complain(f"The set sheet of case '{case.name}' cannot be made: {error}", FAILED)
     try:
+        out.mkdir(parents=True, exist_ok=True)
+    except OSError as error:
+        return _complain(f"The folder {out} cannot be made: {error.strerror or error}.", UNUSABLE)
+    try:
         told = _write(project, sheet, answers, settings, out)
     except OSError as error:
-        return _complain(f"The sheet cannot be written to {out}: {error.strerror or error}.", FAILED)
+        return _complain(f"The sheet cannot be written to {out}: {why_not(error, out)}.", FAILED)
     if not choices.quiet:
         print("\n  ".join([f"{case.name}: {len(sheet.cells)} points -> {out}", *told]).replace(NO_BREAK, " "))
     return SOLVED
@@ -110,20 +117,16 @@ def _solved(
 
 
 def _write(project: Project, sheet: Sheet, answers: Answers, settings: SheetSettings, out: Path) -> list[str]:
-    """Write the three files; returns the sentences of the answers."""
+    """Write the files, each whole or not at all; returns the sentences of the answers."""
     units = units_of(project)
     told = told_of(answers, sheet, units)
     page = Page(sheet, project.title, units, told, settings.per, answers.sampled, answers.depths)
-    out.mkdir(parents=True, exist_ok=True)
-    (out / "sheet.csv").write_text(sheet_csv(sheet, project.title), encoding="utf-8", newline="\n")
     words = told.criterion.replace(NO_BREAK, " ")
-    (out / "sheet.json").write_text(
-        sheet_json(sheet, project.title, answers, words), encoding="utf-8", newline="\n"
-    )
+    write_whole(out / "sheet.csv", sheet_csv(sheet, project.title))
+    write_whole(out / "sheet.json", sheet_json(sheet, project.title, answers, words))
     if answers.depths is not None:
-        table = depth_csv(answers.depths, sheet.plan.case, project.title)
-        (out / "depth.csv").write_text(table, encoding="utf-8", newline="\n")
-    (out / "sheet.pdf").write_bytes(page_pdf(page))
+        write_whole(out / "depth.csv", depth_csv(answers.depths, sheet.plan.case, project.title))
+    write_whole(out / "sheet.pdf", page_pdf(page))
     return [told.criterion, *told.beside, *told.further]
 
 

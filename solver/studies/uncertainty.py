@@ -94,6 +94,12 @@ class _Spot:
     stream: int
 
 
+def refuse_number_of_samples(samples: int) -> None:
+    """Raises `StudyError` for fewer or more samples than a study takes."""
+    if not FEWEST <= samples <= MOST:
+        raise StudyError(f"A study of what is not known takes {FEWEST} to {MOST} samples, not {samples}.")
+
+
 def sampled(
     plan: Plan,
     unknowns: Sequence[Unknown],
@@ -111,8 +117,7 @@ def sampled(
 
     `None` when `cancel` answered True. Raises `StudyError` where a range does not fit the case.
     """
-    if not FEWEST <= samples <= MOST:
-        raise StudyError(f"A study of what is not known takes {FEWEST} to {MOST} samples, not {samples}.")
+    refuse_number_of_samples(samples)
     if not unknowns:
         raise StudyError("Nothing is unknown: give at least one input a range.")
     spots = _spots(plan, asked, samples)

@@ -154,7 +154,12 @@ def test_what_cannot_be_is_said_with_its_status(tmp_path: Path, capsys: pytest.C
     )
     assert main(["sheet", str(file), "--out", out]) == 1
     assert "'load/energy' is not a number" in capsys.readouterr().err
+    assert main(["sheet", str(file), "--samples", "3", "--out", out]) == 2
+    assert "takes 50 to 5000 samples, not 3" in capsys.readouterr().err
     assert not (tmp_path / "out").exists()
+    file.write_text(project_to_text(project()), encoding="utf-8")
+    assert main(["sheet", str(file), "--out", str(file)]) == 2
+    assert f"The folder {file} cannot be made" in capsys.readouterr().err
 
 
 def test_table_for_the_rig_gives_the_points_of_the_sheet_back() -> None:
