@@ -15,13 +15,13 @@ from app.provenance import mark_at
 from app.starting_points import driven_pile
 from solver import ProjectError, parse_project, project_to_text
 from solver.model.limits import KSI
-from tests.app.test_forms_outline import Desk, Tree, desk  # noqa: F401
+from tests.app.desk import Desk, Tree
 
 STEEL = "/materials/0/limits/expression/yield_stress"
 
 
 @pytest.fixture
-def material(desk: Callable[[Tree], Desk]) -> Desk:  # noqa: F811
+def material(desk: Callable[[Tree], Desk]) -> Desk:
     at = desk(driven_pile())
     at.select("/materials/0")
     return at

@@ -2,84 +2,15 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable
-from dataclasses import dataclass
-
 import pytest
 from PySide6.QtCore import Qt
-from PySide6.QtWidgets import QWidget
 
 from app.bench.forms.field_row import FieldRow
 from app.bench.forms.number_row import NumberRow
 from app.bench.forms.other_rows import CheckRow, ChoiceRow, PointsRow, TextRow
 from app.bench.forms.picker import PartPicker
-from app.bench.outline.outline import Outline
-from app.document import Document
-from app.sight import Sight
 from app.starting_points import driven_pile, new_tree, slender_rod_by_echo
 from app.tree import value_at
-from solver import project_from_tree
-
-Tree = dict
-
-
-@dataclass
-class Desk:
-    """An outline on screen, with the three objects that it is made from."""
-
-    document: Document
-    sight: Sight
-    outline: Outline
-    qtbot: object
-    window: QWidget
-
-    def select(self, pointer: str) -> None:
-        self.sight.set(selection=pointer)
-
-    def row(self, label: str, kind: type[FieldRow] = FieldRow) -> FieldRow:
-        return next(r for r in self.outline.form.rows if r.spec.label == label and isinstance(r, kind))
-
-    def type_into(self, label: str, text: str, enter: bool = True) -> NumberRow:
-        row = self.row(label, NumberRow)
-        row.edit.setFocus()
-        row.edit.selectAll()
-        self.qtbot.keyClicks(row.edit, text)
-        if enter:
-            self.qtbot.keyClick(row.edit, Qt.Key.Key_Return)
-        return row
-
-    def choose(self, label: str, word: str) -> ChoiceRow:
-        row = self.row(label, ChoiceRow)
-        index = row.box.findText(word)
-        assert index >= 0
-        row.box.setCurrentIndex(index)
-        row.box.activated.emit(index)
-        return row
-
-    def button(self, name: str) -> QWidget:
-        return next(b for b in self.outline.buttons if b.row.name == name)
-
-    @property
-    def case(self):
-        return self.document.case
-
-
-@pytest.fixture
-def desk(qtbot) -> Callable[[Tree], Desk]:
-    def make(tree: Tree) -> Desk:
-        document, sight = Document(project_from_tree(tree)), Sight()
-        window = QWidget()
-        window.resize(286, 800)
-        outline = Outline(document, sight, window)
-        outline.setGeometry(window.rect())
-        qtbot.addWidget(window)
-        window.show()
-        qtbot.waitExposed(window)
-        window.activateWindow()
-        qtbot.waitUntil(window.isActiveWindow)
-        return Desk(document, sight, outline, qtbot, window)
-
-    return make
 
 
 def problem_of(row: FieldRow) -> str:
