@@ -52,7 +52,8 @@ def in_brief(findings: Findings, units: Units) -> tuple[str, ...]:
     """The details of each line of the verdict in so few words that they fit in one line of a narrow panel."""
     found = [_stress(findings.compression, units), _stress(findings.tension, units)]
     if findings.set is not None:
-        found.append(blows(findings.set, units))
+        early = "" if findings.set.last else "! ends too early · "
+        found.append(early + blows(findings.set, units))
     if findings.energy is not None:
         found.append(_energy(findings.energy))
     found += [_stress(one, units) for one in graver(findings.striking)]

@@ -209,6 +209,8 @@ def blows(finding: SetFinding, units: Units) -> str:
 
 def _set(finding: SetFinding, units: Units) -> Line:
     detail = f"{blows(finding, units)} · toe moved {units.show(finding.toe_largest, 'small_length')}"
+    if not finding.last:
+        detail = f"! not the last word: the run ends too early · {detail}"
     figure = units.show(finding.value, "small_length")
     return Line(figure, "set per blow", detail, None, finding.time, finding.position)
 

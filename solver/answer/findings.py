@@ -77,13 +77,15 @@ class StressFinding:
 
 @dataclass(frozen=True)
 class SetFinding:
-    """Permanent movement of the toe per blow (m) and what goes with it (m). `time` (s): the end of the run."""
+    """Permanent movement of the toe per blow (m) and what goes with it (m). `time` (s): the end of the run; `last`:
+    whether the ground had done giving way by then."""
 
     value: float
     toe_largest: float
     head_rebound: float | None
     time: float
     position: float
+    last: bool = True
 
     @property
     def blows_per_metre(self) -> float | None:
@@ -243,6 +245,7 @@ def _set(result: Result) -> SetFinding | None:
         result.head_rebound,
         result.duration,
         result.case.member.length,
+        not any(remark.kind in ("still_giving", "stopped") for remark in result.remarks),
     )
 
 

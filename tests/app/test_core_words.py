@@ -225,6 +225,13 @@ def test_a_peak_after_a_second_blow_shows_the_peak_before_it():
     )
 
 
+def test_a_set_that_is_read_too_early_says_so_beside_its_number():
+    early = replace(findings().set, last=False)
+    line = next(one for one in verdict(findings(set=early), METRIC) if one.name == "set per blow")
+    assert line.detail.startswith("! not the last word: the run ends too early")
+    assert in_brief(findings(set=early), METRIC)[2].startswith("! ends too early")
+
+
 def test_a_set_of_next_to_nothing_is_not_counted_in_blows():
     line = verdict(findings(set=SetFinding(7e-6, 0.8e-3, 3e-3, 0.2, 24.0)), METRIC)[2]
     assert plain(line.detail).startswith("practically none, over 1000 blows per 0.25 m · toe moved")

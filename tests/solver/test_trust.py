@@ -130,6 +130,9 @@ def test_a_set_that_is_read_too_early_is_told(passages: float, told: bool) -> No
     load, pile, duration = pulse("half_sine", 8e-3), part(10.0), passages * 4e-3
     run = solved(load, pile, far_end="ground", ground=ground, gravity=True, duration=duration, dx=0.1)
     assert ("still_giving" in {remark.kind for remark in run.remarks}) == told
+    found = findings_of(run).set
+    assert found is not None
+    assert found.last == (not told)
 
 
 def test_faces_that_part_and_touch_while_the_wave_runs_are_one_blow() -> None:
