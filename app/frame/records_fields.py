@@ -121,6 +121,12 @@ class RecordsFields(QScrollArea):
         self.commas.setChecked(kept.decimal_comma)
         self.mark = QCheckBox("Byte order mark for spreadsheets")
         self.mark.setChecked(kept.byte_order_mark)
+        self.setAccessibleName("Choices of the records")
+        self._explain()
+        self._compose()
+        self._connect()
+
+    def _explain(self) -> None:
         for widget, meaning in (
             (self.cases, "The cases whose records are saved, each to its own file."),
             (self.gauges, "The gauges whose records are saved."),
@@ -136,9 +142,6 @@ class RecordsFields(QScrollArea):
             *((box, "A kind of file that is written.") for box in self.formats.values()),
         ):
             widget.setToolTip(meaning)
-        self.setAccessibleName("Choices of the records")
-        self._compose()
-        self._connect()
 
     @property
     def choices(self) -> RecordChoices:

@@ -121,6 +121,11 @@ class TopBar(QWidget):
         self.state = StateView(document, solution, self)
         row.addWidget(self.state)
         row.addSpacing(SPACE)
+        self._add_sign_and_units(row)
+        document.changed.connect(self._follow)
+        self._follow()
+
+    def _add_sign_and_units(self, row: QHBoxLayout) -> None:
         self.sign = QPushButton(self)
         self.sign.setToolTip("What is positive in every picture, finding and report. Click to change it.")
         self.sign.clicked.connect(self._turn_sign)
@@ -129,10 +134,8 @@ class TopBar(QWidget):
         self.units.setToolTip(
             "Units of every picture, field and report. Fields take any unit that is typed with them."
         )
-        self.units.setMenu(UnitsMenu(document, self.units))
+        self.units.setMenu(UnitsMenu(self._document, self.units))
         row.addWidget(self.units)
-        document.changed.connect(self._follow)
-        self._follow()
 
     def add_switch(self, switch: QWidget) -> None:
         """Put the switch of the workspaces before the cases."""

@@ -78,6 +78,21 @@ class Window(QMainWindow):
             self.document, self.solution, icons, None if own_menus else self.menus.bar, self, self.sight
         )
         self.notes = NotesPanel(self.document, self)
+        self._compose_bench()
+        self._add_workspaces()
+        middle = QWidget(self)
+        column = QVBoxLayout(middle)
+        column.setContentsMargins(SPACE, 0, SPACE, SPACE)
+        column.setSpacing(GAP)
+        for widget in (self.top_bar, self.notices, self.notes):
+            column.addWidget(widget)
+        column.addWidget(self.workspaces, 1)
+        self.setCentralWidget(middle)
+        self.setMinimumSize(*SMALLEST)
+        self._draw_icons()
+
+    def _compose_bench(self) -> None:
+        """The outline beside the pictures, in a split that its user moves."""
         self.outline = Outline(self.document, self.sight, self)
         self.bench = Bench(self.document, self.sight, self.solution, self)
         self.tables = Tables(self.document, self.sight, self)
@@ -90,6 +105,8 @@ class Window(QMainWindow):
         self.split.setCollapsible(1, False)
         outline = widened(OUTLINE_WIDTH, most=1.2)  # the pictures need their room as well
         self.split.setSizes([outline, USUAL[0] - outline])
+
+    def _add_workspaces(self) -> None:
         self.set_sheet = SetSheet(self.document, self)
         self.workspaces = Workspaces(self)
         bench_and_tables = QWidget(self)
@@ -105,16 +122,6 @@ class Window(QMainWindow):
         self.report = ReportSpace(self.document, self)
         self.workspaces.add("Report", "What the client reads: as pages, PDF or HTML", self.report)
         self.top_bar.add_switch(self.workspaces.switch)
-        middle = QWidget(self)
-        column = QVBoxLayout(middle)
-        column.setContentsMargins(SPACE, 0, SPACE, SPACE)
-        column.setSpacing(GAP)
-        for widget in (self.top_bar, self.notices, self.notes):
-            column.addWidget(widget)
-        column.addWidget(self.workspaces, 1)
-        self.setCentralWidget(middle)
-        self.setMinimumSize(*SMALLEST)
-        self._draw_icons()
 
     def _connect(self) -> None:
         self.document.changed.connect(self._follow)
