@@ -29,12 +29,14 @@ EVENT_NAMES: dict[int, EventKind] = {
 }
 #: What ends and begins again within so many steps is one contact, not two.
 FLICKER = 3
+#: Gap (m) below which faces lie on each other.
+TOUCHING = 1e-12
 
 
 def events_of(blow: Blow) -> tuple[Event, ...]:
     """All events in order of time; of cracks the first of each segment."""
     chain = blow.chain
-    kept = _without_flicker(blow.events)
+    kept = _without_first_touch(blow, _without_flicker(blow.events))
     found = _first_cracks(blow)
     for kind, place, step in kept:
         name = EVENT_NAMES[kind]
@@ -59,7 +61,27 @@ def _first_cracks(blow: Blow) -> list[Event]:
 def _event_position(chain: Chain, kind: int, place: int) -> float:
     if kind == EVENT_LEFT_ELASTIC:
         return float((chain.position[place] + chain.position[place + 1]) / 2)
-    return float(chain.position[place])
+    # a rod that strikes ends at -0.0
+    return float(chain.position[place]) + 0.0
+
+
+def _without_first_touch(blow: Blow, events: list[tuple[int, int, int]]) -> list[tuple[int, int, int]]:
+    """Leave out the closing of joints whose faces lie on each other before the blow: the wave that comes to press them
+    closes nothing. What strikes does begin so."""
+    chain, rest = blow.chain, blow.rest
+    touching = {
+        joint.link
+        for joint in chain.joints
+        if joint.link >= chain.head
+        and not joint.slack < np.inf
+        and rest[joint.link + 1] - rest[joint.link] + joint.gap <= TOUCHING
+    }
+    kept = []
+    for event in events:
+        if not (event[0] == EVENT_JOINT_CLOSED and event[1] in touching):
+            kept.append(event)
+        touching.discard(event[1])
+    return kept
 
 
 def _without_flicker(events: NDArray[np.int64]) -> list[tuple[int, int, int]]:

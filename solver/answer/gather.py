@@ -20,7 +20,7 @@ from solver.answer.result import (
     first_of_largest,
     read_only,
 )
-from solver.answer.told import remarks_of
+from solver.answer.told import in_the_air, remarks_of
 from solver.numerics.arrays import Extremes
 from solver.numerics.assemble import gauge_link
 from solver.numerics.balance import LEDGER
@@ -35,10 +35,12 @@ def gather(blow: Blow, finished: bool, seconds: float) -> Result:
     envelope = _envelope(blow, ext, blow.member_links)
     striking = np.flatnonzero(chain.axial[: chain.head] > 0)
     again = len(ext.second) > 0 and ext.second[2] > 0
-    at_rest = chain.case.run.duration is None and blow.steps < blow.planned
+    at_rest = chain.case.run.duration is None and blow.steps < blow.planned and not in_the_air(blow)
     has_ground = chain.case.ground is not None
     toe_set = _set(blow) if has_ground else None
-    head_set = float(blow.state.motion.u[chain.head] - blow.rest[chain.head]) if has_ground else None
+    # where no rest is known, the place of the head is but that of a moment
+    settled_head = float(blow.state.motion.u[chain.head] - blow.rest[chain.head])
+    head_set = settled_head if has_ground and blow.settled else None
     head_travel = float(blow.extremes.travel[chain.head] - blow.rest[chain.head])
     return Result(
         case=chain.case,
@@ -171,7 +173,8 @@ def _ledger(blow: Blow) -> Ledger:
 
 def _peak(values: Array, position: Array, time: Array) -> Peak:
     i = first_of_largest(values, time)
-    return Peak(max(float(values[i]), 0.0), float(position[i]), float(time[i]))
+    # without the sign of a zero that was turned from tension to compression
+    return Peak(max(float(values[i]), 0.0) + 0.0, float(position[i]), float(time[i]))
 
 
 def _set(blow: Blow) -> float:

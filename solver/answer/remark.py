@@ -9,12 +9,14 @@ from typing import Literal
 RemarkKind = Literal[
     "energy_open",
     "times_unfit",
+    "pulse_in_few_steps",
     "few_elements",
     "large_strain",
     "mass_at_contact",
     "crumbled",
     "stopped",
     "not_at_rest",
+    "in_the_air",
     "still_giving",
     "ram_returns",
     "layers_end",
@@ -28,8 +30,8 @@ Show = Callable[[float, str], str]
 @dataclass(frozen=True)
 class Remark:
     """`value` is what the kind is about, in SI: the share of energy that does not close, the worst Courant number, a
-    number of elements, a plastic strain, a time (s), a depth (m). `place` (m) is where; `name` a segment's name, or
-    the sentence itself where it holds nothing to convert."""
+    number of steps or elements, a plastic strain, a time (s), a depth (m). `place` (m) is where; `name` a segment's
+    name, or the sentence itself where it holds nothing to convert."""
 
     kind: RemarkKind
     value: float = 0.0
@@ -51,6 +53,11 @@ def sentence(of: Remark, show: Show = in_si) -> str:
             return (
                 "The travel times of the segments fit no common step: "
                 f"the worst Courant number is {of.value:.3f}."
+            )
+        case "pulse_in_few_steps":
+            return (
+                f"The pulse lasts {of.value:.2g} time steps, too few for its shape: its impulse is right, its "
+                "peaks are smeared. Give a shorter element length, or a longer pulse."
             )
         case "few_elements":
             return f"The viscosity of '{of.name}' allows it only {of.value:.0f} elements: compare with a finer mesh."
@@ -75,6 +82,11 @@ def sentence(of: Remark, show: Show = in_si) -> str:
             return (
                 "The member does not come to rest by itself; the run was ended after "
                 f"{show(of.value, 'time')}."
+            )
+        case "in_the_air":
+            return (
+                "The member is in the air as the run ends and falls back on its toe: its set is that of the member "
+                "laid down there. Give a longer duration to see it land."
             )
         case "still_giving":
             return (

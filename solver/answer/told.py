@@ -7,6 +7,8 @@ import numpy as np
 from solver.answer.blow import Blow
 from solver.answer.remark import Remark
 from solver.answer.waves import travel_time_to
+from solver.model.derived import shaft_resistance
+from solver.model.load import Pulse
 from solver.numerics.balance import LEDGER
 from solver.numerics.chain import Chain
 from solver.numerics.compiled import cache_problem
@@ -15,6 +17,8 @@ from solver.numerics.mesh import MISMATCH
 
 #: Energy of a ram that falls again, as a share of its first blow's, above which that is told.
 SECOND_BLOW = 0.1
+#: Time steps of a pulse below which its shape is smeared: with 10 the peak of a half-sine is right to 1 %.
+FEW_STEPS = 10.0
 #: Elements of a viscous segment below which their number is told.
 FEW = 100
 #: Plastic strain above which a law of small strains is said to be left.
@@ -33,6 +37,9 @@ def remarks_of(blow: Blow, residual: float, at_rest: bool, finished: bool) -> tu
         told.append(Remark("energy_open", residual))
     if 1 - chain.courant_worst > MISMATCH:
         told.append(Remark("times_unfit", chain.courant_worst))
+    steps = _steps_of_pulse(chain)
+    if steps < FEW_STEPS:
+        told.append(Remark("pulse_in_few_steps", steps))
     few = [s for s in chain.stretches if s.material.law.kind == "viscoelastic" and s.stop - s.start < FEW]
     if few:
         told.append(Remark("few_elements", few[0].stop - few[0].start, name=few[0].segment.name))
@@ -45,6 +52,8 @@ def remarks_of(blow: Blow, residual: float, at_rest: bool, finished: bool) -> tu
         told.append(Remark("crumbled", crumbled[0][0], name=crumbled[0][1]))
     if not finished:
         told.append(Remark("stopped"))
+    elif in_the_air(blow):
+        told.append(Remark("in_the_air"))
     elif case.run.duration is None and not at_rest:
         told.append(Remark("not_at_rest", (blow.steps - 1) * chain.dt))
     elif _still_giving(blow):
@@ -95,6 +104,21 @@ def _largest_plastic_strain(blow: Blow) -> tuple[float, float]:
             if strain.max() > largest:
                 largest, place = float(strain.max()), float(blow.chain.position[at][np.argmax(strain)])
     return largest, place
+
+
+def in_the_air(blow: Blow) -> bool:
+    """Whether a member that only its toe can hold is above it as the run ends, to fall back on it."""
+    chain, ground = blow.chain, blow.chain.case.ground
+    if ground is None or chain.gravity == 0.0 or not len(blow.state.bounds.toe_par):
+        return False
+    held = shaft_resistance(chain.case) > 0 or chain.spring.any() or chain.fixed_end
+    return bool(not held and blow.at_end[-1] < blow.state.bounds.toe_state[0])
+
+
+def _steps_of_pulse(chain: Chain) -> float:
+    """How many time steps a pulse lasts (of a decay: its time constant); infinitely many where there is none."""
+    load = chain.case.load
+    return load.duration / chain.dt if isinstance(load, Pulse) and load.peak else np.inf
 
 
 def _still_giving(blow: Blow) -> bool:

@@ -162,11 +162,19 @@ def _finest_for_ram(case: Case, total: float) -> float:
         return 0.0
     impedance = _least_impedance(case.member.segments[:1], case.materials)
     finest = 1000 * impedance * total / load.ram_mass
+    bare = _finest_for_cap(load, impedance * total)
     stiff = [c.loading_stiffness for c in (load.cushion, load.pile_cushion) if c is not None]
     if not stiff:
-        return finest
+        return max(finest, bare)
     steps = max(stiff) * total / impedance
-    return min(max(steps / 2, min(steps / 0.3, finest)), MOST_FOR_CUSHION)
+    return min(max(steps / 2, min(steps / 0.3, finest), bare), MOST_FOR_CUSHION)
+
+
+def _finest_for_cap(load: Drop, mass: float) -> float:
+    """Elements that a cap asks for which lies on the head without a cushion: Z dt under 2.5 % of it. What it strikes is
+    the first node, which must be small beside it as it falls back; `mass`: Z L/c, kg.
+    """
+    return mass / (0.025 * load.cap_mass) if load.cap_mass > 0 and load.pile_cushion is None else 0.0
 
 
 def _finest_for_springs(case: Case, total: float) -> float:

@@ -6,7 +6,8 @@ import numpy as np
 import pytest
 from scipy.integrate import solve_ivp
 
-from tests.published.rods import AREA, Z, pulse, solved
+from solver import solve
+from tests.published.rods import AREA, Z, case_of, material, part, pulse, solved
 
 SPEED = 3.0
 
@@ -85,3 +86,30 @@ def test_a_sudden_front_on_a_stiff_spring(stiffness: float, kind: str) -> None:
             Z * SPEED,
         )
     assert result.peak_compression.value * AREA == pytest.approx(expected, rel=1e-9)
+
+
+def test_a_light_cap_on_the_bare_head_finds_elements_that_are_light_beside_it() -> None:
+    """A cap of 13 kg bounces on a timber pile of 620 kg: peaks of 60 ms within 1.5 % of those on a mesh twice as fine.
+    (Its bounces differ a little on every mesh, and so do peaks, by 1 %.) On 400 elements they were 6 % low.
+    """
+    timber = material("timber", 12e9, 800.0)
+    drop = {
+        "kind": "drop",
+        "ram_mass": 134.0,
+        "impact_velocity": 2.5,
+        "cushion": {"stiffness": 5.5e8, "restitution": 0.37},
+        "cap_mass": 13.4,
+    }
+    ground = {
+        "surface": 3.7,
+        "shaft_total": {"resistance": 720e3, "distribution": "uniform", "quake": 0.005, "damping": 0.05},
+        "toe": {"resistance": 140e3, "quake": 0.005, "damping": 0.2},
+    }
+    pile = part(7.73, 0.1, "timber")
+    case = case_of(
+        drop, pile, far_end="ground", ground=ground, gravity=True, duration=0.06, materials=[timber]
+    )
+    usual = solve(case)
+    finer = solve(case, element_length=7.73 / usual.elements / 2)
+    for peak in ("peak_compression", "peak_tension"):
+        assert getattr(usual, peak).value == pytest.approx(getattr(finer, peak).value, rel=0.015)
