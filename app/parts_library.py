@@ -29,6 +29,7 @@ FHWA = "FHWA driven pile manuals 2006 and 2016 (from memory)"
 COYLE = "Coyle, Bartoskewitz & Berger 1973 (from memory)"
 FOREHAND = "Forehand & Reese 1964 (from memory)"
 COMMON = "common practice"
+#: A tenth of an inch, m: the quake that most of the tables give.
 TENTH = 0.1 * INCH
 
 
@@ -173,6 +174,7 @@ def _mm(*dimensions: float) -> list[float]:
     return [round(d / 1e3, 6) for d in dimensions]
 
 
+#: Sizes in mm: outer diameter and wall; diameter; depth, width of flange, its thickness, and the web's.
 PIPES = (
     (219.1, 8.0),
     (273.0, 8.0),

@@ -36,6 +36,8 @@ from app.solving import Solution, Solve
 from app.standing import standing_of
 from solver import Project
 
+#: Width and height in device-independent pixels: below the first the pictures cannot be read; the second is that of a
+#: first start.
 SMALLEST = (1000, 640)
 USUAL = (1440, 900)
 #: Key of the strip, and of the setting that remembers that it was closed.

@@ -20,6 +20,7 @@ from app.units import Units
 from solver.studies import NO_SET, Cell, Sheet
 from solver.studies.uncertainty import Bands, Sampled
 
+#: Strokes and gaps, and widths of the lines of a sheet, in pixels or points.
 BROKEN = (5.0, 3.5)
 DOTTED = (1.5, 2.5)
 WIDTHS = (2.0, 1.5, 1.5, 1.5)

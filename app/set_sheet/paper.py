@@ -13,6 +13,7 @@ from app.look.colours import PRINT, Palette
 from app.report.lettering import BOLD, REGULAR, printable
 from app.set_sheet.scene import Area, Letters, Level, Line, Mark, Scene, Words, outline_of
 
+#: Of the page on all sides, in points.
 MARGIN = 42.0
 SIZES: dict[Level, tuple[str, float]] = {
     "small": (REGULAR, 7.2),

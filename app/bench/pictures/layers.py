@@ -28,6 +28,7 @@ from app.solving import Solution
 from app.units import Units, units_of
 from solver import Case, Result
 
+#: Opacity of a picture that does not belong to what is entered.
 GREYED = 0.3
 #: Ways in which a picture gets the focus without the mouse.
 BY_KEYS = (
