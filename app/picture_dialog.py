@@ -159,6 +159,7 @@ def _whole_number(bounds: tuple[float, float], step: int, unit: str, value: floa
     box.setSuffix(unit)
     box.setValue(round(value))
     box.setButtonSymbols(QSpinBox.ButtonSymbols.NoButtons)
+    box.lineEdit().setTextMargins(SPACE - 2, 0, 0, 0)  # the stylesheet gives none to it
     return box
 
 

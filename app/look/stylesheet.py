@@ -17,6 +17,8 @@ from app.look.spacing import FIELD, GAP, RADIUS, SPACE
 
 #: Height of a line of text, px, for each point of its size.
 LINE = 1.85
+#: Side of a box to tick, px, at the usual size of letters.
+TICK = 14
 HERE = Path(__file__).resolve().parent
 SHEET = """
 QWidget {{ color: {ink}; }}
@@ -41,6 +43,7 @@ QLineEdit, QComboBox, QSpinBox, QPlainTextEdit, QTextEdit {{
     padding: 0 {inner}px; min-height: {field}px;
     selection-background-color: {accent}; selection-color: {on_accent}; }}
 QPlainTextEdit, QTextEdit {{ padding: {gap}px; }}
+QSpinBox::up-button, QSpinBox::down-button {{ subcontrol-origin: margin; width: 0; height: 0; }}
 QLineEdit:focus, QComboBox:focus, QSpinBox:focus, QPlainTextEdit:focus, QTextEdit:focus {{
     border: 2px solid {accent}; padding: 0 {inner_focus}px; min-height: {field_focus}px; }}
 QLineEdit[invalid="true"] {{ border: 2px solid {over}; padding: 0 {inner_focus}px; min-height: {field_focus}px; }}
@@ -84,6 +87,9 @@ QPushButton::menu-indicator, QToolButton::menu-indicator {{ image: none; width: 
 
 QCheckBox, QRadioButton {{ border: 1px solid transparent; border-radius: {radius}px; padding: 1px 2px; }}
 QCheckBox:focus, QRadioButton:focus {{ border: 1px solid {accent}; background: {accent_soft}; }}
+QCheckBox::indicator, QListView::indicator {{ width: {tick}px; height: {tick}px;
+    background: {raised}; border: 1px solid {line}; border-radius: 3px; }}
+QCheckBox::indicator:checked, QListView::indicator:checked {{ border: 1px solid {ink}; image: url("{checked}"); }}
 QMenuBar {{ background: {window}; padding: 0 {gap}px; }}
 QMenuBar::item {{ padding: {gap}px {space}px; border-radius: {radius}px; background: transparent; }}
 QMenuBar::item:selected {{ background: {pressed}; }}
@@ -134,6 +140,8 @@ def stylesheet(palette: Palette, base_size: float) -> str:
         **{name: value for name, value in vars(palette).items() if isinstance(value, str)},
         **{name: sizes[name] for name in ("title", "figure", "small")},
         arrow=(HERE / f"arrow_{'dark' if palette.dark else 'light'}.svg").as_posix(),
+        checked=(HERE / f"tick_{'dark' if palette.dark else 'light'}.svg").as_posix(),
+        tick=max(TICK, round(line * TICK / FIELD)),
         gap=GAP,
         space=SPACE,
         space_focus=SPACE - 1,

@@ -2,9 +2,12 @@
 
 import numpy as np
 import pytest
+from PySide6.QtCore import Qt
+from PySide6.QtWidgets import QListWidget, QListWidgetItem, QSpinBox, QVBoxLayout, QWidget
 
-from app.look import DARK, LIGHT, icon, motion_map, stress_map
+from app.look import DARK, LIGHT, apply_look, icon, motion_map, stress_map
 from app.look.icons import SHAPES
+from app.look.palette import palette
 from app.look.stylesheet import stylesheet
 
 PALETTES = pytest.mark.parametrize("colours", [LIGHT, DARK], ids=["light", "dark"])
@@ -128,3 +131,29 @@ def test_every_icon_draws_something(qapp):
 @PALETTES
 def test_the_stylesheet_leaves_no_gap(colours):
     assert "{" not in stylesheet(colours, 9.0).replace("{ ", "").replace("{\n", "").replace(" {", "")
+
+
+@pytest.mark.parametrize("choice", ["light", "dark"])
+def test_boxes_to_tick_are_seen_and_number_boxes_show_their_number(qtbot, qapp, choice):
+    """A box to tick has an edge of 3:1 on what it stands on (WCAG 2.1, 1.4.11), in lists too; a number box gives its
+    whole width to the number."""
+    before = qapp.property("striketrace_look") or "light"
+    apply_look(qapp, choice)
+    try:
+        ground, ticks, number = QWidget(), QListWidget(), QSpinBox()
+        qtbot.addWidget(ground)
+        number.setButtonSymbols(QSpinBox.ButtonSymbols.NoButtons)
+        item = QListWidgetItem("Force", ticks)
+        item.setCheckState(Qt.CheckState.Unchecked)
+        column = QVBoxLayout(ground)
+        column.addWidget(ticks)
+        column.addWidget(number)
+        ground.resize(300, 200)
+        ground.grab()  # lays out what is not on the screen
+        row = ticks.visualItemRect(item)
+        line = ticks.viewport().grab().toImage()
+        seen = {line.pixelColor(x, row.center().y()).name() for x in range(row.left() + 24)}
+        assert max(contrast(colour, palette().paper) for colour in seen) >= 3
+        assert number.lineEdit().width() > 0.8 * number.width()
+    finally:
+        apply_look(qapp, before)
