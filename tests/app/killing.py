@@ -91,7 +91,7 @@ def work(folder: Path, seed: int, share_of_saves: float) -> None:
 
 def number_of(project: object) -> int:
     """How many edits a project holds."""
-    position = project.cases[0].gauges[0].position  # type: ignore[attr-defined]
+    position = project.cases[0].gauges[0].position
     return round((position - START) / STEP)
 
 

@@ -33,10 +33,10 @@ def main() -> None:
 
     class Watched(main_loop.Window):
         def __init__(self, *given: object) -> None:
-            super().__init__(*given)  # type: ignore[arg-type]
+            super().__init__(*given)
             self._ear = Ear(self)
 
-    main_loop.Window = Watched  # type: ignore[misc]
+    main_loop.Window = Watched
     raise SystemExit(command_line.main([]))
 
 

@@ -36,7 +36,7 @@ def made(monkeypatch: pytest.MonkeyPatch) -> list[str]:
     def make_quickly(command: list[str], *others: object) -> None:
         done.append("venv" if "venv" in command else "pip")
         if "venv" in command:
-            run([*command, "--without-pip"], *others)  # type: ignore[arg-type]
+            run([*command, "--without-pip"], *others)
 
     monkeypatch.setattr(setting_up, "_run", make_quickly)
     return done

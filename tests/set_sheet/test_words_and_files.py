@@ -24,7 +24,7 @@ LIMIT = 200e6
 
 def stress(sign: str, value: float, position: float) -> StressFinding:
     at = StressAt(value, position, 0.003, "Pile", LIMIT)
-    return StressFinding(sign, at, at)  # type: ignore[arg-type]
+    return StressFinding(sign, at, at)
 
 
 def cell(row: int, set_m: float, compression: float = 100e6, tension: float = 20e6, **more: object) -> Cell:
@@ -34,7 +34,7 @@ def cell(row: int, set_m: float, compression: float = 100e6, tension: float = 20
         "tension": stress("tension", tension, 7.0),
     }
     rest = {"at_rest": True, **found, **more}
-    return Cell(row, 0, PLAN.resistances[row], PLAN.levels[0], set=set_m, **rest)  # type: ignore[arg-type]
+    return Cell(row, 0, PLAN.resistances[row], PLAN.levels[0], set=set_m, **rest)
 
 
 def plainly(text: str) -> str:

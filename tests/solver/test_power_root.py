@@ -8,7 +8,7 @@ from solver.numerics.power_root import pieces_of, power_speed, speed_by_pieces
 
 
 @kernel
-def _roots(a, b, n, rest, scale, pieces, kept, plain):  # type: ignore[no-untyped-def]
+def _roots(a, b, n, rest, scale, pieces, kept, plain):
     for i in range(len(rest)):
         kept[i] = speed_by_pieces(a, 1.0 / a, b, n, rest[i], scale, pieces, 0)
         plain[i] = power_speed(a, b, n, rest[i])

@@ -18,7 +18,7 @@ PLAN = plan_of(pile(elements=20), resistances=(400e3, 800e3), values=(1.0,))
 
 
 def cell(**more: object) -> Cell:
-    return Cell(0, 0, 400e3, PLAN.levels[0], **more)  # type: ignore[arg-type]
+    return Cell(0, 0, 400e3, PLAN.levels[0], **more)
 
 
 def test_every_point_is_solved_until_the_member_is_at_rest() -> None:

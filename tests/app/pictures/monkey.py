@@ -226,7 +226,7 @@ def main() -> int:
     from solver import load_project, solve
 
     app = QApplication([])
-    QFileDialog.getOpenFileName = QFileDialog.getSaveFileName = nothing_chosen  # type: ignore[method-assign]
+    QFileDialog.getOpenFileName = QFileDialog.getSaveFileName = nothing_chosen
     errors: list[str] = []
     sys.excepthook = lambda kind, error, trace: (
         errors.append(f"{kind.__name__}: {error}"),
