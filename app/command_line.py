@@ -11,9 +11,8 @@ from math import isfinite
 from pathlib import Path
 
 from app import __version__
+from app.exit_status import DONE, FAILED, NO_WINDOW, UNUSABLE, complain
 from app.frame.closing_signals import ClosingSignals
-
-SOLVED, FAILED, UNUSABLE, NO_WINDOW = 0, 1, 2, 3
 
 ABOUT = """Stress waves in struck piles, rods and bars.
 
@@ -53,14 +52,14 @@ def main(argv: Sequence[str]) -> int:
     except SystemExit as end:  # argparse has said what is wrong, or has shown its help
         return end.code if isinstance(end.code, int) else UNUSABLE
     except KeyboardInterrupt:
-        return _say("Stopped.", FAILED)
+        return complain("Stopped.", FAILED)
     except BrokenPipeError:  # whoever read the output has gone
         sys.stderr.close()
         return FAILED
     except OSError as error:
         if error.errno != ENOSPC:
             raise
-        return _say(
+        return complain(
             "What there is to say cannot be written: the disk behind standard output is full.", FAILED
         )
 
@@ -135,12 +134,12 @@ def _window(arguments: argparse.Namespace) -> int:
     except ImportError as error:
         from app.first_start.qt_needs import explain_qt_failure
 
-        return _say(explain_qt_failure(error), NO_WINDOW)
+        return complain(explain_qt_failure(error), NO_WINDOW)
     from app.first_start.qt_needs import explain_no_display
 
     reason = explain_no_display()
     if reason:
-        return _say(reason, NO_WINDOW)
+        return complain(reason, NO_WINDOW)
     from solver.warm_up import begin_beside
 
     begin_beside()
@@ -154,7 +153,7 @@ def _check(arguments: argparse.Namespace) -> int:
     from app.usable_project import load_usable
     from solver import ProjectError
 
-    status = SOLVED
+    status = DONE
     for path in arguments.files:
         try:
             project = load_usable(path)
@@ -162,7 +161,7 @@ def _check(arguments: argparse.Namespace) -> int:
             if faults:
                 raise ProjectError(faults, str(path))
         except ProjectError as error:
-            status = _say(str(error), UNUSABLE)
+            status = complain(str(error), UNUSABLE)
         else:
             count = len(project.cases)
             print(f"{path}: valid, {count} case{'s' if count > 1 else ''}")
@@ -199,8 +198,3 @@ def _report(argv: Sequence[str]) -> int:
     from app.report.command import report_parser, run_report
 
     return run_report(report_parser().parse_args(argv))
-
-
-def _say(sentence: str, status: int) -> int:
-    print(sentence, file=sys.stderr)
-    return status

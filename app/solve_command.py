@@ -9,14 +9,13 @@ from dataclasses import dataclass
 from pathlib import Path
 from typing import Any
 
+from app.exit_status import DONE, FAILED, UNUSABLE, complain
 from app.export import folder_names, write_case
 from app.units import NO_BREAK, Units
 from app.usable_project import load_usable
 from app.words import verdict
 from solver import Case, Project, ProjectError, Result
 from solver.answer.findings import findings_of
-
-SOLVED, FAILED, UNUSABLE = 0, 1, 2
 
 
 def _print(text: str) -> None:
@@ -44,18 +43,18 @@ def solve_file(path: Path, out: Path, choices: Choices) -> int:
     try:
         project = load_usable(path)
     except ProjectError as error:
-        return _complain(str(error), UNUSABLE)
+        return complain(str(error), UNUSABLE)
     names = [case.name for case in project.cases]
     if choices.case is not None and choices.case not in names:
         known = ", ".join(f"'{name}'" for name in names)
-        return _complain(
+        return complain(
             f"{path}: /cases: there is no case named '{choices.case}' (there are: {known})", UNUSABLE
         )
     try:
         out.mkdir(parents=True, exist_ok=True)
     except OSError as error:
-        return _complain(f"The folder {out} cannot be made: {error.strerror or error}.", UNUSABLE)
-    status = SOLVED
+        return complain(f"The folder {out} cannot be made: {error.strerror or error}.", UNUSABLE)
+    status = DONE
     for case, folder in zip(project.cases, folder_names(names), strict=True):
         if choices.case in (None, case.name):
             status = max(status, _one(project, case, out / folder, choices))
@@ -68,21 +67,21 @@ def _one(project: Project, case: Case, folder: Path, choices: Choices) -> int:
     try:
         result = solve(_with_length(case, choices.element_length), progress=_progress(case, choices))
     except SolveError as error:
-        return _complain(f"Case '{case.name}' cannot be solved: {error}{_older(folder)}", FAILED)
+        return complain(f"Case '{case.name}' cannot be solved: {error}{_older(folder)}", FAILED)
     except MemoryError:
-        return _complain(f"Case '{case.name}' needs more memory than there is: use longer elements.", FAILED)
+        return complain(f"Case '{case.name}' needs more memory than there is: use longer elements.", FAILED)
     except Exception as error:
-        return _complain(
+        return complain(
             f"Case '{case.name}' failed unexpectedly ({type(error).__name__}: {error}): please report this.",
             FAILED,
         )
     try:
         write_case(result, project.title, folder, compression_positive=choices.compression_positive)
     except OSError as error:
-        return _complain(f"The results of case '{case.name}' cannot be written to {folder}: {error}.", FAILED)
+        return complain(f"The results of case '{case.name}' cannot be written to {folder}: {error}.", FAILED)
     if choices.tell:
         choices.tell(_told(result, folder))
-    return SOLVED
+    return DONE
 
 
 def _with_length(case: Case, length: float | None) -> Case:
@@ -115,8 +114,3 @@ def _told(result: Result, folder: Path) -> str:
 
 def _older(folder: Path) -> str:
     return f" The results in {folder} are those of an earlier run." if folder.exists() else ""
-
-
-def _complain(sentence: str, status: int) -> int:
-    print(sentence, file=sys.stderr)
-    return status

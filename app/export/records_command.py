@@ -2,17 +2,15 @@
 
 from __future__ import annotations
 
-import sys
 from collections.abc import Callable
 from datetime import datetime
 from pathlib import Path
 
 from app.disk import why_not
+from app.exit_status import DONE, FAILED, UNUSABLE, complain
 from app.export.record_choices import RecordChoices
 from app.usable_project import load_usable
 from solver import Case, Project, ProjectError, Result
-
-DONE, FAILED, UNUSABLE = 0, 1, 2
 
 
 def write_records_of(
@@ -22,14 +20,14 @@ def write_records_of(
     try:
         project = load_usable(path)
     except ProjectError as error:
-        return _complain(str(error), UNUSABLE)
+        return complain(str(error), UNUSABLE)
     unknown = _unknown(project, choices)
     if unknown:
-        return _complain(f"{path}: {unknown}", UNUSABLE)
+        return complain(f"{path}: {unknown}", UNUSABLE)
     try:
         out.mkdir(parents=True, exist_ok=True)
     except OSError as error:
-        return _complain(f"The folder {out} cannot be made: {why_not(error, out)}.", UNUSABLE)
+        return complain(f"The folder {out} cannot be made: {why_not(error, out)}.", UNUSABLE)
     status = DONE
     for case in project.cases:
         if choices.cases is None or case.name in choices.cases:
@@ -70,16 +68,11 @@ def _one(
             if tell:
                 tell(f"{case.name}: {written}")
     except SolveError as error:
-        return _complain(f"Case '{case.name}' cannot be solved: {error}", FAILED)
+        return complain(f"Case '{case.name}' cannot be solved: {error}", FAILED)
     except ValueError as error:
-        return _complain(f"The records of case '{case.name}' cannot be written: {error}", FAILED)
+        return complain(f"The records of case '{case.name}' cannot be written: {error}", FAILED)
     except OSError as error:
-        return _complain(f"The records of case '{case.name}' cannot be written to {out}. {error}", FAILED)
+        return complain(f"The records of case '{case.name}' cannot be written to {out}. {error}", FAILED)
     except MemoryError:
-        return _complain(f"Case '{case.name}' needs more memory than there is: use longer elements.", FAILED)
+        return complain(f"Case '{case.name}' needs more memory than there is: use longer elements.", FAILED)
     return DONE
-
-
-def _complain(sentence: str, status: int) -> int:
-    print(sentence, file=sys.stderr)
-    return status

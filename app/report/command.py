@@ -3,17 +3,16 @@
 from __future__ import annotations
 
 import argparse
-import sys
 from datetime import datetime
 from pathlib import Path
 
 from app.disk import why_not
+from app.exit_status import DONE, FAILED, UNUSABLE, complain
 from app.export.records_options import date_of, positive
 from app.units import NO_BREAK, units_of
 from app.usable_project import load_usable
 from solver import ProjectError
 
-DONE, FAILED, UNUSABLE = 0, 1, 2
 ENDINGS = (".pdf", ".html", ".htm")
 
 
@@ -58,9 +57,9 @@ def run_report(given: argparse.Namespace) -> int:
     try:
         project = load_usable(given.file)
     except ProjectError as error:
-        return _complain(str(error), UNUSABLE)
+        return complain(str(error), UNUSABLE)
     if not given.out.absolute().parent.is_dir():
-        return _complain(f"There is no folder {given.out.absolute().parent} for the report.", UNUSABLE)
+        return complain(f"There is no folder {given.out.absolute().parent} for the report.", UNUSABLE)
     # reading and refusing must not wait for the libraries that write pages, nor for the kernels
     from app.report.build import build_report
     from app.report.choices import report_choices
@@ -80,19 +79,14 @@ def run_report(given: argparse.Namespace) -> int:
             write_figures(report, given.figures, date, given.dpi)
             write_animations(cases, units_of(project), given.figures)
     except OSError as error:
-        return _complain(f"The report cannot be written to {given.out}: {why_not(error, given.out)}.", FAILED)
+        return complain(f"The report cannot be written to {given.out}: {why_not(error, given.out)}.", FAILED)
     except MemoryError:
-        return _complain("The report needs more memory than there is: use longer elements.", FAILED)
+        return complain("The report needs more memory than there is: use longer elements.", FAILED)
     status = DONE
     for one in cases:
         if one.result is None:
-            status = _complain(f"Case '{one.case.name}' cannot be solved: {one.refusal}", FAILED)
+            status = complain(f"Case '{one.case.name}' cannot be solved: {one.refusal}", FAILED)
     if not given.quiet:
         told = " ".join(report.front.verdict)
         print(f"{given.out}: {len(cases)} case{'s' if len(cases) > 1 else ''}. {told}".replace(NO_BREAK, " "))
-    return status
-
-
-def _complain(sentence: str, status: int) -> int:
-    print(sentence, file=sys.stderr)
     return status

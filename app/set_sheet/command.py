@@ -9,6 +9,7 @@ from dataclasses import dataclass
 from pathlib import Path
 
 from app.disk import why_not, write_whole
+from app.exit_status import DONE, FAILED, UNUSABLE, complain
 from app.set_sheet.answer_words import told_of
 from app.set_sheet.depth_files import depth_csv
 from app.set_sheet.files import Answers, sheet_csv, sheet_json
@@ -25,8 +26,6 @@ from solver.studies.safe_blow import safe_blow
 from solver.studies.settings import DepthSettings, SheetSettings, depth_settings_of, settings_of
 from solver.studies.sheet import Solver
 from solver.studies.uncertainty import refuse_number_of_samples, sampled
-
-SOLVED, FAILED, UNUSABLE = 0, 1, 2
 
 
 @dataclass(frozen=True)
@@ -45,11 +44,11 @@ def write_sheet(path: Path, out: Path, choices: Choices) -> int:
     try:
         project = load_usable(path)
     except ProjectError as error:
-        return _complain(str(error), UNUSABLE)
+        return complain(str(error), UNUSABLE)
     case = next((c for c in project.cases if choices.case in (None, c.name)), None)
     if case is None:
         known = ", ".join(f"'{c.name}'" for c in project.cases)
-        return _complain(
+        return complain(
             f"{path}: /cases: there is no case named '{choices.case}' (there are: {known})", UNUSABLE
         )
     try:
@@ -57,24 +56,24 @@ def write_sheet(path: Path, out: Path, choices: Choices) -> int:
         if choices.samples is not None:
             refuse_number_of_samples(choices.samples)
     except StudyError as error:
-        return _complain(f"{path}: {error}", UNUSABLE)
+        return complain(f"{path}: {error}", UNUSABLE)
     try:
         on_machines = on_cluster(choices.cluster) if choices.cluster is not None else nullcontext()
         with told_in(units_of(project)), on_machines as solver:
             sheet, answers = _solved(case, settings, depth, choices, units_of(project), solver)
     except (StudyError, SolveError) as error:
-        return _complain(f"The set sheet of case '{case.name}' cannot be made: {error}", FAILED)
+        return complain(f"The set sheet of case '{case.name}' cannot be made: {error}", FAILED)
     try:
         out.mkdir(parents=True, exist_ok=True)
     except OSError as error:
-        return _complain(f"The folder {out} cannot be made: {error.strerror or error}.", UNUSABLE)
+        return complain(f"The folder {out} cannot be made: {error.strerror or error}.", UNUSABLE)
     try:
         told = _write(project, sheet, answers, settings, out)
     except OSError as error:
-        return _complain(f"The sheet cannot be written to {out}: {why_not(error, out)}.", FAILED)
+        return complain(f"The sheet cannot be written to {out}: {why_not(error, out)}.", FAILED)
     if not choices.quiet:
         print("\n  ".join([f"{case.name}: {len(sheet.cells)} points -> {out}", *told]).replace(NO_BREAK, " "))
-    return SOLVED
+    return DONE
 
 
 def _solved(
@@ -136,8 +135,3 @@ def _progress(total: int, what: str) -> Callable[[int], None]:
         print(f"\r{done} of {total} {what}{end}", end="", file=sys.stderr, flush=True)
 
     return show
-
-
-def _complain(sentence: str, status: int) -> int:
-    print(sentence, file=sys.stderr)
-    return status
