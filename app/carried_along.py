@@ -13,6 +13,7 @@ from app.units import Units
 from solver import Problem
 
 Tree = dict[str, Any]
+RODS = ("member", "striker", "ram")
 PLACE = re.compile(r"/cases/(\d+)/(?:gauges|member/attachments)/\d+/position")
 
 
@@ -35,7 +36,7 @@ def carried_along(before: Tree, after: Tree, problems: Sequence[Problem]) -> tup
     tree: Tree = copied(after)
     moved: list[Moved] = []
     for index in cases & set(range(len(before["cases"]))):
-        moved += _carried(before["cases"][index], tree["cases"][index])
+        moved += carry(before["cases"][index], tree["cases"][index])
     return (tree, moved) if moved else None
 
 
@@ -49,9 +50,20 @@ def sentence_of(moved: Sequence[Moved], units: Units) -> str:
     return f"Moved with the end of the shorter member: {listed}. Undo takes all of it back."
 
 
-def _carried(old: Tree, new: Tree) -> list[Moved]:
+def moved_between(old: Tree, new: Tree) -> list[Moved]:
+    """What lies elsewhere in a case than before; both cases have the same gauges and attachments."""
+    pairs = [pair for rod in RODS for pair in zip(_on(old, rod), _on(new, rod), strict=True)]
+    return [
+        Moved(called, was["position"], now["position"])
+        for (was, called), (now, _) in pairs
+        if was["position"] != now["position"]
+    ]
+
+
+def carry(old: Tree, new: Tree) -> list[Moved]:
+    """Move in the new tree of a case what hangs beyond the end of a rod that is shorter than in the old one."""
     moved = []
-    for rod in ("member", "striker", "ram"):
+    for rod in RODS:
         was, now = _length(old, rod), _length(new, rod)
         if not 0 < now < was:
             continue

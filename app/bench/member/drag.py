@@ -18,6 +18,7 @@ from app.bench.member.handles import (
     within_all,
 )
 from app.bench.pictures.axes import Axis, tidy_step
+from app.carried_along import moved_between, sentence_of
 from app.document import Document
 from app.units import Units, units_of
 
@@ -40,6 +41,7 @@ class MemberDrag:
         self._along = gauges_along(document.case, handle, chosen)
         self._document, self._axis, self._from = document, axis, at
         self._case, self._case_index = document.case, document.case_index
+        self._tree = document.tree["cases"][document.case_index]
         self._steps_before = document.undo_stack.index()
         self._merge = f"drag {next(_numbers)}"
         self._place = handle.place
@@ -69,9 +71,13 @@ class MemberDrag:
         if self._document.undo_stack.index() > self._steps_before + 1:
             self.take_back()
             self._edit()
+        if self.told and self.handle.kind == "segment":
+            moved = moved_between(self._tree, self._document.tree["cases"][self._case_index])
+            if moved:
+                self._document.told.emit(sentence_of(moved, units_of(self._document.project)))
 
     def _edit(self) -> None:
-        change = change_to(self.handle, self._place, self._case_index, self._along)
+        change = change_to(self.handle, self._place, self._case_index, self._tree, self._along)
         self._document.edit_tree(self.told, change, merge=self._merge)
 
     def _wanted(self, down: float) -> float:
@@ -106,6 +112,7 @@ def nudge(document: Document, chosen: Sequence[str], way: int, axis: Axis) -> bo
     place = within_all(min(max(place, handle.low), handle.high), handle, along)
     if place != handle.place:
         words = told(handle, place, document.case, units, along)
-        change = change_to(handle, place, document.case_index, along)
+        index = document.case_index
+        change = change_to(handle, place, index, document.tree["cases"][index], along)
         document.edit_tree(words, change, merge=f"nudge {','.join(chosen)}")
     return True

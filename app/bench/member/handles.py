@@ -7,7 +7,9 @@ from dataclasses import dataclass
 from itertools import accumulate
 from typing import Any, Literal
 
+from app.carried_along import carry
 from app.names import with_kind
+from app.tree import copied
 from app.units import Units
 from solver import Case
 from solver.model.derived import far_face, place_of
@@ -45,19 +47,14 @@ def _gauges(case: Case) -> Iterator[Handle]:
 
 
 def _boundaries(case: Case) -> Iterator[Handle]:
-    """Lower face of each segment. The far end stays below whatever is on the member."""
+    """Lower face of each segment. The far end stays in the ground; gauges and attachments are carried along."""
     least = LEAST_SHARE * case.member.length
     ends = list(accumulate(s.length for s in case.member.segments))
     starts = [0.0, *ends[:-1]]
-    lowest_thing = max(
-        [0.0]
-        + [g.position for g in case.gauges if g.on == "member"]
-        + [a.position for a in case.member.attachments]
-        + ([case.ground.surface] if case.ground else [])
-    )
+    surface = case.ground.surface if case.ground else 0.0
     for index, (start, end) in enumerate(zip(starts, ends, strict=True)):
         last = index == len(ends) - 1
-        low = max(start + least, lowest_thing) if last else start + least
+        low = max(start + least, surface) if last else start + least
         high = 2 * end if last else ends[index + 1] - least
         yield Handle("segment", index, f"member/segments/{index}", end, low, high)
 
@@ -96,8 +93,11 @@ def within_all(place: float, handle: Handle, along: Sequence[Handle]) -> float:
     return min(max(place, low), high)
 
 
-def change_to(handle: Handle, place: float, at: int, along: Sequence[Handle] = ()) -> Change:
-    """The edit of the project's tree that puts a handle at a place (m); `at` is the number of the case."""
+def change_to(
+    handle: Handle, place: float, at: int, before: dict[str, Any], along: Sequence[Handle] = ()
+) -> Change:
+    """The edit of the project's tree that puts a handle at a place (m); `at` is the number of the case, `before` the
+    case's tree at the press: from there, not from the step before, a shorter member carries along what is on it."""
 
     def change(tree: dict[str, Any]) -> None:
         mine = tree["cases"][at]
@@ -117,6 +117,9 @@ def change_to(handle: Handle, place: float, at: int, along: Sequence[Handle] = (
             segments = mine["member"]["segments"]
             start = sum(one["length"] for one in segments[: handle.index])
             _divide(segments, handle.index, "length", place - start)
+            mine["gauges"] = copied(before["gauges"])
+            mine["member"]["attachments"] = copied(before["member"]["attachments"])
+            carry(before, mine)
 
     return change
 

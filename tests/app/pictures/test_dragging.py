@@ -102,9 +102,31 @@ def test_nothing_is_dragged_past_what_it_belongs_to(open_bench, pile, qtbot):
     the.document.refused.connect(refused.append)
     drag(qtbot, member, spot(member, 1.2, -45), QPoint(10, -300))
     assert the.document.case.gauges[0].position == 0.0
-    drag(qtbot, member, spot(member, 24.0, 0), spot(member, 2.0, 0))  # the toe stops below its lowest gauge
-    assert the.document.case.member.length == pytest.approx(23.2)
+    surface = the.document.case.ground.surface
+    drag(
+        qtbot, member, spot(member, 24.0, 0), spot(member, 2.0, 0)
+    )  # the toe stops at the ground, below the joint
+    assert the.document.case.member.length == pytest.approx(max(16.0, surface), abs=0.1)
     assert refused == []
+
+
+def test_a_far_end_dragged_up_takes_gauges_along_as_a_typed_length_does(open_bench, pile, qtbot):
+    """They keep their distance from the far end, 0.8 m here, however far the drag went in between; one step of undo."""
+    the = open_bench(pile)
+    member = the.bench.member
+    told = []
+    the.document.told.connect(told.append)
+    start, highest, end = (spot(member, place, 0) for place in (24.0, 19.0, 22.0))  # on the axis as it is now
+    drag(qtbot, member, start, highest, release=False)
+    qtbot.waitUntil(lambda: the.document.case.member.length < 19.5)
+    qtbot.mouseMove(member, end)
+    qtbot.mouseRelease(member, Qt.MouseButton.LeftButton, pos=end)
+    length, toe = the.document.case.member.length, the.document.case.gauges[1].position
+    assert length == pytest.approx(22.0, abs=0.5)
+    assert length - toe == pytest.approx(0.8, abs=1e-9)
+    assert "Moved with the end of the shorter member" in told[-1]
+    the.document.undo_stack.undo()
+    assert the.document.project == pile.project
 
 
 def test_of_several_gauges_that_are_selected_all_go_along(open_bench, pile, qtbot):

@@ -47,14 +47,14 @@ def test_a_gauge_on_a_striker_is_dragged_where_it_is_read():
     case["gauges"] = [{"name": "Rear", "position": 0.1, "on": "striker"}]
     rear = handle(project_from_tree(tree).cases[0], "gauges/0")
     assert (rear.place, rear.low, rear.high) == pytest.approx((-0.3, -0.4, 0.0))
-    change_to(rear, -0.05, 0)(tree)
+    change_to(rear, -0.05, 0, tree["cases"][0])(tree)
     assert case["gauges"][0]["position"] == pytest.approx(0.35)
 
 
 def test_the_foot_of_a_layer_is_dragged_from_the_ground_surface_on(drop):
     """Clay from 2 m to 7 m, its foot dragged to 5 m: 3 m of clay, and the sand still ends at 11 m."""
     tree = valid_tree()
-    change_to(handle(drop, "ground/layers/0"), 5.0, 0)(tree)
+    change_to(handle(drop, "ground/layers/0"), 5.0, 0, tree["cases"][0])(tree)
     clay, sand = tree["cases"][0]["ground"]["layers"]
     assert (clay["thickness"], sand["thickness"]) == pytest.approx((3.0, 6.0))
     lower = handle(drop, "ground/layers/1")
