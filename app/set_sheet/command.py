@@ -40,7 +40,8 @@ class Choices:
 
 
 def write_sheet(path: Path, out: Path, choices: Choices) -> int:
-    """Write `sheet.csv`, `sheet.json` and `sheet.pdf` into `out`; returns the exit status as `solve` does."""
+    """Write `sheet.csv`, `sheet.json` and `sheet.pdf` into `out`, and `depth.csv` where depths were studied; returns the
+    exit status as `solve` does."""
     try:
         project = load_usable(path)
     except ProjectError as error:
@@ -85,9 +86,9 @@ def _solved(
     solver: Solver | None,
 ) -> tuple[Sheet, Answers]:
     plan = settings.plan(case, unit_of(units))
-    shown = not choices.quiet and sys.stderr.isatty()
+    watched = not choices.quiet and sys.stderr.isatty()
     points = len(plan.resistances) * len(plan.levels)
-    sheet = solve_sheet(plan, solver=solver, progress=_progress(points, "points") if shown else None)
+    sheet = solve_sheet(plan, solver=solver, progress=_progress(points, "points") if watched else None)
     level = plan.own_level
     if settings.asked_value is not None:
         level = at_value(level, settings.asked_value)
@@ -102,7 +103,7 @@ def _solved(
             samples=choices.samples,
             seed=settings.seed,
             solver=solver,
-            progress=_progress(choices.samples, "samples") if shown else None,
+            progress=_progress(choices.samples, "samples") if watched else None,
         )
     depths, problem = None, ""
     try:
