@@ -40,8 +40,8 @@ class Choices:
 
 
 def write_sheet(path: Path, out: Path, choices: Choices) -> int:
-    """Write `sheet.csv`, `sheet.json` and `sheet.pdf` into `out`, and `depth.csv` where depths were studied; returns the
-    exit status as `solve` does."""
+    """Write `sheet.csv`, `sheet.json` and `sheet.pdf` into `out`, and `depth.csv` where depths were studied; returns
+    the exit status as `solve` does."""
     try:
         project = load_usable(path)
     except ProjectError as error:
