@@ -140,6 +140,7 @@ class Window(QMainWindow):
         self.set_sheet.saving.told.connect(lambda text, state: self.notices.show_notice("sheet", text, state))
         self.report.told.connect(lambda text, state: self.notices.show_notice("report", text, state))
         self.bench.alone_changed.connect(self._give_room)
+        self.workspaces.currentChanged.connect(lambda _number: self.show_notes())
         self.bench.grid.folding_changed.connect(self._tell_folded)
         self.autosave.failed.connect(lambda text: self.notices.show_notice("autosave", text, "over"))
         self.watch = FileWatch(self.document, self)
@@ -245,16 +246,19 @@ class Window(QMainWindow):
         self.menus.notes.setChecked(
             bool(self.document.project.notes) and self.settings.flag("notes", usual=True)
         )
-        self.show_notes(self.menus.notes.isChecked())
+        self.show_notes()
 
-    def show_notes(self, on: bool) -> None:
-        """The notes wait while the first steps are told: one strip to read is enough."""
-        self.notes.setVisible(on and self.notices.text_of(FIRST_STEPS) is None)
+    def show_notes(self) -> None:
+        """Where they are wanted, and on the Bench, of which they tell. They wait while the first steps are told (one
+        strip to read is enough) and while one panel has all the room."""
+        wanted, on_bench = self.menus.notes.isChecked(), self.workspaces.currentIndex() == 0
+        read = self.notices.text_of(FIRST_STEPS) is None
+        self.notes.setVisible(wanted and on_bench and read and self.bench.grid.alone is None)
 
     def tell_first_steps(self) -> None:
         """How to begin, until it has been read once and closed."""
         self.notices.show_notice(FIRST_STEPS, STEPS)
-        self.show_notes(self.menus.notes.isChecked())
+        self.show_notes()
 
     def offer_first_steps(self) -> None:
         """Tell them to whoever has not closed them yet."""
@@ -264,7 +268,7 @@ class Window(QMainWindow):
     def _dismissed(self, key: str) -> None:
         if key == FIRST_STEPS:
             self.settings.set_flag(FIRST_STEPS, False)
-            self.show_notes(self.menus.notes.isChecked())
+            self.show_notes()
 
     def show_outline(self, on: bool) -> None:
         self.settings.set_flag("outline", on)
@@ -273,7 +277,7 @@ class Window(QMainWindow):
     def _give_room(self, alone: bool) -> None:
         """One panel of the Bench has all the room, or gives it back."""
         self.outline.setVisible(not alone and self.menus.outline.isChecked())
-        self.notes.setVisible(not alone and self.menus.notes.isChecked())
+        self.show_notes()
 
     def _tell_folded(self) -> None:
         for (upright, index), action in self.menus.panels.items():

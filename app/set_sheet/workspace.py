@@ -74,8 +74,8 @@ class SetSheet(QWidget):
         kept.setRetainSizeWhenHidden(True)  # the picture must not jump when it goes
         self.progress.setSizePolicy(kept)
         self.stop = QPushButton("Stop")
-        self.print_page = QPushButton("Page for the rig …")
-        self.export = QPushButton("Table …")
+        self.print_page = QPushButton("Page for the rig…")
+        self.export = QPushButton("Table…")
         self.saving = Saving(document, self.solution, self.by_depth, self)
         self._compose()
         self.chart.pointed.connect(self._point)

@@ -143,13 +143,17 @@ def test_first_steps_are_told_until_they_are_closed_and_never_above_the_notes(op
     window = open_window()
     window.document.edit("Notes", "/notes", "A note.")
     window.menus.notes.setChecked(True)
-    window.show_notes(True)
+    window.show_notes()
     assert window.notes.isVisible()
     window.offer_first_steps()
     assert window.notices.text_of(FIRST_STEPS)
     assert not window.notes.isVisible()
     strip = window.notices._strips[FIRST_STEPS]
     next(b for b in strip.findChildren(QAbstractButton) if b.accessibleName() == "Close this message").click()
+    assert window.notes.isVisible()
+    window.workspaces.show_number(1)
+    assert not window.notes.isVisible()
+    window.workspaces.show_number(0)
     assert window.notes.isVisible()
     window.offer_first_steps()
     assert window.notices.text_of(FIRST_STEPS) is None
