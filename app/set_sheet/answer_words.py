@@ -18,9 +18,9 @@ from app.set_sheet.words import (
 from app.units import Units, rounded
 from app.words import percent
 from solver.studies import Cell, Sheet
+from solver.studies.largest_blow import LargestBlow
 from solver.studies.plan import at_value
 from solver.studies.questions import ShownResistance
-from solver.studies.safe_blow import SafeBlow
 from solver.studies.uncertainty import Bands, Sampled
 
 
@@ -36,8 +36,8 @@ def told_of(answers: Answers, sheet: Sheet, units: Units) -> Told:
     if answers.stop_at is None:
         return Told("")
     beside = [beside_criterion(answers.stop_at, units), on_the_way(sheet, answers.stop_at, units)]
-    if answers.safe is not None:
-        beside.append(safe_words(answers.safe, answers.stop_at, units))
+    if answers.largest is not None:
+        beside.append(largest_words(answers.largest, answers.stop_at, units))
     further = [shown_words(answers.shown, units)] if answers.shown is not None else []
     if answers.sampled is not None:
         further.append(sampled_words(answers.sampled, units))
@@ -49,7 +49,7 @@ def told_of(answers: Answers, sheet: Sheet, units: Units) -> Told:
     return Told(criterion(answers.stop_at, units), tuple(words for words in beside if words), tuple(further))
 
 
-def safe_words(answer: SafeBlow, cell: Cell, units: Units) -> str:
+def largest_words(answer: LargestBlow, cell: Cell, units: Units) -> str:
     """Which blow keeps every stress inside its limit?"""
     what, at = varied_text(cell.level), force_text(answer.resistance, units)
     if answer.why == "no limit":
@@ -74,7 +74,7 @@ def safe_words(answer: SafeBlow, cell: Cell, units: Units) -> str:
     )
 
 
-def _stop_with_it(answer: SafeBlow, asked: Cell, units: Units) -> str:
+def _stop_with_it(answer: LargestBlow, asked: Cell, units: Units) -> str:
     """Where the blow that was asked about is too hard: what set to stop at with the largest admissible one."""
     if not asked.over or answer.cell is None or answer.cell.set is None or not answer.cell.moves:
         return ""

@@ -11,7 +11,7 @@ from PySide6.QtWidgets import QComboBox, QHBoxLayout, QLabel, QPushButton, QScro
 from app.document import Document
 from app.look.fonts import widened
 from app.look.spacing import GAP, SPACE, WIDE
-from app.set_sheet.answer_words import safe_words, sampled_words, shown_words
+from app.set_sheet.answer_words import largest_words, sampled_words, shown_words
 from app.set_sheet.depth_choices import DepthChoices
 from app.set_sheet.fields import NumbersField
 from app.set_sheet.numbers_to_vary import numbers_to_vary
@@ -49,7 +49,9 @@ class Choices(QScrollArea):
         self.per = _list("What blows are counted for", [(p, f"Blows per {p}") for p in PER])
         self.resistance = NumbersField("Resistance to reach", "Empty = that of the case.")
         self.value = NumbersField("with", "The blow to drive with; empty = that of the case.")
-        self.safe, self.stop_at, self.beside, self.shown, self.samples_told = (_sentence() for _ in range(5))
+        self.largest, self.stop_at, self.beside, self.shown, self.samples_told = (
+            _sentence() for _ in range(5)
+        )
         self.stop_at.setProperty("role", "strong")
         self.measured = NumbersField("Measured set", "Mean set of the last blows, measured on site.")
         self.error = NumbersField("± reading error", "How far the mean set may be off.")
@@ -74,7 +76,7 @@ class Choices(QScrollArea):
         run.addWidget(self.work_out)
         for title, parts in (
             ("What is varied", (self.lowest, self.highest, self.vary, self.pointer, self.values, self.per)),
-            ("What set to stop at", (self.resistance, self.value, self.stop_at, self.beside, self.safe)),
+            ("What set to stop at", (self.resistance, self.value, self.stop_at, self.beside, self.largest)),
             ("What a measured set shows", (self.measured, self.error, self.shown)),
             ("Down to depth", (self.to_depth,)),
             ("What is not known", (self.ranges, run, self.samples_told)),
@@ -190,10 +192,10 @@ class Choices(QScrollArea):
         asking = solution.state in ("solving", "answering")
         _say(self.stop_at, criterion(answers.stop_at, units) if answers.stop_at else "…" if asking else "")
         _say(self.beside, beside_criterion(answers.stop_at, units) if answers.stop_at else "")
-        safe = ""
-        if answers.safe is not None and answers.stop_at is not None:
-            safe = safe_words(answers.safe, answers.stop_at, units)
-        _say(self.safe, safe or ("…" if asking else ""))
+        largest = ""
+        if answers.largest is not None and answers.stop_at is not None:
+            largest = largest_words(answers.largest, answers.stop_at, units)
+        _say(self.largest, largest or ("…" if asking else ""))
         asked = solution.settings.measured_set is not None
         shown = shown_words(answers.shown, units) if answers.shown else "…" if asking and asked else ""
         _say(self.shown, shown)

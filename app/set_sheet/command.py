@@ -20,9 +20,9 @@ from app.usable_project import load_usable
 from solver import Case, Project, ProjectError, SolveError
 from solver.studies import Sheet, StudyError, solve_sheet
 from solver.studies.cluster import on_cluster
+from solver.studies.largest_blow import largest_blow
 from solver.studies.plan import at_value
 from solver.studies.questions import point, shown_by
-from solver.studies.safe_blow import safe_blow
 from solver.studies.settings import DepthSettings, SheetSettings, depth_settings_of, settings_of
 from solver.studies.sheet import Solver
 from solver.studies.uncertainty import refuse_number_of_samples, sampled
@@ -93,7 +93,7 @@ def _solved(
     if settings.asked_value is not None:
         level = at_value(level, settings.asked_value)
     resistance = settings.asked_resistance or plan.own_total
-    stop_at, safe = point(plan, resistance, level), safe_blow(plan, resistance, solver=solver)
+    stop_at, largest = point(plan, resistance, level), largest_blow(plan, resistance, solver=solver)
     found = None
     if choices.samples is not None:
         found = sampled(
@@ -113,7 +113,7 @@ def _solved(
     shown = None
     if settings.measured_set is not None:
         shown = shown_by(plan, level, settings.measured_set, settings.reading_error)
-    return sheet, Answers(stop_at, safe, found, depths, problem, shown)
+    return sheet, Answers(stop_at, largest, found, depths, problem, shown)
 
 
 def _write(project: Project, sheet: Sheet, answers: Answers, settings: SheetSettings, out: Path) -> list[str]:

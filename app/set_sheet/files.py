@@ -14,8 +14,8 @@ from app.words import LIMIT_CAUTION, MODEL_CAUTION
 from solver.answer.findings import StressFinding
 from solver.studies import Cell, Sheet
 from solver.studies.depth import Depths
+from solver.studies.largest_blow import LargestBlow
 from solver.studies.questions import ShownResistance
-from solver.studies.safe_blow import SafeBlow
 from solver.studies.uncertainty import Bands, Sampled
 
 HEAD = (
@@ -90,7 +90,7 @@ class Answers:
     of depths, or why there is none, and what a measured set shows."""
 
     stop_at: Cell | None = None
-    safe: SafeBlow | None = None
+    largest: LargestBlow | None = None
     sampled: Sampled | None = None
     depths: Depths | None = None
     no_depths: str = ""
@@ -99,7 +99,7 @@ class Answers:
 
 def sheet_json(sheet: Sheet, title: str, answers: Answers, criterion: str) -> str:
     """All of it for other programs: the plan, the points, and the answers."""
-    plan, safe = sheet.plan, answers.safe
+    plan, largest = sheet.plan, answers.largest
     tree: dict[str, Any] = {
         "program": f"Striketrace {__version__}",
         "project": title,
@@ -114,18 +114,20 @@ def sheet_json(sheet: Sheet, title: str, answers: Answers, criterion: str) -> st
         "stopping_criterion": criterion,
         "stop_at": None if answers.stop_at is None else _point(answers.stop_at),
     }
-    if safe is not None:
+    if largest is not None:
         tree["largest_blow"] = {
-            "resistance_N": safe.resistance,
-            "outcome": safe.why,
-            "value": safe.level.value if safe.level and safe.why == "found" else None,
-            "looked_from": safe.low,
-            "looked_to": safe.high,
-            "steps_looked_at": safe.steps,
-            "admissible_from": safe.at_least if safe.level else None,
-            "smaller_values_pass_a_limit": safe.smaller_pass or "none",
-            "passed_above_only_after_the_ram_struck_again": safe.passed.again_only if safe.passed else None,
-            "tolerance": safe.tolerance,
+            "resistance_N": largest.resistance,
+            "outcome": largest.why,
+            "value": largest.level.value if largest.level and largest.why == "found" else None,
+            "looked_from": largest.low,
+            "looked_to": largest.high,
+            "steps_looked_at": largest.steps,
+            "admissible_from": largest.at_least if largest.level else None,
+            "smaller_values_pass_a_limit": largest.smaller_pass or "none",
+            "passed_above_only_after_the_ram_struck_again": largest.passed.again_only
+            if largest.passed
+            else None,
+            "tolerance": largest.tolerance,
         }
     if answers.shown is not None:
         tree["measured_set"] = _shown(answers.shown)

@@ -42,7 +42,7 @@ class Saving(QObject):
         sheet, units = self._solution.sheet, units_of(self._document.project)
         assert sheet is not None
         found, sampled, depths = self._solution.answers, self._solution.sampled, self._depth.fresh
-        answers = Answers(found.stop_at, found.safe, sampled, depths, self._depth.problem, found.shown)
+        answers = Answers(found.stop_at, found.largest, sampled, depths, self._depth.problem, found.shown)
         title, per = self._document.project.title, self._solution.settings.per
         return page_pdf(Page(sheet, title, units, told_of(answers, sheet, units), per, sampled, depths))
 

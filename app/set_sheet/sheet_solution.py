@@ -15,9 +15,9 @@ from app.set_sheet.words import told_in, unit_of
 from app.units import units_of
 from solver import Case
 from solver.studies import Cell, Level, Plan, Sheet, StudyError, cells_of
+from solver.studies.largest_blow import LargestBlow, largest_blow
 from solver.studies.plan import at_value
 from solver.studies.questions import Cancelled, ShownResistance, point, shown_by
-from solver.studies.safe_blow import SafeBlow, safe_blow
 from solver.studies.settings import SheetSettings, settings_of
 from solver.studies.uncertainty import FEWEST, Sampled, sampled
 
@@ -34,9 +34,9 @@ SHOWN_EVERY = 80
 
 @dataclass(frozen=True)
 class Answers:
-    """To the questions of the settings: the safe blow, the point that shows the resistance, what a set shows."""
+    """To the questions of the settings: the largest blow, the point that shows the resistance, what a set shows."""
 
-    safe: SafeBlow | None = None
+    largest: LargestBlow | None = None
     stop_at: Cell | None = None
     shown: ShownResistance | None = None
 
@@ -302,10 +302,10 @@ def _answers(plan: Plan, settings: SheetSettings, cancel: Cancel) -> Iterator[An
     try:
         stop_at = point(plan, resistance, level, cancel)
         yield Answers(None, stop_at)
-        safe = safe_blow(plan, resistance, cancel=cancel, workers=WORKERS)
-        yield Answers(safe, stop_at)
+        largest = largest_blow(plan, resistance, cancel=cancel, workers=WORKERS)
+        yield Answers(largest, stop_at)
         if settings.measured_set is not None:
             shown = shown_by(plan, level, settings.measured_set, settings.reading_error, cancel=cancel)
-            yield Answers(safe, stop_at, shown)
+            yield Answers(largest, stop_at, shown)
     except Cancelled:
         return

@@ -59,7 +59,7 @@ def test_fills_and_answers_by_itself(shown: SetSheet) -> None:
     assert shown.solution.sheet.complete
     assert shown.state.text() == "✓ up to date"
     assert shown.choices.stop_at.text().startswith("Stop when the mean set of the last 10 blows is")
-    assert shown.choices.safe.text().startswith("Up to a drop height of")
+    assert shown.choices.largest.text().startswith("Up to a drop height of")
     assert "drop height" in shown.choices.value.label.text()
 
 

@@ -6,9 +6,9 @@ import pytest
 
 from solver import load_project, solve
 from solver.studies import plan_of, with_value
+from solver.studies.largest_blow import largest_blow
 from solver.studies.plan import at_value
 from solver.studies.questions import point, shown_by
-from solver.studies.safe_blow import safe_blow
 from tests.studies.piles import pile
 
 DEMO = Path(__file__).resolve().parents[2] / "demo_projects" / "02-concrete-pile-in-soft-ground.strike"
@@ -16,7 +16,7 @@ DEMO = Path(__file__).resolve().parents[2] / "demo_projects" / "02-concrete-pile
 
 def test_largest_drop_put_back_reaches_the_limit_and_does_not_pass_it() -> None:
     plan = plan_of(pile(limit=200e6, elements=40), count=4)
-    answer = safe_blow(plan, 1.0e6)
+    answer = largest_blow(plan, 1.0e6)
     assert answer.why == "found"
     assert answer.level is not None
     again = point(plan, 1.0e6, answer.level)
@@ -33,7 +33,7 @@ def test_largest_drop_put_back_reaches_the_limit_and_does_not_pass_it() -> None:
 )
 def test_no_answer_is_said_as_such(limit: float | None, why: str) -> None:
     plan = plan_of(pile(limit=limit, elements=20), count=3)
-    answer = safe_blow(plan, 0.8e6)
+    answer = largest_blow(plan, 0.8e6)
     assert answer.why == why
     assert (answer.level is None) == (why in ("none within", "no limit"))
 
@@ -48,7 +48,7 @@ def test_smaller_blows_that_pass_a_limit_on_a_ringing_pile_do_not_hide_the_large
     others = [weaker if m.name == concrete.name else m for m in project.materials]
     case = with_value(project.cases[0].with_materials(others), "load/drop_height", 0.5)
     plan = plan_of(case)
-    answer = safe_blow(plan, plan.own_total)
+    answer = largest_blow(plan, plan.own_total)
     assert answer.why == "found"
     assert answer.smaller_pass == "later"
     assert answer.level is not None
@@ -64,7 +64,7 @@ def test_smaller_blows_that_pass_a_limit_on_a_ringing_pile_do_not_hide_the_large
 def test_when_the_case_itself_passes_a_limit_the_nearest_blow_is_told() -> None:
     plan = plan_of(pile(limit=200e6, elements=20, height=3.0), count=3)
     assert point(plan, 1.0e6, plan.own_level).over
-    answer = safe_blow(plan, 1.0e6)
+    answer = largest_blow(plan, 1.0e6)
     assert answer.level is not None
     assert answer.level.value < 3.0
     assert point(plan, 1.0e6, answer.level).share == pytest.approx(1, abs=2 * answer.tolerance)
@@ -72,7 +72,7 @@ def test_when_the_case_itself_passes_a_limit_the_nearest_blow_is_told() -> None:
 
 def test_value_that_the_model_does_not_take_is_left_out() -> None:
     plan = plan_of(pile(elements=20), count=3, pointer="load/cushion/restitution", values=[0.5, 0.8])
-    answer = safe_blow(plan, 0.8e6)
+    answer = largest_blow(plan, 0.8e6)
     assert answer.high <= 1
     assert answer.why in ("found", "all within")
 

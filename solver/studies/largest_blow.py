@@ -27,7 +27,7 @@ Why = Literal["found", "all within", "none within", "no limit"]
 
 
 @dataclass(frozen=True)
-class SafeBlow:
+class LargestBlow:
     """The largest value of the plan's number that keeps every stress within its limit at `resistance` (N).
 
     `why` "found": `level` is it, within `tolerance` of its value, and `cell` what it gives; "all within": no step above
@@ -50,17 +50,17 @@ class SafeBlow:
     tolerance: float = TOLERANCE
 
 
-def safe_blow(
+def largest_blow(
     plan: Plan,
     resistance: float,
     *,
     cancel: Cancel = None,
     workers: int | None = None,
     solver: Solver | None = None,
-) -> SafeBlow:
+) -> LargestBlow:
     """The admissible blows around the case's own, or nearest to it. Raises `SolveError`, `StudyError`, `Cancelled`."""
     steps = _steps(plan, resistance, cancel, workers, solver)
-    answer = SafeBlow(
+    answer = LargestBlow(
         resistance, "no limit", None, None, steps[0].level.value, steps[-1].level.value, len(steps)
     )
     if all(cell.share is None for cell in steps):
