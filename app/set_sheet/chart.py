@@ -11,6 +11,7 @@ from itertools import pairwise
 import numpy as np
 from numpy.typing import NDArray
 
+from app.names import with_kind
 from app.set_sheet.frame import Frame, case_limits, frame_of, numbers_below, panel, resistance_axis
 from app.set_sheet.labels import label_lines
 from app.set_sheet.scales import Scale, root_ticks, ticks
@@ -143,7 +144,11 @@ def _energy_axis(scene: Scene, frame: Frame, sheet: Sheet, units: Units) -> None
     gauge = next((c.energy.gauge for c in sheet.cells if c.energy), None)
     panel(scene, rows, scale, ("Energy",), (units.unit("energy"),), letters)
     if sheet.cells:
-        words = (f"past gauge {gauge}", f"past {gauge}") if gauge else ("no gauge on the member", "no gauge")
+        words = (
+            (f"past {with_kind('gauge', gauge)}", f"past {gauge}")
+            if gauge
+            else ("no gauge on the member", "no gauge")
+        )
         text = fitted(words, scale.stop - scale.start + 10, letters)
         scene.append(Words((scale.start, rows.first), text, "soft_ink"))
     numbers_below(scene, rows, scale, ticks(scale.low / one, scale.high / one, 4), one, letters)

@@ -12,11 +12,16 @@ from solver.model.load import Drop
 from solver.model.surroundings import Resistance
 from solver.studies import Sheet, resistance_of
 
+#: Materials, and parts of the ground with their quakes and dampings, that are told one by one.
+NAMED = 8
+
 
 def member_words(case: Case, units: Units) -> str:
     """Member, ram and drop in one or two lines."""
     segments = case.member.segments
-    materials = ", ".join(dict.fromkeys(s.material for s in segments))
+    used = list(dict.fromkeys(s.material for s in segments))
+    more = f" and {len(used) - NAMED} more materials" if len(used) > NAMED else ""
+    materials = ", ".join(used[:NAMED]) + more
     count = "" if len(segments) == 1 else f" of {len(segments)} segments"
     parts = [f"Member: {units.show(case.member.length, 'length')}{count}, {materials}."]
     load = case.load
@@ -52,25 +57,7 @@ def assumed(sheet: Sheet, units: Units) -> list[str]:
         "all else is as in the case.",
         f"Each point is {blows}, solved until the member is at rest; the set is the permanent movement of the toe.",
     ]
-    load = case.load
-    if isinstance(load, Drop) and load.cushion is not None:
-        stiffness = units.show(load.cushion.loading_stiffness, "stiffness")
-        found.append(
-            f"Cushion {stiffness}, coefficient of restitution {load.cushion.restitution:g}; cap "
-            f"{units.show(load.cap_mass, 'mass')}."
-        )
-    ground = case.ground
-    if ground is not None:
-        parts: list[tuple[str, Resistance]] = [(layer.name, layer) for layer in ground.layers]
-        parts += [("shaft", ground.shaft_total)] if ground.shaft_total else []
-        parts += [("toe", ground.toe)] if ground.toe else []
-        words = [
-            f"{name} {units.show(part.quake, 'small_length')} and {units.show(part.damping, 'smith_damping')}"
-            for name, part in parts
-            if part.quake is not None and part.damping is not None
-        ]
-        if words:
-            found.append(f"Quake and damping factor: {'; '.join(words)}.")
+    found += [*_cushions(case, units), *_quakes(case, units)]
     unsettled = [c for c in sheet.cells if c.set is not None and not c.at_rest]
     if unsettled:
         found.append(
@@ -80,6 +67,47 @@ def assumed(sheet: Sheet, units: Units) -> list[str]:
     if failed:
         found.append(f"{len(failed)} points could not be solved: {failed[0].problem}")
     return found
+
+
+def _cushions(case: Case, units: Units) -> list[str]:
+    load = case.load
+    if not isinstance(load, Drop):
+        return []
+    both = [("Cushion", load.cushion), ("pile cushion", load.pile_cushion)]
+    words = [
+        f"{name} {units.show(one.loading_stiffness, 'stiffness')}, coefficient of restitution {one.restitution:g}"
+        for name, one in both
+        if one is not None
+    ]
+    cap = [f"cap {units.show(load.cap_mass, 'mass')}"] if load.cap_mass else []
+    told = "; ".join([*words, *cap])
+    return [f"{told[0].upper()}{told[1:]}."] if told else []
+
+
+def _quakes(case: Case, units: Units) -> list[str]:
+    """Each part by its name; of many only from where to where."""
+    ground = case.ground
+    if ground is None:
+        return []
+    parts: list[tuple[str, Resistance]] = [(layer.name, layer) for layer in ground.layers]
+    parts += [("shaft", ground.shaft_total)] if ground.shaft_total else []
+    parts += [("toe", ground.toe)] if ground.toe else []
+    told = [(name, one.quake, one.damping) for name, one in parts]
+    known = [
+        (name, quake, damping) for name, quake, damping in told if quake is not None and damping is not None
+    ]
+    if len(known) > NAMED:
+        quakes, dampings = [quake for _, quake, _ in known], [damping for _, _, damping in known]
+        spans = [
+            f"{units.show(min(values), dimension)} to {units.show(max(values), dimension)}"
+            for values, dimension in ((quakes, "small_length"), (dampings, "smith_damping"))
+        ]
+        return [f"Quake and damping factor of {len(known)} layers and toe: {spans[0]} and {spans[1]}."]
+    words = [
+        f"{name} {units.show(quake, 'small_length')} and {units.show(damping, 'smith_damping')}"
+        for name, quake, damping in known
+    ]
+    return [f"Quake and damping factor: {'; '.join(words)}."] if words else []
 
 
 def cautions(sheet: Sheet, units: Units) -> list[str]:

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from bisect import bisect
 from collections.abc import Callable, Sequence
 
 from reportlab.lib.utils import simpleSplit
@@ -15,6 +16,8 @@ from app.set_sheet.scene import Area, Letters, Level, Line, Mark, Scene, Words, 
 
 #: Of the page on all sides, in points.
 MARGIN = 42.0
+#: Lines that one text may take.
+MOST = 8
 SIZES: dict[Level, tuple[str, float]] = {
     "small": (REGULAR, 7.2),
     "body": (REGULAR, 8.5),
@@ -43,15 +46,15 @@ class Writer:
     def text(self, words: str, face: str, size: float, indent: float = 0.0) -> None:
         self.canvas.setFillColor(PRINT.ink)
         self.canvas.setFont(face, size)
-        for line in simpleSplit(printable(words, face == BOLD), face, size, self.room - indent):
+        for line in lines_of(words, face, size, self.room - indent):
             self.y -= size * 1.25
             self.canvas.drawString(MARGIN + indent, self.y, line)
 
     def box(self, first: str, others: tuple[str, ...]) -> None:
         """The sentence that the page is for."""
         inner = self.room - 16
-        large = simpleSplit(printable(first, True), BOLD, 12, inner)
-        small = [line for words in others for line in simpleSplit(printable(words), REGULAR, 9, inner)]
+        large = lines_of(first, BOLD, 12, inner)
+        small = [line for words in others for line in lines_of(words, REGULAR, 9, inner)]
         height = 12 + 15 * len(large) + 12 * len(small)
         self.y -= 8
         self.canvas.setStrokeColor(PRINT.ink)
@@ -81,10 +84,7 @@ class Writer:
         """A table; `widths` are shares, all alike where there are none."""
         shares = widths or [1.0] * len(head)
         starts = [MARGIN + self.room * sum(shares[:i]) / sum(shares) for i in range(len(shares) + 1)]
-        heads = [
-            simpleSplit(printable(words, True), BOLD, 7.2, starts[i + 1] - starts[i] - 6)
-            for i, words in enumerate(head)
-        ]
+        heads = [lines_of(words, BOLD, 7.2, starts[i + 1] - starts[i] - 6) for i, words in enumerate(head)]
         top = self.y
         for i, lines in enumerate(heads):
             self.canvas.setFont(BOLD, 7.2)
@@ -109,6 +109,19 @@ class Writer:
             before = self.y
             self.text(sentence, REGULAR, 7.4, indent=9)
             self.canvas.drawString(MARGIN, before - 7.4 * 1.25, "·")
+
+
+def lines_of(words: str, face: str, size: float, room: float) -> list[str]:
+    """The words in lines of `room` points; a word that is wider is broken, and what is more than MOST lines is left
+    off with an ellipsis: names may have any length, and the page is one."""
+    lines = []
+    for line in simpleSplit(printable(words, face == BOLD), face, size, room):
+        while stringWidth(line, face, size) > room and len(line) > 1:
+            fits = bisect(range(1, len(line)), room, key=lambda n: stringWidth(line[:n], face, size))
+            lines.append(line[: max(fits, 1)])
+            line = line[max(fits, 1) :]
+        lines.append(line)
+    return lines if len(lines) <= MOST else [*lines[: MOST - 1], f"{lines[MOST - 1][:-1]}…"]
 
 
 def _letters(scale: float) -> Letters:

@@ -8,8 +8,14 @@ import pypdfium2
 import pytest
 
 from app.command_line import main
+from app.set_sheet.answer_words import told_of
+from app.set_sheet.files import Answers
+from app.set_sheet.page_words import assumed
+from app.set_sheet.printed import Page, page_pdf
 from app.set_sheet.rig_table import sets_to_read, shown_at
+from app.units import Units
 from solver import project_to_text
+from solver.model.load import Drop
 from solver.model.project import Project
 from solver.studies import plan_of, solve_sheet
 from solver.studies.settings import DepthSettings, SheetSettings
@@ -89,6 +95,46 @@ def test_page_csv_and_json_tell_of_depth(written: Path) -> None:
     for words in ("Down to depth: Pile", "Below the ground surface, m", "Blows so far", "Driving time"):
         assert words in text, words
     assert ("refuses from" in text) == (alone.first_refusal is not None)
+
+
+def test_long_names_and_many_layers_stay_on_the_page() -> None:
+    """A name of 290 letters without a blank, and 200 layers: every letter lies within the margins, 42 points left and
+    right, and nothing but the foot (at 24 points) below 36."""
+    layers = [
+        {
+            "name": f"Layer {i}",
+            "thickness": 0.05,
+            "unit_resistance": 20e3,
+            "quake": 0.002 + 1e-5 * i,
+            "damping": 0.2 + 1e-3 * i,
+        }
+        for i in range(200)
+    ]
+    case = pile(elements=24, layers=layers).model_copy(update={"name": "P" * 290})
+    sheet = solve_sheet(plan_of(case))
+    units = Units()
+    pdf = page_pdf(Page(sheet, "Title" * 60, units, told_of(Answers(), sheet, units)))
+    page = pypdfium2.PdfDocument(pdf)[0]
+    text = page.get_textpage()
+    boxes = [text.get_charbox(i) for i in range(text.count_chars()) if text.get_text_range(i, 1).strip()]
+    assert min(left for left, *_ in boxes) > 40
+    assert max(right for _, _, right, _ in boxes) < page.get_width() - 40
+    assert all(bottom > 36 or 18 < bottom < 30 for _, bottom, _, _ in boxes)
+    words = " ".join(text.get_text_bounded().split())
+    assert words.count("P") >= 290
+    assert "Quake and damping factor of 201 layers and toe: 2.00" in words.replace("\xa0", " ")
+
+
+def test_a_pile_cushion_stands_among_what_is_assumed() -> None:
+    case = pile(elements=24)
+    assert isinstance(case.load, Drop)
+    assert case.load.cushion is not None
+    soft = case.load.cushion.model_copy(update={"stiffness": 2e8, "restitution": 0.45})
+    load = case.load.model_copy(update={"pile_cushion": soft, "cap_mass": 500.0})
+    case = case.model_copy(update={"load": load})
+    words = " ".join(assumed(solve_sheet(plan_of(case)), Units())).replace("\xa0", " ")
+    assert "Cushion 400 kN/mm, coefficient of restitution 0.8; pile cushion 200 kN/mm" in words
+    assert "restitution 0.45; cap 0.500 t" in words
 
 
 def test_the_same_input_gives_the_same_bytes(tmp_path: Path) -> None:
