@@ -15,13 +15,31 @@ ROUNDING = 1e-9
 
 @part_of_step
 def force_between(bounds, j, push, u, w, dt):
-    """Force that presses the faces of joint `j` in this step, and that of the coming half step."""
-    a, before = bounds.joints[j], bounds.joint_force[j]
+    """Force that presses the faces of joint `j` in this step, that of the coming half step, and the gap at which they
+    were stopped, m (of a splice that is pulled: beyond its slack).
+
+    Faces that would meet within this step are stopped at its begin, less than a step's way apart. Stopped in the middle
+    of a step they would send out two fronts a step apart, and part between their returns: one element would be pulled
+    by up to half of the front.
+    """
+    a, before, slack = bounds.joints[j], bounds.joint_force[j], bounds.joint_par[j, 1]
     yielding = push[a] + push[a + 1]
-    gap = u[a + 1] - u[a] + bounds.joint_par[j, 0] + dt * (w[a + 1] - w[a] + 0.5 * yielding * before)
-    over = gap if gap < 0.0 else max(gap - bounds.joint_par[j, 1], 0.0)
+    now = u[a + 1] - u[a] + bounds.joint_par[j, 0]
+    way = dt * (w[a + 1] - w[a] + 0.5 * yielding * before)
+    stopped = bounds.joint_par[j, 2]
+    over = now + way - stopped
+    if before == 0.0:
+        over, stopped, least = 0.0, 0.0, ROUNDING * abs(way)
+        if now + way < -least:
+            stopped = max(now, 0.0)
+            over = now + way - stopped
+        elif now + way - slack > least:
+            stopped = min(now - slack, 0.0)
+            over = now + way - slack - stopped
+    elif over > 0.0:
+        over = max(over - slack, 0.0)
     ahead = -2.0 * over / (dt * yielding)
-    return 0.5 * (before + ahead), ahead
+    return 0.5 * (before + ahead), ahead, stopped
 
 
 @part_of_step
@@ -101,7 +119,7 @@ def touch_ahead(bounds, push, u, v, w, dt, step):
     for k in range(len(bounds.faces)):
         j = bounds.faces[k]
         a = bounds.joints[j]
-        force, _ = force_between(bounds, j, push, u, w, dt)
+        force, _, _ = force_between(bounds, j, push, u, w, dt)
         w[a] -= push[a] * force
         w[a + 1] += push[a + 1] * force
         bounds.joint_trial[j] = force
@@ -118,7 +136,7 @@ def joints(bounds, push, u, v, w, dt, note, step):
         w[a] += push[a] * trial
         w[a + 1] -= push[a + 1] * trial
         bounds.joint_trial[j] = 0.0
-        force, ahead = force_between(bounds, j, push, u, w, dt)
+        force, ahead, bounds.joint_par[j, 2] = force_between(bounds, j, push, u, w, dt)
         rel = v[a] - v[a + 1]
         w[a] -= push[a] * force
         w[a + 1] += push[a + 1] * force
@@ -133,11 +151,21 @@ def joints(bounds, push, u, v, w, dt, note, step):
 
 @part_of_step
 def wall(bounds, push, u, v, w, dt, note, step):
-    """The same at a rigid wall; `wall` holds its gap and the force of the last half step."""
+    """The same at a rigid wall; `wall` holds its place, the force of the last half step, and where the end was stopped.
+
+    An end that would meet it within this step is stopped at the step's begin, less than a step's way before the wall.
+    Stopped in the middle of a step it would send out two fronts a step apart, and part from the wall between
+    their returns: one element would be pulled by up to half of the front.
+    """
     last = len(u) - 1
     before = bounds.wall[1]
-    over = max(u[last] + dt * (w[last] - 0.5 * push[last] * before) - bounds.wall[0], 0.0)
-    ahead = 2.0 * over / (dt * push[last])
+    ahead_of_it = u[last] + dt * (w[last] - 0.5 * push[last] * before)
+    over = ahead_of_it - bounds.wall[2]
+    if before == 0.0:
+        reaches = ahead_of_it - bounds.wall[0] > ROUNDING * abs(dt * w[last])
+        bounds.wall[2] = min(u[last], bounds.wall[0])
+        over = ahead_of_it - bounds.wall[2] if reaches else 0.0
+    ahead = 2.0 * max(over, 0.0) / (dt * push[last])
     force = 0.5 * (before + ahead)
     w[last] -= push[last] * force
     bounds.wall[1] = ahead

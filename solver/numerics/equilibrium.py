@@ -85,7 +85,7 @@ def bring_to_rest(chain: Chain, state: State) -> None:
     motion.u[:] = u
     motion.rest[:] = u
     # the gap is the distance to the wall at rest, before the blow
-    state.bounds.wall[0] += u[-1]
+    state.bounds.wall[::2] += u[-1]
     # a free fall has half a step to go before its first half-step velocity
     motion.v[: chain.head][motion.v[: chain.head] != 0] -= chain.gravity * chain.dt / 2
     s, r = state.shaft, soil.force_and_slope(u)[0]

@@ -317,7 +317,9 @@ def test_a_member_that_sags_keeps_its_distance_to_the_wall(law: str) -> None:
     )
     gauge = result.gauges["end"]
     assert np.abs(gauge.velocity[gauge.time < 0.0019]).max() < 1e-9
-    assert gauge.displacement.max() == pytest.approx(1e-4, rel=1e-6)
+    # the end is stopped at the begin of the step in which it would reach the wall
+    way = gauge.velocity.max() * result.time_step
+    assert 1e-4 - way < gauge.displacement.max() <= 1e-4 * (1 + 1e-6)
     assert result.ledger.final["impact_loss"] > -1e-9
 
 
