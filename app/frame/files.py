@@ -100,7 +100,7 @@ class Files:
         for number, kept in enumerate([one for one in found if not _is_saved(one)][:3]):
             name = f"'{kept.path.name}'" if kept.path else f"the project '{kept.project.title}'"
             saved = f" (the file was saved {_when(kept.saved)})" if kept.saved else ""
-            text = f"Unsaved work on {name} from {_when(kept.kept)}{saved}. {_against_file(kept)}"
+            text = f"Unsaved work on {name}, kept {_when(kept.kept)}{saved}. {_against_file(kept)}"
             choices: list[tuple[str, Callable[[], object]]] = [
                 ("Go on with it", partial(self.recover, kept)),
                 ("Discard it", partial(discard, kept)),

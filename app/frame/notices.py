@@ -24,6 +24,8 @@ from app.look.spacing import GAP, ICON, SPACE
 Kind = Literal["tell", "near", "over"]
 #: A choice offered: its words and what it does. The strip goes when one is taken.
 Choice = tuple[str, Callable[[], object]]
+#: Keys of strips that tell which file was written.
+WRITTEN = frozenset({"sheet", "report", "records"})
 
 
 class Notices(QWidget):
@@ -48,6 +50,10 @@ class Notices(QWidget):
             if old.property("text") == text:
                 return
             self.drop(key)
+        if key in WRITTEN and kind == "tell":  # only the last file that was written is news
+            for other in WRITTEN & self._shown.keys():
+                if self._shown[other][1] == "tell":
+                    self.drop(other)
         self._shown[key] = text, kind, choices
         strip = self._strip(key, text, kind, choices)
         strip.setProperty("text", text)

@@ -74,7 +74,9 @@ def test_unsaved_work_is_kept_within_3_s_and_offered_at_the_next_start(windows, 
 
     second = windows()
     second.files.offer_recovery(found)
-    assert "It was never saved." in second.notices.text_of("recovery0")
+    text = second.notices.text_of("recovery0")
+    assert "Unsaved work on the project 'Kept at the last moment', kept at " in text
+    assert "It was never saved." in text
     press(second, "Go on with it")
     assert second.document.case.load.velocity == 12.5
     assert second.document.dirty
@@ -151,3 +153,14 @@ def test_a_project_dropped_on_the_window_is_opened(window, tmp_path):
     everything = Qt.DropAction.CopyAction, data, Qt.MouseButton.LeftButton, Qt.KeyboardModifier.NoModifier
     window.dropEvent(QDropEvent(QPointF(200, 200), *everything))
     assert window.document.path == path
+
+
+def test_only_the_last_file_that_was_written_is_told(window):
+    """Strips that tell of files do not pile up; one that tells of a fault stays."""
+    notices = window.notices
+    notices.show_notice("sheet", "The page cannot be written.", "over")
+    notices.show_notice("records", "1 file of records in here.")
+    notices.show_notice("report", "The report is here.")
+    assert notices.text_of("records") is None
+    assert notices.text_of("sheet") == "The page cannot be written."
+    assert notices.text_of("report") == "The report is here."

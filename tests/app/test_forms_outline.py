@@ -4,11 +4,14 @@ from __future__ import annotations
 
 import pytest
 from PySide6.QtCore import Qt
+from PySide6.QtGui import QFontMetrics
 
 from app.bench.forms.field_row import FieldRow
 from app.bench.forms.number_row import NumberRow
 from app.bench.forms.other_rows import CheckRow, ChoiceRow, PointsRow, TextRow
 from app.bench.forms.picker import PartPicker
+from app.bench.outline.row import texts_in
+from app.look import font
 from app.starting_points import driven_pile, new_tree, slender_rod_by_echo
 from app.tree import value_at
 
@@ -323,3 +326,17 @@ def test_every_place_that_other_pictures_select_has_a_row(desk) -> None:
         selected = at.outline.selected
         assert selected is not None
         assert value_at(at.document.tree, f"/cases/0/{selected.pointer}") is not None
+
+
+def test_a_short_figure_stays_whole_beside_a_long_name(qtbot) -> None:
+    """ "4141 m/s" is not cut to "4141 …"; a long list of names gives way to the name of its row."""
+    metrics = QFontMetrics(font())
+    room = metrics.horizontalAdvance("concrete 50 MPa, dynamic modulus")
+    name, figure = texts_in(room, "concrete 50 MPa, dynamic modulus", "4141 m/s", metrics, metrics)
+    assert figure == "4141 m/s"
+    assert name.startswith("concrete 50")
+    assert name.endswith("…")
+    name, figure = texts_in(room, "Materials", "steel, concrete 50 MPa, dynamic modulus", metrics, metrics)
+    assert name == "Materials"
+    assert figure.startswith("steel, c")
+    assert figure.endswith("…")

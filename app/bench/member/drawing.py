@@ -8,7 +8,7 @@ from dataclasses import replace
 from time import monotonic
 from typing import Any
 
-from PySide6.QtCore import QEvent, QPointF, Qt, QTimer
+from PySide6.QtCore import QEvent, QPointF, QSize, Qt, QTimer
 from PySide6.QtGui import (
     QContextMenuEvent,
     QEnterEvent,
@@ -33,7 +33,7 @@ from app.bench.member.drag import MemberDrag, nudge
 from app.bench.member.handles import Handle
 from app.bench.member.load_train import draw_drop, draw_pulse
 from app.bench.member.menu import MemberMenu
-from app.bench.member.scene import Scene, scene_of
+from app.bench.member.scene import Scene, scene_of, width_for_names
 from app.bench.member.surroundings import draw_attachments, draw_far_end, draw_ground
 from app.bench.outline.several import toggled
 from app.bench.pictures.axes import Margins, margins_of, tidy_step
@@ -53,6 +53,8 @@ DRAG_TIP = (
 #: A drag waits so long, ms, for the pictures of its last step before it takes the next: edits that nobody gets to see
 #: would only slow the pictures down.
 PATIENCE = 250
+#: Width up to which names make the drawing wider, in heights of a line.
+WIDEST_LINES = 14
 
 
 class MemberDrawing(Picture):
@@ -73,6 +75,8 @@ class MemberDrawing(Picture):
         self._later = QTimer(self)
         self._later.setSingleShot(True)
         self._later.timeout.connect(self._follow)
+        self._wide = 0
+        self.document.changed.connect(self._fit)
         self.solution.changed.connect(self._follow)
         turns().done.connect(self._follow)
 
@@ -81,6 +85,18 @@ class MemberDrawing(Picture):
         shared = margins_of(self.font())
         metrics = QFontMetricsF(self.font())
         return replace(shared, gutter=float(round(metrics.horizontalAdvance("−000") + 8)), right=4.0)
+
+    def minimumSizeHint(self) -> QSize:
+        """So wide that no name is cut, within reason."""
+        margins = self.margins()
+        wide = margins.gutter + margins.right + width_for_names(self.case, self.font())
+        return QSize(round(min(wide, WIDEST_LINES * QFontMetricsF(self.font()).height())), 0)
+
+    def _fit(self) -> None:
+        wide = self.minimumSizeHint().width()
+        if wide != self._wide:
+            self._wide = wide
+            self.updateGeometry()
 
     def described(self) -> tuple[Any, ...]:
         return (self.case,)

@@ -9,7 +9,7 @@ from PySide6.QtGui import QFont, QFontMetricsF
 
 from app.bench.member.handles import Handle, handles_of
 from app.bench.member.load_train import Block, blocks_of
-from app.bench.member.shapes import Pieces, pieces_of
+from app.bench.member.shapes import WIDEST, WIDEST_SHARE, Pieces, pieces_of
 from app.bench.member.surroundings import GroundBand, ground_bands
 from app.bench.pictures.axes import Axis
 from app.bench.pictures.axis_drawing import crisp
@@ -116,10 +116,21 @@ def scene_of(case: Case, plot: QRectF, axis: Axis, font: QFont) -> Scene:
 
 def _centre(case: Case, bands: tuple[GroundBand, ...], plot: QRectF, widest: float, font: QFont) -> float:
     """Where the member stands: off its usual place where names on one side need more room and the other has it."""
-    left = max((width_of(g.name, font) for g in case.gauges), default=0.0) + BEFORE + 4
-    words = [word for band in bands for word in band.name.split()]
-    right = max((width_of(word, font) for word in words), default=0.0) + BEHIND + 2
+    left, right = _rooms(case, bands, font)
     least, most = plot.left() + left + widest / 2, plot.right() - right - widest / 2
     usual = plot.left() + CENTRE_SHARE * plot.width()
     middle = min(max(usual, least), most) if least <= most else (least + most) / 2
     return crisp(middle) - 0.5
+
+
+def _rooms(case: Case, bands: tuple[GroundBand, ...], font: QFont) -> tuple[float, float]:
+    """Pixels that the names of gauges need left of the member, and the longest word of a layer's name right of it."""
+    left = max((width_of(g.name, font) for g in case.gauges), default=0.0) + BEFORE + 4
+    words = [word for band in bands for word in band.name.split()]
+    return left, max((width_of(word, font) for word in words), default=0.0) + BEHIND + 2
+
+
+def width_for_names(case: Case, font: QFont) -> float:
+    """Width of a plot, in pixels, in which no name is cut."""
+    names = sum(_rooms(case, tuple(ground_bands(case, case.member.length)), font))
+    return min(names / (1 - WIDEST_SHARE), names + WIDEST * QFontMetricsF(font).height() / 16) + 1

@@ -14,6 +14,8 @@ from app.look.spacing import GAP, ICON, RADIUS, ROW, SPACE
 
 #: Width of the bar beside the selected row, and how far an entry of a group stands in.
 BAR, STEP = 3, 16
+#: Share of a row's room up to which a figure is never cut.
+SHORT = 0.4
 KEYS = {
     Qt.Key.Key_Up: "up",
     Qt.Key.Key_Down: "down",
@@ -110,22 +112,31 @@ class RowButton(QAbstractButton):
             painter.drawRoundedRect(whole.adjusted(1, 1, -2, -2), RADIUS, RADIUS)
 
     def _paint_texts(self, painter: QPainter, room: QRect) -> None:
-        """The name keeps its length up to two thirds of the room; the figure is elided first."""
         colours = palette()
         name_font = font("strong" if self.isChecked() else "body")
-        name = QFontMetrics(name_font)
-        figure = QFontMetrics(font())
-        text = "✕ not valid" if self._wrong else self._row.figure
-        figure_wants = figure.horizontalAdvance(text)
-        name_wants = name.horizontalAdvance(self._row.name)
-        name_room = max(room.width() - figure_wants - SPACE, min(name_wants + 2, room.width() * 2 // 3))
+        texts = (self._row.name, "✕ not valid" if self._wrong else self._row.figure)
+        name, figure = texts_in(room.width(), *texts, QFontMetrics(name_font), QFontMetrics(font()))
         side = Qt.AlignmentFlag.AlignVCenter
         painter.setFont(name_font)
         painter.setPen(QColor(colours.ink))
-        shown = name.elidedText(self._row.name, Qt.TextElideMode.ElideRight, name_room)
-        painter.drawText(room, side | Qt.AlignmentFlag.AlignLeft, shown)
-        figure_room = room.width() - min(name_wants, name_room) - SPACE - GAP
+        painter.drawText(room, side | Qt.AlignmentFlag.AlignLeft, name)
         painter.setFont(font())
         painter.setPen(QColor(colours.over if self._wrong else colours.soft_ink))
-        shown = figure.elidedText(text, Qt.TextElideMode.ElideRight, max(0, figure_room))
-        painter.drawText(room, side | Qt.AlignmentFlag.AlignRight, shown)
+        painter.drawText(room, side | Qt.AlignmentFlag.AlignRight, figure)
+
+
+def texts_in(
+    room: int, name: str, figure: str, name_metrics: QFontMetrics, figure_metrics: QFontMetrics
+) -> tuple[str, str]:
+    """Name and figure as so many pixels have room for them: a figure that is short stays whole, as half a number says
+    nothing; of a longer one the end goes first, and the name keeps its length up to two thirds of the room."""
+    gap = SPACE + GAP
+    name_wants, figure_wants = name_metrics.horizontalAdvance(name), figure_metrics.horizontalAdvance(figure)
+    name_room = room - figure_wants - gap
+    if figure_wants > SHORT * room:
+        name_room = max(name_room, min(name_wants + 2, room * 2 // 3))
+    dots = Qt.TextElideMode.ElideRight
+    figure_room = max(0, room - min(name_wants, name_room) - gap)
+    return name_metrics.elidedText(name, dots, name_room), figure_metrics.elidedText(
+        figure, dots, figure_room
+    )

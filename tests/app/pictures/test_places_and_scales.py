@@ -4,16 +4,21 @@ from __future__ import annotations
 
 import numpy as np
 import pytest
+from PySide6.QtCore import QRectF
 
 from app.bench.member.handles import change_to, handles_of
 from app.bench.member.key_figures import case_load_figure
+from app.bench.member.scene import scene_of, width_for_names
 from app.bench.pictures.arrival_lines import all_named, lines_of
-from app.bench.pictures.axes import rounded_up, whole_distance
+from app.bench.pictures.axes import Axis, rounded_up, whole_distance
 from app.bench.pictures.colouring import columns_under, entries_of
+from app.bench.pictures.lettering import width_of
 from app.bench.strips.contents import content_of
 from app.bench.strips.peaks import peaks_of
+from app.demo_files import demo_paths
+from app.look.fonts import font
 from app.units import NO_BREAK, Units
-from solver import project_from_tree, solve
+from solver import load_project, project_from_tree, solve
 from tests.project.valid import valid_tree
 
 COMPRESSION, TENSION = Units(compression_positive=True), Units()
@@ -152,3 +157,13 @@ def test_a_history_lasts_from_its_first_point_to_its_last():
     }  # fmt: skip
     figure = case_load_figure(project_from_tree(tree).cases[1], TENSION)
     assert figure.replace(NO_BREAK, " ") == "3 points, 3.00 ms"
+
+
+def test_the_drawing_is_wide_enough_for_its_names(qtbot):
+    """Of a plot as wide as the names ask for, every gauge's name and every layer's longest word has its room."""
+    case = load_project(demo_paths()[0]).cases[0]
+    wide = width_for_names(case, font())
+    scene = scene_of(case, QRectF(30, 40, wide, 300), Axis(0.0, 24.0, 40.0, 300.0), font())
+    assert all(width_of(g.name, font()) <= scene.names_end - scene.plot.left() - 2 for g in case.gauges)
+    words = [word for band in scene.bands for word in band.name.split()]
+    assert all(width_of(word, font()) <= scene.plot.right() - scene.names_begin for word in words)
