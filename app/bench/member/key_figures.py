@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from app.units import Units
+from app.units import NO_BREAK, Units
 from solver import Case, Project
 from solver.model import derived
 from solver.model.load import Cushion, Drop, History, Pulse, Striker
@@ -41,7 +41,7 @@ def cushion_figure(cushion: Cushion | None, units: Units) -> str:
 
 
 def segment_figure(segment: Segment, units: Units) -> str:
-    """ "16.0 m, 610 × 16.0": its length and what the section is bought by."""
+    """ "16.0 m, 610 × 16 mm": its length and what the section is bought by."""
     size = section_size(segment.section, units)
     if segment.end_section is not None:
         size = f"{size} to {section_size(segment.end_section, units)}"
@@ -49,24 +49,25 @@ def segment_figure(segment: Segment, units: Units) -> str:
 
 
 def section_size(section: AnySection, units: Units) -> str:
-    """The dimensions without their unit, as they are called on site: "610 × 16", "Ø 50"."""
+    """The dimensions as they are called on site, the unit once: "610 × 16 mm", "Ø 50 mm"."""
 
-    def size(value: float) -> str:
-        return f"{units.number(value, 'small_length'):.4g}"
+    def size(before: str, *values: float) -> str:
+        numbers = " × ".join(f"{units.number(value, 'small_length'):.4g}" for value in values)
+        return f"{before}{numbers}{NO_BREAK}{units.unit('small_length')}"
 
     match section.shape:
         case "pipe" | "filled_pipe":
-            return f"{size(section.outer_diameter)} × {size(section.wall)}"
+            return size("", section.outer_diameter, section.wall)
         case "solid_round":
-            return f"Ø {size(section.diameter)}"
+            return size("Ø ", section.diameter)
         case "rectangle":
-            return f"{size(section.width)} × {size(section.depth)}"
+            return size("", section.width, section.depth)
         case "octagon":
-            return f"octagon {size(section.across_flats)}"
+            return size("octagon ", section.across_flats)
         case "h":
-            return f"H {size(section.depth)} × {size(section.flange_width)}"
+            return size("H ", section.depth, section.flange_width)
         case "voided_square":
-            return f"□ {size(section.width)}"
+            return size("□ ", section.width)
         case _:
             return units.show(section.area, "area")
 

@@ -7,7 +7,7 @@ import pytest
 from PySide6.QtCore import QRectF
 
 from app.bench.member.handles import change_to, handles_of
-from app.bench.member.key_figures import case_load_figure
+from app.bench.member.key_figures import case_load_figure, segment_figure
 from app.bench.member.scene import scene_of, width_for_names
 from app.bench.pictures.arrival_lines import all_named, lines_of
 from app.bench.pictures.axes import Axis, rounded_up, whole_distance
@@ -19,6 +19,7 @@ from app.demo_files import demo_paths
 from app.look.fonts import font
 from app.units import NO_BREAK, Units
 from solver import load_project, project_from_tree, solve
+from solver.model.section import SolidRound
 from tests.project.valid import valid_tree
 
 COMPRESSION, TENSION = Units(compression_positive=True), Units()
@@ -167,3 +168,12 @@ def test_the_drawing_is_wide_enough_for_its_names(qtbot):
     assert all(width_of(g.name, font()) <= scene.names_end - scene.plot.left() - 2 for g in case.gauges)
     words = [word for band in scene.bands for word in band.name.split()]
     assert all(width_of(word, font()) <= scene.plot.right() - scene.names_begin for word in words)
+
+
+def test_a_section_is_called_with_its_unit(drop):
+    """In inches as in millimetres: "Ø 0.7874" alone could be either."""
+    segment = drop.member.segments[0].model_copy(
+        update={"section": SolidRound(shape="solid_round", diameter=0.02)}
+    )
+    assert segment_figure(segment, Units()).replace(NO_BREAK, " ").endswith(", Ø 20 mm")
+    assert segment_figure(segment, Units(system="us")).replace(NO_BREAK, " ").endswith(", Ø 0.7874 in")
