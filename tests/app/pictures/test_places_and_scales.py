@@ -172,8 +172,8 @@ def test_the_drawing_is_wide_enough_for_its_names(qtbot):
 
 def test_a_section_is_called_with_its_unit(drop):
     """In inches as in millimetres: "Ø 0.7874" alone could be either."""
-    segment = drop.member.segments[0].model_copy(
-        update={"section": SolidRound(shape="solid_round", diameter=0.02)}
+    segment = drop.member.segments[1].model_copy(
+        update={"section": SolidRound(shape="solid_round", diameter=0.02), "end_section": None}
     )
     assert segment_figure(segment, Units()).replace(NO_BREAK, " ").endswith(", Ø 20 mm")
     assert segment_figure(segment, Units(system="us")).replace(NO_BREAK, " ").endswith(", Ø 0.7874 in")
