@@ -73,7 +73,8 @@ class Bounds(NamedTuple):
     """Toe, joints, wall, train. `joints`: link per joint; `joint_par`: gap, slack, and the gap at which what
     touches was stopped; `joint_force`: force of the last half step; `joint_trial`: see `contact.touch_ahead`; `wall`:
     see `contact.wall`. `faces`: the joints that only touch, `bonds`: runs of those that may crack; `joint_bond` of
-    these, shape (5, joints): strength (N; 0: cracked), largest opening (m), force of the last step (N), the step in which it cracked (-1: not in this blow), `ease` (N/m)."""
+    these, shape (5, joints): strength (N; 0: cracked), largest opening (m), force of the last step (N), the step in
+    which it cracked (-1: not in this blow), `ease` (N/m)."""
 
     toe_par: Array
     toe_state: Array

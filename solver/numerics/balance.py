@@ -85,17 +85,8 @@ def balance(row, rod, ground, bounds, rest, u, v, w, force, sums, dt):
     row[13] = viscous
 
 
-#: Columns that came in, that are stored, and that are lost: together they close.
+#: Columns of what came in; all others are stored or lost, and together they close.
 CAME_IN = ("work_of_gravity", "work_of_load")
-LOST = (
-    "plastic",
-    "cushion_loss",
-    "absorbed_by_dashpots",
-    "ground_static_loss",
-    "ground_damping_loss",
-    "impact_loss",
-    "viscous",
-)
 
 
 def residual_of(start: Array, rows: Array) -> tuple[float, int]:

@@ -267,14 +267,7 @@ def _finished(
     position, mass = np.concatenate(laid.position), np.concatenate(laid.mass)
     axial, length, area, line_mass = (np.concatenate(parts) for parts in zip(*laid.links, strict=True))
     damping, spring = np.zeros_like(mass), np.zeros_like(mass)
-    extra: dict[int, float] = {}
-    for attachment in case.member.attachments:
-        for node, share in _lever(position, head, attachment.position):
-            if attachment.kind == "mass":
-                mass[node] += share * attachment.value
-                extra[node] = extra.get(node, 0.0) + share * attachment.value
-            else:
-                (spring if attachment.kind == "spring" else damping)[node] += share * attachment.value
+    extra = _attach(case, position, head, (mass, spring, damping))
     end = case.far_end
     if end.kind == "spring":
         spring[-1] += end.stiffness
@@ -282,14 +275,6 @@ def _finished(
         damping[-1] += end.coefficient
     elif end.kind == "matched":
         damping[-1] += np.sqrt(axial[-1] * line_mass[-1])
-    velocity = np.zeros_like(mass)
-    if isinstance(case.load, Drop | Striker):
-        velocity[: head - (1 if len(train) == 2 else 0)] = impact_velocity(case.load, mass, head)
-    velocity[head:] = case.run.initial_velocity or 0.0
-    if end.kind == "fixed":
-        velocity[-1] = 0.0
-    if getattr(case.load, "quantity", "") == "velocity":
-        velocity[head] = 0.0
     rods = axial > 0
     # transit times of a taper are those of its middles: hold the step to the quickest element
     quickest = float(np.min(length[rods] * np.sqrt(line_mass[rods] / axial[rods])))
@@ -309,12 +294,39 @@ def _finished(
         joints=joints,
         train=train,
         head=head,
-        velocity=velocity,
+        velocity=_first_velocities(case, mass, head, len(train) == 2),
         fixed_end=end.kind == "fixed",
         wall_gap=end.gap if end.kind == "wall" else np.inf,
         gravity=GRAVITY if case.run.gravity else 0.0,
         extra_masses=extra,
     )
+
+
+def _attach(case: Case, position: Array, head: int, nodes: tuple[Array, Array, Array]) -> dict[int, float]:
+    """Add what is attached to the `nodes`' masses, springs and dashpots; returns the lumped masses (kg) by node."""
+    mass, spring, damping = nodes
+    extra: dict[int, float] = {}
+    for attachment in case.member.attachments:
+        for node, share in _lever(position, head, attachment.position):
+            if attachment.kind == "mass":
+                mass[node] += share * attachment.value
+                extra[node] = extra.get(node, 0.0) + share * attachment.value
+            else:
+                (spring if attachment.kind == "spring" else damping)[node] += share * attachment.value
+    return extra
+
+
+def _first_velocities(case: Case, mass: Array, head: int, capped: bool) -> Array:
+    """Velocity of every node before the first step, m/s, shape (n,): what strikes moves, its cap is at rest."""
+    velocity = np.zeros_like(mass)
+    if isinstance(case.load, Drop | Striker):
+        velocity[: head - (1 if capped else 0)] = impact_velocity(case.load, mass, head)
+    velocity[head:] = case.run.initial_velocity or 0.0
+    if case.far_end.kind == "fixed":
+        velocity[-1] = 0.0
+    if getattr(case.load, "quantity", "") == "velocity":
+        velocity[head] = 0.0
+    return velocity
 
 
 def _lever(position: Array, head: int, x: float) -> list[tuple[int, float]]:

@@ -158,60 +158,74 @@ def _refuse_unheld(chain: Chain, weight: float, soil: _Soil) -> None:
         )
 
 
-def _static_displacements(chain: Chain, state: State, weight: Array, soil: _Soil) -> Array:
-    """Newton's method on the nodes below the struck end; closed joints move as one, a wall at the far end holds."""
-    head, n, stiff = chain.head, chain.nodes, state.rod.stiff
-    # the first node of each group that moves as one, and which group each node is of
-    opened = np.ones(n - head, dtype=bool)
-    opened[[j.link + 1 - head for j in chain.joints if j.link >= head]] = False
-    first, group = np.flatnonzero(opened), np.cumsum(opened) - 1
-    between = stiff[head + first[1:] - 1]
-    held = chain.fixed_end or chain.wall_gap == 0
-    u, still, force = np.zeros(n), np.zeros(n), np.zeros(n - 1)
+class _Hanging:
+    """The balance under gravity: nodes that closed joints hold together move as one, a wall at the far end holds."""
 
-    # trials may lie far beyond the balance, and leave no trace
-    elastic = state.rod._replace(state=state.rod.state.copy())
+    def __init__(self, chain: Chain, state: State, weight: Array, soil: _Soil) -> None:
+        self.chain, self.rod, self.weight, self.soil = chain, state.rod, weight, soil
+        head, n = chain.head, chain.nodes
+        # the first node of each group that moves as one, and which group each node is of
+        opened = np.ones(n - head, dtype=bool)
+        opened[[j.link + 1 - head for j in chain.joints if j.link >= head]] = False
+        self.first, self.group = np.flatnonzero(opened), np.cumsum(opened) - 1
+        self.held = chain.fixed_end or chain.wall_gap == 0
+        self.still, self.force = np.zeros(n), np.zeros(n - 1)
+        # trials may lie far beyond the balance, and leave no trace
+        self.trial = state.rod._replace(state=state.rod.state.copy())
 
-    def pull_at(u: Array) -> tuple[Array, Array]:
-        elastic.state[:] = state.rod.state
-        link_forces(elastic, u, still, force, chain.dt)
-        resist, slope = soil.force_and_slope(u)
-        pull = weight - resist - chain.spring * u
-        pull[:-1] += force
-        pull[1:] -= force
-        total = np.add.reduceat(pull[head:], first)
-        if held:
+    def pull_at(self, u: Array) -> tuple[Array, Array]:
+        """Force left over on each group (N), and the ground's slope at every node (N/m), at displacements `u`."""
+        self.trial.state[:] = self.rod.state
+        link_forces(self.trial, u, self.still, self.force, self.chain.dt)
+        resist, slope = self.soil.force_and_slope(u)
+        pull = self.weight - resist - self.chain.spring * u
+        pull[:-1] += self.force
+        pull[1:] -= self.force
+        total = np.add.reduceat(pull[self.chain.head :], self.first)
+        if self.held:
             total[-1] = 0.0
         return total, slope
 
-    total, slope = pull_at(u)
-    for _ in range(200):
-        diagonal = np.add.reduceat((slope + chain.spring)[head:], first)
+    def tangent(self, slope: Array) -> tuple[Array, Array]:
+        """Its diagonal and what stands beside it, N/m."""
+        head, stiff = self.chain.head, self.rod.stiff
+        between = stiff[head + self.first[1:] - 1]
+        diagonal = np.add.reduceat((slope + self.chain.spring)[head:], self.first)
         diagonal[:-1] += between
         diagonal[1:] += between
-        if held:
+        if self.held:
             diagonal[-1] += 1e6 * float(stiff.max())
         # a slope of nearly nothing keeps a wholly slipping trial solvable; the balance itself stays exact
         diagonal += 1e-12 * float(stiff.max())
-        change, singular = dptsv(diagonal, -between, total)[2:]
+        return diagonal, -between
+
+
+def _static_displacements(chain: Chain, state: State, weight: Array, soil: _Soil) -> Array:
+    """Newton's method on the nodes below the struck end. Raises `SolveError` where there is no balance."""
+    at, u = _Hanging(chain, state, weight, soil), np.zeros(chain.nodes)
+    total, slope = at.pull_at(u)
+    for _ in range(200):
+        change, singular = dptsv(*at.tangent(slope), total)[2:]
         if singular:
             break
-        step = np.append(still[:head], change[group])
+        step = np.append(at.still[: chain.head], change[at.group])
         drive = float(total @ change)
-        total, slope = pull_at(u + step)
+        total, slope = at.pull_at(u + step)
         if float(total @ change) < -drive / 2:
             # far beyond the balance, as where ground that gives way meets ground that does not
-            step *= _turning_share(pull_at, u, step, change)
-            total, slope = pull_at(u + step)
+            step *= _turning_share(at.pull_at, u, step, change)
+            total, slope = at.pull_at(u + step)
         u += step
         if np.max(np.abs(change)) <= 1e-15 + 1e-13 * np.max(np.abs(u)):
-            if link_forces(state.rod, u, still, force, chain.dt) >= 0:
+            if link_forces(state.rod, u, at.still, at.force, chain.dt) >= 0:
                 raise SolveError(
-                    "The member leaves its elastic range under its own weight: see the material's law."
+                    "With gravity on, the member leaves its elastic range under its own weight before the blow: give "
+                    "its material a higher strength, its segments more area, or turn gravity off."
                 )
             return u
     raise SolveError(
-        "No rest of the member before the blow was found under gravity: its ground gives way under its weight."
+        "With gravity on, no rest of the member before the blow was found: its ground gives way under its weight. Give "
+        "the ground more resistance, hold the far end, or turn gravity off."
     )
 
 

@@ -129,7 +129,7 @@ def _add(chain: Chain, ground: Ground, band: Band, table: Array) -> None:
         low, high = low[touched], high[touched]
         at = _receivers(chain, stretch.start, stretch.stop, np.concatenate([nodes, nodes + 1])[touched])
         points = np.array([low, (low + high) / 2, high])
-        width = _rubbing(chain, ground, stretch.segment, points, left[0], right[-1])
+        width = _rubbing(ground, stretch.segment, points, left[0], right[-1])
         line = band.unit(points) * (width if band.per_area else 1.0)
         strength = (high - low) * (line[0] + 4 * line[1] + line[2]) / 6
         area = (high - low) * (width[0] + 4 * width[1] + width[2]) / 6
@@ -146,9 +146,7 @@ def _receivers(chain: Chain, start: int, stop: int, node: NDArray[np.int64]) -> 
     return np.clip(node, low, high) if low <= high else node
 
 
-def _rubbing(
-    chain: Chain, ground: Ground, segment: Segment, points: Array, top: float, bottom: float
-) -> Array:
+def _rubbing(ground: Ground, segment: Segment, points: Array, top: float, bottom: float) -> Array:
     """Perimeter on which the ground acts, linear along a taper, with its share of the inside of open pipes, m."""
     first, last = segment.section, segment.end_section or segment.section
     share = (points - top) / (bottom - top)

@@ -173,11 +173,80 @@ def train_step(bounds, push, u, v, w, sums, dt, note, step):
 
 
 @part_of_step
+def free_velocities(rod, u, v, w, force, pull, driven, drag, gain, dt, step):
+    """What loads, springs and dashpots add to velocities that know the links alone; Love's rod finds its own."""
+    head = rod.driven[0]
+    inert = len(rod.inertia) > 0
+    if inert:
+        inertia_velocities(rod, v, w, force, pull, driven, u, dt, step)
+    elif not driven:
+        w[head] += rod.push[head] * pull
+    if step == 0 and not inert:
+        for i in range(len(rod.opening)):
+            w[i] += rod.push[i] * rod.opening[i]
+    if len(rod.special) > 0:
+        special_nodes(rod, u, v, w, drag, gain, step)
+
+
+@part_of_step
+def ground_nodes(ground, bounds, push, u, v, w, sums, dt, note, step):
+    """Shaft and toe; the shaft meets velocities that already know which faces touch."""
+    if len(ground.r) + len(ground.power_nodes) + len(ground.radiation_nodes) > 0:
+        if len(bounds.joints) > 0:
+            contact.touch_ahead(bounds, push, u, v, w, dt, step)
+        shaft_nodes(ground, push, v, w, sums, dt)
+    if len(bounds.toe_par) > 0:
+        toe_node(bounds, push, u, v, w, sums, dt, note, step)
+
+
+@part_of_step
+def faces(ext, bounds, push, u, v, w, sums, dt, note, step):
+    """Whatever touches: joints, a wall, and what strikes."""
+    if len(bounds.joints) > 0:
+        sums[IMPACT] += contact.joints(bounds, push, u, v, w, dt, note, step)
+    if bounds.wall[0] < np.inf:
+        sums[IMPACT] += contact.wall(bounds, push, u, v, w, dt, note, step)
+    if len(bounds.train_links) > 0:
+        train_step(bounds, push, u, v, w, sums, dt, note, step)
+    if len(ext.second) > 0:
+        keep_first_blow(ext, bounds, step)
+
+
+@part_of_step
 def let_go(push, sums, w, head):
     """What held the struck end over the last step still acts with its half in the step in which it lets go, N."""
     half = 0.5 * sums[PULL]
     w[head] += push[head] * half
     return half
+
+
+@part_of_step
+def account(rod, v, w, sums, pull, driven, dt, step):
+    """Work of the load, and what dashpots and the opening took. A step acts with the mean of two half steps,
+    f = (g_before + g)/2: so the coming half step's force on a driven end follows."""
+    head = rod.driven[0]
+    sums[PULL] = 2.0 * pull - sums[PULL] if driven else 0.0
+    if len(rod.special) > 0:
+        sums[DASHPOTS] += dashpot_losses(rod, v, w, step) * dt
+    if step == 0:
+        for i in range(len(rod.opening)):
+            sums[IMPACT] -= rod.opening[i] * 0.5 * (v[i] + w[i]) * dt
+    sums[WORK] += pull * 0.5 * (v[head] + w[head]) * dt
+
+
+@part_of_step
+def write_down(rod, ground, bounds, ext, rec, rest, u, v, w, force, sums, stride, dt, step):
+    """The ledger, gauges, ram and pictures of a step."""
+    if step % stride == 0:
+        balance(rec.ledger[step // stride], rod, ground, bounds, rest, u, v, w, force, sums, dt)
+    if len(rod.inertia) > 0:
+        section_forces(rod, ext, v, w, force, dt, step)
+    if len(rec.node) > 0:
+        read_gauges(rec, u, v, w, force, rest, dt, step)
+    if len(rec.ram) > 0:
+        read_train(rec, bounds, v, w, rod.driven[0], step)
+    if step % stride == 0:
+        take_frame(rec, u, v, w, force, rest, step // stride)
 
 
 @kernel
@@ -191,67 +260,26 @@ def march(rod, ground, bounds, motion, ext, rec, ends, sums, load, first, count,
     gain = (1.0 - 0.5 * drag * dt) / (1.0 + 0.5 * drag * dt)
     push, head, last = rod.push, rod.driven[0], len(u) - 1
     force = motion.pulls[1 : last + 1]
-    # what a case does not have must cost nothing at every step
-    inert, special, gauges = len(rod.inertia) > 0, len(rod.special) > 0, len(rec.node) > 0
-    shafts = len(ground.r) + len(ground.power_nodes) + len(ground.radiation_nodes) > 0
-    toes, jointed, walled = len(bounds.toe_par) > 0, len(bounds.joints) > 0, bounds.wall[0] < np.inf
-    rams, train_heard, strikes = len(bounds.train_links) > 0, len(rec.ram) > 0, len(ext.second) > 0
     shaft.ready_power(ground.power_nodes, v, push, ground.power, dt, first)
-    done = 0
-    waiting = done > 0
+    done, waiting = 0, False
     while done < count:
         step, pull = first + done, load[done]
         driven = step < rod.driven[1]
         sweep(rod, ext, motion, u, v, w, gain, dt, rec.flags, note, step, waiting)
-        if inert:
-            inertia_velocities(rod, v, w, force, pull, driven, u, dt, step)
-        elif not driven:
-            w[head] += push[head] * pull
-        if step == 0 and not inert:
-            for i in range(len(rod.opening)):
-                w[i] += push[i] * rod.opening[i]
-        if special:
-            special_nodes(rod, u, v, w, drag, gain, step)
-        if shafts:
-            if jointed:
-                contact.touch_ahead(bounds, push, u, v, w, dt, step)
-            shaft_nodes(ground, push, v, w, sums, dt)
-        if toes:
-            toe_node(bounds, push, u, v, w, sums, dt, note, step)
+        free_velocities(rod, u, v, w, force, pull, driven, drag, gain, dt, step)
+        ground_nodes(ground, bounds, push, u, v, w, sums, dt, note, step)
         if step == rod.driven[1] and step > 0:
             pull += let_go(push, sums, w, head)
         if driven:
             # the force that makes the struck end follow, whatever else acts on it
+            inert = len(rod.inertia) > 0
             pull = (pull - w[head]) / push[head] if not inert else driving_force(rod, u, v, w, force, dt)
             w[head] = load[done]
         if rod.fixed_end:
             w[last] = 0.0
-        if jointed:
-            sums[IMPACT] += contact.joints(bounds, push, u, v, w, dt, note, step)
-        if walled:
-            sums[IMPACT] += contact.wall(bounds, push, u, v, w, dt, note, step)
-        if rams:
-            train_step(bounds, push, u, v, w, sums, dt, note, step)
-        if strikes:
-            keep_first_blow(ext, bounds, step)
-        # a step acts with the mean of two half steps, f = (g_before + g)/2
-        sums[PULL] = 2.0 * pull - sums[PULL] if driven else 0.0
-        if special:
-            sums[DASHPOTS] += dashpot_losses(rod, v, w, step) * dt
-        if step == 0:
-            for i in range(len(rod.opening)):
-                sums[IMPACT] -= rod.opening[i] * 0.5 * (v[i] + w[i]) * dt
-        sums[WORK] += pull * 0.5 * (v[head] + w[head]) * dt
-        if step % stride == 0:
-            balance(rec.ledger[step // stride], rod, ground, bounds, rest, u, v, w, force, sums, dt)
-        if inert:
-            section_forces(rod, ext, v, w, force, dt, step)
-        if gauges:
-            read_gauges(rec, u, v, w, force, rest, dt, step)
-        if train_heard:
-            read_train(rec, bounds, v, w, head, step)
-        if step % stride == 0:
-            take_frame(rec, u, v, w, force, rest, step // stride)
+        faces(ext, bounds, push, u, v, w, sums, dt, note, step)
+        account(rod, v, w, sums, pull, driven, dt, step)
+        write_down(rod, ground, bounds, ext, rec, rest, u, v, w, force, sums, stride, dt, step)
         done, waiting = done + 1, True
         v, w = w, v
         if ends.every > 0 and (step + 1) % ends.every == 0:

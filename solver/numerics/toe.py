@@ -2,7 +2,7 @@
 
 `state`: [0] plastic displacement D' at which contact begins (m; the gap to begin with), [1] static resistance at
 the last half step (N), [2] soil displacement of the radiation model at the last half step (m), [3] 1 while in
-contact.
+contact, [4] whole resistance of the last half step, damping with it (N).
 `par`: [0] law (0 Smith, 1 viscous, 2 power, 3 radiation), [1] strength Ru (N), [2] stiffness (N/m), [3] damping (J
 in s/m; for radiation the dashpot in N·s/m), [4] exponent. Law numbers are internal; a file knows them by their words.
 """

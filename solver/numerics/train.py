@@ -23,7 +23,7 @@ def cushion_force(d, k, unloading, largest, restitution):
 
 
 @kernel
-def branch(which, kind, par, state, gap, dt):
+def branch(which, par, state, gap, dt):
     """Coefficients (alpha, beta, gamma) of alpha F + beta rel = gamma, `rel` the closing velocity of the coming
     half step.
 
@@ -61,7 +61,7 @@ def solve_one(rel, yielding, kind, par, state, gap, dt):
     """Force between two bodies; `rel` = closing velocity without it, `yielding` = sum of their dt/m."""
     best, least = 0.0, np.inf
     for which in choices(kind):
-        a, b, c = branch(which, kind, par, state, gap, dt)
+        a, b, c = branch(which, par, state, gap, dt)
         force = (c - b * rel) / (a - b * yielding)
         wrong = misfit(which, force, rel - yielding * force, kind, par, state, gap, dt)
         if wrong < least:
@@ -74,9 +74,9 @@ def solve_two(rel1, rel2, p0, p1, p2, kinds, pars, states, gaps, dt):
     """Forces between ram and cap, and cap and struck end. `p` = dt/m of the three bodies."""
     best1, best2, least = 0.0, 0.0, np.inf
     for first in choices(kinds[0]):
-        a1, b1, c1 = branch(first, kinds[0], pars[0], states[0], gaps[0], dt)
+        a1, b1, c1 = branch(first, pars[0], states[0], gaps[0], dt)
         for second in choices(kinds[1]):
-            a2, b2, c2 = branch(second, kinds[1], pars[1], states[1], gaps[1], dt)
+            a2, b2, c2 = branch(second, pars[1], states[1], gaps[1], dt)
             m11, m12 = a1 - b1 * (p0 + p1), b1 * p1
             m21, m22 = b2 * p1, a2 - b2 * (p1 + p2)
             r1, r2 = c1 - b1 * rel1, c2 - b2 * rel2
