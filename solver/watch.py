@@ -48,10 +48,10 @@ def refuse_unsupported(case: Case) -> None:
         raise SolveError(
             "Repeated blows need ground, which holds the member at rest between them: set 'blows' to 1."
         )
-    for part in _resistances(case):
+    for name, part in _resistances(case):
         if part.exponent is not None and part.exponent < LEAST_EXPONENT:
             raise SolveError(
-                f"An exponent of damping below {LEAST_EXPONENT} is not solved: give at least that."
+                f"The exponent of damping of {name}, {part.exponent:g}, is not solved: give at least {LEAST_EXPONENT}."
             )
     for segment in segments_of(case)[0]:
         law = case.material(segment.material).law
@@ -70,11 +70,15 @@ def refuse_unsupported(case: Case) -> None:
             )
 
 
-def _resistances(case: Case) -> list[Resistance]:
+def _resistances(case: Case) -> list[tuple[str, Resistance]]:
+    """Layers, shaft and toe, each with what it is called in a sentence."""
     ground = case.ground
     if ground is None:
         return []
-    return [r for r in (*ground.layers, ground.shaft_total, ground.toe) if r is not None]
+    found: list[tuple[str, Resistance]] = [(f"layer '{layer.name}'", layer) for layer in ground.layers]
+    found += [("the shaft", ground.shaft_total)] if ground.shaft_total else []
+    found += [("the toe", ground.toe)] if ground.toe else []
+    return found
 
 
 def _refuse_with_inertia(case: Case) -> None:
