@@ -12,15 +12,18 @@ TOLD = 3
 
 
 def differences(mine: Project, other: Project) -> str:
-    """One sentence: "2 values differ: Head position 1.2 -> 1.4; ..." or that nothing does."""
+    """One sentence: "5 values differ (SI units): Head position 1.2 → 1.4; ... and 2 more." or that nothing does."""
     found = list(_between(mine.model_dump(mode="json"), other.model_dump(mode="json"), ()))
     if not found:
         return "Nothing differs."
-    told = "; ".join(found[:TOLD]) + ("; ..." if len(found) > TOLD else "")
-    return f"{len(found)} value{'s differ' if len(found) > 1 else ' differs'}: {told}."
+    told = "; ".join(words for words, _ in found[:TOLD])
+    more = f" and {len(found) - TOLD} more" if len(found) > TOLD else ""
+    si = " (SI units)" if any(number for _, number in found[:TOLD]) else ""
+    return f"{len(found)} value{'s differ' if len(found) > 1 else ' differs'}{si}: {told}{more}."
 
 
-def _between(a: Any, b: Any, way: tuple[str, ...]) -> Iterator[str]:
+def _between(a: Any, b: Any, way: tuple[str, ...]) -> Iterator[tuple[str, bool]]:
+    """Each difference in words, and whether it is one of numbers."""
     if isinstance(a, dict) and isinstance(b, dict):
         for key in [*a, *(k for k in b if k not in a)]:
             yield from _between(a.get(key), b.get(key), (*way, key.replace("_", " ")))
@@ -28,7 +31,8 @@ def _between(a: Any, b: Any, way: tuple[str, ...]) -> Iterator[str]:
         for index, (one, two) in enumerate(zip(a, b, strict=True)):
             yield from _between(one, two, (*way, _name(one, index)))
     elif a != b:
-        yield f"{' '.join(way[-3:])} {_short(a)} \u2192 {_short(b)}"
+        number = any(isinstance(one, float) for one in (a, b))
+        yield f"{' '.join(way[-3:])} {_short(a)} \u2192 {_short(b)}", number
 
 
 def _name(part: Any, index: int) -> str:

@@ -217,6 +217,7 @@ def test_differences_are_told_in_words(document):
     before = document.project
     document.edit("Move", "gauges/0/position", 1.75)
     assert (
-        differences(before, document.project) == "1 value differs: gauges Gauge 1 position 1.5 \u2192 1.75."
+        differences(before, document.project)
+        == "1 value differs (SI units): gauges Gauge 1 position 1.5 \u2192 1.75."
     )
     assert differences(before, before) == "Nothing differs."
