@@ -102,7 +102,9 @@ def value_of(text: str, dimension: str, unit: str) -> float:
         following = re.search(r"(?<=[A-Za-z'\"′″])\s*(?=\d)(?!\d*\s*(?:/(?!\d)|[*)]|$))", after)
         own, rest = (after[: following.start()], after[following.end() :]) if following else (after, "")
         if not first and not own.strip():
-            raise UnitError(f"'{wanted}' has a second number without a unit.")
+            raise UnitError(
+                f"'{wanted}' has a second number without a unit: write each with its own, such as 5 ft 6 in."
+            )
         number = _of_fraction(fraction, wanted) if fraction else _number(digits, wanted)
         if first and number.is_signed():
             sign, number = -1, abs(number)

@@ -44,7 +44,10 @@ def on_cluster(address: str) -> Iterator[Solver]:
     try:
         client = Client(address, timeout=10)
     except (OSError, TimeoutError, ValueError) as error:
-        raise StudyError(f"No cluster answers at {address} ({type(error).__name__}).") from None
+        raise StudyError(
+            f"No cluster answers at {address} ({type(error).__name__}): start its scheduler there, or give an address "
+            "such as tcp://host:8786."
+        ) from None
 
     def solver(
         cases: Iterable[Case],

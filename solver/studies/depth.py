@@ -15,6 +15,7 @@ from solver.studies.plan import Level
 from solver.studies.sheet import Cell, Solver, cell_of_outcome
 from solver.studies.variation import StudyError, checked, resistance_of
 
+#: Most penetrations of one study; each is a case to solve.
 MOST = 200
 #: Set below which the member is said to refuse, m: 10 blows for 25 mm (common practice).
 REFUSAL = 0.0025
@@ -31,6 +32,7 @@ class DepthPoint:
 
     @property
     def refuses(self) -> bool:
+        """Whether the member practically goes no deeper here."""
         return self.cell.set is not None and self.cell.set < REFUSAL
 
 
@@ -45,6 +47,7 @@ class Depths:
 
     @property
     def first_refusal(self) -> DepthPoint | None:
+        """The first depth at which it refuses."""
         return next((p for p in self.points if p.refuses), None)
 
     @property

@@ -70,6 +70,7 @@ class Cell:
 
     @property
     def over(self) -> bool:
+        """Whether a limit is passed anywhere; not where there is none."""
         return self.share is not None and self.share > 1
 
 
@@ -82,6 +83,7 @@ class Sheet:
 
     @property
     def complete(self) -> bool:
+        """Whether every point of the plan is solved."""
         return len(self.cells) == len(self.plan.resistances) * len(self.plan.levels)
 
     def line(self, index: int) -> tuple[Cell, ...]:

@@ -124,15 +124,19 @@ def sampled(
     factors = [factors_of(unknowns, spot.count, (seed, spot.stream)) for spot in spots]
     found = [np.full((spot.count, 4), np.nan) for spot in spots]
     places = [(place, index) for place, spot in enumerate(spots) for index in range(spot.count)]
-    done = 0
+    done, refusal = 0, ""
     cases = _variants(plan, spots, unknowns, factors)
     for outcome in (solver or solve_many)(cases, workers=workers, progress=progress, cancel=cancel):
         done += 1
         if outcome.result is not None:
             place, index = places[outcome.index]
             found[place][index] = _figures(outcome.result, spots[place])
+        else:
+            refusal = refusal or str(outcome.error)
     if done < len(places):
         return None
+    if all(np.isnan(one[:, 0]).all() for one in found):
+        raise StudyError(f"None of the samples could be solved. The first: {refusal}")
     return _together(plan, spots, unknowns, factors, found, seed)
 
 
@@ -179,8 +183,6 @@ def _together(
 ) -> Sampled:
     failed = sum(int(np.isnan(one[:, 0]).sum()) for one in found)
     total = sum(spot.count for spot in spots)
-    if failed == total:
-        raise StudyError("None of the samples could be solved.")
     rows = len(plan.resistances)
     grid = rows * len(plan.levels)
     lines = [_bands(spots[i : i + rows], found[i : i + rows]) for i in range(0, grid, rows)]

@@ -84,5 +84,12 @@ def test_ranges_that_fit_no_case_are_refused_with_a_sentence() -> None:
     with pytest.raises(StudyError, match="more than 1"):
         sampled(plan, (Unknown(what="efficiency", low=0.9, high=1.4),), samples=50)
     with pytest.raises(StudyError, match="50 to 5000"):
-        sampled(plan, usual_unknowns(plan.case), samples=10)
+        sampled(plan, usual_unknowns(plan.case), samples=50)
     assert all(u.high * 0.9 <= 1 + 1e-9 for u in usual_unknowns(plan.case) if u.what == "efficiency")
+
+
+def test_where_no_sample_can_be_solved_the_reason_is_told() -> None:
+    """Two million elements are refused by the mesh, in every sample alike."""
+    plan = plan_of(pile(elements=2_000_000), [0.5e6])
+    with pytest.raises(StudyError, match=r"None of the samples could be solved.*longer one"):
+        sampled(plan, usual_unknowns(plan.case), samples=50)
