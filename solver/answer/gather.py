@@ -162,7 +162,7 @@ def _single(values: Single) -> Single:
 
 
 def _ledger(blow: Blow) -> Ledger:
-    rows = np.vstack([blow.start_row, blow.frames.ledger])
+    rows = np.concatenate((blow.start_row[None], blow.frames.ledger))
     stride, dt = blow.stride, blow.chain.dt
     time = np.concatenate(([-0.5 * dt], (np.arange(len(rows) - 1) * stride + 0.5) * dt))
     parts = {name: read_only(rows[:, i]) for i, name in enumerate(LEDGER)}

@@ -30,24 +30,27 @@ class State:
 
 @dataclass
 class _Soil:
-    """Nodal springs with a strength on either side: shaft of any law, and the toe."""
+    """Nodal springs with a strength on either side: shaft of any law, and the toe with the gap below it, m."""
 
     stiff: Array
     low: Array
     high: Array
-    gap: Array
+    gap: float
 
     def force_and_slope(self, u: Array) -> tuple[Array, Array]:
         """Static resistance of a first loading from rest, N, and its slope, N/m."""
-        trial = self.stiff * np.where(self.gap > 0, np.maximum(u - self.gap, 0.0), u)
-        inside = (trial > self.low) & (trial < self.high) & ((self.gap == 0) | (u > self.gap))
-        at_rest = (trial == 0) & (self.gap == 0)
-        return np.clip(trial, self.low, self.high), np.where(inside | at_rest, self.stiff, 0.0)
+        trial = self.stiff * u
+        if self.gap > 0:
+            trial[-1] = self.stiff[-1] * max(u[-1] - self.gap, 0.0)
+        slope = np.where((trial > self.low) & (trial < self.high) | (trial == 0), self.stiff, 0.0)
+        if self.gap > 0 and not u[-1] > self.gap:
+            slope[-1] = 0.0
+        return np.minimum(np.maximum(trial, self.low), self.high), slope
 
 
 def _soil_of(chain: Chain, state: State) -> _Soil:
     n = chain.nodes
-    stiff, strength, gap = np.zeros(n), np.zeros(n), np.zeros(n)
+    stiff, strength, gap = np.zeros(n), np.zeros(n), 0.0
     s = state.shaft
     at = slice(s.first, s.first + len(s.r))
     stiff[at] += s.par[1]
@@ -60,7 +63,7 @@ def _soil_of(chain: Chain, state: State) -> _Soil:
     if len(state.bounds.toe_par):
         stiff[-1] += state.bounds.toe_par[2]
         strength[-1] += state.bounds.toe_par[1]
-        gap[-1] = state.bounds.toe_state[0]
+        gap = float(state.bounds.toe_state[0])
     return _Soil(stiff, low, strength, gap)
 
 
@@ -90,7 +93,7 @@ def bring_to_rest(chain: Chain, state: State) -> None:
     motion.v[: chain.head][motion.v[: chain.head] != 0] -= chain.gravity * chain.dt / 2
     s, r = state.shaft, soil.force_and_slope(u)[0]
     _press_joints(chain, state, weight - r - chain.spring * u)
-    s.r[:] = np.clip(s.par[1] * u[s.first : s.first + len(s.r)], -s.par[0], s.par[0])
+    s.r[:] = np.minimum(np.maximum(s.par[1] * u[s.first : s.first + len(s.r)], -s.par[0]), s.par[0])
     s.power[:, 0] = np.clip(s.power[:, 2] * u[s.power_nodes], -s.power[:, 1], s.power[:, 1])
     q = s.radiation
     q[0] = np.clip(u[s.radiation_nodes], -q[1] / q[2], q[1] / q[2])
@@ -126,7 +129,7 @@ def step_ground_back(chain: Chain, state: State) -> None:
     s = state.shaft
     plain = slice(s.first, s.first + len(s.r))
     before = s.r.copy()
-    s.r[:] = np.clip(s.r - s.par[1] * back[plain], -s.par[0], s.par[0])
+    s.r[:] = np.minimum(np.maximum(s.r - s.par[1] * back[plain], -s.par[0]), s.par[0])
     opening[plain] -= (before - s.r) / 2
     before = s.power[:, 0].copy()
     s.power[:, 0] = np.clip(
@@ -167,7 +170,7 @@ class _Hanging:
         # the first node of each group that moves as one, and which group each node is of
         opened = np.ones(n - head, dtype=bool)
         opened[[j.link + 1 - head for j in chain.joints if j.link >= head]] = False
-        self.first, self.group = np.flatnonzero(opened), np.cumsum(opened) - 1
+        self.first, self.group = opened.nonzero()[0], opened.cumsum() - 1
         self.held = chain.fixed_end or chain.wall_gap == 0
         self.still, self.force = np.zeros(n), np.zeros(n - 1)
         # trials may lie far beyond the balance, and leave no trace
@@ -208,7 +211,7 @@ def _static_displacements(chain: Chain, state: State, weight: Array, soil: _Soil
         change, singular = dptsv(*at.tangent(slope), total)[2:]
         if singular:
             break
-        step = np.append(at.still[: chain.head], change[at.group])
+        step = np.concatenate((at.still[: chain.head], change[at.group]))
         drive = float(total @ change)
         total, slope = at.pull_at(u + step)
         if float(total @ change) < -drive / 2:

@@ -70,7 +70,7 @@ def shaft_of(chain: Chain) -> Shaft:
             _add(chain, ground, band, tables[band.law.law])
     _keep_one_law_a_node(tables, head)
     plain = tables["smith"] + tables["viscous"]
-    touched = np.flatnonzero(plain[0])
+    touched = plain[0].nonzero()[0]
     first, stop = (int(touched[0]), int(touched[-1]) + 1) if len(touched) else (head, head)
     rows = plain[:, first:stop]
     smith = tables["smith"][:, first:stop]
@@ -102,6 +102,8 @@ def _inverse(k: Array) -> Array:
 
 
 def _power_rows(table: Array) -> Array:
+    if not table[0].any():
+        return np.zeros((0, 11))
     t = table[:, np.flatnonzero(table[0])]
     zero = np.zeros_like(t[0])
     return np.stack([zero, t[0], t[1], _inverse(t[1]), t[2], t[3] / t[0], *5 * [zero]], axis=1)
@@ -121,9 +123,9 @@ def _add(chain: Chain, ground: Ground, band: Band, table: Array) -> None:
         middle = (left + right) / 2
         nodes = np.arange(stretch.start, stretch.stop)
         # upper halves of all elements, then the lower ones
-        low = np.concatenate([left, middle]).clip(band.top, band.bottom)
-        high = np.concatenate([middle, right]).clip(band.top, band.bottom)
-        touched = np.flatnonzero(high > low)
+        low = _within(band, np.concatenate([left, middle]))
+        high = _within(band, np.concatenate([middle, right]))
+        touched = (high > low).nonzero()[0]
         if not len(touched):
             continue
         low, high = low[touched], high[touched]
@@ -137,13 +139,17 @@ def _add(chain: Chain, ground: Ground, band: Band, table: Array) -> None:
             np.add.at(table[row], at, amount)
 
 
+def _within(band: Band, x: Array) -> Array:
+    return np.minimum(np.maximum(x, band.top), band.bottom)
+
+
 def _receivers(chain: Chain, start: int, stop: int, node: NDArray[np.int64]) -> NDArray[np.int64]:
     """Nodes that take the resistance: not the first or last node of a piece of rod, where there is another."""
     rods_begin = start == chain.head or chain.axial[start - 1] == 0
     rods_end = stop == chain.nodes - 1 or chain.axial[stop] == 0
     low = start + 1 if rods_begin else start
     high = stop - 1 if rods_end else stop
-    return np.clip(node, low, high) if low <= high else node
+    return np.minimum(np.maximum(node, low), high) if low <= high else node
 
 
 def _rubbing(ground: Ground, segment: Segment, points: Array, top: float, bottom: float) -> Array:

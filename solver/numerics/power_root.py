@@ -46,6 +46,8 @@ def pieces_of(exponent: float) -> Array:
 def pieces_for(exponents: Array) -> tuple[NDArray[np.int64], Array]:
     """For the exponent of each node: its first piece in the table of all (-1: not kept), and the table. Kept are those
     of several nodes, not the mean of two layers at the node between them."""
+    if not len(exponents):
+        return np.zeros(0, dtype=np.int64), np.zeros((0, TERMS))
     values, of, nodes = np.unique(exponents.round(12), return_inverse=True, return_counts=True)
     kept = (nodes > 2) & (values >= EXPONENTS[0]) & (values <= EXPONENTS[1])
     tables = [pieces_of(float(value)) for value in values[kept]]

@@ -38,7 +38,7 @@ def settle(chain: Chain, state: State) -> bool:
         if singular or not np.isfinite(change).all():
             return False
         if np.max(np.abs(change)) < STILL:
-            rest.take(u)
+            rest.take(u, at)
             return True
         before = u
         u, at = rest.nearer(u, change, at)
@@ -67,18 +67,19 @@ class _Springs(NamedTuple):
     def resist(self, u: Array) -> tuple[Array, Array]:
         """Resistance (N) and slope (N/m) at displacements of all nodes."""
         trial = self.at + self.stiff * (u[self.node] - self.origin)
-        inside = (trial >= self.low) & (trial <= self.high)
-        return np.clip(trial, self.low, self.high), np.where(inside, self.stiff, 0.0)
+        held = np.minimum(np.maximum(trial, self.low), self.high)
+        return held, np.where(held == trial, self.stiff, 0.0)
 
 
 class _Balance(NamedTuple):
     """Force left over on every node and on every group of nodes that move as one (N), slopes (N/m) of nodes to ground
-    and of links."""
+    and of links, resistance of every spring (N)."""
 
     nodes: Array
     out: Array
     grounded: Array
     links: Array
+    resist: Array
 
 
 class _Rest:
@@ -124,7 +125,15 @@ class _Rest:
         if chain.fixed_end:
             out[-1] = 0.0
             grounded[-1] += self.faces
-        return _Balance(out, np.add.reduceat(out[chain.head :], self.first), grounded, links)
+        return _Balance(out, self.grouped(out), grounded, links, resist)
+
+    def grouped(self, nodes: Array) -> Array:
+        """Sums over the nodes of each group."""
+        return (
+            np.add.reduceat(nodes[self.chain.head :], self.first)
+            if self.bonds
+            else nodes[self.chain.head :].copy()
+        )
 
     def over(self, u: Array, j: int, joint: JointLink) -> float:
         """How far joint number `j` is pressed together (below 0) or pulled beyond its slack, m."""
@@ -137,8 +146,8 @@ class _Rest:
         """Its diagonal and what stands beside it, with next to nothing added so that a wholly slipping trial can be
         solved."""
         head = self.chain.head
-        links = at.links[head + self.first[1:] - 1]
-        diagonal = np.add.reduceat(at.grounded[head:], self.first)
+        links = at.links[head + self.first[1:] - 1] if self.bonds else at.links[head:]
+        diagonal = self.grouped(at.grounded)
         diagonal += 1e-9 * float(self.state.rod.stiff.max()) / len(diagonal)
         diagonal[:-1] += links
         diagonal[1:] += links
@@ -146,7 +155,7 @@ class _Rest:
 
     def nearer(self, u: Array, change: Array, at: _Balance) -> tuple[Array, _Balance]:
         """The whole step; or, where it goes far beyond the balance, the part at whose end nothing drives it on."""
-        step = np.append(np.zeros(self.chain.head), change[self.group])
+        step = np.concatenate((self.still[: self.chain.head], change[self.group]))
         drive, low, middle, high = float(at.out @ change), 0.0, 1.0, 1.0
         at = self.unbalanced(u + step)
         if float(at.out @ change) >= -drive / 2:
@@ -160,25 +169,25 @@ class _Rest:
             low, high = (middle, high) if ahead > 0 else (low, middle)
         return u + middle * step, at
 
-    def take(self, u: Array) -> None:
-        """Write the rest into the state: displacements, materials, ground, joints."""
+    def take(self, u: Array, at: _Balance) -> None:
+        """Write the rest, whose balance is `at`, into the state: displacements, materials, ground, joints."""
         chain, state = self.chain, self.state
-        still, nodes = np.zeros_like(u), self.unbalanced(u).nodes
-        link_forces(state.rod, u, still, state.motion.force, chain.dt)
+        link_forces(state.rod, u, self.still, state.motion.force, chain.dt)
         state.motion.u[:] = u
         s, bounds = state.shaft, state.bounds
-        plain, power, radiation = (spring.resist(u)[0] for spring in self.groups[:3])
+        ends = np.cumsum([len(spring.node) for spring in self.groups])
+        plain, power, radiation, toe = np.split(at.resist, ends[:3])
         s.r[:] = plain
         s.power[:, 0] = power
         s.radiation[0] = np.divide(
             radiation, s.radiation[2], out=np.zeros_like(radiation), where=s.radiation[2] > 0
         )
         if len(bounds.toe_par):
-            _take_toe(bounds.toe_par, bounds.toe_state, float(u[-1]), float(self.groups[3].resist(u)[0][0]))
+            _take_toe(bounds.toe_par, bounds.toe_state, float(u[-1]), float(toe[0]))
         for j, joint in self.joints:
             bounds.joint_force[j] = -self.faces * self.over(u, j, joint)
         for j in self.bonds:
-            bounds.joint_force[j] = bounds.joint_bond[2, j] = nodes[chain.joints[j].link]
+            bounds.joint_force[j] = bounds.joint_bond[2, j] = at.nodes[chain.joints[j].link]
 
 
 def _springs_of(chain: Chain, state: State) -> list[_Springs]:
@@ -191,7 +200,7 @@ def _springs_of(chain: Chain, state: State) -> list[_Springs]:
         (s.power_nodes, s.power[:, 0], s.power[:, 2], s.power[:, 1]),
         (s.radiation_nodes, s.radiation[0] * s.radiation[2], s.radiation[2], s.radiation[1]),
     ):
-        now = np.clip(r + stiff * ahead[node], -strength, strength)
+        now = np.minimum(np.maximum(r + stiff * ahead[node], -strength), strength)
         found.append(_Springs(node, u[node], now, stiff, -strength, strength))
     par, toe = state.bounds.toe_par, state.bounds.toe_state
     if len(par):
