@@ -21,7 +21,7 @@ from app.document import Document
 from app.frame.case_chip import CaseChip
 from app.laid_over import fill_over_menu
 from app.look import icon
-from app.look.spacing import GAP, ROW
+from app.look.spacing import GAP, ROW, SPACE
 from app.provenance import rearrange
 from app.sight import Sight
 from app.tree import copied
@@ -45,7 +45,7 @@ class CaseRow(QWidget):
         self._scroll = QScrollArea(self)
         self._scroll.setFrameShape(QFrame.Shape.NoFrame)
         self._scroll.setWidgetResizable(True)
-        self._scroll.setFixedHeight(ROW + 2 * GAP)
+        self._scroll.setFixedHeight(max(ROW, self.fontMetrics().height() + SPACE) + 2 * GAP)
         self._scroll.setVerticalScrollBarPolicy(Qt.ScrollBarPolicy.ScrollBarAlwaysOff)
         self._scroll.setHorizontalScrollBarPolicy(Qt.ScrollBarPolicy.ScrollBarAlwaysOff)
         self._scroll.setFocusPolicy(Qt.FocusPolicy.NoFocus)

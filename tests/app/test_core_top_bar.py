@@ -33,7 +33,7 @@ def type_size(qapp):
     QApplication.setFont(before)
 
 
-@pytest.mark.parametrize(("width", "points"), [(1280, 10), (1280, 14), (1000, 10), (2000, 10)])
+@pytest.mark.parametrize(("width", "points"), [(1280, 10), (1280, 14), (1600, 18), (1000, 10), (2000, 10)])
 def test_nothing_overlaps_and_the_case_looked_at_is_in_sight(qtbot, type_size, width, points):
     type_size(points)
     project = project_from_tree(rod_or_bar())
@@ -69,8 +69,9 @@ def test_nothing_overlaps_and_the_case_looked_at_is_in_sight(qtbot, type_size, w
     chips = [b for b in bar.cases.findChildren(QPushButton) if b.isVisible()]
     chosen = next(b for b in chips if b.isChecked())
     assert chosen.accessibleName() == "Case Drop 3 with a soft cushion"
-    left = chosen.mapTo(bar.cases, chosen.rect().topLeft()).x()
+    left, top = chosen.mapTo(bar.cases, chosen.rect().topLeft()).toTuple()
     assert left >= 0
+    assert 0 <= top <= bar.cases.height() - chosen.height()  # its foot is not cut in large type
     assert left + chosen.width() <= bar.cases.width()
     assert solution.close()
 

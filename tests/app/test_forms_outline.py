@@ -4,7 +4,8 @@ from __future__ import annotations
 
 import pytest
 from PySide6.QtCore import Qt
-from PySide6.QtGui import QFontMetrics
+from PySide6.QtGui import QFont, QFontMetrics
+from PySide6.QtWidgets import QApplication
 
 from app.bench.forms.field_row import FieldRow
 from app.bench.forms.number_row import NumberRow
@@ -340,3 +341,23 @@ def test_a_short_figure_stays_whole_beside_a_long_name(qtbot) -> None:
     assert name == "Materials"
     assert figure.startswith("steel, c")
     assert figure.endswith("…")
+
+
+def test_numbers_can_be_read_in_large_type(desk, qapp) -> None:
+    """At 18 points, in an outline as wide as the window makes it, each number of the ram's form is seen whole."""
+    before = QFont(QApplication.font())
+    large = QFont(before)
+    large.setPointSizeF(18)
+    QApplication.setFont(large)
+    try:
+        the = desk(driven_pile())
+        the.window.resize(342, 800)
+        the.outline.setGeometry(the.window.rect())
+        rows = [row for row in the.outline.findChildren(NumberRow) if row.isVisible()]
+        assert len(rows) >= 3
+        for row in rows:
+            needed = QFontMetrics(row.edit.font()).horizontalAdvance(row.edit.text())
+            assert row.edit.width() >= needed + 16, row.spec.label
+            assert row.edit.geometry().right() < row.width()
+    finally:
+        QApplication.setFont(before)

@@ -14,11 +14,13 @@ from app.bench.forms.spec import Spec
 from app.document import Document
 from app.explaining import explain
 from app.look.fonts import USUAL_LINE
-from app.look.spacing import FIELD, GAP
+from app.look.spacing import FIELD, GAP, SPACE
 from app.units import Units
 
-#: Texts that the columns of labels and of units have room for; longer labels wrap.
-LABEL_ROOM, UNIT_ROOM = "Outer diameter", "kN·s/m"
+#: Texts that the columns of labels and of units have room for, and in large type; longer labels wrap.
+LABEL_ROOM, UNIT_ROOM = ("Outer diameter", "Drop height"), ("kN·s/m", "kg/m³")
+#: What an editor has room for at least: a number that cannot be read is edited blindly.
+LEAST_ROOM = "00.00"
 
 
 class FieldRow(QWidget):
@@ -39,18 +41,19 @@ class FieldRow(QWidget):
         self._grid.setHorizontalSpacing(GAP + 2)
         self._grid.setVerticalSpacing(1)
         metrics = self.fontMetrics()
+        large = metrics.height() > 1.2 * USUAL_LINE
         self.label = QLabel(spec.label, self)
         self.label.setWordWrap(True)
-        self.label.setFixedWidth(metrics.horizontalAdvance(LABEL_ROOM) + GAP)
+        self.label.setFixedWidth(metrics.horizontalAdvance(LABEL_ROOM[large]) + GAP)
         self.label.setMinimumHeight(FIELD)
         self._grid.addWidget(self.label, 0, 0)
-        self._grid.setColumnMinimumWidth(2, metrics.horizontalAdvance(UNIT_ROOM))
+        self._grid.setColumnMinimumWidth(2, metrics.horizontalAdvance(UNIT_ROOM[large]))
         self._grid.setColumnStretch(1, 1)
         self._problem = _note_label(self, "problem")
         self._grid.addWidget(self._problem, 1, 0, 1, 3)
         self._mark = MarkLine(self)
         self._mark.confirm.clicked.connect(lambda: confirm_mark(self.document, self.spec))
-        begins = 0 if metrics.height() > 1.2 * USUAL_LINE else 1  # in large type it needs the whole row
+        begins = 0 if large else 1  # in large type it needs the whole row
         self._grid.addWidget(self._mark, 2, begins, 1, 3 - begins)
 
     def put_editor(self, editor: QWidget) -> None:
@@ -60,7 +63,7 @@ class FieldRow(QWidget):
         self.label.setToolTip(tooltip_of(self.spec))
         self.label.setBuddy(editor)
         editor.setSizePolicy(QSizePolicy.Policy.Expanding, QSizePolicy.Policy.Fixed)
-        editor.setMinimumWidth(24)
+        editor.setMinimumWidth(self.fontMetrics().horizontalAdvance(LEAST_ROOM) + 2 * SPACE)
         self._grid.addWidget(editor, 0, 1, Qt.AlignmentFlag.AlignVCenter)
         self._editor = editor
 
