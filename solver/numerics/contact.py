@@ -18,7 +18,7 @@ def force_between(bounds, j, push, u, w, dt):
     """Force that presses the faces of joint `j` in this step, that of the coming half step, and the gap at which they
     were stopped, m (of a splice that is pulled: beyond its slack).
 
-    Faces that would meet within this step are stopped at its begin, less than a step's way apart. Stopped in the middle
+    Faces that would meet within this step are stopped at its start, less than a step's way apart. Stopped in the middle
     of a step they would send out two fronts a step apart, and part between their returns: one element would be pulled
     by up to half of the front.
     """
@@ -153,7 +153,7 @@ def joints(bounds, push, u, v, w, dt, note, step):
 def wall(bounds, push, u, v, w, dt, note, step):
     """The same at a rigid wall; `wall` holds its place, the force of the last half step, and where the end was stopped.
 
-    An end that would meet it within this step is stopped at the step's begin, less than a step's way before the wall.
+    An end that would meet it within this step is stopped at the start of the step, less than a step's way before the wall.
     Stopped in the middle of a step it would send out two fronts a step apart, and part from the wall between
     their returns: one element would be pulled by up to half of the front.
     """
