@@ -186,7 +186,7 @@ class March:
         records.event_count[0] = 0
         done = march(
             s.rod, s.shaft, s.bounds, s.motion, self.extremes, records, self.ends, self.sums, self._load(count),
-            first, count, self.stride, chain.dt, 0.0,
+            first, count, self.stride, chain.dt,
         )  # fmt: skip
         self.gauges.take(done)
         self.ram.take(done)

@@ -30,14 +30,14 @@ LAW_NUMBERS = {
 }
 
 
-def rod_of(chain: Chain, drag: float = 0.0) -> Rod:
-    """Links, masses and what acts implicitly on nodes. `drag` (1/s): damping in proportion to mass, for settling."""
+def rod_of(chain: Chain) -> Rod:
+    """Links, masses and what acts implicitly on nodes."""
     dt, links = chain.dt, len(chain.axial)
     par, state = np.zeros((3, links)), np.zeros((4, links))
     for stretch in chain.stretches:
         _law_parameters(chain, stretch, par)
     special = np.flatnonzero((chain.damping > 0) | (chain.spring > 0))
-    effective = chain.mass * (1 + drag * dt / 2) + chain.damping * dt / 2 + chain.spring * dt**2 / 4
+    effective = chain.mass + chain.damping * dt / 2 + chain.spring * dt**2 / 4
     inertia, pivot, carry = _lateral_inertia(chain, effective)
     weight = chain.mass * chain.gravity
     return Rod(

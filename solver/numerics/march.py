@@ -84,7 +84,7 @@ def driving_force(rod, u, v, w, force, dt):
 
 
 @kernel
-def special_nodes(rod, u, v, w, drag, gain, step):
+def special_nodes(rod, u, v, w, step):
     """Nodes with a spring or dashpot to fixed ground, both implicit (their `push` knows it).
 
     The first step is half a step long for what moves already at time 0, and so is the dashpot's part in it.
@@ -94,8 +94,7 @@ def special_nodes(rod, u, v, w, drag, gain, step):
         return
     for s in range(len(rod.special)):
         i = rod.special[s]
-        pull = rod.spring[s] * u[i] + (share * rod.dashpot[s] + drag * rod.mass[i]) * v[i]
-        w[i] += (1.0 - gain) * v[i] - rod.push[i] * pull
+        w[i] -= rod.push[i] * (rod.spring[s] * u[i] + share * rod.dashpot[s] * v[i])
 
 
 @kernel
@@ -173,7 +172,7 @@ def train_step(bounds, push, u, v, w, sums, dt, note, step):
 
 
 @part_of_step
-def free_velocities(rod, u, v, w, force, pull, driven, drag, gain, dt, step):
+def free_velocities(rod, u, v, w, force, pull, driven, dt, step):
     """What loads, springs and dashpots add to velocities that know the links alone; Love's rod finds its own."""
     head = rod.driven[0]
     inert = len(rod.inertia) > 0
@@ -185,7 +184,7 @@ def free_velocities(rod, u, v, w, force, pull, driven, drag, gain, dt, step):
         for i in range(len(rod.opening)):
             w[i] += rod.push[i] * rod.opening[i]
     if len(rod.special) > 0:
-        special_nodes(rod, u, v, w, drag, gain, step)
+        special_nodes(rod, u, v, w, step)
 
 
 @part_of_step
@@ -250,14 +249,13 @@ def write_down(rod, ground, bounds, ext, rec, rest, u, v, w, force, sums, stride
 
 
 @kernel
-def march(rod, ground, bounds, motion, ext, rec, ends, sums, load, first, count, stride, dt, drag):
+def march(rod, ground, bounds, motion, ext, rec, ends, sums, load, first, count, stride, dt):
     """March at most `count` steps from step number `first`; returns how many, fewer where a run that `ends` by itself
-    came to rest. `load`: force on the struck end per step (N), or its velocity where it is driven. `drag` (1/s) damps
-    every node in proportion to its mass (0 but for settling). Changes its arrays in place.
+    came to rest. `load`: force on the struck end per step (N), or its velocity where it is driven. Changes its
+    arrays in place.
     """
     u, v, w, rest = motion.u, motion.v, motion.w, motion.rest
     note = (rec.events, rec.event_count)
-    gain = (1.0 - 0.5 * drag * dt) / (1.0 + 0.5 * drag * dt)
     push, head, last = rod.push, rod.driven[0], len(u) - 1
     force = motion.pulls[1 : last + 1]
     shaft.ready_power(ground.power_nodes, v, push, ground.power, dt, first)
@@ -265,8 +263,8 @@ def march(rod, ground, bounds, motion, ext, rec, ends, sums, load, first, count,
     while done < count:
         step, pull = first + done, load[done]
         driven = step < rod.driven[1]
-        sweep(rod, ext, motion, u, v, w, gain, dt, rec.flags, note, step, waiting)
-        free_velocities(rod, u, v, w, force, pull, driven, drag, gain, dt, step)
+        sweep(rod, ext, motion, u, v, w, dt, rec.flags, note, step, waiting)
+        free_velocities(rod, u, v, w, force, pull, driven, dt, step)
         ground_nodes(ground, bounds, push, u, v, w, sums, dt, note, step)
         if step == rod.driven[1] and step > 0:
             pull += let_go(push, sums, w, head)

@@ -14,7 +14,7 @@ BLOCK = 416
 
 
 @part_of_step
-def sweep(rod, ext, motion, u, v, w, gain, dt, flags, note, step, waiting):
+def sweep(rod, ext, motion, u, v, w, dt, flags, note, step, waiting):
     """Displacements (where those of the step before are `waiting`), forces with their envelopes, velocities `w`; the
     first link of a block of one law that leaves the elastic range is noted."""
     pulls, links, at = motion.pulls, len(u) - 1, float(step)
@@ -38,16 +38,16 @@ def sweep(rod, ext, motion, u, v, w, gain, dt, flags, note, step, waiting):
                 )
             known = slice(start, stop if stop < links else stop + 1)
             around = pulls[start : known.stop + 1]
-            velocities(rod.push[known], rod.weight[known], gain, v[known], w[known], around)
+            velocities(rod.push[known], rod.weight[known], v[known], w[known], around)
 
 
 @apart
-def velocities(push, weight, gain, v, w, pulls):
-    """w = gain v + (dt/m)(forces); node i lies between `pulls` i and i + 1."""
+def velocities(push, weight, v, w, pulls):
+    """w = v + (dt/m)(forces); node i lies between `pulls` i and i + 1."""
     n = len(w)
     above, below = pulls[:n], pulls[1 : n + 1]
     for i in range(n):
-        w[i] = gain * v[i] + push[i] * (below[i] - above[i] + weight[i])
+        w[i] = v[i] + push[i] * (below[i] - above[i] + weight[i])
 
 
 @part_of_step

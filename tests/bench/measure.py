@@ -13,8 +13,6 @@ Clock = Callable[[], float]
 
 #: Spread of the calibration loop (half the distance of its quartiles over its median) above which nothing is judged.
 TOO_NOISY = 0.08
-#: Shortest time that is measured at once, s; shorter work is repeated within it.
-SHORTEST = 0.02
 
 
 @dataclass

@@ -64,7 +64,7 @@ class Rig:
         began = clock()
         march(
             s.rod, s.shaft, s.bounds, s.motion, self.extremes, self.records, self.ends, self.sums,
-            self.load, 0, self.steps, self.stride, self.chain.dt, 0.0,
+            self.load, 0, self.steps, self.stride, self.chain.dt,
         )  # fmt: skip
         return clock() - began
 
