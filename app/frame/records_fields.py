@@ -240,10 +240,11 @@ class RecordsFields(QScrollArea):
             ("Time zero", self.zero),
             ("Digits", self.digits),
         )
+        time = units_of(self._document.project).unit("time")
         for word, field in named:
             field.setAccessibleName(word)
             field.setToolTip(TELLS[word])
-            label = QLabel(word)
+            label = QLabel(f"{word}, {time}" if field in (self.start, self.end, self.zero) else word)
             label.setBuddy(field)
             label.setToolTip(TELLS[word])
             form.addRow(label, field)

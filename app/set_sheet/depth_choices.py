@@ -10,7 +10,7 @@ from PySide6.QtWidgets import QLabel, QVBoxLayout, QWidget
 from app.document import Document
 from app.look.spacing import GAP
 from app.set_sheet.fields import NumbersField
-from app.units import Units, units_of
+from app.units import Units, rounded, units_of
 from solver import Case
 from solver.studies import StudyError
 from solver.studies.settings import DepthSettings, depth_settings_of
@@ -59,7 +59,8 @@ class DepthChoices(QWidget):
         if names != list(self.factors):
             self._make_rows(names)
         pale = settings.model_copy(update={"penetrations": None}).depths(case)
-        self.penetrations.show_values(settings.penetrations, (pale[0], pale[-1]), "length", units)
+        span = " to ".join(rounded(float(units.number(one, "length"))) for one in (pale[0], pale[-1]))
+        self.penetrations.show_values(settings.penetrations, (), "length", units, span)
         pace = settings.blows_per_minute
         self.pace.show_values(
             None if pace == DepthSettings().blows_per_minute else (pace,), (40.0,), "none", units
@@ -82,7 +83,7 @@ class DepthChoices(QWidget):
             row.deleteLater()
         self.factors = {}
         for name in names:
-            row = NumbersField(name, FACTOR)
+            row = NumbersField(name.capitalize() if name in ("toe", "shaft") else name, FACTOR)
             row.entered.connect(lambda given, name=name: self._set_factor(name, given[0] if given else None))
             self.factors[name] = row
             self._column.addWidget(row)

@@ -51,15 +51,20 @@ class NumbersField(QWidget):
         self.field.editingFinished.connect(self._enter)
 
     def show_values(
-        self, values: Sequence[float] | None, usual: Sequence[float], dimension: str, units: Units
+        self,
+        values: Sequence[float] | None,
+        usual: Sequence[float],
+        dimension: str,
+        units: Units,
+        pale: str | None = None,
     ) -> None:
-        """What is chosen (SI), or `None` and what the program takes; a text that is being typed stays."""
+        """What is chosen (SI), or `None` and what the program takes, in words of its own where `pale` gives them; a
+        text that is being typed stays."""
         self._dimension, self._units = dimension, units
         self._shown = tuple(values or ())
         self.unit.setText(units.unit(dimension))
-        self.unit.setVisible(dimension != "none")
         text = self._text(values or ())
-        pale = self._text(usual, typed=False)
+        pale = self._text(usual, typed=False) if pale is None else pale
         if self.field.placeholderText() != pale:
             self.field.setPlaceholderText(pale)
         if not self.field.hasFocus() and self.field.text() != text and not self.problem.isVisibleTo(self):

@@ -37,7 +37,9 @@ class Ranges(QWidget):
         self.rows: dict[What, NumbersField] = {}
         for what, entry in INPUTS.items():
             row = NumbersField(
-                entry.label, "Two factors, 1 = as the case says; empty = the usual range.", most=2
+                entry.label.capitalize(),
+                "Two factors, 1 = as the case says; empty = the usual range.",
+                most=2,
             )
             row.field.setFixedWidth(widened(96))
             row.entered.connect(lambda values, what=what: self._enter(what, values))

@@ -11,6 +11,7 @@ from pytestqt.qtbot import QtBot
 
 from app.document import Document
 from app.picture_files import PictureChoices, picture_file
+from app.set_sheet.fields import NumbersField
 from app.set_sheet.scene import Line, Mark, Scene, Words
 from app.set_sheet.workspace import SetSheet
 from app.words import MODEL_CAUTION
@@ -61,6 +62,17 @@ def test_fills_and_answers_by_itself(shown: SetSheet) -> None:
     assert shown.choices.stop_at.text().startswith("Stop when the mean set of the last 10 blows is")
     assert shown.choices.largest.text().startswith("Up to a drop height of")
     assert "drop height" in shown.choices.value.label.text()
+
+
+def test_fields_end_in_one_line_and_say_what_is_usual(shown: SetSheet) -> None:
+    """Those without a unit too; the usual depths, twelfths of 10 m in the ground, are told from the first to the last."""
+    fields = [one.field for one in shown.choices.findChildren(NumbersField) if one.isVisible()]
+    ends = {field.mapTo(shown.choices, field.rect().topRight()).x() for field in fields}
+    assert len(fields) > 10
+    assert len(ends) == 1
+    assert shown.choices.to_depth.penetrations.field.placeholderText() == "0.833 to 10.0"
+    labels = {one.label.text() for one in shown.choices.findChildren(NumbersField)}
+    assert {"Quake of the shaft", "Energy of the blow"} <= labels
 
 
 def test_what_the_numbers_are_stands_beside_them(shown: SetSheet) -> None:

@@ -42,7 +42,7 @@ class PartPicker(QFrame):
     def __init__(self, document: Document, kind: PartKind, pointer: str, parent: QWidget) -> None:
         super().__init__(parent, Qt.WindowType.Popup)
         self.setAttribute(Qt.WidgetAttribute.WA_DeleteOnClose)
-        self.setProperty("role", "paper")
+        self.setProperty("role", "popup")  # with an edge: it lies on panels of its own colour
         self.setFrameShape(QFrame.Shape.StyledPanel)
         self._document, self._kind, self._pointer = document, kind, pointer
         self._folder = user_settings().folder
