@@ -15,10 +15,14 @@ from solver.model.quantity import Quantity, quantity_of
 Way = tuple[tuple[str, bool, BaseModel], ...]
 #: Any quantity in SI units that a member, its load or its ground has lies between these by many powers of ten.
 LEAST, MOST = 1e-30, 1e30
+#: No solid carries waves faster than some 20 km/s (common practice: diamond); so far above (m/s) lies a slip of a unit,
+#: whose steps would be so short that a run takes minutes to be refused.
+FASTEST = 1e6
 
 
 def refuse_beyond_measure(case: Case) -> None:
-    """Raise `SolveError` with the place of a number whose size nothing has; 0 is none of them."""
+    """Raise `SolveError` with the place of a number whose size nothing has (0 is none of them), or with a material
+    whose waves are faster than any."""
     used = {name: material for name, material in case.materials.items() if name in _named(case)}
     parts = [("", case), *((f"material '{name}'", material) for name, material in used.items())]
     for start, part in parts:
@@ -29,6 +33,12 @@ def refuse_beyond_measure(case: Case) -> None:
                     f"{where[:1].upper()}{where[1:]}: {quantity.label} {value:.3g} {quantity.unit}".rstrip()
                     + f" is beyond all measure ({LEAST:g} to {MOST:g}). Check the number and its unit."
                 )
+    for name, material in used.items():
+        if material.wave_speed > FASTEST:
+            raise SolveError(
+                f"Material '{name}': waves of {material.wave_speed:.3g} m/s (modulus {material.young_modulus:.3g} Pa, "
+                f"density {material.density:.3g} kg/m3) are faster than in any solid. Check both and their units."
+            )
 
 
 def _named(case: Case) -> set[str]:

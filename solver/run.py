@@ -50,7 +50,13 @@ def solve_chain(
     sets: list[float] = []
     for blow in range(most):
         march = March(chain, state, began, blow / most, 1 / most, sets)
-        stopped = march.run(progress, cancel)
+        try:
+            stopped = march.run(progress, cancel)
+        except BaseException:
+            # the error keeps this frame, and with it files as large as the run
+            march.gauges.close()
+            march.ram.close()
+            raise
         at_end = state.motion.u.copy()
         settled = chain.case.ground is not None and not stopped and settle(chain, state)
         if most > 1 and not stopped and not settled:

@@ -32,6 +32,13 @@ class Store:
         else:
             self._array = np.empty((rows, columns))
 
+    def close(self) -> None:
+        """Give the file up; what was read of it stays."""
+        if self._file is not None:
+            self._file.close()
+
+    __del__ = close
+
     def room(self, n: int) -> tuple[Array, int]:
         """Where the next `n` columns are to be written: an array of all rows, and the first of its columns."""
         if self._array is not None:

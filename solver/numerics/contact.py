@@ -153,9 +153,8 @@ def joints(bounds, push, u, v, w, dt, note, step):
 def wall(bounds, push, u, v, w, dt, note, step):
     """The same at a rigid wall; `wall` holds its place, the force of the last half step, and where the end was stopped.
 
-    An end that would meet it within this step is stopped at the start of the step, less than a step's way before the wall.
-    Stopped in the middle of a step it would send out two fronts a step apart, and part from the wall between
-    their returns: one element would be pulled by up to half of the front.
+    An end that would meet it within this step is stopped at the start of the step, less than a step's way before it:
+    see `force_between`.
     """
     last = len(u) - 1
     before = bounds.wall[1]

@@ -16,9 +16,10 @@ from hypothesis import given
 from hypothesis import strategies as st
 
 from solver import Progress, Result, SolveError, solve
+from solver.answer.store import Store
 from solver.numerics.chain import build_chain
 from solver.run import solve_chain
-from tests.published.rods import Z, case_of, material, part, pulse, solved
+from tests.published.rods import AREA, Z, case_of, material, part, pulse, solved
 from tests.solver.strategies import Tree, case_in, project_trees
 
 #: Long enough for many chunks of 8 million element-steps: 2 s on 500 elements of 20 mm are 500,000 steps.
@@ -361,3 +362,27 @@ def test_a_number_beyond_all_measure_is_named_before_anything_overflows() -> Non
     }.items():
         with pytest.raises(SolveError, match=re.escape(told)):
             solve(case)
+
+
+def test_a_refused_run_gives_up_its_files(monkeypatch: pytest.MonkeyPatch) -> None:
+    """Records in files, as long runs have them: closed, while the error still holds all that led to it; and what was
+    read of a file before it was closed stays.
+    """
+    files: list[Store] = []
+
+    def in_file(rows: int, columns: int) -> Store:
+        files.append(Store(rows, columns, most_in_memory=0))
+        return files[-1]
+
+    monkeypatch.setattr("solver.marching.Store", in_file)
+    pulled = solve(case_of(HALF_SINE, gauges={"g": 5.0}, dx=0.25, duration=0.004)).gauges["g"].force
+    with pytest.raises(SolveError, match="pressed together"):
+        solve(case_of(pulse("half_sine", 0.001, 1e10), gauges={"g": 5.0}, dx=0.25, duration=0.004))
+    whole, _, refused, _ = files
+    assert whole.read().shape == (5, pulled.size)
+    with pytest.raises(ValueError, match="closed file"):
+        refused.read()
+    files.clear()
+    del whole
+    # a half-sine of 20 steps
+    assert pulled.min() == pytest.approx(-1e8 * AREA, rel=0.01)

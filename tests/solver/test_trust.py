@@ -3,7 +3,7 @@
 import numpy as np
 import pytest
 
-from solver import Result, findings_of, first_blow
+from solver import Result, SolveError, findings_of, first_blow
 from solver.answer.cautions import cautions_of
 from tests.published.rods import case_of, material, part, pulse, solved
 
@@ -16,6 +16,14 @@ def test_a_density_in_the_wrong_unit_shows_by_its_wave_speed() -> None:
     assert [one.name for one in told] == ["slip"]
     assert 163_000 < told[0].value < 164_000
     assert (told[0].suspect, told[0].given) == ("density", 7.85)
+
+
+@pytest.mark.parametrize("density", [7.85e-9, 7.85e-6])
+def test_a_density_of_millimetres_is_refused_at_once(density: float) -> None:
+    """Its steps would be so short that half a minute went by before the run was refused for another reason."""
+    slip = material("slip", density=density)
+    with pytest.raises(SolveError, match=r"'slip'.*faster than in any solid"):
+        solved(pulse("half_sine", 1e-3), part(1.0, of="slip"), materials=[slip])
 
 
 def test_a_modulus_in_the_wrong_unit_is_named() -> None:
