@@ -42,6 +42,7 @@ QLineEdit, QComboBox, QSpinBox, QPlainTextEdit, QTextEdit {{
     background: {raised}; border: 1px solid {edge}; border-radius: {radius}px;
     padding: 0 {inner}px; min-height: {field}px;
     selection-background-color: {accent}; selection-color: {on_accent}; }}
+QLineEdit {{ placeholder-text-color: {soft_ink}; }}
 QPlainTextEdit, QTextEdit {{ padding: {gap}px; }}
 QSpinBox::up-button, QSpinBox::down-button {{ subcontrol-origin: margin; width: 0; height: 0; }}
 QLineEdit:focus, QComboBox:focus, QSpinBox:focus, QPlainTextEdit:focus, QTextEdit:focus {{
@@ -70,6 +71,7 @@ QPushButton:disabled, QToolButton:disabled {{ color: {line}; background: {paper}
 QPushButton[role="chip"]:checked, QToolButton[role="chip"]:checked {{
     background: {chosen}; color: {on_chosen}; border-color: {chosen}; }}
 QPushButton[role="main"] {{ background: {accent}; color: {on_accent}; border-color: {accent}; font-weight: 600; }}
+QPushButton[role="main"]:disabled {{ background: {paper}; color: {line}; border-color: {edge}; }}
 QPushButton[role="main"]:focus {{ border: 2px solid {ink}; }}
 QPushButton[role="main"]:hover {{ background: {chosen}; color: {on_chosen}; }}
 QPushButton[role="quiet"], QToolButton[role="quiet"] {{ background: transparent; border: 1px solid transparent; }}

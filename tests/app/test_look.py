@@ -3,12 +3,32 @@
 import numpy as np
 import pytest
 from PySide6.QtCore import Qt
-from PySide6.QtWidgets import QListWidget, QListWidgetItem, QSpinBox, QVBoxLayout, QWidget
+from PySide6.QtWidgets import (
+    QLineEdit,
+    QListWidget,
+    QListWidgetItem,
+    QPushButton,
+    QSpinBox,
+    QVBoxLayout,
+    QWidget,
+)
 
 from app.look import DARK, LIGHT, apply_look, icon, motion_map, stress_map
 from app.look.icons import SHAPES
-from app.look.palette import palette
+from app.look.palette import CHOICE, palette
 from app.look.stylesheet import stylesheet
+
+
+@pytest.fixture(params=["light", "dark"])
+def look(request, qapp):
+    """The program's look, put back as it was."""
+    before, sheet, colours = qapp.property(CHOICE), qapp.styleSheet(), qapp.palette()
+    apply_look(qapp, request.param)
+    yield
+    qapp.setProperty(CHOICE, before)
+    qapp.setPalette(colours)
+    qapp.setStyleSheet(sheet)
+
 
 PALETTES = pytest.mark.parametrize("colours", [LIGHT, DARK], ids=["light", "dark"])
 
@@ -133,27 +153,41 @@ def test_the_stylesheet_leaves_no_gap(colours):
     assert "{" not in stylesheet(colours, 9.0).replace("{ ", "").replace("{\n", "").replace(" {", "")
 
 
-@pytest.mark.parametrize("choice", ["light", "dark"])
-def test_boxes_to_tick_are_seen_and_number_boxes_show_their_number(qtbot, qapp, choice):
+def test_boxes_to_tick_are_seen_and_number_boxes_show_their_number(qtbot, look):
     """A box to tick has an edge of 3:1 on what it stands on (WCAG 2.1, 1.4.11), in lists too; a number box gives its
     whole width to the number."""
-    before = qapp.property("striketrace_look") or "light"
-    apply_look(qapp, choice)
-    try:
-        ground, ticks, number = QWidget(), QListWidget(), QSpinBox()
-        qtbot.addWidget(ground)
-        number.setButtonSymbols(QSpinBox.ButtonSymbols.NoButtons)
-        item = QListWidgetItem("Force", ticks)
-        item.setCheckState(Qt.CheckState.Unchecked)
-        column = QVBoxLayout(ground)
-        column.addWidget(ticks)
-        column.addWidget(number)
-        ground.resize(300, 200)
-        ground.grab()  # lays out what is not on the screen
-        row = ticks.visualItemRect(item)
-        line = ticks.viewport().grab().toImage()
-        seen = {line.pixelColor(x, row.center().y()).name() for x in range(row.left() + 24)}
-        assert max(contrast(colour, palette().paper) for colour in seen) >= 3
-        assert number.lineEdit().width() > 0.8 * number.width()
-    finally:
-        apply_look(qapp, before)
+    ground, ticks, number = QWidget(), QListWidget(), QSpinBox()
+    qtbot.addWidget(ground)
+    number.setButtonSymbols(QSpinBox.ButtonSymbols.NoButtons)
+    item = QListWidgetItem("Force", ticks)
+    item.setCheckState(Qt.CheckState.Unchecked)
+    column = QVBoxLayout(ground)
+    column.addWidget(ticks)
+    column.addWidget(number)
+    ground.resize(300, 200)
+    ground.grab()  # lays out what is not on the screen
+    row = ticks.visualItemRect(item)
+    line = ticks.viewport().grab().toImage()
+    seen = {line.pixelColor(x, row.center().y()).name() for x in range(row.left() + 24)}
+    assert max(contrast(colour, palette().paper) for colour in seen) >= 3
+    assert number.lineEdit().width() > 0.8 * number.width()
+
+
+def test_pale_text_is_read_and_a_main_button_shows_that_it_cannot_be_pressed(qtbot, look):
+    """What the program takes where a field is empty is text (4.5:1). A button that is off has no accent on it."""
+    field, button = QLineEdit(), QPushButton("Save")
+    for widget in (field, button):
+        qtbot.addWidget(widget)
+    field.setPlaceholderText("███")
+    button.setProperty("role", "main")
+    button.setEnabled(False)
+    assert max(contrast(colour, palette().raised) for colour in colours_of(field)) >= 4.5
+    assert palette().accent not in colours_of(button)
+    button.setEnabled(True)
+    assert palette().accent in colours_of(button)
+
+
+def colours_of(widget):
+    """Colours of the pixels through the middle of what is drawn."""
+    image = widget.grab().toImage()
+    return {image.pixelColor(x, image.height() // 2).name() for x in range(image.width())}

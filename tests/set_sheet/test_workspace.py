@@ -65,7 +65,7 @@ def test_fills_and_answers_by_itself(shown: SetSheet) -> None:
 
 
 def test_fields_end_in_one_line_and_say_what_is_usual(shown: SetSheet) -> None:
-    """Those without a unit too; the usual depths, twelfths of 10 m in the ground, are told from the first to the last."""
+    """Those without a unit too; the usual depths, twelfths of 10 m, are told from the first to the last."""
     fields = [one.field for one in shown.choices.findChildren(NumbersField) if one.isVisible()]
     ends = {field.mapTo(shown.choices, field.rect().topRight()).x() for field in fields}
     assert len(fields) > 10
