@@ -10,11 +10,11 @@ from solver.beyond import refuse_beyond_measure
 from solver.errors import SolveError
 from solver.marching import March, Progress
 from solver.model.project import Case, RepeatedBlows
-from solver.numerics.assemble import bounds_of, motion_of, rod_of
-from solver.numerics.chain import Chain, build_chain
-from solver.numerics.equilibrium import State, bring_to_rest, step_ground_back
-from solver.numerics.ground import shaft_of
+from solver.numerics.assemble import rod_of
+from solver.numerics.chain import Chain
+from solver.numerics.equilibrium import State, step_ground_back
 from solver.numerics.settle import settle
+from solver.standing import at_rest, standing
 from solver.watch import refuse_unsupported
 
 
@@ -33,20 +33,22 @@ def solve(
     """
     refuse_beyond_measure(case)
     refuse_unsupported(case)
-    return solve_chain(build_chain(case, element_length), progress, cancel)
+    return solve_chain(*standing(case, element_length), progress, cancel)
 
 
 def solve_chain(
     chain: Chain,
+    state: State | None = None,
     progress: Callable[[Progress], None] | None = None,
     cancel: Callable[[], bool] | None = None,
 ) -> Result:
-    """Solve a case that is discretised already. Same arguments and errors as `solve`."""
+    """Solve a case that is discretised already, from a `state` before the first step (`None`: at rest), which changes.
+    Other arguments and errors as for `solve`."""
     began = time.perf_counter()
     wanted = chain.case.run.blows
     most = wanted.most if isinstance(wanted, RepeatedBlows) else wanted
     tolerance = wanted.tolerance if isinstance(wanted, RepeatedBlows) else 0.0
-    state = _at_rest(chain)
+    state = state or at_rest(chain)
     sets: list[float] = []
     for blow in range(most):
         march = March(chain, state, began, blow / most, 1 / most, sets)
@@ -77,15 +79,9 @@ def solve_chain(
     raise AssertionError("a run has at least one blow")
 
 
-def _at_rest(chain: Chain) -> State:
-    state = State(rod_of(chain), shaft_of(chain), bounds_of(chain), motion_of(chain))
-    bring_to_rest(chain, state)
-    return state
-
-
 def _next_blow(chain: Chain, old: State) -> State:
     """The member as it came to rest, its ram lifted to strike again: new cushions, the ground as it was left."""
-    fresh = _at_rest(chain)
+    fresh = at_rest(chain)
     u = old.motion.u.copy()
     u[: chain.head] = u[chain.head] + fresh.motion.u[: chain.head] - fresh.motion.u[chain.head]
     state = State(rod_of(chain), old.shaft, fresh.bounds, fresh.motion)

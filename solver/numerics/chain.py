@@ -294,7 +294,7 @@ def _finished(
         joints=joints,
         train=train,
         head=head,
-        velocity=_first_velocities(case, mass, head, len(train) == 2),
+        velocity=first_velocities(case, mass, head, len(train) == 2),
         fixed_end=end.kind == "fixed",
         wall_gap=end.gap if end.kind == "wall" else np.inf,
         gravity=GRAVITY if case.run.gravity else 0.0,
@@ -316,7 +316,7 @@ def _attach(case: Case, position: Array, head: int, nodes: tuple[Array, Array, A
     return extra
 
 
-def _first_velocities(case: Case, mass: Array, head: int, capped: bool) -> Array:
+def first_velocities(case: Case, mass: Array, head: int, capped: bool) -> Array:
     """Velocity of every node before the first step, m/s, shape (n,): what strikes moves, its cap is at rest."""
     velocity = np.zeros_like(mass)
     if isinstance(case.load, Drop | Striker):

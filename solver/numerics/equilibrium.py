@@ -72,8 +72,13 @@ def bring_to_rest(chain: Chain, state: State) -> None:
 
     Raises `SolveError` where nothing holds it.
     """
+    lay_at_rest(chain, state)
+    step_back_half(chain, state)
+
+
+def lay_at_rest(chain: Chain, state: State) -> None:
+    """The part of it that does not depend on how fast the ram falls."""
     if chain.gravity == 0.0:
-        _step_back_half(chain, state)
         return
     cap = sum(link.link + 1 < chain.head for link in chain.train)
     cap_weight = float(state.rod.weight[chain.head - 1]) if cap else 0.0
@@ -89,8 +94,6 @@ def bring_to_rest(chain: Chain, state: State) -> None:
     motion.rest[:] = u
     # the gap is the distance to the wall at rest, before the blow
     state.bounds.wall[::2] += u[-1]
-    # a free fall has half a step to go before its first half-step velocity
-    motion.v[: chain.head][motion.v[: chain.head] != 0] -= chain.gravity * chain.dt / 2
     s, r = state.shaft, soil.force_and_slope(u)[0]
     _press_joints(chain, state, weight - r - chain.spring * u)
     s.r[:] = np.minimum(np.maximum(s.par[1] * u[s.first : s.first + len(s.r)], -s.par[0]), s.par[0])
@@ -98,11 +101,14 @@ def bring_to_rest(chain: Chain, state: State) -> None:
     q = s.radiation
     q[0] = np.clip(u[s.radiation_nodes], -q[1] / q[2], q[1] / q[2])
     _lay_toe(state.bounds, float(u[-1]), float(r[-1]))
-    _step_back_half(chain, state)
 
 
-def _step_back_half(chain: Chain, state: State) -> None:
-    """Cushion and shaft live on half steps: before the blow by half a step, what moves was not yet where it is at 0."""
+def step_back_half(chain: Chain, state: State) -> None:
+    """The other part: cushion and shaft live on half steps, and half a step before the blow what moves was not yet
+    where it is at 0."""
+    # a free fall has half a step to go before its first half-step velocity
+    striking = state.motion.v[: chain.head]
+    striking[striking != 0] -= chain.gravity * chain.dt / 2
     back = state.motion.v * chain.dt / 2
     if len(state.bounds.train_links):
         a = int(state.bounds.train_links[0])
