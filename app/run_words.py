@@ -10,6 +10,7 @@ import numpy as np
 
 from app.units import Units
 from app.words import SIGNS, STATES, Note, blows, graver, percent
+from app.words import place as place_words
 from solver.answer.findings import EnergyFinding, Findings, StressFinding
 from solver.answer.result import Residual, Result
 from solver.convergence import MeshCheck
@@ -136,12 +137,12 @@ def _blows(result: Result, units: Units) -> Iterator[Note]:
 def _stress(of: StressFinding, units: Units) -> str:
     if of.worst is None:
         state = f"{SIGNS['no limit']} {STATES['no limit']}"
-        return f"{state} · {_second_blow(of, units) or units.show(of.peak.position, 'length')}"
+        return f"{state} · {_second_blow(of, units) or place_words(of.peak.position, units)}"
     share = "" if of.worst.share is None else f", {percent(of.worst.share)}"
     word = of.state
     if of.first is not None:
         return f"{SIGNS[of.state]} {word}{share} · {_second_blow(of, units)}"
-    where = units.show(of.worst.position, "length")
+    where = place_words(of.worst.position, units)
     return f"{SIGNS[of.state]} {word}{share} · {where}, {units.show(of.worst.time, 'time')}"
 
 

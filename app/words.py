@@ -6,7 +6,7 @@ from collections.abc import Iterator, Sequence
 from dataclasses import dataclass
 
 from app.names import with_kind
-from app.units import Units, rounded
+from app.units import NO_BREAK, Units, rounded
 from solver.answer.cautions import Caution
 from solver.answer.findings import (
     EnergyFinding,
@@ -143,7 +143,15 @@ def as_text(findings: Findings, case: Case, units: Units, also: Sequence[Note] =
 
 def place_and_time(position: float, time: float, units: Units) -> str:
     """ "at 16.0 m, 4.90 ms"."""
-    return f"at {units.show(position, 'length')}, {units.show(time, 'time')}"
+    return f"at {place(position, units)}, {units.show(time, 'time')}"
+
+
+def place(position: float, units: Units) -> str:
+    """A distance near the struck end to thousandths of its unit: more digits than a mesh can tell would follow."""
+    number = round(float(units.number(position, "length")), 3)
+    if 0 < abs(number) < 0.1:
+        return f"{number:.3f}{NO_BREAK}{units.unit('length')}".replace("-", "\u2212")
+    return units.show(position if number else 0.0, "length")
 
 
 def percent(share: float) -> str:
@@ -257,12 +265,14 @@ def _happenings(all_of_them: tuple[Happening, ...], case: Case, units: Units) ->
 
 
 def _happening(one: Happening, case: Case, units: Units) -> str:
-    at, when = units.show(one.position, "length"), units.show(one.time, "time")
+    at, when = place(one.position, units), units.show(one.time, "time")
     striking = "Striker" if case.load.kind == "striker" else "Ram"
+    bare_cap = case.load.kind == "drop" and case.load.cap_mass > 0 and case.load.pile_cushion is None
+    returning = "Ram or cap" if bare_cap else striking
     segment = case.member.segments[int(segment_of(case, one.position))].name  # type: ignore[arg-type]
     again = " again" if one.again else ""
     return {
-        "impact": f"{striking} strikes{again} at {when}",
+        "impact": f"{returning} strikes{again} at {when}",
         "separation": f"{striking} leaves{again} at {when}",
         "first_yield": f"{segment} first yields at {at}, {when}",
         "crack": f"{segment} cracks at {at}, {when}",

@@ -129,7 +129,9 @@ def limit_words(
     """Name and limit of one sign of stress in a row of its own, at the side of the panel where it is drawn."""
     told = [units.show(value, "stress") for value in limits]
     beyond = [not scale.low <= side * value <= scale.high for value in limits]
-    words = " and ".join(f"{text} (beyond)" if out else text for text, out in zip(told, beyond, strict=True))
+    words = " and ".join(
+        f"{text} (off the scale)" if out else text for text, out in zip(told, beyond, strict=True)
+    )
     plain = " and ".join(told)
     texts = [f"{sign}, limit {words}", f"{sign}, limit {plain}", f"{sign}, {plain}", f"limit {plain}"]
     texts = texts if told else [f"{sign}, no limit given", f"{sign}, no limit", sign]

@@ -19,6 +19,7 @@ from app.words import (
     caution,
     notes,
     percent,
+    place,
     quality,
     verdict,
     warning,
@@ -235,3 +236,16 @@ def test_a_set_that_is_read_too_early_says_so_beside_its_number():
 def test_a_set_of_next_to_nothing_is_not_counted_in_blows():
     line = verdict(findings(set=SetFinding(7e-6, 0.8e-3, 3e-3, 0.2, 24.0)), METRIC)[2]
     assert plain(line.detail).startswith("practically none, over 1000 blows per 0.25 m · toe moved")
+
+
+@pytest.mark.parametrize(
+    ("position", "units", "says"),
+    [
+        (0.0025, US, "0.008 ft"),
+        (0.00012, METRIC, "0 m"),
+        (0.25, METRIC, "0.250 m"),
+        (-0.01, METRIC, "−0.010 m"),
+    ],
+)
+def test_a_place_near_the_struck_end_has_no_more_digits_than_a_mesh(position, units, says):
+    assert plain(place(position, units)) == says
