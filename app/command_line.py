@@ -126,9 +126,8 @@ def _length(text: str) -> float:
 
 
 def _window(arguments: argparse.Namespace) -> int:
-    signals = (
-        ClosingSignals()
-    )  # before Qt, whose import takes longer than a person may take to change her mind
+    # before Qt, whose import takes longer than a person may take to change her mind
+    signals = ClosingSignals()
     try:
         from PySide6 import QtGui, QtSvg, QtWidgets  # noqa: F401  (a system library that is missing shows here)
     except ImportError as error:

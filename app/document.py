@@ -313,9 +313,8 @@ class _Edit(QUndoCommand):
         self, document: Document, label: str, before: Project, after: Project, merge: str | None
     ) -> None:
         super().__init__(label)
-        self._document = ref(
-            document
-        )  # a circle through Qt's own objects is taken apart in an order that may crash
+        # a circle through Qt's own objects is taken apart in an order that may crash
+        self._document = ref(document)
         self._before, self._after, self._merge = before, after, merge
         self._time = monotonic()
         self._done_once = False
@@ -350,9 +349,8 @@ def _not_done(label: str, sentence: str) -> str:
 
 
 def _write(path: Path, text: str) -> None:
-    data = text.encode(
-        "utf-8", errors="backslashreplace"
-    )  # half of a surrogate pair: the escape that JSON has for it
+    # half of a surrogate pair: the escape that JSON has for it
+    data = text.encode("utf-8", errors="backslashreplace")
     reason = ""
     for pause in (*AGAIN, 0):
         file = QSaveFile(str(path))

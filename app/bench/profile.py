@@ -241,9 +241,8 @@ class Profile(Picture):
             return is_free(box, scale, found if rod is None else [*found, rod])
 
         draw_limits(painter, plot, distance, values, self.limits(), quantity, free)
-        name_extremes(
-            painter, scale, found[0]
-        )  # over the lines of limits, where there is no room beside them
+        # over the lines of limits, where there is no room beside them
+        name_extremes(painter, scale, found[0])
 
     def table(self) -> Table | None:
         """Distance, the extremes of the whole run, and the quantity now, in the units and sign of the screen."""

@@ -23,9 +23,8 @@ class ClosingSignals:
 
     def _take(self, _number: int, _frame: FrameType | None) -> None:
         if self._close is None:
-            os._exit(
-                0
-            )  # nothing is open yet, and whoever starts a program by mistake does not want to wait for it
+            # nothing is open yet, and whoever starts a program by mistake does not want to wait for it
+            os._exit(0)
         from PySide6.QtCore import QTimer
 
         QTimer.singleShot(0, self._close)  # from Qt's loop, not from wherever Python happens to be

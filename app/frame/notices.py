@@ -103,9 +103,8 @@ class Notices(QWidget):
         words.setWordWrap(True)
         words.setTextInteractionFlags(Qt.TextInteractionFlag.TextSelectableByMouse)
         policy = words.sizePolicy()
-        policy.setHorizontalPolicy(
-            QSizePolicy.Policy.Expanding
-        )  # and as high as its lines, which it tells itself
+        # and as high as its lines, which it tells itself
+        policy.setHorizontalPolicy(QSizePolicy.Policy.Expanding)
         words.setSizePolicy(policy)
         row.addWidget(words, 1)
         for label, action in choices:

@@ -192,9 +192,8 @@ class Window(QMainWindow):
         if self._unseen and result is not None and self.solution.state == "fresh":
             self._unseen = False
             if self.sight.time == 0:
-                self.sight.set(
-                    time=result.peak_compression.time
-                )  # a moment at which there is something to see
+                # a moment at which there is something to see
+                self.sight.set(time=result.peak_compression.time)
         self.menus.records.setEnabled(result is not None and bool(result.gauges))
 
     # -- files ------------------------------------------------------------------------------------------------------

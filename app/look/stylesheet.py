@@ -135,9 +135,8 @@ def stylesheet(palette: Palette, base_size: float) -> str:
     """The stylesheet of the whole program; `base_size` is the point size of body text."""
     sizes = {level: round(base_size * scale, 1) for level, (scale, _weight) in LEVELS.items()}
     inner = SPACE - 2
-    line = round(
-        base_size * LINE
-    )  # a height that is given is the least: large type must not be squeezed into it
+    # a height that is given is the least: large type must not be squeezed into it
+    line = round(base_size * LINE)
     return SHEET.format(
         **{name: value for name, value in vars(palette).items() if isinstance(value, str)},
         **{name: sizes[name] for name in ("title", "figure", "small")},

@@ -48,9 +48,8 @@ def windows(qtbot, tmp_path, qapp, compiled):
 @pytest.fixture
 def window(windows, qtbot):
     made = windows()
-    qtbot.waitUntil(
-        lambda: made.solution.state == "fresh", timeout=60_000
-    )  # the first run may compile kernels
+    # the first run may compile kernels
+    qtbot.waitUntil(lambda: made.solution.state == "fresh", timeout=60_000)
     return made
 
 

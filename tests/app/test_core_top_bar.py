@@ -75,9 +75,8 @@ def test_nothing_overlaps_and_the_case_looked_at_is_in_sight(qtbot, type_size, w
     assert chosen.accessibleName() == "Case Drop 3 with a soft cushion"
     left = chosen.mapTo(bar.cases, chosen.rect().topLeft()).x()
     assert left >= 0
-    assert (
-        chosen.visibleRegion().boundingRect().height() == chosen.height()
-    )  # its foot is not cut in large type
+    # its foot is not cut in large type
+    assert chosen.visibleRegion().boundingRect().height() == chosen.height()
     assert left + chosen.width() <= bar.cases.width()
     assert solution.close()
 

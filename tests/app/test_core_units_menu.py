@@ -44,9 +44,8 @@ def test_one_quantity_has_a_unit_of_its_own_and_goes_back(document, menu, tmp_pa
     assert document.case == before  # nothing that is solved has changed
     document.save_as(tmp_path / "x.strike")
     units = units_of(load_project(tmp_path / "x.strike"))
-    assert (
-        units.show(1.755e6, "force") == "1.75\u00a0MN"
-    )  # half to even, as Python rounds: 1.755 is 1.75499... in binary
+    # half to even, as Python rounds: 1.755 is 1.75499... in binary
+    assert units.show(1.755e6, "force") == "1.75\u00a0MN"
     assert units.show(3.048, "length") == "10.0\u00a0ft"
     assert units.show(163e6, "stress") == "163\u00a0MPa"
     trigger(menu, "US")
@@ -84,6 +83,5 @@ def test_blows_are_counted_in_the_unit_of_lengths(document, menu):
     assert counted[0].endswith("blows per 0.25 m")
     assert counted[1].endswith("blows per foot")
     numbers = [float(text.split()[0]) for text in counted]
-    assert numbers[1] / numbers[0] == pytest.approx(
-        0.3048 / 0.25, rel=0.02
-    )  # both are rounded to 2 or 3 digits
+    # both are rounded to 2 or 3 digits
+    assert numbers[1] / numbers[0] == pytest.approx(0.3048 / 0.25, rel=0.02)

@@ -119,9 +119,8 @@ def test_headings_of_a_pasted_sheet_make_no_row_and_their_units_hold(desk) -> No
     at = desk(driven_pile(), "ground/layers")
     at.paste_at(0, "Name", "Name\tThickness (ft)\tUnit resistance [ksf]\nFill\t10\t1\nClay\t20\t2\n")
     assert [layer.name for layer in at.case.ground.layers] == ["Fill", "Clay"]
-    assert [layer.thickness for layer in at.case.ground.layers] == pytest.approx(
-        [3.048, 6.096]
-    )  # exact: feet
+    # exact: feet
+    assert [layer.thickness for layer in at.case.ground.layers] == pytest.approx([3.048, 6.096])
     assert at.case.ground.layers[0].unit_resistance == pytest.approx(47880.26, rel=1e-6)  # 1000 lbf/ft²
 
 

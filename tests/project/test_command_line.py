@@ -180,10 +180,11 @@ def test_one_case_at_another_element_length_in_the_folder_it_always_has(file, tm
 
 def test_a_case_that_cannot_be_solved_gives_1_and_the_others_are_there(tmp_path, capsys):
     tree = valid_tree()
+    # gravity, and nothing holds it
     tree["cases"][0]["far_end"], tree["cases"][0]["ground"] = (
         {"kind": "free"},
         None,
-    )  # gravity, and nothing holds it
+    )
     path, out = tmp_path / "a.strike", tmp_path / "out"
     path.write_text(json.dumps(tree), encoding="utf-8")
     assert main(["check", str(path)]) == 0

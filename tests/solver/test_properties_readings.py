@@ -73,9 +73,8 @@ def test_no_gauge_sees_more_than_the_envelope(tree: Tree) -> None:
     if any(abs(b - g.position) < widest for b in (*borders, *attached, 0.0, total)):
         return
     stress = round_off(np.array([e.lowest_stress[near].min(), e.highest_stress[near].max()]))
-    tapers = 0.02 * max(
-        float(np.abs(g.stress).max()), 1e-300
-    )  # area of the gauge against that of its elements
+    # area of the gauge against that of its elements
+    tapers = 0.02 * max(float(np.abs(g.stress).max()), 1e-300)
     assert g.stress.min() >= e.lowest_stress[near].min() - stress - tapers
     assert g.stress.max() <= e.highest_stress[near].max() + stress + tapers
     assert g.velocity.max() <= e.max_velocity[near].max() + round_off(g.velocity)

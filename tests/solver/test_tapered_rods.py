@@ -7,11 +7,12 @@ import pytest
 
 from tests.published.rods import DENSITY, C, E, material, part, pulse, solved
 
+# distance of the struck end from the cone's apex, m; length, m; diameter per distance
 TOP, LENGTH, SLOPE = (
     4.0,
     8.0,
     0.05,
-)  # distance of the struck end from the cone's apex, m; length, m; diameter per distance
+)
 PEAK, DURATION = 1e6, 0.8e-3
 
 

@@ -46,9 +46,8 @@ def test_bands_repeat_with_the_seed_whatever_the_number_of_workers() -> None:
     assert one.influences == two.influences
     assert (one.lines[0].set[:, 0] < one.lines[0].set[:, 1]).all()
     assert (one.lines[0].set[:, 1] < one.lines[0].set[:, 2]).all()
-    assert (
-        one.lines[0].set[1, 2] < one.lines[0].set[0, 0]
-    )  # twice the resistance moves less, whatever is unknown here
+    # twice the resistance moves less, whatever is unknown here
+    assert one.lines[0].set[1, 2] < one.lines[0].set[0, 0]
     other = sampled(plan, unknowns, samples=60, seed=6)
     assert other is not None
     assert not np.array_equal(one.lines[0].set, other.lines[0].set)

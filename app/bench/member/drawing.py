@@ -238,9 +238,8 @@ class MemberDrawing(Picture):
             self._take_wanted()
             self._drag.end()
             if not self._drag.told and self._toggles is None:
-                self.sight.set(
-                    selection=self._drag.handle.pointer
-                )  # a click on one of several leaves it alone
+                # a click on one of several leaves it alone
+                self.sight.set(selection=self._drag.handle.pointer)
             self._drag = None
             self.look_again()
         if self._toggles is not None:

@@ -76,9 +76,8 @@ def test_the_painted_cursor_crosses_all_pictures_in_line(open_bench, pile):
     for panel in (bench.member, bench.xt, bench.profile):
         left = panel.mapTo(bench, QPoint(0, 0)).x() + panel.plot().left() + 12
         marks = [x for x in range(int(left), int(left) + 60) if changed(x, row) and ink(x, row)]
-        assert len(marks) >= 15, (
-            f"no dotted line in {panel.accessibleName()}"
-        )  # a dotted line: half of 60 pixels
+        # a dotted line: half of 60 pixels
+        assert len(marks) >= 15, f"no dotted line in {panel.accessibleName()}"
     column = bench.mapFromGlobal(QPointF(global_x(bench.xt, 0.0123), 0)).x()
     for panel in (bench.xt, *bench.strips.shown()):
         top = panel.mapTo(bench, QPoint(0, 0)).y() + panel.plot().top()

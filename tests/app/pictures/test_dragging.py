@@ -103,9 +103,8 @@ def test_nothing_is_dragged_past_what_it_belongs_to(open_bench, pile, qtbot):
     drag(qtbot, member, spot(member, 1.2, -45), QPoint(10, -300))
     assert the.document.case.gauges[0].position == 0.0
     surface = the.document.case.ground.surface
-    drag(
-        qtbot, member, spot(member, 24.0, 0), spot(member, 2.0, 0)
-    )  # the toe stops at the ground, below the joint
+    # the toe stops at the ground, below the joint
+    drag(qtbot, member, spot(member, 24.0, 0), spot(member, 2.0, 0))
     assert the.document.case.member.length == pytest.approx(max(16.0, surface), abs=0.1)
     assert refused == []
 

@@ -145,9 +145,8 @@ def test_between_two_cursors_stand_time_place_and_speed(pile):
     assert words == ["2.00 ms", "10.0 m", "5000 m/s ↓"]
     assert [plain(w) for w in between(units, 0.010, 14.0, (0.012, 4.0))][2] == "5000 m/s ↑"
     assert [plain(w) for w in between(units, 0.012, None, (0.010, 4.0))] == ["2.00 ms"]
-    assert (
-        len(between(units, 0.010, 14.0, (0.010, 4.0))) == 2
-    )  # at one time no speed takes from place to place
+    # at one time no speed takes from place to place
+    assert len(between(units, 0.010, 14.0, (0.010, 4.0))) == 2
 
 
 def test_peaks_are_tops_and_bottoms_in_turn_and_small_ripples_are_none():

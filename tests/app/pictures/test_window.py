@@ -71,9 +71,8 @@ def test_a_double_click_on_a_title_does_the_same_for_every_panel(open_window, qt
     window = open_window()
     panel = getattr(window.bench, name)
     time = window.sight.time
-    spot = (
-        QPoint(3, 10) if name == "strips" else QPoint(30, 10)
-    )  # beside the chips, which are the title of strips
+    # beside the chips, which are the title of strips
+    spot = QPoint(3, 10) if name == "strips" else QPoint(30, 10)
     for alone in (panel, None):
         below = panel.childAt(spot) or panel
         qtbot.mouseDClick(below, Qt.MouseButton.LeftButton, pos=below.mapFrom(panel, spot))
