@@ -209,7 +209,10 @@ def _set(scene: Scene, frame: DepthFrame, points: Sequence[DepthPoint], units: U
     words = f"refusal below {units.show(REFUSAL, 'small_length', 2)}"
     text = fitted((words, "refusal"), scale.stop - scale.start + 12, frame.letters)
     scene.append(Words((scale.start, frame.rows.second), text, "soft_ink"))
-    at_set: Across = lambda p: scale.at(p.cell.set if p.cell.set and p.cell.moves else 0.0)  # noqa: E731
+
+    def at_set(point: DepthPoint) -> float:
+        return scale.at(point.cell.set if point.cell.set and point.cell.moves else 0.0)
+
     _curve(scene, frame, points, at_set, "ink")
 
 

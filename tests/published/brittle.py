@@ -108,6 +108,11 @@ def several() -> Iterator[Compared]:
         yield value(f"time of opening {i}", (LENGTH + i * size) / C, crack.time, "s", run.time_step)
 
 
+def _triangle(lag: np.ndarray) -> np.ndarray:
+    """Stress of the pulse, MPa, so long (s) after its front."""
+    return np.where((lag >= 0) & (lag <= SPAN), 100.0 * (1 - lag / SPAN), 0.0)
+
+
 @check(
     model="brittle rod under a pulse weaker than its strength",
     title="Under its strength it is an elastic rod",
@@ -131,8 +136,7 @@ def under_strength() -> Iterator[Compared | Picture]:
     at = int(np.searchsorted(broken.fields.time, 0.002078)) - 1
     s = LENGTH - x
     t = broken.fields.time[at]
-    wave = lambda lag: np.where((lag >= 0) & (lag <= SPAN), 100.0 * (1 - lag / SPAN), 0.0)  # noqa: E731
-    exact = -wave(t - x / C) + wave(t - (LENGTH + s) / C)
+    exact = -_triangle(t - x / C) + _triangle(t - (LENGTH + s) / C)
     shown = x > 8.0
     yield picture(
         "Just before the first opening: stress along the rod, strength 40 MPa (tension positive)",
