@@ -58,9 +58,7 @@ def _state_of(findings: Findings) -> tuple[State, str]:
     state = min((s.state for s in stresses), key=WORST_FIRST.index)
     parts = [_share(s) for s in stresses if s.state == state]
     if state == "no limit":
-        return state, "" if len(
-            parts
-        ) == 2 else f" ({'compression' if stresses[0].state == state else 'tension'})"
+        return state, "" if len(parts) == len(stresses) else f" ({parts[0]})"
     if state == "within":
         largest = max((s for s in stresses if s.worst is not None), key=lambda s: s.worst.share or 0.0)  # type: ignore[union-attr]
         return state, f" ({_share(largest)})"
