@@ -62,7 +62,7 @@ def compile_last_parts() -> None:
         (stages.train_step, (bounds, push, u, v, v, sums, dt, note, step)),
         (stages.toe_node, (bounds, push, u, v, v, sums, dt, note, step)),
         (stages.shaft_nodes, (ground, push, v, v, sums, dt)),
-        (records.keep_first_blow, (ext, bounds, step)),
+        (records.keep_first_blow, (ext, bounds, note, step)),
         (records.read_gauges, (rec, u, v, v, force, v, dt, step)),
         (records.read_train, (rec, bounds, v, v, step, step)),
         (records.take_frame, (rec, u, v, v, force, v, step)),

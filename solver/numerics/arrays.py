@@ -113,8 +113,9 @@ class Extremes(NamedTuple):
     """Envelopes, shape (links,) and (nodes,); times as step numbers.
 
     `second`: the last step on which what strikes touched, the most steps that it may be away within one blow, the step
-    of the second blow (0: none), its joint (-1: it is a ram on the train); empty where nothing strikes. `first_links`
-    (4, links) and `first_nodes` (2, nodes) are the envelopes as they stood before a second blow."""
+    of the second blow (0: none), its joint (-1: it is a ram on the train), the last step on which a cap touched;
+    empty where nothing strikes. `first_links` (4, links) and `first_nodes` (2, nodes) are the envelopes as they stood
+    before a second blow."""
 
     low: Array
     low_step: Array

@@ -236,7 +236,7 @@ def _second_blow(chain: Chain) -> NDArray[np.int64]:
     there_and_back = 2 * float(
         np.sum(chain.length[rods] * np.sqrt(chain.line_mass[rods] / chain.axial[rods]))
     )
-    return np.array([0, int(np.ceil(there_and_back / chain.dt)), 0, joint], dtype=np.int64)
+    return np.array([0, int(np.ceil(there_and_back / chain.dt)), 0, joint, 0], dtype=np.int64)
 
 
 def gauge_readings(chain: Chain) -> tuple[NDArray[np.int64], Array]:

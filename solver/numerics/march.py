@@ -208,7 +208,7 @@ def faces(ext, bounds, push, u, v, w, sums, dt, note, step):
     if len(bounds.train_links) > 0:
         train_step(bounds, push, u, v, w, sums, dt, note, step)
     if len(ext.second) > 0:
-        keep_first_blow(ext, bounds, step)
+        keep_first_blow(ext, bounds, note, step)
 
 
 @part_of_step

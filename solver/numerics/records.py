@@ -15,6 +15,10 @@ from solver.numerics.compiled import apart, kernel, part_of_step
     EVENT_TOE_LIFT,
 ) = range(7)
 
+#: Share of the largest velocity of the head at which a cap that was in the air strikes it again (a choice of this
+#: program: lesser hops change no peak that matters).
+FALLS_BACK = 0.1
+
 
 @kernel
 def remember(note, kind, place, step):
@@ -28,23 +32,39 @@ def remember(note, kind, place, step):
 
 
 @part_of_step
-def keep_first_blow(ext, bounds, step):
+def cap_falls_back(ext, bounds, note, step):
+    """Whether a cap without a cushion falls back on the head in this step: after it was away, and at a good part of the
+    velocity that the blow gave the head."""
+    if len(bounds.train_links) < 2 or bounds.train_kinds[1] != 0 or bounds.train_state[1, 2] <= 0.0:
+        return False
+    away, ext.second[4] = step - ext.second[4], step
+    head = bounds.train_links[1] + 1
+    falls = away > ext.second[1] and bounds.train_state[1, 3] > FALLS_BACK * ext.speed[head]
+    if falls:
+        remember(note, EVENT_IMPACT, head - 1, step)
+    return falls
+
+
+@part_of_step
+def keep_first_blow(ext, bounds, note, step):
     """When what strikes comes back after it was away, keep the envelopes as they stood; see `Extremes.second`."""
     joint = ext.second[3]
     if joint >= 0:
         force = bounds.joint_force[joint]
     else:
         force = bounds.train_state[0, 2] if bounds.train_kinds[0] == 0 else bounds.train_force[0]
-    if force <= 0.0:
+    cap = cap_falls_back(ext, bounds, note, step)
+    if force <= 0.0 and not cap:
         return
-    if ext.second[2] == 0 and step - ext.second[0] > ext.second[1]:
+    if ext.second[2] == 0 and (cap or step - ext.second[0] > ext.second[1]):
         ext.second[2] = step
         for i in range(len(ext.low)):
             ext.first_links[0, i], ext.first_links[1, i] = ext.low[i], ext.low_step[i]
             ext.first_links[2, i], ext.first_links[3, i] = ext.high[i], ext.high_step[i]
         for i in range(len(ext.speed)):
             ext.first_nodes[0, i], ext.first_nodes[1, i] = ext.speed[i], ext.travel[i]
-    ext.second[0] = step
+    if force > 0.0:
+        ext.second[0] = step
 
 
 @apart
