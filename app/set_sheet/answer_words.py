@@ -49,6 +49,10 @@ def told_of(answers: Answers, sheet: Sheet, units: Units) -> Told:
     return Told(criterion(answers.stop_at, units), tuple(words for words in beside if words), tuple(further))
 
 
+#: A largest blow is looked for at one resistance; tension is often largest where the ground yields easily.
+EASIER = " That is for this resistance alone: in easier driving before it, tension can be larger."
+
+
 def largest_words(answer: LargestBlow, cell: Cell, units: Units) -> str:
     """Which blow keeps every stress inside its limit?"""
     what, at = varied_text(cell.level), force_text(answer.resistance, units)
@@ -65,12 +69,12 @@ def largest_words(answer: LargestBlow, cell: Cell, units: Units) -> str:
         "at once": f" Below {least} a limit is passed as well.",
     }[answer.smaller_pass]
     if answer.why == "all within":
-        return f"Every {what} looked at up to {high} keeps all stresses within their limits at {at}.{smaller}"
+        return f"Every {what} looked at up to {high} keeps all stresses within their limits at {at}.{smaller}{EASIER}"
     later = answer.passed is not None and answer.passed.again_only
     above = " Above it a limit is passed only after the ram has struck again." if later else ""
     return (
         f"Up to a {what} of {level_below(answer.level, units)} every stress stays within its limit at {at} "
-        f"(to {percent(answer.tolerance)}).{_stop_with_it(answer, cell, units)}{above}{smaller}"
+        f"(to {percent(answer.tolerance)}).{_stop_with_it(answer, cell, units)}{above}{smaller}{EASIER}"
     )
 
 
