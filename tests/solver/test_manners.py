@@ -1,4 +1,4 @@
-"""How `solve` behaves towards who calls it: progress, Stop, partial results, memory, and runs that end by themselves."""
+"""How `solve` behaves towards its caller: progress, Stop, partial results, memory, and runs that end by themselves."""
 
 from __future__ import annotations
 
