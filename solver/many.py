@@ -52,14 +52,16 @@ def solve_many(
             if not at_work:
                 return
             done, at_work = wait(at_work, timeout=0.1, return_when=FIRST_COMPLETED)
-            for future in done:
-                outcome = future.result()
+            while done:
+                outcome = done.pop().result()
                 if outcome.result is not None and not outcome.result.finished:
                     return
                 finished += 1
                 if progress is not None:
                     progress(finished)
                 yield outcome
+                # the next case finds the room of this one, unless somebody keeps its result
+                del outcome
     finally:
         stopped = True
         pool.shutdown(wait=True, cancel_futures=True)

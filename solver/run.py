@@ -6,7 +6,6 @@ import time
 from collections.abc import Callable
 
 from solver.answer.result import Result
-from solver.beyond import refuse_beyond_measure
 from solver.errors import SolveError
 from solver.marching import March, Progress
 from solver.model.project import Case, RepeatedBlows
@@ -15,7 +14,6 @@ from solver.numerics.chain import Chain
 from solver.numerics.equilibrium import State, step_ground_back
 from solver.numerics.settle import settle
 from solver.standing import at_rest, standing
-from solver.watch import refuse_unsupported
 
 
 def solve(
@@ -31,8 +29,6 @@ def solve(
     what is solved so far is returned with `finished` False. Raises `SolveError` with a sentence where the case cannot
     be solved.
     """
-    refuse_beyond_measure(case)
-    refuse_unsupported(case)
     return solve_chain(*standing(case, element_length), progress, cancel)
 
 

@@ -6,12 +6,14 @@ next to nothing.
 
 from __future__ import annotations
 
+from collections.abc import Iterator
 from dataclasses import dataclass, field, replace
 from threading import Lock
 from typing import Any, NamedTuple
 
 import numpy as np
 
+from solver.beyond import LEAST, MOST, refuse_beyond_measure
 from solver.model.load import Drop
 from solver.model.material import Material
 from solver.model.member import Member
@@ -22,6 +24,7 @@ from solver.numerics.assemble import bounds_of, motion_of, rod_of
 from solver.numerics.chain import Chain, build_chain, first_velocities
 from solver.numerics.equilibrium import State, bring_to_rest, lay_at_rest, step_back_half
 from solver.numerics.ground import shaft_of
+from solver.watch import refuse_unsupported
 
 #: Members that are kept, and nodes above which one is not: some 20 MB in all.
 KEPT, MOST_NODES = 16, 5000
@@ -54,9 +57,10 @@ _lock = Lock()
 
 
 def standing(case: Case, element_length: float | None) -> tuple[Chain, State]:
-    """The chain of a case, and its state before the first step. Raises `SolveError` as `build_chain` and
-    `bring_to_rest` do."""
+    """The chain of a case, and its state before the first step. Raises `SolveError` where the case is refused, or as
+    `build_chain` and `bring_to_rest` do."""
     if not isinstance(case.load, Drop):
+        _refuse(case)
         chain = build_chain(case, element_length)
         return chain, at_rest(chain)
     shape = _Shape(
@@ -70,12 +74,25 @@ def standing(case: Case, element_length: float | None) -> tuple[Chain, State]:
         element_length,
         case,
     )
-    found = _kept.get(shape) or _keep(shape)
+    found = _kept.get(shape)
+    if found is None or not all(LEAST <= speed <= MOST for speed in _speeds(case.load)):
+        _refuse(case)
+    found = found or _keep(shape)
     chain, capped = found.chain, len(found.chain.train) == 2
     chain = replace(chain, case=case, velocity=first_velocities(case, chain.mass, chain.head, capped))
     state = _copy(chain, found.state)
     step_back_half(chain, state)
     return chain, state
+
+
+def _refuse(case: Case) -> None:
+    refuse_beyond_measure(case)
+    refuse_unsupported(case)
+
+
+def _speeds(load: Drop) -> Iterator[float]:
+    """What is given of a drop's speed."""
+    return (value for key in SPEED if (value := getattr(load, key)) is not None)
 
 
 def at_rest(chain: Chain) -> State:

@@ -162,12 +162,12 @@ def _single(values: Single) -> Single:
 
 
 def _ledger(blow: Blow) -> Ledger:
-    rows = np.concatenate((blow.start_row[None], blow.frames.ledger))
+    rows = read_only(np.concatenate((blow.start_row[None], blow.frames.ledger)).T)
     stride, dt = blow.stride, blow.chain.dt
-    time = np.concatenate(([-0.5 * dt], (np.arange(len(rows) - 1) * stride + 0.5) * dt))
-    parts = {name: read_only(rows[:, i]) for i, name in enumerate(LEDGER)}
+    time = np.concatenate(([-0.5 * dt], (np.arange(rows.shape[1] - 1) * stride + 0.5) * dt))
+    parts = dict(zip(LEDGER, rows, strict=False))
     start = float(blow.start_row[: LEDGER.index("work_of_gravity")].sum())
-    parts["initial_energy"] = read_only(np.full(len(rows), start))
+    parts["initial_energy"] = read_only(np.full(rows.shape[1], start))
     return Ledger(read_only(time), parts, blow.residual)
 
 

@@ -16,6 +16,7 @@ import numpy as np
 
 import solver.marching
 from solver import solve_many
+from solver.studies.variation import resistance_of, with_resistance
 from tests.bench import cases, ivp
 from tests.bench.measure import Row, calibration, spread_of
 from tests.bench.twin import NO_COMPILER, library
@@ -145,25 +146,38 @@ class _KernelTime:
 
 
 def many(short: bool) -> Iterator[Row]:
-    """1,000 default pile cases on two threads."""
+    """1,000 default pile cases on two threads. They differ in their drop, so that the member is brought to rest once;
+    what is left where the ground differs too is told beside it."""
     batch = [cases.pile(None, 0.5 + 0.001 * i) for i in range(1_000)]
-    timed = _KernelTime(solver.marching.march)
-    list(solve_many([cases.pile(None)], workers=1))
+    list(solve_many(batch[:1], workers=1))
     beats = [calibration() for _ in range(5)]
+    share, solved, seconds = _share_of_kernel(batch)
+    beats += [calibration() for _ in range(5)]
+    strength = resistance_of(batch[0]).total
+    others = [with_resistance(case, (1 + 0.001 * i) * strength) for i, case in enumerate(batch[:200])]
+    yield Row(
+        "many",
+        "processor time in the kernel / in the whole process, 1,000 default pile cases on two threads",
+        share,
+        0.80,
+        repetitions=1,
+        noise=spread_of(beats),
+        more={
+            "solved": solved,
+            "seconds": seconds,
+            "share_where_ground_differs": _share_of_kernel(others)[0],
+        },
+    )
+
+
+def _share_of_kernel(batch: list[Any]) -> tuple[float, int, float]:
+    """Processor time in the kernel over that of the process; how many were solved, in how many seconds."""
+    timed = _KernelTime(solver.marching.march)
     with patch.object(solver.marching, "march", timed):
         began, spent = time.perf_counter(), time.process_time()
         solved = sum(outcome.result is not None for outcome in solve_many(batch, workers=2))
         seconds, spent = time.perf_counter() - began, time.process_time() - spent
-    beats += [calibration() for _ in range(5)]
-    yield Row(
-        "many",
-        "processor time in the kernel / in the whole process, 1,000 default pile cases on two threads",
-        timed.seconds / spent,
-        0.80,
-        repetitions=1,
-        noise=spread_of(beats),
-        more={"solved": solved, "seconds": seconds},
-    )
+    return timed.seconds / spent, solved, seconds
 
 
 def memory(short: bool) -> Iterator[Row]:

@@ -7,7 +7,7 @@ from typing import Any
 import numpy as np
 import pytest
 
-from solver import Case, Result, solve, standing
+from solver import Case, Result, SolveError, solve, standing
 from tests.published.rods import E, case_of, material, part
 
 SMITH = {"quake": 0.0025, "damping": 0.15}
@@ -91,6 +91,12 @@ def test_whatever_else_differs_is_found_anew(change: dict[str, Any]) -> None:
     found = solve(other)
     assert_same(found, expected)
     assert not np.array_equal(found.gauges["g"].force, plain.gauges["g"].force)
+
+
+def test_a_speed_beyond_all_measure_is_refused_though_the_member_is_known() -> None:
+    solve(struck(RIGID, 2.0))
+    with pytest.raises(SolveError, match="beyond all measure"):
+        solve(struck(RIGID, 1e40))
 
 
 def test_no_more_members_are_kept_than_said() -> None:
