@@ -22,19 +22,20 @@ PATIENCE = 300.0  # s; the first start compiles the kernels
 
 @dataclass(frozen=True)
 class Shot:
-    """One picture: a demo and its case, the look, the size of the window, and what is looked at."""
+    """One picture: a demo and its case, the workspace, the look, the size of the window, and what is looked at."""
 
     name: str
     demo: str
     look: str
     case: int = 0
+    workspace: int = 0
     size: tuple[int, int] = (1440, 900)
     sight: dict[str, Any] = field(default_factory=dict)
 
 
 SHOTS = (
     Shot("pile", "01", "light", sight={"time": 0.0044, "place": 16.0}),
-    Shot("tension", "02", "dark", sight={"time": 0.0154, "place": 6.25}),
+    Shot("set-sheet", "02", "dark", case=1, workspace=1, size=(1280, 800)),
     Shot("bar", "05", "light", size=(1280, 800), sight={"time": 0.00061, "selection": "member/segments/0"}),
 )
 
@@ -65,8 +66,15 @@ def take(app: Any, shot: Shot, settings: Path, folder: Path) -> None:
     window.document.choose_case(shot.case)
     window.resize(*shot.size)
     window.show()
-    solved(app, window)
+    solved(app, window, window.solution)
     window.sight.set(**shot.sight)
+    if shot.workspace:
+        window.workspaces.show_number(shot.workspace)
+        settle(app)
+        solved(app, window, window.set_sheet.solution)
+        if focused := app.focusWidget():
+            focused.clearFocus()
+            settle(app)
     settle(app)
     target = folder / f"{shot.name}.png"
     window.grab().save(str(target))
@@ -76,10 +84,10 @@ def take(app: Any, shot: Shot, settings: Path, folder: Path) -> None:
     app.sendPostedEvents(None, QEvent.Type.DeferredDelete)
 
 
-def solved(app: Any, window: Any) -> None:
+def solved(app: Any, window: Any, solution: Any) -> None:
     """Wait for the picture that belongs to the input."""
     end = monotonic() + PATIENCE
-    while window.solution.state != "fresh":
+    while solution.state != "fresh":
         if monotonic() > end:
             raise SystemExit(f"{window.windowTitle()} is not solved after {PATIENCE:.0f} s.")
         app.processEvents()
