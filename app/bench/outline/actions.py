@@ -2,14 +2,13 @@
 
 from __future__ import annotations
 
-from PySide6.QtCore import QEvent
-from PySide6.QtWidgets import QHBoxLayout, QMenu, QPushButton, QToolButton, QWidget
+from PySide6.QtWidgets import QHBoxLayout, QMenu, QPushButton, QWidget
 
+from app.bench.icon_button import IconButton
 from app.bench.outline import edits
 from app.bench.outline.part_actions import ACTIONS, PartActions, can_split
 from app.bench.outline.rows import Row
-from app.look import icon
-from app.look.spacing import FIELD, GAP
+from app.look.spacing import GAP
 
 
 class Actions(QWidget):
@@ -17,37 +16,23 @@ class Actions(QWidget):
 
     def __init__(self, actions: PartActions, parent: QWidget) -> None:
         super().__init__(parent)
-        self.buttons: dict[str, QToolButton] = {}
+        self.buttons: dict[str, IconButton] = {}
         self.parts = actions
         self._row = Row("", "none", "")
         line = QHBoxLayout(self)
         line.setContentsMargins(0, 0, 0, 0)
         line.setSpacing(GAP)
         for name, picture, words, key in ACTIONS:
-            button = QToolButton(self)
-            button.setProperty("role", "quiet")
-            button.setFixedHeight(FIELD)
-            button.setProperty("picture", picture)
-            button.setAccessibleName(words)
+            button = IconButton(picture, words, self)
             button.setToolTip(f"{words}  ({key})" if key else words)
             button.clicked.connect(lambda _on=False, n=name: self.parts.do(n, self._row))
             line.addWidget(button)
             self.buttons[name] = button
-        self._draw_icons()
         self.add_button = QPushButton(self)
         self.add_button.setProperty("role", "link")
         self.add_button.clicked.connect(lambda: self.parts.do("add", self._row))
         line.addWidget(self.add_button)
         line.addStretch(1)
-
-    def changeEvent(self, event: QEvent) -> None:
-        if event.type() == QEvent.Type.PaletteChange:
-            self._draw_icons()
-        super().changeEvent(event)
-
-    def _draw_icons(self) -> None:
-        for button in self.buttons.values():
-            button.setIcon(icon(button.property("picture")))
 
     @property
     def stops(self) -> list[QWidget]:

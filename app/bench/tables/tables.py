@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from PySide6.QtCore import QEvent, QModelIndex, QSize, Qt
+from PySide6.QtCore import QModelIndex, QSize, Qt
 from PySide6.QtGui import QGuiApplication, QKeyEvent, QKeySequence
 from PySide6.QtWidgets import (
     QAbstractItemDelegate,
@@ -12,19 +12,18 @@ from PySide6.QtWidgets import (
     QPushButton,
     QSizePolicy,
     QTableView,
-    QToolButton,
     QVBoxLayout,
     QWidget,
 )
 
+from app.bench.icon_button import IconButton
 from app.bench.outline import edits
 from app.bench.tables.cells import CellEditors
 from app.bench.tables.edits import Cell, block_cells
 from app.bench.tables.model import TableModel
 from app.bench.tables.pasted import cells_of, placed
 from app.document import Document
-from app.look import icon
-from app.look.spacing import FIELD, GAP, SPACE
+from app.look.spacing import GAP, SPACE
 from app.sight import Sight
 
 #: Lists of the case that have a table, and the words on their tabs.
@@ -56,7 +55,7 @@ class Tables(QWidget):
         self.note = QLabel(self)
         self.note.setProperty("role", "small")
         self.tabs: dict[str, QPushButton] = {}
-        self.buttons: dict[str, QToolButton] = {}
+        self.buttons: dict[str, IconButton] = {}
         self._compose()
         self.hide()
         document.changed.connect(self._follow)
@@ -94,16 +93,10 @@ class Tables(QWidget):
         ):
             if name == "close":
                 head.addStretch(1)
-            button = QToolButton(self)
-            button.setProperty("role", "quiet")
-            button.setProperty("picture", picture)
-            button.setFixedHeight(FIELD)
-            button.setToolTip(words)
-            button.setAccessibleName(words)
+            button = IconButton(picture, words, self)
             button.clicked.connect(act)
             head.addWidget(button)
             self.buttons[name] = button
-        self._draw_icons()
         self.view.setModel(self.model)
         self.view.selectionModel().currentChanged.connect(self._current_changed)
         column = QVBoxLayout(self)
@@ -175,15 +168,6 @@ class Tables(QWidget):
         self.note.setText(
             f"✕ {wrong}" if wrong else f"{spec.label}. {spec.tells}" if spec and spec.tells else hint
         )
-
-    def changeEvent(self, event: QEvent) -> None:
-        if event.type() == QEvent.Type.PaletteChange:
-            self._draw_icons()
-        super().changeEvent(event)
-
-    def _draw_icons(self) -> None:
-        for button in self.buttons.values():
-            button.setIcon(icon(button.property("picture")))
 
     # -- acting -----------------------------------------------------------------------------------------------------
 
