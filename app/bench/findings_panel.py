@@ -101,7 +101,8 @@ class FindingsPanel(QFrame):
     def _fit(self) -> None:
         """The verdict is seen without scrolling: where its details do not fit, they are told in brief."""
         rows = [row for row in self._verdict if not row.isHidden()]
-        width = self._scroll.width()
+        # notes under the verdict mostly bring the scroll bar, which takes its width from every row
+        width = self._scroll.width() - self._scroll.verticalScrollBar().sizeHint().width()
         needed = sum(row.full_height(width) + 2 for row in rows)
         if self.differences.blocks:
             needed += self.differences.sizeHint().height()

@@ -17,6 +17,8 @@ from app.look.palette import palette
 
 #: Pixels within which the mouse is on a line, and on a tick; height of a tick.
 NEAR, NEAR_TICK, TICK = 5.0, 4.0, 8.0
+#: Height of an arrow of `draw_ticks` with its tip, pixels.
+ARROW = TICK + 3.0
 
 
 def draw_lines(painter: QPainter, lines: Sequence[Line], time: Axis, distance: Axis) -> None:
@@ -51,7 +53,7 @@ def draw_ticks(painter: QPainter, lines: Sequence[Line], place: float, time: Axi
         if moment is not None and time.low <= moment <= time.high:
             x = time.at(moment)
             painter.drawLine(QLineF(x, plot.bottom(), x, plot.bottom() - TICK))
-            tip = plot.bottom() - TICK - 3
+            tip = plot.bottom() - ARROW
             painter.drawPolygon(
                 QPolygonF([QPointF(x, tip), QPointF(x - 2.5, tip + 5), QPointF(x + 2.5, tip + 5)])
             )

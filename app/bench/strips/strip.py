@@ -12,6 +12,7 @@ from PySide6.QtWidgets import QMenu, QWidget
 
 from app.bench.member.glyphs import pen
 from app.bench.pictures.arrival_drawing import (
+    ARROW,
     TICK,
     draw_tick_pointed,
     draw_ticks,
@@ -214,7 +215,7 @@ class Strip(Picture):
         gauge = self.gauge_shown()
         if gauge is not None and self.result is not None:
             draw_ticks(painter, self.lines(), self.result.case.gauges[gauge].position, time, plot)
-        room = plot.adjusted(0, self._band(content), 0, -TICK if self.lines() else 0)
+        room = plot.adjusted(0, self._band(content), 0, -ARROW - 1 if self.lines() else 0)
         taken = self._draw_peaks(painter, content, time, values, factor)
         self._names.draw(painter, content, drawn, room, taken)
         painter.restore()

@@ -2,10 +2,13 @@
 
 from __future__ import annotations
 
+from itertools import product
+
 import pytest
 from PySide6.QtCore import QPoint, Qt
-from PySide6.QtWidgets import QMenu
+from PySide6.QtWidgets import QApplication, QMenu, QWidget
 
+from app.bench.findings_panel import FindingsPanel
 from app.frame.case_row import fill_case_menu
 from app.frame.window import Window
 from app.settings import Settings
@@ -141,3 +144,20 @@ def test_what_was_refused_is_told_until_the_next_edit_is_taken(open_window):
     assert "Toe" in window.notices.text_of("edit")  # its gauge would lie beyond the end
     assert document.edit("Set drop height", "load/drop_height", 0.9)
     assert window.notices.text_of("edit") is None
+
+
+def test_details_that_are_told_in_full_are_whole_without_scrolling(open_window, qtbot):
+    """At each height of the panel, beside a scroll bar or without: a line may not be cut at its foot."""
+    window = open_window()
+    holder = QWidget()  # the offscreen platform complains of a window with a least size
+    panel = FindingsPanel(window.document, window.sight, window.solution, holder)
+    qtbot.addWidget(holder)
+    holder.resize(400, 500)
+    holder.show()
+    for width, height in product((176, 190, 204, 218), range(240, 460, 4)):
+        panel.resize(width, height)
+        QApplication.processEvents()
+        rows, room = panel._verdict, panel._scroll
+        if rows[-1].height() == rows[-1].full_height(rows[-1].width()):
+            lowest = max(row.mapTo(room, QPoint(0, row.height())).y() for row in rows)
+            assert lowest <= room.height() + 6, (width, height)  # 6: the last row's own margin
