@@ -5,6 +5,7 @@
 """
 
 import os
+import sys
 import tempfile
 from collections.abc import Iterator
 from pathlib import Path
@@ -31,3 +32,12 @@ def _settings_of_nobody() -> Iterator[None]:
     with tempfile.TemporaryDirectory() as folder, pytest.MonkeyPatch.context() as patch:
         patch.setenv("STRIKETRACE_SETTINGS", folder)
         yield
+
+
+def pytest_sessionfinish() -> None:
+    """Without a screen the clipboard outlives Python, and what Python has put there ends the process with a fault."""
+    if "PySide6.QtGui" in sys.modules:
+        from PySide6.QtGui import QGuiApplication
+
+        if QGuiApplication.instance() is not None:
+            QGuiApplication.clipboard().clear()

@@ -16,7 +16,7 @@ from dataclasses import dataclass, field
 from pathlib import Path
 from time import perf_counter
 
-from PySide6.QtCore import QPoint, QPointF, Qt, QTimer, qInstallMessageHandler
+from PySide6.QtCore import QEvent, QPoint, QPointF, Qt, QTimer, qInstallMessageHandler
 from PySide6.QtGui import QContextMenuEvent, QWheelEvent
 from PySide6.QtTest import QTest
 from PySide6.QtWidgets import QApplication, QFileDialog, QMenu, QWidget
@@ -247,6 +247,9 @@ def main() -> int:
             faulthandler.dump_traceback_later(300, exit=True)
             monkey.play(min(wanted.events - done, 1000))
             window.close()
+            # as the program itself ends: nothing of Qt lives longer than its window
+            window.deleteLater()
+            app.sendPostedEvents(None, QEvent.Type.DeferredDelete)
             faulthandler.cancel_dump_traceback_later()
             done, turn = done + monkey.events, turn + 1
             worst = max(worst, (monkey.longest, monkey.longest_was))
@@ -256,6 +259,7 @@ def main() -> int:
                 sep="\n  ",
             )
     app.processEvents()
+    app.clipboard().clear()  # without a screen it outlives Python
     for message in sorted(set(messages.told)):
         print("message:", message)
     print(f"seed {wanted.seed}: {done} events, {len(errors)} errors, longest {worst[0]:.2f} s ({worst[1]})")
